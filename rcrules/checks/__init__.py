@@ -1,0 +1,1 @@
+"""Step 9: rules and board in, findings with three-valued verdicts out."""

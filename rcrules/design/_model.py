@@ -1,0 +1,74 @@
+"""The design: parts and nets of one board, merged from its exports."""
+
+from collections.abc import Mapping
+from dataclasses import dataclass
+
+from rcrules.errors import Place
+from rcrules.readers import Export, Remark
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Fact:
+    """A text about a part, with where it comes from."""
+
+    text: str
+    origin: str
+    """``netlist value``, ``netlist field 'Tol'``, ``BOM value``, ``BOM field 'Voltage'``."""
+    place: Place
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Pin:
+    """A pin of a part on a net."""
+
+    ref: str
+    number: str
+    name: str
+    type: str
+    """One of vocabulary.PIN_TYPES."""
+    net: str
+    place: Place
+
+    @property
+    def key(self) -> str:
+        """``U3.NRST``, or ``U3.7`` where the pin has no name of its own."""
+        return f"{self.ref}.{self.name or self.number}"
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Part:
+    """A part of the schematic or the BOM."""
+
+    ref: str
+    place: Place
+    values: tuple[Fact, ...]
+    """Value texts, the one that wins first (BOM before netlist)."""
+    fields: Mapping[str, tuple[Fact, ...]]
+    """Further fields by lower-case name, BOM facts first."""
+    footprint: str
+    symbol: str
+    description: str
+    sheet: str
+    fitted: bool
+    fitted_why: str
+    pins: tuple[Pin, ...]
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Net:
+    """A net by its key, with its pins."""
+
+    name: str
+    pins: tuple[Pin, ...]
+    place: Place
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Design:
+    """One board, as exported."""
+
+    parts: Mapping[str, Part]
+    nets: Mapping[str, Net]
+    exports: tuple[Export, ...]
+    remarks: tuple[Remark, ...]
+    """Of all exports, and disagreements between them."""

@@ -1,0 +1,81 @@
+"""The findings document: everything a report needs, and nothing it does not. Mirrors the JSON, key for key."""
+
+from dataclasses import dataclass, field
+from typing import Any
+
+Json = dict[str, Any]
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Quantity:
+    """Bounds of a number."""
+
+    low: float
+    nominal: float
+    high: float
+    unit: str
+    low_case: dict[str, float] = field(default_factory=dict)
+    """Parameter name -> value at the lowest case; only parameters off nominal."""
+    high_case: dict[str, float] = field(default_factory=dict)
+    method: str = "proved"
+    """``proved`` or ``searched``."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Finding:
+    """One rule held against one subject."""
+
+    rule: str
+    title: str
+    pack: str
+    level: str
+    outcome: str
+    """One of vocabulary.OUTCOMES."""
+    subject: str
+    """``node``, ``capacitor``, ``resistor``, ``supply``."""
+    net: str | None
+    parts: list[str]
+    feeds: list[str]
+    measure: str
+    options: Json
+    """As printed: ``{"event": "power-up", "to": "may switch"}``."""
+    measured: Quantity | None
+    limit: Json | None
+    """``{"at_least": 0.03, "unit": "s"}``."""
+    margin: float | None
+    """Worst distance to the limit; negative = broken; may be inf."""
+    margin_case: dict[str, float]
+    reason: str | None
+    """Why undecided."""
+    ask: list[str]
+    """Project lines that would decide it, most useful first."""
+    why: str
+    source: str
+    places: list[Json]
+    fingerprint: str
+    assumptions: list[int]
+    """Indexes into Document.assumptions."""
+    detail: Json = field(default_factory=dict)
+    """Derivation data: ``worst`` = list of {parameter, value, relative, shares text}; ``level_text`` …"""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Document:
+    """One run on one board. Every list is sorted; no clock, no absolute path."""
+
+    tool: str
+    board: Json
+    inputs: list[Json]
+    conditions: Json
+    parts: list[Json]
+    held: list[Json]
+    packs: list[Json]
+    networks: list[Json]
+    findings: list[Finding]
+    assumptions: list[Json]
+    """``{"about": "R12", "text": "no tolerance given, 5 % assumed", "ask": "[part.\\"R12\\"] tolerance = …"}``."""
+    coverage: Json
+    waivers: list[Json]
+    problems: list[Json]
+    """Remarks about inputs: ``{"place": {...}, "text": …}``."""
+    schema: int = 1

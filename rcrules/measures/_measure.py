@@ -1,0 +1,47 @@
+"""What a measure file offers."""
+
+from collections.abc import Callable, Mapping
+from dataclasses import dataclass, field
+from typing import Literal
+
+from rcrules.problems import Array, Structure
+
+OptionKind = Literal["event", "level", "quantity", "choice", "names"]
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Option:
+    """One option of a measure: what it may be and what it is when a rule does not say."""
+
+    kind: OptionKind
+    default: str | float | None
+    """For events, levels and choices the text; for quantities the SI number; None = must be given."""
+    unit: str = "1"
+    choices: tuple[str, ...] = ()
+    summary: str = ""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Theory:
+    """What is proved about a measure on a structure: per column the sign of its slope, and whether vertices suffice."""
+
+    signs: tuple[int | None, ...]
+    """+1 rises with the column, -1 falls, 0 does not depend on it, None = not known."""
+    vertices: bool = False
+    """True: the extremes over the columns of unknown sign lie at vertices (linear-fractional in each, T1)."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Measure:
+    """A quantity of a node, capacitor, resistor, pin, supply or network."""
+
+    name: str
+    subject: Literal["node", "capacitor", "resistor", "pin", "supply", "network"]
+    unit: str
+    summary: str
+    """One plain sentence."""
+    compute: Callable[[Structure, Array], Array]
+    """cases (case, column) -> values (case,); inf = never or unlimited, nan = not defined (undecided)."""
+    theory: Callable[[Structure, Array, Array], Theory]
+    """Structure, lowest and highest of the columns -> what is proved."""
+    options: Mapping[str, Option] = field(default_factory=dict)

@@ -1,0 +1,1 @@
+"""Step 6: a structure and its parameter columns in, solved cases and bounds out."""

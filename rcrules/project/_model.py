@@ -1,0 +1,106 @@
+"""What the project file may say; everything optional."""
+
+from collections.abc import Mapping
+from dataclasses import dataclass, field
+
+from rcrules.errors import Place
+from rcrules.levels import Level
+from rcrules.quantities import Spread
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class SupplyFacts:
+    """[supply."NET"]"""
+
+    place: Place
+    voltage: Spread | None = None
+    valid: Spread | None = None
+    rise: Spread | None = None
+    after: str | None = None
+    fall: Spread | None = None
+    load: Spread | None = None
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class NetFacts:
+    """[net."NAME"]"""
+
+    place: Place
+    swing: Spread | None = None
+    source_resistance: Spread | None = None
+    wiring_capacitance: Spread | None = None
+    role: str | None = None
+    held: str | None = None
+    set: Mapping[str, str | float] = field(default_factory=dict)
+    """Free words, and numbers (quantities in SI), that rules look up."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class PinFacts:
+    """[pin."PART.PIN"]"""
+
+    place: Place
+    kind: str | None = None
+    low: Level | None = None
+    high: Level | None = None
+    rising: Spread | None = None
+    falling: Spread | None = None
+    pull_up: tuple[Spread, str] | None = None
+    """Resistance and the net it goes to."""
+    pull_down: tuple[Spread, str] | None = None
+    leakage: Spread | None = None
+    """[A], positive out of the node into the pin."""
+    capacitance: Spread | None = None
+    max_voltage: Level | None = None
+    set: Mapping[str, str | float] = field(default_factory=dict)
+    """Further numbers (sample-capacitance, acquisition-time, full-scale …) by key, SI, and free words."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class PartFacts:
+    """[part."REF"] and [defaults.KIND]"""
+
+    place: Place
+    kind: str | None = None
+    value: Spread | None = None
+    tolerance: tuple[float, float] | None = None
+    """Relative low (negative) and high."""
+    rated_voltage: Spread | None = None
+    rated_power: Spread | None = None
+    dielectric: str | None = None
+    tcr: Spread | None = None
+    bias_curve: tuple[tuple[float, float], ...] = ()
+    """Points of [V] and remaining fraction."""
+    fitted: bool | None = None
+    contact: str | None = None
+    """``normally open`` or ``normally closed``."""
+    contact_resistance: Spread | None = None
+    bounce: Spread | None = None
+    set: Mapping[str, str | float] = field(default_factory=dict)
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Project:
+    """A project file; ``Project()`` is the empty one. Names of tables may be globs."""
+
+    file: str | None = None
+    name: str | None = None
+    netlists: tuple[str, ...] = ()
+    boms: tuple[str, ...] = ()
+    rules: tuple[str, ...] = ()
+    temperature: Spread | None = None
+    """[degC]"""
+    life: Spread | None = None
+    """[s]"""
+    supplies: Mapping[str, SupplyFacts] = field(default_factory=dict)
+    grounds: tuple[str, ...] = ()
+    nets: Mapping[str, NetFacts] = field(default_factory=dict)
+    pins: Mapping[str, PinFacts] = field(default_factory=dict)
+    """By ``PART.PIN`` (pin name or number), globs allowed."""
+    parts: Mapping[str, PartFacts] = field(default_factory=dict)
+    defaults: Mapping[str, PartFacts] = field(default_factory=dict)
+    columns: Mapping[str, str] = field(default_factory=dict)
+    settings: Mapping[str, Mapping[str, str | float]] = field(default_factory=dict)
+    """Rule id -> given numbers and words, SI."""
+    setting_units: Mapping[str, Mapping[str, str]] = field(default_factory=dict)
+    """Rule id -> name -> SI unit of the number."""

@@ -1,0 +1,95 @@
+"""What every reader gives: the parts, pins and nets of one file, as written, each with its place."""
+
+from collections.abc import Callable, Mapping
+from dataclasses import dataclass, field
+from typing import Literal
+
+from rcrules.errors import Place
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Source:
+    """One input, read once."""
+
+    name: str
+    """Path as given (relative), or '<stdin>'."""
+    data: bytes
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Cell:
+    """A text of an export and where it stands."""
+
+    text: str
+    place: Place
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class ExportPart:
+    """One reference of the export."""
+
+    ref: str
+    place: Place
+    value: Cell | None = None
+    """The value text, None when absent or a placeholder of the format (``~``)."""
+    footprint: str = ""
+    symbol: str = ""
+    """Name of the library part (``Device:R``, ``LM358``)."""
+    description: str = ""
+    sheet: str = ""
+    fields: Mapping[str, Cell] = field(default_factory=dict)
+    """All further fields by the name the export gives them, stripped; BOM columns too."""
+    fitted: bool | None = None
+    """False where the export says by flag, column or text that the part is not fitted; None = not said."""
+    fitted_why: str = ""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class ExportPin:
+    """One connection of a part to a net."""
+
+    ref: str
+    number: str
+    name: str = ""
+    type: str = ""
+    """One of vocabulary.PIN_TYPES."""
+    net: str
+    """Key of the net: its name, or ``#code`` for a net without a name."""
+    place: Place
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Remark:
+    """Something odd in an input that does not stop the run; shown in the report."""
+
+    place: Place
+    text: str
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Export:
+    """Everything read from one file."""
+
+    reader: str
+    source: str
+    sha256: str
+    kind: Literal["netlist", "bom"]
+    parts: tuple[ExportPart, ...]
+    pins: tuple[ExportPin, ...] = ()
+    nets: tuple[tuple[str, Place], ...] = ()
+    """Every net of the file, also those with one pin or none, in file order, by key."""
+    remarks: tuple[Remark, ...] = ()
+    title: str = ""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Reader:
+    """One format: how to tell it by content, how to read it."""
+
+    name: str
+    """``xml-netlist``, ``sexpr-netlist``, ``pin-list``, ``bom``."""
+    order: int
+    """Readers are asked in rising order; the first that claims the source reads it."""
+    claims: Callable[[Source], bool]
+    read: Callable[[Source, Mapping[str, str]], Export]
+    """Source and the project's [columns] table to an Export. Raises UserMistake."""

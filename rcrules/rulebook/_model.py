@@ -1,0 +1,86 @@
+"""A compiled rule: frozen, checked, independent of any board."""
+
+from collections.abc import Mapping
+from dataclasses import dataclass, field
+from typing import Literal
+
+from rcrules.errors import Place
+from rcrules.levels import Level
+from rcrules.measures import Measure
+from rcrules.quantities import Spread
+
+OptionValue = str | float | Level
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Selection:
+    """All given keys must match; an empty tuple matches everything."""
+
+    role: tuple[str, ...] = ()
+    name: tuple[str, ...] = ()
+    """Whole name tokens of the net or a fed pin; active-low marks ignored."""
+    net: tuple[str, ...] = ()
+    """Globs."""
+    pin: tuple[str, ...] = ()
+    """Globs over ``U3.NRST``."""
+    part: tuple[str, ...] = ()
+    """Globs over references."""
+    sheet: tuple[str, ...] = ()
+    kind: tuple[str, ...] = ()
+    kind_fed: tuple[str, ...] = ()
+    dielectric: tuple[str, ...] = ()
+    certainty: tuple[str, ...] = ()
+    value_at_least: Spread | None = None
+    value_at_most: Spread | None = None
+    polarised: bool | None = None
+    any_of: tuple["Selection", ...] = ()
+    exclude: tuple["Selection", ...] = ()
+    """The key ``not``."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Limit:
+    """A bound of a rule: a number, or a name that is looked up at pin, net, part, settings, given."""
+
+    kind: Literal["at-least", "at-most"]
+    text: str
+    value: Spread | None = None
+    name: str | None = None
+    table: tuple[str, Mapping[str, Spread]] | None = None
+    """``{ by = "mode", standard = …, fast = … }``: the word looked up, and the limit by word."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Pack:
+    """A file of rules."""
+
+    name: str
+    title: str
+    needs_facts: bool
+    caution: str
+    file: str
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Rule:
+    """One rule, ready to be held against any board."""
+
+    id: str
+    pack: Pack
+    place: Place
+    title: str
+    level: str
+    """One of vocabulary.SEVERITIES."""
+    selection: Selection
+    measure: Measure
+    options: Mapping[str, OptionValue]
+    """Every option of the measure, defaults filled in. Quantities are SI floats; names of given numbers stay text
+    starting with ``?`` (looked up like a limit)."""
+    limits: tuple[Limit, ...]
+    given: Mapping[str, Spread | Literal["ask"]] = field(default_factory=dict)
+    given_units: Mapping[str, str] = field(default_factory=dict)
+    """Unit expected of each given name."""
+    never: Literal["fails", "holds"] = "fails"
+    why: str = ""
+    source: str = ""
+    must_meet: int = 0
