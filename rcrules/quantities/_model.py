@@ -1,0 +1,26 @@
+"""What a quantity is, and how a text fails to be one."""
+
+from dataclasses import dataclass
+
+
+class QuantityError(ValueError):
+    """A text is no quantity; ``at`` is the offset of the first character not understood, ``expected`` what goes there."""
+
+    def __init__(self, problem: str, *, at: int = 0, length: int = 1, expected: str = "") -> None:
+        super().__init__(problem)
+        self.problem, self.at, self.length, self.expected = problem, at, length, expected
+
+    def moved(self, by: int) -> "QuantityError":
+        """The same error in a longer text, where this one starts at ``by``."""
+        return QuantityError(self.problem, at=self.at + by, length=self.length, expected=self.expected)
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Spread:
+    """A number between two bounds, SI units."""
+
+    low: float
+    nominal: float
+    high: float
+    unit: str
+    """SI unit symbol: V A Ω F s Hz W J C K degC H Ω/V V/s 1 (a plain number or ratio) bit."""
