@@ -1,0 +1,82 @@
+"""Merges the exports of one board."""
+
+from collections import defaultdict
+from collections.abc import Iterable, Mapping, Sequence
+
+from rcrules.design._disagree import disagreements
+from rcrules.design._merge import Said, merge, word
+from rcrules.design._model import Design, Net, Part, Pin
+from rcrules.design._order import natural
+from rcrules.errors import Place
+from rcrules.readers import Export, ExportPart, ExportPin, Remark
+
+
+def build(exports: Iterable[Export]) -> Design:
+    """One design of all exports of one board; parts, nets and pins in natural order.
+
+    What a BOM says comes before what a netlist says; nothing said is lost. Parts of a BOM alone have no pins; a BOM
+    without a netlist gives a design without nets.
+    """
+    given = tuple(exports)
+    ordered = sorted(given, key=lambda export: export.kind != "bom")
+    pins, remarks = _pins(ordered)
+    said = _said(ordered, pins)
+    parts = {ref: merge(said[ref], tuple(pins.get(ref, ()))) for ref in sorted(said, key=natural)}
+    own = [remark for export in given for remark in export.remarks]
+    return Design(
+        parts=parts,
+        nets=_nets(ordered, parts),
+        exports=given,
+        remarks=(*own, *remarks, *disagreements(parts, said, ordered)),
+    )
+
+
+def _said(exports: Sequence[Export], pins: Mapping[str, Sequence[Pin]]) -> dict[str, list[Said]]:
+    """What each export says about each reference, also about one that only stands in the nets."""
+    said: dict[str, list[Said]] = defaultdict(list)
+    for export in exports:
+        for part in export.parts:
+            said[part.ref].append((word(export), part))
+    for ref, connected in pins.items():
+        if all(kind == "BOM" for kind, _ in said[ref]):
+            said[ref].append(("netlist", ExportPart(ref=ref, place=connected[0].place)))
+    return dict(said)
+
+
+def _pins(exports: Sequence[Export]) -> tuple[dict[str, list[Pin]], list[Remark]]:
+    """Pins by reference in natural order; of two netlists the first one to connect a pin decides."""
+    found: dict[str, dict[tuple[str, str], Pin]] = defaultdict(dict)
+    remarks: list[Remark] = []
+    for export in exports:
+        known = {(ref, number): net for ref, own in found.items() for number, net in own}
+        for pin in export.pins:
+            elsewhere = known.get((pin.ref, pin.number))
+            if elsewhere is None:
+                found[pin.ref].setdefault((pin.number, pin.net), _pin(pin))
+            elif elsewhere != pin.net:
+                other = found[pin.ref][pin.number, elsewhere].place
+                text = f"pin {pin.number} of {pin.ref} is on {pin.net!r}; {elsewhere!r} of {other} stands"
+                remarks.append(Remark(place=pin.place, text=text))
+    return {ref: sorted(own.values(), key=_pin_order) for ref, own in found.items()}, remarks
+
+
+def _pin(pin: ExportPin) -> Pin:
+    return Pin(ref=pin.ref, number=pin.number, name=pin.name, type=pin.type, net=pin.net, place=pin.place)
+
+
+def _pin_order(pin: Pin) -> tuple[object, ...]:
+    return natural(pin.number), natural(pin.net)
+
+
+def _nets(exports: Sequence[Export], parts: Mapping[str, Part]) -> dict[str, Net]:
+    """Every net with its pins in the order of the parts, also nets of one pin or none."""
+    places: dict[str, Place] = {}
+    for export in exports:
+        for name, place in export.nets:
+            places.setdefault(name, place)
+    pins: dict[str, list[Pin]] = {name: [] for name in places}
+    for part in parts.values():
+        for pin in part.pins:
+            places.setdefault(pin.net, pin.place)
+            pins.setdefault(pin.net, []).append(pin)
+    return {name: Net(name=name, pins=tuple(pins[name]), place=places[name]) for name in sorted(pins, key=natural)}

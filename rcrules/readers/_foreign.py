@@ -1,0 +1,77 @@
+"""Names what a source is when it is none of ours, and says what to export instead."""
+
+import re
+from typing import Final
+
+from rcrules.errors import UserMistake
+from rcrules.readers._export import Source
+from rcrules.readers._mistakes import refusal, shorten
+from rcrules.readers._text import head
+from rcrules.readers._xml import root_name
+
+_INSTEAD: Final = "export the netlist from the schematic editor as XML, or the BOM as CSV"
+_AS_CSV: Final = "save the sheet that holds the BOM as CSV, UTF-8"
+_SIGNATURES: Final = (
+    (b"PK\x03\x04", "a ZIP archive or a workbook", _AS_CSV),
+    (b"PK\x05\x06", "an empty ZIP archive", _INSTEAD),
+    (b"\xd0\xcf\x11\xe0", "an old workbook (OLE2), or a workbook with a password", _AS_CSV),
+    (b"\x1f\x8b", "a gzip archive", "unpack it first"),
+    (b"BZh", "a bzip2 archive", "unpack it first"),
+    (b"\xfd7zXZ", "an xz archive", "unpack it first"),
+    (b"7z\xbc\xaf", "a 7z archive", "unpack it first"),
+    (b"%PDF", "a PDF document", _INSTEAD),
+    (b"\x89PNG", "a picture", _INSTEAD),
+    (b"\xff\xd8\xff", "a picture", _INSTEAD),
+)
+_TEXTS: Final = tuple(
+    (re.compile(pattern, re.IGNORECASE | re.MULTILINE), name)
+    for pattern, name in (
+        (r"\A\s*\(\s*edif\b", "an EDIF netlist"),
+        (r"\A\s*(?:#[^\n]*\n\s*)*\(\s*(?:\{[^\n]*\n\s*)?\(\s*/?[0-9a-f]{6,}\s", "an older parenthesised list of parts"),
+        (r"\A\s*\(\s*\w+_(?:sch|pcb)\b", "a schematic or board file, not a netlist"),
+        (r"\A\s*\(NETLIST\)|^\$PACKAGES\b", "a netlist in dollar sections"),
+        (r"^\*(?:PART|NET|SIGNAL)\*", "a netlist in star sections"),
+        (r"\A(?:[CP] [^\n]*\n)*(?:317|327|367)\S|^P  (?:JOB|CODE|UNITS|TITLE|VER)\b", "an IPC-D-356 test netlist"),
+        (r"^\.(?:subckt|ends?|model|param|include|lib|tran|ac|dc|op|control|title)\b", "a SPICE deck"),
+        (r"^[\[(][ \t\r]*$", "a netlist in bracket lists"),
+        (r"\A\s*\((?!\s*\"?export[\s()\"])", "a parenthesised text, but no netlist known here"),
+        (r"\A\s*[{\[]\s*[\"{\[\]}]", "a JSON text"),
+    )
+)
+_ELEMENT_LINE: Final = re.compile(r"^[RCLVIDQMX]\w*(?: +[^\s,;|]+){3,}[ \r]*$", re.IGNORECASE | re.MULTILINE)
+_ROOTS: Final = {"ipc-2581": "an IPC-2581 file", "html": "an HTML page", "svg": "a picture"}
+
+
+def refuse_foreign(source: Source) -> None:
+    """Raise UserMistake where the content is recognised as something else, or is empty or binary."""
+    if not source.data.strip():
+        raise refusal(source.name, "the file is empty", do=_INSTEAD)
+    for signature, name, instead in _SIGNATURES:
+        if source.data.startswith(signature):
+            raise _foreign(source, name, instead)
+    root = root_name(source)
+    if root is not None and root != "export":
+        known = _ROOTS.get(root.lower(), f"XML with the root <{shorten(root)}>")
+        raise _foreign(source, known, _INSTEAD)
+    text = _text_format(head(source)) if root is None else None
+    if text is not None:
+        raise _foreign(source, text, _INSTEAD)
+
+
+def unknown(source: Source) -> UserMistake:
+    """The mistake of a source that no reader claims and that is nothing known."""
+    first = next((line for line in head(source).splitlines() if line.strip()), "")
+    broken = sum(not (character.isprintable() or character in "\t\r\n") for character in head(source))
+    what = "binary data" if broken > 3 else f"text that starts with {shorten(first)!r}"
+    return _foreign(source, what, _INSTEAD)
+
+
+def _text_format(text: str) -> str | None:
+    for pattern, name in _TEXTS:
+        if pattern.search(text):
+            return name
+    return "a SPICE deck" if len(_ELEMENT_LINE.findall(text)) > 1 else None
+
+
+def _foreign(source: Source, found: str, instead: str) -> UserMistake:
+    return refusal(source.name, "the content is of no kind that can be read", line=1, found=found, do=instead)

@@ -1,0 +1,37 @@
+"""Files and standard input to sources."""
+
+import sys
+from pathlib import Path
+from typing import Final
+
+from rcrules.readers._export import Source
+from rcrules.readers._mistakes import refusal
+
+SIZE_LIMIT: Final = 512 * 2**20
+"""Bytes of the largest input that is read, unless the caller says otherwise."""
+
+
+def load(path: str, size_limit: int = SIZE_LIMIT) -> Source:
+    """The bytes of a file, or of standard input for ``-``. Raises UserMistake."""
+    if path == "-":
+        return _whole("<stdin>", sys.stdin.buffer.read(size_limit + 1), size_limit)
+    try:
+        with Path(path).open("rb") as file:
+            return _whole(path, file.read(size_limit + 1), size_limit)
+    except FileNotFoundError as error:
+        raise refusal(path, "no such file", expected=None, do="check the path") from error
+    except (OSError, ValueError) as error:
+        reason = getattr(error, "strerror", None) or str(error)
+        raise refusal(path, "the file cannot be read", found=reason, expected=None, do="check the path") from error
+
+
+def _whole(name: str, data: bytes, size_limit: int) -> Source:
+    if len(data) > size_limit:
+        raise refusal(
+            name,
+            "the file is too large",
+            found=f"more than {size_limit} bytes",
+            expected="a netlist or BOM of one board",
+            do="check that this is the file you mean",
+        )
+    return Source(name=name, data=data)

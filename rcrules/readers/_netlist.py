@@ -1,0 +1,231 @@
+"""What the XML netlist and its S-expression twin mean, apart from how they are written."""
+
+import hashlib
+from collections.abc import Mapping
+from dataclasses import dataclass, field
+from typing import Final
+
+from rcrules.errors import Place
+from rcrules.readers._export import Cell, Export, ExportPart, ExportPin, Remark, Source
+from rcrules.readers._fitting import fitting
+from rcrules.readers._pin_types import pin_type
+
+_SHEET_PROPERTIES: Final = frozenset({"sheetname", "sheetfile"})
+_NO: Final = frozenset({"0", "no", "false", "n"})
+_PLACEHOLDER: Final = "~"
+
+Entry = tuple[str, str | None, int]
+"""Name, text (None = a flag without text) and line of a field or property."""
+Node = tuple[str, str, str, str, int]
+"""Reference, pin number, pin name, pin type and line of one connection, '' where not given."""
+
+
+@dataclass(slots=True, kw_only=True)
+class Component:
+    """A component as written."""
+
+    ref: str
+    line: int
+    value: str = ""
+    value_line: int = 0
+    footprint: str = ""
+    description: str = ""
+    datasheet: str = ""
+    library: str = ""
+    symbol: str = ""
+    sheet: str = ""
+    fields: list[Entry] = field(default_factory=list)
+    properties: list[Entry] = field(default_factory=list)
+    """The same fields once more in some versions, then fields of the sheet, then flags."""
+    variants: list[str] = field(default_factory=list)
+
+
+@dataclass(slots=True, kw_only=True)
+class LibraryPart:
+    """A symbol of the library: the names and types of its pins by number."""
+
+    pins: Mapping[str, tuple[str, str]]
+    description: str = ""
+
+
+class Netlist:
+    """Collects what a parser meets and gives it as an export."""
+
+    def __init__(self, source: Source, reader: str) -> None:
+        self.source, self.reader = source, reader
+        self.title = ""
+        self.remarks: list[Remark] = []
+        self._components: dict[str, Component] = {}
+        self._library: dict[tuple[str, str], LibraryPart] = {}
+        self._by_symbol: dict[str, LibraryPart] = {}
+        self._nets: dict[str, Place] = {}
+        self._nodes: list[tuple[str, Node]] = []
+        self._places: dict[int, Place] = {}
+
+    def place(self, line: int) -> Place:
+        """The place of a line, shared by all that stands there."""
+        found = self._places.get(line)
+        if found is None:
+            found = self._places[line] = Place(file=self.source.name, line=line)
+        return found
+
+    def remark(self, line: int, text: str) -> None:
+        """Keep something odd that does not stop the run."""
+        self.remarks.append(Remark(place=self.place(line), text=text))
+
+    def add_component(self, component: Component) -> None:
+        """Keep a component; of two with the same reference the first stands."""
+        first = self._components.setdefault(component.ref, component)
+        if first is component:
+            return
+        same = (first.value, first.footprint, first.symbol) == (component.value, component.footprint, component.symbol)
+        text = "" if same else f" with value {component.value!r} instead of {first.value!r}"
+        self.remark(component.line, f"{component.ref} is listed again{text}; the one of line {first.line} stands")
+
+    def add_library_part(self, library: str, names: list[str], part: LibraryPart) -> None:
+        """Keep a library part under its own name and its aliases."""
+        for name in names:
+            self._library.setdefault((library, name), part)
+            self._by_symbol.setdefault(name, part)
+
+    def add_net(self, name: str, code: str, line: int, nodes: list[Node]) -> None:
+        """Keep a net; nets without a name are told apart by their code."""
+        key = name or f"#{code or len(self._nets) + 1}"
+        if key in self._nets:
+            if name:
+                self.remark(line, f"net {name!r} is listed again; its pins are added to those of {self._nets[key]}")
+            else:
+                key = f"{key}@{line}"
+        self._nets.setdefault(key, self.place(line))
+        self._nodes.extend((key, node) for node in nodes)
+
+    def export(self) -> Export:
+        """Everything collected, with pin names and types joined in from the library."""
+        pins = self._pins()
+        return Export(
+            reader=self.reader,
+            source=self.source.name,
+            sha256=hashlib.sha256(self.source.data).hexdigest(),
+            kind="netlist",
+            parts=tuple(self._part(component) for component in self._components.values()),
+            pins=pins,
+            nets=tuple(self._nets.items()),
+            remarks=tuple(self.remarks),
+            title=self.title,
+        )
+
+    def _part(self, component: Component) -> ExportPart:
+        fields, flagged = self._fields(component)
+        fitted, why = (False, flagged) if flagged else fitting(component.value, _texts(fields))
+        if component.variants:
+            named = ", ".join(component.variants)
+            self.remark(component.line, f"{component.ref} differs in the variants {named}; the base is taken")
+        library_part = self._library_part(component)
+        described = component.description or (library_part.description if library_part else "")
+        return ExportPart(
+            ref=component.ref,
+            place=self.place(component.line),
+            value=self._value(component),
+            footprint=_said(component.footprint),
+            symbol=":".join(item for item in (component.library, component.symbol) if item),
+            description=_said(described),
+            sheet=component.sheet,
+            fields=fields,
+            fitted=fitted,
+            fitted_why=why,
+        )
+
+    def _value(self, component: Component) -> Cell | None:
+        text = _said(component.value)
+        return Cell(text=text, place=self.place(component.value_line or component.line)) if text else None
+
+    def _fields(self, component: Component) -> tuple[dict[str, Cell], str]:
+        """Fields by stripped name, and the flag that says the part is not fitted, if one does."""
+        fields: dict[str, Cell] = {}
+        flagged = ""
+        for name, text, line in component.fields:
+            self._keep(fields, component, name, text or "", line)
+        for name, text, line in component.properties:
+            plain = name.strip()
+            if plain.lower() in _SHEET_PROPERTIES:
+                continue
+            if plain.lower() == "dnp":
+                said_no = (text or "").strip().lower() in _NO and text is not None and text.strip() != ""
+                flagged = flagged if said_no else "flag 'dnp'"
+            if plain not in fields:
+                self._keep(fields, component, plain, "yes" if text is None else text, line)
+        return fields, flagged
+
+    def _keep(self, fields: dict[str, Cell], component: Component, name: str, text: str, line: int) -> None:
+        plain, said = name.strip(), _said(text)
+        if not said:
+            return
+        held = fields.setdefault(plain, Cell(text=said, place=self.place(line)))
+        if held.text != said:
+            self.remark(line, f"{component.ref} has the field {plain!r} twice: {held.text!r} stands, not {said!r}")
+
+    def _library_part(self, component: Component) -> LibraryPart | None:
+        found = self._library.get((component.library, component.symbol))
+        return found if found is not None else self._by_symbol.get(component.symbol)
+
+    def _pins(self) -> tuple[ExportPin, ...]:
+        libraries = {ref: self._library_part(component) for ref, component in self._components.items()}
+        suffixed = self._names_end_with_number()
+        unknown: dict[str, int] = {}
+        pins: list[ExportPin] = []
+        seen: dict[tuple[str, str], str] = {}
+        for key, (ref, number, name, kind, line) in self._nodes:
+            library = libraries.get(ref)
+            library_name, library_kind = library.pins.get(number, ("", "")) if library else ("", "")
+            normal = pin_type(kind or library_kind)
+            if normal is None:
+                unknown.setdefault(kind or library_kind, line)
+            first = seen.setdefault((ref, number), key)
+            if first != key:
+                self.remark(line, f"pin {number} of {ref} is on net {first!r} and on net {key!r}; both are kept")
+            pins.append(
+                ExportPin(
+                    ref=ref,
+                    number=number,
+                    name=_pin_name(name, _said(library_name), number, suffixed),
+                    type="unspecified" if normal is None else normal,
+                    net=key,
+                    place=self.place(line),
+                )
+            )
+        for kind, line in unknown.items():
+            self.remark(line, f"pin type {kind!r} is not known; taken as unspecified")
+        self._remark_strangers()
+        return tuple(pins)
+
+    def _names_end_with_number(self) -> bool:
+        """True where the export writes every pin name as ``NAME_number``."""
+        named = [(name, number) for _, (_, number, name, _, _) in self._nodes if _said(name)]
+        return len(named) > 1 and all(name.endswith(f"_{number}") for name, number in named)
+
+    def _remark_strangers(self) -> None:
+        told = set(self._components)
+        for _, (ref, _, _, _, line) in self._nodes:
+            if ref not in told:
+                told.add(ref)
+                self.remark(line, f"{ref} stands in the nets but not in the list of components")
+
+
+def _pin_name(given: str, library: str, number: str, suffixed: bool) -> str:
+    name = _said(given)
+    if not name:
+        return library
+    ending = f"_{number}"
+    if name.endswith(ending) and (suffixed or name == library + ending):
+        return _said(name.removesuffix(ending))
+    return name
+
+
+def _said(text: str) -> str:
+    """The text without blanks around it, '' for the placeholder of the format."""
+    plain = text.strip()
+    return "" if plain == _PLACEHOLDER else plain
+
+
+def _texts(fields: Mapping[str, Cell]) -> list[tuple[str, str]]:
+    return [(name, cell.text) for name, cell in fields.items()]

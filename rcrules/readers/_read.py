@@ -1,0 +1,32 @@
+"""Tells sources apart by content and reads them."""
+
+from collections.abc import Mapping
+from functools import cache
+from types import MappingProxyType
+
+from rcrules import discovery
+from rcrules.readers._export import Export, Reader, Source
+from rcrules.readers._foreign import refuse_foreign, unknown
+
+_NO_COLUMNS: Mapping[str, str] = MappingProxyType({})
+
+
+def read(source: Source, columns: Mapping[str, str] = _NO_COLUMNS) -> Export:
+    """Read one source with the first reader that claims it.
+
+    columns: what the project file's [columns] says: canonical name (``reference``, ``value``) to header text.
+    Raises UserMistake where the content is foreign, broken or hostile.
+    """
+    refuse_foreign(source)
+    for reader in readers():
+        if reader.claims(source):
+            return reader.read(source, columns)
+    raise unknown(source)
+
+
+@cache
+def readers() -> tuple[Reader, ...]:
+    """Every reader, in the order in which they are asked."""
+    from rcrules import readers as room
+
+    return tuple(sorted(discovery.members(room, "READER", Reader), key=lambda reader: reader.order))

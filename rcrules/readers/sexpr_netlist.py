@@ -1,0 +1,148 @@
+"""The S-expression netlist: ``(export (version …) …)`` of versions D and E."""
+
+import re
+from collections.abc import Mapping
+from typing import Final
+
+from rcrules.readers._export import Export, Reader, Source
+from rcrules.readers._netlist import Component, Entry, LibraryPart, Netlist, Node
+from rcrules.readers._sexpr import Form, parse
+from rcrules.readers._text import Lines, decode, head
+
+NAME: Final = "sexpr-netlist"
+_START: Final = re.compile(r'\s*\(\s*"?export"?(?=[\s()"])')
+_BRACED: Final = re.compile(r"\{([a-z]+)\}")
+_CHARACTERS: Final = {
+    "slash": "/",
+    "backslash": "\\",
+    "brace": "{",
+    "dblquote": '"',
+    "quote": "'",
+    "lt": "<",
+    "gt": ">",
+    "colon": ":",
+    "bar": "|",
+    "space": " ",
+    "tab": "\t",
+    "return": "\n",
+    "dollar": "$",
+}
+
+
+def claims(source: Source) -> bool:
+    """True for text that starts with ``(export``."""
+    return _START.match(head(source)) is not None
+
+
+def read(source: Source, columns: Mapping[str, str]) -> Export:
+    """Read the netlist form by form, each let go once it is understood. Raises UserMistake."""
+    del columns  # a netlist has none
+    text, remarks = decode(source)
+    lines = Lines(text)
+    netlist = Netlist(source, NAME)
+    netlist.remarks.extend(remarks)
+
+    def take(around: str, form: Form) -> bool:
+        taker = _TAKE.get((around, form.head))
+        if taker is None:
+            return False
+        taker(netlist, form, lines)
+        return True
+
+    parse(source.name, text, lines, take)
+    return netlist.export()
+
+
+def _take_title(netlist: Netlist, form: Form, lines: Lines) -> None:
+    del lines
+    if not netlist.title:
+        netlist.title = _resolved(form.text("title")).strip()
+
+
+def _take_component(netlist: Netlist, form: Form, lines: Lines) -> None:
+    component = Component(ref=form.text("ref").strip(), line=lines.line(form.at))
+    for child in form.forms:
+        _fill(component, child, lines)
+    netlist.add_component(component)
+
+
+def _fill(component: Component, child: Form, lines: Lines) -> None:
+    match child.head:
+        case "value":
+            component.value, component.value_line = _first(child), lines.line(child.at)
+        case "footprint":
+            component.footprint = _first(child)
+        case "description":
+            component.description = _first(child)
+        case "fields":
+            component.fields.extend(_entry(item, _first(item), lines) for item in child.forms)
+        case "property":
+            value = child.find("value")
+            component.properties.append(_entry(child, None if value is None else _first(value), lines))
+        case "libsource":
+            component.library, component.symbol = _resolved(child.text("lib")), _resolved(child.text("part"))
+            component.description = component.description or _resolved(child.text("description"))
+        case "sheetpath":
+            component.sheet = _resolved(child.text("names"))
+        case "variants":
+            component.variants.extend(_resolved(item.text("name")) for item in child.forms)
+
+
+def _entry(item: Form, text: str | None, lines: Lines) -> Entry:
+    return _resolved(item.text("name")), text, lines.line(item.at)
+
+
+def _take_library_part(netlist: Netlist, form: Form, lines: Lines) -> None:
+    del lines
+    names = [_resolved(form.text("part"))]
+    pins: dict[str, tuple[str, str]] = {}
+    for child in form.forms:
+        match child.head:
+            case "aliases":
+                names.extend(_first(alias) for alias in child.forms)
+            case "pins":
+                pins = {pin.text("num"): (_resolved(pin.text("name")), pin.text("type")) for pin in child.forms}
+    part = LibraryPart(pins=pins, description=_resolved(form.text("description")))
+    netlist.add_library_part(_resolved(form.text("lib")), names, part)
+
+
+def _take_net(netlist: Netlist, form: Form, lines: Lines) -> None:
+    nodes: list[Node] = []
+    name = code = ""
+    for child in form.forms:
+        match child.head:
+            case "node":
+                nodes.append(_node(child, lines.line(child.at)))
+            case "name":
+                name = _first(child)
+            case "code":
+                code = _first(child)
+    netlist.add_net(name, code, lines.line(form.at), nodes)
+
+
+def _node(form: Form, line: int) -> Node:
+    said = {child.head: child.atoms[0] for child in form.forms if child.atoms}
+    function = _resolved(said.get("pinfunction", ""))
+    return said.get("ref", "").strip(), said.get("pin", "").strip(), function, said.get("pintype", ""), line
+
+
+_TAKE: Final = {
+    ("sheet", "title_block"): _take_title,
+    ("components", "comp"): _take_component,
+    ("libparts", "libpart"): _take_library_part,
+    ("nets", "net"): _take_net,
+}
+
+
+def _first(form: Form) -> str:
+    return _resolved(form.atoms[0]) if form.atoms else ""
+
+
+def _resolved(text: str) -> str:
+    """The text with its brace escapes resolved (``{slash}``); unknown ones stay."""
+    if "{" not in text:
+        return text
+    return _BRACED.sub(lambda found: _CHARACTERS.get(found.group(1), found.group(0)), text)
+
+
+READER = Reader(name=NAME, order=20, claims=claims, read=read)
