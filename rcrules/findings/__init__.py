@@ -1,5 +1,7 @@
 """Step 10: the one document that every report is made from."""
 
-from rcrules.findings._document import Document, Finding, Quantity
+from rcrules.findings._document import Document, Finding, Json, Quantity
+from rcrules.findings._encode import SCHEMA, dumps, loads, settled
+from rcrules.findings._schema import schema_text
 
-__all__ = ["Document", "Finding", "Quantity"]
+__all__ = ["SCHEMA", "Document", "Finding", "Json", "Quantity", "dumps", "loads", "schema_text", "settled"]

@@ -53,10 +53,14 @@ class Finding:
     source: str
     places: list[Json]
     fingerprint: str
+    """Two keys joined by a dot: references and pins; topology around the fed pin. No values, no automatic net names."""
     assumptions: list[int]
     """Indexes into Document.assumptions."""
+    cause: str = ""
+    """Findings of equal rule and cause are one group in reports; '' = alone."""
     detail: Json = field(default_factory=dict)
-    """Derivation data: ``worst`` = list of {parameter, value, relative, shares text}; ``level_text`` …"""
+    """Derivation data: ``worst`` = list of {parameter, value, unit, relative, why}, most influential first;
+    ``deciding`` = {parameter, text, flips_at, unit} of an undecided finding; ``never`` = the level is not reached."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

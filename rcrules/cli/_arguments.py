@@ -1,0 +1,124 @@
+"""What may stand on the command line. Imports nothing but argparse, so that help is instant."""
+
+import argparse
+from typing import Final
+
+from rcrules import __version__
+from rcrules.cli import _run
+
+_DESCRIPTION: Final = (
+    "Finds the RC networks of a board, works out what each does in the worst case, and holds it against rules."
+)
+_EXIT: Final = (
+    "exit: 0 nothing at or above the fail level, 1 findings, 2 inputs, rules or usage wrong, 3 a bug of rcrules, "
+    "130 interrupted"
+)
+
+
+def parser() -> argparse.ArgumentParser:
+    """The whole command line; every command sets ``run``."""
+    whole = argparse.ArgumentParser(prog="rcrules", description=_DESCRIPTION, epilog=_EXIT, allow_abbrev=False)
+    whole.add_argument("--version", action="version", version=f"rcrules {__version__}")
+    commands = whole.add_subparsers(title="commands", required=True, metavar="COMMAND")
+    _check(_command(commands, "check", _run.check, "inputs (or rcrules.toml) and rules to findings"))
+    _networks(
+        _command(commands, "networks", _run.networks, "what was found: networks, nodes, roles, quantities; no rules")
+    )
+    _rules(_command(commands, "rules", _run.rules, "list and validate rules"))
+    _demo(_command(commands, "demo", _run.demo, "the demo board: copies it, checks it, shows the report"))
+    return whole
+
+
+def _command(
+    commands: "argparse._SubParsersAction[argparse.ArgumentParser]", name: str, run: object, summary: str
+) -> argparse.ArgumentParser:
+    made = commands.add_parser(
+        name, help=summary, description=f"{summary[0].upper()}{summary[1:]}.", epilog=_EXIT, allow_abbrev=False
+    )
+    made.set_defaults(run=run)
+    return made
+
+
+def _check(command: argparse.ArgumentParser) -> None:
+    _board_options(command)
+    command.add_argument(
+        "--rules",
+        action="append",
+        default=[],
+        metavar="PACK|FILE",
+        help="rules to apply (repeatable; else the project's; else the packs that need no project facts, as warnings)",
+    )
+    command.add_argument(
+        "--fail-on",
+        choices=("error", "warning", "note", "never"),
+        default="error",
+        help="the lowest level of a failing finding that makes the exit code 1 (default: error)",
+    )
+    command.add_argument(
+        "--fail-on-undecided", action="store_true", help="undecided findings of that level count as well"
+    )
+    _output_options(command)
+
+
+def _networks(command: argparse.ArgumentParser) -> None:
+    _board_options(command)
+    _output_options(command)
+
+
+def _board_options(command: argparse.ArgumentParser) -> None:
+    command.add_argument(
+        "inputs",
+        nargs="*",
+        metavar="INPUT",
+        help="netlists and BOMs of one board, told apart by content; - reads standard input",
+    )
+    command.add_argument(
+        "--project",
+        action="append",
+        default=[],
+        metavar="FILE",
+        help="project file (default: rcrules.toml in the first input's folder or above); repeated: one board each",
+    )
+    command.add_argument(
+        "--jobs", type=_positive, default=1, metavar="N", help="boards worked on at a time (default: 1)"
+    )
+
+
+def _output_options(command: argparse.ArgumentParser) -> None:
+    command.add_argument(
+        "--report",
+        action="append",
+        default=[],
+        metavar="FORMAT[=PATH]",
+        help="text (default) or json, on standard output or to a file (repeatable); {board} in PATH: the board's name",
+    )
+    command.add_argument("--verbose", action="store_true", help="also list assumptions, evidence and what holds")
+    command.add_argument("--quiet", action="store_true", help="no report but those asked for by --report")
+    command.add_argument(
+        "--color", choices=("auto", "always", "never"), default="auto", help="colours (default: on a terminal)"
+    )
+
+
+def _rules(command: argparse.ArgumentParser) -> None:
+    command.add_argument(
+        "packs", nargs="*", metavar="PACK|FILE", help="packs or files to list (default: all shipped packs)"
+    )
+    command.add_argument(
+        "--measures", action="store_true", help="list the measures that rules may use, with their options"
+    )
+
+
+def _demo(command: argparse.ArgumentParser) -> None:
+    command.add_argument(
+        "folder", nargs="?", metavar="FOLDER", help="where to copy it (default: a new temporary folder)"
+    )
+    command.add_argument(
+        "--color", choices=("auto", "always", "never"), default="auto", help="colours (default: on a terminal)"
+    )
+
+
+def _positive(text: str) -> int:
+    number = int(text)
+    if number < 1:
+        raise argparse.ArgumentTypeError(f"expected a number of 1 or more, found {text}")
+    return number

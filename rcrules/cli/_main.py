@@ -1,0 +1,39 @@
+"""From arguments to an exit code."""
+
+import sys
+from collections.abc import Sequence
+from typing import Final
+
+from rcrules.cli._arguments import parser
+from rcrules.errors import UserMistake
+
+USAGE: Final = 2
+BUG: Final = 3
+INTERRUPTED: Final = 130
+
+
+def main(arguments: Sequence[str] | None = None) -> int:
+    """Run one command; everything but reports goes to standard error."""
+    chosen = parser().parse_args(arguments)
+    try:
+        found: int = chosen.run(chosen)
+    except UserMistake as error:
+        print("\n".join(_shown(str(mistake)) for mistake in error.mistakes), file=sys.stderr)
+        return USAGE
+    except KeyboardInterrupt:
+        print("interrupted", file=sys.stderr)
+        return INTERRUPTED
+    except Exception:  # our own bug: shown whole, never swallowed
+        import traceback
+
+        traceback.print_exc()
+        print("this is a bug of rcrules, not of your files; please report it with the lines above", file=sys.stderr)
+        return BUG
+    return found
+
+
+def _shown(text: str) -> str:
+    """The lines of a mistake without what could steer the terminal; names in it come from strangers."""
+    from rcrules.reports import safe
+
+    return "\n".join(safe(line) for line in text.split("\n"))

@@ -1,0 +1,90 @@
+"""Reports to standard output or to files."""
+
+import os
+import re
+import sys
+from dataclasses import dataclass
+from pathlib import Path
+
+from rcrules.errors import Mistake, Place, UserMistake
+from rcrules.findings import Document
+from rcrules.reports import Report, reports
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Target:
+    """One ``--report``: a format and where it goes."""
+
+    report: Report
+    path: str | None
+    """None = standard output; ``{board}`` stands for the board's name."""
+
+
+def targets(asked: list[str], *, boards: int) -> list[Target]:
+    """The values of ``--report`` understood. Raises UserMistake with all that is wrong with them."""
+    found = [_target(text) for text in asked]
+    bare = [target for target in found if target.path is None]
+    if len(bare) > 1:
+        raise _mistake(
+            "more than one report on standard output", do="give all but one a file: --report json=findings.json"
+        )
+    if boards > 1 and any(target.path is not None and "{board}" not in target.path for target in found):
+        raise _mistake("several boards, one report file", do="name the file by board: --report 'json={board}.json'")
+    if boards > 1 and any(target.report.name == "json" for target in bare):
+        raise _mistake("several boards, one JSON text", do="name files by board: --report 'json={board}.json'")
+    return found
+
+
+def _target(text: str) -> Target:
+    name, equals, path = text.partition("=")
+    report = reports().get(name)
+    if report is None:
+        raise _mistake("unknown report format", found=name, expected=", ".join(sorted(reports())))
+    if equals and not path:
+        raise _mistake("no file after '='", found=text, expected=f"{name}=findings{report.suffix}")
+    return Target(report=report, path=path or None)
+
+
+def write(document: Document, target: Target, *, verbose: bool, color: bool) -> None:
+    """Render one report and put it where it goes; files are UTF-8, never coloured."""
+    text = target.report.render(document, verbose=verbose, color=color and target.path is None)
+    if target.path is None:
+        to_stdout(text)
+        return
+    path = Path(target.path.replace("{board}", _file_name(str(document.board["name"]))))
+    try:
+        path.write_bytes(text.encode("utf-8", "backslashreplace"))
+    except OSError as error:
+        raise _mistake(f"cannot write the report: {error.strerror}", place=str(path)) from error
+
+
+def to_stdout(text: str) -> None:
+    """Write a text; what the terminal cannot show is escaped; a reader that has gone away is no mistake."""
+    encoding = sys.stdout.encoding or "utf-8"
+    try:
+        sys.stdout.write(text.encode(encoding, "backslashreplace").decode(encoding))
+        sys.stdout.flush()
+    except BrokenPipeError:
+        os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
+
+
+def wants_color(choice: str) -> bool:
+    """``always``, ``never``, or on a terminal that has not asked for none."""
+    if choice != "auto":
+        return choice == "always"
+    return sys.stdout.isatty() and not os.environ.get("NO_COLOR") and os.environ.get("TERM") != "dumb"
+
+
+def _file_name(name: str) -> str:
+    return re.sub(r"[^\w.-]+", "-", name).strip("-.") or "board"
+
+
+def _mistake(
+    problem: str,
+    *,
+    place: str = "--report",
+    found: str | None = None,
+    expected: str | None = None,
+    do: str | None = None,
+) -> UserMistake:
+    return UserMistake(Mistake(place=Place(file=place), problem=problem, found=found, expected=expected, do=do))

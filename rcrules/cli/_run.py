@@ -1,0 +1,86 @@
+"""The commands themselves. Each imports what it needs when it runs."""
+
+import argparse
+import sys
+from pathlib import Path
+from typing import TYPE_CHECKING
+
+if TYPE_CHECKING:
+    from rcrules.findings import Document
+
+
+def check(chosen: argparse.Namespace) -> int:
+    """Findings of every board; 1 when one counts."""
+    documents = _documents(chosen, with_rules=True)
+    _write(documents, chosen)
+    return int(any(_counts(document, chosen.fail_on, chosen.fail_on_undecided) for document in documents))
+
+
+def networks(chosen: argparse.Namespace) -> int:
+    """What was found on every board."""
+    _write(_documents(chosen, with_rules=False), chosen)
+    return 0
+
+
+def rules(chosen: argparse.Namespace) -> int:
+    """Packs and rules, or measures, in words."""
+    from rcrules.cli._listing import measures_text, rules_text
+    from rcrules.cli._output import to_stdout
+
+    to_stdout(measures_text() if chosen.measures else rules_text(tuple(chosen.packs)))
+    return 0
+
+
+def demo(chosen: argparse.Namespace) -> int:
+    """Copy the demo board, check it, show the report; its planted faults are no failure of the command."""
+    from rcrules.cli._demo import copy_demo
+    from rcrules.cli._output import to_stdout, wants_color
+    from rcrules.pipeline import Job, run
+    from rcrules.reports import reports
+
+    folder = copy_demo(Path(chosen.folder) if chosen.folder else None)
+    print(f"demo board in {folder}", file=sys.stderr)
+    document = run(Job(project=str(folder / "rcrules.toml")))
+    to_stdout(reports()["text"].render(document, color=wants_color(chosen.color)))
+    return 0
+
+
+def _documents(chosen: argparse.Namespace, *, with_rules: bool) -> "list[Document]":
+    """One document per board, in the order given."""
+    from rcrules.pipeline import Job, run_all
+
+    rules = tuple(chosen.rules) if with_rules else ()
+    projects = chosen.project or [None]
+    if len(projects) > 1 and chosen.inputs:
+        raise _usage("inputs and several --project", do="give each board its inputs in its project file")
+    jobs = [
+        Job(inputs=tuple(chosen.inputs), project=project, rules=rules, with_rules=with_rules) for project in projects
+    ]
+    return run_all(jobs, processes=chosen.jobs)
+
+
+def _write(documents: "list[Document]", chosen: argparse.Namespace) -> None:
+    """All reports asked for; text on standard output when none is."""
+    from rcrules.cli._output import targets, wants_color, write
+
+    asked = targets(chosen.report or ([] if chosen.quiet else ["text"]), boards=len(documents))
+    for document in documents:
+        for target in asked:
+            write(document, target, verbose=chosen.verbose, color=wants_color(chosen.color))
+
+
+def _counts(document: "Document", fail_on: str, undecided: bool) -> bool:
+    """Whether a finding at or above the level fails (or is undecided, where that counts)."""
+    from rcrules.vocabulary import SEVERITIES
+
+    if fail_on == "never":
+        return False
+    levels = SEVERITIES[: SEVERITIES.index(fail_on) + 1]
+    outcomes = ("fails", "undecided") if undecided else ("fails",)
+    return any(item.outcome in outcomes and item.level in levels for item in document.findings)
+
+
+def _usage(problem: str, do: str) -> Exception:
+    from rcrules.errors import Mistake, Place, UserMistake
+
+    return UserMistake(Mistake(place=Place(file="command line"), problem=problem, do=do))

@@ -1,0 +1,22 @@
+"""Step 8b: a recognised board in; its parts, held nets, networks and quantities as the document holds them out."""
+
+from rcrules.inventory._board import board_counts, inputs, problems
+from rcrules.inventory._held import held
+from rcrules.inventory._networks import networks
+from rcrules.inventory._parts import listed, parts
+from rcrules.inventory._place import place_json
+from rcrules.inventory._quantities import Quantities, as_quantity, node_quantities
+
+__all__ = [
+    "Quantities",
+    "as_quantity",
+    "board_counts",
+    "held",
+    "inputs",
+    "listed",
+    "networks",
+    "node_quantities",
+    "parts",
+    "place_json",
+    "problems",
+]

@@ -1,0 +1,27 @@
+"""What a report file offers."""
+
+from collections.abc import Callable
+from dataclasses import dataclass
+from typing import Protocol
+
+from rcrules.findings import Document
+
+
+class Render(Protocol):
+    """A pure function of the document."""
+
+    def __call__(self, document: Document, *, verbose: bool = False, color: bool = False) -> str:
+        """The whole report, ending in a newline."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Report:
+    """One output format."""
+
+    name: str
+    """As ``--report`` names it."""
+    suffix: str
+    """Of a file that holds it."""
+    summary: str
+    """One plain sentence."""
+    render: Render | Callable[..., str]

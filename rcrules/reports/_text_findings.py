@@ -1,0 +1,146 @@
+"""Findings in words: failing ones in full, undecided ones by the line that decides most, holding ones on request."""
+
+from collections.abc import Iterable, Mapping
+from typing import Final
+
+from rcrules.findings import Document, Finding, Json
+from rcrules.reports._lines import Line
+from rcrules.reports._words import (
+    asked,
+    bounds,
+    count,
+    extreme,
+    in_percent,
+    limit_text,
+    margin_text,
+    number,
+    part_texts,
+    parts_text,
+)
+from rcrules.vocabulary import SEVERITIES
+
+_INDENT: Final = "       "
+_SHOWN_CASES: Final = 4
+_SHOWN_SUBJECTS: Final = 3
+
+
+def findings_lines(document: Document, *, verbose: bool) -> list[Line]:
+    """All blocks, each after an empty line."""
+    texts = part_texts(document)
+    lines: list[Line] = []
+    for group in _groups(item for item in document.findings if item.outcome == "fails"):
+        lines += [(), *_block(group, texts, document)]
+    lines += _undecided(document, texts, verbose=verbose)
+    if verbose:
+        lines += _holding(document, texts)
+    return lines
+
+
+def _groups(findings: Iterable[Finding]) -> list[list[Finding]]:
+    """Findings of one rule and one cause together; the gravest level first, then the most broken."""
+    groups: dict[tuple[str, ...], list[Finding]] = {}
+    for item in findings:
+        alone = () if item.cause else (item.net or "", *item.parts)
+        groups.setdefault((item.rule, item.cause, *alone), []).append(item)
+    return sorted(
+        groups.values(),
+        key=lambda group: (SEVERITIES.index(group[0].level), group[0].rule, group[0].net or "", group[0].parts),
+    )
+
+
+def _block(group: list[Finding], texts: Mapping[str, str], document: Document) -> list[Line]:
+    """One failing group: heading, numbers, the worst case, why."""
+    first = group[0]
+    lines = [_heading(first, texts), _numbers(first)]
+    if first.detail.get("worst"):
+        lines.append((_INDENT, f"{extreme(first)} at  ", _case_text(first.detail["worst"])))
+    if len(group) > 1:
+        lines.append((_INDENT, f"the same on  {_subjects(group[1:], texts, limit=12)}"))
+    lines.append(_why(first))
+    caution = {pack["name"]: pack["caution"] for pack in document.packs}.get(first.pack)
+    return [*lines, (_INDENT, "caution  ", caution)] if caution else lines
+
+
+def _heading(finding: Finding, texts: Mapping[str, str]) -> Line:
+    """``error  rule   NRST   R12 10 kΩ, C7 10 µF -> U3.NRST``."""
+    fed = f" -> {', '.join(finding.feeds)}" if finding.feeds else ""
+    net = f"   {finding.net}" if finding.net else ""
+    word = (f"{finding.level:<7}", f"{finding.outcome} {finding.level}")
+    return (word, (finding.rule, "name"), f"{net}   {parts_text(finding.parts, texts)}{fed}")
+
+
+def _numbers(finding: Finding) -> Line:
+    """What was measured, its bounds, the limit, by how much, how sure."""
+    measured = finding.measured
+    if measured is None:
+        return (_INDENT, asked(finding))
+    percent = in_percent(finding)
+    spread = bounds(measured.low, measured.nominal, measured.high, measured.unit, percent=percent)
+    return (
+        _INDENT,
+        "   ".join(filter(None, (asked(finding), spread, limit_text(finding), margin_text(finding), measured.method))),
+    )
+
+
+def _case_text(worst: list[Json]) -> str:
+    """``C7 -38 % (tolerance -20 %, X5R -15 %), R12 -1 %``; the rest counted."""
+    texts = [_parameter_text(item) for item in worst[:_SHOWN_CASES]]
+    rest = len(worst) - _SHOWN_CASES
+    return ", ".join(texts) + (f", {count(rest, 'further part', 'further parameters')}" if rest > 0 else "")
+
+
+def _parameter_text(item: Json) -> str:
+    relative = item["relative"]
+    amount = number(item["value"], item["unit"]) if relative is None else f"{100 * relative:+.3g} %"
+    return f"{item['parameter']} {amount}" + (f" ({item['why']})" if item["why"] else "")
+
+
+def _why(finding: Finding) -> Line:
+    source = f"   (source: {finding.source})" if finding.source else ""
+    return (_INDENT, "why  ", finding.why or finding.title, (source, "dim"))
+
+
+def _subjects(findings: list[Finding], texts: Mapping[str, str], *, limit: int) -> str:
+    """Nets or parts, the first few by name."""
+    names = [item.net or parts_text(item.parts, texts) for item in findings]
+    rest = len(names) - limit
+    return ", ".join(names[:limit]) + (f" and {rest} more" if rest > 0 else "")
+
+
+def _undecided(document: Document, texts: Mapping[str, str], *, verbose: bool) -> list[Line]:
+    """Entries by the one line that decides most findings, the most useful first."""
+    entries: dict[str, list[Finding]] = {}
+    for item in document.findings:
+        if item.outcome == "undecided":
+            entries.setdefault(item.ask[0] if item.ask else "", []).append(item)
+    lines: list[Line] = []
+    for ask, findings in sorted(entries.items(), key=lambda entry: (not entry[0], -len(entry[1]), entry[0])):
+        lines += [(), _entry_heading(ask, len(findings)), *_entry_details(findings, texts, verbose=verbose)]
+    return lines
+
+
+def _entry_heading(ask: str, findings: int) -> Line:
+    if not ask:
+        return (("undecided", "open"), f": {count(findings, 'finding')} that no line of the project file would decide")
+    return (("undecided", "open"), f": one line decides {count(findings, 'finding')}   ", (ask, "name"))
+
+
+def _entry_details(findings: list[Finding], texts: Mapping[str, str], *, verbose: bool) -> list[Line]:
+    """Rule, reason and subjects; findings of one rule and reason on one line."""
+    together: dict[tuple[str, str], list[Finding]] = {}
+    for item in findings:
+        together.setdefault((item.rule, item.reason or ""), []).append(item)
+    limit = len(findings) if verbose else _SHOWN_SUBJECTS
+    return [
+        (_INDENT, f"{rule}   {_subjects(group, texts, limit=limit)}   {reason}")
+        for (rule, reason), group in together.items()
+    ]
+
+
+def _holding(document: Document, texts: Mapping[str, str]) -> list[Line]:
+    """One line per holding or waived finding."""
+    lines: list[Line] = []
+    for item in document.findings:
+        if item.outcome in ("holds", "waived"):
+            lines += [(), ((f"{item.outcome:<7}", "good"), *_heading(item, texts)[1:]), _numbers(item)]
+    return lines
