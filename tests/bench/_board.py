@@ -1,0 +1,76 @@
+"""Generated boards of any size: cells of a controller with reset, filters, divider, button, supply filter and decoupling."""
+
+from xml.sax.saxutils import quoteattr
+
+PARTS_PER_CELL = 25
+
+
+def netlist(parts: int) -> str:
+    """An XML netlist (version E) with about ``parts`` parts."""
+    components: list[tuple[str, str, str]] = []
+    nets: dict[str, list[tuple[str, str, str, str]]] = {}
+    for cell in range(max(1, round(parts / PARTS_PER_CELL))):
+        _cell(cell, components, nets)
+    lines = ['<?xml version="1.0" encoding="UTF-8"?>', '<export version="E">', "<components>"]
+    for ref, value, symbol in components:
+        lines += [
+            f"<comp ref={quoteattr(ref)}>",
+            f"<value>{value}</value>",
+            f'<libsource lib="Device" part="{symbol}"/>',
+            "</comp>",
+        ]
+    lines += ["</components>", "<nets>"]
+    for code, (name, pins) in enumerate(nets.items(), 1):
+        lines.append(f'<net code="{code}" name={quoteattr(name)}>')
+        lines += [
+            f'<node ref="{ref}" pin="{pin}" pinfunction="{function}" pintype="{kind}"/>'
+            for ref, pin, function, kind in pins
+        ]
+        lines.append("</net>")
+    return "\n".join([*lines, "</nets>", "</export>", ""])
+
+
+def _cell(cell: int, components: list[tuple[str, str, str]], nets: dict[str, list[tuple[str, str, str, str]]]) -> None:
+    """One controller with what hangs on it; the values differ from cell to cell."""
+
+    def passive(prefix: str, number: int, value: str, a: str, b: str) -> None:
+        ref = f"{prefix}{cell * 20 + number}"
+        components.append((ref, value, prefix))
+        nets.setdefault(a, []).append((ref, "1", "", "passive"))
+        nets.setdefault(b, []).append((ref, "2", "", "passive"))
+
+    def pin(ref: str, number: int, name: str, kind: str, net: str) -> None:
+        nets.setdefault(net, []).append((ref, str(number), name, kind))
+
+    kilo, nano = 1 + cell % 47, 10 + cell % 83
+    chip, plug, switch = f"U{cell + 1}", f"J{cell + 1}", f"SW{cell + 1}"
+    components.extend([(chip, "QX32", "QX32"), (plug, "PROBE", "Conn_04"), (switch, "KEY", "SW_Push")])
+    here = f"/cell{cell}/"
+    passive("R", 1, f"{kilo}k 1%", "+3V3", here + "NRST")
+    passive("C", 1, "1uF 10% 16V X7R", here + "NRST", "GND")
+    for channel in range(4):
+        passive("R", 2 + channel, f"{kilo}k 1%", f"{here}IN{channel}", f"{here}AIN{channel}")
+        passive("C", 2 + channel, f"{nano}nF 10% 50V X7R", f"{here}AIN{channel}", "GND")
+        pin(plug, channel + 1, "", "passive", f"{here}IN{channel}")
+        pin(chip, 10 + channel, f"AIN{channel}", "input", f"{here}AIN{channel}")
+    passive("R", 6, "100k 1%", "+12V", here + "SENSE")
+    passive("R", 7, "22k 1%", here + "SENSE", "GND")
+    passive("C", 6, f"{nano}nF 10% 50V X7R", here + "SENSE", "GND")
+    passive("R", 8, f"{kilo}k 5%", "+3V3", here + "KEY")
+    passive("C", 7, "100nF 10% 50V X7R", here + "KEY", "GND")
+    pin(switch, 1, "", "passive", here + "KEY")
+    pin(switch, 2, "", "passive", "GND")
+    passive("R", 9, "10 1%", "+3V3", here + "VDDA")
+    passive("C", 8, "1uF 10% 16V X7R", here + "VDDA", "GND")
+    for number in range(9, 12):
+        passive("C", number, "100nF 10% 50V X7R", "+3V3", "GND")
+    pins = [
+        ("VDD", "power_in", "+3V3"),
+        ("VSS", "power_in", "GND"),
+        ("VDDA", "power_in", here + "VDDA"),
+        ("NRST", "input", here + "NRST"),
+        ("AIN4", "input", here + "SENSE"),
+        ("PA0", "input", here + "KEY"),
+    ]
+    for number, (name, kind, net) in enumerate(pins, 1):
+        pin(chip, number, name, kind, net)
