@@ -1,4 +1,4 @@
-"""All benches, one after the other: ``python -m tests.bench [engine|start-up|growth ...]``. Ratios within one run; nothing is asserted."""
+"""All benches: ``python -m tests.bench [engine|start-up|growth ...]``. Ratios within one run; nothing is asserted."""
 
 import importlib
 import sys

@@ -1,4 +1,4 @@
-"""Generated boards of any size: cells of a controller with reset, filters, divider, button, supply filter and decoupling."""
+"""Generated boards of any size: controllers with reset, filters, divider, button, supply filter and decoupling."""
 
 from xml.sax.saxutils import quoteattr
 
