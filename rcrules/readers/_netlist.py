@@ -6,6 +6,7 @@ from dataclasses import dataclass, field
 from typing import Final
 
 from rcrules.errors import Place
+from rcrules.readers._columns import DESCRIPTION, plain
 from rcrules.readers._export import Cell, Export, ExportPart, ExportPin, Remark, Source
 from rcrules.readers._fitting import fitting
 from rcrules.readers._pin_types import pin_type
@@ -120,20 +121,24 @@ class Netlist:
         if component.variants:
             named = ", ".join(component.variants)
             self.remark(component.line, f"{component.ref} differs in the variants {named}; the base is taken")
-        library_part = self._library_part(component)
-        described = component.description or (library_part.description if library_part else "")
         return ExportPart(
             ref=component.ref,
             place=self.place(component.line),
             value=self._value(component),
             footprint=_said(component.footprint),
             symbol=":".join(item for item in (component.library, component.symbol) if item),
-            description=_said(described),
+            description=self._description(component, fields),
             sheet=component.sheet,
             fields=fields,
             fitted=fitted,
             fitted_why=why,
         )
+
+    def _description(self, component: Component, fields: Mapping[str, Cell]) -> str:
+        """The part's own description; else what the library says of its symbol."""
+        own = next((cell.text for name, cell in fields.items() if plain(name) in DESCRIPTION), "")
+        library_part = self._library_part(component)
+        return own or _said(component.description) or _said(library_part.description if library_part else "")
 
     def _value(self, component: Component) -> Cell | None:
         text = _said(component.value)

@@ -31,8 +31,9 @@ def head(source: Source) -> str:
 def decode(source: Source) -> tuple[str, tuple[Remark, ...]]:
     """The text of a source, and a remark where its encoding had to be assumed.
 
-    Tried in order: byte order mark, UTF-16 by its pattern of zeros, UTF-8, Windows-1252. Raises UserMistake where the
-    text is broken under its own mark or holds NUL characters.
+    Tried in order: byte order mark, UTF-16 by its pattern of zeros, UTF-8; then, line by line, UTF-8 or Windows-1252
+    (files joined from both occur). Raises UserMistake where the text is broken under its own mark or holds NUL
+    characters.
     """
     encoding, mark = _declared(source.data[:HEAD_SIZE])
     remarks: tuple[Remark, ...] = ()
@@ -49,8 +50,8 @@ def decode(source: Source) -> tuple[str, tuple[Remark, ...]]:
                 expected=f"{encoding.upper()}, as the first bytes of the file announce",
                 do="export the file again, as UTF-8",
             ) from error
-        text = source.data.decode("cp1252", "replace")
-        said = "not UTF-8 from here on; read as Windows-1252, check letters such as µ and Ω"
+        text = "".join(_line_text(line) for line in source.data.splitlines(keepends=True))
+        said = "this line is not UTF-8; it and others like it are read as Windows-1252, check letters such as µ"
         remarks = (Remark(place=Place(file=source.name, line=line), text=said),)
     _refuse_nul(source, text)
     return text, remarks
@@ -70,6 +71,13 @@ class Lines:
         """Column of an offset, from 1."""
         index = bisect_right(self._ends, offset)
         return offset - (self._ends[index - 1] if index else 0) + 1
+
+
+def _line_text(line: bytes) -> str:
+    try:
+        return line.decode("utf-8")
+    except UnicodeDecodeError:
+        return line.decode("cp1252", "replace")
 
 
 def _declared(data: bytes) -> tuple[str | None, int]:

@@ -1,0 +1,115 @@
+"""Delimited text: rows of cells, each with its place."""
+
+import re
+from collections import Counter
+from collections.abc import Callable, Sequence
+from dataclasses import dataclass
+from typing import Final
+
+from rcrules.readers._export import Source
+from rcrules.readers._mistakes import refusal, shorten
+
+DELIMITERS: Final = (",", ";", "\t", "|")
+MAX_COLUMNS: Final = 1024
+_SAMPLE: Final = 400
+"""Rows by which the delimiter is chosen."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Row:
+    """One row: cell texts without blanks around them, and where each cell starts."""
+
+    line: int
+    cells: tuple[str, ...]
+    columns: tuple[int, ...]
+    """Column of the file at which each cell starts, from 1."""
+
+    def cell(self, index: int | None) -> str:
+        """Text of a cell, '' where the row is too short or no index is given."""
+        return self.cells[index] if index is not None and index < len(self.cells) else ""
+
+    def blank(self) -> bool:
+        """True where no cell holds text."""
+        return not any(self.cells)
+
+
+def rows(source: Source, text: str, is_header: Callable[[Sequence[str]], bool]) -> tuple[Row, ...]:
+    """All rows that hold text, split at the delimiter that fits best.
+
+    That is the one under which a header row is recognised, else the one that cuts most rows into one same number of
+    cells. Raises UserMistake where a quoted cell is not closed or a row has too many cells.
+    """
+    best: tuple[tuple[bool, int, int], str] | None = None
+    for delimiter in DELIMITERS:
+        if delimiter in text:
+            sample = _split(source, text, delimiter, _SAMPLE)
+            score = _score(sample, is_header)
+            if best is None or score > best[0]:
+                best = score, delimiter
+    return _split(source, text, best[1] if best else ",", None)
+
+
+def _score(sample: Sequence[Row], is_header: Callable[[Sequence[str]], bool]) -> tuple[bool, int, int]:
+    widths = Counter(len(row.cells) for row in sample if len(row.cells) > 1)
+    width, count = max(widths.items(), key=lambda item: (item[1], item[0])) if widths else (0, 0)
+    return any(is_header(row.cells) for row in sample), count, width
+
+
+def _split(source: Source, text: str, delimiter: str, limit: int | None) -> tuple[Row, ...]:
+    """Rows of text cut at the delimiter outside quotes; blank rows are left out; with a limit, nothing is refused."""
+    cell = _cell_pattern(delimiter)
+    found: list[Row] = []
+    at, line, start = 0, 1, 0
+    cells: list[str] = []
+    columns: list[int] = []
+    first_line = line
+    while at <= len(text) and (limit is None or len(found) < limit):
+        match = cell.match(text, at)
+        assert match is not None  # the pattern also takes an empty cell
+        quoted, rest, end = match.group(1), match.group(2), match.group(3)
+        if limit is None and quoted is None and rest.lstrip(" ").startswith('"'):
+            raise _not_closed(source, line, at - start + 1, rest)
+        columns.append(at - start + 1)
+        cells.append(_cell_text(quoted, rest))
+        if limit is None and len(cells) > MAX_COLUMNS:
+            raise refusal(source.name, "a row has too many cells", line=line, expected=f"at most {MAX_COLUMNS} columns")
+        line += _line_ends(quoted) if quoted else 0
+        at = match.end()
+        if end == delimiter:
+            continue
+        if any(cells):
+            found.append(Row(line=first_line, cells=tuple(cells), columns=tuple(columns)))
+        cells, columns = [], []
+        line += 1
+        first_line, start = line, at
+        if not end:
+            break
+    return tuple(found)
+
+
+def _cell_pattern(delimiter: str) -> re.Pattern[str]:
+    """Quoted part (1), what follows it or stands alone (2), delimiter or line end (3)."""
+    mark = re.escape(delimiter)
+    quoted = rf'[ ]*+"((?:[^"]++|"")*+)"(?=[ \t]*+(?:{mark}|[\r\n]|\Z))'
+    return re.compile(rf"(?:{quoted})?([^{mark}\r\n]*+)({mark}|\r\n|\n|\r|\Z)")
+
+
+def _cell_text(quoted: str | None, rest: str) -> str:
+    text = (rest if quoted is None else quoted.replace('""', '"')).strip()
+    return text[2:-1] if text.startswith('="') and text.endswith('"') and len(text) > 2 else text
+
+
+def _line_ends(text: str) -> int:
+    return len(re.findall(r"\r\n|\n|\r", text))
+
+
+def _not_closed(source: Source, line: int, column: int, rest: str) -> Exception:
+    return refusal(
+        source.name,
+        "a quoted cell is not closed",
+        line=line,
+        column=column,
+        found=shorten(rest.strip()),
+        expected='a closing " before the next delimiter; a " inside is written twice',
+        do="export the table again, or mend this cell",
+    )
