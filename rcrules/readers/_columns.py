@@ -55,6 +55,7 @@ PIN: Final = (
     *("pin", "pin number", "pin no", "pin num", "pinnumber", "pin nr", "pad", "pad number", "pad name", "terminal"),
     *("pins", "pin designator", "contact"),
 )
+PIN_VALUE: Final = ("value", "part value", "component value", "val", "valor", "wert")
 PIN_NAME: Final = ("pin name", "pinname", "pin function", "pinfunction", "function", "pin label")
 PIN_TYPE: Final = ("pin type", "pintype", "electrical type", "pin electrical type", "etype", "type", "direction")
 JOINED: Final = (
