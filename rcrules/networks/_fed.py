@@ -1,0 +1,216 @@
+"""What a fed pin is: reset, converter, amplifier, logic, supply, regulator, timer, connector or other."""
+
+from collections.abc import Iterable
+from fnmatch import fnmatchcase
+from functools import lru_cache
+from typing import Final
+
+from rcrules.design import Pin
+from rcrules.names import has_token, tokens
+from rcrules.networks._family import family, inverting
+from rcrules.networks._spot import Spot, View
+
+RESET: Final = ("RST", "RESET", "MCLR", "POR", "SRST", "TRST", "PORRST", "SRESET", "HRESET")
+SUPPLY: Final = frozenset(
+    [
+        "VCC",
+        "VDD",
+        "AVCC",
+        "AVDD",
+        "DVDD",
+        "DVCC",
+        "IOVDD",
+        "VDDA",
+        "VDDIO",
+        "VDDIN",
+        "VCCA",
+        "VCCIO",
+        "VIN",
+        "VI",
+        "PVIN",
+        "VBAT",
+        "VREF",
+        "VREFH",
+        "AREF",
+        "VREFP",
+        "VSS",
+        "VEE",
+        "VS",
+        "V+",
+        "V-",
+        "VM",
+        "VPP",
+        "VSUP",
+        "VLOGIC",
+    ]
+)
+FEEDBACK: Final = frozenset(
+    {"FB", "VFB", "FBX", "ADJ", "COMP", "VCOMP", "INV", "ITH", "VC", "EA", "EAO", "VSENSE", "VSNS"}
+)
+TIMING: Final = frozenset(
+    [
+        "SS",
+        "TR",
+        "CT",
+        "RT",
+        "RTCT",
+        "CX",
+        "RX",
+        "RXCX",
+        "CEXT",
+        "RCEXT",
+        "REXTCEXT",
+        "RC",
+        "THR",
+        "THRES",
+        "THRESHOLD",
+        "TRIG",
+        "TRIGGER",
+        "DIS",
+        "DISCH",
+        "DISCHARGE",
+        "TIMER",
+        "TMR",
+        "DLY",
+        "DELAY",
+        "CD",
+        "CDLY",
+        "SRT",
+        "TON",
+        "CRST",
+        "TD",
+    ]
+)
+BOOT: Final = frozenset({"BOOT", "BST", "VBST", "BS", "CBOOT", "CBST", "BOOST", "HB", "VB", "CB", "BTST"})
+SWITCH: Final = frozenset({"SW", "LX", "LL", "PH", "PHASE", "VSW", "HS", "VS", "PHS"})
+CURRENT: Final = frozenset({"MON", "IMON", "CS", "CSP", "CSN", "ISEN", "ISENSE", "ISNS", "SENSE", "IS", "IMEAS"})
+ENABLE: Final = ("EN", "ENABLE", "SHDN", "SHUTDOWN", "CE", "OE", "ON", "STBY", "PWRDN", "UVLO", "RUN")
+_CONVERTER: Final = frozenset({"ADC", "AIN", "AN", "SE", "DP", "DM"})
+_OUTPUTS: Final = ("output", "power-out", "open-collector", "open-emitter")
+
+
+def whole(pin: Pin) -> str:
+    """The one word of a pin name without marks and index: ``COMP`` of ``COMP1``, '' where it has several words."""
+    words = [word for word in tokens(pin.name) if not word.isdigit()]
+    return words[0] if len(words) == 1 else "".join(words) if len(words) == 2 and "/" not in pin.name else ""
+
+
+def words_of(pin: Pin) -> frozenset[str]:
+    """All words of a pin name."""
+    return frozenset(tokens(pin.name))
+
+
+def family_of(view: View, ref: str) -> str:
+    """What an IC is, '' where it is not known."""
+    if ref not in view.families:
+        part = view.draft.design.parts.get(ref)
+        texts = [*(fact.text for fact in part.values), part.symbol, part.description] if part is not None else []
+        view.families[ref] = family(" ".join(texts), tuple(pin.name for pin in view.pins_of(ref)))
+    return view.families[ref]
+
+
+def kind_fed(view: View, pin: Pin) -> str:
+    """One of vocabulary.FED_KINDS for an input-like pin."""
+    if view.kind(pin) == "connector":
+        return "connector"
+    if _given(view, pin) == "supply":
+        return "supply"
+    if view.kind(pin) != "ic":
+        return "other"
+    return _kind_of_ic_pin(family_of(view, pin.ref), pin, _hint(view, pin))
+
+
+def is_reset(view: View, pin: Pin) -> bool:
+    """Whether the pin resets an IC."""
+    return kind_fed(view, pin) == "reset"
+
+
+def reads(view: View, pin: Pin) -> bool:
+    """Whether the pin takes a voltage in: an IC's input, a transistor's control pin; what the project says wins."""
+    given = _given(view, pin)
+    if given is not None:
+        return given == "input"
+    kind = view.kind(pin)
+    if kind == "transistor":
+        return is_control(view, pin)
+    return kind == "ic" and pin.type not in ("open-collector", "open-emitter", "power-out", "no-connect")
+
+
+def is_control(view: View, pin: Pin) -> bool:
+    """Whether the pin is a transistor's gate or base; without names pin 1 is, as in most small packages."""
+    if view.kind(pin) != "transistor":
+        return False
+    word = tokens(pin.name)
+    if word:
+        return word[0] in ("G", "GATE", "B", "BASE")
+    return pin.number == "1" and not any(other.name.strip("~") for other in view.pins_of(pin.ref))
+
+
+def feeding(view: View, here: Spot) -> tuple[Pin, ...]:
+    """Input-like pins at the joint and behind stoppers, each once."""
+    seen: dict[str, Pin] = {}
+    for pin in view.pins_near(here):
+        if reads(view, pin):
+            seen.setdefault(pin.key, pin)
+    return tuple(seen.values())
+
+
+def kinds(view: View, pins: Iterable[Pin]) -> tuple[str, ...]:
+    """The different kinds of the pins, in order of name."""
+    return tuple(sorted({kind_fed(view, pin) for pin in pins}))
+
+
+def _given(view: View, pin: Pin) -> str | None:
+    """What the project file calls the pin."""
+    for key, facts in view.draft.project.pins.items():
+        if facts.kind is not None and any(fnmatchcase(f"{pin.ref}.{end}", key) for end in (pin.name, pin.number)):
+            return facts.kind
+    return None
+
+
+def _hint(view: View, pin: Pin) -> str:
+    """The pin's name, or where it has none the name of its net: the last evidence."""
+    return pin.name if pin.name.strip("~ ") else "" if pin.net.startswith(("Net-", "#")) else pin.net
+
+
+@lru_cache(maxsize=4096)
+def _named(name: str) -> str:
+    words = frozenset(tokens(name))
+    plain = {word for word in words if not word.isdigit()}
+    if any(has_token(name, word) for word in RESET):
+        return "reset"
+    if plain & _CONVERTER:
+        return "adc"
+    return (
+        "supply"
+        if words & SUPPLY
+        or name.strip("~{} ") in SUPPLY
+        or any(w.startswith(("VDD", "VCC", "AVCC", "VREF")) for w in plain)
+        else ""
+    )
+
+
+def _kind_of_ic_pin(group: str, pin: Pin, hint: str) -> str:
+    named = _named(hint)
+    if pin.type == "power-in" or (named == "supply" and pin.name):
+        return "supply"
+    if named == "reset" or (named == "adc" and group != "amplifier"):
+        return named
+    if group == "adc" and words_of(pin) & {"CH", "IN", "AIN", "VIN"}:
+        return "adc"
+    if group == "amplifier" or inverting(pin.name) is not None:
+        return "amplifier"
+    return _by_group(group, pin)
+
+
+def _by_group(group: str, pin: Pin) -> str:
+    word = whole(pin)
+    if group == "regulator":
+        return "supply" if word == "IN" else "regulator"
+    if word in FEEDBACK:
+        return "regulator"
+    if group == "timer" or word in TIMING:
+        return "timer"
+    if group in ("logic", "controller", "adc"):
+        return "logic"
+    return "logic" if pin.type in ("input", "bidirectional", "tri-state", "output") else "other"

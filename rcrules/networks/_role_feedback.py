@@ -1,0 +1,123 @@
+"""Feedback around an amplifier or a regulator, traced through small resistors and followers."""
+
+from collections.abc import Iterator
+
+from rcrules.design import Pin
+from rcrules.networks._family import inverting
+from rcrules.networks._fed import FEEDBACK, family_of, is_control, whole
+from rcrules.networks._role import Judged
+from rcrules.networks._spot import Arm, Spot, View
+
+
+def feedback(view: View, here: Spot) -> Judged | None:
+    """A regulator's feedback or compensation pin, or an amplifier's inverting input with a way back from its output."""
+    return _regulator(view, here) or _amplifier(view, here)
+
+
+def _regulator(view: View, here: Spot) -> Judged | None:
+    for pin in _pins_around(view, here):
+        if _is_feedback_pin(view, pin):
+            why = f"{pin.key} closes a control loop here"
+            return Judged(role="feedback", why=(why,), active=f"regulator {pin.ref} inside the loop")
+    return None
+
+
+def _pins_around(view: View, here: Spot) -> Iterator[Pin]:
+    """Pins at the joint and behind stoppers; of a bare joint or a joint without a pin of its own also one arm away."""
+    yield from view.pins_near(here)
+    if any(view.kind(pin) == "ic" for pin in here.pins) or here.contacts:
+        return
+    for arm in here.resistors + here.capacitors:
+        if arm.held is None:
+            yield from view.at(arm.far).pins
+
+
+def _is_feedback_pin(view: View, pin: Pin) -> bool:
+    word, group = whole(pin), family_of(view, pin.ref)
+    if view.kind(pin) != "ic" or word not in FEEDBACK or group in ("controller", "amplifier", "logic", "timer"):
+        return False
+    return group == "regulator" or word not in ("VC", "INV", "EA", "COMP") or len(view.pins_of(pin.ref)) <= 64
+
+
+def _amplifier(view: View, here: Spot) -> Judged | None:
+    for arm in here.resistors + here.capacitors:
+        outputs = _outputs(view, arm)
+        for pin in outputs:
+            if _closes(view, here, pin.ref):
+                return _loop(arm, pin)
+    return _leg(view, here)
+
+
+def _loop(arm: Arm, output: Pin) -> Judged:
+    why = f"{arm.ref} from output {output.key} back to its inverting input"
+    return Judged(role="feedback", why=(why,), active=f"amplifier {output.ref} inside the loop")
+
+
+def _outputs(view: View, arm: Arm) -> tuple[Pin, ...]:
+    """IC pins that may drive the far joint of an arm."""
+    if arm.to != "driven":
+        return ()
+    pins = view.at(arm.far).pins
+    return tuple(
+        pin for pin in pins if view.kind(pin) == "ic" and inverting(pin.name) is None and _amplifies(view, pin)
+    )
+
+
+def _amplifies(view: View, pin: Pin) -> bool:
+    return family_of(view, pin.ref) in ("amplifier", "") and len(view.pins_of(pin.ref)) <= 16
+
+
+def _closes(view: View, here: Spot, ref: str) -> bool:
+    """Whether the inverting input of an amplifier is at the joint, behind a resistor, or behind a follower transistor."""
+    near = {here.joint} | {arm.far for arm in here.resistors + here.capacitors if arm.held is None}
+    if near & {view.joint(pin) for pin in view.pins_of(ref) if _inverts(view, pin)}:
+        return True
+    return any(_follows(view, pin, ref) for pin in view.pins_near(here) if is_control(view, pin))
+
+
+def _inverts(view: View, pin: Pin) -> bool:
+    """By its name; without one, the input that a resistor or wire joins to the amplifier's output."""
+    named = inverting(pin.name)
+    if named is not None:
+        return named
+    if pin.name.strip("~ ") or pin.type in ("power-in", "output", "power-out"):
+        return False
+    return view.draft.held_joint(view.joint(pin)) is None and _joined_to_output(view, pin)
+
+
+def _joined_to_output(view: View, pin: Pin) -> bool:
+    joint = view.joint(pin)
+    arms = view.at(joint).resistors
+    return any(arm.to == "driven" and any(far.ref == pin.ref for far in view.at(arm.far).pins) for arm in arms)
+
+
+def _follows(view: View, control: Pin, ref: str) -> bool:
+    """Whether another pin of the transistor leads into a pin of the amplifier that is no supply."""
+    for pin in view.pins_of(control.ref):
+        joint = view.joint(pin)
+        if pin.number == control.number or view.draft.held_joint(joint) is not None:
+            continue
+        if any(other.ref == ref and view.kind(other) == "ic" for other in view.at(joint).pins):
+            return True
+    return False
+
+
+def _leg(view: View, here: Spot) -> Judged | None:
+    """The joint of a series R-C from an inverting input to a fixed net."""
+    if not here.bare:
+        return None
+    for arm in here.resistors + here.capacitors:
+        if arm.held is None:
+            for pin in view.at(arm.far).pins:
+                if inverting(pin.name) and _looped(view, pin):
+                    return Judged(
+                        role="feedback",
+                        why=(f"{arm.ref} leads to inverting input {pin.key}",),
+                        active=f"amplifier {pin.ref} inside the loop",
+                    )
+    return None
+
+
+def _looped(view: View, pin: Pin) -> bool:
+    here = view.at(view.joint(pin))
+    return any(far.ref == pin.ref for arm in here.resistors + here.capacitors for far in _outputs(view, arm))

@@ -1,0 +1,107 @@
+"""Filters: high-pass, divider with capacitor, low-pass."""
+
+from rcrules.networks._fed import feeding, kinds
+from rcrules.networks._role import Judged
+from rcrules.networks._role_parts import ends, signal_above
+from rcrules.networks._spot import Arm, Spot, View, greatest, least
+
+PULL = 5.0
+"""A resistor to a rail of this many times the series resistor is its pull, not a divider's arm."""
+
+
+def high_pass(view: View, here: Spot) -> Judged | None:
+    """A series capacitor from a signal, resistors to a fixed bias."""
+    series = [arm for arm in here.capacitors if _is_signal(view, here, arm)]
+    shunt = [arm for arm in here.capacitors if arm.fixed]
+    if not series or not any(_is_bias(view, here, arm) for arm in here.resistors):
+        return None
+    if any(arm.to == "driven" for arm in here.resistors) or greatest(shunt) > greatest(series) > 0:
+        return None
+    why = f"{series[0].ref} couples {series[0].far} to a fixed bias"
+    return Judged(role="high-pass", why=(why,))
+
+
+def divider(view: View, here: Spot) -> Judged | None:
+    """A capacitor to a fixed net at the tap between two resistors to different levels."""
+    if not here.capacitors or not all(arm.fixed for arm in here.capacitors) or len(here.resistors) < 2:
+        return None
+    low = [arm for arm in here.resistors if _kinds(view, here, arm) == {"ground"}]
+    high = [arm for arm in here.resistors if _kinds(view, here, arm) and "ground" not in _kinds(view, here, arm)]
+    if not low:
+        low, high = _two_levels(view, here, high)
+    if not low or not high or _is_pull(low, high):
+        return None
+    why = f"tap between {high[0].ref} and {low[0].ref}"
+    return Judged(role="divider-low-pass", why=(why,))
+
+
+def low_pass(view: View, here: Spot) -> Judged | None:
+    """A series resistor from a signal, or from a supply into an analog input; a capacitor to a fixed or driven net."""
+    if not any(arm.held is not None for arm in here.capacitors):
+        return None
+    driven = [arm for arm in here.resistors if _reaches(view, here, arm, "driven")]
+    if driven:
+        helped = next((arm for arm in here.capacitors if arm.to == "driven"), None)
+        active = f"an amplifier drives {helped.ref}" if helped else None
+        return Judged(
+            role="low-pass", why=(f"{driven[0].ref} in series from {_source(view, here, driven[0])}",), active=active
+        )
+    later = [arm for arm in here.resistors if arm.held is None and ends(view, arm.far, here.joint)]
+    if later:
+        return Judged(role="low-pass", why=(f"{later[0].ref} from the node {later[0].far}",))
+    return _from_supply(view, here) or _from_pin(view, here)
+
+
+def _from_supply(view: View, here: Spot) -> Judged | None:
+    rails = [arm for arm in here.resistors if arm.fixed]
+    fed = kinds(view, feeding(view, here))
+    if rails and set(fed) & {"adc", "amplifier"}:
+        return Judged(role="low-pass", why=(f"{rails[0].ref} from {rails[0].far} into an analog input",))
+    return None
+
+
+def _from_pin(view: View, here: Spot) -> Judged | None:
+    """A resistor from a pin whose direction is not known."""
+    for arm in here.resistors:
+        if arm.held is None and any(view.kind(pin) in ("ic", "transistor") for pin in view.at(arm.far).pins):
+            pin = next(pin for pin in view.at(arm.far).pins if view.kind(pin) in ("ic", "transistor"))
+            return Judged(role="low-pass", sure=False, why=(f"{arm.ref} from {pin.key}",), also=(arm,))
+    return None
+
+
+def _is_signal(view: View, here: Spot, arm: Arm) -> bool:
+    return arm.to == "driven" or (arm.held is None and signal_above(view, arm.far, here.joint))
+
+
+def _is_bias(view: View, here: Spot, arm: Arm) -> bool:
+    return arm.fixed or (arm.held is None and bool(ends(view, arm.far, here.joint)))
+
+
+def _kinds(view: View, here: Spot, arm: Arm) -> set[str]:
+    return {arm.to} if arm.held is not None else set(ends(view, arm.far, here.joint).values())
+
+
+def _reaches(view: View, here: Spot, arm: Arm, kind: str) -> bool:
+    return kind in _kinds(view, here, arm)
+
+
+def _source(view: View, here: Spot, arm: Arm) -> str:
+    if arm.held is not None:
+        return arm.far
+    return next((joint for joint, kind in ends(view, arm.far, here.joint).items() if kind == "driven"), arm.far)
+
+
+def _two_levels(view: View, here: Spot, arms: list[Arm]) -> tuple[list[Arm], list[Arm]]:
+    """Arms to a supply and arms to another supply or a driven net."""
+    supplies = [arm for arm in arms if _kinds(view, here, arm) == {"supply"}]
+    first = supplies[:1]
+    others = [arm for arm in arms if first and arm.far != first[0].far]
+    return first, others
+
+
+def _is_pull(low: list[Arm], high: list[Arm]) -> bool:
+    """Whether one side only keeps a driven signal at rest: the arm from a driven net is much smaller."""
+    driven = [arm for arm in high if arm.to != "supply"]
+    return (bool(driven) and PULL * 4 * greatest(driven) <= least(low)) or (
+        bool(driven) and low[0].to == "supply" and PULL * greatest(driven) <= least(low)
+    )

@@ -1,0 +1,201 @@
+"""Which resistors and capacitors set the time at a joint: its own, and those on the way up to the sources."""
+
+from collections import deque
+from collections.abc import Iterable
+from dataclasses import dataclass, field
+from heapq import heappop, heappush
+from typing import Final
+
+from rcrules.networks._role import Judged
+from rcrules.networks._spot import Arm, Spot, View
+
+FAR: Final = 256
+"""Joints looked at on the way to a source; a way that is longer counts as one that arrives."""
+LIGHT: Final = 10.0
+"""A load of this many times the resistance that feeds a joint does not set its time."""
+
+
+@dataclass(slots=True)
+class Ways:
+    """What the walk from a joint up to its sources met."""
+
+    resistors: dict[str, Arm] = field(default_factory=dict)
+    capacitors: dict[str, Arm] = field(default_factory=dict)
+    sources: dict[str, str] = field(default_factory=dict)
+    """Held joint that feeds through a resistor -> its kind."""
+    visited: set[str] = field(default_factory=set)
+
+    @property
+    def parts(self) -> tuple[str, ...]:
+        """References, resistors first."""
+        return (*self.resistors, *self.capacitors)
+
+
+def ways(view: View, here: Spot, judged: Judged) -> Ways:
+    """All parts that set the time at the joint in its role."""
+    found = Ways(visited={here.joint})
+    chosen = None if judged.only is None else {arm.ref for arm in judged.only}
+    own = [
+        arm for arm in here.resistors if (chosen is None and _acts(view, here, arm)) or (chosen and arm.ref in chosen)
+    ]
+    for arm in own or here.resistors:
+        _take(view, found, here, arm)
+    found.resistors.update((arm.ref, arm) for arm in judged.also)
+    _take_capacitors(view, found, here, [arm for arm in here.capacitors if chosen is None or arm.ref in chosen])
+    return found
+
+
+def _take_capacitors(view: View, found: Ways, here: Spot, arms: Iterable[Arm]) -> None:
+    for arm in arms:
+        if arm.held is not None:
+            found.capacitors.setdefault(arm.ref, arm)
+        elif signal_above(view, arm.far, here.joint):
+            found.capacitors.setdefault(arm.ref, arm)
+            _climb(view, found, arm.far, here.joint)
+        elif not _light(view, here, arm):
+            found.capacitors.setdefault(arm.ref, arm)
+
+
+def ends(view: View, start: str, but: str) -> dict[str, str]:
+    """Held joints that resistors reach from a free joint without passing ``but``: joint -> kind."""
+    if (start, but) not in view.ends:
+        view.ends[start, but] = _ends(view, start, but)
+    return view.ends[start, but]
+
+
+def _ends(view: View, start: str, but: str) -> dict[str, str]:
+    found: dict[str, str] = {}
+    seen, todo = {but, start}, deque([start])
+    while todo and len(seen) < FAR:
+        for arm in view.at(todo.popleft()).resistors:
+            if arm.held is not None:
+                found.setdefault(arm.far, arm.to)
+            elif arm.far not in seen:
+                seen.add(arm.far)
+                todo.append(arm.far)
+    return found if not todo or found else {start: "free"}
+
+
+def signal_above(view: View, start: str, but: str) -> bool:
+    """Whether resistors or capacitors reach a driven net from a free joint without passing ``but``."""
+    if (start, but) not in view.signals:
+        view.signals[start, but] = _signal_above(view, start, but)
+    return view.signals[start, but]
+
+
+def _signal_above(view: View, start: str, but: str) -> bool:
+    seen, todo = {but, start}, deque([start])
+    while todo and len(seen) < FAR:
+        here = view.at(todo.popleft())
+        for arm in here.resistors + here.capacitors:
+            if arm.to == "driven":
+                return True
+            if arm.held is None and arm.far not in seen:
+                seen.add(arm.far)
+                todo.append(arm.far)
+    return False
+
+
+def path_ohms(view: View, start: str, but: str) -> float:
+    """The lowest resistance from a free joint to a held one without passing ``but``; infinite without a way. [Ω]"""
+    best = {start: 0.0}
+    todo, lowest = [(0.0, start)], float("inf")
+    while todo and len(best) < FAR:
+        _, joint = heappop(todo)
+        for arm in view.at(joint).resistors:
+            total = best[joint] + (arm.value or 0.0)
+            if arm.held is not None:
+                lowest = min(lowest, total)
+            elif arm.far != but and total < min(best.get(arm.far, float("inf")), lowest):
+                best[arm.far] = total
+                heappush(todo, (total, arm.far))
+    return lowest
+
+
+def rc_leg(view: View, arm: Arm, but: str) -> tuple[Arm, ...]:
+    """Capacitors to held joints behind a resistor whose far joint holds nothing else; () where it is no such leg."""
+    far = view.at(arm.far)
+    if arm.held is not None or far.pins or far.contacts or far.diodes:
+        return ()
+    if any(other.far != but for other in far.resistors):
+        return ()
+    return tuple(other for other in far.capacitors if other.held is not None)
+
+
+def _acts(view: View, here: Spot, arm: Arm) -> bool:
+    if arm.held is not None:
+        return not (here.local and _is_load(here, arm))
+    if rc_leg(view, arm, here.joint) or view.at(arm.far).contacts:
+        return True
+    return bool(ends(view, arm.far, here.joint)) and not (here.local or _is_heavy(view, here, arm))
+
+
+def _is_load(here: Spot, arm: Arm) -> bool:
+    return arm.to == "ground" or (arm.to == "driven" and any(other.to == "supply" for other in here.resistors))
+
+
+def _is_heavy(view: View, here: Spot, arm: Arm) -> bool:
+    """Whether a resistor into a free joint is a light load beside what feeds this joint from held ones."""
+    feeding = [other.value for other in here.resistors if other.held is not None and other.value]
+    return bool(feeding) and _way(view, arm, here.joint) >= LIGHT * min(feeding)
+
+
+def _take(view: View, found: Ways, here: Spot, arm: Arm) -> None:
+    found.resistors.setdefault(arm.ref, arm)
+    if arm.held is not None:
+        found.sources.setdefault(arm.far, arm.to)
+        return
+    for leg in rc_leg(view, arm, here.joint):
+        found.capacitors.setdefault(leg.ref, leg)
+    if ends(view, arm.far, here.joint):
+        _climb(view, found, arm.far, here.joint)
+
+
+def _climb(view: View, found: Ways, joint: str, below: str) -> None:
+    """Take what stands between a joint and its sources."""
+    todo = [(joint, below)]
+    while todo and len(found.visited) < FAR:
+        joint, below = todo.pop()
+        if joint in found.visited:
+            continue
+        found.visited.add(joint)
+        lowest = min((_way(view, arm, joint) for arm in view.at(joint).resistors), default=0.0)
+        for arm in view.at(joint).resistors:
+            if arm.held is not None or _way(view, arm, joint) < LIGHT * lowest or lowest == 0.0:
+                _climb_resistor(view, found, arm, joint, todo)
+        for arm in view.at(joint).capacitors:
+            _climb_capacitor(view, found, arm, joint, todo)
+
+
+def _climb_resistor(view: View, found: Ways, arm: Arm, joint: str, todo: list[tuple[str, str]]) -> None:
+    if arm.far in found.visited:
+        return
+    if arm.held is not None:
+        found.sources.setdefault(arm.far, arm.to)
+    elif not ends(view, arm.far, joint):
+        return
+    else:
+        todo.append((arm.far, joint))
+    found.resistors.setdefault(arm.ref, arm)
+
+
+def _climb_capacitor(view: View, found: Ways, arm: Arm, joint: str, todo: list[tuple[str, str]]) -> None:
+    if arm.far in found.visited:
+        return
+    if arm.held is None:
+        if not signal_above(view, arm.far, joint):
+            return
+        todo.append((arm.far, joint))
+    found.capacitors.setdefault(arm.ref, arm)
+
+
+def _light(view: View, here: Spot, arm: Arm) -> bool:
+    """Whether a coupling capacitor leads only to a load that hardly acts on this joint."""
+    beyond = path_ohms(view, arm.far, here.joint)
+    own = min((_way(view, leg, here.joint) for leg in here.resistors), default=0.0)
+    return beyond >= LIGHT * own if own != float("inf") else False
+
+
+def _way(view: View, arm: Arm, but: str) -> float:
+    """Resistance through an arm to a held joint. [Ω]"""
+    return (arm.value or 0.0) + (0.0 if arm.held is not None else path_ohms(view, arm.far, but))

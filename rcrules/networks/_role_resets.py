@@ -1,0 +1,108 @@
+"""Roles of a resistor to a supply and a capacitor to the other rail: power-on delay and supply filter."""
+
+from rcrules.design import Pin
+from rcrules.networks._fed import family_of, feeding, kind_fed, kinds, words_of
+from rcrules.networks._role import Judged
+from rcrules.networks._role_parts import ends, path_ohms
+from rcrules.networks._spot import Arm, Spot, View, least
+
+FILTER = 100.0
+"""Up to this resistance, in series with a supply, the resistor lets a part's supply current through. [Ω]"""
+SHARE = 20.0
+"""A resistor to ground of fewer times the series resistor makes a divider. [1]"""
+BUTTON_WORDS = frozenset({"BTN", "BUTTON", "KEY", "SW", "SWITCH", "PUSH"})
+DELAYED = ("reset", "logic", "regulator", "timer", "other")
+
+
+def supply_filter(view: View, here: Spot) -> Judged | None:
+    """A resistor from a supply, a capacitor to a fixed net, and a part that lives on what is between."""
+    if here.contacts or not any(arm.fixed for arm in here.capacitors):
+        return None
+    sources = tuple(arm for arm in here.resistors if arm.to == "supply")
+    if not sources or any(arm.to == "driven" for arm in here.resistors) or _is_divided(view, here, least(sources)):
+        return None
+    pins = feeding(view, here)
+    supplied = [pin for pin in pins if kind_fed(view, pin) == "supply"]
+    if here.local or supplied:
+        return _filter(here, sources, tuple(pin.key for pin in supplied))
+    return _filter_without_pin(view, here, sources, pins)
+
+
+def power_on_delay(view: View, here: Spot) -> Judged | None:
+    """A resistor to one rail, a capacitor to the other, and inputs that wait for it."""
+    rails = {arm.to for arm in here.resistors if arm.fixed}
+    others = {arm.to for arm in here.capacitors if arm.fixed}
+    if len(rails) != 1 or not others - rails or any(arm.to == "driven" for arm in here.resistors):
+        return None
+    fed = [kind for kind in kinds(view, feeding(view, here)) if kind in DELAYED]
+    if not fed:
+        return None
+    if _is_button_connector(view, here):
+        return Judged(role="debounce", sure=False, why=("a connector that may carry a contact",))
+    driver = _driver(view, here)
+    if driver is not None and "reset" not in fed:
+        return Judged(role="low-pass", sure=False, why=(f"{driver} pulls the net, the resistor is its pull-up",))
+    return Judged(role="power-on-delay", sure=driver is None and fed != ["other"], why=_waits(fed, driver))
+
+
+def _is_divided(view: View, here: Spot, source: float) -> bool:
+    """Whether a resistor to ground, also through others, takes a share of the supply worth telling."""
+    if here.local:
+        return False
+    downs = [arm.value or 0.0 for arm in here.resistors if arm.to == "ground"]
+    for arm in here.resistors:
+        if arm.held is None and set(ends(view, arm.far, here.joint).values()) == {"ground"}:
+            downs.append((arm.value or 0.0) + path_ohms(view, arm.far, here.joint))
+    return min(downs, default=float("inf")) < SHARE * source
+
+
+def _waits(fed: list[str], driver: str | None) -> tuple[str, ...]:
+    words = (f"{' and '.join(fed)} inputs wait for it",)
+    return words if driver is None else (*words, f"{driver} pulls the net too")
+
+
+def _filter(here: Spot, sources: tuple[Arm, ...], keys: tuple[str, ...]) -> Judged:
+    why = (f"supplies {', '.join(keys)}",) if keys else ("a local supply behind a resistor",)
+    fixed = tuple(arm for arm in here.capacitors if arm.fixed)
+    return Judged(role="supply-filter", why=why, only=sources + fixed)
+
+
+def _filter_without_pin(view: View, here: Spot, sources: tuple[Arm, ...], pins: tuple[Pin, ...]) -> Judged | None:
+    """Small into an unknown pin or a coil, or a bare step on the way to further resistors."""
+    fixed = tuple(arm for arm in here.capacitors if arm.fixed)
+    onward = any(arm.held is None for arm in here.resistors + here.capacitors)
+    if not here.pins and not here.diodes and onward:
+        return Judged(role="supply-filter", why=("filters what feeds further resistors",), only=sources + fixed)
+    if least(sources) > FILTER or len(fixed) != len(here.capacitors):
+        return None
+    unknown = all(kind_fed(view, pin) == "other" for pin in pins)
+    if unknown and (here.pins or here.diodes):
+        return Judged(
+            role="supply-filter", sure=bool(here.pins), why=("small enough to supply a part",), only=sources + fixed
+        )
+    return None
+
+
+def _is_button_connector(view: View, here: Spot) -> bool:
+    return any(view.kind(pin) == "connector" and words_of(pin) & BUTTON_WORDS for pin in here.pins)
+
+
+def _driver(view: View, here: Spot) -> str | None:
+    """An open collector or a transistor that pulls the joint."""
+    for pin in here.pins:
+        if pin.type in ("open-collector", "open-emitter") or view.kind(pin) == "transistor":
+            return pin.key
+        if view.kind(pin) == "ic" and _is_coupler(view, pin):
+            return pin.key
+    return None
+
+
+def _is_coupler(view: View, pin: Pin) -> bool:
+    """An optocoupler by its words, or a passive pin of a part of four pins a channel that has no supply."""
+    if family_of(view, pin.ref) == "optocoupler":
+        return True
+    pins = view.pins_of(pin.ref)
+    if pin.type != "passive" or pin.name.strip("~ ") or len(pins) not in (4, 8, 16):
+        return False
+    held = [view.draft.held_joint(view.joint(other)) for other in pins]
+    return all(one is None or one.kind != "supply" for one in held)

@@ -1,0 +1,83 @@
+"""Roles around contacts and switched nets: debounce and snubber."""
+
+from rcrules.networks._fed import SWITCH, whole
+from rcrules.networks._model import Contact
+from rcrules.networks._role import Judged
+from rcrules.networks._spot import Arm, Spot, View, greatest
+
+COILS = ("inductor", "transformer", "transistor")
+ADDED_ESR = 3.0
+"""Up to this resistance a resistor in series with a regulator's output capacitor is there for its stability. [Ω]"""
+LINE = (30.0, 250.0)
+"""Resistances that match a line. [Ω]"""
+
+
+def debounce(view: View, here: Spot) -> Judged | None:
+    """A contact at the joint, or behind a resistor or diode, with a resistor to the opposite level."""
+    if here.local:
+        return None
+    contacts = list(here.contacts)
+    behind = [arm for arm in here.resistors if arm.held is None and _contacts_behind(view, arm.far, here.joint)]
+    reached = contacts + [contact for arm in behind for contact in _contacts_behind(view, arm.far, here.joint)]
+    if not contacts:
+        reached += [contact for joint in _across_diodes(view, here) for contact in view.at(joint).contacts]
+    if not reached or not here.capacitors:
+        return None
+    pulled = any(arm.fixed for arm in here.resistors)
+    names = ", ".join(sorted({contact.ref for contact in reached}))
+    why = f"contact {names} " + ("at the node" if contacts else "behind a resistor or diode")
+    return Judged(role="debounce", sure=bool(contacts) and pulled, why=(why,), also=tuple(behind))
+
+
+def snubber(view: View, here: Spot) -> Judged | None:
+    """A resistor and a capacitor in series with nothing else at their joint."""
+    if not here.bare or not (here.resistors and here.capacitors):
+        return None
+    ends = {arm.far for arm in here.resistors}, {arm.far for arm in here.capacitors}
+    if any(len(end) != 1 for end in ends) or ends[0] == ends[1]:
+        return None
+    across = (here.resistors[0], here.capacitors[0])
+    if all(arm.held is None for arm in across):
+        return None
+    return _series(view, here, *across)
+
+
+def _series(view: View, here: Spot, resistor: Arm, capacitor: Arm) -> Judged | None:
+    where = f"in series between {resistor.far} and {capacitor.far}, nothing else at the joint"
+    if any(_is_switched(view, arm) for arm in (resistor, capacitor)):
+        return Judged(role="snubber", why=(where, "one end is a switched net"))
+    ohms = greatest(here.resistors)
+    if resistor.fixed and capacitor.fixed and 0 < ohms <= ADDED_ESR:
+        return Judged(role="other", sure=False, why=(where, "adds series resistance to an output capacitor"))
+    lines = [arm for arm in (resistor, capacitor) if not arm.fixed]
+    if LINE[0] <= ohms <= LINE[1] and not resistor.fixed and _is_line(view, resistor):
+        return Judged(role="termination", sure=len(lines) == 2, why=(where, "ends a line for its edges only"))
+    if lines and resistor in lines and ohms >= LINE[1]:
+        return None
+    return Judged(role="snubber", sure=False, why=(where,))
+
+
+def _is_switched(view: View, arm: Arm) -> bool:
+    if arm.fixed:
+        return False
+    pins = view.at(arm.far).pins
+    return any(view.kind(pin) in COILS or (view.kind(pin) == "ic" and whole(pin) in SWITCH) for pin in pins)
+
+
+def _is_line(view: View, arm: Arm) -> bool:
+    """Whether the far joint is a signal between two parts."""
+    return len({pin.ref for pin in view.at(arm.far).pins}) >= 2
+
+
+def _contacts_behind(view: View, joint: str, but: str) -> tuple[Contact, ...]:
+    """Contacts at a free joint that has no capacitor of its own, or across its diodes."""
+    far = view.at(joint)
+    if any(arm.far != but for arm in far.capacitors):
+        return ()
+    return far.contacts + tuple(contact for other in _across_diodes(view, far) for contact in view.at(other).contacts)
+
+
+def _across_diodes(view: View, here: Spot) -> list[str]:
+    """Free joints on the other side of diodes."""
+    others = [diode.anode if diode.cathode == here.joint else diode.cathode for diode in here.diodes]
+    return [joint for joint in others if joint != here.joint and view.draft.held_joint(joint) is None]

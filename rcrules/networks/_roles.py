@@ -1,0 +1,117 @@
+"""The nodes of a network, each with its role, what shows it, the parts that set its time and what it feeds."""
+
+from collections.abc import Callable
+from dataclasses import replace
+from fnmatch import fnmatchcase
+from typing import Final
+
+from rcrules.networks._draft import Draft, RawNetwork
+from rcrules.networks._fed import feeding, kind_fed, kinds
+from rcrules.networks._model import Node
+from rcrules.networks._role import SURE, UNSURE, Judged
+from rcrules.networks._role_active import bootstrap, gate_drive, oscillator, timing
+from rcrules.networks._role_feedback import feedback
+from rcrules.networks._role_filters import divider, high_pass, low_pass
+from rcrules.networks._role_lines import bias, bus_pull_up, sense_shunt, termination
+from rcrules.networks._role_pairs import bridged
+from rcrules.networks._role_parts import Ways, ways
+from rcrules.networks._role_resets import power_on_delay, supply_filter
+from rcrules.networks._role_switching import debounce, snubber
+from rcrules.networks._role_words import arms_text, fed_text
+from rcrules.networks._spot import Spot, View
+
+ORDER: Final[tuple[Callable[[View, Spot], Judged | None], ...]] = (
+    oscillator,
+    bootstrap,
+    feedback,
+    timing,
+    debounce,
+    gate_drive,
+    termination,
+    snubber,
+    sense_shunt,
+    supply_filter,
+    bias,
+    high_pass,
+    divider,
+    bus_pull_up,
+    power_on_delay,
+    low_pass,
+)
+"""What is tried, in order: what pins and neighbours show before what values and the bare shape show."""
+
+_OTHER: Final = Judged(role="other", sure=False, why=("no known arrangement",))
+
+
+def nodes_of(draft: Draft, network: RawNetwork) -> tuple[Node, ...]:
+    """The free joints of a network where resistors and capacitors act together, in the network's order."""
+    view = View(draft)
+    spots = (view.at(joint) for joint in network.free)
+    return tuple(_node(view, here) for here in spots if _is_node(view, here))
+
+
+def bridged_nodes(draft: Draft) -> tuple[Node, ...]:
+    """Held joints bridged by resistors and capacitors, as nodes named ``A <-> B``."""
+    return tuple(_corrected(draft, node) for node in bridged(draft))
+
+
+def _is_node(view: View, here: Spot) -> bool:
+    """A resistor and a capacitor at the joint, or a feedback resistor with its capacitor behind a small one."""
+    if not here.resistors:
+        return False
+    if here.capacitors:
+        return True
+    return any(view.at(arm.far).capacitors for arm in view.stoppers(here)) and feedback(view, here) is not None
+
+
+def _node(view: View, here: Spot) -> Node:
+    judged = next((found for judge in ORDER if (found := judge(view, here)) is not None), _OTHER)
+    met = ways(view, here, judged)
+    pins = feeding(view, here)
+    node = Node(
+        net=here.joint,
+        joint=here.joint,
+        across=None,
+        role=judged.role,
+        certainty=SURE if judged.sure else UNSURE,
+        evidence=(*arms_text(view, here, met.parts), *judged.why, *fed_text(view, pins)),
+        parts=met.parts,
+        fed_from=_fed_from(here, met, judged),
+        feeds=tuple(pin.key for pin in pins),
+        kinds_fed=_kinds_fed(view, here),
+        active=judged.active,
+    )
+    return _corrected(view.draft, node)
+
+
+def _kinds_fed(view: View, here: Spot) -> tuple[str, ...]:
+    connectors = {kind_fed(view, pin) for pin in here.pins if view.kind(pin) == "connector"}
+    return tuple(sorted({*kinds(view, feeding(view, here)), *connectors}))
+
+
+def _fed_from(here: Spot, met: Ways, judged: Judged) -> tuple[str, ...]:
+    """Held joints behind the resistors; a ground only at a divider or where there is nothing else."""
+    sources = [joint for joint, kind in met.sources.items() if kind != "ground"]
+    if judged.role == "high-pass":
+        driving = [arm.far for arm in here.capacitors if arm.to == "driven"]
+        return tuple(driving) or tuple(sources)
+    if judged.role in ("divider-low-pass", "feedback") or not sources:
+        return tuple(met.sources)
+    return tuple(sources)
+
+
+def _corrected(draft: Draft, node: Node) -> Node:
+    """The role that the project file gives to the net, if it does."""
+    for name, facts in draft.project.nets.items():
+        if facts.role is not None and any(fnmatchcase(net, name) for net in _names(draft, node)):
+            return _with_role(node, facts.role, f'project [net."{name}"] role')
+    return node
+
+
+def _names(draft: Draft, node: Node) -> tuple[str, ...]:
+    return (node.net, *draft.members.get(node.joint, ())) if node.across is None else (node.net,)
+
+
+def _with_role(node: Node, role: str, origin: str) -> Node:
+    active = node.active if role == node.role else None
+    return replace(node, role=role, certainty=SURE, evidence=(origin, *node.evidence), active=active)
