@@ -17,6 +17,30 @@ Contract (arrays are float64, first axis = case):
     .last_exit(low, high) last time outside [low, high], 0 if never outside, inf if it ends outside;
     .extremes() -> (lowest, highest) over t >= 0, the supremum included; .width() total time f >= 0;
     .slope_initial().
-``transfer(shape, ohms, farads, source, omega) -> complex (case, free)`` and ``corner(...)`` for -3 dB of the pass band.
+``transfer(shape, ohms, farads, source, omega) -> complex (case, free)``, ``source`` the number of a held terminal.
+``corner(shape, ohms, farads, source, at, passes) -> (case,)``  angular frequency [rad/s] 3 dB below the pass band.
 ``bounds(evaluate, low, nominal, high, signs, vertices_prove) -> Bounds`` and the coroutine form ``search(...)``.
 """
+
+from rcrules.engine._bounds import Bounds, bounds, search
+from rcrules.engine._frequency import corner, transfer
+from rcrules.engine._modes import Modes, solve
+from rcrules.engine._response import Drive, Response
+from rcrules.engine._shape import Array, FloatingNode, Shape
+from rcrules.engine._signal import Signal
+
+__all__ = [
+    "Array",
+    "Bounds",
+    "Drive",
+    "FloatingNode",
+    "Modes",
+    "Response",
+    "Shape",
+    "Signal",
+    "bounds",
+    "corner",
+    "search",
+    "solve",
+    "transfer",
+]

@@ -1,0 +1,101 @@
+"""Lowest and highest value of a function of many numbers over a box, and where they lie."""
+
+from collections.abc import Callable, Generator, Sequence
+from dataclasses import dataclass
+
+import numpy as np
+
+from rcrules.engine._box import Box, Best, vertices
+from rcrules.engine._climb import climb, scan, turn
+from rcrules.engine._shape import Array
+
+Search = Generator[Array, Array, "Bounds"]
+
+PROVABLE = 12
+"""Most columns of unknown sign whose vertices are all evaluated for a proof."""
+ALL_VERTICES = 8
+"""Most columns of unknown sign whose vertices are all evaluated in a search."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Bounds:
+    """Lowest, nominal and highest value over a box, and the cases in which they occur.
+
+    nan in ``low`` and ``high`` means: not defined somewhere in the box, for instance in the case given.
+    """
+
+    low: float
+    nominal: float
+    high: float
+    low_at: tuple[float, ...]
+    high_at: tuple[float, ...]
+    proved: bool
+    """True: the theorems that the caller vouches for leave no other case; False: the best that a search found."""
+
+
+def bounds(
+    evaluate: Callable[[Array], Array],
+    low: Array,
+    nominal: Array,
+    high: Array,
+    signs: Sequence[int | None],
+    vertices_prove: bool,
+) -> Bounds:
+    """Bounds of a function over a box.
+
+    evaluate: cases (case, p) -> values (case,); inf is a value above all others, nan = not defined
+    low: least of each number. [any], (p,)
+    nominal: each number as marked. [any], (p,)
+    high: greatest of each number. [any], (p,)
+    signs: of the slope of the function in each number: +1, -1, 0 = does not depend on it, None = not known
+    vertices_prove: the extremes over the numbers of unknown sign are known to lie at vertices
+    """
+    running = search(low, nominal, high, signs, vertices_prove)
+    cases = next(running)
+    while True:
+        try:
+            cases = running.send(evaluate(cases))
+        except StopIteration as end:
+            found: Bounds = end.value
+            return found
+
+
+def search(low: Array, nominal: Array, high: Array, signs: Sequence[int | None], vertices_prove: bool) -> Search:
+    """The search of ``bounds`` as a coroutine: yields cases (case, p), is sent their values (case,), returns Bounds.
+
+    low: least of each number. [any], (p,)
+    nominal: each number as marked. [any], (p,)
+    high: greatest of each number. [any], (p,)
+    signs: as for ``bounds``
+    vertices_prove: as for ``bounds``
+    """
+    box = Box(
+        low=np.asarray(low, float), nominal=np.asarray(nominal, float), high=np.asarray(high, float), signs=tuple(signs)
+    )
+    best = Best(box=box)
+    unknown = box.unknown()
+    everywhere = len(unknown) <= (PROVABLE if vertices_prove else ALL_VERTICES)
+    first = np.concatenate(
+        [box.nominal[None], *(vertices(box, side, unknown if everywhere else ()) for side in (-1, 1))]
+    )
+    yield from best.ask(first)
+    proved = not len(unknown) or (vertices_prove and everywhere)
+    if not proved and not best.undefined():
+        if not everywhere:
+            yield from turn(best)
+        yield from scan(best)
+        yield from climb(best)
+    return _result(best, proved)
+
+
+def _result(best: Best, proved: bool) -> Bounds:
+    """The best cases of both sides."""
+    low, high = best.side(-1), best.side(1)
+    return Bounds(
+        low=best.value(-1),
+        nominal=best.nominal,
+        high=best.value(1),
+        low_at=tuple(float(number) for number in low),
+        high_at=tuple(float(number) for number in high),
+        proved=proved,
+    )

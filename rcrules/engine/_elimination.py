@@ -1,0 +1,71 @@
+"""Star-mesh elimination of a conductance network without a single subtraction.
+
+The network is kept as conductances between nodes and slacks to held terminals; the diagonal of the nodal matrix is never
+summed, so a small leak beside a large conductance keeps all its digits (Grassmann, Taksar, Heyman, Operations Research
+33 (1985) 1107, for Markov chains: the same arithmetic).
+"""
+
+import numpy as np
+
+from rcrules.engine._shape import Array, FloatingNode
+
+
+def factor(between: Array, slack: Array, weight: Array) -> Array:
+    """Matrix Y with Y G Yᵀ = 1 and Yᵀ Y = G⁻¹, all entries >= 0; the rows are in order of elimination.
+
+    between: conductance between free nodes, symmetric, diagonal ignored. [S], (n, n, case), overwritten
+    slack: conductance of each node to all held terminals. [S], (n, case), overwritten
+    weight: capacitance of each node; nodes are eliminated in rising order of it. [F], (n, case)
+    Returns Y, columns in the order of the nodes. [Ω^½], (n, n, case)
+    Raises FloatingNode when a node has no path to a held terminal.
+    """
+    nodes, cases = slack.shape
+    if nodes < 2 or cases == 0:
+        return _scaled(np.ones((nodes, nodes, cases)), slack, np.zeros((nodes, 1), dtype=np.intp))
+    order = np.argsort(weight, axis=0, kind="stable")
+    if (order == order[:, :1]).all():
+        return _in_one_order(between, slack, order[:, 0])
+    return _in_own_orders(between, slack, order)
+
+
+def _in_one_order(between: Array, slack: Array, order: np.ndarray[tuple[int, ...], np.dtype[np.intp]]) -> Array:
+    """All cases share the order of elimination."""
+    inverse = _eliminate(between[np.ix_(order, order)], slack[order], order[:, None])
+    found = np.empty_like(inverse)
+    found[:, order] = inverse
+    return found
+
+
+def _in_own_orders(between: Array, slack: Array, order: np.ndarray[tuple[int, ...], np.dtype[np.intp]]) -> Array:
+    """Each case has its own order of elimination."""
+    nodes, cases = order.shape
+    case = np.arange(cases)
+    sorted_between = between[order[:, None, :], order[None, :, :], case]
+    inverse = _eliminate(sorted_between, np.take_along_axis(slack, order, axis=0), order)
+    found = np.empty_like(inverse)
+    found[np.arange(nodes)[:, None, None], order[None, :, :], case] = inverse
+    return found
+
+
+def _eliminate(between: Array, slack: Array, order: np.ndarray[tuple[int, ...], np.dtype[np.intp]]) -> Array:
+    """Eliminate the nodes in the order of the arrays; L⁻¹ grows beside, then is scaled to D^(-1/2) L⁻¹."""
+    nodes, cases = slack.shape
+    inverse = np.zeros((nodes, nodes, cases))
+    pivots = np.empty_like(slack)
+    for k in range(nodes):
+        inverse[k, k] = 1.0
+        row = between[k, k + 1 :].copy()
+        pivots[k] = slack[k] + row.sum(axis=0)
+        share = row / np.where(pivots[k] > 0.0, pivots[k], 1.0)
+        slack[k + 1 :] += share * slack[k]
+        between[k + 1 :, k + 1 :] += share[:, None] * row
+        inverse[k + 1 :, : k + 1] += share[:, None] * inverse[k, : k + 1]
+    return _scaled(inverse, pivots, order)
+
+
+def _scaled(inverse: Array, pivots: Array, order: np.ndarray[tuple[int, ...], np.dtype[np.intp]]) -> Array:
+    """Rows divided by the root of their pivot. Raises FloatingNode where a pivot is zero."""
+    if not (pivots > 0.0).all():
+        step, case = (int(index[0]) for index in np.nonzero(~(pivots > 0.0)))
+        raise FloatingNode(int(np.broadcast_to(order, pivots.shape)[step, case]), case)
+    return inverse / np.sqrt(pivots)[:, None]
