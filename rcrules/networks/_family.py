@@ -8,16 +8,19 @@ from rcrules.names import tokens
 
 FAMILIES: Final = ("timer", "optocoupler", "amplifier", "regulator", "adc", "logic", "controller", "")
 _TYPES: Final = (
-    ("timer", r"\b[A-Z]{0,4}C?(555|556|7555|7556)[A-Z]{0,3}\b|\btimer\b|monostable"),
-    ("optocoupler", r"opto.?(coupler|isolator)|photo.?coupler|\b(4N|6N1)\d\d"),
-    ("amplifier", r"\bop.?amps?\b|operational|amplifier|comparator|\b[A-Z]{1,4}(358|324|339|393|311|741|07[124]|08[124]|290[1234])[A-Z]{0,3}\b"),
-    ("regulator", r"regulator|\bldo\b|\bbuck|\bboost\b|dc.?dc|step.?(down|up)|charge pump|\b[A-Z]{0,3}7[89][LM]?\d\d[A-Z]{0,3}\b|\b[A-Z]{1,3}(317|337|1117|431)\b"),
-    ("adc", r"analog.to.digital|\badc\b|a/d converter"),
-    ("logic", r"\b\d?[A-Z]{0,4}74[A-Z]{0,4}\d{2,5}|\b[A-Z]{0,3}40\d\d[A-Z]{0,3}\b|schmitt|inverter|flip.?flop|shift register"),
-    ("controller", r"micro.?controller|\bmcu\b|\bfpga\b|\bcpld\b|processor"),
-)  # fmt: skip
+    ("timer", r"\b[A-Z]{0,4}C?(555|556|7555|7556)[A-Z]{0,3}\b", r"\btimer\b", "monostable"),
+    ("optocoupler", r"opto.?(coupler|isolator)", r"photo.?coupler", r"\b(4N|6N1)\d\d"),
+    ("amplifier", r"\bop.?amps?\b", "operational", "amplifier", "comparator"),
+    ("amplifier", r"\b[A-Z]{1,4}(358|324|339|393|311|741|07[124]|08[124]|290[1234])[A-Z]{0,3}\b"),
+    ("regulator", "regulator", r"\bldo\b", r"\bbuck", r"\bboost\b", r"dc.?dc", r"step.?(down|up)", "charge pump"),
+    ("regulator", r"\b[A-Z]{0,3}7[89][LM]?\d\d[A-Z]{0,3}\b", r"\b[A-Z]{1,3}(317|337|1117|431)\b"),
+    ("adc", "analog.to.digital", r"\badc\b", "a/d converter"),
+    ("logic", r"\b\d?[A-Z]{0,4}74[A-Z]{0,4}\d{2,5}", r"\b[A-Z]{0,3}40\d\d[A-Z]{0,3}\b"),
+    ("logic", "schmitt", "inverter", "flip.?flop", "shift register"),
+    ("controller", "micro.?controller", r"\bmcu\b", r"\bfpga\b", r"\bcpld\b", "processor"),
+)
 """Generic words and type numbers of the trade, in the order in which they are tried."""
-_MATCHES: Final = tuple((family, re.compile(pattern, re.IGNORECASE)) for family, pattern in _TYPES)
+_MATCHES: Final = tuple((name, re.compile("|".join(patterns), re.IGNORECASE)) for name, *patterns in _TYPES)
 _SIGNED: Final = re.compile(r"([A-D1-4]?IN[A-D1-4]?)?", re.IGNORECASE)
 _SWITCH: Final = frozenset({"SW", "LX", "LL", "PH", "PHASE", "VSW"})
 _OUT: Final = frozenset({"OUT", "VOUT", "VO", "OUTPUT", "VREG", "OUTF"})

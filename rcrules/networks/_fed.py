@@ -3,90 +3,12 @@
 from collections.abc import Iterable
 from fnmatch import fnmatchcase
 from functools import lru_cache
-from typing import Final
 
 from rcrules.design import Pin
 from rcrules.names import has_token, tokens
 from rcrules.networks._family import family, inverting
+from rcrules.networks._pin_words import CHANNEL, CONVERTER, FEEDBACK, RESET, SUPPLY, TIMING
 from rcrules.networks._spot import Spot, View
-
-RESET: Final = ("RST", "RESET", "MCLR", "POR", "SRST", "TRST", "PORRST", "SRESET", "HRESET")
-SUPPLY: Final = frozenset(
-    [
-        "VCC",
-        "VDD",
-        "AVCC",
-        "AVDD",
-        "DVDD",
-        "DVCC",
-        "IOVDD",
-        "VDDA",
-        "VDDIO",
-        "VDDIN",
-        "VCCA",
-        "VCCIO",
-        "VIN",
-        "VI",
-        "PVIN",
-        "VBAT",
-        "VREF",
-        "VREFH",
-        "AREF",
-        "VREFP",
-        "VSS",
-        "VEE",
-        "VS",
-        "V+",
-        "V-",
-        "VM",
-        "VPP",
-        "VSUP",
-        "VLOGIC",
-    ]
-)
-FEEDBACK: Final = frozenset(
-    {"FB", "VFB", "FBX", "ADJ", "COMP", "VCOMP", "INV", "ITH", "VC", "EA", "EAO", "VSENSE", "VSNS"}
-)
-TIMING: Final = frozenset(
-    [
-        "SS",
-        "TR",
-        "CT",
-        "RT",
-        "RTCT",
-        "CX",
-        "RX",
-        "RXCX",
-        "CEXT",
-        "RCEXT",
-        "REXTCEXT",
-        "RC",
-        "THR",
-        "THRES",
-        "THRESHOLD",
-        "TRIG",
-        "TRIGGER",
-        "DIS",
-        "DISCH",
-        "DISCHARGE",
-        "TIMER",
-        "TMR",
-        "DLY",
-        "DELAY",
-        "CD",
-        "CDLY",
-        "SRT",
-        "TON",
-        "CRST",
-        "TD",
-    ]
-)
-BOOT: Final = frozenset({"BOOT", "BST", "VBST", "BS", "CBOOT", "CBST", "BOOST", "HB", "VB", "CB", "BTST"})
-SWITCH: Final = frozenset({"SW", "LX", "LL", "PH", "PHASE", "VSW", "HS", "VS", "PHS"})
-CURRENT: Final = frozenset({"MON", "IMON", "CS", "CSP", "CSN", "ISEN", "ISENSE", "ISNS", "SENSE", "IS", "IMEAS"})
-ENABLE: Final = ("EN", "ENABLE", "SHDN", "SHUTDOWN", "CE", "OE", "ON", "STBY", "PWRDN", "UVLO", "RUN")
-_CONVERTER: Final = frozenset({"ADC", "AIN", "AN", "SE", "DP", "DM"})
-_OUTPUTS: Final = ("output", "power-out", "open-collector", "open-emitter")
 
 
 def whole(pin: Pin) -> str:
@@ -117,7 +39,7 @@ def kind_fed(view: View, pin: Pin) -> str:
         return "supply"
     if view.kind(pin) != "ic":
         return "other"
-    return _kind_of_ic_pin(family_of(view, pin.ref), pin, _hint(view, pin))
+    return _kind_of_ic_pin(family_of(view, pin.ref), pin, _hint(pin))
 
 
 def is_reset(view: View, pin: Pin) -> bool:
@@ -168,7 +90,7 @@ def _given(view: View, pin: Pin) -> str | None:
     return None
 
 
-def _hint(view: View, pin: Pin) -> str:
+def _hint(pin: Pin) -> str:
     """The pin's name, or where it has none the name of its net: the last evidence."""
     return pin.name if pin.name.strip("~ ") else "" if pin.net.startswith(("Net-", "#")) else pin.net
 
@@ -179,7 +101,7 @@ def _named(name: str) -> str:
     plain = {word for word in words if not word.isdigit()}
     if any(has_token(name, word) for word in RESET):
         return "reset"
-    if plain & _CONVERTER:
+    if plain & CONVERTER:
         return "adc"
     return (
         "supply"
@@ -196,7 +118,7 @@ def _kind_of_ic_pin(group: str, pin: Pin, hint: str) -> str:
         return "supply"
     if named == "reset" or (named == "adc" and group != "amplifier"):
         return named
-    if group == "adc" and words_of(pin) & {"CH", "IN", "AIN", "VIN"}:
+    if group == "adc" and words_of(pin) & CHANNEL:
         return "adc"
     if group == "amplifier" or inverting(pin.name) is not None:
         return "amplifier"

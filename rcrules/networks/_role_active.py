@@ -2,7 +2,8 @@
 
 from rcrules.design import Pin
 from rcrules.names import tokens
-from rcrules.networks._fed import BOOT, SWITCH, TIMING, family_of, is_control, whole
+from rcrules.networks._fed import family_of, is_control, whole
+from rcrules.networks._pin_words import BOOT, SHORT_TIMING, SWITCH, TIMING
 from rcrules.networks._role import Judged
 from rcrules.networks._spot import Spot, View
 
@@ -75,7 +76,7 @@ def _is_timing_pin(view: View, pin: Pin) -> bool:
     group = family_of(view, pin.ref)
     if whole(pin) not in TIMING or group in ("controller", "amplifier"):
         return False
-    strict = whole(pin) in ("TR", "RC", "RX", "RT", "SS", "DIS", "CD", "TD", "TON", "DISCHARGE")
+    strict = whole(pin) in SHORT_TIMING
     return (
         not strict
         or group in ("regulator", "timer")

@@ -4,7 +4,8 @@ from collections.abc import Iterator
 
 from rcrules.design import Pin
 from rcrules.networks._family import inverting
-from rcrules.networks._fed import FEEDBACK, family_of, is_control, whole
+from rcrules.networks._fed import family_of, is_control, whole
+from rcrules.networks._pin_words import FEEDBACK
 from rcrules.networks._role import Judged
 from rcrules.networks._spot import Arm, Spot, View
 
@@ -68,7 +69,7 @@ def _amplifies(view: View, pin: Pin) -> bool:
 
 
 def _closes(view: View, here: Spot, ref: str) -> bool:
-    """Whether the inverting input of an amplifier is at the joint, behind a resistor, or behind a follower transistor."""
+    """Whether an amplifier's inverting input is at the joint, one arm away, or behind a follower transistor."""
     near = {here.joint} | {arm.far for arm in here.resistors + here.capacitors if arm.held is None}
     if near & {view.joint(pin) for pin in view.pins_of(ref) if _inverts(view, pin)}:
         return True

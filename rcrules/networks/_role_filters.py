@@ -2,7 +2,7 @@
 
 from rcrules.networks._fed import feeding, kinds
 from rcrules.networks._role import Judged
-from rcrules.networks._role_parts import ends, signal_above
+from rcrules.networks._role_parts import ends, kinds_at, signal_above, strong_ends
 from rcrules.networks._spot import Arm, Spot, View, greatest, least
 
 PULL = 5.0
@@ -25,8 +25,8 @@ def divider(view: View, here: Spot) -> Judged | None:
     """A capacitor to a fixed net at the tap between two resistors to different levels."""
     if not here.capacitors or not all(arm.fixed for arm in here.capacitors) or len(here.resistors) < 2:
         return None
-    low = [arm for arm in here.resistors if _kinds(view, here, arm) == {"ground"}]
-    high = [arm for arm in here.resistors if _kinds(view, here, arm) and "ground" not in _kinds(view, here, arm)]
+    low = [arm for arm in here.resistors if kinds_at(view, arm, here.joint) == {"ground"}]
+    high = [arm for arm in here.resistors if kinds_at(view, arm, here.joint) - {"ground"} and arm not in low]
     if not low:
         low, high = _two_levels(view, here, high)
     if not low or not high or _is_pull(low, high):
@@ -39,7 +39,7 @@ def low_pass(view: View, here: Spot) -> Judged | None:
     """A series resistor from a signal, or from a supply into an analog input; a capacitor to a fixed or driven net."""
     if not any(arm.held is not None for arm in here.capacitors):
         return None
-    driven = [arm for arm in here.resistors if _reaches(view, here, arm, "driven")]
+    driven = [arm for arm in here.resistors if "driven" in kinds_at(view, arm, here.joint)]
     if driven:
         helped = next((arm for arm in here.capacitors if arm.to == "driven"), None)
         active = f"an amplifier drives {helped.ref}" if helped else None
@@ -77,23 +77,17 @@ def _is_bias(view: View, here: Spot, arm: Arm) -> bool:
     return arm.fixed or (arm.held is None and bool(ends(view, arm.far, here.joint)))
 
 
-def _kinds(view: View, here: Spot, arm: Arm) -> set[str]:
-    return {arm.to} if arm.held is not None else set(ends(view, arm.far, here.joint).values())
-
-
-def _reaches(view: View, here: Spot, arm: Arm, kind: str) -> bool:
-    return kind in _kinds(view, here, arm)
-
-
 def _source(view: View, here: Spot, arm: Arm) -> str:
+    """The driven net behind an arm."""
     if arm.held is not None:
         return arm.far
-    return next((joint for joint, kind in ends(view, arm.far, here.joint).items() if kind == "driven"), arm.far)
+    held = (view.draft.held_joint(joint) for joint in strong_ends(view, arm.far, here.joint))
+    return next((one.net for one in held if one is not None and one.kind == "driven"), arm.far)
 
 
 def _two_levels(view: View, here: Spot, arms: list[Arm]) -> tuple[list[Arm], list[Arm]]:
     """Arms to a supply and arms to another supply or a driven net."""
-    supplies = [arm for arm in arms if _kinds(view, here, arm) == {"supply"}]
+    supplies = [arm for arm in arms if kinds_at(view, arm, here.joint) == {"supply"}]
     first = supplies[:1]
     others = [arm for arm in arms if first and arm.far != first[0].far]
     return first, others

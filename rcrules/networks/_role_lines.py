@@ -1,6 +1,7 @@
 """Roles at lines and currents: termination, sense shunt, pull-up of a bus, bias resistor with its capacitor."""
 
-from rcrules.networks._fed import CURRENT, words_of
+from rcrules.networks._fed import words_of
+from rcrules.networks._pin_words import BUS, CENTRE, CURRENT
 from rcrules.networks._role import Judged
 from rcrules.networks._spot import Spot, View, greatest, least
 
@@ -10,8 +11,6 @@ SHUNT = 1.0
 """Up to this resistance a resistor in a power path is there to measure its current. [Ω]"""
 LOOP = 500.0
 """Up to this resistance a resistor at a connector turns a loop current into a voltage. [Ω]"""
-BUS = frozenset({"SDA", "SCL", "SMBDAT", "SMBCLK", "SMBDATA", "SMBCLOCK", "SMDAT", "SMCLK", "ALERT"})
-CENTRE = frozenset({"SPLIT", "CT", "CTT", "VCM", "VTT", "VOCM"})
 
 
 def termination(view: View, here: Spot) -> Judged | None:
@@ -45,7 +44,7 @@ def sense_shunt(view: View, here: Spot) -> Judged | None:
     return None
 
 
-def bias(view: View, here: Spot) -> Judged | None:
+def bias(_view: View, here: Spot) -> Judged | None:
     """Resistor and capacitor side by side at a pin that says nothing: no time can be told."""
     far = _side_by_side(here)
     if far is None:
@@ -53,7 +52,7 @@ def bias(view: View, here: Spot) -> Judged | None:
     return Judged(role="other", sure=False, why=(f"resistor and capacitor side by side to {far}, no source seen",))
 
 
-def bus_pull_up(view: View, here: Spot) -> Judged | None:
+def bus_pull_up(_view: View, here: Spot) -> Judged | None:
     """A pull-up on a line that several open-drain pins share."""
     pulls = [arm for arm in here.resistors if arm.to == "supply"]
     if not pulls or any(arm.to != "ground" for arm in here.capacitors):

@@ -5,14 +5,11 @@ from collections.abc import Iterable, Iterator
 from rcrules.names import tokens
 from rcrules.networks._draft import Draft
 from rcrules.networks._model import Branch, Node
+from rcrules.networks._pin_words import CHASSIS
 from rcrules.networks._role import SURE, UNSURE
 from rcrules.networks._role_lines import SHUNT
 from rcrules.networks._role_words import arm_text
 from rcrules.networks._spot import Arm, View, least
-
-CHASSIS = frozenset(
-    {"SHIELD", "SHLD", "SH", "CHASSIS", "CHS", "EARTH", "PE", "FG", "CASE", "SHELL", "MOUNT", "MP", "S1", "S2"}
-)
 
 
 def bridged(draft: Draft) -> tuple[Node, ...]:
@@ -86,7 +83,7 @@ def _kind(view: View, joint: str) -> str:
 
 def _is_chassis(view: View, joint: str) -> bool:
     """By pins of shells, shields and mounting holes, and by its name."""
-    if set(tokens(joint)) & (CHASSIS | {"GNDPWR", "CGND"}):
+    if set(tokens(joint)) & CHASSIS:
         return True
     pins = view.draft.pins_at(joint)
     if len(pins) > 64:

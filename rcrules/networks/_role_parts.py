@@ -56,24 +56,44 @@ def _take_capacitors(view: View, found: Ways, here: Spot, arms: Iterable[Arm]) -
             found.capacitors.setdefault(arm.ref, arm)
 
 
-def ends(view: View, start: str, but: str) -> dict[str, str]:
-    """Held joints that resistors reach from a free joint without passing ``but``: joint -> kind."""
+def ends(view: View, start: str, but: str) -> dict[str, float]:
+    """Held joints that resistors reach from a free joint without passing ``but``, with the resistance to each. [Ω]
+
+    A way of more than FAR joints counts as one that arrives: the start stands for its end.
+    """
     if (start, but) not in view.ends:
         view.ends[start, but] = _ends(view, start, but)
     return view.ends[start, but]
 
 
-def _ends(view: View, start: str, but: str) -> dict[str, str]:
-    found: dict[str, str] = {}
-    seen, todo = {but, start}, deque([start])
-    while todo and len(seen) < FAR:
-        for arm in view.at(todo.popleft()).resistors:
+def _ends(view: View, start: str, but: str) -> dict[str, float]:
+    found: dict[str, float] = {}
+    best, todo = {start: 0.0}, [(0.0, start)]
+    while todo and len(best) < FAR:
+        ohms, joint = heappop(todo)
+        for arm in view.at(joint).resistors:
+            total = ohms + (arm.value or 0.0)
             if arm.held is not None:
-                found.setdefault(arm.far, arm.to)
-            elif arm.far not in seen:
-                seen.add(arm.far)
-                todo.append(arm.far)
-    return found if not todo or found else {start: "free"}
+                found[arm.far] = min(found.get(arm.far, total), total)
+            elif arm.far != but and total < best.get(arm.far, float("inf")):
+                best[arm.far] = total
+                heappush(todo, (total, arm.far))
+    return found if found or not todo else {start: 0.0}
+
+
+def kinds_at(view: View, arm: Arm, but: str) -> set[str]:
+    """What an arm leads to: ``ground``, ``supply``, ``driven``; ways much longer than the shortest do not count."""
+    if arm.held is not None:
+        return {arm.to}
+    held = (view.draft.held_joint(joint) for joint in strong_ends(view, arm.far, but))
+    return {one.kind if one is not None else "free" for one in held}
+
+
+def strong_ends(view: View, start: str, but: str) -> tuple[str, ...]:
+    """The held joints that resistors reach, but for those much farther than the nearest."""
+    reached = ends(view, start, but)
+    limit = LIGHT * min(reached.values(), default=0.0)
+    return tuple(joint for joint, ohms in reached.items() if ohms <= limit or limit == 0.0)
 
 
 def signal_above(view: View, start: str, but: str) -> bool:
@@ -96,20 +116,10 @@ def _signal_above(view: View, start: str, but: str) -> bool:
     return False
 
 
-def path_ohms(view: View, start: str, but: str) -> float:
-    """The lowest resistance from a free joint to a held one without passing ``but``; infinite without a way. [Ω]"""
-    best = {start: 0.0}
-    todo, lowest = [(0.0, start)], float("inf")
-    while todo and len(best) < FAR:
-        _, joint = heappop(todo)
-        for arm in view.at(joint).resistors:
-            total = best[joint] + (arm.value or 0.0)
-            if arm.held is not None:
-                lowest = min(lowest, total)
-            elif arm.far != but and total < min(best.get(arm.far, float("inf")), lowest):
-                best[arm.far] = total
-                heappush(todo, (total, arm.far))
-    return lowest
+def way(view: View, arm: Arm, but: str) -> float:
+    """Resistance through an arm to the nearest held joint, infinite without a way. [Ω]"""
+    beyond = 0.0 if arm.held is not None else min(ends(view, arm.far, but).values(), default=float("inf"))
+    return (arm.value or 0.0) + beyond
 
 
 def rc_leg(view: View, arm: Arm, but: str) -> tuple[Arm, ...]:
@@ -137,7 +147,7 @@ def _is_load(here: Spot, arm: Arm) -> bool:
 def _is_heavy(view: View, here: Spot, arm: Arm) -> bool:
     """Whether a resistor into a free joint is a light load beside what feeds this joint from held ones."""
     feeding = [other.value for other in here.resistors if other.held is not None and other.value]
-    return bool(feeding) and _way(view, arm, here.joint) >= LIGHT * min(feeding)
+    return bool(feeding) and way(view, arm, here.joint) >= LIGHT * min(feeding)
 
 
 def _take(view: View, found: Ways, here: Spot, arm: Arm) -> None:
@@ -159,9 +169,9 @@ def _climb(view: View, found: Ways, joint: str, below: str) -> None:
         if joint in found.visited:
             continue
         found.visited.add(joint)
-        lowest = min((_way(view, arm, joint) for arm in view.at(joint).resistors), default=0.0)
+        lowest = min((way(view, arm, joint) for arm in view.at(joint).resistors), default=0.0)
         for arm in view.at(joint).resistors:
-            if arm.held is not None or _way(view, arm, joint) < LIGHT * lowest or lowest == 0.0:
+            if arm.held is not None or way(view, arm, joint) < LIGHT * lowest or lowest == 0.0:
                 _climb_resistor(view, found, arm, joint, todo)
         for arm in view.at(joint).capacitors:
             _climb_capacitor(view, found, arm, joint, todo)
@@ -191,11 +201,6 @@ def _climb_capacitor(view: View, found: Ways, arm: Arm, joint: str, todo: list[t
 
 def _light(view: View, here: Spot, arm: Arm) -> bool:
     """Whether a coupling capacitor leads only to a load that hardly acts on this joint."""
-    beyond = path_ohms(view, arm.far, here.joint)
-    own = min((_way(view, leg, here.joint) for leg in here.resistors), default=0.0)
-    return beyond >= LIGHT * own if own != float("inf") else False
-
-
-def _way(view: View, arm: Arm, but: str) -> float:
-    """Resistance through an arm to a held joint. [Ω]"""
-    return (arm.value or 0.0) + (0.0 if arm.held is not None else path_ohms(view, arm.far, but))
+    beyond = min(ends(view, arm.far, here.joint).values(), default=float("inf"))
+    own = min((way(view, leg, here.joint) for leg in here.resistors), default=0.0)
+    return own != float("inf") and beyond >= LIGHT * own

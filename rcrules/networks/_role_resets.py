@@ -2,15 +2,15 @@
 
 from rcrules.design import Pin
 from rcrules.networks._fed import family_of, feeding, kind_fed, kinds, words_of
+from rcrules.networks._pin_words import BUTTON
 from rcrules.networks._role import Judged
-from rcrules.networks._role_parts import ends, path_ohms
+from rcrules.networks._role_parts import kinds_at, way
 from rcrules.networks._spot import Arm, Spot, View, least
 
 FILTER = 100.0
 """Up to this resistance, in series with a supply, the resistor lets a part's supply current through. [Ω]"""
 SHARE = 20.0
 """A resistor to ground of fewer times the series resistor makes a divider. [1]"""
-BUTTON_WORDS = frozenset({"BTN", "BUTTON", "KEY", "SW", "SWITCH", "PUSH"})
 DELAYED = ("reset", "logic", "regulator", "timer", "other")
 
 
@@ -49,11 +49,8 @@ def _is_divided(view: View, here: Spot, source: float) -> bool:
     """Whether a resistor to ground, also through others, takes a share of the supply worth telling."""
     if here.local:
         return False
-    downs = [arm.value or 0.0 for arm in here.resistors if arm.to == "ground"]
-    for arm in here.resistors:
-        if arm.held is None and set(ends(view, arm.far, here.joint).values()) == {"ground"}:
-            downs.append((arm.value or 0.0) + path_ohms(view, arm.far, here.joint))
-    return min(downs, default=float("inf")) < SHARE * source
+    downs = [arm for arm in here.resistors if kinds_at(view, arm, here.joint) == {"ground"}]
+    return min((way(view, arm, here.joint) for arm in downs), default=float("inf")) < SHARE * source
 
 
 def _waits(fed: list[str], driver: str | None) -> tuple[str, ...]:
@@ -84,7 +81,7 @@ def _filter_without_pin(view: View, here: Spot, sources: tuple[Arm, ...], pins: 
 
 
 def _is_button_connector(view: View, here: Spot) -> bool:
-    return any(view.kind(pin) == "connector" and words_of(pin) & BUTTON_WORDS for pin in here.pins)
+    return any(view.kind(pin) == "connector" and words_of(pin) & BUTTON for pin in here.pins)
 
 
 def _driver(view: View, here: Spot) -> str | None:

@@ -1,7 +1,8 @@
 """Roles around contacts and switched nets: debounce and snubber."""
 
-from rcrules.networks._fed import SWITCH, whole
+from rcrules.networks._fed import whole
 from rcrules.networks._model import Contact
+from rcrules.networks._pin_words import SWITCH
 from rcrules.networks._role import Judged
 from rcrules.networks._spot import Arm, Spot, View, greatest
 

@@ -68,8 +68,8 @@ class View:
     """A draft seen joint by joint, each looked at once."""
 
     draft: Draft
-    ends: dict[tuple[str, str], dict[str, str]] = field(default_factory=dict)
-    """Held joints that resistors reach, by start and the joint not to pass."""
+    ends: dict[tuple[str, str], dict[str, float]] = field(default_factory=dict)
+    """Held joints that resistors reach [Ω], by start and the joint not to pass."""
     signals: dict[tuple[str, str], bool] = field(default_factory=dict)
     """Whether a driven net is reached, by start and the joint not to pass."""
     families: dict[str, str] = field(default_factory=dict)
