@@ -5,12 +5,13 @@ from rcrules.inventory._held import held
 from rcrules.inventory._networks import networks
 from rcrules.inventory._parts import listed, parts
 from rcrules.inventory._place import place_json
-from rcrules.inventory._quantities import Quantities, as_quantity, node_quantities
+from rcrules.inventory._quantities import Quantities, as_quantity, case_json, node_quantities
 
 __all__ = [
     "Quantities",
     "as_quantity",
     "board_counts",
+    "case_json",
     "held",
     "inputs",
     "listed",

@@ -19,7 +19,7 @@ from rcrules.reports._words import (
 )
 from rcrules.vocabulary import SEVERITIES
 
-_INDENT: Final = "       "
+_INDENT: Final = " " * 8
 _SHOWN_CASES: Final = 4
 _SHOWN_SUBJECTS: Final = 3
 
@@ -29,11 +29,9 @@ def findings_lines(document: Document, *, verbose: bool) -> list[Line]:
     texts = part_texts(document)
     lines: list[Line] = []
     for group in _groups(item for item in document.findings if item.outcome == "fails"):
-        lines += [(), *_block(group, texts, document)]
-    lines += _undecided(document, texts, verbose=verbose)
-    if verbose:
-        lines += _holding(document, texts)
-    return lines
+        lines += [(), *_block(group, texts)]
+    lines += [*_undecided(document, texts, verbose=verbose), *_cautions(document)]
+    return lines + _holding(document, texts) if verbose else lines
 
 
 def _groups(findings: Iterable[Finding]) -> list[list[Finding]]:
@@ -48,7 +46,7 @@ def _groups(findings: Iterable[Finding]) -> list[list[Finding]]:
     )
 
 
-def _block(group: list[Finding], texts: Mapping[str, str], document: Document) -> list[Line]:
+def _block(group: list[Finding], texts: Mapping[str, str]) -> list[Line]:
     """One failing group: heading, numbers, the worst case, why."""
     first = group[0]
     lines = [_heading(first, texts), _numbers(first)]
@@ -56,16 +54,14 @@ def _block(group: list[Finding], texts: Mapping[str, str], document: Document) -
         lines.append((_INDENT, f"{extreme(first)} at  ", _case_text(first.detail["worst"])))
     if len(group) > 1:
         lines.append((_INDENT, f"the same on  {_subjects(group[1:], texts, limit=12)}"))
-    lines.append(_why(first))
-    caution = {pack["name"]: pack["caution"] for pack in document.packs}.get(first.pack)
-    return [*lines, (_INDENT, "caution  ", caution)] if caution else lines
+    return [*lines, _why(first)]
 
 
 def _heading(finding: Finding, texts: Mapping[str, str]) -> Line:
     """``error  rule   NRST   R12 10 kΩ, C7 10 µF -> U3.NRST``."""
     fed = f" -> {', '.join(finding.feeds)}" if finding.feeds else ""
     net = f"   {finding.net}" if finding.net else ""
-    word = (f"{finding.level:<7}", f"{finding.outcome} {finding.level}")
+    word = (f"{finding.level:<8}", f"{finding.outcome} {finding.level}")
     return (word, (finding.rule, "name"), f"{net}   {parts_text(finding.parts, texts)}{fed}")
 
 
@@ -137,10 +133,18 @@ def _entry_details(findings: list[Finding], texts: Mapping[str, str], *, verbose
     ]
 
 
+def _cautions(document: Document) -> list[Line]:
+    """What packs whose findings are shown warn of, each once."""
+    shown = {item.pack for item in document.findings if item.outcome in ("fails", "undecided")}
+    told = [pack for pack in document.packs if pack["name"] in shown and pack["caution"]]
+    lines: list[Line] = [((f"caution {pack['name']}", "name"), "   ", pack["caution"]) for pack in told]
+    return [(), *lines] if lines else []
+
+
 def _holding(document: Document, texts: Mapping[str, str]) -> list[Line]:
     """One line per holding or waived finding."""
     lines: list[Line] = []
     for item in document.findings:
         if item.outcome in ("holds", "waived"):
-            lines += [(), ((f"{item.outcome:<7}", "good"), *_heading(item, texts)[1:]), _numbers(item)]
+            lines += [(), ((f"{item.outcome:<8}", "good"), *_heading(item, texts)[1:]), _numbers(item)]
     return lines

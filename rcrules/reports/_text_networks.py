@@ -4,7 +4,7 @@ from collections.abc import Mapping
 
 from rcrules.findings import Document, Json
 from rcrules.reports._lines import Line
-from rcrules.reports._words import bounds, part_texts, parts_text
+from rcrules.reports._words import bounds, count, part_texts, parts_text
 from rcrules.vocabulary import ROLES
 
 _INDENT = "  "
@@ -41,7 +41,7 @@ def _held(document: Document, *, verbose: bool) -> list[Line]:
     ]
     driven = sum(row["kind"] == "driven" for row in document.held)
     if driven and not verbose:
-        lines.append((("driven", "name"), f"   {driven} nets (--verbose lists them)"))
+        lines.append((("driven", "name"), f"   {count(driven, 'net')} (--verbose lists them)"))
     return lines
 
 

@@ -1,5 +1,6 @@
 """Numbers and names of the document in words that the text reports share."""
 
+import math
 from collections.abc import Iterable, Mapping
 from typing import Final
 
@@ -89,8 +90,10 @@ def margin_text(finding: Finding) -> str:
     margin, limit = finding.margin, finding.limit
     if margin is None or limit is None:
         return ""
-    if margin == float("-inf"):
-        return "without bound"
+    if finding.detail.get("never"):
+        return "never reached in the worst case"
+    if math.isinf(margin):
+        return "no bound" if margin < 0 else ""
     amount = number(abs(margin), limit["unit"], percent=in_percent(finding))
     if margin >= 0:
         return f"{amount} to spare"

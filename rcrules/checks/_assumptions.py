@@ -1,0 +1,21 @@
+"""Numbers that no input gave: listed once each, and named by the findings that rest on them."""
+
+from collections.abc import Iterable
+
+from rcrules.findings import Json
+from rcrules.problems import Parameter
+
+Key = tuple[str, str, str]
+"""About, text, ask."""
+
+
+def keys(parameters: Iterable[Parameter]) -> list[Key]:
+    """Every assumption that the parameters rest on."""
+    return [(item.name, text, item.ask) for item in parameters for text in item.assumed]
+
+
+def rows(found: Iterable[Key]) -> tuple[list[Json], dict[Key, int]]:
+    """One object per assumption, sorted, and the index of each."""
+    ordered = sorted(set(found))
+    listed: list[Json] = [{"about": about, "text": text, "ask": ask} for about, text, ask in ordered]
+    return listed, {key: index for index, key in enumerate(ordered)}

@@ -1,0 +1,101 @@
+"""The whole check: subjects of every rule, posed, solved together, judged, told."""
+
+from collections.abc import Iterable, Mapping, Sequence
+from dataclasses import dataclass
+
+from rcrules.checks._assumptions import Key, keys, rows
+from rcrules.checks._finding import Judged, finding
+from rcrules.checks._resolve import Case, resolve
+from rcrules.checks._select import selected
+from rcrules.checks._subjects import Subject, Subjects
+from rcrules.checks._verdict import Verdict, decide
+from rcrules.events import Unmeasurable, pose
+from rcrules.findings import Finding, Json
+from rcrules.networks import Board
+from rcrules.problems import Problem
+from rcrules.project import Project
+from rcrules.rulebook import Rule
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Checked:
+    """Everything that rules found on a board."""
+
+    findings: list[Finding]
+    """By rule, net and parts; exactly one per rule and subject."""
+    assumptions: list[Json]
+    met: Mapping[str, int]
+    """Rule id -> number of subjects."""
+
+
+def check(board: Board, project: Project, rules: Sequence[Rule]) -> Checked:
+    """Hold every rule against every subject that it selects."""
+    subjects = Subjects(board)
+    cases = [case for rule in rules for case in _cases(rule, subjects, board, project)]
+    judged = _judge(cases, board, project)
+    listed, numbers = rows(key for item in judged if item.problem for key in keys(item.problem.parameters))
+    findings = [finding(item, board, project, _indexes(item, numbers)) for item in judged]
+    met = {rule.id: sum(case.rule is rule for case in cases) for rule in rules}
+    return Checked(findings=sorted(findings, key=_order), assumptions=listed, met=met)
+
+
+def _cases(rule: Rule, subjects: Subjects, board: Board, project: Project) -> list[Case]:
+    chosen = [subject for subject in subjects.of(rule.measure.subject) if selected(rule.selection, subject)]
+    return [resolve(rule, subject, board, project) for subject in chosen]
+
+
+def _judge(cases: Iterable[Case], board: Board, project: Project) -> list[Judged]:
+    """Pose what can be posed, decide all of it in one go."""
+    judged: list[Judged] = []
+    posed: list[tuple[Case, Problem]] = []
+    known: dict[object, Problem | Unmeasurable] = {}
+    for case in cases:
+        question = None if case.missing else _posed(case, board, project, known)
+        if isinstance(question, Problem):
+            posed.append((case, question))
+        else:
+            judged.append(Judged(case=case, problem=None, verdict=_open(case, question)))
+    verdicts = decide(posed)
+    judged += [
+        Judged(case=case, problem=problem, verdict=verdict)
+        for (case, problem), verdict in zip(posed, verdicts, strict=True)
+    ]
+    return judged
+
+
+def _posed(
+    case: Case, board: Board, project: Project, known: dict[object, Problem | Unmeasurable]
+) -> Problem | Unmeasurable:
+    """The problem of a case; rules that ask the same of a subject share one."""
+    key = (
+        case.rule.measure.name,
+        id(case.subject.target),
+        tuple(sorted(case.options.items(), key=lambda item: item[0])),
+    )
+    if key not in known:
+        try:
+            known[key] = pose(board, project, case.subject.target, case.rule.measure, case.options)
+        except Unmeasurable as error:
+            known[key] = error
+    return known[key]
+
+
+def _open(case: Case, error: Unmeasurable | None) -> Verdict:
+    """Undecided because something is missing, or cannot be measured."""
+    reasons = [item.reason for item in case.missing] if error is None else [error.reason]
+    return Verdict(outcome="undecided", solution=None, reason="; ".join(reasons), ask=_asks(case, error))
+
+
+def _asks(case: Case, error: Unmeasurable | None) -> tuple[str, ...]:
+    asked = [line for item in case.missing for line in item.ask]
+    if error is not None and error.ask:
+        asked += [error.ask] if isinstance(error.ask, str) else list(error.ask)
+    return tuple(dict.fromkeys(asked))
+
+
+def _indexes(item: Judged, numbers: Mapping[Key, int]) -> list[int]:
+    return sorted({numbers[key] for key in keys(item.problem.parameters)}) if item.problem else []
+
+
+def _order(item: Finding) -> tuple[str, str, list[str], str]:
+    return (item.rule, item.net or "", item.parts, item.fingerprint)

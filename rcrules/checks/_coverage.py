@@ -1,0 +1,35 @@
+"""Where each resistor and capacitor ends: judged, undecided, met by no rule, or nothing for rules."""
+
+from collections.abc import Iterable, Mapping
+from typing import Final
+
+from rcrules.findings import Finding
+from rcrules.networks import Board
+
+CLASSES: Final = ("not_fitted", "unreadable", "judged", "undecided", "unruled", "decoupling", "elsewhere")
+"""In the order in which they apply."""
+
+
+def coverage(board: Board, refs: Iterable[str], findings: Iterable[Finding]) -> Mapping[str, str]:
+    """Reference -> the first class that applies."""
+    judged: set[str] = set()
+    undecided: set[str] = set()
+    for item in findings:
+        (undecided if item.outcome == "undecided" else judged).update(item.parts)
+    return {ref: _class(ref, board.coverage.get(ref, "elsewhere"), judged, undecided) for ref in refs}
+
+
+def _class(ref: str, before: str, judged: set[str], undecided: set[str]) -> str:
+    if before in ("not_fitted", "unreadable"):
+        return before
+    if ref in judged:
+        return "judged"
+    if ref in undecided:
+        return "undecided"
+    return "unruled" if before == "network" else before
+
+
+def counts(classes: Mapping[str, str]) -> dict[str, int]:
+    """Class -> number of parts, every class named."""
+    found = list(classes.values())
+    return {name: found.count(name) for name in CLASSES}

@@ -1,0 +1,85 @@
+"""A rule for one subject: its options and limits with every name looked up."""
+
+from collections.abc import Mapping
+from dataclasses import dataclass
+
+from rcrules.checks._lookup import Missing, look_up
+from rcrules.checks._subjects import Subject
+from rcrules.networks import Board
+from rcrules.project import Project
+from rcrules.quantities import Spread
+from rcrules.rulebook import Limit, OptionValue, Rule
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Bound:
+    """A limit in numbers."""
+
+    kind: str
+    """``at-least`` or ``at-most``."""
+    strict: float
+    """The end of the limit's own spread that is hardest to keep."""
+    unit: str
+    text: str
+    """As the rule or the project writes it; '' where only the number is known."""
+    origin: str
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Case:
+    """One rule and one subject, ready to be posed, or what is missing."""
+
+    rule: Rule
+    subject: Subject
+    options: Mapping[str, OptionValue]
+    bounds: tuple[Bound, ...]
+    missing: tuple[Missing, ...]
+
+
+def resolve(rule: Rule, subject: Subject, board: Board, project: Project) -> Case:
+    """Look up every name; everything missing at once."""
+    missing: list[Missing] = []
+    options = {name: _option(value, rule, subject, board, project) for name, value in rule.options.items()}
+    bounds = [_bound(limit, rule, subject, board, project) for limit in rule.limits]
+    missing += [item for item in (*options.values(), *bounds) if isinstance(item, Missing)]
+    return Case(
+        rule=rule,
+        subject=subject,
+        options={name: value for name, value in options.items() if not isinstance(value, Missing)},
+        bounds=tuple(item for item in bounds if not isinstance(item, Missing)),
+        missing=tuple(dict.fromkeys(missing)),
+    )
+
+
+def _option(value: OptionValue, rule: Rule, subject: Subject, board: Board, project: Project) -> OptionValue | Missing:
+    """An option; a text that starts with ``?`` is a name to look up."""
+    if not (isinstance(value, str) and value.startswith("?")):
+        return value
+    found = look_up(value[1:], rule, subject, board, project)
+    if isinstance(found, Missing):
+        return found
+    return found.value.nominal if isinstance(found.value, Spread) else found.value
+
+
+def _bound(limit: Limit, rule: Rule, subject: Subject, board: Board, project: Project) -> Bound | Missing:
+    """A limit in numbers: written, looked up, or chosen by a word that is looked up."""
+    if limit.value is not None:
+        return _strict(limit.kind, limit.value, limit.text, f"rule {rule.id}")
+    name = limit.table[0] if limit.table else limit.name
+    found = look_up(name or "", rule, subject, board, project)
+    if isinstance(found, Missing):
+        return found
+    if isinstance(found.value, Spread):
+        return _strict(limit.kind, found.value, "", found.origin)
+    table = limit.table[1] if limit.table else {}
+    chosen = table.get(found.value)
+    if chosen is None:
+        words = ", ".join(table) or "a quantity"
+        reason = f"{name} is {found.value!r} in {found.origin}; expected {words}"
+        return Missing(reason=reason, ask=(f'{found.origin} {name} = "…"',))
+    return _strict(limit.kind, chosen, "", f"{found.origin} {name} = {found.value!r}")
+
+
+def _strict(kind: str, value: Spread, text: str, origin: str) -> Bound:
+    strict = value.high if kind == "at-least" else value.low
+    return Bound(kind=kind, strict=strict, unit=value.unit, text=text, origin=origin)

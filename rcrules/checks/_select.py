@@ -1,0 +1,73 @@
+"""Which subjects a rule is held against."""
+
+from collections.abc import Callable, Iterable
+from fnmatch import fnmatchcase
+from typing import Final
+
+from rcrules.checks._subjects import Subject, View
+from rcrules.names import has_token
+from rcrules.parts import Known, RatedPart
+from rcrules.quantities import Spread
+from rcrules.rulebook import Selection
+
+_UNITS: Final = {"resistor": "Ω", "capacitor": "F"}
+
+
+def selected(selection: Selection, subject: Subject) -> bool:
+    """Whether all given keys match at one and the same node."""
+    return any(matches(selection, view) for view in subject.views)
+
+
+def matches(selection: Selection, view: View) -> bool:
+    """Whether all given keys match, one of ``any-of`` does, and none of ``not``."""
+    return (
+        all(test(selection, view) for test in _TESTS)
+        and (not selection.any_of or any(matches(item, view) for item in selection.any_of))
+        and not any(matches(item, view) for item in selection.exclude)
+    )
+
+
+def _within(wanted: tuple[str, ...], found: Iterable[str]) -> bool:
+    return not wanted or not set(wanted).isdisjoint(found)
+
+
+def globbed(patterns: tuple[str, ...], names: Iterable[str]) -> bool:
+    """Whether a name equals a pattern or matches it as a glob; no patterns match everything."""
+    return not patterns or any(name == pattern or fnmatchcase(name, pattern) for name in names for pattern in patterns)
+
+
+def _named(wanted: tuple[str, ...], view: View) -> bool:
+    """Whole words of a net, or of the own name of a fed pin."""
+    names = (*view.nets, *(pin.partition(".")[2] for pin in view.feeds))
+    return not wanted or any(has_token(name, word) for name in names for word in wanted)
+
+
+def _valued(low: Spread | None, high: Spread | None, parts: tuple[RatedPart, ...]) -> bool:
+    """Whether a part of the unit asked for has a marked value within both bounds."""
+    if low is None and high is None:
+        return True
+    return any(_between(part, low, high) for part in parts)
+
+
+def _between(part: RatedPart, low: Spread | None, high: Spread | None) -> bool:
+    if not isinstance(part.value, Known) or any(bound and bound.unit != _UNITS.get(part.kind) for bound in (low, high)):
+        return False
+    return (low is None or part.value.si >= low.nominal) and (high is None or part.value.si <= high.nominal)
+
+
+_TESTS: Final[tuple[Callable[[Selection, View], bool], ...]] = (
+    lambda selection, view: _within(selection.role, view.roles),
+    lambda selection, view: _named(selection.name, view),
+    lambda selection, view: globbed(selection.net, view.nets),
+    lambda selection, view: globbed(selection.pin, view.feeds),
+    lambda selection, view: globbed(selection.part, (part.ref for part in view.parts)),
+    lambda selection, view: globbed(selection.sheet, (part.part.sheet for part in view.parts)),
+    lambda selection, view: _within(selection.kind, (part.kind for part in view.parts)),
+    lambda selection, view: _within(selection.kind_fed, view.kinds_fed),
+    lambda selection, view: _within(selection.dielectric, (part.dielectric or "" for part in view.parts)),
+    lambda selection, view: _within(selection.certainty, (view.certainty,)),
+    lambda selection, view: _valued(selection.value_at_least, selection.value_at_most, view.parts),
+    lambda selection, view: (
+        selection.polarised is None or any(part.polarised == selection.polarised for part in view.parts)
+    ),
+)

@@ -1,0 +1,74 @@
+import re
+from dataclasses import replace
+
+from rcrules.findings import Document, Finding
+from rcrules.reports import reports
+from tests.reports._sample import DOCUMENT, FINDINGS, finding
+
+
+def text(document: Document, **how: bool) -> str:
+    return reports()["text"].render(document, **how)
+
+
+def of(*findings: Finding) -> str:
+    return text(replace(DOCUMENT, findings=list(findings)))
+
+
+def test_names_cannot_steer_the_terminal() -> None:
+    found = text(DOCUMENT, verbose=True)
+    assert "\x1b" not in found
+    assert "\u202e" not in found
+    assert r"POR \x1b[2J\u202egnp.exe" in found
+
+
+def test_a_line_break_in_a_name_does_not_make_a_line() -> None:
+    assert "nothing fails\\x0aerror" in of(finding(net="nothing fails\nerror"))
+
+
+def test_colour_only_adds_escapes() -> None:
+    colored = text(DOCUMENT, color=True)
+    assert re.sub("\x1b\\[[0-9;]*m", "", colored) == text(DOCUMENT)
+    assert colored != text(DOCUMENT)
+
+
+def test_failing_findings_come_before_undecided_ones_and_errors_before_warnings() -> None:
+    found = text(DOCUMENT)
+    places = [found.index(word) for word in ("error   reset-lifts-late", "warning reset-lifts-soon", "undecided:")]
+    assert places == sorted(places)
+
+
+def test_the_line_that_decides_most_comes_first() -> None:
+    found = text(DOCUMENT)
+    assert found.index("one line decides 2 findings") < found.index("one line decides 1 finding ")
+
+
+def test_one_cause_on_many_parts_is_one_block() -> None:
+    found = text(DOCUMENT)
+    assert found.count("voltage-within-rating") == 1
+    assert "the same on  C2 100 µF" in found
+
+
+def test_a_level_that_is_never_reached_reads_so() -> None:
+    assert "never reached" in of(*(item for item in FINDINGS if item.detail.get("never")))
+
+
+def test_the_caution_of_a_pack_stands_with_its_findings() -> None:
+    broken = finding(pack="stored-energy")
+    assert "caution stored-energy   A calculation is not a measurement." in of(broken)
+    assert "caution" not in of(finding())
+
+
+def test_undecided_findings_carry_the_caution_too() -> None:
+    assert "caution stored-energy   A calculation is not a measurement." in of(
+        *(item for item in FINDINGS if item.pack == "stored-energy")
+    )
+
+
+def test_ratios_are_shown_as_the_rule_writes_them() -> None:
+    assert "0 % .. 100 % .. 105 %   must be at most 100 %   over by 5 %" in text(DOCUMENT)
+
+
+def test_nothing_found_says_so() -> None:
+    found = of()
+    assert "0 of 0 findings decided" in found
+    assert "nothing fails, 0 hold" in found
