@@ -1,0 +1,162 @@
+"""Which joints are held: ground, supplies, driven nets, each with its evidence.
+
+Evidence in order: project file, then counted ground and supply pins with names, sources of supplies, what passes through
+diodes, switches and switched inductors, filter resistors, outputs and connectors. A name alone holds nothing that only
+resistors and capacitors reach: ``VREF`` at a divider's tap is a node.
+"""
+
+from collections.abc import Callable, Iterator
+from typing import Final
+
+from rcrules.networks import _held_pins as say
+from rcrules.networks._held_driven import driven
+from rcrules.networks._held_verdict import Verdict, Verdicts, keys
+from rcrules.networks._held_voltage import volts_here
+from rcrules.networks._passing import passed
+from rcrules.networks._scene import Scene
+from rcrules.parts import Known
+
+FILTER_OHMS: Final = 100.0
+"""Up to here a resistor from a supply to a local supply pin feeds it as a filter; above, it is a node like any other."""
+
+MANY_PARTS: Final = 3
+"""A net with the supply pins of so many parts is a supply, whatever feeds it."""
+
+Step = Callable[[Scene, str, Verdicts], Verdict | None]
+
+
+def held_joints(scene: Scene) -> tuple[Verdicts, frozenset[str]]:
+    """Joint -> what holds it, and the joints that are local supplies behind a filter resistor."""
+    verdicts: Verdicts = {}
+    for step in (_by_project, _ground, _source, _named_supply, _supply_pins):
+        verdicts.update(_deciding(scene, verdicts, step))
+    passed(scene, verdicts)
+    local = dict(_deciding(scene, verdicts, _local))
+    verdicts.update(local)
+    passed(scene, verdicts)
+    for step in (_left_over, driven):
+        verdicts.update(_deciding(scene, verdicts, step))
+    return verdicts, frozenset(local)
+
+
+def _deciding(scene: Scene, verdicts: Verdicts, step: Step) -> Iterator[tuple[str, Verdict]]:
+    free = scene.facts.free
+    found = [(joint, step(scene, joint, verdicts)) for joint in scene.members if joint not in verdicts]
+    return ((joint, verdict) for joint, verdict in found if verdict and not any(free(net) for net in scene.members[joint]))
+
+
+def _by_project(scene: Scene, joint: str, _: Verdicts) -> Verdict | None:
+    for net in scene.members[joint]:
+        found = scene.facts.held(net)
+        if found:
+            return found
+    pins = [(pin, facts.kind) for pin in scene.pins[joint] if (facts := scene.facts.pin(pin)) and facts.kind]
+    for kind, holds in (("supply", "supply"), ("output", "driven")):
+        said = [pin for pin, word in pins if word == kind]
+        if said:
+            return Verdict(kind=holds, evidence=(f"project [pin] {', '.join(keys(said))} is {kind}",))
+    return None
+
+
+def _ground(scene: Scene, joint: str, _: Verdicts) -> Verdict | None:
+    grounds, supplies = scene.says(joint, say.GROUND), scene.says(joint, say.SUPPLY, say.SOURCE)
+    hints = scene.hints(joint)
+    named = next((f"name {net}" for net in scene.members[joint] if hints and hints[0].kind == "ground"), None)
+    strong = named is not None and hints[0].strong
+    against = bool(hints) and hints[0].kind == "supply" and hints[0].strong
+    real = [pin for pin in grounds if scene.kind(pin.ref) != "connector"]
+    enough = len(grounds) > len(supplies) and not against and (bool(real) or named is not None or len(grounds) > 1)
+    bonded = named is not None and not supplies and _bonded(scene, joint)
+    if not (strong or enough or bonded):
+        return None
+    return Verdict(kind="ground", volts=0.0, evidence=(*_given(named), *keys(grounds)), sure=strong or bool(real))
+
+
+def _bonded(scene: Scene, joint: str) -> bool:
+    """A shield or common: nothing but connectors, holes, resistors and capacitors on it, and a resistor at it."""
+    kinds = {scene.kind(pin.ref) for pin in scene.pins[joint]}
+    return kinds <= {"connector", "mechanical", "resistor", "capacitor", "test-point", "diode", "ferrite"} and "resistor" in kinds
+
+
+def _source(scene: Scene, joint: str, _: Verdicts) -> Verdict | None:
+    pins = [pin for pin in scene.says(joint, say.SOURCE)]
+    batteries = [pin for pin in scene.of_kind(joint, "battery") if pin in scene.says(joint, say.SUPPLY)]
+    if joint in scene.switching or not (pins or batteries):
+        return None
+    sure = any(pin.type in ("power-out", "output") for pin in pins) or bool(batteries) or bool(scene.hints(joint))
+    return _supply(scene, joint, keys((*pins, *batteries)), sure=sure)
+
+
+def _named_supply(scene: Scene, joint: str, _: Verdicts) -> Verdict | None:
+    hints = [named for named in scene.hints(joint) if named.kind == "supply"]
+    if not hints or joint in scene.switching or only_fed_by_resistors(scene, joint):
+        return None
+    backed = scene.says(joint, say.SUPPLY) or scene.says(joint, say.NEGATIVE)
+    outside = scene.of_kind(joint, "connector", "diode", "transistor", "transformer", "battery", "other")
+    if not (hints[0].strong or backed or outside):
+        return None
+    return _supply(scene, joint, (f"name {joint}", *keys(backed)), sure=hints[0].strong or bool(backed))
+
+
+def _supply_pins(scene: Scene, joint: str, _: Verdicts) -> Verdict | None:
+    pins = scene.says(joint, say.SUPPLY, say.NEGATIVE)
+    if not pins or joint in scene.switching or only_fed_by_resistors(scene, joint):
+        return None
+    return _supply(scene, joint, keys(pins), sure=any(pin.type == "power-in" for pin in pins))
+
+
+def _local(scene: Scene, joint: str, verdicts: Verdicts) -> Verdict | None:
+    """A supply pin or a name of a supply with a capacitor to ground, fed through one small resistor."""
+    pins = scene.says(joint, say.SUPPLY, say.NEGATIVE)
+    named = any(named.kind == "supply" and named.strong for named in scene.hints(joint))
+    feeds = [far for item, far in scene.far_ends(joint, "resistor") if _is_small(scene, item.ref) and _is(verdicts, far, "supply")]
+    to_ground = any(_is(verdicts, far, "ground") for _, far in scene.far_ends(joint, "capacitor"))
+    if not (pins or named) or len(set(feeds)) != 1 or not to_ground:
+        return None
+    source = verdicts[feeds[0]]
+    return Verdict(kind="supply", spread=source.spread, volts=source.volts, evidence=(f"filter resistor from {feeds[0]}", *keys(pins)))
+
+
+def _left_over(scene: Scene, joint: str, verdicts: Verdicts) -> Verdict | None:
+    """Supply pins or strong names that nothing known feeds: a sheet that is not in the export, or a resistor alone."""
+    strong = [named for named in scene.hints(joint) if named.kind == "supply" and named.strong and named.volts is not None]
+    if strong:
+        return _supply(scene, joint, (f"name {joint}",), sure=False)
+    pins = scene.says(joint, say.SUPPLY)
+    resistors = scene.far_ends(joint, "resistor")
+    return _supply(scene, joint, keys(pins), sure=False) if pins and not resistors and joint not in scene.switching else None
+
+
+def only_fed_by_resistors(scene: Scene, joint: str) -> bool:
+    """Whether a resistor from a supply feeds the joint and nothing else does, as far as pins and names tell."""
+    if scene.says(joint, say.SOURCE) or scene.of_kind(joint, "connector", "battery", "transformer"):
+        return False
+    feeding = [item for item, far in scene.far_ends(joint, "resistor") if _like_a_supply(scene, far)]
+    if not feeding or len({pin.ref for pin in scene.says(joint, say.SUPPLY)}) >= MANY_PARTS:
+        return False
+    blocked = any(item.cathode == joint for item in scene.diodes.get(joint, ()))
+    active = blocked or bool(scene.coils.get(joint)) or bool(scene.of_kind(joint, "transistor"))
+    return not active or any(_is_small(scene, item.ref) for item in feeding)
+
+
+def _like_a_supply(scene: Scene, joint: str) -> bool:
+    named = any(named.kind == "supply" and named.strong for named in scene.hints(joint))
+    return named or bool(scene.says(joint, say.SUPPLY, say.SOURCE, say.NEGATIVE))
+
+
+def _supply(scene: Scene, joint: str, evidence: tuple[str, ...], *, sure: bool) -> Verdict:
+    volts, why = volts_here(scene, joint)
+    return Verdict(kind="supply", volts=volts, evidence=(*evidence, *_given(why)), sure=sure)
+
+
+def _is_small(scene: Scene, ref: str) -> bool:
+    value = scene.parts[ref].value
+    return isinstance(value, Known) and value.si <= FILTER_OHMS
+
+
+def _is(verdicts: Verdicts, joint: str, kind: str) -> bool:
+    return joint in verdicts and verdicts[joint].kind == kind
+
+
+def _given(text: str | None) -> tuple[str, ...]:
+    return () if text is None else (text,)

@@ -1,0 +1,84 @@
+"""Driven joints: switching nodes, outputs, and nets that come from a connector."""
+
+from typing import Final
+
+from rcrules.names import has_token
+from rcrules.networks import _held_pins as say
+from rcrules.networks._held_verdict import Verdict, Verdicts, keys
+from rcrules.networks._scene import Scene
+
+_BUS_LINES: Final = ("SDA", "SCL", "SMBDAT", "SMBCLK", "ALERT", "ONEWIRE")
+"""Shared open-drain lines: free, their rise is the pull-up's."""
+_CONTROLLER_PINS: Final = 12
+"""A chip with at least so many bidirectional pins is a controller, whose pins marked as outputs may be inputs."""
+
+
+def driven(scene: Scene, joint: str, verdicts: Verdicts) -> Verdict | None:
+    """What drives the joint from outside the RC network, or None where it is free."""
+    if joint in scene.switching:
+        return Verdict(kind="driven", evidence=("switching node", *keys(scene.says(joint, say.SWITCH))))
+    if scene.of_kind(joint, "crystal"):
+        return None
+    return _output(scene, joint) or _open_drain(scene, joint) or _connector(scene, joint, verdicts)
+
+
+def _output(scene: Scene, joint: str) -> Verdict | None:
+    switch = [pin for pin in scene.says(joint, say.SWITCH) if pin.type not in ("input", "power-in")]
+    outputs = (*switch, *scene.says(joint, say.OUTPUT))
+    if not outputs:
+        return None
+    waits = bool(scene.far_ends(joint, "capacitor")) and bool(scene.far_ends(joint, "resistor"))
+    if waits and (scene.contacts.get(joint) or all(_is_controller(scene, pin.ref) for pin in outputs)):
+        return None
+    return Verdict(kind="driven", evidence=keys(outputs), sure=any(pin.type in ("output", "power-out") for pin in outputs))
+
+
+def _open_drain(scene: Scene, joint: str) -> Verdict | None:
+    """An open-drain output holds a net that no capacitor slows and that is no shared bus."""
+    pins = scene.says(joint, say.OPEN)
+    bus = _is_bus(scene, joint)
+    if not pins or bus or scene.far_ends(joint, "capacitor") or _asked(scene, joint):
+        return None
+    return Verdict(kind="driven", evidence=(f"open-drain {keys(pins)[0]}",), sure=False)
+
+
+def _connector(scene: Scene, joint: str, verdicts: Verdicts) -> Verdict | None:
+    """A connector drives its net, unless a contact, a bus, or only a pull and a capacitor say otherwise."""
+    pins = scene.of_kind(joint, "connector")
+    if not pins or scene.contacts.get(joint) or _is_bus(scene, joint) or _asked(scene, joint):
+        return None
+    capacitors = scene.far_ends(joint, "capacitor")
+    sources = [far for _, far in scene.far_ends(joint, "resistor") if _feeds(scene, far, verdicts)]
+    coupled = [far for _, far in capacitors if _feeds(scene, far, verdicts) and not _is_supply(verdicts, far)]
+    if (capacitors and sources) or coupled:
+        return None
+    return Verdict(kind="driven", evidence=(f"connector {pins[0].key}",), sure=False)
+
+
+def _feeds(scene: Scene, joint: str, verdicts: Verdicts) -> bool:
+    """Whether a joint is a source other than ground: a supply, or the output of a part."""
+    verdict = verdicts.get(joint)
+    if verdict is not None:
+        return verdict.kind != "ground"
+    return joint in scene.switching or bool(scene.says(joint, say.OUTPUT, say.SOURCE))
+
+
+def _is_supply(verdicts: Verdicts, joint: str) -> bool:
+    return joint in verdicts and verdicts[joint].kind == "supply"
+
+
+def _is_bus(scene: Scene, joint: str) -> bool:
+    names = (*scene.members[joint], *(pin.name for pin in scene.of_kind(joint, "ic") if len(pin.name) <= 8))
+    return any(has_token(name, line) for name in names for line in _BUS_LINES)
+
+
+def _asked(scene: Scene, joint: str) -> bool:
+    """Whether the project file describes the net as one to be looked at: its wiring, role or pulls."""
+    facts = [found for net in scene.members[joint] if (found := scene.facts.net(net))]
+    pulls = [found for pin in scene.pins[joint] if (found := scene.facts.pin(pin)) and (found.pull_up or found.pull_down)]
+    return bool(pulls) or any(found.wiring_capacitance is not None or found.role is not None for found in facts)
+
+
+def _is_controller(scene: Scene, ref: str) -> bool:
+    pins = scene.parts[ref].part.pins
+    return sum(pin.type == "bidirectional" for pin in pins) >= _CONTROLLER_PINS

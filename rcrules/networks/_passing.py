@@ -1,0 +1,138 @@
+"""Supplies that pass through diodes, closed power switches and switched inductors to further joints."""
+
+from collections import deque
+from collections.abc import Iterator
+from dataclasses import replace
+from typing import Final
+
+from rcrules.networks import _held_pins as say
+from rcrules.networks._held_verdict import Verdict, Verdicts, keys
+from rcrules.networks._held_voltage import volts_here
+from rcrules.networks._scene import Scene
+from rcrules.parts import Known
+
+DIODE_DROP: Final = (0.0, 0.3, 0.9)
+"""Least, nominal and most voltage across a conducting diode [V]; no load to full load, Schottky to silicon."""
+_DIVIDER_OHMS: Final = 10e3
+_SIGNALS: Final = ("ic", "transistor", "contact", "crystal")
+
+
+def passed(scene: Scene, verdicts: Verdicts) -> None:
+    """Add to the verdicts all supplies that others feed, to a fixed point; fill in voltages that their source tells."""
+    for joint, verdict in _inputs(scene, verdicts):
+        verdicts.setdefault(joint, verdict)
+    waiting = deque(joint for joint, verdict in verdicts.items() if verdict.kind == "supply")
+    while waiting:
+        joint = waiting.popleft()
+        for far, verdict in _onward(scene, joint, verdicts):
+            if any(scene.facts.free(net) for net in scene.members[far]):
+                continue
+            known = verdicts.get(far)
+            if known is None or _tells_more(known, verdict):
+                verdicts[far] = verdict if known is None else _with_voltage(known, verdict)
+                waiting.append(far)
+
+
+def _with_voltage(known: Verdict, source: Verdict) -> Verdict:
+    evidence = tuple(dict.fromkeys((*known.evidence, *source.evidence)))
+    return replace(source, evidence=evidence, sure=known.sure)
+
+
+def _tells_more(known: Verdict, source: Verdict) -> bool:
+    """Whether a source gives a voltage that is not known yet, or a higher one through a second diode."""
+    new, old = source.voltage, known.voltage
+    if known.kind != "supply" or new is None:
+        return False
+    return old is None or (known.through_diode and source.through_diode and abs(new.nominal) > abs(old.nominal))
+
+
+def _onward(scene: Scene, joint: str, verdicts: Verdicts) -> Iterator[tuple[str, Verdict]]:
+    here = verdicts[joint]
+    for diode in scene.diodes.get(joint, ()):
+        if diode.anode == joint and diode.cathode not in scene.switching and _takes_supply(scene, diode.cathode, verdicts):
+            yield diode.cathode, here.passed(f"diode {diode.ref} from {joint}", drop=DIODE_DROP)
+    for ref, far in _switched(scene, joint):
+        if _takes_supply(scene, far, verdicts):
+            yield far, here.passed(f"power switch {ref} from {joint}", sure=False)
+    for source in scene.coils.get(joint, ()):
+        yield from _rectified(scene, source, verdicts)
+
+
+def _inputs(scene: Scene, verdicts: Verdicts) -> Iterator[tuple[str, Verdict]]:
+    """Joints between a connector and a diode or switch into a supply; outputs of switched inductors; rectified switch nodes."""
+    for joint in scene.members:
+        if joint in verdicts or joint in scene.switching:
+            continue
+        volts, _ = volts_here(scene, joint)
+        into = [diode for diode in scene.diodes.get(joint, ()) if diode.anode == joint and _is_supply(verdicts, diode.cathode)]
+        if into and scene.of_kind(joint, "connector") and not _carries_signal(scene, joint):
+            why = f"connector, and diode {into[0].ref} into {into[0].cathode}"
+            yield joint, replace(verdicts[into[0].cathode], evidence=(why,), sure=False, given=False)
+        elif scene.coils.get(joint) and _has_bulk(scene, joint, verdicts):
+            yield joint, Verdict(kind="supply", volts=volts, evidence=(f"switched inductor from {scene.coils[joint][0]}",))
+        elif _is_rectified(scene, joint, verdicts):
+            yield joint, Verdict(kind="supply", volts=volts, evidence=("diode from a switching node",))
+
+
+def _rectified(scene: Scene, joint: str, verdicts: Verdicts) -> Iterator[tuple[str, Verdict]]:
+    """Output of a boost converter: the cathode of a diode at the switching node."""
+    for diode in scene.diodes.get(joint, ()):
+        if diode.anode == joint and diode.cathode not in verdicts and _has_bulk(scene, diode.cathode, verdicts):
+            yield diode.cathode, Verdict(kind="supply", evidence=(f"diode {diode.ref} from switching node {joint}",))
+
+
+def _is_rectified(scene: Scene, joint: str, verdicts: Verdicts) -> bool:
+    from_switch = any(diode.cathode == joint and diode.anode in scene.switching for diode in scene.diodes.get(joint, ()))
+    return from_switch and _has_bulk(scene, joint, verdicts)
+
+
+def _takes_supply(scene: Scene, joint: str, verdicts: Verdicts) -> bool:
+    """Whether a joint behind a diode or switch is a supply: supply pins, a supply's name, or a connector or coil with a capacitor."""
+    if joint in verdicts:
+        return verdicts[joint].kind == "supply"
+    if scene.says(joint, say.SUPPLY, say.SOURCE) or any(named.kind == "supply" for named in scene.hints(joint)):
+        return True
+    plain = not scene.says(joint, say.OUTPUT, say.OPEN, say.NEVER) and joint not in scene.switching
+    return plain and bool(scene.of_kind(joint, "connector")) and _has_bulk(scene, joint, verdicts)
+
+
+def _carries_signal(scene: Scene, joint: str) -> bool:
+    small = [item for item, _ in scene.far_ends(joint, "resistor") if not _is_large(scene, item.ref)]
+    fused = bool(scene.of_kind(joint, "fuse"))
+    clamped = any(diode.cathode == joint for diode in scene.diodes.get(joint, ())) and not fused
+    return bool(scene.of_kind(joint, *_SIGNALS)) or (bool(small) and not fused) or (clamped and bool(scene.of_kind(joint, "ic")))
+
+
+def _is_large(scene: Scene, ref: str) -> bool:
+    value = scene.parts[ref].value
+    return isinstance(value, Known) and value.si >= _DIVIDER_OHMS
+
+
+def _has_bulk(scene: Scene, joint: str, verdicts: Verdicts) -> bool:
+    return any(far in verdicts and verdicts[far].kind in ("ground", "supply") for _, far in scene.far_ends(joint, "capacitor"))
+
+
+def _is_supply(verdicts: Verdicts, joint: str) -> bool:
+    return joint in verdicts and verdicts[joint].kind == "supply"
+
+
+def _switched(scene: Scene, joint: str) -> Iterator[tuple[str, str]]:
+    """The other ends of the channels of transistors at the joint, by pin names or the usual order of three pins."""
+    for pin in scene.of_kind(joint, "transistor"):
+        control = _control(scene, pin.ref)
+        for other in scene.parts[pin.ref].part.pins:
+            far = scene.joints[other.net]
+            if far != joint and pin.number not in control and other.number not in control and other.number != pin.number:
+                yield pin.ref, far
+
+
+def _control(scene: Scene, ref: str) -> frozenset[str]:
+    """Numbers of the gates or bases: by name, else pin 1 of three."""
+    pins = scene.parts[ref].part.pins
+    named = frozenset(pin.number for pin in pins if pin.name.upper()[:1] in ("G", "B"))
+    if named or len(pins) != 3:
+        return named or frozenset(pin.number for pin in pins)
+    return frozenset("G") if any(pin.number == "G" for pin in pins) else frozenset("1")
+
+
+__all__ = ["passed", "keys"]

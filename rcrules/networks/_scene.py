@@ -1,0 +1,193 @@
+"""What is around each joint: pins, branches, contacts, diodes and what the pins say; the evidence that holds nets."""
+
+from collections import defaultdict
+from collections.abc import Mapping
+from dataclasses import dataclass, replace
+from typing import Final, TypeVar
+
+from rcrules.design import Design, Pin
+from rcrules.networks import _held_pins as say
+from rcrules.networks._held_names import NameHint, hint
+from rcrules.networks._joints import joints as join_nets
+from rcrules.networks._links import branch, branches, contact, diodes, joined
+from rcrules.networks._model import Branch, Contact, Diode
+from rcrules.networks._named import Facts
+from rcrules.parts import RatedPart
+
+Ends = TypeVar("Ends", Branch, Contact)
+_MAKERS: Final = frozenset(("ic", "other"))
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Scene:
+    """The board around its joints, before anything is held; all mappings are by joint unless said otherwise."""
+
+    design: Design
+    parts: Mapping[str, RatedPart]
+    facts: Facts
+    joints: Mapping[str, str]
+    members: Mapping[str, tuple[str, ...]]
+    pins: Mapping[str, tuple[Pin, ...]]
+    claims: Mapping[str, Mapping[str, tuple[Pin, ...]]]
+    """What pins say (a word of _held_pins) -> the pins that say it."""
+    branches: Mapping[str, tuple[Branch, ...]]
+    contacts: Mapping[str, tuple[Contact, ...]]
+    diodes: Mapping[str, tuple[Diode, ...]]
+    coils: Mapping[str, tuple[str, ...]]
+    """Joint -> joints at the far end of inductors that are no DC joint, because one end is a switching node."""
+    switching: frozenset[str]
+    """Joints that a power switch drives: the input or output of an inductor that is switched."""
+
+    def says(self, joint: str, *claims: str) -> tuple[Pin, ...]:
+        """The pins at the joint that say any of the claims."""
+        found = self.claims.get(joint, {})
+        return tuple(pin for claim in claims for pin in found.get(claim, ()))
+
+    def of_kind(self, joint: str, *kinds: str) -> tuple[Pin, ...]:
+        """The pins at the joint of parts of these kinds."""
+        return tuple(pin for pin in self.pins.get(joint, ()) if self.kind(pin.ref) in kinds)
+
+    def kind(self, ref: str) -> str:
+        """Kind of the part, ``other`` where it is not known."""
+        part = self.parts.get(ref)
+        return part.kind if part else "other"
+
+    def hints(self, joint: str) -> tuple[NameHint, ...]:
+        """What the names of the joint's nets say, strong ones first."""
+        found = [named for net in self.members[joint] if (named := hint(net))]
+        return tuple(sorted(found, key=lambda named: (not named.strong, named.volts is None)))
+
+    def far_ends(self, joint: str, kind: str) -> tuple[tuple[Branch, str], ...]:
+        """Branches of a kind at the joint, each with its other end."""
+        return tuple(
+            (item, item.b if item.a == joint else item.a) for item in self.branches.get(joint, ()) if item.kind == kind
+        )
+
+
+def scene(design: Design, parts: Mapping[str, RatedPart], facts: Facts) -> Scene:
+    """Look at the fitted parts once."""
+    fitted = [part for part in parts.values() if part.fitted and part.part.pins]
+    by_net = _claims(fitted)
+    switching = _switching(design, parts, by_net)
+    pairs = [pair for part in fitted for pair in joined(part, facts.project) if not _coil(part, switching)]
+    pairs += [fuse for part in fitted if (fuse := _series_thermistor(design, parts, part))]
+    joints, members = join_nets(design, parts, pairs, _rails(design, facts))
+    pins = {joint: tuple(pin for net in nets for pin in design.nets[net].pins if _is_fitted(parts, pin)) for joint, nets in members.items()}
+    return Scene(
+        design=design, parts=parts, facts=facts, joints=joints, members=members, pins=pins,
+        claims=_merged(by_net, joints),
+        branches=_by_ends(_branches(fitted, joints)),
+        contacts=_by_ends(_contacts(fitted, facts, joints)),
+        diodes=_diodes(fitted, joints),
+        coils=_coils(fitted, switching, joints),
+        switching=frozenset(joints[net] for net in switching if net in joints),
+    )  # fmt: skip
+
+
+def _is_fitted(parts: Mapping[str, RatedPart], pin: Pin) -> bool:
+    return pin.ref not in parts or parts[pin.ref].fitted
+
+
+def _claims(fitted: list[RatedPart]) -> dict[str, dict[str, list[Pin]]]:
+    """Net -> claim -> pins."""
+    found: dict[str, dict[str, list[Pin]]] = defaultdict(lambda: defaultdict(list))
+    for part in fitted:
+        regulator = part.kind in _MAKERS and say.is_regulator(part)
+        outputs = say.outputs_by_position(part) if part.kind == "ic" else frozenset()
+        for pin in part.part.pins:
+            claim = say.OUTPUT if pin.number in outputs else say.claim(pin, part, regulator=regulator)
+            if claim:
+                found[pin.net][claim].append(pin)
+    return found
+
+
+def _switching(design: Design, parts: Mapping[str, RatedPart], claims: Mapping[str, Mapping[str, list[Pin]]]) -> set[str]:
+    """Nets between a power switch and an inductor, by pin name or by an inductor, a diode and a chip's or transistor's pin."""
+    return {name for name, net in design.nets.items() if _is_switching(net.pins, parts, claims.get(name, {}))}
+
+
+def _is_switching(pins: tuple[Pin, ...], parts: Mapping[str, RatedPart], claims: Mapping[str, list[Pin]]) -> bool:
+    kinds = [parts[pin.ref].kind for pin in pins if pin.ref in parts and parts[pin.ref].fitted]
+    if "inductor" not in kinds and "transformer" not in kinds:
+        return False
+    if say.SWITCH in claims:
+        return True
+    actor = "transistor" in kinds or any(kind == "ic" for kind in kinds)
+    quiet = say.SUPPLY in claims or say.GROUND in claims or hint(pins[0].net) is not None or "connector" in kinds
+    return actor and "diode" in kinds and not quiet and kinds.count("capacitor") <= 1 and len(pins) <= 8
+
+
+def _coil(part: RatedPart, switching: set[str]) -> bool:
+    return part.kind == "inductor" and any(pin.net in switching for pin in part.part.pins)
+
+
+def _series_thermistor(design: Design, parts: Mapping[str, RatedPart], part: RatedPart) -> tuple[Pin, Pin] | None:
+    """A thermistor from a supply to a net without a resistor: a resettable fuse or an inrush limiter."""
+    pins = part.part.pins
+    if part.kind != "thermistor" or len(pins) != 2:
+        return None
+    for here, far in (pins, reversed(pins)):
+        named = hint(here.net)
+        alone = all(parts[pin.ref].kind != "resistor" for pin in design.nets[far.net].pins if pin.ref in parts)
+        if named and named.kind == "supply" and named.strong and alone:
+            return here, far
+    return None
+
+
+def _rails(design: Design, facts: Facts) -> dict[str, object]:
+    """Nets that certainly are ground or a supply of a given voltage: never joined with each other."""
+    found: dict[str, object] = {}
+    for net in design.nets:
+        named = hint(net)
+        if facts.is_ground(net):
+            found[net] = "ground"
+        elif named and named.strong and (named.kind == "ground" or named.volts is not None):
+            found[net] = "ground" if named.kind == "ground" else named.volts
+    return found
+
+
+def _merged(by_net: Mapping[str, Mapping[str, list[Pin]]], joints: Mapping[str, str]) -> dict[str, dict[str, tuple[Pin, ...]]]:
+    found: dict[str, dict[str, list[Pin]]] = defaultdict(lambda: defaultdict(list))
+    for net, claims in by_net.items():
+        for claim, pins in claims.items():
+            found[joints[net]][claim].extend(pins)
+    return {joint: {claim: tuple(pins) for claim, pins in claims.items()} for joint, claims in found.items()}
+
+
+def _branches(fitted: list[RatedPart], joints: Mapping[str, str]) -> list[Branch]:
+    found = ((branch(part, kind, (first, second), joints)) for part in fitted for kind, first, second in branches(part))
+    return [item for item in found if item is not None]
+
+
+def _contacts(fitted: list[RatedPart], facts: Facts, joints: Mapping[str, str]) -> list[Contact]:
+    at_nets = (item for part in fitted if part.kind == "contact" for item in contact(part, facts.project))
+    at_joints = (replace(item, a=joints[item.a], b=joints[item.b]) for item in at_nets)
+    return [item for item in at_joints if item.a != item.b]
+
+
+def _by_ends(items: list[Ends]) -> dict[str, tuple[Ends, ...]]:
+    found: dict[str, list[Ends]] = defaultdict(list)
+    for item in items:
+        found[item.a].append(item)
+        found[item.b].append(item)
+    return {joint: tuple(at) for joint, at in found.items()}
+
+
+def _diodes(fitted: list[RatedPart], joints: Mapping[str, str]) -> dict[str, tuple[Diode, ...]]:
+    found: dict[str, list[Diode]] = defaultdict(list)
+    for part in fitted:
+        for item in diodes(part) if part.kind == "diode" else ():
+            placed = replace(item, anode=joints[item.anode], cathode=joints[item.cathode])
+            for joint in dict.fromkeys((placed.anode, placed.cathode)):
+                found[joint].append(placed)
+    return {joint: tuple(items) for joint, items in found.items()}
+
+
+def _coils(fitted: list[RatedPart], switching: set[str], joints: Mapping[str, str]) -> dict[str, tuple[str, ...]]:
+    found: dict[str, list[str]] = defaultdict(list)
+    for part in fitted:
+        if _coil(part, switching):
+            ends = [joints[pin.net] for pin in part.part.pins]
+            for end in ends:
+                found[end].extend(other for other in ends if other != end)
+    return {joint: tuple(far) for joint, far in found.items()}
