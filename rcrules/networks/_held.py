@@ -5,9 +5,11 @@ diodes, switches and switched inductors, filter resistors, outputs and connector
 resistors and capacitors reach: ``VREF`` at a divider's tap is a node.
 """
 
+import re
 from collections.abc import Callable, Iterator
 from typing import Final
 
+from rcrules.design import Pin
 from rcrules.networks import _held_pins as say
 from rcrules.networks._held_driven import driven
 from rcrules.networks._held_verdict import Verdict, Verdicts, keys
@@ -19,6 +21,8 @@ from rcrules.parts import Known
 FILTER_OHMS: Final = 100.0
 """Up to here a resistor from a supply to a local supply pin feeds it as a filter; above, it is a node like any other."""
 
+_INTERNAL: Final = re.compile(r"V[A-Z]{0,4}\d?|V(DD|CC|REF|REG|OUT|CAP|INT|CM|COM|MID|BIAS)\w*|\w*(CAP|REG|LDO|REF|DEC|BYP)\w*")
+"""Names of pins that bring out an internal supply for its capacitor."""
 MANY_PARTS: Final = 3
 """A net with the supply pins of so many parts is a supply, whatever feeds it."""
 
@@ -66,7 +70,7 @@ def _ground(scene: Scene, joint: str, _: Verdicts) -> Verdict | None:
     against = bool(hints) and hints[0].kind == "supply" and hints[0].strong
     real = [pin for pin in grounds if scene.kind(pin.ref) != "connector"]
     enough = len(grounds) > len(supplies) and not against and (bool(real) or named is not None or len(grounds) > 1)
-    bonded = named is not None and not supplies and _bonded(scene, joint)
+    bonded = (named is not None or bool(grounds)) and not supplies and _bonded(scene, joint)
     if not (strong or enough or bonded):
         return None
     return Verdict(kind="ground", volts=0.0, evidence=(*_given(named), *keys(grounds)), sure=strong or bool(real))
@@ -79,12 +83,19 @@ def _bonded(scene: Scene, joint: str) -> bool:
 
 
 def _source(scene: Scene, joint: str, _: Verdicts) -> Verdict | None:
-    pins = [pin for pin in scene.says(joint, say.SOURCE)]
+    pins = scene.says(joint, say.SOURCE) or _own_supply(scene, joint)
     batteries = [pin for pin in scene.of_kind(joint, "battery") if pin in scene.says(joint, say.SUPPLY)]
     if joint in scene.switching or not (pins or batteries):
         return None
     sure = any(pin.type in ("power-out", "output") for pin in pins) or bool(batteries) or bool(scene.hints(joint))
     return _supply(scene, joint, keys((*pins, *batteries)), sure=sure)
+
+
+def _own_supply(scene: Scene, joint: str) -> tuple[Pin, ...]:
+    """A chip's pin of a supply's name with nothing but capacitors on it: an internal supply or reference."""
+    pins = [pin for pin in scene.pins[joint] if scene.kind(pin.ref) not in ("capacitor", "test-point")]
+    alone = len(pins) == 1 and scene.kind(pins[0].ref) in ("ic", "other") and bool(scene.far_ends(joint, "capacitor"))
+    return tuple(pins) if alone and _INTERNAL.fullmatch(pins[0].name.upper()) else ()
 
 
 def _named_supply(scene: Scene, joint: str, _: Verdicts) -> Verdict | None:
@@ -93,7 +104,8 @@ def _named_supply(scene: Scene, joint: str, _: Verdicts) -> Verdict | None:
         return None
     backed = scene.says(joint, say.SUPPLY) or scene.says(joint, say.NEGATIVE)
     outside = scene.of_kind(joint, "connector", "diode", "transistor", "transformer", "battery", "other")
-    if not (hints[0].strong or backed or outside):
+    quiet = not scene.far_ends(joint, "resistor") and scene.of_kind(joint, "ic")
+    if not (hints[0].strong or backed or outside or quiet):
         return None
     return _supply(scene, joint, (f"name {joint}", *keys(backed)), sure=hints[0].strong or bool(backed))
 

@@ -6,9 +6,12 @@ from rcrules.names import has_token
 from rcrules.networks import _held_pins as say
 from rcrules.networks._held_verdict import Verdict, Verdicts, keys
 from rcrules.networks._scene import Scene
+from rcrules.parts import Known
 
 _BUS_LINES: Final = ("SDA", "SCL", "SMBDAT", "SMBCLK", "ALERT", "ONEWIRE")
 """Shared open-drain lines: free, their rise is the pull-up's."""
+_LINE_OHMS: Final = 200.0
+"""Up to here a resistor matches a line; above, it pulls."""
 _CONTROLLER_PINS: Final = 12
 """A chip with at least so many bidirectional pins is a controller, whose pins marked as outputs may be inputs."""
 
@@ -19,7 +22,7 @@ def driven(scene: Scene, joint: str, verdicts: Verdicts) -> Verdict | None:
         return Verdict(kind="driven", evidence=("switching node", *keys(scene.says(joint, say.SWITCH))))
     if scene.of_kind(joint, "crystal"):
         return None
-    return _output(scene, joint) or _open_drain(scene, joint) or _connector(scene, joint, verdicts)
+    return _output(scene, joint) or _between_chips(scene, joint) or _open_drain(scene, joint) or _connector(scene, joint, verdicts)
 
 
 def _output(scene: Scene, joint: str) -> Verdict | None:
@@ -31,6 +34,16 @@ def _output(scene: Scene, joint: str) -> Verdict | None:
     if waits and (scene.contacts.get(joint) or all(_is_controller(scene, pin.ref) for pin in outputs)):
         return None
     return Verdict(kind="driven", evidence=keys(outputs), sure=any(pin.type in ("output", "power-out") for pin in outputs))
+
+
+def _between_chips(scene: Scene, joint: str) -> Verdict | None:
+    """A net between chips whose pins have no types, with small resistors alone: one of the chips drives the line."""
+    pins = [pin for pin in scene.of_kind(joint, "ic") if pin.type == ""]
+    resistors = [scene.parts[item.ref].value for item, _ in scene.far_ends(joint, "resistor")]
+    lines = bool(resistors) and all(isinstance(value, Known) and value.si <= _LINE_OHMS for value in resistors)
+    if len({pin.ref for pin in pins}) < 2 or not lines or scene.far_ends(joint, "capacitor"):
+        return None
+    return Verdict(kind="driven", evidence=("line between chips", *keys(pins)), sure=False)
 
 
 def _open_drain(scene: Scene, joint: str) -> Verdict | None:

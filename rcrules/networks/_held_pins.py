@@ -24,7 +24,7 @@ _MARKS: Final = re.compile(r"[~{}\\\s#*]|_?\d+$")
 _NAMES: Final = tuple(
     (claim, re.compile(pattern))
     for claim, pattern in (
-        (GROUND, r"[A-Z]{0,4}GND[A-Z0-9_]{0,5}|[ADPQ]?VSS[A-Z0-9_]{0,8}|GROUND|EP|E?PAD|EXP(OSED)?_?PAD|THERMAL_?P?(AD)?|POWERPAD|0V"),
+        (GROUND, r"[A-Z]+_GND|SHIELD|SHELL|CHASSIS|[A-Z]{0,4}GND[A-Z0-9_]{0,5}|[ADPQ]?VSS[A-Z0-9_]{0,8}|GROUND|EP|E?PAD|EXP(OSED)?_?PAD|THERMAL_?P?(AD)?|POWERPAD|0V"),
         (NEGATIVE, r"V-|VS-|-VS|VCC-|-VCC|VEE|AVEE|-V|V-/GND|GND/V-"),
         (NEVER, r"COMP[A-Z]?|V?C?ITH|V?FB[A-Z+\-]?|FEEDBACK|ADJ(/GND)?|GND/ADJ|V?SENSE?[+\-PN]?|VSNS|V?SS(/(TR|PG).*)?|TR(AC)?K|SOFT_?START|RT(/.*)?"
                 r"|CT|RC|RT/CT|TIM(ER)?|C?T?DLY|CDELAY|REXT|RBIAS|[RIV]SET|I?LIM|IREF|IMON|MON|IPROG|PROG|ISENSE|CS[+\-PN]?|X(TAL)?_?(IN|OUT|[IO])?|E?XTAL.*|OSC(_?(IN|OUT|[IO]))?"
@@ -39,6 +39,10 @@ _NAMES: Final = tuple(
 )
 _OPEN_NAMES: Final = re.compile(r"N?INT|IRQ|ALERT|P?GOOD|PG|FAULT|FLA?G|FLT|SDA|SCL|OD|OC|ALARM|RDY|BUSY")
 _LOGIC_OUT: Final = re.compile(r"[A-D1-8]?(OUT|Y|Q)[A-D1-8]?|V?O|OUT[+\-PNAB]?|[A-Z]?DOUT|[TR]OUT|RO|TXOUT")
+_ANALOG_OUT: Final = re.compile(r"VOUT[+\-A-D]?|VOUT_?[A-D1-8]")
+"""Outputs of amplifiers, converters and sensors, where the part makes no supply."""
+_FLYING: Final = re.compile(r"C(F|FLY|AP|P)?\d?[+\-]")
+"""Pins of a charge pump's flying capacitor."""
 _REGULATOR: Final = re.compile(
     r"REGULATOR|\bLDO\b|LOW.?DROP|STEP.?(DOWN|UP)|\bBUCK\b|\bBOOST\b|DC.?DC|CONVERTER.*POWER|VOLTAGE REF|LOAD SWITCH|POWER SWITCH"
     r"|\bL?[A-Z]{0,4}(78|79)[LMTS]?\d\d|1117|LINEAR"
@@ -91,6 +95,8 @@ def is_regulator(part: RatedPart) -> bool:
         return False
     if _REGULATOR.search(words(part).upper()):
         return True
+    if any(_FLYING.fullmatch(name) for name in names):
+        return True
     if names & _SUPPLIED and not names & _FEEDBACK:
         return False
     has = [any(pattern.fullmatch(name) for name in names) for pattern in (_IN, _OUT)]
@@ -100,7 +106,7 @@ def is_regulator(part: RatedPart) -> bool:
 def _of_chip(pin: Pin, *, regulator: bool) -> str:
     name = pin.name.upper()
     named = by_name(name)
-    if named == SOURCE and name.startswith("VOUT") and pin.type != "power-out" and not regulator:
+    if named == SOURCE and _ANALOG_OUT.fullmatch(name) and pin.type != "power-out" and not regulator:
         return OUTPUT
     if regulator and _OUT.fullmatch(name):
         return SOURCE

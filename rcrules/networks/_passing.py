@@ -1,19 +1,26 @@
 """Supplies that pass through diodes, closed power switches and switched inductors to further joints."""
 
+import re
 from collections import deque
 from collections.abc import Iterator
 from dataclasses import replace
 from typing import Final
 
 from rcrules.networks import _held_pins as say
-from rcrules.networks._held_verdict import Verdict, Verdicts, keys
+from rcrules.networks._held_verdict import Verdict, Verdicts
 from rcrules.networks._held_voltage import volts_here
+from rcrules.networks._links import words
 from rcrules.networks._scene import Scene
-from rcrules.parts import Known
+from rcrules.parts import Known, RatedPart
 
 DIODE_DROP: Final = (0.0, 0.3, 0.9)
 """Least, nominal and most voltage across a conducting diode [V]; no load to full load, Schottky to silicon."""
 _DIVIDER_OHMS: Final = 10e3
+_ENTRY: Final = re.compile(
+    r"\bDC[-_ ]?(IN|POWER|JACK|INPUT)|BARREL|JACK[-_]?DC|POWER[-_ ]?(IN|JACK|INPUT|SUPPLY)|\bBATT?(ERY)?\b|ALIMENTA|NETZTEIL|ПИТАНИ", re.IGNORECASE
+)
+"""Words that name a power input in a connector's value, symbol, description or footprint."""
+_ENTRY_PINS: Final = 4
 _SIGNALS: Final = ("ic", "transistor", "contact", "crystal")
 
 
@@ -52,7 +59,7 @@ def _onward(scene: Scene, joint: str, verdicts: Verdicts) -> Iterator[tuple[str,
         if diode.anode == joint and diode.cathode not in scene.switching and _takes_supply(scene, diode.cathode, verdicts):
             yield diode.cathode, here.passed(f"diode {diode.ref} from {joint}", drop=DIODE_DROP)
     for ref, far in _switched(scene, joint):
-        if _takes_supply(scene, far, verdicts):
+        if _takes_supply(scene, far, verdicts) or _is_power_output(scene, far, verdicts):
             yield far, here.passed(f"power switch {ref} from {joint}", sure=False)
     for source in scene.coils.get(joint, ()):
         yield from _rectified(scene, source, verdicts)
@@ -68,6 +75,8 @@ def _inputs(scene: Scene, verdicts: Verdicts) -> Iterator[tuple[str, Verdict]]:
         if into and scene.of_kind(joint, "connector") and not _carries_signal(scene, joint):
             why = f"connector, and diode {into[0].ref} into {into[0].cathode}"
             yield joint, replace(verdicts[into[0].cathode], evidence=(why,), sure=False, given=False)
+        elif _is_power_entry(scene, joint):
+            yield joint, Verdict(kind="supply", volts=volts, evidence=("power connector",), sure=False)
         elif scene.coils.get(joint) and _has_bulk(scene, joint, verdicts):
             yield joint, Verdict(kind="supply", volts=volts, evidence=(f"switched inductor from {scene.coils[joint][0]}",))
         elif _is_rectified(scene, joint, verdicts):
@@ -93,7 +102,30 @@ def _takes_supply(scene: Scene, joint: str, verdicts: Verdicts) -> bool:
     if scene.says(joint, say.SUPPLY, say.SOURCE) or any(named.kind == "supply" for named in scene.hints(joint)):
         return True
     plain = not scene.says(joint, say.OUTPUT, say.OPEN, say.NEVER) and joint not in scene.switching
-    return plain and bool(scene.of_kind(joint, "connector")) and _has_bulk(scene, joint, verdicts)
+    return plain and _has_bulk(scene, joint, verdicts)
+
+
+def _is_power_output(scene: Scene, joint: str, verdicts: Verdicts) -> bool:
+    """A free connector net behind a high-side switch with a freewheeling diode, and no low-side switch at it."""
+    if joint in verdicts or not scene.of_kind(joint, "connector"):
+        return False
+    freewheels = any(_is_ground(verdicts, diode.anode) for diode in scene.diodes.get(joint, ()))
+    low_side = any(_is_ground(verdicts, far) for _, far in _switched(scene, joint))
+    return freewheels and not low_side
+
+
+def _is_power_entry(scene: Scene, joint: str) -> bool:
+    """A net of a connector that is called a power input, with nothing on it that a signal would need."""
+    entries = [pin for pin in scene.of_kind(joint, "connector") if _is_entry(scene.parts[pin.ref])]
+    return bool(entries) and not _carries_signal(scene, joint)
+
+
+def _is_entry(part: RatedPart) -> bool:
+    return len(part.part.pins) <= _ENTRY_PINS and bool(_ENTRY.search(f"{words(part)} {part.part.footprint}"))
+
+
+def _is_ground(verdicts: Verdicts, joint: str) -> bool:
+    return joint in verdicts and verdicts[joint].kind == "ground"
 
 
 def _carries_signal(scene: Scene, joint: str) -> bool:
@@ -134,5 +166,3 @@ def _control(scene: Scene, ref: str) -> frozenset[str]:
         return named or frozenset(pin.number for pin in pins)
     return frozenset("G") if any(pin.number == "G" for pin in pins) else frozenset("1")
 
-
-__all__ = ["passed", "keys"]

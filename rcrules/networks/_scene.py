@@ -70,7 +70,7 @@ def scene(design: Design, parts: Mapping[str, RatedPart], facts: Facts) -> Scene
     by_net = _claims(fitted)
     switching = _switching(design, parts, by_net)
     pairs = [pair for part in fitted for pair in joined(part, facts.project) if not _coil(part, switching)]
-    pairs += [fuse for part in fitted if (fuse := _series_thermistor(design, parts, part))]
+    pairs += [fuse for part in fitted if (fuse := _series_thermistor(design, parts, by_net, part))]
     joints, members = join_nets(design, parts, pairs, _rails(design, facts))
     pins = {joint: tuple(pin for net in nets for pin in design.nets[net].pins if _is_fitted(parts, pin)) for joint, nets in members.items()}
     return Scene(
@@ -121,7 +121,9 @@ def _coil(part: RatedPart, switching: set[str]) -> bool:
     return part.kind == "inductor" and any(pin.net in switching for pin in part.part.pins)
 
 
-def _series_thermistor(design: Design, parts: Mapping[str, RatedPart], part: RatedPart) -> tuple[Pin, Pin] | None:
+def _series_thermistor(
+    design: Design, parts: Mapping[str, RatedPart], claims: Mapping[str, Mapping[str, list[Pin]]], part: RatedPart
+) -> tuple[Pin, Pin] | None:
     """A thermistor from a supply to a net without a resistor: a resettable fuse or an inrush limiter."""
     pins = part.part.pins
     if part.kind != "thermistor" or len(pins) != 2:
@@ -129,7 +131,8 @@ def _series_thermistor(design: Design, parts: Mapping[str, RatedPart], part: Rat
     for here, far in (pins, reversed(pins)):
         named = hint(here.net)
         alone = all(parts[pin.ref].kind != "resistor" for pin in design.nets[far.net].pins if pin.ref in parts)
-        if named and named.kind == "supply" and named.strong and alone:
+        supplied = say.SUPPLY in claims.get(here.net, {}) or (named is not None and named.kind == "supply" and named.strong)
+        if supplied and alone:
             return here, far
     return None
 
