@@ -7,7 +7,7 @@ from rcrules.checks._assumptions import Key, keys, rows
 from rcrules.checks._finding import Judged, finding
 from rcrules.checks._resolve import Case, resolve
 from rcrules.checks._select import selected
-from rcrules.checks._subjects import Subject, Subjects
+from rcrules.checks._subjects import Subjects
 from rcrules.checks._verdict import Verdict, decide
 from rcrules.events import Unmeasurable, pose
 from rcrules.findings import Finding, Json

@@ -4,8 +4,7 @@ import math
 from dataclasses import dataclass
 
 from rcrules.checks._resolve import Bound
-from rcrules.engine import Bounds
-from rcrules.problems import Array
+from rcrules.problems import Bounds
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -14,7 +13,7 @@ class Margin:
 
     value: float
     """Distance to the limit, negative = broken, -inf = without bound or never; nan = not defined."""
-    case: Array
+    case: tuple[float, ...]
     """The columns of that case."""
     side: str
     """``at_least`` or ``at_most``."""
@@ -36,11 +35,11 @@ def _order(margin: Margin) -> float:
 
 def _against(found: Bounds, limit: Bound, *, endless: bool, never: str) -> Margin:
     if endless and math.isinf(found.high) and found.high > 0 and never == "fails":
-        return Margin(value=-math.inf, case=found.high_case, side=limit.kind.replace("-", "_"), never=True)
+        return Margin(value=-math.inf, case=found.high_at, side=limit.kind.replace("-", "_"), never=True)
     if limit.kind == "at-least":
-        value, case = found.low - limit.strict, found.low_case
+        value, case = found.low - limit.strict, found.low_at
     else:
-        value, case = limit.strict - found.high, found.high_case
+        value, case = limit.strict - found.high, found.high_at
     if math.isnan(found.low) or math.isnan(found.high):
         value = math.nan
     return Margin(value=_rounded(value, limit.strict), case=case, side=limit.kind.replace("-", "_"), never=False)

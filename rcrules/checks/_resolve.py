@@ -5,10 +5,13 @@ from dataclasses import dataclass
 
 from rcrules.checks._lookup import Missing, look_up
 from rcrules.checks._subjects import Subject
+from rcrules.levels import Level
 from rcrules.networks import Board
 from rcrules.project import Project
 from rcrules.quantities import Spread
-from rcrules.rulebook import Limit, OptionValue, Rule
+from rcrules.rulebook import Limit, Rule
+
+OptionValue = str | float | Level
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

@@ -7,9 +7,8 @@ import numpy as np
 
 from rcrules.checks._margin import Margin, worst
 from rcrules.checks._resolve import Case
-from rcrules.engine import Bounds
 from rcrules.measures import Measure, Theory
-from rcrules.problems import Array, Failure, Problem, Structure, solve_bounds
+from rcrules.problems import Array, Bounds, Failure, Problem, Structure, solve_bounds
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

@@ -1,5 +1,6 @@
 """The case that makes the worst margin, in parts and their shares, the most influential first."""
 
+from collections.abc import Sequence
 from typing import Final
 
 import numpy as np
@@ -8,25 +9,25 @@ from rcrules.findings import Json
 from rcrules.measures import Measure
 from rcrules.networks import Board
 from rcrules.parts import RatedPart, Share
-from rcrules.problems import Array, Parameter, Problem
+from rcrules.problems import Parameter, Problem
 
 _TINY: Final = 1e-9
 
 
-def worst_case(problem: Problem, case: Array, measure: Measure, board: Board) -> list[Json]:
+def worst_case(problem: Problem, case: Sequence[float], measure: Measure, board: Board) -> list[Json]:
     """One object per parameter off nominal: value, relative change, what makes it up; by influence on the measure."""
     off = [index for index, item in enumerate(problem.parameters) if _off(item, case[index])]
     influence = _influence(problem, case, measure, off)
     ordered = sorted(off, key=lambda index: (-influence[index], problem.parameters[index].name))
     moving = [index for index in ordered if influence[index] > 0] or ordered
-    return [_row(problem.parameters[index], float(case[index]), board) for index in moving]
+    return [_row(problem.parameters[index], case[index], board) for index in moving]
 
 
 def _off(item: Parameter, value: float) -> bool:
     return abs(value - item.nominal) > _TINY * max(abs(item.nominal), abs(item.high - item.low))
 
 
-def _influence(problem: Problem, case: Array, measure: Measure, columns: list[int]) -> dict[int, float]:
+def _influence(problem: Problem, case: Sequence[float], measure: Measure, columns: list[int]) -> dict[int, float]:
     """Column -> how far the measure moves when it alone goes back to nominal."""
     cases = np.tile(np.asarray(case, dtype=float), (len(columns) + 1, 1))
     for row, index in enumerate(columns):

@@ -1,16 +1,13 @@
 """Bounds of the quantities of every node, all solved in one go."""
 
-from collections.abc import Iterable, Mapping
+from collections.abc import Iterable, Mapping, Sequence
 from typing import Final
 
-import numpy as np
-
-from rcrules.engine import Bounds
 from rcrules.events import Unmeasurable, pose
 from rcrules.findings import Quantity
-from rcrules.measures import Measure, measures
+from rcrules.measures import Measure, registry
 from rcrules.networks import Board, Network, Node
-from rcrules.problems import Array, Failure, Problem, solve_bounds
+from rcrules.problems import Bounds, Failure, Problem, solve_bounds
 from rcrules.project import Project
 
 Quantities = Mapping[tuple[str, str], Mapping[str, Quantity | str]]
@@ -21,7 +18,7 @@ NODE_MEASURES: Final = ("time_constant",)
 
 def node_quantities(board: Board, project: Project) -> Quantities:
     """What the document tells of every node, whatever the rules."""
-    chosen = [measures()[name] for name in NODE_MEASURES]
+    chosen = [registry()[name] for name in NODE_MEASURES]
     found: dict[tuple[str, str], dict[str, Quantity | str]] = {}
     posed: list[tuple[tuple[str, str], Measure, Problem]] = []
     for network, node, measure in _wanted(board, chosen):
@@ -53,14 +50,14 @@ def as_quantity(bounds: Bounds, problem: Problem, unit: str) -> Quantity:
         nominal=float(bounds.nominal),
         high=float(bounds.high),
         unit=unit,
-        low_case=case_json(bounds.low_case, problem),
-        high_case=case_json(bounds.high_case, problem),
-        method=bounds.method,
+        low_case=case_json(bounds.low_at, problem),
+        high_case=case_json(bounds.high_at, problem),
+        method="proved" if bounds.proved else "searched",
     )
 
 
-def case_json(case: Array, problem: Problem) -> dict[str, float]:
+def case_json(case: Sequence[float], problem: Problem) -> dict[str, float]:
     """Parameter name -> value, by name; parameters at nominal left out."""
-    pairs = zip(problem.parameters, np.asarray(case, dtype=float).tolist(), strict=True)
+    pairs = zip(problem.parameters, case, strict=True)
     off = {item.name: value for item, value in pairs if abs(value - item.nominal) > 1e-12 * abs(item.nominal)}
     return dict(sorted(off.items()))
