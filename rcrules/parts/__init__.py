@@ -1,5 +1,8 @@
 """Step 3: design in, parts with kind, value, spread and ratings out."""
 
+from rcrules.parts._kinds import kind_of
 from rcrules.parts._model import Known, RatedPart, Share, Unknown
+from rcrules.parts._rate import at_bias, rate
+from rcrules.parts._texts import ValueText, read_value
 
-__all__ = ["Known", "RatedPart", "Share", "Unknown"]
+__all__ = ["Known", "RatedPart", "Share", "Unknown", "ValueText", "at_bias", "kind_of", "rate", "read_value"]

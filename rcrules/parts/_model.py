@@ -60,6 +60,8 @@ class RatedPart:
     """[W]"""
     dielectric: str | None = None
     """``X7R``, ``C0G``, ``tantalum``, ``aluminium``, ``film`` …; None = not given."""
+    bias_curve: tuple[tuple[float, float], ...] = ()
+    """Points of voltage [V] and remaining fraction of capacitance, from the project file; () = none given."""
     polarised: bool = False
     size: str = ""
     """EIA size code such as ``0603``, '' = not known."""

@@ -4,7 +4,7 @@ from dataclasses import dataclass
 
 
 class QuantityError(ValueError):
-    """A text is no quantity; ``at`` is the offset of the first character not understood, ``expected`` what goes there."""
+    """A text is no quantity: ``at`` is where it stops being understood, ``expected`` what goes there."""
 
     def __init__(self, problem: str, *, at: int = 0, length: int = 1, expected: str = "") -> None:
         super().__init__(problem)

@@ -1,0 +1,139 @@
+"""Gathers what each source says about a part, the strongest first, and keeps what loses."""
+
+from collections.abc import Iterable, Iterator, Sequence
+from dataclasses import dataclass
+from fnmatch import fnmatchcase
+from typing import Generic, TypeVar
+
+from rcrules.design import Fact, Part
+from rcrules.errors import Place
+from rcrules.parts._fields import holds, read_field
+from rcrules.parts._texts import ValueKind, ValueText, read_value
+from rcrules.project import PartFacts, Project
+from rcrules.quantities import show
+
+T = TypeVar("T")
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Said(Generic[T]):
+    """A fact with its source."""
+
+    fact: T
+    origin: str
+    place: Place | None
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Source:
+    """One text about a part, read."""
+
+    read: ValueText
+    text: str
+    origin: str
+    place: Place
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Facts:
+    """Everything the sources say about one part, in order of precedence; the first of each wins."""
+
+    project: tuple[tuple[str, PartFacts], ...]
+    """Tables of the project file that name the part: (``project [part."C7"]``, facts), exact names first."""
+    fields: tuple[Source, ...]
+    """Rating fields, of the BOM first."""
+    values: tuple[Source, ...]
+    """Value texts, of the BOM first."""
+    descriptions: tuple[Source, ...]
+    defaults: tuple[tuple[str, PartFacts], ...]
+    """``project [defaults.capacitor]``."""
+
+    @property
+    def sources(self) -> tuple[Source, ...]:
+        """All texts in order of precedence."""
+        return (*self.fields, *self.values, *self.descriptions)
+
+
+def tables_for(part: Part, project: Project) -> tuple[tuple[str, PartFacts], ...]:
+    """The [part] tables that name a reference: exact names and lists (``C7, C8``) first, then globs."""
+    named = [(f'project [part."{key}"]', table) for key, table in project.parts.items() if part.ref in _listed(key)]
+    globs = [
+        (f'project [part."{key}"]', table)
+        for key, table in project.parts.items()
+        if part.ref not in _listed(key) and any(fnmatchcase(part.ref, glob) for glob in _listed(key))
+    ]
+    return (*named, *globs)
+
+
+def _listed(key: str) -> tuple[str, ...]:
+    return (key, *(name.strip() for name in key.split(","))) if "," in key else (key,)
+
+
+def gather(part: Part, kind: ValueKind, tables: Sequence[tuple[str, PartFacts]], project: Project) -> Facts:
+    """Read every text about a resistor or capacitor."""
+    fields, descriptions = _fields(part, kind)
+    given = any(source.read.tolerance for source in (*fields, *descriptions)) or any(t.tolerance for _, t in tables)
+    values = tuple(_source(fact, read_value(fact.text, kind, tolerance_given=given)) for fact in part.values)
+    believed = tuple(source for source in descriptions if not _stale(source, values))
+    defaults = project.defaults.get(kind)
+    return Facts(
+        project=tuple(tables),
+        fields=fields,
+        values=values,
+        descriptions=believed,
+        defaults=((f"project [defaults.{kind}]", defaults),) if defaults is not None else (),
+    )
+
+
+def _stale(description: Source, values: Sequence[Source]) -> bool:
+    """Whether a schematic's description, taken from a symbol library, tells another value than the part's own text."""
+    told, known = description.read.value, next((s.read.value for s in values if s.read.value is not None), None)
+    return description.origin.startswith("netlist") and None not in (told, known) and told != known
+
+
+def _fields(part: Part, kind: ValueKind) -> tuple[tuple[Source, ...], tuple[Source, ...]]:
+    ratings: list[Source] = []
+    descriptions: list[Source] = []
+    for name, facts in part.fields.items():
+        what = holds(name)
+        for fact in facts if what else ():
+            target = descriptions if "description" in what else ratings
+            target.append(_source(fact, read_field(what, fact.text, kind)))
+    ratings.sort(key=lambda source: not source.origin.startswith("BOM"))
+    return tuple(ratings), tuple(descriptions)
+
+
+def _source(fact: Fact, read: ValueText) -> Source:
+    return Source(read=read, text=fact.text, origin=fact.origin, place=fact.place)
+
+
+def texts_say(sources: Iterable[Source], attribute: str) -> Iterator[Said[object]]:
+    """The facts of one name that texts give."""
+    for source in sources:
+        found = getattr(source.read, attribute)
+        if found is not None and found != "":
+            yield Said(fact=found, origin=source.origin, place=source.place)
+
+
+def tables_say(tables: Iterable[tuple[str, PartFacts]], attribute: str) -> Iterator[Said[object]]:
+    """The facts of one name that tables of the project file give."""
+    for origin, table in tables:
+        found = getattr(table, attribute)
+        if found is not None:
+            yield Said(fact=found, origin=origin, place=table.place)
+
+
+def disagreements(name: str, said: Sequence[Said[T]], unit: str) -> tuple[str, ...]:
+    """The facts that lost and differ from the winner, in words."""
+    lost = [other for other in said[1:] if _told(other.fact, unit) != _told(said[0].fact, unit)]
+    words = (f"{name} {_told(item.fact, unit)} ({item.origin})" for item in lost)
+    return tuple(f"{text} against {_told(said[0].fact, unit)} ({said[0].origin})" for text in dict.fromkeys(words))
+
+
+def _told(fact: object, unit: str) -> str:
+    if isinstance(fact, float):
+        return show(fact, unit, digits=4)
+    if isinstance(fact, tuple):
+        low, high = fact
+        return f"±{show(high, '%', digits=4)}" if low == -high else f"{show(low, '%')} / +{show(high, '%')}"
+    return str(fact)

@@ -1,0 +1,163 @@
+"""Tells what kind of part a part is, and why: reference letters, symbol, value, footprint, description together."""
+
+import re
+import unicodedata
+from collections.abc import Iterator
+from functools import lru_cache
+from itertools import pairwise, zip_longest
+from typing import Final, Literal
+
+from rcrules.design import Part
+from rcrules.names import tokens
+from rcrules.parts._kind_words import ARRAY_WORDS, EITHER, PREFIXES, WORDS
+from rcrules.parts._texts import read_value
+
+_LETTERS: Final = re.compile(r"[^\W\d_]+")
+_VALUED: Final = ("resistor", "capacitor")
+_FOR_ARRAYS: Final = re.compile(r"(?<![\d.])[248]\s?x\s?0[2-8]0[1-5]|(?:^|_)ARRAY_", re.IGNORECASE)
+_IMPEDANCE: Final = re.compile(r"\d\s?(?:R|ohms?|Ω)?\s?[@/]\s?100\s?MHz", re.IGNORECASE)
+_MANY_PINS: Final = 5
+"""A diode or an unnamed part with this many pins is an integrated circuit."""
+_PLAIN: Final = frozenset(("resistor", "capacitor", "inductor"))
+"""Kinds that a footprint does not tell: an LED may sit on the pads of a resistor."""
+_SEVERAL_PINS: Final = frozenset(("ic", "connector", "transformer", "contact", "transistor"))
+"""Kinds with many pins that a description or a library may name."""
+_LEADING: Final = 5
+"""Words at the start of a description that may name the part."""
+
+
+def kind_of(part: Part) -> tuple[str, str]:
+    """(kind, why): one of vocabulary.PART_KINDS, and the evidence in words."""
+    letters = _prefix(part.ref)
+    usual = PREFIXES.get(letters)
+    if usual in _VALUED and letters in ("R", "C"):
+        return _valued(part, letters, usual)
+    if usual is None:
+        return _unusual(part, letters)
+    return _usual(part, letters, usual)
+
+
+def _usual(part: Part, letters: str, usual: str) -> tuple[str, str]:
+    """References whose letters name a kind: it stands unless the part's own words name one that shares the letters."""
+    why, pins = f"reference {letters}", len(part.pins)
+    if letters == "D" and pins > _MANY_PINS and not _names(part, "diode"):
+        return "ic", f"{why} with {pins} pins"
+    if usual == "thermistor" and _names(part, "fuse"):
+        return "fuse", f"called a resettable fuse, {why}"
+    if usual == "resistor-array" and pins == 2:
+        return "resistor", f"{why} with 2 pins"
+    others = EITHER[usual] - ({"connector"} if usual == "mechanical" and pins < 2 else set())
+    for place, words in _evidence(part):
+        if usual == "connector" and place.startswith("value") and not words & WORDS["crystal"]:
+            continue
+        if place.startswith("library"):
+            continue
+        kind = _kind_of_words(words, (others - {"ic"} if place == "description" else others) | {usual})
+        if kind == usual:
+            break
+        if kind is not None:
+            return kind, f"{place}, {why}"
+    return usual, why
+
+
+def _valued(part: Part, letters: str, usual: str) -> tuple[str, str]:
+    """R and C: the letters stand unless symbol or value name another kind."""
+    why = f"reference {letters}"
+    reads = any(read_value(fact.text, _as(usual)).value is not None for fact in part.values)
+    array = _array(part, usual, reads=reads)
+    if array:
+        return f"{usual}-array", f"{array}, {why}"
+    telling = EITHER[usual] - ({"jumper", "net-tie", "fuse", "ferrite", "inductor"} if reads else set())
+    for place, words in _evidence(part):
+        if place == "footprint" or (place == "description" and words & WORDS[usual]):
+            continue
+        kind = _kind_of_words(words, telling)
+        if kind is not None:
+            return kind, f"{place}, {why}"
+    if usual == "resistor" and any(_IMPEDANCE.search(fact.text) for fact in part.values):
+        return "ferrite", f"value with impedance at 100 MHz, {why}"
+    return usual, why
+
+
+def _array(part: Part, usual: str, *, reads: bool) -> str:
+    """Why several elements are in one body, '' when they are not."""
+    texts = (part.symbol.rpartition(":")[2], part.footprint, *(fact.text for fact in part.values))
+    if any(_words(text) & ARRAY_WORDS for text in texts[:1] + texts[2:]) or any(map(_FOR_ARRAYS.search, texts)):
+        return "named an array"
+    numbers = len({pin.number for pin in part.pins})
+    if numbers > 4 or (numbers == 4 and usual == "resistor" and reads and not _shunt(part)):
+        return f"{numbers} pins"
+    return ""
+
+
+def _shunt(part: Part) -> bool:
+    """A four-terminal current shunt: below 1 Ω."""
+    values = [read_value(fact.text, "resistor").value for fact in part.values]
+    return any(value is not None and value < 1 for value in values)
+
+
+def _unusual(part: Part, letters: str) -> tuple[str, str]:
+    """References whose letters say nothing: the words decide, then the value, then the number of pins."""
+    many = len(part.pins) > _MANY_PINS
+    for place, words in _evidence(part):
+        general = place == "description" or place.startswith("library")
+        untold = _PLAIN if place == "footprint" else frozenset()
+        kind = _kind_of_words(words, _SEVERAL_PINS if general and many else frozenset(WORDS) - untold)
+        if kind in _PLAIN:
+            lead = frozenset(_listed(part.description)[:_LEADING])
+            kind = _kind_of_words(lead, EITHER[kind]) or kind
+        if kind is not None:
+            return kind, place
+    for kind in _VALUED:
+        if letters.startswith(kind[0].upper()) and any(read_value(f.text, _as(kind)).value for f in part.values):
+            return kind, f"value, reference {letters}"
+    if many:
+        return "ic", f"{len(part.pins)} pins"
+    return "other", "nothing tells its kind"
+
+
+def _as(kind: str) -> Literal["resistor", "capacitor"]:
+    return "resistor" if kind == "resistor" else "capacitor"
+
+
+def _names(part: Part, kind: str) -> bool:
+    return any(words & WORDS[kind] for _, words in _evidence(part))
+
+
+def _evidence(part: Part) -> Iterator[tuple[str, frozenset[str]]]:
+    """Words of each text about the part, the most telling first."""
+    library, _, symbol = part.symbol.rpartition(":")
+    yield f"symbol {symbol}", _words(symbol)
+    for fact in part.values:
+        yield f"value '{fact.text[:40]}'", _words(fact.text)
+    yield "footprint", _words(part.footprint.rpartition(":")[2])
+    yield "description", frozenset(_listed(part.description)[:_LEADING])
+    yield f"library {library}", _words(library) - {"R", "C", "L"}
+
+
+def _kind_of_words(words: frozenset[str], allowed: frozenset[str]) -> str | None:
+    return next((kind for kind, named in WORDS.items() if kind in allowed and words & named), None)
+
+
+def _words(text: str) -> frozenset[str]:
+    return frozenset(_listed(text))
+
+
+@lru_cache(maxsize=65536)
+def _listed(text: str) -> tuple[str, ...]:
+    """Words in capitals without accents, in order, and neighbours joined: SolderJumper and Net-Tie are one word.
+
+    A single letter counts at the start only: ``R_Small`` is a resistor, ``LCD_C39363`` no capacitor.
+    """
+    bare = "".join(letter for letter in unicodedata.normalize("NFD", text[:200]) if letter not in "\u0300\u0301\u0308")
+    words = tokens(unicodedata.normalize("NFC", bare).replace("{slash}", " ").replace("/", " "))
+    words = tuple(word for index, word in enumerate(words) if index == 0 or len(word) > 1)
+    joined = (first + second for first, second in pairwise(words))
+    return tuple(item for pair in zip_longest(words, joined, fillvalue="") for item in pair if item)
+
+
+@lru_cache(maxsize=65536)
+def _prefix(ref: str) -> str:
+    """``C`` of ``C12``, ``RN`` of ``/sheet/RN3``, in capitals."""
+    found = _LETTERS.match(ref.rpartition("/")[2])
+    return found[0].upper() if found else ""

@@ -1,0 +1,107 @@
+"""Cuts a value text into tokens: values with unit, ratings, dielectrics, sizes, and words that mean nothing here.
+
+Every pattern is anchored where the scan stands and repeats at most a few characters, so the work is linear.
+"""
+
+import re
+from collections.abc import Iterator
+from dataclasses import dataclass
+from typing import Final
+
+from rcrules.parts._spelling import SIZES
+
+_N: Final = r"(?:\d{1,12}(?:\.\d{0,12})?|\.\d{1,12})"
+_END: Final = r"(?:(?![A-Za-z0-9µΩ%°]|\.\d)|(?=[xX]\d)|(?=\d{1,4}(?:\.\d{1,3})?\s?(?:%|[Vv]|k[Vv])))"
+"""No letter or digit follows, or ``x35V``, or a tolerance or voltage is glued on: ``20K5%``, ``10uF50V``."""
+_MARK: Final = r"(?![\d.]*\s?(?:%|[Vv]))"
+"""The digits before are not the start of a glued tolerance or voltage."""
+_OHM: Final = r"(?:[Oo][Hh][Mm][Ss]?|Ω|R|r)"
+_LETTER: Final = r"(?P<letter>[BCDFGJKM])?"
+_SIZE: Final = "|".join(sorted(SIZES))
+_SEPARATORS: Final = re.compile(r"[\s,;|/_@()\[\]~:=*<>\"'&!]+|[+-]|(?<=[A-Za-z0-9%])[xX](?=\d)|\.(?!\d)")
+_WORD: Final = re.compile(r"[^\s,;|/_@()\[\]{}~:=*<>\"'&!+-]{1,80}")
+
+_COMMON: Final = (
+    ("uneven", rf"(?P<a>[+-]\s?{_N})\s?%?\s?/?,?\s?(?P<b>[+-]\s?{_N})\s?%"),
+    ("tolerance", rf"(?:±|\+/-|\+-|-/\+)?\s?(?P<n>{_N})\s?%"),
+    ("picofarads", rf"(?:±|\+/-|\+-)\s?(?P<n>{_N})\s?p[Ff]?{_END}"),
+    ("coefficient", rf"(?:±|\+/-|\+-)?\s?(?P<n>{_N})\s?(?:ppm|PPM)(?:\s?/\s?(?:°\s?C|K|C|degC|deg))?{_END}"),
+    ("power", rf"(?P<a>\d{{1,3}})/(?P<b>\d{{1,4}})\s?(?:[Ww](?:att)?s?){_END}"),
+    ("power", rf"(?P<a>1)/(?P<b>2|4|8|10|16|20|32){_END}"),
+    ("power", rf"(?P<n>{_N})\s?(?P<prefix>[mkµu])?[Ww](?:att)?s?{_END}"),
+    ("other", rf"{_N}\s?(?:°\s?C|deg\s?C|[kMG]?Hz|mm|[mu]?A)\b"),
+    ("other", rf"{_N}[xX]{_N}(?:[xX]{_N})?(?:mm)?(?![\w.])"),
+    ("voltage", rf"[<>]?=?\s?(?P<n>{_N})\s?(?P<prefix>[km])?(?:[Vv](?:DC|AC|dc|ac|R)?|KV){_END}"),
+    ("voltage", rf"(?P<a>\d{{1,4}})[Vv](?P<b>\d{{1,2}}){_END}"),
+    ("size", rf"(?:RES|CAP|IND|SMD|R|C|L|CHIP)?_?(?P<size>{_SIZE})(?:X\d)?(?:DNP|TBD)?(?![\w.])"),
+)
+_RESISTOR: Final = (
+    ("unclear", rf"\d{{1,6}}E\d{_END}"),
+    ("rkm", rf"(?P<whole>\d{{0,9}})(?P<mark>[RrL])(?P<part>\d{{1,6}}){_MARK}{_LETTER}{_END}"),
+    ("rkm", rf"(?P<whole>\d{{1,9}})(?P<mark>[kKMG])(?P<part>\d{{1,6}}){_MARK}{_OHM}?{_LETTER}{_END}"),
+    ("value", rf"(?P<n>{_N})\s?(?P<prefix>[Mm][Ee][Gg]|[mkKMGT])?\s?{_OHM}{_LETTER}{_END}"),
+    ("value", rf"(?P<n>{_N})\s?(?P<prefix>[Mm][Ee][Gg]|[mkKMG]){_LETTER}{_END}"),
+    ("value", rf"(?P<n>{_N})E{_END}"),
+)
+_CAPACITOR: Final = (
+    ("tantalum", r"T(?=\d)"),
+    ("rkm", rf"(?P<whole>\d{{0,9}})(?P<mark>[pnuµPNU])(?P<part>\d{{1,6}}){_MARK}[Ff]?(?P<letter>[BCDGJKMZ])?{_END}"),
+    ("value", rf"(?P<n>{_N})\s?(?P<prefix>[pnuµmPNU])\s?(?:[Ff][Dd]?|farads?)(?P<letter>[JKMGZ])?{_END}"),
+    ("value", rf"(?P<n>{_N})\s?(?P<prefix>[pnuµPNU])(?P<letter>[JKMGZ])?{_END}"),
+    ("value", rf"(?P<n>{_N})\s?(?P<prefix>MFD|mfd){_END}"),
+    ("value", rf"(?P<n>{_N})\s?(?:F|farads?){_END}"),
+    ("code", rf"(?P<code>\d{{3}})(?P<letter>[BCDFGJKMZ]){_END}"),
+    ("code", rf"(?P<a>\d)R(?P<b>\d)(?P<letter>[BCDFGJK])?{_END}"),
+    ("unclear", rf"{_N}\s?[mMf]F?{_END}"),
+)
+_BARE: Final = (("bare", rf"(?P<n>{_N}(?:[eE][+-]?\d{{1,3}})?){_END}"),)
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Token:
+    """A piece of a value text."""
+
+    kind: str
+    """``value rkm code bare unclear``, a rating, or ``word``."""
+    text: str
+    parts: dict[str, str | None]
+    """Named groups of the pattern."""
+    signed: bool
+    """A minus sign glued to the front, as in ``-39e-9``."""
+
+
+def _compiled(table: tuple[tuple[str, str], ...]) -> tuple[tuple[str, re.Pattern[str]], ...]:
+    return tuple((kind, re.compile(pattern)) for kind, pattern in table)
+
+
+_TABLES: Final = {
+    "resistor": _compiled((*_COMMON, *_RESISTOR, *_BARE)),
+    "capacitor": _compiled((*_COMMON, *_CAPACITOR, *_BARE)),
+}
+
+
+def tokens(text: str, kind: str) -> Iterator[Token]:
+    """The tokens of a text in plain spelling; kind: ``resistor`` or ``capacitor``."""
+    at = 0
+    while at < len(text):
+        found, name = _match(text, at, _TABLES[kind])
+        if found is None:
+            blank = _SEPARATORS.match(text, at)
+            if blank is not None:
+                at = blank.end()
+                continue
+            found, name = _WORD.match(text, at), "word"
+        if found is None or found.end() == at:
+            at += 1
+            continue
+        signed = at > 0 and text[at - 1] == "-" and (at == 1 or text[at - 2] in " (,;")
+        yield Token(kind=name, text=found[0], parts=found.groupdict(), signed=signed)
+        at = found.end()
+
+
+def _match(text: str, at: int, table: tuple[tuple[str, re.Pattern[str]], ...]) -> tuple[re.Match[str] | None, str]:
+    for name, pattern in table:
+        found = pattern.match(text, at)
+        if found is not None:
+            return found, name
+    return None, ""
