@@ -5,7 +5,7 @@ from dataclasses import dataclass
 
 import numpy as np
 
-from rcrules.engine._box import Box, Best, vertices
+from rcrules.engine._box import Best, Box, vertices
 from rcrules.engine._climb import climb, scan, turn
 from rcrules.engine._shape import Array
 

@@ -91,7 +91,7 @@ def scan(best: Best) -> Step:
 
 def climb(best: Best) -> Step:
     """Ascend inside from the best case of each side: steps both ways in each number, then the tops of the parabolas."""
-    steps = {side: FIRST_STEP for side in SIDES}
+    steps = dict.fromkeys(SIDES, FIRST_STEP)
     for _ in range(CLIMBS):
         sides = [side for side in SIDES if steps[side] >= LAST_STEP and _may_climb(best, side)]
         if not sides or best.undefined():

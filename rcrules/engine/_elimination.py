@@ -1,13 +1,13 @@
 """Star-mesh elimination of a conductance network without a single subtraction.
 
-The network is kept as conductances between nodes and slacks to held terminals; the diagonal of the nodal matrix is never
-summed, so a small leak beside a large conductance keeps all its digits (Grassmann, Taksar, Heyman, Operations Research
-33 (1985) 1107, for Markov chains: the same arithmetic).
+The network is kept as conductances between nodes and slacks to held terminals; the diagonal of the nodal matrix is
+never summed, so a small leak beside a large conductance keeps all its digits (Grassmann, Taksar, Heyman, Operations
+Research 33 (1985) 1107, for Markov chains: the same arithmetic; from memory).
 """
 
 import numpy as np
 
-from rcrules.engine._shape import Array, FloatingNode
+from rcrules.engine._shape import Array, Flags, FloatingNode, Indices
 
 
 def factor(between: Array, slack: Array, weight: Array) -> Array:
@@ -22,13 +22,30 @@ def factor(between: Array, slack: Array, weight: Array) -> Array:
     nodes, cases = slack.shape
     if nodes < 2 or cases == 0:
         return _scaled(np.ones((nodes, nodes, cases)), slack, np.zeros((nodes, 1), dtype=np.intp))
+    if nodes == 2:
+        return _two(between[0, 1], slack, weight[0] > weight[1])
     order = np.argsort(weight, axis=0, kind="stable")
     if (order == order[:, :1]).all():
         return _in_one_order(between, slack, order[:, 0])
     return _in_own_orders(between, slack, order)
 
 
-def _in_one_order(between: Array, slack: Array, order: np.ndarray[tuple[int, ...], np.dtype[np.intp]]) -> Array:
+def _two(between: Array, slack: Array, swapped: Flags) -> Array:
+    """Two nodes, in closed form: the second is eliminated first where swapped."""
+    first, second = np.where(swapped, slack[1], slack[0]), np.where(swapped, slack[0], slack[1])
+    pivot = first + between
+    share = between / np.where(pivot > 0.0, pivot, 1.0)
+    pivots = np.stack([pivot, second + share * first])
+    if not (pivots > 0.0).all():
+        raise _floating(pivots, np.stack([swapped, ~swapped]).astype(np.intp))
+    upper, lower = 1.0 / np.sqrt(pivots)
+    both = share * lower
+    rows = [[np.where(swapped, 0.0, upper), np.where(swapped, upper, 0.0)]]
+    rows.append([np.where(swapped, lower, both), np.where(swapped, both, lower)])
+    return np.array(rows)
+
+
+def _in_one_order(between: Array, slack: Array, order: Indices) -> Array:
     """All cases share the order of elimination."""
     inverse = _eliminate(between[np.ix_(order, order)], slack[order], order[:, None])
     found = np.empty_like(inverse)
@@ -36,7 +53,7 @@ def _in_one_order(between: Array, slack: Array, order: np.ndarray[tuple[int, ...
     return found
 
 
-def _in_own_orders(between: Array, slack: Array, order: np.ndarray[tuple[int, ...], np.dtype[np.intp]]) -> Array:
+def _in_own_orders(between: Array, slack: Array, order: Indices) -> Array:
     """Each case has its own order of elimination."""
     nodes, cases = order.shape
     case = np.arange(cases)
@@ -47,7 +64,7 @@ def _in_own_orders(between: Array, slack: Array, order: np.ndarray[tuple[int, ..
     return found
 
 
-def _eliminate(between: Array, slack: Array, order: np.ndarray[tuple[int, ...], np.dtype[np.intp]]) -> Array:
+def _eliminate(between: Array, slack: Array, order: Indices) -> Array:
     """Eliminate the nodes in the order of the arrays; L⁻¹ grows beside, then is scaled to D^(-1/2) L⁻¹."""
     nodes, cases = slack.shape
     inverse = np.zeros((nodes, nodes, cases))
@@ -63,9 +80,14 @@ def _eliminate(between: Array, slack: Array, order: np.ndarray[tuple[int, ...], 
     return _scaled(inverse, pivots, order)
 
 
-def _scaled(inverse: Array, pivots: Array, order: np.ndarray[tuple[int, ...], np.dtype[np.intp]]) -> Array:
+def _scaled(inverse: Array, pivots: Array, order: Indices) -> Array:
     """Rows divided by the root of their pivot. Raises FloatingNode where a pivot is zero."""
     if not (pivots > 0.0).all():
-        step, case = (int(index[0]) for index in np.nonzero(~(pivots > 0.0)))
-        raise FloatingNode(int(np.broadcast_to(order, pivots.shape)[step, case]), case)
+        raise _floating(pivots, order)
     return inverse / np.sqrt(pivots)[:, None]
+
+
+def _floating(pivots: Array, order: Indices) -> FloatingNode:
+    """The node whose pivot is zero in the first case that has one."""
+    case, step = (int(index[0]) for index in np.nonzero(~(pivots > 0.0).T))
+    return FloatingNode(int(np.broadcast_to(order, pivots.shape)[step, case]), case)

@@ -4,7 +4,7 @@ from dataclasses import dataclass, replace
 
 import numpy as np
 
-from rcrules.engine._shape import Array
+from rcrules.engine._shape import Array, Indices
 
 SERIES_BELOW = 0.25
 """Argument of phi below which the series is used; there the closed form loses digits."""
@@ -43,23 +43,28 @@ class ExponentialSum:
     ramps: Array | None
     """[V/s], (n, case); None = no ramps"""
 
+    @property
+    def ramping(self) -> bool:
+        """Whether it has a slope in some case."""
+        return bool(self.slope.any())
+
     def at(self, t: Array) -> Array:
         """Value. [V], (case,)
 
         t: [s], (case,)
         """
         x = self.rates * t
-        value = self.start + self.slope * t + (self.amps * np.expm1(-x)).sum(axis=0)
-        return value if self.ramps is None else value + (self.ramps * t * phi(x)).sum(axis=0)
+        value: Array = self.start + self.slope * t + (self.amps * np.expm1(-x)).sum(axis=0)
+        return value if self.ramps is None else value + np.asarray((self.ramps * t * phi(x)).sum(axis=0))
 
     def initial_slope(self) -> Array:
         """Slope just after the start. [V/s], (case,)"""
-        return self.slope - (self.rates * self.amps).sum(axis=0)
+        return np.asarray(self.slope - (self.rates * self.amps).sum(axis=0))
 
     def initial_bend(self) -> Array:
         """Second derivative just after the start. [V/s²], (case,)"""
         ramps = 0.0 if self.ramps is None else self.ramps
-        return (self.rates * (self.rates * self.amps + ramps)).sum(axis=0)
+        return np.asarray((self.rates * (self.rates * self.amps + ramps)).sum(axis=0))
 
     def end(self) -> Array:
         """Limit for long times. [V], (case,); inf where it ramps for ever"""
@@ -96,10 +101,12 @@ class ExponentialSum:
 
     def times(self, sign: Array) -> "ExponentialSum":
         """The function times a factor. [1], (case,)"""
+        if (sign == 1.0).all():
+            return self
         ramps = None if self.ramps is None else self.ramps * sign
         return replace(self, start=self.start * sign, slope=self.slope * sign, amps=self.amps * sign, ramps=ramps)
 
-    def take(self, cases: np.ndarray[tuple[int, ...], np.dtype[np.intp]]) -> "ExponentialSum":
+    def take(self, cases: Indices) -> "ExponentialSum":
         """The function in the cases of these indices only."""
         ramps = None if self.ramps is None else self.ramps[:, cases]
         return ExponentialSum(

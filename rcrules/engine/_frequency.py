@@ -46,7 +46,7 @@ def corner(
     farads: capacitances, >= 0. [F], (case, c)
     source: number of the held terminal that is driven
     at: observed free node
-    passes: ``low``: from DC upwards, the first such frequency, inf if none; ``high``: from high frequencies downwards, 0 if none
+    passes: ``low``: the first such frequency from DC upwards, inf if none; ``high``: from the top downwards, 0 if none
     nan where the pass band has no gain. Raises FloatingNode when a free node has no resistive path to a held terminal.
     """
     modes = solve(shape, ohms, farads)
@@ -93,7 +93,7 @@ class _Line:
         return _Line(constant=self.constant[:, case], rising=self.rising[:, case], taus=self.taus[:, case])
 
     def falling(self, level: Array, inside: Array, outside: Array) -> Array:
-        """Angular frequency between two at which the gain is the level, by bisection of its logarithm. [rad/s], (case,)"""
+        """Angular frequency between two at which the gain is the level, by geometric bisection. [rad/s], (case,)"""
         for _ in range(STEPS):
             middle = np.sqrt(inside * outside)
             above = self.gain(middle) >= level
@@ -102,7 +102,7 @@ class _Line:
 
 
 def _excitation(modes: Modes, source: int) -> tuple[Array, Array]:
-    """What one volt at the source drives into each mode: through conductances, and per rad/s through capacitances. (n, case)"""
+    """What one volt at the source drives into each mode: by conductance, and per rad/s by capacitance. (n, case)"""
     volts = np.zeros((modes.shape.held, modes.decays.shape[1]))
     volts[source - modes.shape.free] = 1.0
     conducted = weighted(modes.vectors, modes.pull(volts, np.zeros_like(modes.decays)))

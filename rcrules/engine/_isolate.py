@@ -3,9 +3,7 @@
 import numpy as np
 
 from rcrules.engine._exponential import ExponentialSum
-from rcrules.engine._shape import Array
-
-Indices = np.ndarray[tuple[int, ...], np.dtype[np.intp]]
+from rcrules.engine._shape import Array, Indices
 
 ROUNDS = 200
 """Halvings; geometric first, so far more than ever needed."""

@@ -1,15 +1,17 @@
 """One-sided Jacobi: rows made orthogonal by plane rotations, many cases at once.
 
-Keeps the relative precision of small rows, where a symmetric eigensolver keeps only that of the largest (Demmel, Veselić,
-SIAM J. Matrix Anal. Appl. 13 (1992) 1204).
+Keeps the relative precision of small rows, where a symmetric eigensolver keeps only that of the largest (Demmel,
+Veselić, SIAM J. Matrix Anal. Appl. 13 (1992) 1204; from memory).
 """
 
 from functools import lru_cache
 
 import numpy as np
 
-from rcrules.engine._shape import Array
+from rcrules.engine._shape import Array, Flags
 
+BLOCK = 2**16
+"""Numbers worked on at a time, so that they stay in the cache."""
 SWEEPS = 60
 """More than ever needed; ten serve for a hundred rows."""
 ORTHOGONAL = 4e-16
@@ -26,7 +28,11 @@ def orthogonalise(rows: Array, width: int) -> Array:
     """
     if len(rows) < 2 or width == 0:
         return rows
-    cases = rows.shape[2]
+    cases, block = rows.shape[2], max(64, BLOCK // (len(rows) * rows.shape[1]))
+    if cases > 2 * block:
+        for start in range(0, cases, block):
+            rows[:, :, start : start + block] = orthogonalise(rows[:, :, start : start + block].copy(), width)
+        return rows
     for _ in range(SWEEPS):
         active = np.zeros(cases, dtype=bool)
         for first, second in _schedule(len(rows)):
@@ -58,10 +64,8 @@ def _schedule(count: int) -> tuple[tuple[slice | list[int], slice | list[int]], 
     return tuple(rounds)
 
 
-def _rotate(
-    rows: Array, width: int, first: slice | list[int], second: slice | list[int]
-) -> np.ndarray[tuple[int, ...], np.dtype[np.bool_]]:
-    """Make the rows ``first`` orthogonal to the rows ``second`` and put the longer one first; which cases were far from it."""
+def _rotate(rows: Array, width: int, first: slice | list[int], second: slice | list[int]) -> Flags:
+    """Make the rows ``first`` orthogonal to the rows ``second``, the longer one first; which cases were far from it."""
     x, y = rows[first], rows[second]
     a = np.einsum("pmc,pmc->pc", x[:, :width], x[:, :width])
     b = np.einsum("pmc,pmc->pc", y[:, :width], y[:, :width])
@@ -71,15 +75,15 @@ def _rotate(
     swap = b > a
     turn = (slope > ORTHOGONAL * size) | swap
     if not turn.any():
-        return turn.any(axis=0)
+        return np.asarray(turn.any(axis=0))
     cosine, sine = _angle(a, b, g, swap)
     turned = cosine[:, None] * x - sine[:, None] * y
     rows[second] = sine[:, None] * x + cosine[:, None] * y
     rows[first] = turned
-    return ((slope > LAST * size) | swap).any(axis=0)
+    return np.asarray(((slope > LAST * size) | swap).any(axis=0))
 
 
-def _angle(a: Array, b: Array, g: Array, swap: np.ndarray[tuple[int, ...], np.dtype[np.bool_]]) -> tuple[Array, Array]:
+def _angle(a: Array, b: Array, g: Array, swap: Flags) -> tuple[Array, Array]:
     """Cosine and sine of the rotation that makes two rows of squared lengths a, b and product g orthogonal."""
     with np.errstate(divide="ignore", invalid="ignore", over="ignore"):
         zeta = (b - a) / (g + g)

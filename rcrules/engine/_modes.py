@@ -1,7 +1,8 @@
 """The exact solution of an RC network: its natural modes, in every case.
 
-C v' + G v = B u + D u' - i with u the held voltages, B and D the conductances and capacitances to them, i the currents drawn
-out of the nodes. With Y G Yᵀ = 1 and U Y C Yᵀ Uᵀ = diag(tau), the modes q = (U Y)⁻ᵀ v obey tau q' + q = U Y (B u + D u' - i).
+C v' + G v = B u + D u' - i, with u the held voltages, B and D the conductances and capacitances to them, i the currents
+drawn out of the nodes. With Y G Yᵀ = 1 and an orthogonal U that makes U Y C Yᵀ Uᵀ diagonal (the time constants tau), the
+modes q, v = (U Y)ᵀ q, obey tau q' + q = U Y (B u + D u' - i).
 """
 
 from collections.abc import Sequence
@@ -12,7 +13,7 @@ import numpy as np
 from rcrules.engine._elimination import factor
 from rcrules.engine._jacobi import orthogonalise
 from rcrules.engine._response import Drive, Response, respond
-from rcrules.engine._shape import Array, Column, Shape, floating_groups, layout, merged
+from rcrules.engine._shape import Array, Column, Flags, Indices, Shape, floating_groups, layout
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -24,14 +25,20 @@ class Modes:
     """Conductance of each resistor. [S], (r, case)"""
     farads: Array
     """Capacitance of each capacitor. [F], (c, case)"""
+    sizes: Array
+    """Capacitance of each column, that is of parallel capacitors together. [F], (column, case)"""
     root: Array
     """Y of the elimination: Yᵀ Y is the inverse of the conductance matrix. [Ω^½], (n, node, case)"""
     stores: Array
-    """Rows of the modes over the merged capacitors: the length of a row is the root of its time constant. [s^½], (n, column, case)"""
+    """U Y A sqrt(c), A the incidence of the columns: a row's squared length is its time constant. [s^½], (n, column, case)"""
     vectors: Array
-    """Node voltages of each mode, normed to the conductances. [Ω^½], (n, node, case)"""
+    """U Y: node voltages of each mode, normed to the conductances. [Ω^½], (n, node, case)"""
     decays: Array
-    """Time constants, slowest first. [s], (n, case)"""
+    """Time constants, slowest first, the structural zeros last. [s], (n, case)"""
+    rates: Array
+    """Their inverses; 1 for time constants of zero. [1/s], (n, case)"""
+    instant: Flags | None
+    """Which time constants are zero. (n, case); None = none"""
 
     @property
     def taus(self) -> Array:
@@ -51,15 +58,17 @@ class Modes:
 
         currents: into each free node. [A], (free, case)
         """
-        return np.einsum("kic,kc->ic", self.root, np.einsum("kic,ic->kc", self.root, currents))
+        found: Array = np.einsum("kic,kc->ic", self.root, np.einsum("kic,ic->kc", self.root, currents))
+        return found
 
-    def pull(self, volts: Array, amps: Array) -> Array:
+    def pull(self, volts: Array, amps: Array | None) -> Array:
         """Current into each free node held at 0 V. [A], (free, case)
 
         volts: voltages of the held terminals. [V], (held, case)
-        amps: currents drawn out of the free nodes. [A], (free, case)
+        amps: currents drawn out of the free nodes. [A], (free, case); None = none
         """
-        currents = np.negative(amps)
+        cases = self.decays.shape[1]
+        currents = np.zeros((self.shape.free, cases)) if amps is None else np.negative(amps)
         for index, node, terminal in layout(self.shape).slacks:
             currents[node] += self.siemens[index] * volts[terminal]
         return currents
@@ -83,40 +92,43 @@ def solve(shape: Shape, ohms: Array, farads: Array) -> Modes:
     Raises FloatingNode when a free node has no resistive path to a held terminal, ValueError on values out of range.
     """
     ohms, farads = np.asarray(ohms, float), np.asarray(farads, float)
-    if not (ohms > 0.0).all() or not (farads >= 0.0).all() or np.isinf(farads).any():
+    if not ((ohms > 0.0).all() and (farads >= 0.0).all() and np.isfinite(farads).all()):
         raise ValueError("resistances must be positive, capacitances finite and not negative")
-    siemens, capacitances = np.ascontiguousarray(1.0 / ohms.T), np.ascontiguousarray(farads.T)
+    siemens, farads = np.ascontiguousarray(1.0 / ohms.T), np.ascontiguousarray(farads.T)
     columns = layout(shape).columns
-    sizes = merged(columns, capacitances)
+    sizes = _sizes(columns, farads)
     root = factor(*_conductances(shape, siemens), _node_capacitance(shape, columns, sizes))
-    rows = orthogonalise(np.concatenate([_stores(columns, sizes, root), root], axis=1), len(columns))
-    return _sorted(shape, siemens, capacitances, root, rows)
-
-
-def _sorted(shape: Shape, siemens: Array, farads: Array, root: Array, rows: Array) -> Modes:
-    """Modes from the rotated rows, the structural zeros set to zero."""
-    columns = layout(shape).columns
+    rows = orthogonalise(_rows(columns, sizes, root), len(columns))
     stores, vectors = rows[:, : len(columns)], rows[:, len(columns) :]
-    taus = np.einsum("kmc,kmc->kc", stores, stores)
-    zero = np.arange(shape.free)[:, None] >= shape.free - _zeros(shape, columns, merged(columns, farads))
-    if zero.any():
-        taus = np.where(zero, 0.0, taus)
-        stores = np.where(zero[:, None], 0.0, stores)
-    return Modes(shape=shape, siemens=siemens, farads=farads, root=root, stores=stores, vectors=vectors, decays=taus)
+    decays = np.einsum("kmc,kmc->kc", stores, stores)
+    instant = _instant(shape, columns, sizes)
+    if instant is not None:
+        decays, stores = np.where(instant, 0.0, decays), np.where(instant[:, None], 0.0, stores)
+    rates = 1.0 / (decays if instant is None else np.where(instant, 1.0, decays))
+    return Modes(
+        shape=shape,
+        siemens=siemens,
+        farads=farads,
+        sizes=sizes,
+        root=root,
+        stores=stores,
+        vectors=vectors,
+        decays=decays,
+        rates=rates,
+        instant=instant,
+    )
 
 
-def _zeros(shape: Shape, columns: Sequence[Column], sizes: Array) -> np.ndarray[tuple[int, ...], np.dtype[np.intp]]:
-    """Number of time constants that are exactly zero, from which capacitors are there. (case,)"""
-    present = sizes > 0.0
-    count = np.zeros(sizes.shape[1], dtype=np.intp)
-    if present.all():
-        count[:] = len(floating_groups(shape.free, columns))
-        return count
-    patterns, which = np.unique(present, axis=1, return_inverse=True)
-    for index, pattern in enumerate(patterns.T):
-        kept = [column for column, there in zip(columns, pattern, strict=True) if there]
-        count[which.reshape(-1) == index] = len(floating_groups(shape.free, kept))
-    return count
+def _sizes(columns: Sequence[Column], farads: Array) -> Array:
+    """Capacitance of each column. [F], (column, case)
+
+    farads: capacitance of each capacitor. [F], (c, case)
+    """
+    total = np.zeros((len(columns), farads.shape[1]))
+    for row, column in enumerate(columns):
+        for index, _, _ in column.members:
+            total[row] += farads[index]
+    return total
 
 
 def _conductances(shape: Shape, siemens: Array) -> tuple[Array, Array]:
@@ -145,10 +157,31 @@ def _node_capacitance(shape: Shape, columns: Sequence[Column], sizes: Array) -> 
     return total
 
 
-def _stores(columns: Sequence[Column], sizes: Array, root: Array) -> Array:
-    """Y A_C sqrt(c): one column per merged capacitor. [s^½], (n, column, case)"""
-    found = np.empty((len(root), len(columns), root.shape[2]))
+def _rows(columns: Sequence[Column], sizes: Array, root: Array) -> Array:
+    """Y A sqrt(c), one column per merged capacitor, and Y beside it. (n, column + node, case)"""
+    rows = np.empty((len(root), len(columns) + len(root), root.shape[2]))
+    rows[:, len(columns) :] = root
     for index, column in enumerate(columns):
         voltage = root[:, column.node] if column.other is None else root[:, column.node] - root[:, column.other]
-        np.multiply(voltage, np.sqrt(sizes[index]), out=found[:, index])
-    return found
+        np.multiply(voltage, np.sqrt(sizes[index]), out=rows[:, index])
+    return rows
+
+
+def _instant(shape: Shape, columns: Sequence[Column], sizes: Array) -> Flags | None:
+    """Which time constants, the slowest first, are exactly zero, by which capacitors are there. (n, case); None = none"""
+    present = sizes > 0.0
+    if present.all():
+        count = len(floating_groups(shape.free, columns))
+        return (
+            np.repeat(np.arange(shape.free)[:, None] >= shape.free - count, sizes.shape[1], axis=1) if count else None
+        )
+    patterns, which = np.unique(present, axis=1, return_inverse=True)
+    counts = np.array([_zeros(shape, columns, pattern) for pattern in patterns.T], dtype=np.intp)
+    found: Flags = np.arange(shape.free)[:, None] >= shape.free - counts[which.reshape(-1)]
+    return found if found.any() else None
+
+
+def _zeros(shape: Shape, columns: Sequence[Column], present: Indices | Flags) -> int:
+    """Number of time constants that are zero when only these columns are there."""
+    kept = [column for column, there in zip(columns, present, strict=True) if there]
+    return len(floating_groups(shape.free, kept))

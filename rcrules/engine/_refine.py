@@ -59,7 +59,10 @@ def _iterate(rising: ExponentialSum, low: Array, high: Array, t: Array) -> Array
 
 
 def _value_and_slope(rising: ExponentialSum, t: Array) -> tuple[Array, Array]:
-    """Value and slope at t. [V], [V/s]"""
+    """Value and slope at t. [V], [V/s]; with ramps amplitudes may be huge, and only their change is exact"""
+    if not rising.ramping:
+        left = rising.amps * np.exp(-rising.rates * t)
+        return (rising.start - rising.amps.sum(axis=0)) + left.sum(axis=0), -(rising.rates * left).sum(axis=0)
     fallen = rising.amps * np.expm1(-rising.rates * t)
     value = rising.start + rising.slope * t + fallen.sum(axis=0)
     return value, rising.slope - (rising.rates * (fallen + rising.amps)).sum(axis=0)

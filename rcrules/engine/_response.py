@@ -6,11 +6,14 @@ from typing import TYPE_CHECKING
 import numpy as np
 
 from rcrules.engine._exponential import ExponentialSum, phi
-from rcrules.engine._shape import Array, layout, merged
+from rcrules.engine._shape import Array, layout
 from rcrules.engine._signal import Signal
 
 if TYPE_CHECKING:
     from rcrules.engine._modes import Modes
+
+Terms = list[tuple[int, Array]]
+"""Rows and their weights. [1], (case,) or (1,)"""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -41,8 +44,8 @@ class Piece:
     """Modes just after the start. [W^½], (n, case)"""
     target: Array
     """What each mode would settle to, were the sources to stop. [W^½], (n, case)"""
-    drift: Array
-    """Slope of the target. [W^½/s], (n, case)"""
+    drift: Array | None
+    """Slope of the target. [W^½/s], (n, case); None = no source ramps"""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -56,39 +59,49 @@ class Response:
     rest: Array | None
     """Node voltages in the end. [V], (free, case); None when a source ramps for ever"""
 
-    def observe(self, weights: Array, offset: Array) -> Signal:
+    def observe(self, weights: Array, offset: Array | float) -> Signal:
         """The signal ``weights . v - offset``.
 
-        weights: of every terminal, the free ones first. [1], (case, terminals); may be one row for all cases
-        offset: [V], (case,) or one number
+        weights: of every terminal, the free ones first. [1], (case, terminals), or (terminals,) for all cases alike
+        offset: [V], (case,), or one number for all cases
         """
         free, cases = self.modes.shape.free, self.starts.shape[1]
-        weights = np.broadcast_to(
-            np.asarray(weights, float).T.reshape(free + self.modes.shape.held, -1),
-            (free + self.modes.shape.held, cases),
-        )
-        offset = np.broadcast_to(np.asarray(offset, float), (cases,))
-        shares = weighted(self.modes.vectors, weights[:free])
-        rest = None if self.rest is None else (weights[:free] * self.rest).sum(axis=0)
-        sums = tuple(self._piece(piece, shares, weights[free:], offset) for piece in self.pieces)
-        if rest is not None and free:
-            end = rest + (weights[free:] * self.pieces[-1].volts).sum(axis=0) - offset
-            end = np.where(self.modes.decays[0] > 0.0, end, sums[-1].end())
-            sums = (*sums[:-1], sums[-1].ending_at(end))
-        return Signal(starts=self.starts, sums=sums, lengths=tuple(piece.length for piece in self.pieces))
+        rows = [(k, row) for k, row in enumerate(np.atleast_2d(np.asarray(weights, float)).T) if row.any()]
+        held = [(k - free, row) for k, row in rows if k >= free]
+        nodes = [(k, row) for k, row in rows if k < free]
+        shares = np.zeros((free, cases))
+        for k, row in nodes:
+            shares += self.modes.vectors[:, k] * row
+        sums = [self._piece(piece, shares, held, offset) for piece in self.pieces]
+        if self.rest is not None and free:
+            end = _summed(nodes, self.rest) + _summed(held, self.pieces[-1].volts) - offset
+            sums[-1] = sums[-1].ending_at(end if self.modes.instant is None else self._kept(end, sums[-1]))
+        return Signal(starts=self.starts, sums=tuple(sums), lengths=tuple(piece.length for piece in self.pieces))
 
-    def _piece(self, piece: Piece, shares: Array, held: Array, offset: Array) -> ExponentialSum:
+    def _kept(self, end: Array, found: ExponentialSum) -> Array:
+        """The end, but as it is where no mode takes time."""
+        return np.where(self.modes.decays[0] > 0.0, end, found.end())
+
+    def _piece(self, piece: Piece, shares: Array, held: Terms, offset: Array | float) -> ExponentialSum:
         """One piece of the signal; modes without time constant follow their target."""
-        taus = self.modes.decays
-        slow = taus > 0.0
-        amps = np.where(slow, shares * (piece.state - piece.target), 0.0)
-        start = (shares * piece.state).sum(axis=0) + (held * piece.volts).sum(axis=0) - offset
-        rates = 1.0 / np.where(slow, taus, 1.0)
-        if not piece.slopes.any():
+        instant, rates = self.modes.instant, self.modes.rates
+        start = (shares * piece.state).sum(axis=0) + _summed(held, piece.volts) - offset
+        amps = shares * (piece.state - piece.target)
+        if instant is not None:
+            amps[instant] = 0.0
+        if piece.drift is None:
             return ExponentialSum(start=start, slope=np.zeros_like(start), amps=amps, rates=rates, ramps=None)
         ramps = shares * piece.drift
-        slope = (held * piece.slopes).sum(axis=0) + np.where(slow, 0.0, ramps).sum(axis=0)
-        return ExponentialSum(start=start, slope=slope, amps=amps, rates=rates, ramps=np.where(slow, ramps, 0.0))
+        slope = np.zeros_like(start) + _summed(held, piece.slopes)
+        if instant is not None:
+            slope += np.where(instant, ramps, 0.0).sum(axis=0)
+            ramps[instant] = 0.0
+        return ExponentialSum(start=start, slope=slope, amps=amps, rates=rates, ramps=ramps)
+
+
+def _summed(terms: Terms, values: Array) -> Array | float:
+    """Sum of weighted rows of values (row, case)."""
+    return sum((row * values[k] for k, row in terms), 0.0)
 
 
 def respond(modes: "Modes", drive: Drive, charged: Array) -> Response:
@@ -100,29 +113,32 @@ def respond(modes: "Modes", drive: Drive, charged: Array) -> Response:
     Charge on the capacitors of a mode is conserved over a jump; where the capacitors at a node contradict each other it is shared.
     """
     starts = np.ascontiguousarray(np.asarray(drive.starts, float).T)
-    levels = np.moveaxis(np.asarray(drive.levels, float), 0, -1)
-    slopes = np.moveaxis(np.asarray(drive.slopes, float), 0, -1)
+    levels, slopes = (
+        np.ascontiguousarray(np.asarray(x, float).transpose(1, 2, 0)) for x in (drive.levels, drive.slopes)
+    )
     amps = np.asarray(drive.amps, float).T
+    drawn = amps if amps.any() else None
     lengths = [*np.diff(starts, axis=0), np.full(starts.shape[1], np.inf)]
-    state, pieces = _initial(modes, charged, levels[0]), []
+    state = _initial(modes, charged, levels[0])
+    pieces: list[Piece] = []
     for index, length in enumerate(lengths):
         if index:
             state = _after(modes, pieces[-1]) + _jump(modes, levels[index] - _end(pieces[-1]))
-        pieces.append(_started(modes, state, levels[index], slopes[index], amps, length))
-        state = pieces[-1].state
+        pieces.append(_started(modes, state, levels[index], slopes[index], drawn, length))
     last = pieces[-1]
-    rest = None if last.slopes.any() else modes.at_rest(modes.pull(last.volts, amps))
+    rest = modes.at_rest(modes.pull(last.volts, drawn)) if last.drift is None else None
     return Response(modes=modes, starts=starts, pieces=tuple(pieces), rest=rest)
 
 
-def _started(modes: "Modes", state: Array, volts: Array, slopes: Array, amps: Array, length: Array) -> Piece:
+def _started(modes: "Modes", state: Array, volts: Array, slopes: Array, amps: Array | None, length: Array) -> Piece:
     """The piece that begins with these modes; modes without time constant are at their target."""
     target = weighted(modes.vectors, modes.pull(volts, amps))
-    drift = np.zeros_like(target)
+    drift = None
     if slopes.any():
-        drift = weighted(modes.vectors, modes.pull(slopes, np.zeros_like(amps)))
-        target = target + pushed_by(modes, slopes)
-    state = np.where(modes.decays > 0.0, state, target)
+        drift = weighted(modes.vectors, modes.pull(slopes, None))
+        target += pushed_by(modes, slopes)
+    if modes.instant is not None:
+        state = np.where(modes.instant, target, state)
     return Piece(length=length, volts=volts, slopes=slopes, state=state, target=target, drift=drift)
 
 
@@ -133,19 +149,19 @@ def _end(piece: Piece) -> Array:
 
 def _after(modes: "Modes", piece: Piece) -> Array:
     """Modes at the end of a piece of finite length."""
-    x = piece.length / np.where(modes.decays > 0.0, modes.decays, 1.0)
-    return piece.state + (piece.state - piece.target) * np.expm1(-x) + piece.drift * piece.length * phi(x)
+    x = piece.length * modes.rates
+    state = piece.state + (piece.state - piece.target) * np.expm1(-x)
+    return state if piece.drift is None else state + piece.drift * piece.length * phi(x)
 
 
 def _initial(modes: "Modes", charged: Array, volts: Array) -> Array:
     """Modes just after the first instant: each keeps the charge of its capacitors."""
-    pulled = np.zeros((modes.stores.shape[1], modes.decays.shape[1]))
+    charge = np.zeros_like(modes.sizes)
     for row, column in enumerate(layout(modes.shape).columns):
         for index, sign, terminal in column.members:
             held = 0.0 if terminal is None else volts[terminal]
-            pulled[row] += modes.farads[index] * (held + sign * charged[index])
-    safe = np.where(modes.decays > 0.0, modes.decays, 1.0)
-    return _seen(modes, pulled) / safe
+            charge[row] += modes.farads[index] * (held + sign * charged[index])
+    return _seen(modes, charge) * modes.rates
 
 
 def _jump(modes: "Modes", change: Array) -> Array:
@@ -153,10 +169,7 @@ def _jump(modes: "Modes", change: Array) -> Array:
 
     change: of each held voltage. [V], (held, case)
     """
-    if not change.any():
-        return np.zeros_like(modes.decays)
-    safe = np.where(modes.decays > 0.0, modes.decays, 1.0)
-    return pushed_by(modes, change) / safe
+    return pushed_by(modes, change) * modes.rates
 
 
 def pushed_by(modes: "Modes", volts: Array) -> Array:
@@ -164,11 +177,12 @@ def pushed_by(modes: "Modes", volts: Array) -> Array:
 
     volts: of the held terminals. [V], (held, case)
     """
-    charge = np.zeros((modes.stores.shape[1], modes.decays.shape[1]))
-    for row, column in enumerate(layout(modes.shape).columns):
-        for index, _, terminal in column.members:
-            if terminal is not None:
-                charge[row] += modes.farads[index] * volts[terminal]
+    charge = np.zeros_like(modes.sizes)
+    if volts.any():
+        for row, column in enumerate(layout(modes.shape).columns):
+            for index, _, terminal in column.members:
+                if terminal is not None:
+                    charge[row] += modes.farads[index] * volts[terminal]
     return _seen(modes, charge)
 
 
@@ -177,10 +191,14 @@ def _seen(modes: "Modes", charge: Array) -> Array:
 
     charge: [C], (column, case)
     """
-    size = np.sqrt(merged(layout(modes.shape).columns, modes.farads))
-    return np.einsum("kmc,mc->kc", modes.stores, charge / np.where(size > 0.0, size, 1.0))
+    if not charge.any():
+        return np.zeros_like(modes.decays)
+    shares = charge / np.where(modes.sizes > 0.0, np.sqrt(modes.sizes), 1.0)
+    seen: Array = np.einsum("kmc,mc->kc", modes.stores, shares)
+    return seen
 
 
 def weighted(vectors: Array, weights: Array) -> Array:
     """Sum over nodes of vectors (n, node, case) times weights (node, case)."""
-    return np.einsum("kic,ic->kc", vectors, weights)
+    found: Array = np.einsum("kic,ic->kc", vectors, weights)
+    return found

@@ -1,6 +1,6 @@
 """Topology of a network as numbers, and the bookkeeping that depends on the topology alone."""
 
-from collections.abc import Iterable, Sequence
+from collections.abc import Iterable
 from dataclasses import dataclass
 from functools import lru_cache
 
@@ -8,10 +8,12 @@ import numpy as np
 from numpy.typing import NDArray
 
 Array = NDArray[np.float64]
+Indices = NDArray[np.intp]
+Flags = NDArray[np.bool_]
 Pairs = tuple[tuple[int, int], ...]
 
 
-class FloatingNode(Exception):
+class FloatingNode(Exception):  # noqa: N818 - what it says about a network is its name
     """A free node has no resistive path to a held terminal."""
 
     def __init__(self, node: int, case: int) -> None:
@@ -65,7 +67,7 @@ class Layout:
 
 @lru_cache(maxsize=4096)
 def layout(shape: Shape) -> Layout:
-    """Branches of the shape by kind; branches between held terminals or from a node to itself do not act on free nodes."""
+    """Branches of the shape by kind; those between held terminals or from a node to itself do not act on free nodes."""
     bridges, slacks = [], []
     for index, (a, b) in enumerate(shape.resistors):
         low, high = sorted((a, b))
@@ -107,15 +109,3 @@ def floating_groups(free: int, columns: Iterable[Column]) -> tuple[tuple[int, ..
         groups.setdefault(root(node), []).append(node)
     groups.pop(root(free), None)
     return tuple(tuple(nodes) for nodes in groups.values())
-
-
-def merged(columns: Sequence[Column], farads: Array) -> Array:
-    """Capacitance of each column. [F], (column, case)
-
-    farads: capacitance of each capacitor. [F], (c, case)
-    """
-    total = np.zeros((len(columns), farads.shape[1]))
-    for row, column in enumerate(columns):
-        for index, _, _ in column.members:
-            total[row] += farads[index]
-    return total

@@ -10,9 +10,7 @@ import numpy as np
 from rcrules.engine._exponential import ExponentialSum
 from rcrules.engine._isolate import isolate
 from rcrules.engine._refine import refine
-from rcrules.engine._shape import Array
-
-Indices = np.ndarray[tuple[int, ...], np.dtype[np.intp]]
+from rcrules.engine._shape import Array, Flags, Indices
 
 NOTHING = 1e-14
 """Share of the whole below which a limit counts as zero: rounding has decided its sign."""
@@ -27,11 +25,14 @@ def zeros(found: ExponentialSum, length: Array) -> tuple[Indices, Array]:
     length: [s], (case,), inf allowed
     Returns case of each zero, and its time [s].
     """
-    size = np.abs(found.start) + np.abs(found.amps).sum(axis=0)
+    sizes = np.abs(found.amps)
+    size = sizes.sum(axis=0)
     rest = found.start - found.amps.sum(axis=0)
     rest = np.where(np.abs(rest) <= NOTHING * size, 0.0, rest)
     first, last, changes = _signs(found, rest)
-    low, high = _bracket(found, rest, size, length)
+    if not changes.any():
+        return np.zeros(0, dtype=np.intp), np.zeros(0)
+    low, high = _bracket(found, sizes, np.abs(rest), length)
     finite = np.isfinite(length)
     if finite.any():
         last = np.where(finite, np.sign(found.at(np.where(finite, length, 0.0))), last)
@@ -41,7 +42,7 @@ def zeros(found: ExponentialSum, length: Array) -> tuple[Indices, Array]:
 
 
 def _both(
-    found: ExponentialSum, first: Array, low: Array, high: Array, single: Array, several: Array
+    found: ExponentialSum, first: Array, low: Array, high: Array, single: Flags, several: Flags
 ) -> tuple[Indices, Array]:
     """Zeros of the cases with exactly one, and of those with perhaps several."""
     cases = np.flatnonzero(single)
@@ -61,36 +62,38 @@ def _both(
 
 def _signs(found: ExponentialSum, rest: Array) -> tuple[Array, Array, Array]:
     """Sign just after 0, sign in the end, and number of sign changes of the partial sums."""
-    steps = [np.sign(found.slope), np.sign(rest)]
-    total = rest
-    for amp in found.amps[:-1]:
-        total = total + amp
-        steps.append(np.sign(total))
-    steps.append(np.sign(found.start))
-    current, last, changes = steps[0], steps[0], np.zeros(len(rest))
-    for sign in steps[1:]:
+    current = np.sign(found.slope) if found.ramping else np.zeros_like(rest)
+    last, changes, total = current, np.zeros_like(rest), rest
+    for place in range(len(found.amps) + 1):
+        sign = np.sign(total if place < len(found.amps) else found.start)
         changes += current * sign < 0.0
         current = np.where(sign != 0.0, sign, current)
-        last = np.where(last == 0.0, sign, last)
-    first = steps[-1]
+        last = np.where(last != 0.0, last, sign)
+        total = total + found.amps[place] if place < len(found.amps) else total
+    first = np.sign(found.start)
     if (first == 0.0).any():
         first = np.where(first != 0.0, first, np.sign(found.initial_slope()))
         first = np.where(first != 0.0, first, np.sign(found.initial_bend()))
     return first, last, changes
 
 
-def _bracket(found: ExponentialSum, rest: Array, size: Array, length: Array) -> tuple[Array, Array]:
-    """Times between which all zeros lie. [s]"""
-    speed = (np.abs(found.amps) * found.rates).sum(axis=0)
-    bend = (np.abs(found.amps) * found.rates * found.rates).sum(axis=0)
+def _bracket(found: ExponentialSum, sizes: Array, rest: Array, length: Array) -> tuple[Array, Array]:
+    """Times between which all zeros lie. [s]
+
+    sizes: of the amplitudes. [V], (n, case)
+    rest: size of the limit. [V], (case,)
+    """
     with np.errstate(divide="ignore", invalid="ignore", over="ignore"):
-        by_value = np.abs(found.start) / (speed + np.abs(found.slope))
-        by_slope = 2.0 * np.abs(found.initial_slope()) / bend if (found.start == 0.0).any() else by_value
-        low = np.where(found.start == 0.0, by_slope, by_value)
-        amps = np.abs(found.amps).sum(axis=0)
-        slowest = np.where(found.amps != 0.0, 1.0 / found.rates, 0.0).max(axis=0, initial=0.0)
-        fading = slowest * np.log(amps / np.maximum(np.abs(rest), FADED * size))
-        rising = (np.abs(rest) + amps) / np.abs(found.slope)
-    high = np.minimum(length, np.where(found.slope == 0.0, fading * (1.0 + 1e-12), rising))
+        speeds = sizes * found.rates
+        low = np.abs(found.start) / (speeds.sum(axis=0) + np.abs(found.slope))
+        if (found.start == 0.0).any():
+            by_slope = 2.0 * np.abs(found.initial_slope()) / (speeds * found.rates).sum(axis=0)
+            low = np.where(found.start == 0.0, by_slope, low)
+        size = sizes.sum(axis=0)
+        slowest = 1.0 / np.where(sizes > 0.0, found.rates, np.inf).min(axis=0, initial=np.inf)
+        high = slowest * np.log(size / np.maximum(rest, FADED * (size + np.abs(found.start))))
+        if found.ramping:
+            high = np.where(found.slope == 0.0, high, (rest + size) / np.abs(found.slope))
+        high = np.minimum(length, high * (1.0 + 1e-12))
     low = np.where(np.isfinite(low), low, 0.0)
     return np.minimum(low * (1.0 - 1e-12), high), high
