@@ -2,17 +2,19 @@
 
 Contract (arrays are float64, first axis = case):
 
-``Shape(free, held, resistors, capacitors)``  hashable topology. Terminals ``0 .. free-1`` are free, ``free .. free+held-1``
-    held; ``resistors`` and ``capacitors`` are tuples of terminal pairs.
-``solve(shape, ohms, farads) -> Modes``  ohms (case, r) > 0, inf allowed = open; farads (case, c) >= 0. Raises FloatingNode.
+``Shape(free, held, resistors, capacitors)``  hashable topology. Terminals ``0 .. free-1`` are free,
+    ``free .. free+held-1`` held; ``resistors`` and ``capacitors`` are tuples of terminal pairs.
+``solve(shape, ohms, farads) -> Modes``  ohms (case, r) > 0, inf allowed = open; farads (case, c) >= 0.
+    Raises FloatingNode.
 ``Modes.taus`` (case, free), slowest first, structural zeros last.
-``Modes.steady(volts, amps) -> (case, free)``  DC node voltages; volts (case, held); amps (case, free) drawn out of each node.
-``Modes.respond(drive, charged) -> Response``  charged (case, c): capacitor voltages (a minus b) just before the first instant.
-``Drive(starts, levels, slopes, amps)``  sources piecewise linear: starts (case, s) non-decreasing with starts[:, 0] == 0;
+``Modes.steady(volts, amps) -> (case, free)``  DC node voltages; volts (case, held); amps (case, free) drawn out of the
+    nodes.
+``Modes.respond(drive, charged) -> Response``  charged (case, c): capacitor voltages (a minus b) just before t = 0.
+``Drive(starts, levels, slopes, amps)``  sources piecewise linear: starts (case, s) not decreasing, starts[:, 0] == 0;
     levels, slopes (case, s, held): value at the start of a piece and its slope; amps (case, free) constant.
 ``Response.observe(weights, offset) -> Signal``  weights (case, terminals), offset (case,): f = weights . v - offset.
 ``Signal``  .before is not kept; .initial() just after t = 0; .final() limit, may be inf; .at(t), t (case,);
-    .first_crossing(direction) first t >= 0 at which f >= 0 (direction +1) or f <= 0 (-1), array (case,) or scalar direction;
+    .first_crossing(direction) first t >= 0 at which f >= 0 (direction +1) or f <= 0 (-1), direction (case,) or one;
         a touch of 0 at t = 0 with the slope away does not count; inf = never;
     .last_exit(low, high) last time outside [low, high], 0 if never outside, inf if it ends outside;
     .extremes() -> (lowest, highest) over t >= 0, the supremum included; .width() total time f >= 0;

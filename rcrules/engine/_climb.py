@@ -4,7 +4,7 @@ from collections.abc import Generator
 
 import numpy as np
 
-from rcrules.engine._box import Best, Box, vertices
+from rcrules.engine._box import Best, Box
 from rcrules.engine._shape import Array
 
 Step = Generator[Array, Array, None]
@@ -150,6 +150,3 @@ def _top(here: float, ends: list[float], heights: Array) -> float:
             return float(np.clip(here - 0.5 * lean / bend, here - 4.0 * left, here + 4.0 * right))
     best = int(np.argmax(heights))
     return ends[best] if heights[best] > 0.0 else here
-
-
-__all__ = ["climb", "scan", "turn", "vertices"]

@@ -1,8 +1,8 @@
 """The exact solution of an RC network: its natural modes, in every case.
 
 C v' + G v = B u + D u' - i, with u the held voltages, B and D the conductances and capacitances to them, i the currents
-drawn out of the nodes. With Y G Yᵀ = 1 and an orthogonal U that makes U Y C Yᵀ Uᵀ diagonal (the time constants tau), the
-modes q, v = (U Y)ᵀ q, obey tau q' + q = U Y (B u + D u' - i).
+drawn out of the nodes. With Y G Yᵀ = 1 and an orthogonal U that makes U Y C Yᵀ Uᵀ diagonal (the time constants tau),
+the modes q, with v = (U Y)ᵀ q, obey tau q' + q = U Y (B u + D u' - i).
 """
 
 from collections.abc import Sequence
@@ -172,9 +172,8 @@ def _instant(shape: Shape, columns: Sequence[Column], sizes: Array) -> Flags | N
     present = sizes > 0.0
     if present.all():
         count = len(floating_groups(shape.free, columns))
-        return (
-            np.repeat(np.arange(shape.free)[:, None] >= shape.free - count, sizes.shape[1], axis=1) if count else None
-        )
+        late = np.arange(shape.free)[:, None] >= shape.free - count
+        return np.repeat(late, sizes.shape[1], axis=1) if count else None
     patterns, which = np.unique(present, axis=1, return_inverse=True)
     counts = np.array([_zeros(shape, columns, pattern) for pattern in patterns.T], dtype=np.intp)
     found: Flags = np.arange(shape.free)[:, None] >= shape.free - counts[which.reshape(-1)]

@@ -62,7 +62,8 @@ def _value_and_slope(rising: ExponentialSum, t: Array) -> tuple[Array, Array]:
     """Value and slope at t. [V], [V/s]; with ramps amplitudes may be huge, and only their change is exact"""
     if not rising.ramping:
         left = rising.amps * np.exp(-rising.rates * t)
-        return (rising.start - rising.amps.sum(axis=0)) + left.sum(axis=0), -(rising.rates * left).sum(axis=0)
+        rest = rising.start - rising.amps.sum(axis=0)
+        return np.asarray(rest + left.sum(axis=0)), np.asarray(-(rising.rates * left).sum(axis=0))
     fallen = rising.amps * np.expm1(-rising.rates * t)
     value = rising.start + rising.slope * t + fallen.sum(axis=0)
     return value, rising.slope - (rising.rates * (fallen + rising.amps)).sum(axis=0)

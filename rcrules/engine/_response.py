@@ -74,7 +74,7 @@ class Response:
             shares += self.modes.vectors[:, k] * row
         sums = [self._piece(piece, shares, held, offset) for piece in self.pieces]
         if self.rest is not None and free:
-            end = _summed(nodes, self.rest) + _summed(held, self.pieces[-1].volts) - offset
+            end = np.zeros(cases) + _summed(nodes, self.rest) + _summed(held, self.pieces[-1].volts) - offset
             sums[-1] = sums[-1].ending_at(end if self.modes.instant is None else self._kept(end, sums[-1]))
         return Signal(starts=self.starts, sums=tuple(sums), lengths=tuple(piece.length for piece in self.pieces))
 
@@ -110,7 +110,7 @@ def respond(modes: "Modes", drive: Drive, charged: Array) -> Response:
     modes: of the network
     drive: sources
     charged: capacitor voltages just before the first instant. [V], (c, case)
-    Charge on the capacitors of a mode is conserved over a jump; where the capacitors at a node contradict each other it is shared.
+    Charge is conserved over a jump; where capacitors at a node contradict each other they share it.
     """
     starts = np.ascontiguousarray(np.asarray(drive.starts, float).T)
     levels, slopes = (

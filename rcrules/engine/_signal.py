@@ -1,12 +1,13 @@
 """One quantity of a network over time, and what can be asked of it."""
 
 from dataclasses import dataclass
+from itertools import pairwise
 
 import numpy as np
 
 from rcrules.engine._exponential import ExponentialSum
 from rcrules.engine._shape import Array
-from rcrules.engine._zeros import Indices, zeros
+from rcrules.engine._zeros import zeros
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -42,7 +43,7 @@ class Signal:
         for start, found in zip(self.starts[1:], self.sums[1:], strict=True):
             later = t >= start
             value = np.where(later, found.at(np.where(later, t - start, 0.0)), value)
-        return value
+        return np.asarray(value)
 
     def first_crossing(self, direction: Array | float) -> Array:
         """First t >= 0 at which f >= 0 (direction +1) or f <= 0 (-1). [s], (case,); inf = never
@@ -149,12 +150,9 @@ def _above(found: ExponentialSum, marks: Array) -> Array:
     """Sum of the stretches between marks (mark, case) in which f is positive or zero. [s]"""
     total = np.zeros(marks.shape[1])
     tail = np.where(found.amps != 0.0, 1.0 / found.rates, 0.0).max(axis=0, initial=0.0) + 1.0
-    for left, right in zip(marks[:-1], marks[1:], strict=True):
+    for left, right in pairwise(marks):
         there = right > left
         middle = np.where(np.isfinite(right), 0.5 * (left + np.where(np.isfinite(right), right, 0.0)), left + tail)
         positive = there & (found.at(middle) >= 0.0)
         total = total + np.where(positive, np.where(there, right, 0.0) - left, 0.0)
     return total
-
-
-__all__ = ["Indices", "Signal"]
