@@ -5,16 +5,19 @@ from collections.abc import Mapping
 from dataclasses import replace
 from typing import Final
 
-from rcrules.errors import Place
+from rcrules.errors import Place, UserMistake
 from rcrules.readers._bom_tables import Table
 from rcrules.readers._export import Cell, ExportPart, Remark, Source
 from rcrules.readers._fitting import fitting
 from rcrules.readers._mistakes import refusal, shorten
 from rcrules.readers._references import MAX_REFERENCES, TooManyError, count_references, references
+from rcrules.readers._remarks import Remarks
 from rcrules.readers._table import Row
 
 _EMPTY: Final = frozenset({"", "~", "-", "--", "—"})
 _COUNT: Final = re.compile(r"(\d+)(?:[.,]0*)?")
+MAX_LISTED: Final = 400_000
+"""References of one file, each as often as it is listed."""
 _SHOWN: Final = 8
 _ENOUGH: Final = 4
 """Rows that must agree before quantities are taken as those of several boards."""
@@ -28,7 +31,8 @@ class PartList:
         self._parts: dict[str, ExportPart] = {}
         self._table_of: dict[str, int] = {}
         self._tables = 0
-        self._remarks: list[Remark] = []
+        self._listed = 0
+        self._remarks = Remarks()
         self._left_out: list[Row] = []
         self._starred: list[str] = []
 
@@ -38,7 +42,7 @@ class PartList:
 
     def remarks(self) -> tuple[Remark, ...]:
         """Everything odd, in the order of the file."""
-        remarks = list(self._remarks)
+        remarks = list(self._remarks.all())
         if self._left_out:
             lines = ", ".join(str(row.line) for row in self._left_out[:_SHOWN])
             more = f" and {len(self._left_out) - _SHOWN} more" if len(self._left_out) > _SHOWN else ""
@@ -54,11 +58,12 @@ class PartList:
     def add(self, table: Table) -> None:
         """Take in a table; what an earlier table says about a reference stands."""
         self._tables += 1
-        self._remarks.extend(Remark(place=self._place(line), text=text) for line, text in table.remarks)
+        for line, said in table.remarks:
+            self._remarks.add(self._place(line), said)
         factor = _boards(table)
         if factor > 1:
             said = f"every quantity is {factor} times the number of references; taken as for {factor} boards"
-            self._remarks.append(Remark(place=self._place(table.rows[0].line), text=said))
+            self._remarks.add(self._place(table.rows[0].line), said)
         for row in table.rows:
             self._add_row(table, row, factor)
 
@@ -72,6 +77,9 @@ class PartList:
                 self._left_out.append(row)
             return
         self._check_quantity(table, row, refs, wanted)
+        self._listed += len(refs)
+        if self._listed > MAX_LISTED:
+            raise self._too_many(row, f"more than {MAX_LISTED} references in all")
         entry = self._part(table, row, refs[0])
         for ref in refs:
             self._add_part(entry if ref == refs[0] else replace(entry, ref=ref))
@@ -80,20 +88,23 @@ class PartList:
         try:
             return references(text, wanted)
         except TooManyError as error:
-            raise refusal(
-                self._source.name,
-                "a cell stands for too many parts",
-                line=row.line,
-                found=str(error),
-                expected=f"at most {MAX_REFERENCES} references in a cell",
-                do="correct the ranges in this cell",
-            ) from error
+            raise self._too_many(row, str(error)) from error
+
+    def _too_many(self, row: Row, found: str) -> UserMistake:
+        return refusal(
+            self._source.name,
+            "the rows stand for too many parts",
+            line=row.line,
+            found=found,
+            expected=f"at most {MAX_REFERENCES} references in a cell and {MAX_LISTED} in a file",
+            do="correct the ranges of references",
+        )
 
     def _check_quantity(self, table: Table, row: Row, refs: tuple[str, ...], wanted: int | None) -> None:
         if wanted is not None and wanted != len(refs) and table.quantity is not None:
             place = self._place(row.line, row.columns[table.quantity])
             text = f"quantity {wanted}, but {len(refs)} references: {shorten(', '.join(refs))}"
-            self._remarks.append(Remark(place=place, text=text))
+            self._remarks.add(place, text)
 
     def _add_part(self, part: ExportPart) -> None:
         first = self._parts.get(part.ref)
@@ -107,8 +118,9 @@ class PartList:
         if one != other or self._table_of[part.ref] == self._tables:
             said = f" with value {other!r} instead of {one!r}" if one != other else ""
             text = f"{part.ref} is listed again{said}; line {first.place.line} stands"
-            self._remarks.append(Remark(place=part.place, text=text))
-        self._parts[part.ref] = _completed(first, part)
+            self._remarks.add(part.place, text)
+        if first.place != part.place:
+            self._parts[part.ref] = _completed(first, part)
 
     def _part(self, table: Table, row: Row, ref: str) -> ExportPart:
         value, at = row.cell(table.value), table.value

@@ -10,6 +10,7 @@ from rcrules.readers._columns import DESCRIPTION, plain
 from rcrules.readers._export import Cell, Export, ExportPart, ExportPin, Remark, Source
 from rcrules.readers._fitting import fitting
 from rcrules.readers._pin_types import pin_type
+from rcrules.readers._remarks import Remarks
 
 _SHEET_PROPERTIES: Final = frozenset({"sheetname", "sheetfile"})
 _NO: Final = frozenset({"0", "no", "false", "n"})
@@ -52,10 +53,11 @@ class LibraryPart:
 class Netlist:
     """Collects what a parser meets and gives it as an export."""
 
-    def __init__(self, source: Source, reader: str) -> None:
+    def __init__(self, source: Source, reader: str, assumed: tuple[Remark, ...] = ()) -> None:
         self.source, self.reader = source, reader
+        self._assumed = assumed
         self.title = ""
-        self.remarks: list[Remark] = []
+        self._remarks = Remarks()
         self._components: dict[str, Component] = {}
         self._library: dict[tuple[str, str], LibraryPart] = {}
         self._by_symbol: dict[str, LibraryPart] = {}
@@ -72,7 +74,7 @@ class Netlist:
 
     def remark(self, line: int, text: str) -> None:
         """Keep something odd that does not stop the run."""
-        self.remarks.append(Remark(place=self.place(line), text=text))
+        self._remarks.add(self.place(line), text)
 
     def add_component(self, component: Component) -> None:
         """Keep a component; of two with the same reference the first stands."""
@@ -103,15 +105,16 @@ class Netlist:
     def export(self) -> Export:
         """Everything collected, with pin names and types joined in from the library."""
         pins = self._pins()
+        parts = tuple(self._part(component) for component in self._components.values())
         return Export(
             reader=self.reader,
             source=self.source.name,
             sha256=hashlib.sha256(self.source.data).hexdigest(),
             kind="netlist",
-            parts=tuple(self._part(component) for component in self._components.values()),
+            parts=parts,
             pins=pins,
             nets=tuple(self._nets.items()),
-            remarks=tuple(self.remarks),
+            remarks=(*self._assumed, *self._remarks.all()),
             title=self.title,
         )
 

@@ -8,6 +8,7 @@ from rcrules.errors import Place
 from rcrules.readers._export import Cell, ExportPart, ExportPin, Remark, Source
 from rcrules.readers._fitting import fitting
 from rcrules.readers._pin_types import pin_type
+from rcrules.readers._remarks import Remarks
 from rcrules.readers._table import Row
 
 _JOINED: Final = re.compile(r"(.+?)[.\-:/]([^.\-:/]+)")
@@ -42,7 +43,7 @@ class PinRows:
         self._nets: dict[str, Place] = {}
         self._pins: dict[tuple[str, str, str], ExportPin] = {}
         self._net_of: dict[tuple[str, str], str] = {}
-        self.remarks: list[Remark] = []
+        self._remarks = Remarks()
 
     def parts(self) -> tuple[ExportPart, ...]:
         """Every part in the order of the file."""
@@ -55,6 +56,10 @@ class PinRows:
     def nets(self) -> tuple[tuple[str, Place], ...]:
         """Every net in the order of the file."""
         return tuple(self._nets.items())
+
+    def remarks(self) -> tuple[Remark, ...]:
+        """Everything odd, in the order of the file."""
+        return self._remarks.all()
 
     def add(self, row: Row) -> None:
         """Take in a row; comment rows (``#``) and repeated headers are the caller's to leave out."""
@@ -132,7 +137,7 @@ class PinRows:
         self._pins.setdefault((ref, number, net), pin)
 
     def _remark(self, row: Row, text: str) -> None:
-        self.remarks.append(Remark(place=self._place(row, None), text=text))
+        self._remarks.add(self._place(row, None), text)
 
     def _place(self, row: Row, index: int | None) -> Place:
         column = row.columns[index] if index is not None and index < len(row.columns) else None

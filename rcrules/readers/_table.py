@@ -11,6 +11,8 @@ from rcrules.readers._mistakes import refusal, shorten
 
 DELIMITERS: Final = (",", ";", "\t", "|")
 MAX_COLUMNS: Final = 1024
+MAX_CELL: Final = 131_072
+"""Characters of the longest cell."""
 _SAMPLE: Final = 400
 """Rows by which the delimiter is chosen."""
 
@@ -71,8 +73,10 @@ def _split(source: Source, text: str, delimiter: str, limit: int | None) -> tupl
             raise _not_closed(source, line, at - start + 1, rest)
         columns.append(at - start + 1)
         cells.append(_cell_text(quoted, rest))
-        if limit is None and len(cells) > MAX_COLUMNS:
-            raise refusal(source.name, "a row has too many cells", line=line, expected=f"at most {MAX_COLUMNS} columns")
+        if len(cells) > MAX_COLUMNS or match.end() - at > MAX_CELL:
+            if limit is not None:
+                return tuple(found)
+            raise _too_long(source, line, columns[-1])
         line += _line_ends(quoted) if quoted else 0
         at = match.end()
         if end == delimiter:
@@ -101,6 +105,17 @@ def _cell_text(quoted: str | None, rest: str) -> str:
 
 def _line_ends(text: str) -> int:
     return len(re.findall(r"\r\n|\n|\r", text))
+
+
+def _too_long(source: Source, line: int, column: int) -> Exception:
+    return refusal(
+        source.name,
+        "a row is too long",
+        line=line,
+        column=column,
+        expected=f"at most {MAX_COLUMNS} cells of {MAX_CELL} characters",
+        do="check that the file is a table and was not damaged",
+    )
 
 
 def _not_closed(source: Source, line: int, column: int, rest: str) -> Exception:

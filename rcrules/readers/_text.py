@@ -21,9 +21,9 @@ _MARKS: Final = (
 _LINE_END: Final = re.compile(r"\r\n|\n|\r")
 
 
-def head(source: Source) -> str:
+def head(source: Source, size: int = HEAD_SIZE) -> str:
     """The first characters of a source, without its byte order mark; for telling formats apart only."""
-    data = source.data[:HEAD_SIZE]
+    data = source.data[:size]
     encoding, mark = _declared(data)
     return data[mark:].decode(encoding or "utf-8", "replace")
 

@@ -7,6 +7,8 @@ from rcrules.readers._export import Source
 from rcrules.readers._mistakes import refusal
 from rcrules.readers._text import Lines, head
 
+_PROLOG: Final = 65_536
+"""Bytes within which the root element must start."""
 _SKIPPED: Final = re.compile(r"(?:\s++|<\?.*?\?>|<!--.*?-->)*+", re.DOTALL)
 _ROOT: Final = re.compile(r"<(?:[\w.-]+:)?([\w.-]+)")
 _DOCTYPE: Final = re.compile(r"<!DOCTYPE", re.IGNORECASE)
@@ -14,7 +16,7 @@ _DOCTYPE: Final = re.compile(r"<!DOCTYPE", re.IGNORECASE)
 
 def root_name(source: Source) -> str | None:
     """Local name of the root element, ``!DOCTYPE`` where one stands before it, None for no XML."""
-    text = head(source)
+    text = head(source, _PROLOG)
     if not text.lstrip().startswith("<"):
         return None
     start = _SKIPPED.match(text)
@@ -28,7 +30,7 @@ def root_name(source: Source) -> str | None:
 
 def refuse_doctype(source: Source) -> None:
     """Raise UserMistake where a document type stands before the root: none of our formats needs one."""
-    text = head(source)
+    text = head(source, _PROLOG)
     start = _SKIPPED.match(text)
     at = start.end() if start else 0
     if _DOCTYPE.match(text, at):

@@ -13,12 +13,14 @@ from rcrules.readers._table import DELIMITERS, Row, rows
 from rcrules.readers._text import decode, head
 
 NAME: Final = "bom"
+_STRAY: Final = 3
+"""Control characters in the head of a file from which on it is no text."""
 
 
 def claims(source: Source) -> bool:
     """True for text of at least two lines with a delimiter in them."""
     text = head(source)
-    if any(character < " " and character not in "\t\r\n" for character in text):
+    if sum(character < " " and character not in "\t\r\n" for character in text) > _STRAY:
         return False
     lines = [line for line in text.splitlines() if line.strip()]
     return sum(any(mark in line for mark in DELIMITERS) for line in lines) > 1

@@ -53,7 +53,7 @@ def read(source: Source, columns: Mapping[str, str]) -> Export:
         parts=pins.parts(),
         pins=pins.pins(),
         nets=pins.nets(),
-        remarks=(*remarks, *pins.remarks),
+        remarks=(*remarks, *pins.remarks()),
     )
 
 

@@ -7,7 +7,7 @@ from typing import Final
 from rcrules.readers._export import Export, Reader, Source
 from rcrules.readers._netlist import Component, Entry, LibraryPart, Netlist, Node
 from rcrules.readers._sexpr import Form, parse
-from rcrules.readers._text import Lines, decode, head
+from rcrules.readers._text import decode, head
 
 NAME: Final = "sexpr-netlist"
 _START: Final = re.compile(r'\s*\(\s*"?export"?(?=[\s()"])')
@@ -38,47 +38,43 @@ def read(source: Source, columns: Mapping[str, str]) -> Export:
     """Read the netlist form by form, each let go once it is understood. Raises UserMistake."""
     del columns  # a netlist has none
     text, remarks = decode(source)
-    lines = Lines(text)
-    netlist = Netlist(source, NAME)
-    netlist.remarks.extend(remarks)
+    netlist = Netlist(source, NAME, remarks)
 
-    def take(around: str, form: Form) -> bool:
-        taker = _TAKE.get((around, form.head))
-        if taker is None:
-            return False
-        taker(netlist, form, lines)
-        return True
+    def take(around: str | None, form: Form) -> bool:
+        taker = _TAKE.get((around or "", form.head or ""))
+        if taker is not None:
+            taker(netlist, form)
+        return around in _CONTAINERS
 
-    parse(source.name, text, lines, take)
+    parse(source.name, text, take)
     return netlist.export()
 
 
-def _take_title(netlist: Netlist, form: Form, lines: Lines) -> None:
-    del lines
+def _take_title(netlist: Netlist, form: Form) -> None:
     if not netlist.title:
         netlist.title = _resolved(form.text("title")).strip()
 
 
-def _take_component(netlist: Netlist, form: Form, lines: Lines) -> None:
-    component = Component(ref=form.text("ref").strip(), line=lines.line(form.at))
+def _take_component(netlist: Netlist, form: Form) -> None:
+    component = Component(ref=form.text("ref").strip(), line=form.line)
     for child in form.forms:
-        _fill(component, child, lines)
+        _fill(component, child)
     netlist.add_component(component)
 
 
-def _fill(component: Component, child: Form, lines: Lines) -> None:
+def _fill(component: Component, child: Form) -> None:
     match child.head:
         case "value":
-            component.value, component.value_line = _first(child), lines.line(child.at)
+            component.value, component.value_line = _first(child), child.line
         case "footprint":
             component.footprint = _first(child)
         case "description":
             component.description = _first(child)
         case "fields":
-            component.fields.extend(_entry(item, _first(item), lines) for item in child.forms)
+            component.fields.extend(_entry(item, _first(item)) for item in child.forms)
         case "property":
             value = child.find("value")
-            component.properties.append(_entry(child, None if value is None else _first(value), lines))
+            component.properties.append(_entry(child, None if value is None else _first(value)))
         case "libsource":
             component.library, component.symbol = _resolved(child.text("lib")), _resolved(child.text("part"))
             component.description = component.description or _resolved(child.text("description"))
@@ -88,12 +84,11 @@ def _fill(component: Component, child: Form, lines: Lines) -> None:
             component.variants.extend(_resolved(item.text("name")) for item in child.forms)
 
 
-def _entry(item: Form, text: str | None, lines: Lines) -> Entry:
-    return _resolved(item.text("name")), text, lines.line(item.at)
+def _entry(item: Form, text: str | None) -> Entry:
+    return _resolved(item.text("name")), text, item.line
 
 
-def _take_library_part(netlist: Netlist, form: Form, lines: Lines) -> None:
-    del lines
+def _take_library_part(netlist: Netlist, form: Form) -> None:
     names = [_resolved(form.text("part"))]
     pins: dict[str, tuple[str, str]] = {}
     for child in form.forms:
@@ -106,18 +101,18 @@ def _take_library_part(netlist: Netlist, form: Form, lines: Lines) -> None:
     netlist.add_library_part(_resolved(form.text("lib")), names, part)
 
 
-def _take_net(netlist: Netlist, form: Form, lines: Lines) -> None:
+def _take_net(netlist: Netlist, form: Form) -> None:
     nodes: list[Node] = []
     name = code = ""
     for child in form.forms:
         match child.head:
             case "node":
-                nodes.append(_node(child, lines.line(child.at)))
+                nodes.append(_node(child, child.line))
             case "name":
                 name = _first(child)
             case "code":
                 code = _first(child)
-    netlist.add_net(name, code, lines.line(form.at), nodes)
+    netlist.add_net(name, code, form.line, nodes)
 
 
 def _node(form: Form, line: int) -> Node:
@@ -134,8 +129,12 @@ _TAKE: Final = {
 }
 
 
+_CONTAINERS: Final = frozenset({"export", "design", "sheet", "components", "libparts", "libraries", "nets"})
+"""What stands directly in these is taken at once or needed nowhere."""
+
+
 def _first(form: Form) -> str:
-    return _resolved(form.atoms[0]) if form.atoms else ""
+    return _resolved(form.first())
 
 
 def _resolved(text: str) -> str:

@@ -43,7 +43,7 @@ def _elements(source: Source, data: bytes, skipped: int) -> Iterator[_Element]:
         BytesIO(data),
         events=("end",),
         tag=_TAGS,
-        resolve_entities=False,
+        resolve_entities="internal",
         no_network=True,
         load_dtd=False,
         attribute_defaults=False,
@@ -76,7 +76,7 @@ def _broken(source: Source, error: Exception, skipped: int) -> Exception:
         "the XML breaks off or is damaged",
         line=line + skipped if line else None,
         column=column or None,
-        found=shorten(str(getattr(error, "msg", error)), 160),
+        found=shorten(str(getattr(error, "msg", error)).partition(", use XML_")[0], 160),
         expected="one whole, well-formed XML document",
         do="export the netlist again",
     )
