@@ -1,5 +1,6 @@
 """Step 7: solved cases in, one quantity per file out."""
 
 from rcrules.measures._measure import Measure, Option, Theory
+from rcrules.measures._registry import registry
 
-__all__ = ["Measure", "Option", "Theory"]
+__all__ = ["Measure", "Option", "Theory", "registry"]

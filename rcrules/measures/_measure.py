@@ -45,3 +45,7 @@ class Measure:
     theory: Callable[[Structure, Array, Array], Theory]
     """Structure, lowest and highest of the columns -> what is proved."""
     options: Mapping[str, Option] = field(default_factory=dict)
+    poses: Literal["event", "network", "transfer", "states", "discharge"] = "event"
+    """What the structure is: a transient, the network at rest, a transfer from its source, DC states, supplies left open."""
+    scale_free: bool = False
+    """True: a single source of unknown voltage does not matter, because the measure counts in parts of its own step."""

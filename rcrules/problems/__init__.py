@@ -1,1 +1,39 @@
 """Step 6: a structure and its parameter columns in, solved cases and bounds out."""
+
+from rcrules.engine import Bounds
+from rcrules.problems._bounds import Failure, Quantity, Request, solve_bounds
+from rcrules.problems._solved import Solved, corner_omega, solved, steady_states
+from rcrules.problems._structure import (
+    Array,
+    Form,
+    LevelForm,
+    Parameter,
+    Problem,
+    Structure,
+    Waveform,
+    column,
+    constant,
+    evaluate,
+)
+
+__all__ = [
+    "Array",
+    "Bounds",
+    "Failure",
+    "Form",
+    "LevelForm",
+    "Parameter",
+    "Problem",
+    "Quantity",
+    "Request",
+    "Solved",
+    "Structure",
+    "Waveform",
+    "column",
+    "constant",
+    "corner_omega",
+    "evaluate",
+    "solve_bounds",
+    "solved",
+    "steady_states",
+]

@@ -108,8 +108,8 @@ class Structure:
     """Index of the observed resistor or capacitor in the shape, for measures of parts."""
     rating: Form | None = None
     """Rated voltage [V] or power [W] of the observed part."""
-    reference: Form = ()
-    """Time from which delays count [s]: () = 0, the event; else the time at which the supply is valid."""
+    reference: tuple[int, LevelForm] | None = None
+    """Where delays count from: None = the event; else the first time at which this held terminal reaches this level."""
     levels: tuple[tuple[str, LevelForm], ...] = ()
     """Levels by option name."""
     states: tuple[tuple[Form, ...], ...] = ()
@@ -134,6 +134,12 @@ class Problem:
 
     structure: Structure
     parameters: tuple[Parameter, ...]
+
+    def given_box(self) -> tuple[Array, Array, Array]:
+        """The same over what the inputs give alone; assumed effects left out."""
+        rows = [(item.given_low, item.nominal, item.given_high) for item in self.parameters]
+        table = np.array(rows, dtype=float).reshape(-1, 3)
+        return table[:, 0], table[:, 1], table[:, 2]
 
     def box(self) -> tuple[Array, Array, Array]:
         """Lowest, nominal, highest of every column, shape (column,) each."""

@@ -1,0 +1,95 @@
+"""A circuit while a problem is being posed: terminals by name, branches between them."""
+
+from collections import deque
+from collections.abc import Iterable
+from dataclasses import dataclass, field
+
+from rcrules.engine import Shape
+from rcrules.events._unmeasurable import Unmeasurable
+from rcrules.problems import Form
+
+ZERO = "0 V"
+"""The terminal that stands for all grounds."""
+LARGEST = 60
+"""Free terminals beyond which a network is not solved."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Arm:
+    """A resistor or capacitor of the circuit."""
+
+    ref: str
+    kind: str
+    a: str
+    b: str
+    value: Form
+
+
+@dataclass(slots=True)
+class Circuit:
+    """Terminals and branches; held terminals are numbered after the free ones."""
+
+    free: list[str] = field(default_factory=list)
+    held: list[str] = field(default_factory=list)
+    arms: list[Arm] = field(default_factory=list)
+    draws: list[tuple[str, Form]] = field(default_factory=list)
+    """Free terminal, current drawn out of it [A]."""
+    joints: dict[str, str] = field(default_factory=dict)
+    """Held terminal -> the joint whose voltage it has; the common 0 V has none."""
+
+    def terminal(self, name: str) -> int:
+        """Number of a terminal. Raises ValueError."""
+        if name in self.free:
+            return self.free.index(name)
+        return len(self.free) + self.held.index(name)
+
+    def hold(self, name: str, joint: str | None = None) -> str:
+        """Make sure that a held terminal is there, with the voltage of a joint."""
+        if name not in self.held:
+            self.held.append(name)
+        if joint is not None:
+            self.joints[name] = joint
+        return name
+
+    def amps(self) -> tuple[tuple[int, Form], ...]:
+        """Currents drawn, by terminal number."""
+        return tuple((self.terminal(name), form) for name, form in self.draws)
+
+    def of(self, kind: str) -> list[Arm]:
+        """Branches of a kind, in the order of the shape."""
+        return [arm for arm in self.arms if arm.kind == kind]
+
+    def values(self, kind: str) -> tuple[Form, ...]:
+        """Their values."""
+        return tuple(arm.value for arm in self.of(kind))
+
+    def shape(self, further: Iterable[Arm] = ()) -> Shape:
+        """The topology, with further resistors after the circuit's own. Raises Unmeasurable where it is too large."""
+        if len(self.free) > LARGEST:
+            raise Unmeasurable(f"the network has {len(self.free)} nodes; more than {LARGEST} are not solved")
+        index = {name: number for number, name in enumerate((*self.free, *self.held))}
+        resistors = [(index[arm.a], index[arm.b]) for arm in (*self.of("resistor"), *further)]
+        capacitors = [(index[arm.a], index[arm.b]) for arm in self.of("capacitor")]
+        return Shape(len(self.free), len(self.held), tuple(resistors), tuple(capacitors))
+
+    def floating(self, further: Iterable[Arm] = ()) -> list[str]:
+        """Free terminals without a resistive path to a held one."""
+        reached = self.driven(self.held, further)
+        return [name for name in self.free if name not in reached]
+
+    def driven(self, sources: Iterable[str], further: Iterable[Arm] = ()) -> dict[str, int]:
+        """Free terminals that resistors join to any of the sources through free terminals -> number of resistors between."""
+        free = set(self.free)
+        next_to: dict[str, list[str]] = {}
+        for arm in (*self.of("resistor"), *further):
+            next_to.setdefault(arm.a, []).append(arm.b)
+            next_to.setdefault(arm.b, []).append(arm.a)
+        reached: dict[str, int] = {}
+        queue = deque((name, 0) for name in sources)
+        while queue:
+            here, steps = queue.popleft()
+            for there in next_to.get(here, ()):
+                if there in free and there not in reached:
+                    reached[there] = steps + 1
+                    queue.append((there, steps + 1))
+        return reached

@@ -1,0 +1,129 @@
+"""What discharges a capacitor once all supplies are open."""
+
+from collections.abc import Mapping, Sequence
+from dataclasses import dataclass, replace
+
+from rcrules.engine import Shape
+from rcrules.events._bench import Bench
+from rcrules.events._bleed import Wires, bleeders
+from rcrules.events._circuit import ZERO, Arm, Circuit
+from rcrules.events._levels import Leveller
+from rcrules.events._options import OptionValue, levels_of
+from rcrules.events._part import place_of
+from rcrules.events._sources import Sources, still
+from rcrules.events._table import LEAST_OHMS, Table
+from rcrules.events._unmeasurable import Unmeasurable
+from rcrules.measures import Measure
+from rcrules.parts import RatedPart
+from rcrules.problems import Form, Problem, Structure, constant
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class _Case:
+    """One capacitor to be discharged."""
+
+    bench: Bench
+    table: Table
+    sources: Sources
+    ends: tuple[str, str]
+    """The end that is positive before, then the other."""
+    wires: Wires
+    level: Leveller
+
+
+def pose_discharge(bench: Bench, part: RatedPart, measure: Measure, options: Mapping[str, OptionValue]) -> Problem:
+    """The capacitor with everything that hangs on it, from the steady state with all supplies on. Raises Unmeasurable."""
+    branch, table = place_of(bench, part).branch, Table()
+    sources = Sources(bench=bench, table=table)
+    ends = _oriented(sources, (branch.a, branch.b))
+    wires = bleeders(bench, sources, branch)
+    circuit = Circuit()
+    circuit.hold(ZERO)
+    leveller = Leveller(bench=bench, circuit=circuit, table=table)
+    case = _Case(bench=bench, table=table, sources=sources, ends=ends, wires=wires, level=leveller)
+    to = levels_of(measure, options)["to"]
+    if to.of is not None or to.nets or to.edge:
+        raise Unmeasurable("a discharge is measured down to a fixed voltage")
+    structure = _falling(case, circuit) if set(ends) & wires.live else _endless(case)
+    level = leveller.form("to", to, rising=False)
+    return Problem(structure=replace(structure, levels=(("to", level),)), parameters=tuple(table.parameters))
+
+
+def _falling(case: _Case, circuit: Circuit) -> Structure:
+    """Supply nets are free; before the event each hangs on its source."""
+    circuit.free = case.wires.order(case.ends)
+    parts = case.bench.board.parts
+    circuit.arms = [
+        Arm(ref=item.ref, kind=item.kind, a=item.a, b=item.b, value=case.table.part(parts[item.ref]))
+        for item in case.wires.branches
+    ]
+    feeds = []
+    for joint in [name for name in circuit.free if case.sources.kind(name) == "supply"]:
+        name = circuit.hold(f"{joint} source", joint)
+        feeds.append(Arm(ref=name, kind="resistor", a=name, b=joint, value=constant(LEAST_OHMS)))
+    if circuit.floating(feeds):
+        raise Unmeasurable(f"no resistive path from {circuit.floating(feeds)[0]} to a source or ground")
+    pairs, farads = _merged(circuit)
+    ohms = circuit.values("resistor")
+    waves = [case.sources.supply(circuit.joints[name]) if name in circuit.joints else () for name in circuit.held]
+    return Structure(
+        shape=_shape(circuit, (), pairs),
+        ohms=ohms,
+        farads=farads,
+        waveforms=tuple(still(volts) for volts in waves),
+        earlier=(_shape(circuit, feeds, pairs), (*ohms, *(item.value for item in feeds))),
+        at=circuit.terminal(case.ends[0]),
+        against=None if case.ends[1] == ZERO else circuit.terminal(case.ends[1]),
+        rising=False,
+    )
+
+
+def _endless(case: _Case) -> Structure:
+    """Nothing discharges it; how high it was charged decides whether that matters."""
+    return Structure(
+        shape=Shape(0, 2, (), ()),
+        ohms=(),
+        farads=(),
+        waveforms=tuple(still(_charged(case, joint)) for joint in case.ends),
+        at=0,
+        against=1,
+        rising=False,
+        options=(("endless", 1.0),),
+    )
+
+
+def _charged(case: _Case, joint: str) -> Form:
+    if joint == ZERO:
+        return ()
+    if case.sources.kind(joint) != "supply":
+        raise Unmeasurable(f"no resistive path from {joint} to ground: its voltage after power-off is not known")
+    return case.sources.supply(joint)
+
+
+def _shape(circuit: Circuit, feeds: Sequence[Arm], capacitors: tuple[tuple[int, int], ...]) -> Shape:
+    whole = circuit.shape(feeds)
+    return Shape(whole.free, whole.held, whole.resistors, capacitors)
+
+
+def _merged(circuit: Circuit) -> tuple[tuple[tuple[int, int], ...], tuple[Form, ...]]:
+    """Parallel capacitors as one, with the sum of their capacitances."""
+    sums: dict[tuple[int, int], Form] = {}
+    for item in circuit.of("capacitor"):
+        a, b = sorted((circuit.terminal(item.a), circuit.terminal(item.b)))
+        sums[a, b] = sums.get((a, b), ()) + item.value
+    return tuple(sums), tuple(sums.values())
+
+
+def _oriented(sources: Sources, joints: tuple[str, str]) -> tuple[str, str]:
+    """The ends of the capacitor, the one with the higher voltage first; a free end counts as above 0 V."""
+
+    def volts(joint: str) -> float:
+        spread = sources.volts(joint) if sources.kind(joint) == "supply" else None
+        return spread.nominal if spread else (0.0 if sources.kind(joint) == "ground" else 1e-9)
+
+    first, second = sorted(joints, key=volts, reverse=True)
+    return _terminal(sources, first), _terminal(sources, second)
+
+
+def _terminal(sources: Sources, joint: str) -> str:
+    return ZERO if sources.kind(joint) == "ground" else joint

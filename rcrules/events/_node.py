@@ -1,0 +1,133 @@
+"""A question about a node: its network, its event and its levels in numbers."""
+
+from collections.abc import Mapping, Sequence
+from dataclasses import dataclass, replace
+
+from rcrules.events._bench import Bench
+from rcrules.events._build import build, terminal_of
+from rcrules.events._circuit import Arm, Circuit
+from rcrules.events._diodes import check_diodes
+from rcrules.events._levels import Leveller
+from rcrules.events._options import OptionValue, levels_of, plain_of
+from rcrules.events._rest import at_rest
+from rcrules.events._sources import PROJECT, Sources
+from rcrules.events._table import Table
+from rcrules.events._transients import Scene, Transient, transient
+from rcrules.events._unmeasurable import Unmeasurable
+from rcrules.levels import Level
+from rcrules.measures import Measure
+from rcrules.networks import Node
+from rcrules.problems import LevelForm, Problem, Structure, solved
+
+STEPS = ("step-up", "step-down")
+
+
+def pose_node(bench: Bench, node: Node, measure: Measure, options: Mapping[str, OptionValue]) -> Problem:
+    """The problem of a measure at a node. Raises Unmeasurable."""
+    if node.active is not None:
+        raise Unmeasurable(f"active network: {node.active}")
+    if measure.poses != "event" or node.across is not None:
+        return at_rest(bench, node, measure, options)
+    levels = levels_of(measure, options)
+    event = str(options["event"])
+    relative = measure.scale_free and all(level.of == "step" for level in levels.values())
+    table = Table()
+    network = bench.network(node)
+    unit = relative and event in STEPS
+    circuit = build(bench, network, table, [node.joint], currents=not unit)
+    sources = Sources(bench=bench, table=table)
+    leveller = Leveller(bench=bench, circuit=circuit, table=table, node=node)
+    _hold_followed(bench, circuit, leveller, levels)
+    scene = Scene(bench=bench, network=network, circuit=circuit, sources=sources, joint=node.joint, unit=relative)
+    found = transient(scene, event)
+    check_diodes(scene, found)
+    structure = replace(_structure(circuit, found), at=circuit.terminal(node.joint), options=plain_of(measure, options))
+    structure = replace(structure, rising=_rises(scene, found, structure, table))
+    forms = tuple((name, leveller.form(name, level, rising=structure.rising)) for name, level in levels.items())
+    reference = _reference(scene, found, str(options.get("from", "event")))
+    return Problem(structure=replace(structure, levels=forms, reference=reference), parameters=tuple(table.parameters))
+
+
+def _hold_followed(bench: Bench, circuit: Circuit, leveller: Leveller, levels: Mapping[str, Level]) -> None:
+    """Nets that levels follow are held, whichever way the node moves."""
+    for level in levels.values():
+        for rising in (True, False) if level.edge else (True,):
+            for joint in leveller.nets(level, rising=rising):
+                terminal_of(bench, circuit, joint)
+
+
+def _structure(circuit: Circuit, event: Transient) -> Structure:
+    _check_paths(circuit, event.after)
+    earlier = None
+    if event.before != event.after and not event.empty:
+        _check_paths(circuit, event.before)
+        ohms = (*circuit.values("resistor"), *(arm.value for arm in event.before))
+        earlier = (circuit.shape(event.before), ohms)
+    return Structure(
+        shape=circuit.shape(event.after),
+        ohms=(*circuit.values("resistor"), *(arm.value for arm in event.after)),
+        farads=circuit.values("capacitor"),
+        waveforms=tuple(event.waves[name] for name in circuit.held),
+        amps=circuit.amps(),
+        earlier=earlier,
+        empty=event.empty,
+    )
+
+
+def _check_paths(circuit: Circuit, contacts: Sequence[Arm]) -> None:
+    floating = circuit.floating(contacts)
+    if floating:
+        raise Unmeasurable(f"no resistive path from {floating[0]} to a source or ground")
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class _Start:
+    """Observed voltage before the event, just after it and in the end, at nominal values. [V]"""
+
+    before: float
+    initial: float
+    final: float
+
+
+def _rises(scene: Scene, event: Transient, structure: Structure, table: Table) -> bool:
+    """Direction of the change: from just after the event to the end; for a pulse that returns, that of the return."""
+    joints = [scene.circuit.joints[name] for name in event.movers]
+    spreads = [scene.sources.volts(joint) for joint in joints]
+    plain = bool(joints) and all(spread is None or spread.low >= 0.0 for spread in spreads)
+    pushing = any(name in event.movers for arm in scene.circuit.of("capacitor") for name in (arm.a, arm.b))
+    if plain and not pushing and not scene.circuit.draws and scene.joint in scene.circuit.driven(event.movers, event.after):
+        wave = structure.waveforms[scene.circuit.held.index(event.movers[0])]
+        return wave.before == () and wave.points[-1][1] != ()
+    start = _nominal(structure, table)
+    least = 1e-9 * max(abs(start.before), abs(start.initial), abs(start.final), 1e-9)
+    if abs(start.final - start.initial) > least:
+        return start.final > start.initial
+    return start.final > start.before + least
+
+
+def _nominal(structure: Structure, table: Table) -> _Start:
+    _, nominal, _ = Problem(structure=structure, parameters=tuple(table.parameters)).box()
+    case = solved(structure, nominal[None, :])
+    return _Start(before=float(case.start[0]), initial=float(case.signal.initial()[0]), final=float(case.final[0]))
+
+
+def _reference(scene: Scene, event: Transient, origin: str) -> tuple[int, LevelForm] | None:
+    """Where time counts from. Raises Unmeasurable where it is a supply of which rise or valid level are not known."""
+    if origin == "event":
+        return None
+    if not event.empty or not event.movers:
+        raise Unmeasurable(f"no supply becomes valid at {scene.joint} in this event")
+    name = min(event.movers, key=lambda mover: (mover not in _fed(scene), mover))
+    joint = scene.circuit.joints[name]
+    valid = scene.bench.supply_fact(joint, lambda facts: facts.valid)
+    missing = [word for word, known in (("valid", valid), ("rise", scene.sources.rise(joint))) if known is None]
+    if valid is None or missing:
+        lines = "  ".join(f'{word} = "…"' for word in missing)
+        raise Unmeasurable(f"{' and '.join(missing)} of {joint} not given", f'[supply."{joint}"] {lines}')
+    offset = scene.sources.table.given(f"{joint} valid", valid, PROJECT)
+    return scene.circuit.terminal(name), LevelForm(kind="voltage", offset=offset)
+
+
+def _fed(scene: Scene) -> set[str]:
+    """Held terminals that feed the joint through resistors."""
+    return {name for name in scene.circuit.held if scene.joint in scene.circuit.driven([name])}

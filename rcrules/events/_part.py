@@ -1,0 +1,175 @@
+"""A question about a capacitor or resistor: the DC states of all sources around it, or an event."""
+
+from collections.abc import Mapping, Sequence
+from dataclasses import dataclass
+from itertools import product
+
+from rcrules.events._bench import Bench
+from rcrules.events._build import build, terminal_of
+from rcrules.events._circuit import ZERO, Arm, Circuit
+from rcrules.events._contacts import arm
+from rcrules.events._options import OptionValue, plain_of
+from rcrules.events._sources import Sources, moved
+from rcrules.events._table import Table
+from rcrules.events._transients import Scene, transient
+from rcrules.events._unmeasurable import Unmeasurable
+from rcrules.measures import Measure
+from rcrules.networks import Branch, Network
+from rcrules.parts import Known, RatedPart
+from rcrules.problems import Form, Problem, Structure, Waveform, constant
+
+MOST_SOURCES = 8
+"""Sources of which every combination is tried."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Place:
+    """Where a part is: its branch, and the network around it (of its own where both ends are held)."""
+
+    branch: Branch
+    network: Network
+
+
+def place_of(bench: Bench, part: RatedPart) -> Place:
+    """Where a part is. Raises Unmeasurable where it has not two ends on two joints."""
+    if part.ref in bench.network_of_part:
+        network, branch = bench.network_of_part[part.ref]
+        return Place(branch=branch, network=network)
+    found = bench.branch(part)
+    if found is None or found.a == found.b:
+        raise Unmeasurable(f"{part.ref} does not lie between two nets")
+    for joint in (found.a, found.b):
+        if bench.held(joint) is None:
+            raise Unmeasurable(f"nothing holds {joint}")
+    lone = Network(id="", branches=(found,), free=(), held=(found.a, found.b), nodes=())
+    return Place(branch=found, network=lone)
+
+
+def pose_states(bench: Bench, part: RatedPart, measure: Measure, options: Mapping[str, OptionValue]) -> Problem:
+    """The DC states around a part, and the transient where that may go further. Raises Unmeasurable."""
+    place, table = place_of(bench, part), Table()
+    circuit, sources, ends = _circuit(bench, place, table)
+    closed = tuple(arm(bench, circuit, table, item) for item in place.network.contacts)
+    for contacts in ((), closed) if closed else ((),):
+        _check(circuit, place, contacts)
+    wants = str(options.get("extreme", "most"))
+    signed = part.polarised and measure.name == "applied_voltage"
+    states = _states(circuit, sources, ends, least=wants == "least", signed=signed)
+    waves, transient_matters = _switched_on(circuit, sources)
+    ohms = circuit.values("resistor")
+    structure = Structure(
+        shape=circuit.shape(),
+        ohms=ohms,
+        farads=circuit.values("capacitor"),
+        waveforms=waves,
+        amps=circuit.amps(),
+        earlier=(circuit.shape(closed), (*ohms, *(item.value for item in closed))) if closed else None,
+        empty=True,
+        at=circuit.terminal(ends[0]),
+        against=circuit.terminal(ends[1]),
+        element=_element(circuit, part),
+        rating=_rating(part, measure),
+        states=states,
+        options=(*plain_of(measure, options), ("transient", float(transient_matters)), ("signed", float(signed))),
+    )
+    return Problem(structure=structure, parameters=tuple(table.parameters))
+
+
+def pose_part_event(bench: Bench, part: RatedPart, measure: Measure, options: Mapping[str, OptionValue]) -> Problem:
+    """A part through an event. Raises Unmeasurable."""
+    place, table = place_of(bench, part), Table()
+    circuit, sources, ends = _circuit(bench, place, table)
+    watched = next((end for end in ends if end in circuit.free), ends[0])
+    scene = Scene(bench=bench, network=place.network, circuit=circuit, sources=sources, joint=watched, unit=False)
+    event = transient(scene, str(options["event"]))
+    _check(circuit, place, event.after)
+    earlier = None
+    if event.before != event.after and not event.empty:
+        _check(circuit, place, event.before)
+        ohms = (*circuit.values("resistor"), *(item.value for item in event.before))
+        earlier = (circuit.shape(event.before), ohms)
+    structure = Structure(
+        shape=circuit.shape(event.after),
+        ohms=(*circuit.values("resistor"), *(item.value for item in event.after)),
+        farads=circuit.values("capacitor"),
+        waveforms=tuple(event.waves[name] for name in circuit.held),
+        amps=circuit.amps(),
+        earlier=earlier,
+        empty=event.empty,
+        at=circuit.terminal(ends[0]),
+        against=circuit.terminal(ends[1]),
+        element=_element(circuit, part),
+        options=plain_of(measure, options),
+    )
+    return Problem(structure=structure, parameters=tuple(table.parameters))
+
+
+def _circuit(bench: Bench, place: Place, table: Table) -> tuple[Circuit, Sources, tuple[str, str]]:
+    branch = place.branch
+    for node in place.network.nodes:
+        if node.active is not None and node.joint in (branch.a, branch.b):
+            raise Unmeasurable(f"active network: {node.active}")
+    circuit = build(bench, place.network, table, [branch.a, branch.b])
+    ends = terminal_of(bench, circuit, branch.a), terminal_of(bench, circuit, branch.b)
+    if place.network.diodes:
+        raise Unmeasurable(f"diode {place.network.diodes[0].ref} may conduct, and diodes are not modelled")
+    return circuit, Sources(bench=bench, table=table), ends
+
+
+def _check(circuit: Circuit, place: Place, contacts: Sequence[Arm]) -> None:
+    floating = circuit.floating(contacts)
+    if floating:
+        raise Unmeasurable(f"no resistive path from {floating[0]} to a source or ground around {place.branch.ref}")
+
+
+def _element(circuit: Circuit, part: RatedPart) -> int:
+    return next(index for index, item in enumerate(circuit.of(part.kind)) if item.ref == part.ref)
+
+
+def _rating(part: RatedPart, measure: Measure) -> Form | None:
+    """The rating that a ratio counts in. Raises Unmeasurable where it is not known."""
+    if measure.name != "voltage_ratio":
+        return None
+    if not isinstance(part.rated_voltage, Known):
+        ask = f'[part."{part.ref}"] rated-voltage = "…"'
+        raise Unmeasurable(f"rated voltage of {part.ref}: {part.rated_voltage.why}", ask)
+    return constant(part.rated_voltage.si)
+
+
+def _ends(circuit: Circuit, sources: Sources, name: str) -> tuple[Form, Form]:
+    """Lowest and highest voltage of a held terminal over its states. Raises Unmeasurable where they are not known."""
+    joint = circuit.joints.get(name)
+    if joint is None:
+        return (), ()
+    if sources.kind(joint) != "supply":
+        swing = sources.swing(joint)
+        return constant(swing.low) if swing.low else (), constant(swing.high) if swing.high else ()
+    volts, spread = sources.supply(joint), sources.volts(joint)
+    return (volts, ()) if spread is not None and spread.nominal < 0.0 else ((), volts)
+
+
+def _states(
+    circuit: Circuit, sources: Sources, ends: tuple[str, str], *, least: bool, signed: bool
+) -> tuple[tuple[Form, ...], ...]:
+    """Every combination of lowest and highest; one where the other end is at 0 V and nothing is ever negative."""
+    levels = [_ends(circuit, sources, name) for name in circuit.held]
+    spreads = [sources.volts(joint) for joint in circuit.joints.values()]
+    positive = all(spread is not None and spread.low >= 0.0 for spread in spreads) and not circuit.draws
+    if ZERO in ends and positive and (ends[1] == ZERO or not signed):
+        return (tuple(low if least else high for low, high in levels),)
+    if sum(low != high for low, high in levels) > MOST_SOURCES:
+        raise Unmeasurable(f"more than {MOST_SOURCES} sources act on it")
+    return tuple(dict.fromkeys(product(*levels)))
+
+
+def _switched_on(circuit: Circuit, sources: Sources) -> tuple[tuple[Waveform, ...], bool]:
+    """All sources from 0 V to their highest at once, and whether a capacitor lets any voltage go beyond its DC states."""
+    waves, bridging = [], False
+    for name in circuit.held:
+        _, high = _ends(circuit, sources, name)
+        waves.append(moved((), high))
+    for item in circuit.of("capacitor"):
+        held = [end for end in (item.a, item.b) if end != ZERO and end in circuit.held]
+        free = [end for end in (item.a, item.b) if end in circuit.free]
+        bridging = bridging or len(free) == 2 or (len(free) == 1 and bool(held))
+    return tuple(waves), bridging and bool(circuit.free)

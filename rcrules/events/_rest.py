@@ -1,0 +1,67 @@
+"""Questions about a network without an event: time constants and transfers."""
+
+from collections.abc import Mapping
+from dataclasses import replace
+
+from rcrules.events._bench import Bench
+from rcrules.events._build import build
+from rcrules.events._circuit import ZERO, Circuit
+from rcrules.events._contacts import switched
+from rcrules.events._options import OptionValue, plain_of
+from rcrules.events._sources import Sources, still
+from rcrules.events._table import Table
+from rcrules.events._transients import Scene, mover
+from rcrules.events._unmeasurable import Unmeasurable
+from rcrules.measures import Measure
+from rcrules.networks import Network, Node
+from rcrules.problems import Problem, Structure
+
+
+def at_rest(bench: Bench, node: Node, measure: Measure, options: Mapping[str, OptionValue]) -> Problem:
+    """The network with its contacts as they usually are. Raises Unmeasurable."""
+    if measure.poses == "event":
+        raise Unmeasurable(f"both ends of {node.net} are held: nothing moves there")
+    table = Table()
+    network = _freed(bench.network(node), node)
+    circuit = build(bench, network, table, [node.joint], currents=False)
+    contacts = switched(bench, network, circuit, table, node.joint, "none").after
+    floating = circuit.floating(contacts)
+    if floating:
+        raise Unmeasurable(f"no resistive path from {floating[0]} to a source or ground")
+    if not circuit.of("capacitor"):
+        raise Unmeasurable(f"no capacitor at {node.net}")
+    structure = Structure(
+        shape=circuit.shape(contacts),
+        ohms=(*circuit.values("resistor"), *(arm.value for arm in contacts)),
+        farads=circuit.values("capacitor"),
+        waveforms=tuple(still(()) for _ in circuit.held),
+        at=circuit.terminal(node.joint),
+        options=plain_of(measure, options),
+    )
+    if measure.poses == "transfer":
+        scene = Scene(
+            bench=bench,
+            network=network,
+            circuit=circuit,
+            sources=Sources(bench=bench, table=table),
+            joint=node.joint,
+            unit=True,
+        )
+        source = float(circuit.terminal(mover(scene)))
+        structure = replace(structure, options=(*structure.options, ("source", source), ("passes", _passes(circuit, node))))
+    return Problem(structure=structure, parameters=tuple(table.parameters))
+
+
+def _passes(circuit: Circuit, node: Node) -> str:
+    """``low`` where resistors lead to a source other than 0 V, else ``high``."""
+    sources = [name for name in circuit.held if name != ZERO]
+    return "low" if node.joint in circuit.driven(sources) and node.role != "high-pass" else "high"
+
+
+def _freed(network: Network, node: Node) -> Network:
+    """Of a bridged pair the first joint is let go and the second held."""
+    if node.across is None:
+        return network
+    pair = {node.joint, node.across}
+    branches = tuple(item for item in network.branches if {item.a, item.b} == pair)
+    return replace(network, branches=branches, free=(node.joint,), held=(node.across,), contacts=(), diodes=())

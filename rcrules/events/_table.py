@@ -1,0 +1,94 @@
+"""The parameter table while a problem is being posed: the only home of uncertainty."""
+
+from dataclasses import dataclass, field
+
+from rcrules.events._unmeasurable import Unmeasurable
+from rcrules.parts import RatedPart, Unknown
+from rcrules.problems import Form, Parameter, column, constant
+from rcrules.quantities import Spread
+
+LEAST_OHMS = 1e-9
+"""What stands for 0 Ω; its effect is below the precision of any answer."""
+
+
+@dataclass(slots=True)
+class Table:
+    """Parameters by name, each once."""
+
+    parameters: list[Parameter] = field(default_factory=list)
+    forms: dict[str, Form] = field(default_factory=dict)
+
+    def part(self, part: RatedPart) -> Form:
+        """The column of a resistor's or capacitor's value. Raises Unmeasurable where it is not known."""
+        if part.ref in self.forms:
+            return self.forms[part.ref]
+        if isinstance(part.value, Unknown):
+            raise Unmeasurable(f"value of {part.ref}: {part.value.why}", f'[part."{part.ref}"] value = "…"')
+        (low, nominal, high), (given_low, _, given_high) = part.bounds(), part.bounds(given_only=True)
+        least = LEAST_OHMS if part.kind == "resistor" else 0.0
+        assumed = [share for share in part.shares if not share.given]
+        return self.add(
+            Parameter(
+                name=part.ref,
+                unit="Ω" if part.kind == "resistor" else "F",
+                low=max(low, least),
+                nominal=max(nominal, least),
+                high=max(high, least),
+                given_low=max(given_low, least),
+                given_high=max(given_high, least),
+                origin=", ".join(share.origin for share in part.shares) or part.value.origin,
+                assumed=tuple(share.origin for share in assumed),
+                ask=next((share.ask for share in assumed if share.ask), ""),
+            )
+        )
+
+    def given(self, name: str, spread: Spread, origin: str, *, least: float | None = None) -> Form:
+        """A number that an input gives; one without spread is no parameter."""
+        if name in self.forms:
+            return self.forms[name]
+        low, nominal, high = (_at_least(value, least) for value in (spread.low, spread.nominal, spread.high))
+        if low == high:
+            self.forms[name] = constant(nominal)
+            return self.forms[name]
+        return self.add(
+            Parameter(
+                name=name,
+                unit=spread.unit,
+                low=low,
+                nominal=nominal,
+                high=high,
+                given_low=low,
+                given_high=high,
+                origin=origin,
+            )
+        )
+
+    def assumed(self, name: str, spread: Spread, text: str, ask: str, *, given: Spread | None = None) -> Form:
+        """A number of which the spread, or what goes beyond ``given``, is an assumption."""
+        if name in self.forms:
+            return self.forms[name]
+        inner = given or Spread(low=spread.nominal, nominal=spread.nominal, high=spread.nominal, unit=spread.unit)
+        return self.add(
+            Parameter(
+                name=name,
+                unit=spread.unit,
+                low=spread.low,
+                nominal=spread.nominal,
+                high=spread.high,
+                given_low=inner.low,
+                given_high=inner.high,
+                origin=text,
+                assumed=(text,),
+                ask=ask,
+            )
+        )
+
+    def add(self, parameter: Parameter) -> Form:
+        """A new column."""
+        self.forms[parameter.name] = column(len(self.parameters))
+        self.parameters.append(parameter)
+        return self.forms[parameter.name]
+
+
+def _at_least(value: float, least: float | None) -> float:
+    return value if least is None else max(value, least)

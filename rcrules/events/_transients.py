@@ -1,0 +1,133 @@
+"""What each held terminal and contact does in an event."""
+
+from collections.abc import Sequence
+from dataclasses import dataclass
+
+from rcrules.events._bench import Bench
+from rcrules.events._circuit import ZERO, Arm, Circuit
+from rcrules.events._contacts import Switched, switched
+from rcrules.events._sources import Sources, moved, still
+from rcrules.events._unmeasurable import Unmeasurable
+from rcrules.networks import Network
+from rcrules.problems import Form, Waveform, constant
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Transient:
+    """Sources over time by held terminal, and the resistors of contacts before and after."""
+
+    waves: dict[str, Waveform]
+    before: tuple[Arm, ...] = ()
+    after: tuple[Arm, ...] = ()
+    empty: bool = False
+    movers: tuple[str, ...] = ()
+    """Held terminals that move."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Scene:
+    """What an event needs to know: the circuit, its sources, and the joint at which it is watched."""
+
+    bench: Bench
+    network: Network
+    circuit: Circuit
+    sources: Sources
+    joint: str
+    unit: bool
+    """True: the measure counts in parts of the step, so that the moved source goes from 0 to 1 V and the others rest at 0 V."""
+
+
+def transient(scene: Scene, event: str) -> Transient:
+    """The event at the watched joint. Raises Unmeasurable."""
+    contacts = switched(scene.bench, scene.network, scene.circuit, scene.sources.table, scene.joint, event)
+    if event == "power-up":
+        return _power_up(scene, contacts)
+    if event == "power-down":
+        return _power_down(scene, contacts)
+    if event in ("press", "release"):
+        waves = {name: still(_rest(scene, name)) for name in scene.circuit.held}
+        return Transient(waves=waves, before=contacts.before, after=contacts.after)
+    return _step(scene, contacts, up=event == "step-up")
+
+
+def _power_up(scene: Scene, contacts: Switched) -> Transient:
+    waves, movers = {}, []
+    for name in scene.circuit.held:
+        joint = scene.circuit.joints.get(name)
+        if joint is None or scene.sources.kind(joint) != "supply":
+            waves[name] = still(_rest(scene, name))
+            continue
+        rise = scene.sources.rise(joint)
+        note = "" if rise else f"{joint} rises at once"
+        volts = _supply(scene, joint, note)
+        waves[name] = moved((), volts, scene.sources.begins(joint), rise)
+        movers.append(name)
+    return Transient(waves=waves, after=contacts.after, empty=True, movers=tuple(movers))
+
+
+def _power_down(scene: Scene, contacts: Switched) -> Transient:
+    waves, movers = {}, []
+    for name in scene.circuit.held:
+        joint = scene.circuit.joints.get(name)
+        if joint is None or scene.sources.kind(joint) != "supply":
+            waves[name] = still(_rest(scene, name))
+            continue
+        fall = scene.sources.fall(joint)
+        volts = _supply(scene, joint, "" if fall else f"{joint} falls at once")
+        waves[name] = moved(volts, (), (), fall)
+        movers.append(name)
+    return Transient(waves=waves, before=contacts.before, after=contacts.after, movers=tuple(movers))
+
+
+def _step(scene: Scene, contacts: Switched, *, up: bool) -> Transient:
+    source = mover(scene)
+    low, high = _levels(scene, source)
+    ends = (low, high) if up else (high, low)
+    waves = {name: still(() if scene.unit else _rest(scene, name)) for name in scene.circuit.held if name != source}
+    waves[source] = moved(*ends)
+    return Transient(waves=waves, before=contacts.before, after=contacts.after, movers=(source,))
+
+
+def mover(scene: Scene) -> str:
+    """The nearest driven net that feeds the joint through resistors, else through capacitors; else the nearest supply."""
+    for kind in ("driven", "supply"):
+        names = [name for name in scene.circuit.held if _kind(scene, name) == kind]
+        for arms in (scene.circuit.of("resistor"), scene.circuit.arms):
+            found = [(steps, name) for name in names if (steps := _steps(scene, name, arms)) is not None]
+            if found:
+                return min(found)[1]
+    raise Unmeasurable(f"nothing that could step feeds {scene.joint}")
+
+
+def _steps(scene: Scene, source: str, arms: Sequence[Arm]) -> int | None:
+    circuit = Circuit(free=scene.circuit.free, held=scene.circuit.held)
+    branches = [Arm(ref=arm.ref, kind="resistor", a=arm.a, b=arm.b, value=arm.value) for arm in arms]
+    return circuit.driven([source], branches).get(scene.joint)
+
+
+def _levels(scene: Scene, source: str) -> tuple[Form, Form]:
+    if scene.unit:
+        return (), constant(1.0)
+    joint = scene.circuit.joints[source]
+    if scene.sources.kind(joint) == "supply":
+        return (), scene.sources.supply(joint)
+    swing = scene.sources.swing(joint)
+    return constant(swing.low) if swing.low else (), constant(swing.high) if swing.high else ()
+
+
+def _kind(scene: Scene, name: str) -> str:
+    joint = scene.circuit.joints.get(name)
+    return "ground" if joint is None or name == ZERO else scene.sources.kind(joint)
+
+
+def _supply(scene: Scene, joint: str, note: str) -> Form:
+    """A supply that moves; where only parts of the step count and it alone matters, an unknown one is 1 V."""
+    alone = [name for name in scene.circuit.held if name in scene.circuit.joints] == [joint]
+    if scene.unit and alone and not scene.circuit.draws and scene.sources.volts(joint) is None:
+        return constant(1.0)
+    return scene.sources.supply(joint, note)
+
+
+def _rest(scene: Scene, name: str) -> Form:
+    joint = scene.circuit.joints.get(name)
+    return () if joint is None else scene.sources.still(joint)

@@ -1,0 +1,45 @@
+"""Voltages across a part over all its DC states, and through the transient where that may go beyond them."""
+
+import numpy as np
+
+from rcrules.measures._measure import Theory
+from rcrules.measures._theory import Slopes, unproved
+from rcrules.measures._topology import columns
+from rcrules.problems import Array, Structure, solved, steady_states
+
+
+def across(structure: Structure, cases: Array) -> tuple[Array, Array]:
+    """Lowest and highest voltage across the observed part [V] (case,), signed from its first terminal to its second."""
+    states = steady_states(structure, cases)
+    volts = states[:, :, structure.at]
+    if structure.against is not None:
+        volts = volts - states[:, :, structure.against]
+    low, high = volts.min(axis=1), volts.max(axis=1)
+    if ("transient", 1.0) in structure.options:
+        least, most = solved(structure, cases).signal.extremes()
+        low, high = np.minimum(low, least), np.maximum(high, most)
+    return low, high
+
+
+def most(structure: Structure, cases: Array) -> Array:
+    """Greatest magnitude of the voltage across the part [V] (case,)."""
+    low, high = across(structure, cases)
+    return np.maximum(high, -low)
+
+
+def of_states(structure: Structure, low: Array, high: Array) -> Theory:
+    """T1 where a single DC state decides; where no resistor is in between, the signs of its sources too."""
+    states = len(structure.states) * (2 if structure.earlier else 1)
+    if states != 1 or ("transient", 1.0) in structure.options:
+        return unproved(structure, low, high)
+    return Theory(signs=unproved(structure, low, high).signs, vertices=True)
+
+
+def with_capacitance(structure: Structure, low: Array, high: Array) -> Theory:
+    """The same for a product with the part's own capacitance, on which the voltage does not depend."""
+    found = of_states(structure, low, high)
+    slopes = Slopes(list(found.signs))
+    if structure.element is not None and ("transient", 1.0) not in structure.options:
+        own = columns([structure.farads[structure.element]])
+        slopes.signs = [1 if index in own else sign for index, sign in enumerate(slopes.signs)]
+    return slopes.theory(vertices=found.vertices)

@@ -1,0 +1,152 @@
+"""Properties of a structure under which a theorem of ``_theory`` holds; each is decided exactly, never by a tolerance."""
+
+from collections.abc import Iterable
+from dataclasses import dataclass
+
+from rcrules.problems import Array, Form, Structure, Waveform
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Monotone:
+    """A network at one common voltage that its sources then move in one direction only.
+
+    With u = |v - start|: u is 0 at first, each source's u is 0 or one and the same form, and none ever falls.
+    """
+
+    swing: Form
+    """Voltage at which the moved sources end, above the common start (rising) or the start above 0 (falling)."""
+    rising: bool
+    far: frozenset[int]
+    """Held terminals that move, or differ from the start from the first instant."""
+    near: frozenset[int]
+    """Held terminals that stay at the start voltage."""
+    together: bool
+    """True: all far terminals have the same waveform."""
+    times: frozenset[int]
+    """Columns of the instants at which sources bend."""
+
+
+def is_zero(form: Form) -> bool:
+    """Whether a form is 0 in every case."""
+    return all(factor == 0.0 for factor, _ in form)
+
+
+def columns(forms: Iterable[Form]) -> frozenset[int]:
+    """The columns on which forms depend."""
+    return frozenset(index for form in forms for factor, term in form if factor != 0.0 for index in term)
+
+
+def increasing(form: Form, low: Array) -> bool:
+    """Whether a form is >= 0 and rises with each of its columns over the box."""
+    return all(factor >= 0.0 and all(low[index] >= 0.0 for index in term) for factor, term in form)
+
+
+def monotone(structure: Structure, low: Array) -> Monotone | None:
+    """How the sources move, where they do it as Monotone says; None otherwise."""
+    start = _common_start(structure)
+    if structure.amps or start is None or not increasing(start, low):
+        return None
+    rising = is_zero(start)
+    tracks = [_track(wave, start, rising) for wave in structure.waveforms]
+    ends = {track for track in tracks if track}
+    if None in tracks or len(ends) != 1:
+        return None
+    swing = next(end for end in ends if end is not None)
+    far = [index for index, track in enumerate(tracks) if track]
+    if not increasing(swing, low):
+        return None
+    waves = [structure.waveforms[index].points for index in far]
+    free = structure.shape.free
+    return Monotone(
+        swing=swing,
+        rising=rising,
+        far=frozenset(free + index for index in far),
+        near=frozenset(free + index for index, track in enumerate(tracks) if not track),
+        together=len(set(waves)) == 1,
+        times=columns(time for wave in structure.waveforms for time, _ in wave.points),
+    )
+
+
+def grounded(structure: Structure) -> bool:
+    """Whether no capacitor bridges: each joins a free terminal, or none, to held terminals that never move."""
+    free, waves = structure.shape.free, structure.waveforms
+    still = {free + index for index, wave in enumerate(waves) if _still(wave)}
+    return all(
+        (min(pair) < free <= max(pair) and max(pair) in still) or min(pair) >= free
+        for pair in structure.shape.capacitors
+    )
+
+
+def single_mode(structure: Structure) -> bool:
+    """Whether all capacitors lie at the observed terminal against held terminals that never move."""
+    pairs = structure.shape.capacitors
+    return grounded(structure) and structure.against is None and all(structure.at in pair for pair in pairs)
+
+
+def stepped(structure: Structure) -> bool:
+    """Whether no source changes after the first instant."""
+    return all(len(wave.points) == 1 for wave in structure.waveforms)
+
+
+def ladder_end(structure: Structure, source: int) -> bool:
+    """Whether the resistors form one path from a held terminal to the observed one, and no other resistor is there."""
+    left, here = list(structure.shape.resistors), source
+    while left:
+        following = [pair for pair in left if here in pair]
+        if len(following) != 1:
+            return False
+        left.remove(following[0])
+        here = sum(following[0]) - here
+        if here >= structure.shape.free:
+            return False
+    return here == structure.at
+
+
+def _still(wave: Waveform) -> bool:
+    return all(volts == wave.before for _, volts in wave.points)
+
+
+def _track(wave: Waveform, start: Form, rising: bool) -> Form | None:
+    """() where a source stays at the start; where it moves away for good, the swing; None where it does anything else."""
+    volts = [form for _, form in wave.points]
+    moved = [form for form in volts if form != start and not (rising and is_zero(form))]
+    if not moved:
+        return ()
+    if volts[-len(moved) :] != moved or len(set(moved)) != 1 or (not rising and not is_zero(moved[0])):
+        return None
+    return moved[0] if rising else start
+
+
+def _common_start(structure: Structure) -> Form | None:
+    """The one voltage at which every free terminal starts, whatever the resistances; None where there is no such."""
+    befores = [() if is_zero(wave.before) else wave.before for wave in structure.waveforms]
+    if structure.empty:
+        return () if all(form == () for form in befores) else None
+    shape = structure.earlier[0] if structure.earlier else structure.shape
+    found = set()
+    for group in _components(shape.free, shape.free + shape.held, shape.resistors):
+        if any(terminal < shape.free for terminal in group):
+            found |= {befores[terminal - shape.free] for terminal in group if terminal >= shape.free}
+    return found.pop() if len(found) == 1 else None
+
+
+def _components(free: int, terminals: int, pairs: Iterable[tuple[int, int]]) -> list[set[int]]:
+    """Terminals joined by resistors through free terminals; a held terminal may be in several."""
+    group = list(range(terminals))
+
+    def root(item: int) -> int:
+        while group[item] != item:
+            item = group[item]
+        return item
+
+    joins = list(pairs)
+    for a, b in joins:
+        if a < free and b < free:
+            group[root(a)] = root(b)
+    found = {root(item): {item} for item in range(free)}
+    for item in range(free):
+        found[root(item)].add(item)
+    for a, b in joins:
+        if min(a, b) < free <= max(a, b):
+            found[root(min(a, b))].add(max(a, b))
+    return list(found.values())

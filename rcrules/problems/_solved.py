@@ -1,0 +1,170 @@
+"""Cases of a structure, solved: what measures read their quantities from."""
+
+from dataclasses import dataclass
+from functools import cached_property
+from typing import Literal
+
+import numpy as np
+
+from rcrules.engine import Modes, Response, Signal, corner, solve
+from rcrules.problems._structure import Array, Form, LevelForm, Structure, evaluate
+from rcrules.problems._waves import before, currents, drive, reached, stack
+
+
+@dataclass(frozen=True, kw_only=True)
+class Solved:
+    """The cases of a structure and, as far as they are asked for, their modes and response.
+
+    One of these lives as long as one call of a measure; what it has worked out it keeps.
+    """
+
+    structure: Structure
+    cases: Array
+    """(case, column)"""
+
+    @cached_property
+    def ohms(self) -> Array:
+        """[Ω] (case, resistor)"""
+        return stack([evaluate(form, self.cases) for form in self.structure.ohms], self.cases)
+
+    @cached_property
+    def farads(self) -> Array:
+        """[F] (case, capacitor)"""
+        return stack([evaluate(form, self.cases) for form in self.structure.farads], self.cases)
+
+    @cached_property
+    def amps(self) -> Array:
+        """Currents drawn out of the free terminals [A] (case, free)"""
+        return currents(self.structure, self.cases)
+
+    @cached_property
+    def modes(self) -> Modes:
+        """Modes after the event. Raises FloatingNode."""
+        return solve(self.structure.shape, self.ohms, self.farads)
+
+    @cached_property
+    def earlier(self) -> Modes:
+        """Modes before the event. Raises FloatingNode."""
+        if self.structure.earlier is None:
+            return self.modes
+        shape, forms = self.structure.earlier
+        return solve(shape, stack([evaluate(form, self.cases) for form in forms], self.cases), self.farads)
+
+    @cached_property
+    def volts_before(self) -> Array:
+        """All terminals just before the event [V] (case, terminal)."""
+        held = before(self.structure, self.cases)
+        if self.structure.empty or not self.structure.shape.free:
+            free = np.zeros((len(self.cases), self.structure.shape.free))
+        else:
+            free = self.earlier.steady(held, self.amps)
+        return np.concatenate([free, held], axis=1)
+
+    @cached_property
+    def response(self) -> Response:
+        """The response to the event. Raises FloatingNode."""
+        ends = np.array(self.structure.shape.capacitors, dtype=int).reshape(-1, 2)
+        charged = self.volts_before[:, ends[:, 0]] - self.volts_before[:, ends[:, 1]]
+        if self.structure.empty:
+            charged = np.zeros_like(charged)
+        return self.modes.respond(drive(self.structure, self.cases), charged)
+
+    @cached_property
+    def sources(self) -> tuple[Array, Array, Array]:
+        """Starts of the pieces [s] (case, piece), volts and slopes [V/s] (case, piece, held) of the sources."""
+        found = drive(self.structure, self.cases)
+        return found.starts, found.levels, found.slopes
+
+    @cached_property
+    def signal(self) -> Signal:
+        """Voltage of the observed terminal against its reference."""
+        return self.watch(self.weights(), np.zeros(len(self.cases)))
+
+    @cached_property
+    def start(self) -> Array:
+        """The observed voltage just before the event [V] (case,)"""
+        watched: Array = (self.weights() * self.volts_before).sum(axis=1)
+        return watched
+
+    @cached_property
+    def final(self) -> Array:
+        """The observed voltage at the end [V] (case,)"""
+        return self.signal.final()
+
+    @cached_property
+    def reference(self) -> Array:
+        """The time from which delays count [s] (case,); inf where the supply never becomes valid."""
+        if self.structure.reference is None:
+            return np.zeros(len(self.cases))
+        terminal, level = self.structure.reference
+        wave = self.structure.waveforms[terminal - self.structure.shape.free]
+        return reached(wave, evaluate(level.offset, self.cases), self.cases)
+
+    def form(self, form: Form) -> Array:
+        """A form in each case; shape (case,)."""
+        return evaluate(form, self.cases)
+
+    def weights(self) -> Array:
+        """Which terminals make up the observed voltage; shape (case, terminal)."""
+        terminals = self.structure.shape.free + self.structure.shape.held
+        weights = np.zeros((len(self.cases), terminals))
+        weights[:, self.structure.at] += 1.0
+        if self.structure.against is not None:
+            weights[:, self.structure.against] -= 1.0
+        return weights
+
+    def watch(self, weights: Array, offset: Array) -> Signal:
+        """weights . v - offset over time."""
+        return self.response.observe(weights, offset)
+
+    def above(self, level: LevelForm, *, turned: bool = False) -> tuple[Signal, Array]:
+        """The observed voltage minus a level (turned: the level minus it) over time, and its value just before the event."""
+        weights, offset = self.weights(), self._fixed(level)
+        for terminal, fraction in level.follows:
+            weights[:, terminal] -= evaluate(fraction, self.cases)
+        if turned:
+            weights, offset = -weights, -offset
+        past = (weights * self.volts_before).sum(axis=1) - offset
+        return self.watch(weights, offset), past
+
+    def _fixed(self, level: LevelForm) -> Array:
+        fraction = evaluate(level.fraction, self.cases)
+        if level.kind == "final":
+            return fraction * self.final
+        if level.kind == "step":
+            return self.start + fraction * (self.final - self.start)
+        return evaluate(level.offset, self.cases)
+
+
+def solved(structure: Structure, cases: Array) -> Solved:
+    """Cases (case, column) of a structure, ready to be measured."""
+    return Solved(structure=structure, cases=cases)
+
+
+def steady_states(structure: Structure, cases: Array) -> Array:
+    """DC voltages of all terminals in each of the structure's states [V] (case, state, terminal).
+
+    States are those of ``structure.states``; where there is an ``earlier`` shape (another position of a contact), those
+    of that shape follow. Raises FloatingNode.
+    """
+    case = Solved(structure=structure, cases=cases)
+    found = []
+    for earlier in (False, True) if structure.earlier is not None else (False,):
+        for sources in structure.states:
+            held = stack([evaluate(form, cases) for form in sources], cases)
+            free = np.zeros((len(cases), 0))
+            if structure.shape.free:
+                free = (case.earlier if earlier else case.modes).steady(held, case.amps)
+            found.append(np.concatenate([free, held], axis=1))
+    return np.stack(found, axis=1)
+
+
+def corner_omega(structure: Structure, cases: Array) -> Array:
+    """Angular frequency 3 dB below the pass band from the terminal in option ``source`` to the observed one [rad/s] (case,).
+
+    Option ``passes``: ``low`` or ``high``. Raises FloatingNode.
+    """
+    case = Solved(structure=structure, cases=cases)
+    passes: Literal["low", "high"] = "low" if structure.option("passes") == "low" else "high"
+    source = int(structure.option("source"))
+    return corner(structure.shape, case.ohms, case.farads, source, structure.at, passes)
