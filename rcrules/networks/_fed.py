@@ -7,7 +7,7 @@ from functools import lru_cache
 from rcrules.design import Pin
 from rcrules.names import has_token, tokens
 from rcrules.networks._family import family, inverting
-from rcrules.networks._pin_words import CHANNEL, CONVERTER, FEEDBACK, RESET, SUPPLY, TIMING
+from rcrules.networks._fed_words import CHANNEL, CONVERTER, FEEDBACK, RESET, SUPPLY, TIMING
 from rcrules.networks._spot import Spot, View
 
 
@@ -101,7 +101,7 @@ def _named(name: str) -> str:
     plain = {word for word in words if not word.isdigit()}
     if any(has_token(name, word) for word in RESET):
         return "reset"
-    if plain & CONVERTER:
+    if plain & CONVERTER and not any(word.startswith("VREF") for word in plain):
         return "adc"
     return (
         "supply"

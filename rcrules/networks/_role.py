@@ -22,5 +22,7 @@ class Judged:
     """Why the passive model is not true here, else None."""
     also: tuple[Arm, ...] = ()
     """Resistors that belong to the role although they lead only to pins or contacts."""
+    alone: bool = False
+    """Whether the parts are those at the joint alone, whatever feeds their far ends."""
     only: tuple[Arm, ...] | None = None
     """The arms at the joint that set its time, where not all of them do; None = all that act."""

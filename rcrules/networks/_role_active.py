@@ -3,7 +3,7 @@
 from rcrules.design import Pin
 from rcrules.names import tokens
 from rcrules.networks._fed import family_of, is_control, whole
-from rcrules.networks._pin_words import BOOT, SHORT_TIMING, SWITCH, TIMING
+from rcrules.networks._fed_words import BOOT, SHORT_TIMING, SWITCH, TIMING
 from rcrules.networks._role import Judged
 from rcrules.networks._spot import Spot, View
 

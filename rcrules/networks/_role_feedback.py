@@ -5,7 +5,7 @@ from collections.abc import Iterator
 from rcrules.design import Pin
 from rcrules.networks._family import inverting
 from rcrules.networks._fed import family_of, is_control, whole
-from rcrules.networks._pin_words import FEEDBACK
+from rcrules.networks._fed_words import FEEDBACK
 from rcrules.networks._role import Judged
 from rcrules.networks._spot import Arm, Spot, View
 
@@ -44,7 +44,7 @@ def _amplifier(view: View, here: Spot) -> Judged | None:
     for arm in here.resistors + here.capacitors:
         outputs = _outputs(view, arm)
         for pin in outputs:
-            if _closes(view, here, pin.ref):
+            if _closes(view, here, pin):
                 return _loop(arm, pin)
     return _leg(view, here)
 
@@ -68,12 +68,19 @@ def _amplifies(view: View, pin: Pin) -> bool:
     return family_of(view, pin.ref) in ("amplifier", "") and len(view.pins_of(pin.ref)) <= 16
 
 
-def _closes(view: View, here: Spot, ref: str) -> bool:
+def _closes(view: View, here: Spot, output: Pin) -> bool:
     """Whether an amplifier's inverting input is at the joint, one arm away, or behind a follower transistor."""
     near = {here.joint} | {arm.far for arm in here.resistors + here.capacitors if arm.held is None}
-    if near & {view.joint(pin) for pin in view.pins_of(ref) if _inverts(view, pin)}:
+    inputs = [pin for pin in view.pins_of(output.ref) if _inverts(view, pin)]
+    if near & {view.joint(pin) for pin in inputs if len(inputs) < 2 or _unit(pin) == _unit(output)}:
         return True
-    return any(_follows(view, pin, ref) for pin in view.pins_near(here) if is_control(view, pin))
+    return any(_follows(view, pin, output.ref) for pin in view.pins_near(here) if is_control(view, pin))
+
+
+def _unit(pin: Pin) -> int:
+    """Which amplifier of a dual or quad package a pin belongs to, in the usual pinout: 1-3, 5-7, 8-10, 12-14."""
+    number = int(pin.number) if pin.number.isdigit() else 0
+    return next((unit for unit, last in enumerate((3, 7, 10, 14)) if number <= last), 4)
 
 
 def _inverts(view: View, pin: Pin) -> bool:

@@ -2,7 +2,7 @@
 
 from rcrules.networks._fed import feeding, kinds
 from rcrules.networks._role import Judged
-from rcrules.networks._role_parts import ends, kinds_at, signal_above, strong_ends
+from rcrules.networks._role_parts import LIGHT, ends, kinds_at, signal_above, strong_ends
 from rcrules.networks._spot import Arm, Spot, View, greatest, least
 
 PULL = 5.0
@@ -89,8 +89,13 @@ def _two_levels(view: View, here: Spot, arms: list[Arm]) -> tuple[list[Arm], lis
     """Arms to a supply and arms to another supply or a driven net."""
     supplies = [arm for arm in arms if kinds_at(view, arm, here.joint) == {"supply"}]
     first = supplies[:1]
-    others = [arm for arm in arms if first and arm.far != first[0].far]
+    others = [arm for arm in arms if first and arm.far != first[0].far and not _dwarfs(arm, first[0])]
     return first, others
+
+
+def _dwarfs(arm: Arm, other: Arm) -> bool:
+    """Whether an arm is too large beside another one to shift the level at their tap."""
+    return arm.value is not None and other.value is not None and arm.value >= LIGHT * other.value
 
 
 def _is_pull(low: list[Arm], high: list[Arm]) -> bool:

@@ -1,7 +1,7 @@
 """Roles at lines and currents: termination, sense shunt, pull-up of a bus, bias resistor with its capacitor."""
 
 from rcrules.networks._fed import words_of
-from rcrules.networks._pin_words import BUS, CENTRE, CURRENT
+from rcrules.networks._fed_words import BUS, CENTRE, CURRENT
 from rcrules.networks._role import Judged
 from rcrules.networks._spot import Spot, View, greatest, least
 

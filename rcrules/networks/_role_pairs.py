@@ -4,8 +4,8 @@ from collections.abc import Iterable, Iterator
 
 from rcrules.names import tokens
 from rcrules.networks._draft import Draft
+from rcrules.networks._fed_words import CHASSIS
 from rcrules.networks._model import Branch, Node
-from rcrules.networks._pin_words import CHASSIS
 from rcrules.networks._role import SURE, UNSURE
 from rcrules.networks._role_lines import SHUNT
 from rcrules.networks._role_words import arm_text

@@ -34,6 +34,11 @@ class Ways:
 def ways(view: View, here: Spot, judged: Judged) -> Ways:
     """All parts that set the time at the joint in its role."""
     found = Ways(visited={here.joint})
+    if judged.alone:
+        found.resistors.update((arm.ref, arm) for arm in here.resistors)
+        found.capacitors.update((arm.ref, arm) for arm in here.capacitors)
+        found.sources.update((arm.far, arm.to) for arm in here.resistors + here.capacitors if arm.held is not None)
+        return found
     chosen = None if judged.only is None else {arm.ref for arm in judged.only}
     own = [
         arm for arm in here.resistors if (chosen is None and _acts(view, here, arm)) or (chosen and arm.ref in chosen)
@@ -120,6 +125,11 @@ def way(view: View, arm: Arm, but: str) -> float:
     """Resistance through an arm to the nearest held joint, infinite without a way. [Ω]"""
     beyond = 0.0 if arm.held is not None else min(ends(view, arm.far, but).values(), default=float("inf"))
     return (arm.value or 0.0) + beyond
+
+
+def least_way(view: View, arms: Iterable[Arm], but: str) -> float:
+    """The least resistance through any of the arms to a held joint, infinite where there is none. [Ω]"""
+    return min((way(view, arm, but) for arm in arms), default=float("inf"))
 
 
 def rc_leg(view: View, arm: Arm, but: str) -> tuple[Arm, ...]:

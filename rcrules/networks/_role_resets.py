@@ -2,15 +2,18 @@
 
 from rcrules.design import Pin
 from rcrules.networks._fed import family_of, feeding, kind_fed, kinds, words_of
-from rcrules.networks._pin_words import BUTTON
+from rcrules.networks._fed_words import BUTTON
 from rcrules.networks._role import Judged
-from rcrules.networks._role_parts import kinds_at, way
+from rcrules.networks._role_parts import LIGHT, kinds_at, least_way
+from rcrules.networks._role_switching import LINE
 from rcrules.networks._spot import Arm, Spot, View, least
 
 FILTER = 100.0
 """Up to this resistance, in series with a supply, the resistor lets a part's supply current through. [Ω]"""
 SHARE = 20.0
 """A resistor to ground of fewer times the series resistor makes a divider. [1]"""
+SENSE = 0.2
+"""Up to this resistance a resistor in a supply's way measures its current. [Ω]"""
 DELAYED = ("reset", "logic", "regulator", "timer", "other")
 
 
@@ -19,8 +22,13 @@ def supply_filter(view: View, here: Spot) -> Judged | None:
     if here.contacts or not any(arm.fixed for arm in here.capacitors):
         return None
     sources = tuple(arm for arm in here.resistors if arm.to == "supply")
-    if not sources or any(arm.to == "driven" for arm in here.resistors) or _is_divided(view, here, least(sources)):
+    if not sources or _is_divided(view, here, least(sources)):
         return None
+    if 0 < least(sources) <= SENSE:
+        only = (*sources, *(arm for arm in here.capacitors if arm.fixed))
+        return Judged(
+            role="sense-shunt", sure=False, why=("low resistance between a supply and what it feeds",), only=only
+        )
     pins = feeding(view, here)
     supplied = [pin for pin in pins if kind_fed(view, pin) == "supply"]
     if here.local or supplied:
@@ -39,6 +47,8 @@ def power_on_delay(view: View, here: Spot) -> Judged | None:
         return None
     if _is_button_connector(view, here):
         return Judged(role="debounce", sure=False, why=("a connector that may carry a contact",))
+    if least(here.resistors) <= LINE[1] and len({pin.ref for pin in here.pins}) >= 2 and "reset" not in fed:
+        return Judged(role="other", sure=False, why=("ends a line on a rail",))
     driver = _driver(view, here)
     if driver is not None and "reset" not in fed:
         return Judged(role="low-pass", sure=False, why=(f"{driver} pulls the net, the resistor is its pull-up",))
@@ -46,11 +56,12 @@ def power_on_delay(view: View, here: Spot) -> Judged | None:
 
 
 def _is_divided(view: View, here: Spot, source: float) -> bool:
-    """Whether a resistor to ground, also through others, takes a share of the supply worth telling."""
+    """Whether a resistor to ground, also through others, or to a signal takes a share of the supply worth telling."""
     if here.local:
         return False
     downs = [arm for arm in here.resistors if kinds_at(view, arm, here.joint) == {"ground"}]
-    return min((way(view, arm, here.joint) for arm in downs), default=float("inf")) < SHARE * source
+    signals = [arm for arm in here.resistors if arm.to == "driven"]
+    return least_way(view, downs, here.joint) < SHARE * source or least(signals) < LIGHT * source
 
 
 def _waits(fed: list[str], driver: str | None) -> tuple[str, ...]:
@@ -65,9 +76,9 @@ def _filter(here: Spot, sources: tuple[Arm, ...], keys: tuple[str, ...]) -> Judg
 
 
 def _filter_without_pin(view: View, here: Spot, sources: tuple[Arm, ...], pins: tuple[Pin, ...]) -> Judged | None:
-    """Small into an unknown pin or a coil, or a bare step on the way to further resistors."""
+    """Small, into an unknown pin or a coil; or a bare step on the way to further resistors."""
     fixed = tuple(arm for arm in here.capacitors if arm.fixed)
-    onward = any(arm.held is None for arm in here.resistors + here.capacitors)
+    onward = [arm for arm in here.resistors if arm not in sources and arm.to != "ground" and _leads_on(view, here, arm)]
     if not here.pins and not here.diodes and onward:
         return Judged(role="supply-filter", why=("filters what feeds further resistors",), only=sources + fixed)
     if least(sources) > FILTER or len(fixed) != len(here.capacitors):
@@ -78,6 +89,11 @@ def _filter_without_pin(view: View, here: Spot, sources: tuple[Arm, ...], pins: 
             role="supply-filter", sure=bool(here.pins), why=("small enough to supply a part",), only=sources + fixed
         )
     return None
+
+
+def _leads_on(view: View, here: Spot, arm: Arm) -> bool:
+    """Whether a resistor leads to more than the pins at its far end."""
+    return arm.held is not None or view.leads_on(arm, here.joint)
 
 
 def _is_button_connector(view: View, here: Spot) -> bool:

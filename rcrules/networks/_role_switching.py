@@ -1,8 +1,8 @@
 """Roles around contacts and switched nets: debounce and snubber."""
 
 from rcrules.networks._fed import whole
+from rcrules.networks._fed_words import SWITCH
 from rcrules.networks._model import Contact
-from rcrules.networks._pin_words import SWITCH
 from rcrules.networks._role import Judged
 from rcrules.networks._spot import Arm, Spot, View, greatest
 
@@ -27,7 +27,8 @@ def debounce(view: View, here: Spot) -> Judged | None:
     pulled = any(arm.fixed for arm in here.resistors)
     names = ", ".join(sorted({contact.ref for contact in reached}))
     why = f"contact {names} " + ("at the node" if contacts else "behind a resistor or diode")
-    return Judged(role="debounce", sure=bool(contacts) and pulled, why=(why,), also=tuple(behind))
+    near = bool(contacts) or any(view.at(arm.far).contacts for arm in behind)
+    return Judged(role="debounce", sure=near and pulled, why=(why,), also=tuple(behind))
 
 
 def snubber(view: View, here: Spot) -> Judged | None:
@@ -37,25 +38,35 @@ def snubber(view: View, here: Spot) -> Judged | None:
     ends = {arm.far for arm in here.resistors}, {arm.far for arm in here.capacitors}
     if any(len(end) != 1 for end in ends) or ends[0] == ends[1]:
         return None
-    across = (here.resistors[0], here.capacitors[0])
-    if all(arm.held is None for arm in across):
-        return None
-    return _series(view, here, *across)
+    return _series(view, here.resistors[0], here.capacitors[0], greatest(here.resistors))
 
 
-def _series(view: View, here: Spot, resistor: Arm, capacitor: Arm) -> Judged | None:
+def _series(view: View, resistor: Arm, capacitor: Arm, ohms: float) -> Judged | None:
     where = f"in series between {resistor.far} and {capacitor.far}, nothing else at the joint"
     if any(_is_switched(view, arm) for arm in (resistor, capacitor)):
-        return Judged(role="snubber", why=(where, "one end is a switched net"))
-    ohms = greatest(here.resistors)
+        return Judged(role="snubber", why=(where, "one end is a switched net"), alone=True)
+    if resistor.held is None:
+        return _onward(resistor, capacitor, where)
     if resistor.fixed and capacitor.fixed and 0 < ohms <= ADDED_ESR:
-        return Judged(role="other", sure=False, why=(where, "adds series resistance to an output capacitor"))
-    lines = [arm for arm in (resistor, capacitor) if not arm.fixed]
-    if LINE[0] <= ohms <= LINE[1] and not resistor.fixed and _is_line(view, resistor):
-        return Judged(role="termination", sure=len(lines) == 2, why=(where, "ends a line for its edges only"))
-    if lines and resistor in lines and ohms >= LINE[1]:
+        return Judged(
+            role="other", sure=False, why=(where, "adds series resistance to an output capacitor"), alone=True
+        )
+    if LINE[0] <= ohms <= LINE[1] and resistor.to == "driven" and _is_line(view, resistor):
+        return Judged(
+            role="termination", sure=not capacitor.fixed, why=(where, "ends a line for its edges"), alone=True
+        )
+    if resistor.to == "driven" and capacitor.fixed and ohms > LINE[1]:
         return None
-    return Judged(role="snubber", sure=False, why=(where,))
+    return Judged(role="snubber", sure=False, why=(where,), alone=True)
+
+
+def _onward(resistor: Arm, capacitor: Arm, where: str) -> Judged | None:
+    """A capacitor and a resistor in series into a free joint: coupling from a signal, or a leg to a fixed net."""
+    if capacitor.held is None:
+        return None
+    if capacitor.to == "driven":
+        return Judged(role="high-pass", sure=False, why=(f"{capacitor.ref} couples {capacitor.far} onward",))
+    return Judged(role="other", sure=False, why=(where, f"loads the node {resistor.far}"), alone=True)
 
 
 def _is_switched(view: View, arm: Arm) -> bool:
