@@ -1,5 +1,26 @@
 """The project file: rcrules.toml in, Project out."""
 
-from rcrules.project._model import NetFacts, PartFacts, PinFacts, Project, SupplyFacts
+from rcrules.project._load import FILE_NAME, find, load, read
+from rcrules.project._match import is_ground, match, net_facts, part_facts, pin_facts, ranked, supply_for, unmatched
+from rcrules.project._model import NetFacts, Notice, PartFacts, PinFacts, Project, SupplyFacts
 
-__all__ = ["NetFacts", "PartFacts", "PinFacts", "Project", "SupplyFacts"]
+__all__ = [
+    "FILE_NAME",
+    "NetFacts",
+    "Notice",
+    "PartFacts",
+    "PinFacts",
+    "Project",
+    "SupplyFacts",
+    "find",
+    "is_ground",
+    "load",
+    "match",
+    "net_facts",
+    "part_facts",
+    "pin_facts",
+    "ranked",
+    "read",
+    "supply_for",
+    "unmatched",
+]

@@ -3,7 +3,7 @@
 from collections.abc import Mapping
 from dataclasses import dataclass, field
 
-from rcrules.errors import Place
+from rcrules.errors import Mistake, Place
 from rcrules.levels import Level
 from rcrules.quantities import Spread
 
@@ -32,7 +32,9 @@ class NetFacts:
     role: str | None = None
     held: str | None = None
     set: Mapping[str, str | float] = field(default_factory=dict)
-    """Free words, and numbers (quantities in SI), that rules look up."""
+    """Free words, and numbers (nominal, SI), that rules look up."""
+    spreads: Mapping[str, Spread] = field(default_factory=dict)
+    """The numbers of ``set`` with bounds and unit."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -52,8 +54,12 @@ class PinFacts:
     """[A], positive out of the node into the pin."""
     capacitance: Spread | None = None
     max_voltage: Level | None = None
+    drive: tuple[Spread, Spread] | None = None
+    """Voltage that the pin still drives, and the current at which it does."""
     set: Mapping[str, str | float] = field(default_factory=dict)
-    """Further numbers (sample-capacitance, acquisition-time, full-scale …) by key, SI, and free words."""
+    """Further numbers (sample-capacitance, acquisition-time, full-scale …) by key, nominal, SI, and free words."""
+    spreads: Mapping[str, Spread] = field(default_factory=dict)
+    """Every number of the table by its key, with bounds and unit."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -77,6 +83,17 @@ class PartFacts:
     contact_resistance: Spread | None = None
     bounce: Spread | None = None
     set: Mapping[str, str | float] = field(default_factory=dict)
+    """Every number of the table by its key, nominal, SI, and free words."""
+    spreads: Mapping[str, Spread] = field(default_factory=dict)
+    """The numbers of ``set`` with bounds and unit."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Notice:
+    """Something about the project file that does not stop the run."""
+
+    place: Place
+    text: str
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -86,8 +103,11 @@ class Project:
     file: str | None = None
     name: str | None = None
     netlists: tuple[str, ...] = ()
+    """Paths as the command can open them: those of the file, taken from the file's folder."""
     boms: tuple[str, ...] = ()
     rules: tuple[str, ...] = ()
+    """Names of shipped packs, and paths (with ``.toml`` at the end)."""
+    waivers: str | None = None
     temperature: Spread | None = None
     """[degC]"""
     life: Spread | None = None
@@ -104,3 +124,10 @@ class Project:
     """Rule id -> given numbers and words, SI."""
     setting_units: Mapping[str, Mapping[str, str]] = field(default_factory=dict)
     """Rule id -> name -> SI unit of the number."""
+    setting_spreads: Mapping[str, Mapping[str, Spread]] = field(default_factory=dict)
+    """Rule id -> name -> the number with its bounds."""
+    setting_places: Mapping[str, Mapping[str, Mistake]] = field(default_factory=dict)
+    """Rule id -> name (``""`` = the table) -> a mistake without a problem yet, that points at it."""
+    places: Mapping[tuple[str, str], Place] = field(default_factory=dict)
+    """(table, name) -> where the name stands: ``("net", "AIN*")``, ``("ground", "AGND")``."""
+    notices: tuple[Notice, ...] = ()

@@ -1,6 +1,7 @@
-"""TOML files with the place of every key and value."""
+"""TOML files with the place of every key and value, and tables that collect every mistake."""
 
 from rcrules.tomlfile._file import TomlFile, load, read
 from rcrules.tomlfile._scanner import Path
+from rcrules.tomlfile._table import Table, cut, guess, listed, quantity_name, root
 
-__all__ = ["Path", "TomlFile", "load", "read"]
+__all__ = ["Path", "Table", "TomlFile", "cut", "guess", "listed", "load", "quantity_name", "read", "root"]
