@@ -19,7 +19,7 @@ Class = tuple[str, str]
 
 
 def coverage(draft: Draft, networks: Iterable[Network]) -> tuple[dict[str, str], dict[str, str]]:
-    """Class of each resistor and capacitor, and the reason where it needs saying, both by reference in natural order."""
+    """Class of each resistor and capacitor, and the reason where it needs saying, by reference in order."""
     used = {item.ref: network.id for network in networks for item in network.branches}
     counted = [ref for ref, part in draft.parts.items() if _RC.match(ref) or part.kind in _KINDS]
     placed = _placed(draft)
@@ -71,7 +71,12 @@ def _lonely(draft: Draft, item: Branch, kinds: list[str]) -> str:
     """Why a branch at a free joint makes no node: nothing of the other kind acts with it."""
     free = [joint for joint in (item.a, item.b) if draft.held_joint(joint) is None]
     others = {pin.ref: draft.kind_of(pin.ref) for joint in free for pin in draft.pins_at(joint) if pin.ref != item.ref}
-    for kind, why in (("crystal", "at a crystal"), ("diode", "at a diode"), ("transistor", "at a transistor"), ("contact", "at a contact")):
+    for kind, why in (
+        ("crystal", "at a crystal"),
+        ("diode", "at a diode"),
+        ("transistor", "at a transistor"),
+        ("contact", "at a contact"),
+    ):
         if kind in others.values():
             return why
     if not others:

@@ -11,7 +11,7 @@ from rcrules.project import Project
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class RawNetwork:
-    """A largest connected set of free joints, with the held joints around it; it may hold resistors or capacitors alone."""
+    """A largest connected set of free joints, with the held joints around it; resistors alone may make one."""
 
     id: str
     branches: tuple[Branch, ...]

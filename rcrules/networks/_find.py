@@ -1,4 +1,4 @@
-"""Networks: largest connected sets of free joints, joined by resistors and capacitors, with the held joints around them."""
+"""Networks: largest sets of free joints connected by resistors and capacitors, with the held joints around them."""
 
 from collections.abc import Iterable, Iterator, Mapping
 from typing import TypeVar
@@ -26,7 +26,9 @@ def _components(draft: Draft) -> Iterator[list[str]]:
         seen.add(start)
         reached = [start]
         for joint in reached:
-            new = dict.fromkeys(far for far in _neighbours(draft, joint) if far not in seen and draft.held_joint(far) is None)
+            new = dict.fromkeys(
+                far for far in _neighbours(draft, joint) if far not in seen and draft.held_joint(far) is None
+            )
             seen.update(new)
             reached.extend(new)
         yield reached
@@ -41,7 +43,7 @@ def _network(draft: Draft, free: list[str]) -> RawNetwork:
 
 
 def _local(draft: Draft, joint: str) -> RawNetwork:
-    """A local supply as its source sees it: the resistors that feed it from supplies and its capacitors to held nets."""
+    """A local supply as its source sees it: the resistors that feed it and its capacitors to held nets."""
     feeding = [item for item in draft.branches_at(joint) if _belongs(draft, joint, item)]
     return _assembled(draft, [joint], feeding)
 

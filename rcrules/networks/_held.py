@@ -1,6 +1,6 @@
 """Which joints are held: ground, supplies, driven nets, each with its evidence.
 
-Evidence in order: project file, then counted ground and supply pins with names, sources of supplies, what passes through
+Evidence in order: project file, counted ground and supply pins with names, sources of supplies, what passes through
 diodes, switches and switched inductors, filter resistors, outputs and connectors. A name alone holds nothing that only
 resistors and capacitors reach: ``VREF`` at a divider's tap is a node.
 """
@@ -10,7 +10,7 @@ from collections.abc import Callable, Iterator
 from typing import Final
 
 from rcrules.design import Pin
-from rcrules.networks import _held_pins as say
+from rcrules.networks import _held_claims as say
 from rcrules.networks._held_driven import driven
 from rcrules.networks._held_verdict import Verdict, Verdicts, keys
 from rcrules.networks._held_voltage import volts_here
@@ -19,9 +19,11 @@ from rcrules.networks._scene import Scene
 from rcrules.parts import Known
 
 FILTER_OHMS: Final = 100.0
-"""Up to here a resistor from a supply to a local supply pin feeds it as a filter; above, it is a node like any other."""
+"""Up to here a resistor from a supply to a local supply pin is a filter; above, it is a node like any other."""
 
-_INTERNAL: Final = re.compile(r"V[A-Z]{0,4}\d?|V(DD|CC|REF|REG|OUT|CAP|INT|CM|COM|MID|BIAS)\w*|\w*(CAP|REG|LDO|REF|DEC|BYP)\w*")
+_INTERNAL: Final = re.compile(
+    r"V[A-Z]{0,4}\d?|V(DD|CC|REF|REG|OUT|CAP|INT|CM|COM|MID|BIAS)\w*|\w*(CAP|REG|LDO|REF|DEC|BYP)\w*"
+)
 """Names of pins that bring out an internal supply for its capacitor."""
 MANY_PARTS: Final = 3
 """A net with the supply pins of so many parts is a supply, whatever feeds it."""
@@ -32,13 +34,13 @@ Step = Callable[[Scene, str, Verdicts], Verdict | None]
 def held_joints(scene: Scene) -> tuple[Verdicts, frozenset[str]]:
     """Joint -> what holds it, and the joints that are local supplies behind a filter resistor."""
     verdicts: Verdicts = {}
-    for step in (_by_project, _ground, _source, _named_supply, _supply_pins):
+    for step in _FIRST:
         verdicts.update(_deciding(scene, verdicts, step))
     passed(scene, verdicts)
     local = dict(_deciding(scene, verdicts, _local))
     verdicts.update(local)
     passed(scene, verdicts)
-    for step in (_left_over, driven):
+    for step in _LAST:
         verdicts.update(_deciding(scene, verdicts, step))
     return verdicts, frozenset(local)
 
@@ -46,7 +48,9 @@ def held_joints(scene: Scene) -> tuple[Verdicts, frozenset[str]]:
 def _deciding(scene: Scene, verdicts: Verdicts, step: Step) -> Iterator[tuple[str, Verdict]]:
     free = scene.facts.free
     found = [(joint, step(scene, joint, verdicts)) for joint in scene.members if joint not in verdicts]
-    return ((joint, verdict) for joint, verdict in found if verdict and not any(free(net) for net in scene.members[joint]))
+    return (
+        (joint, verdict) for joint, verdict in found if verdict and not any(free(net) for net in scene.members[joint])
+    )
 
 
 def _by_project(scene: Scene, joint: str, _: Verdicts) -> Verdict | None:
@@ -79,7 +83,10 @@ def _ground(scene: Scene, joint: str, _: Verdicts) -> Verdict | None:
 def _bonded(scene: Scene, joint: str) -> bool:
     """A shield or common: nothing but connectors, holes, resistors and capacitors on it, and a resistor at it."""
     kinds = {scene.kind(pin.ref) for pin in scene.pins[joint]}
-    return kinds <= {"connector", "mechanical", "resistor", "capacitor", "test-point", "diode", "ferrite"} and "resistor" in kinds
+    return (
+        kinds <= {"connector", "mechanical", "resistor", "capacitor", "test-point", "diode", "ferrite"}
+        and "resistor" in kinds
+    )
 
 
 def _source(scene: Scene, joint: str, _: Verdicts) -> Verdict | None:
@@ -121,22 +128,37 @@ def _local(scene: Scene, joint: str, verdicts: Verdicts) -> Verdict | None:
     """A supply pin or a name of a supply with a capacitor to ground, fed through one small resistor."""
     pins = scene.says(joint, say.SUPPLY, say.NEGATIVE)
     named = any(named.kind == "supply" and named.strong for named in scene.hints(joint))
-    feeds = [far for item, far in scene.far_ends(joint, "resistor") if _is_small(scene, item.ref) and _is(verdicts, far, "supply")]
+    feeds = [
+        far
+        for item, far in scene.far_ends(joint, "resistor")
+        if _is_small(scene, item.ref) and _is(verdicts, far, "supply")
+    ]
     to_ground = any(_is(verdicts, far, "ground") for _, far in scene.far_ends(joint, "capacitor"))
     if not (pins or named) or len(set(feeds)) != 1 or not to_ground:
         return None
     source = verdicts[feeds[0]]
-    return Verdict(kind="supply", spread=source.spread, volts=source.volts, evidence=(f"filter resistor from {feeds[0]}", *keys(pins)))
+    return Verdict(
+        kind="supply",
+        spread=source.spread,
+        volts=source.volts,
+        evidence=(f"filter resistor from {feeds[0]}", *keys(pins)),
+    )
 
 
-def _left_over(scene: Scene, joint: str, verdicts: Verdicts) -> Verdict | None:
+def _left_over(scene: Scene, joint: str, _: Verdicts) -> Verdict | None:
     """Supply pins or strong names that nothing known feeds: a sheet that is not in the export, or a resistor alone."""
-    strong = [named for named in scene.hints(joint) if named.kind == "supply" and named.strong and named.volts is not None]
+    strong = [
+        named for named in scene.hints(joint) if named.kind == "supply" and named.strong and named.volts is not None
+    ]
     if strong:
         return _supply(scene, joint, (f"name {joint}",), sure=False)
     pins = scene.says(joint, say.SUPPLY)
     resistors = scene.far_ends(joint, "resistor")
-    return _supply(scene, joint, keys(pins), sure=False) if pins and not resistors and joint not in scene.switching else None
+    return (
+        _supply(scene, joint, keys(pins), sure=False)
+        if pins and not resistors and joint not in scene.switching
+        else None
+    )
 
 
 def only_fed_by_resistors(scene: Scene, joint: str) -> bool:
@@ -172,3 +194,7 @@ def _is(verdicts: Verdicts, joint: str, kind: str) -> bool:
 
 def _given(text: str | None) -> tuple[str, ...]:
     return () if text is None else (text,)
+
+
+_FIRST: Final[tuple[Step, ...]] = (_by_project, _ground, _source, _named_supply, _supply_pins)
+_LAST: Final[tuple[Step, ...]] = (_left_over, driven)

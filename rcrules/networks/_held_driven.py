@@ -3,7 +3,7 @@
 from typing import Final
 
 from rcrules.names import has_token
-from rcrules.networks import _held_pins as say
+from rcrules.networks import _held_claims as say
 from rcrules.networks._held_verdict import Verdict, Verdicts, keys
 from rcrules.networks._scene import Scene
 from rcrules.parts import Known
@@ -22,7 +22,12 @@ def driven(scene: Scene, joint: str, verdicts: Verdicts) -> Verdict | None:
         return Verdict(kind="driven", evidence=("switching node", *keys(scene.says(joint, say.SWITCH))))
     if scene.of_kind(joint, "crystal"):
         return None
-    return _output(scene, joint) or _between_chips(scene, joint) or _open_drain(scene, joint) or _connector(scene, joint, verdicts)
+    return (
+        _output(scene, joint)
+        or _between_chips(scene, joint)
+        or _open_drain(scene, joint)
+        or _connector(scene, joint, verdicts)
+    )
 
 
 def _output(scene: Scene, joint: str) -> Verdict | None:
@@ -33,7 +38,9 @@ def _output(scene: Scene, joint: str) -> Verdict | None:
     waits = bool(scene.far_ends(joint, "capacitor")) and bool(scene.far_ends(joint, "resistor"))
     if waits and (scene.contacts.get(joint) or all(_is_controller(scene, pin.ref) for pin in outputs)):
         return None
-    return Verdict(kind="driven", evidence=keys(outputs), sure=any(pin.type in ("output", "power-out") for pin in outputs))
+    return Verdict(
+        kind="driven", evidence=keys(outputs), sure=any(pin.type in ("output", "power-out") for pin in outputs)
+    )
 
 
 def _between_chips(scene: Scene, joint: str) -> Verdict | None:
@@ -87,9 +94,10 @@ def _is_bus(scene: Scene, joint: str) -> bool:
 
 def _asked(scene: Scene, joint: str) -> bool:
     """Whether the project file describes the net as one to be looked at: its wiring, role or pulls."""
-    facts = [found for net in scene.members[joint] if (found := scene.facts.net(net))]
-    pulls = [found for pin in scene.pins[joint] if (found := scene.facts.pin(pin)) and (found.pull_up or found.pull_down)]
-    return bool(pulls) or any(found.wiring_capacitance is not None or found.role is not None for found in facts)
+    nets = [scene.facts.net(net) for net in scene.members[joint]]
+    pins = [scene.facts.pin(pin) for pin in scene.pins[joint]]
+    pulled = any(pin is not None and (pin.pull_up or pin.pull_down) for pin in pins)
+    return pulled or any(net is not None and (net.wiring_capacitance or net.role) for net in nets)
 
 
 def _is_controller(scene: Scene, ref: str) -> bool:

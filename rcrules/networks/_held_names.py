@@ -7,10 +7,14 @@ from typing import Final
 
 from rcrules.names import tokens
 
-_LETTERS: Final = str.maketrans({"В": "V", "в": "V", "А": "A", "а": "A", ",": ".", "−": "-", "–": "-", "﹣": "-", "＋": "+"})
+_LETTERS: Final = str.maketrans(
+    {"В": "V", "в": "V", "А": "A", "а": "A", ",": ".", "−": "-", "–": "-", "﹣": "-", "＋": "+"}
+)
 """Look-alikes: Cyrillic volts, decimal comma, typographic minus."""
 
-_AUTOMATIC: Final = re.compile(r"#\w+|Net-?\(.*|N-?\d{4,}|\$\$\$\d+|\$?N\d{3,}|\$?Net\d+|Net[A-Z]+\d+_.*|unconnected-.*", re.IGNORECASE)
+_AUTOMATIC: Final = re.compile(
+    r"#\w+|Net-?\(.*|N-?\d{4,}|\$\$\$\d+|\$?N\d{3,}|\$?Net\d+|Net[A-Z]+\d+_.*|unconnected-.*", re.IGNORECASE
+)
 
 _VOLTAGES: Final = tuple(
     re.compile(pattern)
@@ -42,10 +46,101 @@ _BUS: Final = re.compile(r"(?<![A-Z])V(?:BUS|USB)(?![A-Z])")
 _USB_VOLTS: Final = 5.0
 
 _SIGNAL: Final = frozenset(
-    "EN ENA ENABLE EN1 PG PGOOD PWRGD PWRGOOD PWROK POK OK GOOD FB SENSE SNS SEN MON MONITOR MEAS DET DETECT ADC AIN FLT FLAG"
-    " FAULT CTRL CTL ON OFF ONOFF SHDN LX PH PHASE COMP TRIM ADJ SET UVLO OVP OC SEL RST RESET NRST INT IRQ ALERT STAT STATUS"
-    " PWM DIS BOOT BST GATE TX RX TXD RXD SCL SDA CLK CLOCK DATA SCK MOSI MISO CS SS BTN BUTTON KEY LED_K WAKE TEST TEMP DIV"
-    " SCALED LEVEL LVL CMD REQ ACK DISCH CHG CE OE LO HI WARN LOW VALID".split()
+    [
+        "EN",
+        "ENA",
+        "ENABLE",
+        "EN1",
+        "PG",
+        "PGOOD",
+        "PWRGD",
+        "PWRGOOD",
+        "PWROK",
+        "POK",
+        "OK",
+        "GOOD",
+        "FB",
+        "SENSE",
+        "SNS",
+        "SEN",
+        "MON",
+        "MONITOR",
+        "MEAS",
+        "DET",
+        "DETECT",
+        "ADC",
+        "AIN",
+        "FLT",
+        "FLAG",
+        "FAULT",
+        "CTRL",
+        "CTL",
+        "ON",
+        "OFF",
+        "ONOFF",
+        "SHDN",
+        "LX",
+        "PH",
+        "PHASE",
+        "COMP",
+        "TRIM",
+        "ADJ",
+        "SET",
+        "UVLO",
+        "OVP",
+        "OC",
+        "SEL",
+        "RST",
+        "RESET",
+        "NRST",
+        "INT",
+        "IRQ",
+        "ALERT",
+        "STAT",
+        "STATUS",
+        "PWM",
+        "DIS",
+        "BOOT",
+        "BST",
+        "GATE",
+        "TX",
+        "RX",
+        "TXD",
+        "RXD",
+        "SCL",
+        "SDA",
+        "CLK",
+        "CLOCK",
+        "DATA",
+        "SCK",
+        "MOSI",
+        "MISO",
+        "CS",
+        "SS",
+        "BTN",
+        "BUTTON",
+        "KEY",
+        "LED_K",
+        "WAKE",
+        "TEST",
+        "TEMP",
+        "DIV",
+        "SCALED",
+        "LEVEL",
+        "LVL",
+        "CMD",
+        "REQ",
+        "ACK",
+        "DISCH",
+        "CHG",
+        "CE",
+        "OE",
+        "LO",
+        "HI",
+        "WARN",
+        "LOW",
+        "VALID",
+    ]
 )
 """Words that make ``EN_3V3``, ``1V8_PGOOD``, ``VBAT_SENSE`` a signal about a supply, not the supply."""
 
@@ -109,7 +204,9 @@ def _supply(own: str, words: set[str]) -> NameHint | None:
         return NameHint(kind="supply", volts=volts, strong=False)
     signed = own[0] in "+-" and len(own) > 1
     if volts is not None:
-        return NameHint(kind="supply", volts=volts, strong=signed or _begins_with_voltage(own) or bool(_BUS.search(own)))
+        return NameHint(
+            kind="supply", volts=volts, strong=signed or _begins_with_voltage(own) or bool(_BUS.search(own))
+        )
     if own in ("V+", "V-", "B+") or any(_SUPPLY.fullmatch(word) for word in words):
         strict = any(_STRICT_SUPPLY.fullmatch(word) for word in words)
         return NameHint(kind="supply", volts=None, strong=signed or strict)

@@ -33,7 +33,9 @@ class Verdict:
             return self.spread
         return Spread(low=self.volts, nominal=self.volts, high=self.volts, unit="V")
 
-    def passed(self, why: str, *, drop: tuple[float, float, float] = (0.0, 0.0, 0.0), sure: bool | None = None) -> "Verdict":
+    def passed(
+        self, why: str, *, drop: tuple[float, float, float] = (0.0, 0.0, 0.0), sure: bool | None = None
+    ) -> "Verdict":
         """The same supply behind a part that drops a voltage (least, nominal, most) [V]."""
         here = self.voltage
         if here is not None:
@@ -41,7 +43,13 @@ class Verdict:
         kept = self.sure if sure is None else sure
         diode = any(drop)
         return replace(
-            self, evidence=(why,), spread=here, volts=None, sure=kept, given=self.given and not diode, through_diode=diode
+            self,
+            evidence=(why,),
+            spread=here,
+            volts=None,
+            sure=kept,
+            given=self.given and not diode,
+            through_diode=diode,
         )
 
 

@@ -5,19 +5,27 @@ from collections.abc import Iterator
 from typing import Final
 
 from rcrules.design import Pin
-from rcrules.networks import _held_pins as say
+from rcrules.networks import _held_claims as say
 from rcrules.networks._held_names import volts_in
 from rcrules.networks._scene import Scene
 from rcrules.parts import RatedPart
 
-_FIXED: Final = re.compile(r"[-_ /](?P<whole>\d{1,2})[.,V](?P<part>\d{1,2})V?(?!\d)|[-_ /]V?(?P<pair>33|18|25|28)(?:V|\b)|[-_ /](?P<plain>\d{1,2})V\b", re.IGNORECASE)
+_FIXED: Final = re.compile(
+    r"[-_ /](?P<whole>\d{1,2})[.,V](?P<part>\d{1,2})V?(?!\d)"
+    r"|[-_ /]V?(?P<pair>33|18|25|28)(?:V|\b)|[-_ /](?P<plain>\d{1,2})V\b",
+    re.IGNORECASE,
+)
 """``…-3.3``, ``…_1V8``, ``…-33``, ``…-5V`` at the end of a regulator's value."""
-_SERIES: Final = re.compile(r"(?<!\d)(?P<sign>78|79)(?:[LMTS]|HC)?(?P<volts>05|06|08|09|10|12|15|18|24|33)(?!\d)", re.IGNORECASE)
+_SERIES: Final = re.compile(
+    r"(?<!\d)(?P<sign>78|79)(?:[LMTS]|HC)?(?P<volts>05|06|08|09|10|12|15|18|24|33)(?!\d)", re.IGNORECASE
+)
 """The type numbers 78xx and 79xx, whose last digits are the voltage (33 = 3.3 V)."""
 _COIN: Final = re.compile(r"\b[BC]R\d{4}\b", re.IGNORECASE)
 """Designations of lithium coin cells in IEC 60086: 3 V."""
 _COIN_VOLTS: Final = 3.0
-_PIN_VOLTS: Final = re.compile(r"(?<![A-Z0-9.])V?(?:OUT|LDO|REG|REGOUT|CAP)?_?(?P<pair>33|18|25|12|15)(?:_?OUT)?$|(?P<whole>\d)(?:\.|V|P)(?P<part>\d)")
+_PIN_VOLTS: Final = re.compile(
+    r"(?<![A-Z0-9.])V?(?:OUT|LDO|REG|REGOUT|CAP)?_?(?P<pair>33|18|25|12|15)(?:_?OUT)?$|(?P<whole>\d)(?:\.|V|P)(?P<part>\d)"
+)
 _MOST_PLAUSIBLE: Final = 1000.0
 
 
@@ -34,7 +42,12 @@ def _readings(scene: Scene, joint: str) -> Iterator[tuple[float | None, str]]:
         if named.kind == "supply":
             yield named.volts, "the net name"
     sources = scene.says(joint, say.SOURCE)
-    coils = [pin for far in scene.coils.get(joint, ()) for pin in scene.of_kind(far, "ic") if scene.says(far, say.SWITCH) or True]
+    coils = [
+        pin
+        for far in scene.coils.get(joint, ())
+        for pin in scene.of_kind(far, "ic")
+        if scene.says(far, say.SWITCH) or True
+    ]
     for pin in (*sources, *coils):
         yield regulated(scene.parts[pin.ref]), f"the value of {pin.ref}"
     for pin in sources:

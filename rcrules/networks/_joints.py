@@ -29,7 +29,11 @@ class Joining:
     def join(self, a: str, b: str) -> bool:
         """Join the sets of two nets; False where their rails differ."""
         a, b = self.find(a), self.find(b)
-        rails = [rail for rail in (self.rail.get(a, self.rails.get(a)), self.rail.get(b, self.rails.get(b))) if rail is not None]
+        rails = [
+            rail
+            for rail in (self.rail.get(a, self.rails.get(a)), self.rail.get(b, self.rails.get(b)))
+            if rail is not None
+        ]
         if len(rails) == 2 and rails[0] != rails[1]:
             return False
         self.parent[b] = a

@@ -1,4 +1,4 @@
-"""Which nets of a part are one net at DC, which contacts and diodes and which resistors and capacitors lie between nets."""
+"""What a part is between its nets: a joint at DC, a contact, a diode, a resistor or a capacitor."""
 
 import re
 from collections.abc import Iterator, Mapping
@@ -10,7 +10,9 @@ from rcrules.networks._model import Branch, Contact, Diode
 from rcrules.parts import Known, RatedPart
 from rcrules.project import Project
 
-_CLOSED: Final = re.compile(r"NORMALLY.?CLOSED|_NC(_|\b)|BRIDGED|\bCLOSED?\b|^JUMPER$|\bN\.?C\.?\b|SHORTED|CERRADO|ЗАМКНУТ", re.IGNORECASE)
+_CLOSED: Final = re.compile(
+    r"NORMALLY.?CLOSED|_NC(_|\b)|BRIDGED|\bCLOSED?\b|^JUMPER$|\bN\.?C\.?\b|SHORTED|CERRADO|ЗАМКНУТ", re.IGNORECASE
+)
 _OPEN: Final = re.compile(r"NORMALLY.?OPEN|_NO(_|\b)|OPEN|\bN\.?O\.?\b|ABIERTO", re.IGNORECASE)
 _BRIDGED: Final = re.compile(r"BRIDGED(\d{2,3})", re.IGNORECASE)
 _NORMALLY_CLOSED: Final = re.compile(r"NORMALLY.?CLOSED|\bN\.?C\.?\b|_NC(_|\b)", re.IGNORECASE)
@@ -20,7 +22,7 @@ _ANODE: Final = re.compile(r"A\d?|ANODE|\+?A\+?|AN", re.IGNORECASE)
 _CATHODE: Final = re.compile(r"K\d?|C\d?|CATH?ODE|KATHODE|CAT", re.IGNORECASE)
 _SHARED: Final = re.compile(r"COM|CA|AK|KA|A-?K|K-?A|COMMON", re.IGNORECASE)
 _JOINING: Final = frozenset(("ferrite", "inductor", "fuse"))
-_RESISTIVE: Final = frozenset(("resistor", "thermistor"))
+_THERMISTOR: Final = re.compile(r"THERMIST|\b[NP]TC\b", re.IGNORECASE)
 
 
 def joined(part: RatedPart, project: Project) -> Iterator[tuple[Pin, Pin]]:
@@ -30,7 +32,7 @@ def joined(part: RatedPart, project: Project) -> Iterator[tuple[Pin, Pin]]:
         yield from pairwise(pins)
     elif part.kind == "jumper":
         yield from _bridged(part, project)
-    elif len(pins) == 2 and (part.kind in _JOINING or _is_link(part)):
+    elif len(pins) == 2 and ((part.kind in _JOINING and not is_thermistor(part)) or _is_link(part)):
         yield pins[0], pins[1]
 
 
@@ -41,7 +43,7 @@ def branches(part: RatedPart) -> Iterator[tuple[str, Pin, Pin]]:
         yield from (("resistor", first, second) for first, second in _track(pins))
     elif part.kind in ("resistor-array", "capacitor-array"):
         yield from ((part.kind.removesuffix("-array"), first, second) for first, second in _elements(pins))
-    elif len(pins) >= 2 and (part.kind == "capacitor" or (part.kind in _RESISTIVE and not _is_link(part))):
+    elif len(pins) >= 2 and (part.kind in ("resistor", "capacitor") or is_thermistor(part)) and not _is_link(part):
         ends = _two_ends(pins)
         if ends:
             yield ("capacitor" if part.kind == "capacitor" else "resistor", *_plus_first(ends))
@@ -85,10 +87,16 @@ def branch(part: RatedPart, kind: str, pins: tuple[Pin, Pin], joints: Mapping[st
     return Branch(ref=part.ref, kind=kind, a=a, b=b) if a != b else None
 
 
+def is_thermistor(part: RatedPart) -> bool:
+    """Whether the part may measure temperature: called so, without a word of a fuse or a current."""
+    called = part.kind == "thermistor" or (part.kind == "fuse" and bool(_THERMISTOR.search(words(part))))
+    return called and not _RESETTABLE.search(words(part))
+
+
 def _is_link(part: RatedPart) -> bool:
-    if part.kind == "thermistor":
-        return bool(_RESETTABLE.search(words(part)))
-    return part.kind == "resistor" and isinstance(part.value, Known) and part.value.si == 0.0
+    return (part.kind in ("thermistor", "fuse") and bool(_RESETTABLE.search(words(part)))) or (
+        part.kind == "resistor" and isinstance(part.value, Known) and part.value.si == 0.0
+    )
 
 
 def _bridged(part: RatedPart, project: Project) -> Iterator[tuple[Pin, Pin]]:
@@ -114,7 +122,7 @@ def _two_ends(pins: tuple[Pin, ...]) -> tuple[Pin, Pin] | None:
 
 
 def _one_per_net(pins: tuple[Pin, ...]) -> list[Pin]:
-    return list({pin.net: pin for pin in reversed(sorted(pins, key=lambda pin: pin.number))}.values())[::-1]
+    return list({pin.net: pin for pin in sorted(pins, key=lambda pin: pin.number, reverse=True)}.values())[::-1]
 
 
 def _plus_first(ends: tuple[Pin, Pin]) -> tuple[Pin, Pin]:
@@ -149,7 +157,11 @@ def _elements(pins: tuple[Pin, ...]) -> Iterator[tuple[Pin, Pin]]:
 
 
 def _named(pins: tuple[Pin, ...], pattern: re.Pattern[str]) -> list[Pin]:
-    return [pin for pin in pins if pattern.fullmatch(pin.name) or (not pin.name.strip("~") and pattern.fullmatch(pin.number))]
+    return [
+        pin
+        for pin in pins
+        if pattern.fullmatch(pin.name) or (not pin.name.strip("~") and pattern.fullmatch(pin.number))
+    ]
 
 
 def _by_number(pins: tuple[Pin, ...]) -> tuple[list[Pin], list[Pin]]:

@@ -10,7 +10,6 @@ from rcrules.networks._held_verdict import Verdict
 from rcrules.project import NetFacts, PinFacts, Project, SupplyFacts
 from rcrules.vocabulary import HELD_KINDS
 
-
 Value = TypeVar("Value")
 
 
@@ -43,10 +42,17 @@ class Facts:
             return Verdict(kind="ground", volts=0.0, evidence=("project [ground]",), given=True)
         supply, facts = self.supply(net), self.net(net)
         if supply is not None:
-            return Verdict(kind="supply", spread=supply.voltage, evidence=(f"project [supply] of {net}",), given=supply.voltage is not None)
+            return Verdict(
+                kind="supply",
+                spread=supply.voltage,
+                evidence=(f"project [supply] of {net}",),
+                given=supply.voltage is not None,
+            )
         if facts is not None and (facts.swing is not None or facts.held in HELD_KINDS):
             kind = facts.held if facts.held in HELD_KINDS else "driven"
-            return Verdict(kind=kind, spread=facts.swing, evidence=(f"project [net] {net}",), given=facts.swing is not None)
+            return Verdict(
+                kind=kind, spread=facts.swing, evidence=(f"project [net] {net}",), given=facts.swing is not None
+            )
         return None
 
     def pin(self, pin: Pin) -> PinFacts | None:

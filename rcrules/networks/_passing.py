@@ -6,7 +6,7 @@ from collections.abc import Iterator
 from dataclasses import replace
 from typing import Final
 
-from rcrules.networks import _held_pins as say
+from rcrules.networks import _held_claims as say
 from rcrules.networks._held_verdict import Verdict, Verdicts
 from rcrules.networks._held_voltage import volts_here
 from rcrules.networks._links import words
@@ -17,7 +17,9 @@ DIODE_DROP: Final = (0.0, 0.3, 0.9)
 """Least, nominal and most voltage across a conducting diode [V]; no load to full load, Schottky to silicon."""
 _DIVIDER_OHMS: Final = 10e3
 _ENTRY: Final = re.compile(
-    r"\bDC[-_ ]?(IN|POWER|JACK|INPUT)|BARREL|JACK[-_]?DC|POWER[-_ ]?(IN|JACK|INPUT|SUPPLY)|\bBATT?(ERY)?\b|ALIMENTA|NETZTEIL|ПИТАНИ", re.IGNORECASE
+    r"\bDC[-_ ]?(IN|POWER|JACK|INPUT)|BARREL|JACK[-_]?DC|POWER[-_ ]?(IN|JACK|INPUT|SUPPLY)"
+    r"|\bBATT?(ERY)?\b|ALIMENTA|NETZTEIL|ПИТАНИ",
+    re.IGNORECASE,
 )
 """Words that name a power input in a connector's value, symbol, description or footprint."""
 _ENTRY_PINS: Final = 4
@@ -56,7 +58,11 @@ def _tells_more(known: Verdict, source: Verdict) -> bool:
 def _onward(scene: Scene, joint: str, verdicts: Verdicts) -> Iterator[tuple[str, Verdict]]:
     here = verdicts[joint]
     for diode in scene.diodes.get(joint, ()):
-        if diode.anode == joint and diode.cathode not in scene.switching and _takes_supply(scene, diode.cathode, verdicts):
+        if (
+            diode.anode == joint
+            and diode.cathode not in scene.switching
+            and _takes_supply(scene, diode.cathode, verdicts)
+        ):
             yield diode.cathode, here.passed(f"diode {diode.ref} from {joint}", drop=DIODE_DROP)
     for ref, far in _switched(scene, joint):
         if _takes_supply(scene, far, verdicts) or _is_power_output(scene, far, verdicts):
@@ -66,21 +72,35 @@ def _onward(scene: Scene, joint: str, verdicts: Verdicts) -> Iterator[tuple[str,
 
 
 def _inputs(scene: Scene, verdicts: Verdicts) -> Iterator[tuple[str, Verdict]]:
-    """Joints between a connector and a diode or switch into a supply; outputs of switched inductors; rectified switch nodes."""
+    """Joints that bring a supply in: connectors before a diode, power inputs, inductors and diodes after a switch."""
     for joint in scene.members:
         if joint in verdicts or joint in scene.switching:
             continue
         volts, _ = volts_here(scene, joint)
-        into = [diode for diode in scene.diodes.get(joint, ()) if diode.anode == joint and _is_supply(verdicts, diode.cathode)]
+        into = [
+            diode
+            for diode in scene.diodes.get(joint, ())
+            if diode.anode == joint and _is_supply(verdicts, diode.cathode)
+        ]
         if into and scene.of_kind(joint, "connector") and not _carries_signal(scene, joint):
             why = f"connector, and diode {into[0].ref} into {into[0].cathode}"
             yield joint, replace(verdicts[into[0].cathode], evidence=(why,), sure=False, given=False)
         elif _is_power_entry(scene, joint):
             yield joint, Verdict(kind="supply", volts=volts, evidence=("power connector",), sure=False)
-        elif scene.coils.get(joint) and _has_bulk(scene, joint, verdicts):
-            yield joint, Verdict(kind="supply", volts=volts, evidence=(f"switched inductor from {scene.coils[joint][0]}",))
+        elif scene.coils.get(joint) and not _is_filtered(scene, joint, verdicts) and _has_bulk(scene, joint, verdicts):
+            yield (
+                joint,
+                Verdict(kind="supply", volts=volts, evidence=(f"switched inductor from {scene.coils[joint][0]}",)),
+            )
         elif _is_rectified(scene, joint, verdicts):
             yield joint, Verdict(kind="supply", volts=volts, evidence=("diode from a switching node",))
+
+
+def _is_filtered(scene: Scene, joint: str, verdicts: Verdicts) -> bool:
+    """Whether a resistor from a supply feeds the joint: the input of a switched inductor, not its output."""
+    return any(
+        _is_supply(verdicts, far) and not _is_large(scene, item.ref) for item, far in scene.far_ends(joint, "resistor")
+    )
 
 
 def _rectified(scene: Scene, joint: str, verdicts: Verdicts) -> Iterator[tuple[str, Verdict]]:
@@ -91,12 +111,14 @@ def _rectified(scene: Scene, joint: str, verdicts: Verdicts) -> Iterator[tuple[s
 
 
 def _is_rectified(scene: Scene, joint: str, verdicts: Verdicts) -> bool:
-    from_switch = any(diode.cathode == joint and diode.anode in scene.switching for diode in scene.diodes.get(joint, ()))
+    from_switch = any(
+        diode.cathode == joint and diode.anode in scene.switching for diode in scene.diodes.get(joint, ())
+    )
     return from_switch and _has_bulk(scene, joint, verdicts)
 
 
 def _takes_supply(scene: Scene, joint: str, verdicts: Verdicts) -> bool:
-    """Whether a joint behind a diode or switch is a supply: supply pins, a supply's name, or a connector or coil with a capacitor."""
+    """Whether a joint behind a diode or switch is a supply: supply pins, a supply's name, or a capacitor to a rail."""
     if joint in verdicts:
         return verdicts[joint].kind == "supply"
     if scene.says(joint, say.SUPPLY, say.SOURCE) or any(named.kind == "supply" for named in scene.hints(joint)):
@@ -132,7 +154,11 @@ def _carries_signal(scene: Scene, joint: str) -> bool:
     small = [item for item, _ in scene.far_ends(joint, "resistor") if not _is_large(scene, item.ref)]
     fused = bool(scene.of_kind(joint, "fuse"))
     clamped = any(diode.cathode == joint for diode in scene.diodes.get(joint, ())) and not fused
-    return bool(scene.of_kind(joint, *_SIGNALS)) or (bool(small) and not fused) or (clamped and bool(scene.of_kind(joint, "ic")))
+    return (
+        bool(scene.of_kind(joint, *_SIGNALS))
+        or (bool(small) and not fused)
+        or (clamped and bool(scene.of_kind(joint, "ic")))
+    )
 
 
 def _is_large(scene: Scene, ref: str) -> bool:
@@ -141,7 +167,9 @@ def _is_large(scene: Scene, ref: str) -> bool:
 
 
 def _has_bulk(scene: Scene, joint: str, verdicts: Verdicts) -> bool:
-    return any(far in verdicts and verdicts[far].kind in ("ground", "supply") for _, far in scene.far_ends(joint, "capacitor"))
+    return any(
+        far in verdicts and verdicts[far].kind in ("ground", "supply") for _, far in scene.far_ends(joint, "capacitor")
+    )
 
 
 def _is_supply(verdicts: Verdicts, joint: str) -> bool:
@@ -154,7 +182,12 @@ def _switched(scene: Scene, joint: str) -> Iterator[tuple[str, str]]:
         control = _control(scene, pin.ref)
         for other in scene.parts[pin.ref].part.pins:
             far = scene.joints[other.net]
-            if far != joint and pin.number not in control and other.number not in control and other.number != pin.number:
+            if (
+                far != joint
+                and pin.number not in control
+                and other.number not in control
+                and other.number != pin.number
+            ):
                 yield pin.ref, far
 
 
@@ -165,4 +198,3 @@ def _control(scene: Scene, ref: str) -> frozenset[str]:
     if named or len(pins) != 3:
         return named or frozenset(pin.number for pin in pins)
     return frozenset("G") if any(pin.number == "G" for pin in pins) else frozenset("1")
-

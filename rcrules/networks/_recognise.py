@@ -8,8 +8,8 @@ from rcrules.networks._coverage import coverage
 from rcrules.networks._draft import Draft, RawNetwork
 from rcrules.networks._find import networks
 from rcrules.networks._held import held_joints
-from rcrules.networks._held_verdict import Verdict
 from rcrules.networks._held_names import hint
+from rcrules.networks._held_verdict import Verdict
 from rcrules.networks._model import Board, Branch, Held, Network, Node
 from rcrules.networks._named import Facts
 from rcrules.networks._roles import bridged_nodes, nodes_of
@@ -19,7 +19,7 @@ from rcrules.project import Project
 
 
 def recognise(design: Design, parts: Mapping[str, RatedPart], project: Project) -> Board:
-    """Find the held nets, the networks and their nodes of a board, and say what became of each resistor and capacitor."""
+    """Find the held nets, the networks and their nodes of a board, and what became of each resistor and capacitor."""
     draft = draft_of(design, parts, project)
     found = [_network(raw, nodes) for raw in draft.networks if (nodes := nodes_of(draft, raw))]
     found += _bridged(draft)
@@ -78,7 +78,13 @@ def _held(net: str, joint: str, verdict: Verdict) -> Held:
 
 def _network(raw: RawNetwork, nodes: tuple[Node, ...]) -> Network:
     return Network(
-        id=raw.id, branches=raw.branches, free=raw.free, held=raw.held, nodes=nodes, contacts=raw.contacts, diodes=raw.diodes
+        id=raw.id,
+        branches=raw.branches,
+        free=raw.free,
+        held=raw.held,
+        nodes=nodes,
+        contacts=raw.contacts,
+        diodes=raw.diodes,
     )
 
 
@@ -87,7 +93,13 @@ def _bridged(draft: Draft) -> Iterator[Network]:
     for node in bridged_nodes(draft):
         ends = {node.joint, node.across}
         between = (item for item in draft.branches_at(node.joint) if {item.a, item.b} == ends)
-        yield Network(id=node.net, branches=_ordered(between), free=(), held=tuple(sorted(filter(None, ends), key=natural)), nodes=(node,))
+        yield Network(
+            id=node.net,
+            branches=_ordered(between),
+            free=(),
+            held=tuple(sorted(filter(None, ends), key=natural)),
+            nodes=(node,),
+        )
 
 
 def _ordered(branches: Iterator[Branch]) -> tuple[Branch, ...]:

@@ -6,10 +6,11 @@ from dataclasses import dataclass, replace
 from typing import Final, TypeVar
 
 from rcrules.design import Design, Pin
-from rcrules.networks import _held_pins as say
+from rcrules.networks import _held_claims as say
 from rcrules.networks._held_names import NameHint, hint
+from rcrules.networks._held_pins import claim, is_regulator, outputs_by_position
 from rcrules.networks._joints import joints as join_nets
-from rcrules.networks._links import branch, branches, contact, diodes, joined
+from rcrules.networks._links import branch, branches, contact, diodes, is_thermistor, joined
 from rcrules.networks._model import Branch, Contact, Diode
 from rcrules.networks._named import Facts
 from rcrules.parts import RatedPart
@@ -72,7 +73,10 @@ def scene(design: Design, parts: Mapping[str, RatedPart], facts: Facts) -> Scene
     pairs = [pair for part in fitted for pair in joined(part, facts.project) if not _coil(part, switching)]
     pairs += [fuse for part in fitted if (fuse := _series_thermistor(design, parts, by_net, part))]
     joints, members = join_nets(design, parts, pairs, _rails(design, facts))
-    pins = {joint: tuple(pin for net in nets for pin in design.nets[net].pins if _is_fitted(parts, pin)) for joint, nets in members.items()}
+    pins = {
+        joint: tuple(pin for net in nets for pin in design.nets[net].pins if _is_fitted(parts, pin))
+        for joint, nets in members.items()
+    }
     return Scene(
         design=design, parts=parts, facts=facts, joints=joints, members=members, pins=pins,
         claims=_merged(by_net, joints),
@@ -92,17 +96,19 @@ def _claims(fitted: list[RatedPart]) -> dict[str, dict[str, list[Pin]]]:
     """Net -> claim -> pins."""
     found: dict[str, dict[str, list[Pin]]] = defaultdict(lambda: defaultdict(list))
     for part in fitted:
-        regulator = part.kind in _MAKERS and say.is_regulator(part)
-        outputs = say.outputs_by_position(part) if part.kind == "ic" else frozenset()
+        regulator = part.kind in _MAKERS and is_regulator(part)
+        outputs = outputs_by_position(part) if part.kind == "ic" else frozenset()
         for pin in part.part.pins:
-            claim = say.OUTPUT if pin.number in outputs else say.claim(pin, part, regulator=regulator)
-            if claim:
-                found[pin.net][claim].append(pin)
+            said = say.OUTPUT if pin.number in outputs else claim(pin, part, regulator=regulator)
+            if said:
+                found[pin.net][said].append(pin)
     return found
 
 
-def _switching(design: Design, parts: Mapping[str, RatedPart], claims: Mapping[str, Mapping[str, list[Pin]]]) -> set[str]:
-    """Nets between a power switch and an inductor, by pin name or by an inductor, a diode and a chip's or transistor's pin."""
+def _switching(
+    design: Design, parts: Mapping[str, RatedPart], claims: Mapping[str, Mapping[str, list[Pin]]]
+) -> set[str]:
+    """Nets between a power switch and an inductor, by pin name, or by an inductor, a diode and an active pin."""
     return {name for name, net in design.nets.items() if _is_switching(net.pins, parts, claims.get(name, {}))}
 
 
@@ -126,12 +132,14 @@ def _series_thermistor(
 ) -> tuple[Pin, Pin] | None:
     """A thermistor from a supply to a net without a resistor: a resettable fuse or an inrush limiter."""
     pins = part.part.pins
-    if part.kind != "thermistor" or len(pins) != 2:
+    if not is_thermistor(part) or len(pins) != 2:
         return None
     for here, far in (pins, reversed(pins)):
         named = hint(here.net)
         alone = all(parts[pin.ref].kind != "resistor" for pin in design.nets[far.net].pins if pin.ref in parts)
-        supplied = say.SUPPLY in claims.get(here.net, {}) or (named is not None and named.kind == "supply" and named.strong)
+        supplied = say.SUPPLY in claims.get(here.net, {}) or (
+            named is not None and named.kind == "supply" and named.strong
+        )
         if supplied and alone:
             return here, far
     return None
@@ -149,12 +157,14 @@ def _rails(design: Design, facts: Facts) -> dict[str, object]:
     return found
 
 
-def _merged(by_net: Mapping[str, Mapping[str, list[Pin]]], joints: Mapping[str, str]) -> dict[str, dict[str, tuple[Pin, ...]]]:
+def _merged(
+    by_net: Mapping[str, Mapping[str, list[Pin]]], joints: Mapping[str, str]
+) -> dict[str, dict[str, tuple[Pin, ...]]]:
     found: dict[str, dict[str, list[Pin]]] = defaultdict(lambda: defaultdict(list))
     for net, claims in by_net.items():
-        for claim, pins in claims.items():
-            found[joints[net]][claim].extend(pins)
-    return {joint: {claim: tuple(pins) for claim, pins in claims.items()} for joint, claims in found.items()}
+        for said, pins in claims.items():
+            found[joints[net]][said].extend(pins)
+    return {joint: {said: tuple(pins) for said, pins in claims.items()} for joint, claims in found.items()}
 
 
 def _branches(fitted: list[RatedPart], joints: Mapping[str, str]) -> list[Branch]:
