@@ -1,0 +1,160 @@
+"""The whole flow on one page: inputs and project in, one findings document out."""
+
+from collections.abc import Sequence
+from dataclasses import dataclass, replace
+from pathlib import Path
+from typing import TYPE_CHECKING
+
+from rcrules import __version__
+from rcrules.errors import Mistake, Place, Problems, UserMistake
+
+if TYPE_CHECKING:
+    from rcrules.findings import Document
+    from rcrules.networks import Board
+    from rcrules.problems import Parameter
+    from rcrules.project import Project
+    from rcrules.readers import Export
+    from rcrules.rulebook import Rule
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Job:
+    """What one run is asked for: one board."""
+
+    inputs: tuple[str, ...] = ()
+    """Netlists and BOMs, ``-`` for standard input; empty = those of the project file."""
+    project: str | None = None
+    """Project file; None = looked for beside the first input and above."""
+    rules: tuple[str, ...] = ()
+    """Packs and rule files; empty = the project's, else the packs that need no facts."""
+    with_rules: bool = True
+    """False: only what was found."""
+
+
+def run_all(jobs: Sequence[Job], processes: int = 1) -> "list[Document]":
+    """The documents of several boards, in order; mistakes of all of them at once."""
+    if processes == 1 or len(jobs) == 1:
+        problems, documents = Problems(), []
+        for job in jobs:
+            with problems.collecting():
+                documents.append(run(job))
+        problems.stop_if_any()
+        return documents
+    from concurrent.futures import ProcessPoolExecutor
+
+    with ProcessPoolExecutor(processes) as pool:
+        return list(pool.map(run, jobs))
+
+
+def run(job: Job) -> "Document":
+    """Read, recognise, judge, tell. Raises UserMistake with all mistakes of project, inputs and rules."""
+    from rcrules.design import build
+    from rcrules.networks import recognise
+    from rcrules.parts import rate
+
+    project, exports, rules = _read(job)
+    design = build(exports)
+    board = recognise(design, rate(design, project), project)
+    return _document(job, project, board, rules)
+
+
+def _read(job: Job) -> "tuple[Project, list[Export], list[Rule]]":
+    """Project, exports and rules; what is wrong with any of them is told at once."""
+    from rcrules.project import Project, read
+
+    path = _project_path(job)
+    project = read(path, str(path)) if path else Project()
+    problems = Problems()
+    exports: list[Export] = []
+    rules: list[Rule] = []
+    for name in job.inputs or _listed(project):
+        with problems.collecting():
+            exports.append(_export(name, project))
+    if job.with_rules:
+        with problems.collecting():
+            rules = _rules(job, project)
+    problems.stop_if_any()
+    return project, exports, rules
+
+
+def _project_path(job: Job) -> Path | None:
+    """The project file asked for, or the nearest one beside the first input or above it, relative where it can be."""
+    from rcrules.project import find
+
+    if job.project is not None:
+        return Path(job.project)
+    first = next((name for name in job.inputs if name != "-"), None)
+    found = find(Path(first).parent if first else Path())
+    if found is None:
+        return None
+    return found.relative_to(Path.cwd()) if found.is_relative_to(Path.cwd()) else found
+
+
+def _listed(project: "Project") -> tuple[str, ...]:
+    """The inputs of the project file. Raises UserMistake where there are none."""
+    if project.netlists or project.boms:
+        return (*project.netlists, *project.boms)
+    place = Place(file=project.file or "command line")
+    expected = "[board] netlist or bom" if project.file else None
+    do = "name a netlist or BOM: rcrules check board.xml bom.csv"
+    raise UserMistake(Mistake(place=place, problem="no inputs", expected=expected, do=do))
+
+
+def _export(path: str, project: "Project") -> "Export":
+    from rcrules.inventory import shown
+    from rcrules.readers import load, read
+
+    source = load(path)
+    return read(replace(source, name=shown(source.name)), project.columns)
+
+
+def _rules(job: Job, project: "Project") -> "list[Rule]":
+    """The rules asked for, else the project's; else those that need no facts, at most as warnings."""
+    from rcrules.rulebook import load
+
+    if job.rules or project.rules:
+        return load(job.rules or project.rules)
+    return [replace(rule, level="warning") if rule.level == "error" else rule for rule in load(None)]
+
+
+def _document(job: Job, project: "Project", board: "Board", rules: "list[Rule]") -> "Document":
+    """Everything found, as one document; what rules add stays empty without them."""
+    from rcrules import inventory
+    from rcrules.findings import Document, settled
+
+    quantities, parameters = inventory.node_quantities(board, project)
+    found = Document(
+        tool=__version__,
+        board=inventory.board_counts(board, project.name),
+        inputs=inventory.inputs(board.design.exports),
+        conditions=inventory.conditions(project),
+        parts=[],
+        held=inventory.held(board),
+        packs=[],
+        networks=inventory.networks(board, quantities),
+        findings=[],
+        assumptions=inventory.listed_assumptions(inventory.assumptions_of(parameters))[0],
+        coverage={},
+        waivers=[],
+        problems=inventory.problems(board, project),
+    )
+    if job.with_rules:
+        found = _judged(job, found, project, board, rules, parameters)
+    classes = inventory.coverage(board, found.findings)
+    return settled(replace(found, parts=inventory.parts(board, classes), coverage=inventory.counts(classes)))
+
+
+def _judged(
+    job: Job, found: "Document", project: "Project", board: "Board", rules: "list[Rule]", also: "list[Parameter]"
+) -> "Document":
+    """The document with what the rules find."""
+    from rcrules.checks import check, packs, unmet
+
+    checked = check(board, project, rules, also=also)
+    return replace(
+        found,
+        packs=packs(rules, checked.met),
+        findings=checked.findings,
+        assumptions=checked.assumptions,
+        problems=[*found.problems, *unmet(rules, checked.met, own=job.rules or project.rules)],
+    )

@@ -3,7 +3,6 @@
 from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass
 
-from rcrules.checks._assumptions import Key, keys, rows
 from rcrules.checks._finding import Judged, finding
 from rcrules.checks._resolve import Case, resolve
 from rcrules.checks._select import selected
@@ -11,8 +10,9 @@ from rcrules.checks._subjects import Subjects
 from rcrules.checks._verdict import Verdict, decide
 from rcrules.events import Unmeasurable, pose
 from rcrules.findings import Finding, Json
+from rcrules.inventory import Key, assumptions_of, listed_assumptions
 from rcrules.networks import Board
-from rcrules.problems import Problem
+from rcrules.problems import Parameter, Problem
 from rcrules.project import Project
 from rcrules.rulebook import Rule
 
@@ -28,12 +28,16 @@ class Checked:
     """Rule id -> number of subjects."""
 
 
-def check(board: Board, project: Project, rules: Sequence[Rule]) -> Checked:
-    """Hold every rule against every subject that it selects."""
+def check(board: Board, project: Project, rules: Sequence[Rule], also: Iterable[Parameter] = ()) -> Checked:
+    """Hold every rule against every subject that it selects.
+
+    also: parameters of other quantities of the document, whose assumptions are listed as well.
+    """
     subjects = Subjects(board)
     cases = [case for rule in rules for case in _cases(rule, subjects, board, project)]
     judged = _judge(cases, board, project)
-    listed, numbers = rows(key for item in judged if item.problem for key in keys(item.problem.parameters))
+    posed = (item.problem.parameters for item in judged if item.problem)
+    listed, numbers = listed_assumptions(key for parameters in (also, *posed) for key in assumptions_of(parameters))
     findings = [finding(item, board, project, _indexes(item, numbers)) for item in judged]
     met = {rule.id: sum(case.rule is rule for case in cases) for rule in rules}
     return Checked(findings=sorted(findings, key=_order), assumptions=listed, met=met)
@@ -94,7 +98,7 @@ def _asks(case: Case, error: Unmeasurable | None) -> tuple[str, ...]:
 
 
 def _indexes(item: Judged, numbers: Mapping[Key, int]) -> list[int]:
-    return sorted({numbers[key] for key in keys(item.problem.parameters)}) if item.problem else []
+    return sorted({numbers[key] for key in assumptions_of(item.problem.parameters)}) if item.problem else []
 
 
 def _order(item: Finding) -> tuple[str, str, list[str], str]:

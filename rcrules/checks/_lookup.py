@@ -2,16 +2,14 @@
 
 from collections.abc import Iterable, Mapping
 from dataclasses import dataclass
-from typing import TypeVar
 
-from rcrules.checks._select import globbed
 from rcrules.checks._subjects import Subject
 from rcrules.networks import Board
-from rcrules.project import Project
+from rcrules.project import Project, ranked
 from rcrules.quantities import Spread
 from rcrules.rulebook import Rule
 
-Table = TypeVar("Table")
+Table = tuple[str, Mapping[str, str | float], Mapping[str, Spread]]
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -32,36 +30,31 @@ class Missing:
 
 def look_up(name: str, rule: Rule, subject: Subject, board: Board, project: Project) -> Found | Missing:
     """The value of a name for a rule and a subject."""
-    unit = rule.given_units.get(name, "1")
-    for origin, table in _tables(rule, subject, board, project):
+    for origin, words, spreads in _tables(rule, subject, board, project):
         for key in (name, name.replace("_", "-")):
-            if key in table:
-                return Found(value=_spread(table[key], unit), origin=origin)
+            if key in spreads:
+                return Found(value=spreads[key], origin=origin)
+            if key in words:
+                return Found(value=_value(words[key], rule.given_units.get(name, "1")), origin=origin)
     given = rule.given.get(name, "ask")
     if isinstance(given, Spread):
         return Found(value=given, origin=f"rule {rule.id}")
     return Missing(reason=f"{name} is not given", ask=_lines(name, rule, subject))
 
 
-def _tables(
-    rule: Rule, subject: Subject, board: Board, project: Project
-) -> Iterable[tuple[str, Mapping[str, str | float]]]:
-    """Every table that may hold the name, the strongest first."""
-    for pattern, pin in _exact_first(project.pins):
-        if globbed((pattern,), _pin_names(subject.feeds, board)):
-            yield f'[pin."{pattern}"]', pin.set
-    for pattern, net in _exact_first(project.nets):
-        if globbed((pattern,), subject.nets):
-            yield f'[net."{pattern}"]', net.set
-    for pattern, part in _exact_first(project.parts):
-        if globbed((pattern,), subject.refs):
-            yield f'[part."{pattern}"]', part.set
-    yield f'[settings."{rule.id}"]', project.settings.get(rule.id, {})
+def _tables(rule: Rule, subject: Subject, board: Board, project: Project) -> Iterable[Table]:
+    """Every table that may hold the name, the strongest first: its heading, its words, its numbers with bounds."""
+    for pattern, pin in ranked(project.pins, _pin_names(subject.feeds, board)):
+        yield f'[pin."{pattern}"]', pin.set, pin.spreads
+    for pattern, net in ranked(project.nets, subject.nets):
+        yield f'[net."{pattern}"]', net.set, net.spreads
+    for pattern, part in ranked(project.parts, subject.refs):
+        yield f'[part."{pattern}"]', part.set, part.spreads
+    yield f'[settings."{rule.id}"]', project.settings.get(rule.id, {}), project.setting_spreads.get(rule.id, {})
 
 
-def _exact_first(tables: Mapping[str, Table]) -> list[tuple[str, Table]]:
-    """Names before globs; a longer glob before a shorter one."""
-    return sorted(tables.items(), key=lambda item: (any(mark in item[0] for mark in "*?["), -len(item[0])))
+def _value(value: str | float, unit: str) -> Spread | str:
+    return value if isinstance(value, str) else Spread(low=value, nominal=value, high=value, unit=unit)
 
 
 def _pin_names(feeds: Iterable[str], board: Board) -> set[str]:
@@ -71,10 +64,6 @@ def _pin_names(feeds: Iterable[str], board: Board) -> set[str]:
         part = board.design.parts.get(key.partition(".")[0])
         names |= {f"{pin.ref}.{pin.number}" for pin in (part.pins if part else ()) if pin.key == key}
     return names
-
-
-def _spread(value: str | float, unit: str) -> Spread | str:
-    return value if isinstance(value, str) else Spread(low=value, nominal=value, high=value, unit=unit)
 
 
 def _lines(name: str, rule: Rule, subject: Subject) -> tuple[str, ...]:

@@ -1,21 +1,23 @@
 """Counts of the board, its inputs and the remarks about them."""
 
 import re
+from pathlib import PurePath
 
 from rcrules.findings import Json
 from rcrules.inventory._parts import listed
-from rcrules.inventory._place import place_json
+from rcrules.inventory._place import place_json, shown
 from rcrules.networks import Board
 from rcrules.parts import RatedPart
-from rcrules.readers import Export
+from rcrules.project import Notice, Project, unmatched
+from rcrules.readers import Export, Remark
 
 
-def board_counts(board: Board, name: str) -> Json:
-    """Name and counts; pins are connections."""
+def board_counts(board: Board, name: str | None) -> Json:
+    """Name (of the project, a title, or the first input) and counts; pins are connections."""
     rows = listed(board)
     capacitors = sum(is_capacitor(part) for part in rows)
     return {
-        "name": name,
+        "name": name or _title(board.design.exports),
         "parts": len(board.design.parts),
         "nets": len(board.design.nets),
         "pins": sum(len(net.pins) for net in board.design.nets.values()),
@@ -24,10 +26,15 @@ def board_counts(board: Board, name: str) -> Json:
     }
 
 
+def _title(exports: tuple[Export, ...]) -> str:
+    titles = (export.title for export in exports if export.title)
+    return next(titles, PurePath(exports[0].source).stem if exports else "board")
+
+
 def is_capacitor(part: RatedPart) -> bool:
     """By kind; a part of another kind by its reference."""
-    if part.kind in ("resistor", "capacitor"):
-        return part.kind == "capacitor"
+    if part.kind.startswith(("resistor", "capacitor")):
+        return part.kind.startswith("capacitor")
     return re.match(r"C\d", part.ref) is not None
 
 
@@ -35,7 +42,7 @@ def inputs(exports: tuple[Export, ...]) -> list[Json]:
     """One object per export, in the order given."""
     return [
         {
-            "file": export.source,
+            "file": shown(export.source),
             "reader": export.reader,
             "kind": export.kind,
             "sha256": export.sha256,
@@ -47,11 +54,19 @@ def inputs(exports: tuple[Export, ...]) -> list[Json]:
     ]
 
 
-def problems(board: Board) -> list[Json]:
-    """Remarks about the inputs, and facts on which they disagree; by place."""
-    remarks = [{"place": place_json(remark.place), "text": remark.text} for remark in board.design.remarks]
+def problems(board: Board, project: Project) -> list[Json]:
+    """Remarks about the inputs and the project file, and facts on which inputs disagree; by place."""
+    said: tuple[Remark | Notice, ...] = (*board.design.remarks, *project.notices, *_unmatched(board, project))
+    remarks: list[Json] = [{"place": place_json(item.place), "text": item.text} for item in said]
     for part in listed(board):
         remarks += [
             {"place": place_json(part.part.place), "text": f"{part.ref}: {text}"} for text in part.disagreements
         ]
     return sorted(remarks, key=lambda item: (item["place"]["file"], item["place"].get("line", 0), item["text"]))
+
+
+def _unmatched(board: Board, project: Project) -> list[Notice]:
+    """Names of the project file that mean nothing on this board."""
+    parts = board.design.parts
+    pins = {name for part in parts.values() for pin in part.pins for name in (pin.key, f"{pin.ref}.{pin.number}")}
+    return unmatched(project, board.design.nets, pins, parts)

@@ -6,17 +6,18 @@ from typing import Final
 
 from rcrules.errors import Place
 from rcrules.findings import Json
+from rcrules.inventory._place import shown
 from rcrules.networks import Board
 from rcrules.parts import Known, RatedPart, Unknown
 
 _LISTED: Final = re.compile(r"[RC]\d")
 _KINDS: Final = ("resistor", "capacitor")
+_UNITS: Final = {"resistor": "Ω", "resistor-array": "Ω", "capacitor": "F", "capacitor-array": "F"}
 
 
 def listed(board: Board) -> tuple[RatedPart, ...]:
-    """Every reference that starts with R or C and a digit, and every other resistor or capacitor; by reference."""
-    chosen = (part for part in board.parts.values() if part.kind in _KINDS or _LISTED.match(part.ref))
-    return tuple(sorted(chosen, key=lambda part: part.ref))
+    """Every reference that starts with R or C and a digit, and every other resistor or capacitor, in order."""
+    return tuple(part for part in board.parts.values() if part.kind in _KINDS or _LISTED.match(part.ref))
 
 
 def parts(board: Board, coverage: Mapping[str, str]) -> list[Json]:
@@ -33,7 +34,7 @@ def _row(part: RatedPart, coverage: str, reason: str | None) -> Json:
         "value": value,
         "low": low,
         "high": high,
-        "unit": {"resistor": "Ω", "capacitor": "F"}.get(part.kind),
+        "unit": _UNITS.get(part.kind),
         "rated_voltage": _number(part.rated_voltage),
         "rated_power": _number(part.rated_power),
         "dielectric": part.dielectric,
@@ -57,7 +58,7 @@ def _origin(origin: str, place: Place | None) -> Json:
     """Where a fact comes from; file, line and column are null for what no file says."""
     return {
         "from": origin,
-        "file": place.file if place else None,
+        "file": shown(place.file) if place else None,
         "line": place.line if place else None,
         "column": place.column if place else None,
     }

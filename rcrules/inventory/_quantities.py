@@ -1,50 +1,33 @@
-"""Bounds of the quantities of every node, all solved in one go."""
+"""Bounds of quantities as the document holds them."""
 
-from collections.abc import Iterable, Mapping, Sequence
-from typing import Final
+from collections.abc import Mapping, Sequence
 
-from rcrules.events import Unmeasurable, pose
+from rcrules.events import Measured, quantities
 from rcrules.findings import Quantity
-from rcrules.measures import Measure, registry
-from rcrules.networks import Board, Network, Node
-from rcrules.problems import Bounds, Failure, Problem, solve_bounds
+from rcrules.networks import Board
+from rcrules.problems import Bounds, Parameter, Problem
 from rcrules.project import Project
 
 Quantities = Mapping[tuple[str, str], Mapping[str, Quantity | str]]
 """(network id, net) -> measure -> bounds, or why there are none."""
 
-NODE_MEASURES: Final = ("time_constant",)
+
+def node_quantities(board: Board, project: Project) -> tuple[Quantities, list[Parameter]]:
+    """What the document tells of every node, whatever the rules; and the parameters that it rests on."""
+    found = quantities(board, project)
+    told = {key: {name: _told(item) for name, item in measured.items()} for key, measured in found.items()}
+    problems = (item.problem for measured in found.values() for item in measured.values() if item.problem)
+    return told, [parameter for problem in problems for parameter in problem.parameters]
 
 
-def node_quantities(board: Board, project: Project) -> Quantities:
-    """What the document tells of every node, whatever the rules."""
-    chosen = [registry()[name] for name in NODE_MEASURES]
-    found: dict[tuple[str, str], dict[str, Quantity | str]] = {}
-    posed: list[tuple[tuple[str, str], Measure, Problem]] = []
-    for network, node, measure in _wanted(board, chosen):
-        key = (network.id, node.net)
-        try:
-            posed.append((key, measure, pose(board, project, node, measure, _defaults(measure))))
-        except Unmeasurable as error:
-            found.setdefault(key, {})[measure.name] = error.reason
-    solved = solve_bounds([(problem, measure) for _, measure, problem in posed])
-    for (key, measure, problem), bounds in zip(posed, solved, strict=True):
-        found.setdefault(key, {})[measure.name] = (
-            bounds.reason if isinstance(bounds, Failure) else as_quantity(bounds, problem, measure.unit)
-        )
-    return found
-
-
-def _wanted(board: Board, chosen: Iterable[Measure]) -> Iterable[tuple[Network, Node, Measure]]:
-    return ((network, node, measure) for network in board.networks for node in network.nodes for measure in chosen)
-
-
-def _defaults(measure: Measure) -> Mapping[str, float | str]:
-    return {name: option.default for name, option in measure.options.items() if option.default is not None}
+def _told(item: Measured) -> Quantity | str:
+    if item.bounds is None or item.problem is None:
+        return item.reason
+    return as_quantity(item.bounds, item.problem, item.unit)
 
 
 def as_quantity(bounds: Bounds, problem: Problem, unit: str) -> Quantity:
-    """Bounds as the document holds them: of each case only the parameters off nominal, by name."""
+    """Bounds with the case of each: only the parameters off nominal, by name."""
     return Quantity(
         low=float(bounds.low),
         nominal=float(bounds.nominal),

@@ -96,6 +96,7 @@ def _coverage(document: Document, kind: str) -> str:
 
 def _counts_as(row: Json) -> str:
     """Capacitor or resistor; a part of another kind by its reference."""
-    if row["kind"] in ("resistor", "capacitor"):
-        return str(row["kind"])
+    kind = str(row["kind"])
+    if kind.startswith(("resistor", "capacitor")):
+        return kind.removesuffix("-array")
     return "capacitor" if str(row["ref"]).startswith("C") else "resistor"

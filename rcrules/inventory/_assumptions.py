@@ -9,12 +9,12 @@ Key = tuple[str, str, str]
 """About, text, ask."""
 
 
-def keys(parameters: Iterable[Parameter]) -> list[Key]:
+def assumptions_of(parameters: Iterable[Parameter]) -> list[Key]:
     """Every assumption that the parameters rest on."""
     return [(item.name, text, item.ask) for item in parameters for text in item.assumed]
 
 
-def rows(found: Iterable[Key]) -> tuple[list[Json], dict[Key, int]]:
+def listed_assumptions(found: Iterable[Key]) -> tuple[list[Json], dict[Key, int]]:
     """One object per assumption, sorted, and the index of each."""
     ordered = sorted(set(found))
     listed: list[Json] = [{"about": about, "text": text, "ask": ask} for about, text, ask in ordered]

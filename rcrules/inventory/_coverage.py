@@ -4,19 +4,21 @@ from collections.abc import Iterable, Mapping
 from typing import Final
 
 from rcrules.findings import Finding
+from rcrules.inventory._parts import listed
 from rcrules.networks import Board
 
 CLASSES: Final = ("not_fitted", "unreadable", "judged", "undecided", "unruled", "decoupling", "elsewhere")
 """In the order in which they apply."""
 
 
-def coverage(board: Board, refs: Iterable[str], findings: Iterable[Finding]) -> Mapping[str, str]:
-    """Reference -> the first class that applies."""
+def coverage(board: Board, findings: Iterable[Finding]) -> Mapping[str, str]:
+    """Reference of each listed part -> the first class that applies."""
     judged: set[str] = set()
     undecided: set[str] = set()
     for item in findings:
         (undecided if item.outcome == "undecided" else judged).update(item.parts)
-    return {ref: _class(ref, board.coverage.get(ref, "elsewhere"), judged, undecided) for ref in refs}
+    before = {part.ref: board.coverage.get(part.ref, "elsewhere") for part in listed(board)}
+    return {ref: _class(ref, name, judged, undecided) for ref, name in before.items()}
 
 
 def _class(ref: str, before: str, judged: set[str], undecided: set[str]) -> str:

@@ -1,6 +1,6 @@
-from rcrules.checks import CLASSES, counts, coverage
 from rcrules.findings import Finding
-from tests.checks._objects import board
+from rcrules.inventory import CLASSES, counts, coverage
+from tests.checks._objects import board, part
 from tests.reports._sample import finding
 
 REFS = ("R1", "C1", "C2", "R7", "C8", "C9")
@@ -15,7 +15,8 @@ BEFORE = {
 
 
 def classes(*findings: Finding) -> dict[str, str]:
-    return dict(coverage(board(coverage=BEFORE), REFS, findings))
+    parts = {ref: part(ref, "capacitor" if ref.startswith("C") else "resistor", 1.0, "A", "B") for ref in REFS}
+    return dict(coverage(board(parts=parts, coverage=BEFORE), findings))
 
 
 def test_without_findings_parts_in_networks_met_no_rule() -> None:
