@@ -112,7 +112,7 @@ def _follows(view: View, control: Pin, ref: str) -> bool:
 
 def _leg(view: View, here: Spot) -> Judged | None:
     """The joint of a series R-C from an inverting input to a fixed net."""
-    if not here.bare:
+    if not here.bare or len({arm.far for arm in here.resistors}) != 1 or len({arm.far for arm in here.capacitors}) != 1:
         return None
     for arm in here.resistors + here.capacitors:
         if arm.held is None:

@@ -41,11 +41,7 @@ def low_pass(view: View, here: Spot) -> Judged | None:
         return None
     driven = [arm for arm in here.resistors if "driven" in kinds_at(view, arm, here.joint)]
     if driven:
-        helped = next((arm for arm in here.capacitors if arm.to == "driven"), None)
-        active = f"an amplifier drives {helped.ref}" if helped else None
-        return Judged(
-            role="low-pass", why=(f"{driven[0].ref} in series from {_source(view, here, driven[0])}",), active=active
-        )
+        return Judged(role="low-pass", why=(f"{driven[0].ref} in series from {_source(view, here, driven[0])}",))
     later = [arm for arm in here.resistors if arm.held is None and ends(view, arm.far, here.joint)]
     if later:
         return Judged(role="low-pass", why=(f"{later[0].ref} from the node {later[0].far}",))

@@ -47,7 +47,15 @@ def nodes_of(draft: Draft, network: RawNetwork) -> tuple[Node, ...]:
     """The free joints of a network where resistors and capacitors act together, in the network's order."""
     view = View(draft)
     spots = (view.at(joint) for joint in network.free)
-    return tuple(_node(view, here) for here in spots if _is_node(view, here))
+    nodes = tuple(_node(view, here) for here in spots if _is_node(view, here))
+    return _beside_loops(view, network, nodes) if nodes else ()
+
+
+def _beside_loops(view: View, network: RawNetwork, nodes: tuple[Node, ...]) -> tuple[Node, ...]:
+    """The nodes; those that lead to a control loop of their network are active as the loop is."""
+    found = ((joint, feedback(view, view.at(joint))) for joint in network.free)
+    loop = next((f"{judged.active} at {joint}" for joint, judged in found if judged is not None), None)
+    return tuple(node if node.active or loop is None else replace(node, active=loop) for node in nodes)
 
 
 def bridged_nodes(draft: Draft) -> tuple[Node, ...]:
@@ -79,9 +87,17 @@ def _node(view: View, here: Spot) -> Node:
         fed_from=_fed_from(here, met, judged),
         feeds=tuple(pin.key for pin in pins),
         kinds_fed=_kinds_fed(view, here),
-        active=judged.active,
+        active=judged.active or _helped(met, judged),
     )
     return _corrected(view.draft, node)
+
+
+def _helped(met: Ways, judged: Judged) -> str | None:
+    """A capacitor on the way that returns to a driven net: an amplifier, not a fixed level, moves its far end."""
+    if judged.role not in ("low-pass", "divider-low-pass"):
+        return None
+    driven = next((ref for ref, arm in met.capacitors.items() if arm.to == "driven"), None)
+    return f"an amplifier drives {driven}" if driven else None
 
 
 def _kinds_fed(view: View, here: Spot) -> tuple[str, ...]:

@@ -66,7 +66,7 @@ def test_inverting_input_without_pin_names_is_told_by_its_resistor_from_the_outp
 
 
 def test_feedback_is_traced_through_a_small_resistor_and_a_follower():
-    text = "R1 100M G VO\nR2 47 N G\nC1 2.7p N VO\nQ1 G=G D=+5V S=S\nR3 1k S GND\nU1 [op-amp] 1.OUT:output=VO 2.-=S 3.+=REF"
+    text = "R1 100M G VO\nR2 47 N G\nC1 2.7p N VO\nQ1 G=G D=+5V S=S\nR3 1k S GND\nU1 [op-amp] 1.OUT=VO 2.-=S 3.+=B"
     found = nodes(text, hold={"VO": "driven"})
     assert _feedback(found["N"])
     assert set(found["N"].parts) == {"R1", "R2", "C1"}
@@ -98,3 +98,16 @@ def test_gate_whose_output_comes_back_to_its_own_input_is_timing():
 def test_delay_between_two_gates_of_one_package_is_a_low_pass():
     text = "R1 100k Q N\nC1 10n N GND\nU1 [74HC14] 3.2A:input=N 4.2Y:output=X 2.1Y:output=Q"
     assert nodes(text, hold={"Q": "driven"})["N"].role == "low-pass"
+
+
+def test_filter_before_an_inverting_amplifier_is_no_feedback_but_active():
+    text = f"R1 1k A M\nC1 1n M GND\nR2 10k M N\nR3 10k N VO\n{AMP}"
+    node = nodes(text, hold={"A": "driven", "VO": "driven"})["M"]
+    assert (node.role, node.active) == ("low-pass", "amplifier U1 inside the loop at N")
+
+
+def test_leg_from_the_inverting_input_to_ground_is_feedback():
+    text = f"R1 1k N M\nC1 10u M GND\nR3 10k N VO\n{AMP}"
+    node = nodes(text, hold={"VO": "driven"})["M"]
+    assert _feedback(node)
+    assert node.parts[0] == "R1"
