@@ -48,7 +48,8 @@ def test_each_command_runs(command: str, reader_folder: Path, capfd: pytest.Capt
     assert out or any(reader_folder.glob("*.json"))
 
 
-def test_the_rule_shown_judges_the_demo_board(reader_folder: Path, capfd: pytest.CaptureFixture[str]) -> None:
+@pytest.mark.usefixtures("reader_folder")
+def test_the_rule_shown_judges_the_demo_board(capfd: pytest.CaptureFixture[str]) -> None:
     """The first rule of the README meets the probe filter and holds."""
     status = main(["check", "--rules", "our-rules.toml", "--verbose"])
     out, err = capfd.readouterr()
