@@ -1,11 +1,13 @@
 """The project file: rcrules.toml in, Project out."""
 
+from rcrules.project._facts import NUMBERS, line_for
 from rcrules.project._load import FILE_NAME, find, load, read
 from rcrules.project._match import is_ground, match, net_facts, part_facts, pin_facts, ranked, supply_for, unmatched
 from rcrules.project._model import NetFacts, Notice, PartFacts, PinFacts, Project, SupplyFacts
 
 __all__ = [
     "FILE_NAME",
+    "NUMBERS",
     "NetFacts",
     "Notice",
     "PartFacts",
@@ -14,6 +16,7 @@ __all__ = [
     "SupplyFacts",
     "find",
     "is_ground",
+    "line_for",
     "load",
     "match",
     "net_facts",

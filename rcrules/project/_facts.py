@@ -2,7 +2,8 @@
 
 import re
 from collections.abc import Callable, Mapping
-from typing import Any, Final
+from dataclasses import dataclass
+from typing import Any, Final, Literal
 
 from rcrules.levels import Level, parse_level
 from rcrules.project._model import NetFacts, PartFacts, PinFacts, SupplyFacts
@@ -16,8 +17,16 @@ MAX_TEXT: Final = 200
 _LIKE_QUANTITY: Final = re.compile(r"\s*[+−-]?[0-9.]+\s*[A-Za-zµμΩ°%/]{0,6}\s*")
 
 
-def _amount(unit: str | None, least: float | None = None) -> Reader:
-    return lambda table, key: table.quantity(key, unit, least=least)
+@dataclass(frozen=True, slots=True)
+class _Amount:
+    """Reads a quantity."""
+
+    unit: str | None
+    """SI unit; None = any."""
+    least: float | None = None
+
+    def __call__(self, table: Table, key: str) -> Spread | None:
+        return table.quantity(key, self.unit, least=self.least)
 
 
 def _word(*choices: str) -> Reader:
@@ -117,17 +126,17 @@ def _flag(table: Table, key: str) -> bool | None:
 
 
 SUPPLY: Final[Mapping[str, Reader]] = {
-    "voltage": _amount("V"),
-    "valid": _amount("V"),
-    "rise": _amount("s", 0),
+    "voltage": _Amount("V"),
+    "valid": _Amount("V"),
+    "rise": _Amount("s", 0),
     "after": _text,
-    "fall": _amount("s", 0),
-    "load": _amount("A"),
+    "fall": _Amount("s", 0),
+    "load": _Amount("A"),
 }
 NET: Final[Mapping[str, Reader]] = {
-    "swing": _amount("V"),
-    "source-resistance": _amount("Ω", 0),
-    "wiring-capacitance": _amount("F", 0),
+    "swing": _Amount("V"),
+    "source-resistance": _Amount("Ω", 0),
+    "wiring-capacitance": _Amount("F", 0),
     "role": _word(*ROLES),
     "held": _word(*HELD_KINDS, "free"),
 }
@@ -135,36 +144,52 @@ PIN: Final[Mapping[str, Reader]] = {
     "kind": _word(*PIN_KINDS),
     "low": _level,
     "high": _level,
-    "rising": _amount("V"),
-    "falling": _amount("V"),
+    "rising": _Amount("V"),
+    "falling": _Amount("V"),
     "pull-up": _pull,
     "pull-down": _pull,
-    "leakage": _amount("A"),
-    "capacitance": _amount("F", 0),
+    "leakage": _Amount("A"),
+    "capacitance": _Amount("F", 0),
     "max-voltage": _level,
     "drive": _drive,
-    "sample-capacitance": _amount("F", 0),
-    "sample-resistance": _amount("Ω", 0),
-    "acquisition-time": _amount("s", 0),
-    "full-scale": _amount("V"),
+    "sample-capacitance": _Amount("F", 0),
+    "sample-resistance": _Amount("Ω", 0),
+    "acquisition-time": _Amount("s", 0),
+    "full-scale": _Amount("V"),
 }
 DEFAULTS: Final[Mapping[str, Reader]] = {
     "tolerance": _tolerance,
-    "rated-voltage": _amount("V", 0),
-    "rated-power": _amount("W", 0),
+    "rated-voltage": _Amount("V", 0),
+    "rated-power": _Amount("W", 0),
     "dielectric": _text,
-    "tcr": _amount("1/K"),
+    "tcr": _Amount("1/K"),
     "bias-curve": _bias_curve,
-    "contact-resistance": _amount("Ω", 0),
-    "bounce": _amount("s", 0),
+    "contact-resistance": _Amount("Ω", 0),
+    "bounce": _Amount("s", 0),
 }
 PART: Final[Mapping[str, Reader]] = {
     **DEFAULTS,
     "kind": _word(*PART_KINDS),
-    "value": _amount(None, 0),
+    "value": _Amount(None, 0),
     "fitted": _flag,
     "contact": _word("normally open", "normally closed"),
 }
+
+NUMBERS: Final[Mapping[str, str]] = {
+    key.replace("-", "_"): reader.unit
+    for table in (NET, PIN, PART)
+    for key, reader in table.items()
+    if isinstance(reader, _Amount) and reader.unit is not None
+}
+"""Numbers of nets, pins and parts by the names that rules use, with their units."""
+_OWN: Final = {"net": NET, "pin": PIN, "part": PART}
+
+
+def line_for(table: Literal["net", "pin", "part"], name: str, number: str, text: str = "…") -> str:
+    """The line that gives a number: ``[pin."U5.AIN0"] acquisition-time = "…"``, or in ``set`` where it is not a key."""
+    key = number.replace("_", "-")
+    own = f'{key} = "{text}"' if key in _OWN[table] else f'set = {{ {number} = "{text}" }}'
+    return f'[{table}."{name}"] {own}'
 
 
 def supply_facts(table: Table) -> SupplyFacts:

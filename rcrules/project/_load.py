@@ -38,9 +38,9 @@ def read(path: Path, name: str | None = None) -> Project:
     return _load(root(file, Problems()))
 
 
-def load(file: str, text: str) -> Project:
-    """The project file with this text; ``file`` is its path. Raises UserMistake with all mistakes."""
-    return _load(root(load_toml(file, text), Problems()))
+def load(file: str, text: str | None = None) -> Project:
+    """The project file called ``file``, with this text or read from there. Raises UserMistake with all mistakes."""
+    return read(Path(file), file) if text is None else _load(root(load_toml(file, text), Problems()))
 
 
 def _load(top: Table) -> Project:
@@ -78,24 +78,19 @@ def _board(board: Table) -> dict[str, Any]:
 
 
 def _paths(board: Table, key: str) -> tuple[str, ...]:
-    """Paths of a key, taken from the folder of the file; an absolute one would bind the file to one machine."""
+    """Paths of a key, relative to the folder of the file; an absolute one would bind the file to one machine."""
     written = board.texts(key)
     many = isinstance(board.data.get(key), list)
     for number, path in enumerate(written):
         if posixpath.isabs(path) or Path(path).is_absolute() or not path.strip():
             where: tuple[str | int, ...] = (key, number) if many else (key,)
             board.wrong(where, f"'{key}' must be a path relative to this file", found=f"'{cut(path)}'")
-    return tuple(path if key == "rules" and not _is_path(path) else _beside(board, path) for path in written)
+    return tuple(path if key == "rules" and not _is_path(path) else posixpath.normpath(path) for path in written)
 
 
 def _is_path(rule: str) -> bool:
     """Else it is the name of a shipped pack."""
     return rule.endswith(".toml") or "/" in rule or "\\" in rule
-
-
-def _beside(board: Table, path: str) -> str:
-    """A path of the file, as the command can open it from where it runs."""
-    return posixpath.normpath(posixpath.join(posixpath.dirname(board.file.name), path))
 
 
 def _outside(board: Table) -> tuple[Notice, ...]:

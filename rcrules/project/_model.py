@@ -103,10 +103,10 @@ class Project:
     file: str | None = None
     name: str | None = None
     netlists: tuple[str, ...] = ()
-    """Paths as the command can open them: those of the file, taken from the file's folder."""
+    """Paths relative to the folder of the file."""
     boms: tuple[str, ...] = ()
     rules: tuple[str, ...] = ()
-    """Names of shipped packs, and paths (with ``.toml`` at the end)."""
+    """Names of shipped packs, and paths relative to the folder of the file."""
     waivers: str | None = None
     temperature: Spread | None = None
     """[degC]"""

@@ -22,14 +22,14 @@ def test_an_empty_file_says_nothing():
     assert load("") == Project(file="rcrules.toml")
 
 
-def test_paths_are_taken_from_the_folder_of_the_file():
+def test_paths_stay_relative_to_the_folder_of_the_file():
     text = '[board]\nnetlist = ["a.xml", "x/../b.xml"]\nbom = "../c.csv"\nrules = ["own/r.toml", "debounce"]\n'
     text += 'waivers = "w.toml"'
     found = load(text, "boards/one/rcrules.toml")
-    assert found.netlists == ("boards/one/a.xml", "boards/one/b.xml")
-    assert found.boms == ("boards/c.csv",)
-    assert found.rules == ("boards/one/own/r.toml", "debounce")
-    assert found.waivers == "boards/one/w.toml"
+    assert found.netlists == ("a.xml", "b.xml")
+    assert found.boms == ("../c.csv",)
+    assert found.rules == ("own/r.toml", "debounce")
+    assert found.waivers == "w.toml"
 
 
 def test_a_path_that_leaves_the_folder_is_said():
@@ -120,3 +120,14 @@ def test_mistakes_come_in_the_order_of_the_file():
 def test_hostile_numbers_end_in_a_message():
     with pytest.raises(UserMistake, match="must be a finite number"):
         load('[settings."r"]\na = 0x' + "f" * 5000 + "\nb = nan\nc = [1]")
+
+
+def test_the_line_that_gives_a_number_is_one_the_file_may_hold():
+    for line in (
+        project.line_for("pin", "U5.AIN0", "acquisition_time", "2 us"),
+        project.line_for("net", "SDA", "hold_time", "2 us"),
+        project.line_for("part", "SW1", "bounce", "2 us"),
+    ):
+        header, _, rest = line.partition("] ")
+        load(f"{header}]\n{rest}")
+    assert project.NUMBERS["acquisition_time"] == "s"
