@@ -21,6 +21,8 @@ from rcrules.parts import Known
 FILTER_OHMS: Final = 100.0
 """Up to here a resistor from a supply to a local supply pin is a filter; above, it is a node like any other."""
 
+SHUNT_OHMS: Final = 10.0
+"""Below, a resistor in a ground lead measures its current."""
 _INTERNAL: Final = re.compile(
     r"V[A-Z]{0,4}\d?|V(DD|CC|REF|REG|OUT|CAP|INT|CM|COM|MID|BIAS)\w*|\w*(CAP|REG|LDO|REF|DEC|BYP)\w*"
 )
@@ -47,7 +49,12 @@ def held_joints(scene: Scene) -> tuple[Verdicts, frozenset[str]]:
 
 def _deciding(scene: Scene, verdicts: Verdicts, step: Step) -> Iterator[tuple[str, Verdict]]:
     free = scene.facts.free
-    found = [(joint, step(scene, joint, verdicts)) for joint in scene.members if joint not in verdicts]
+    asked = (
+        joint
+        for joint in scene.members
+        if joint not in verdicts and (len(scene.pins[joint]) > 1 or step is _by_project)
+    )
+    found = [(joint, step(scene, joint, verdicts)) for joint in asked]
     return (
         (joint, verdict) for joint, verdict in found if verdict and not any(free(net) for net in scene.members[joint])
     )
@@ -73,11 +80,23 @@ def _ground(scene: Scene, joint: str, _: Verdicts) -> Verdict | None:
     strong = named is not None and hints[0].strong
     against = bool(hints) and hints[0].kind == "supply" and hints[0].strong
     real = [pin for pin in grounds if scene.kind(pin.ref) != "connector"]
-    enough = len(grounds) > len(supplies) and not against and (bool(real) or named is not None or len(grounds) > 1)
+    lifted = named is None and len(real) == 1 and _is_lifted(scene, joint)
+    enough = (
+        not lifted
+        and len(grounds) > len(supplies)
+        and not against
+        and (bool(real) or named is not None or len(grounds) > 1)
+    )
     bonded = (named is not None or bool(grounds)) and not supplies and _bonded(scene, joint)
     if not (strong or enough or bonded):
         return None
     return Verdict(kind="ground", volts=0.0, evidence=(*_given(named), *keys(grounds)), sure=strong or bool(real))
+
+
+def _is_lifted(scene: Scene, joint: str) -> bool:
+    """A single ground pin on resistors that are no shunts: an adjustable regulator's, lifted by a divider."""
+    values = [scene.parts[item.ref].value for item, _ in scene.far_ends(joint, "resistor")]
+    return any(isinstance(value, Known) and value.si >= SHUNT_OHMS for value in values)
 
 
 def _bonded(scene: Scene, joint: str) -> bool:
@@ -89,8 +108,8 @@ def _bonded(scene: Scene, joint: str) -> bool:
     )
 
 
-def _source(scene: Scene, joint: str, _: Verdicts) -> Verdict | None:
-    pins = scene.says(joint, say.SOURCE) or _own_supply(scene, joint)
+def _source(scene: Scene, joint: str, verdicts: Verdicts) -> Verdict | None:
+    pins = scene.says(joint, say.SOURCE) or _own_supply(scene, joint, verdicts)
     batteries = [pin for pin in scene.of_kind(joint, "battery") if pin in scene.says(joint, say.SUPPLY)]
     if joint in scene.switching or not (pins or batteries):
         return None
@@ -98,11 +117,13 @@ def _source(scene: Scene, joint: str, _: Verdicts) -> Verdict | None:
     return _supply(scene, joint, keys((*pins, *batteries)), sure=sure)
 
 
-def _own_supply(scene: Scene, joint: str) -> tuple[Pin, ...]:
+def _own_supply(scene: Scene, joint: str, verdicts: Verdicts) -> tuple[Pin, ...]:
     """A chip's pin of a supply's name with nothing but capacitors on it: an internal supply or reference."""
     pins = [pin for pin in scene.pins[joint] if scene.kind(pin.ref) not in ("capacitor", "test-point")]
-    alone = len(pins) == 1 and scene.kind(pins[0].ref) in ("ic", "other") and bool(scene.far_ends(joint, "capacitor"))
-    return tuple(pins) if alone and _INTERNAL.fullmatch(pins[0].name.upper()) else ()
+    if len(pins) != 1 or scene.kind(pins[0].ref) not in ("ic", "other") or scene.says(joint, say.NEVER, say.SWITCH):
+        return ()
+    to_ground = any(_is(verdicts, far, "ground") for _, far in scene.far_ends(joint, "capacitor"))
+    return tuple(pins) if to_ground and _INTERNAL.fullmatch(pins[0].name.upper()) else ()
 
 
 def _named_supply(scene: Scene, joint: str, _: Verdicts) -> Verdict | None:
@@ -119,9 +140,15 @@ def _named_supply(scene: Scene, joint: str, _: Verdicts) -> Verdict | None:
 
 def _supply_pins(scene: Scene, joint: str, _: Verdicts) -> Verdict | None:
     pins = scene.says(joint, say.SUPPLY, say.NEGATIVE)
-    if not pins or joint in scene.switching or only_fed_by_resistors(scene, joint):
+    if not pins or joint in scene.switching or only_fed_by_resistors(scene, joint) or _pulled(scene, joint, pins):
         return None
     return _supply(scene, joint, keys(pins), sure=any(pin.type == "power-in" for pin in pins))
+
+
+def _pulled(scene: Scene, joint: str, pins: tuple[Pin, ...]) -> bool:
+    """One pin that nothing but resistors reaches: a sense pin or strap with a supply's name."""
+    others = {scene.kind(pin.ref) for pin in scene.pins[joint] if pin not in pins}
+    return len(pins) == 1 and pins[0].type != "power-in" and others == {"resistor"}
 
 
 def _local(scene: Scene, joint: str, verdicts: Verdicts) -> Verdict | None:

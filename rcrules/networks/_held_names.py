@@ -21,12 +21,18 @@ _VOLTAGES: Final = tuple(
     for pattern in (
         # +3V3 12VIN 1V8A -5V +3.3V 24V_A; V or P in the decimal's place
         r"(?<![A-Z0-9.])(?P<sign>[-+]?)(?P<whole>\d{1,3})(?:\.(?P<part>\d{1,2}))?V(?![A-Z]?\.)(?P<tail>\d{1,2})?(?!\d)",
-        # P2V5 VCC1V0 VDD_3V3 AVDD1.8V N12V
-        r"(?<![A-Z0-9])(?P<sign>[PNMV]|[AD]?V(?:CC|DD|EE|SS|BUS|IN|OUT)[A-Z]{0,3}_?)(?P<whole>\d{1,3})(?:V(?P<tail>\d{1,2})?|\.(?P<part>\d{1,2})V?)(?!\d)",
-        # V3P3D V1P2 P3P3V 3P3V VDD_1P8
-        r"(?<![A-Z0-9])(?P<sign>[-+]|[PN]|[AD]?V(?:CC|DD)?_?)?(?P<whole>\d{1,2})P(?P<tail>\d{1,2})V?(?!\d)",
+        # P2V5 N12V; with a point only after a word of a supply, P1.5 is a port
+        r"(?<![A-Z0-9])(?P<sign>[PNM])(?P<whole>\d{1,3})(?:\.(?P<part>\d{1,2}))?V(?P<tail>\d{1,2})?(?!\d)",
+        # VCC1V0 VDD_3V3 AVDD1.8V V3.3
+        r"(?<![A-Z0-9])(?P<sign>[AD]?V(?:CC|DD|EE|SS|BUS|IN|OUT)?[A-Z]{0,3}_?)(?P<whole>\d{1,3})"
+        r"(?:V(?P<tail>\d{1,2})?|\.(?P<part>\d{1,2})V?)(?!\d)",
+        # V3P3D V1P2 VDD_1P8
+        r"(?<![A-Z0-9])(?P<sign>[AD]?V(?:CC|DD)?_?)(?P<whole>\d{1,2})P(?P<tail>\d{1,2})V?(?!\d)",
+        # P3P3V 3P3V
+        r"(?<![A-Z0-9])(?P<sign>[-+PN])?(?P<whole>\d{1,2})P(?P<tail>\d{1,2})V(?!\d)",
         # VDD33 VCC18 VDDIO25
-        r"(?<![A-Z0-9])(?P<sign>[AD]?V(?:CC|DD)(?:IO|A|D)?_?)(?P<whole>[1235])(?P<tail>(?<=3)3|(?<=1)8|(?<=2)5|(?<=2)8|(?<=1)5|(?<=5)0)(?!\d)",
+        r"(?<![A-Z0-9])(?P<sign>[AD]?V(?:CC|DD)(?:IO|A|D)?_?)"
+        r"(?P<whole>[1235])(?P<tail>(?<=3)3|(?<=1)8|(?<=2)5|(?<=2)8|(?<=1)5|(?<=5)0)(?!\d)",
     )
 )
 
@@ -38,110 +44,20 @@ _VIRTUAL: Final = re.compile(r"V(?:IRTUAL)?_?GR?(?:OU)?NDS?")
 """A virtual ground is a supply."""
 
 _SUPPLY: Final = re.compile(
-    r"[AD]?VCC[A-Z]{0,5}|[ADPM]?VDD[A-Z]{0,5}|AVCC|VEE|VBAT[A-Z]*|BATT?|BATTERY|V?BUS|VBUS|VUSB|VIN|VOUT|VSYS|VREF[A-KMO-Z]*|VPP|VAA|VTT|VPWR|PWR|VMOT|VM|VRAW"
-    r"|VS|VSUP|VSUPPLY|VCORE|VIO|VLOGIC|VMAIN|VANA|VDIG|VUNREG|VBOOST|VLED|VSERVO|VHV|VPOS|VNEG|AVEE|ПИТАНИЕ|UB|UBAT|UIN"
+    r"[AD]?VCC[A-Z]{0,5}|[ADPM]?VDD[A-Z]{0,5}|AVCC|VEE|VBAT[A-Z]*|BATT?|BATTERY|V?BUS|VBUS|VUSB|VIN|VOUT|VSYS|VREF[A-KMO-Z]*|VPP|VAA|VTT"
+    r"|VPWR|PWR|VMOT|VM|VRAW|VS|VSUP|VSUPPLY|VCORE|VIO|VLOGIC|VMAIN|VANA|VDIG|VUNREG|VBOOST|VLED|VSERVO|VHV|VPOS|VNEG|AVEE|ПИТАНИЕ|UB|UBAT|UIN"
 )
 _STRICT_SUPPLY: Final = re.compile(r"[AD]?VCC[A-Z]{0,5}|[ADPM]?VDD[A-Z]{0,5}|VBAT|VBUS|VUSB|VSYS|VEE|VPP|VAA")
 _BUS: Final = re.compile(r"(?<![A-Z])V(?:BUS|USB)(?![A-Z])")
 _USB_VOLTS: Final = 5.0
 
-_SIGNAL: Final = frozenset(
-    [
-        "EN",
-        "ENA",
-        "ENABLE",
-        "EN1",
-        "PG",
-        "PGOOD",
-        "PWRGD",
-        "PWRGOOD",
-        "PWROK",
-        "POK",
-        "OK",
-        "GOOD",
-        "FB",
-        "SENSE",
-        "SNS",
-        "SEN",
-        "MON",
-        "MONITOR",
-        "MEAS",
-        "DET",
-        "DETECT",
-        "ADC",
-        "AIN",
-        "FLT",
-        "FLAG",
-        "FAULT",
-        "CTRL",
-        "CTL",
-        "ON",
-        "OFF",
-        "ONOFF",
-        "SHDN",
-        "LX",
-        "PH",
-        "PHASE",
-        "COMP",
-        "TRIM",
-        "ADJ",
-        "SET",
-        "UVLO",
-        "OVP",
-        "OC",
-        "SEL",
-        "RST",
-        "RESET",
-        "NRST",
-        "INT",
-        "IRQ",
-        "ALERT",
-        "STAT",
-        "STATUS",
-        "PWM",
-        "DIS",
-        "BOOT",
-        "BST",
-        "GATE",
-        "TX",
-        "RX",
-        "TXD",
-        "RXD",
-        "SCL",
-        "SDA",
-        "CLK",
-        "CLOCK",
-        "DATA",
-        "SCK",
-        "MOSI",
-        "MISO",
-        "CS",
-        "SS",
-        "BTN",
-        "BUTTON",
-        "KEY",
-        "LED_K",
-        "WAKE",
-        "TEST",
-        "TEMP",
-        "DIV",
-        "SCALED",
-        "LEVEL",
-        "LVL",
-        "CMD",
-        "REQ",
-        "ACK",
-        "DISCH",
-        "CHG",
-        "CE",
-        "OE",
-        "LO",
-        "HI",
-        "WARN",
-        "LOW",
-        "VALID",
-    ]
-)
+_SIGNAL_WORDS: Final = """
+    EN ENA ENABLE EN1 PG PGOOD PWRGD PWRGOOD PWROK POK OK GOOD FB SENSE SNS SEN MON MONITOR MEAS DET DETECT ADC
+    AIN FLT FLAG FAULT CTRL CTL ON OFF ONOFF SHDN LX PH PHASE COMP TRIM ADJ SET UVLO OVP OC SEL RST RESET NRST
+    INT IRQ ALERT STAT STATUS PWM DIS BOOT BST GATE TX RX TXD RXD SCL SDA CLK CLOCK DATA SCK MOSI MISO CS SS BTN
+    BUTTON KEY LED_K WAKE TEST TEMP DIV SCALED LEVEL LVL CMD REQ ACK DISCH CHG CE OE LO HI WARN LOW VALID
+"""
+_SIGNAL: Final = frozenset(_SIGNAL_WORDS.split())
 """Words that make ``EN_3V3``, ``1V8_PGOOD``, ``VBAT_SENSE`` a signal about a supply, not the supply."""
 
 

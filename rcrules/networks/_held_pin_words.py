@@ -16,12 +16,13 @@ _GROUND: Final = r"""
 _NEGATIVE: Final = r"V- VS- -VS VCC- -VCC A?VEE -V V-/GND GND/V-"
 _NEVER: Final = r"""
     .*_(EN(ABLE)?|FB|PG|OK|SEL|SET|SNS|SENSE|MODE|CTRL|ADJ|DET)
+    .*/~?(EN(ABLE)?|SHDN|RST|RESET)~? CNTRL.* CTRL.*
     COMP[A-Z]? V?C?ITH V?FB[A-Z+\-]? FEEDBACK ADJ(/GND)? GND/ADJ V?SENSE?[+\-PN]? VSNS REF_?ADJ
     V?SS(/(TR|PG).*)? TR(AC)?K SOFT_?START RT(/.*)? CT RC RT/CT TIM(ER)? C?T?DLY CDELAY CV CONT(ROL)?
     THR(ES)? THRESH(OLD)? TRIG? DIS(CH)?
     REXT RBIAS [RIV]SET I?LIM IREF I?MON I?PROG ISENSE CS[+\-PN]? ZQ UVLO OVP [A-Z]*VR[PN](_.*)? AGC FILT(ER)?
     X(TAL)?_?(IN|OUT|[IO])? E?XTAL.* OSC(_?(IN|OUT|[IO]))? XT[IO] .*/E?XTAL\d* .*OSC32_?(IN|OUT).*
-    BO?O?ST(RAP)? V?BST CB CBOOT VB BOOT C\d*[+\-] CAP\d*[+\-] C[A-Z]?[+\-] FL(Y|T)?[+\-] CF(LY)?[+\-PN]
+    BO?O?ST(RAP)? V?BST BTST CB CBOOT VB BOOT C\d*[+\-] CAP\d*[+\-] C[A-Z]?[+\-] FL(Y|T)?[+\-] CF(LY)?[+\-PN]
     SPLIT EN(ABLE)?[A-Z]? SHDN N?RE?SE?T_?N? MCLR.* V?RST.*
 """
 _SWITCH: Final = r"SW[A-Z]? SW_[\dA-Z]* LX[A-Z]? PHASE PH LL VSW SWITCH DCC DCDC_?SW L[XN]?_?SW SWOUT"

@@ -40,6 +40,7 @@ _POSITIONS: Final = {
     ("3", "12"): frozenset(("1", "2", "13", "14")),
 }
 """Supply pins, positive and negative -> outputs: single in 5 and 8 pins, dual, quad amplifier, quad comparator."""
+_POWERED: Final = ("power-in", "power-out")
 _CONNECTOR_NAMES: Final = frozenset((GROUND, SUPPLY))
 
 
@@ -50,7 +51,8 @@ def claim(pin: Pin, part: RatedPart, *, regulator: bool) -> str:
         return _of_chip(pin, regulator=regulator)
     if kind == "connector":
         found = by_name(pin.name)
-        return found if found in _CONNECTOR_NAMES else NOTHING
+        signal = found == SUPPLY and (_IN.fullmatch(pin.name.upper()) is not None and pin.type not in _POWERED)
+        return found if found in _CONNECTOR_NAMES and not signal else NOTHING
     return SUPPLY if kind == "battery" and _positive(pin) else NOTHING
 
 

@@ -20,6 +20,8 @@ _SERIES: Final = re.compile(
     r"(?<!\d)(?P<sign>78|79)(?:[LMTS]|HC)?(?P<volts>05|06|08|09|10|12|15|18|24|33)(?!\d)", re.IGNORECASE
 )
 """The type numbers 78xx and 79xx, whose last digits are the voltage (33 = 3.3 V)."""
+_QUIET: Final = re.compile(r"BYP(ASS)?|NR|CRES|DEC\w*|SS\w*|INT\w*|V?CAP\w*")
+"""Pins of a regulator that carry another voltage than its output."""
 _COIN: Final = re.compile(r"\b[BC]R\d{4}\b", re.IGNORECASE)
 """Designations of lithium coin cells in IEC 60086: 3 V."""
 _COIN_VOLTS: Final = 3.0
@@ -42,14 +44,10 @@ def _readings(scene: Scene, joint: str) -> Iterator[tuple[float | None, str]]:
         if named.kind == "supply":
             yield named.volts, "the net name"
     sources = scene.says(joint, say.SOURCE)
-    coils = [
-        pin
-        for far in scene.coils.get(joint, ())
-        for pin in scene.of_kind(far, "ic")
-        if scene.says(far, say.SWITCH) or True
-    ]
+    coils = [pin for far in scene.coils.get(joint, ()) for pin in scene.of_kind(far, "ic")]
     for pin in (*sources, *coils):
-        yield regulated(scene.parts[pin.ref]), f"the value of {pin.ref}"
+        if not _QUIET.fullmatch(pin.name.upper()):
+            yield regulated(scene.parts[pin.ref]), f"the value of {pin.ref}"
     for pin in sources:
         yield pin_volts(pin), f"pin {pin.key}"
     for pin in scene.says(joint, say.SUPPLY):
@@ -77,7 +75,7 @@ def pin_volts(pin: Pin) -> float | None:
     """The voltage written in a pin's name: ``LDO33``, ``VOUT33``, ``V1.8_OUT``, ``VREG_3V3``."""
     found = _PIN_VOLTS.search(pin.name.upper())
     if found is None:
-        return None
+        return volts_in(pin.name)
     return float(found["pair"]) / 10 if found["pair"] else float(f"{found['whole']}.{found['part']}")
 
 

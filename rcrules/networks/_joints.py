@@ -2,20 +2,26 @@
 
 from collections.abc import Iterable, Mapping
 from dataclasses import dataclass, field
+from typing import Final
 
 from rcrules.design import Design, Pin, natural
 from rcrules.networks._held_names import leaf
 from rcrules.parts import RatedPart
+
+GROUND: Final = "ground"
+SUPPLY: Final = "supply"
+Rail = str | float
+"""``ground``, ``supply`` of unknown voltage, or a voltage [V]."""
 
 
 @dataclass(slots=True, kw_only=True)
 class Joining:
     """A growing partition of nets; ``rails`` keeps two nets apart that cannot be one (a ground and a supply)."""
 
-    rails: Mapping[str, object]
-    """Net -> what it certainly is; two nets with different entries are never joined."""
+    rails: Mapping[str, Rail]
+    """Net -> what it certainly is."""
     parent: dict[str, str] = field(default_factory=dict)
-    rail: dict[str, object] = field(default_factory=dict)
+    rail: dict[str, Rail] = field(default_factory=dict)
 
     def find(self, net: str) -> str:
         """The net that stands for the set so far."""
@@ -34,16 +40,21 @@ class Joining:
             for rail in (self.rail.get(a, self.rails.get(a)), self.rail.get(b, self.rails.get(b)))
             if rail is not None
         ]
-        if len(rails) == 2 and rails[0] != rails[1]:
+        if len(rails) == 2 and _apart(*rails):
             return False
         self.parent[b] = a
         if rails:
-            self.rail[a] = rails[0]
+            self.rail[a] = next((rail for rail in rails if isinstance(rail, float)), rails[0])
         return True
 
 
+def _apart(one: Rail, other: Rail) -> bool:
+    """Ground and a supply, or supplies of two voltages; a supply of unknown voltage may be any."""
+    return one != other and (GROUND in (one, other) or (isinstance(one, float) and isinstance(other, float)))
+
+
 def joints(
-    design: Design, parts: Mapping[str, RatedPart], pairs: Iterable[tuple[Pin, Pin]], rails: Mapping[str, object]
+    design: Design, parts: Mapping[str, RatedPart], pairs: Iterable[tuple[Pin, Pin]], rails: Mapping[str, Rail]
 ) -> tuple[dict[str, str], dict[str, tuple[str, ...]]]:
     """Net -> joint and joint -> nets. A joint is called by its named net, or that with most capacitors and pins."""
     joining = Joining(rails=rails)

@@ -153,12 +153,9 @@ def _is_ground(verdicts: Verdicts, joint: str) -> bool:
 def _carries_signal(scene: Scene, joint: str) -> bool:
     small = [item for item, _ in scene.far_ends(joint, "resistor") if not _is_large(scene, item.ref)]
     fused = bool(scene.of_kind(joint, "fuse"))
-    clamped = any(diode.cathode == joint for diode in scene.diodes.get(joint, ())) and not fused
-    return (
-        bool(scene.of_kind(joint, *_SIGNALS))
-        or (bool(small) and not fused)
-        or (clamped and bool(scene.of_kind(joint, "ic")))
-    )
+    up = [diode.ref for diode in scene.diodes.get(joint, ()) if diode.anode == joint]
+    clamped = any(diode.cathode == joint and diode.ref in up for diode in scene.diodes.get(joint, ()))
+    return bool(scene.of_kind(joint, *_SIGNALS)) or (bool(small) and not fused) or clamped
 
 
 def _is_large(scene: Scene, ref: str) -> bool:

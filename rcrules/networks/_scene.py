@@ -9,6 +9,7 @@ from rcrules.design import Design, Pin
 from rcrules.networks import _held_claims as say
 from rcrules.networks._held_names import NameHint, hint
 from rcrules.networks._held_pins import claim, is_regulator, outputs_by_position
+from rcrules.networks._joints import Rail
 from rcrules.networks._joints import joints as join_nets
 from rcrules.networks._links import branch, branches, contact, diodes, is_thermistor, joined
 from rcrules.networks._model import Branch, Contact, Diode
@@ -72,7 +73,7 @@ def scene(design: Design, parts: Mapping[str, RatedPart], facts: Facts) -> Scene
     switching = _switching(design, parts, by_net)
     pairs = [pair for part in fitted for pair in joined(part, facts.project) if not _coil(part, switching)]
     pairs += [fuse for part in fitted if (fuse := _series_thermistor(design, parts, by_net, part))]
-    joints, members = join_nets(design, parts, pairs, _rails(design, facts))
+    joints, members = join_nets(design, parts, pairs, _rails(design, facts, by_net))
     pins = {
         joint: tuple(pin for net in nets for pin in design.nets[net].pins if _is_fitted(parts, pin))
         for joint, nets in members.items()
@@ -145,16 +146,19 @@ def _series_thermistor(
     return None
 
 
-def _rails(design: Design, facts: Facts) -> dict[str, object]:
-    """Nets that certainly are ground or a supply of a given voltage: never joined with each other."""
-    found: dict[str, object] = {}
-    for net in design.nets:
-        named = hint(net)
-        if facts.is_ground(net):
-            found[net] = "ground"
-        elif named and named.strong and (named.kind == "ground" or named.volts is not None):
-            found[net] = "ground" if named.kind == "ground" else named.volts
-    return found
+def _rails(design: Design, facts: Facts, claims: Mapping[str, Mapping[str, list[Pin]]]) -> dict[str, Rail]:
+    """Nets that certainly are ground or a supply: a strap of two links never joins them."""
+    found = {net: _rail(net, facts, claims.get(net, {})) for net in design.nets}
+    return {net: rail for net, rail in found.items() if rail is not None}
+
+
+def _rail(net: str, facts: Facts, claims: Mapping[str, list[Pin]]) -> Rail | None:
+    named = hint(net)
+    if facts.is_ground(net) or (named and named.strong and named.kind == "ground"):
+        return "ground"
+    if named and named.kind == "supply" and named.volts is not None:
+        return named.volts
+    return "supply" if say.SOURCE in claims else None
 
 
 def _merged(
