@@ -7,7 +7,7 @@ from functools import lru_cache
 from rcrules.design import Pin
 from rcrules.names import has_token, tokens
 from rcrules.networks._family import family, inverting
-from rcrules.networks._fed_words import CHANNEL, CONVERTER, FEEDBACK, RESET, SUPPLY, TIMING
+from rcrules.networks._fed_words import CHANNEL, CONVERTER, FEEDBACK, OUTPUT, RESET, SUPPLY, TIMING
 from rcrules.networks._spot import Spot, View
 
 
@@ -55,7 +55,14 @@ def reads(view: View, pin: Pin) -> bool:
     kind = view.kind(pin)
     if kind == "transistor":
         return is_control(view, pin)
-    return kind == "ic" and pin.type not in ("open-collector", "open-emitter", "power-out", "no-connect")
+    if kind != "ic" or pin.type in ("open-collector", "open-emitter", "power-out", "no-connect"):
+        return False
+    return family_of(view, pin.ref) == "controller" or not _drives(pin)
+
+
+def _drives(pin: Pin) -> bool:
+    """Whether a pin is an output by its name."""
+    return pin.type != "input" and any(word.startswith(OUTPUT) for word in tokens(pin.name))
 
 
 def is_control(view: View, pin: Pin) -> bool:

@@ -23,6 +23,8 @@ SWITCH: Final = frozenset(("SW", "LX", "LL", "PH", "PHASE", "VSW", "HS", "VS", "
 CURRENT: Final = frozenset(("MON", "IMON", "CS", "CSP", "CSN", "ISEN", "ISENSE", "ISNS", "SENSE", "IS", "IMEAS"))
 CONVERTER: Final = frozenset(("ADC", "AIN", "AN"))
 CHANNEL: Final = frozenset(("CH", "IN", "AIN", "VIN", "AN", "A"))
+OUTPUT: Final = ("AOUT", "VOUT", "IOUT", "DOUT", "OUT", "SDO", "DAC")
+"""Starts of the words of pins that drive, at parts that are no controllers."""
 BUS: Final = frozenset(("SDA", "SCL", "SMBDAT", "SMBCLK", "SMBDATA", "SMBCLOCK", "SMDAT", "SMCLK", "ALERT"))
 CENTRE: Final = frozenset(("SPLIT", "CT", "CTT", "VCM", "VTT", "VOCM"))
 BUTTON: Final = frozenset(("BTN", "BUTTON", "KEY", "SW", "SWITCH", "PUSH"))

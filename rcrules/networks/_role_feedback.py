@@ -46,12 +46,21 @@ def _amplifier(view: View, here: Spot) -> Judged | None:
         for pin in outputs:
             if _closes(view, here, pin):
                 return _loop(arm, pin)
+            if arm in here.capacitors and _returns(here, pin):
+                return _loop(arm, pin, sure=False)
     return _leg(view, here)
 
 
-def _loop(arm: Arm, output: Pin) -> Judged:
-    why = f"{arm.ref} from output {output.key} back to its inverting input"
-    return Judged(role="feedback", why=(why,), active=f"amplifier {output.ref} inside the loop")
+def _loop(arm: Arm, output: Pin, *, sure: bool = True) -> Judged:
+    why = f"{arm.ref} from output {output.key} back to its {'inverting ' if sure else ''}input"
+    return Judged(role="feedback", sure=sure, why=(why,), active=f"amplifier {output.ref} inside the loop")
+
+
+def _returns(here: Spot, output: Pin) -> bool:
+    """Whether an input of the same amplifier, of either sign, is at the joint itself."""
+    return any(
+        pin.ref == output.ref and inverting(pin.name) is not None and _unit(pin) == _unit(output) for pin in here.pins
+    )
 
 
 def _outputs(view: View, arm: Arm) -> tuple[Pin, ...]:

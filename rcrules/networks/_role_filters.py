@@ -6,7 +6,9 @@ from rcrules.networks._role_parts import LIGHT, ends, kinds_at, signal_above, st
 from rcrules.networks._spot import Arm, Spot, View, greatest, least
 
 PULL = 5.0
-"""A resistor to a rail of this many times the series resistor is its pull, not a divider's arm."""
+"""A resistor to a supply of this many times the series resistor is its pull, not a divider's arm."""
+PULL_DOWN = 20.0
+"""The same for a resistor to ground, where a divider is the usual case."""
 
 
 def high_pass(view: View, here: Spot) -> Judged | None:
@@ -29,7 +31,7 @@ def divider(view: View, here: Spot) -> Judged | None:
     high = [arm for arm in here.resistors if kinds_at(view, arm, here.joint) - {"ground"} and arm not in low]
     if not low:
         low, high = _two_levels(view, here, high)
-    if not low or not high or _is_pull(low, high):
+    if not low or not high or _is_pull(view, here, low, high):
         return None
     why = f"tap between {high[0].ref} and {low[0].ref}"
     return Judged(role="divider-low-pass", why=(why,))
@@ -94,9 +96,10 @@ def _dwarfs(arm: Arm, other: Arm) -> bool:
     return arm.value is not None and other.value is not None and arm.value >= LIGHT * other.value
 
 
-def _is_pull(low: list[Arm], high: list[Arm]) -> bool:
-    """Whether one side only keeps a driven signal at rest: the arm from a driven net is much smaller."""
-    driven = [arm for arm in high if arm.to != "supply"]
-    return (bool(driven) and PULL * 4 * greatest(driven) <= least(low)) or (
-        bool(driven) and low[0].to == "supply" and PULL * greatest(driven) <= least(low)
-    )
+def _is_pull(view: View, here: Spot, low: list[Arm], high: list[Arm]) -> bool:
+    """Whether one side only keeps a driven signal at rest: the arm from it is much smaller."""
+    driven = [arm for arm in high if "driven" in kinds_at(view, arm, here.joint)]
+    if not driven or any(arm.value is None for arm in driven + low):
+        return False
+    times = PULL if low[0].to == "supply" else PULL_DOWN
+    return times * greatest(driven) <= least(low)

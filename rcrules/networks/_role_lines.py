@@ -3,7 +3,7 @@
 from rcrules.networks._fed import words_of
 from rcrules.networks._fed_words import BUS, CENTRE, CURRENT
 from rcrules.networks._role import Judged
-from rcrules.networks._spot import Spot, View, greatest, least
+from rcrules.networks._spot import Arm, Spot, View, greatest, least
 
 COMMON = 2000.0
 """Greatest resistance of a line termination's halves. [Ω]"""
@@ -16,7 +16,9 @@ LOOP = 500.0
 def termination(view: View, here: Spot) -> Judged | None:
     """Two equal line resistors that meet at a capacitor."""
     lines = [arm for arm in here.resistors if not arm.fixed]
-    if len(lines) < 2 or len(lines) != len(here.resistors) or not all(arm.fixed for arm in here.capacitors):
+    if len(lines) != len(here.resistors) or not all(arm.fixed for arm in here.capacitors):
+        return None
+    if sum(_is_line(view, arm) for arm in lines) < 2 or any(_is_filtered(view, arm) for arm in lines):
         return None
     if any(not words_of(pin) & CENTRE for pin in here.pins if view.kind(pin) == "ic"):
         return None
@@ -25,6 +27,15 @@ def termination(view: View, here: Spot) -> Judged | None:
     if len({arm.far for arm in lines}) < 2 or len(values) % 2 or not pairs or greatest(lines) > COMMON:
         return None
     return Judged(role="termination", why=("equal resistors from two lines meet here",), also=tuple(lines))
+
+
+def _is_line(view: View, arm: Arm) -> bool:
+    """Whether an arm leads to a signal that two or more parts share, or that is driven."""
+    return arm.to == "driven" or (arm.held is None and len({pin.ref for pin in view.at(arm.far).pins}) >= 2)
+
+
+def _is_filtered(view: View, arm: Arm) -> bool:
+    return arm.held is None and bool(view.at(arm.far).capacitors)
 
 
 def sense_shunt(view: View, here: Spot) -> Judged | None:

@@ -9,7 +9,7 @@ from typing import Final
 from rcrules.networks._role import Judged
 from rcrules.networks._spot import Arm, Spot, View
 
-FAR: Final = 256
+FAR: Final = 64
 """Joints looked at on the way to a source; a way that is longer counts as one that arrives."""
 LIGHT: Final = 10.0
 """A load of this many times the resistance that feeds a joint does not set its time."""

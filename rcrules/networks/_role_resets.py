@@ -84,7 +84,7 @@ def _filter_without_pin(view: View, here: Spot, sources: tuple[Arm, ...], pins: 
     if least(sources) > FILTER or len(fixed) != len(here.capacitors):
         return None
     unknown = all(kind_fed(view, pin) == "other" for pin in pins)
-    if unknown and (here.pins or here.diodes):
+    if unknown and not view.has_kind(here, "connector") and (here.pins or here.diodes):
         return Judged(
             role="supply-filter", sure=bool(here.pins), why=("small enough to supply a part",), only=sources + fixed
         )

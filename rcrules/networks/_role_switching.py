@@ -65,7 +65,8 @@ def _onward(resistor: Arm, capacitor: Arm, where: str) -> Judged | None:
     if capacitor.held is None:
         return None
     if capacitor.to == "driven":
-        return Judged(role="high-pass", sure=False, why=(f"{capacitor.ref} couples {capacitor.far} onward",))
+        why = f"{capacitor.ref} couples {capacitor.far} onward"
+        return Judged(role="high-pass", sure=False, why=(why,), alone=True)
     return Judged(role="other", sure=False, why=(where, f"loads the node {resistor.far}"), alone=True)
 
 

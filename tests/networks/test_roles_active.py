@@ -111,3 +111,19 @@ def test_leg_from_the_inverting_input_to_ground_is_feedback():
     node = nodes(text, hold={"VO": "driven"})["M"]
     assert _feedback(node)
     assert node.parts[0] == "R1"
+
+
+def test_capacitor_between_two_halves_of_a_dual_amplifier_is_a_high_pass():
+    text = "C1 1u VO N\nR1 100k N GND\nU1 [op-amp] 1.OUT:output=VO 2.-=VO 3.+=A 5.+=N 6.-=W 7.OUT:output=W"
+    assert nodes(text, hold={"VO": "driven", "W": "driven"})["N"].role == "high-pass"
+
+
+def test_capacitor_from_an_output_to_its_own_other_input_is_feedback_but_not_for_sure():
+    text = "C1 1n VO N\nR1 10k A N\nU1 [op-amp] 1.OUT:output=VO 2.-=VO 3.+=N 5.+=X 6.-=W 7.OUT:output=W"
+    node = nodes(text, hold={"VO": "driven", "W": "driven", "A": "driven"})["N"]
+    assert (node.role, node.certainty) == ("feedback", "unsure")
+
+
+def test_output_of_a_converter_is_not_fed():
+    node = nodes("R1 1k A N\nC1 1n N GND\nU1 AOUT1:bidirectional=N\nU2 IN:input=N", hold={"A": "driven"})["N"]
+    assert node.feeds == ("U2.IN",)

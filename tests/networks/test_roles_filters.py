@@ -55,3 +55,21 @@ def test_supply_into_an_analog_input_is_a_low_pass():
 def test_value_that_is_not_known_does_not_hide_a_role():
     node = nodes("R1 LDR +5V N\nR2 100k N GND\nC1 C N GND\nU1 CH1:input=N")["N"]
     assert (node.role, node.evidence[0]) == ("divider-low-pass", "R1 LDR to +5V")
+
+
+def test_divider_of_unknown_values_is_still_a_divider():
+    node = nodes("R1 R A N\nR2 R N GND\nC1 100n N GND\nU1 IN:input=N", hold=DRIVEN)["N"]
+    assert node.role == "divider-low-pass"
+
+
+def test_long_ladder_takes_no_more_parts_than_a_bounded_way_gives():
+    text = "\n".join(f"R{i} 1k N{i} N{i + 1}\nC{i} 1n N{i + 1} GND" for i in range(200)) + "\nU1 IN=N200"
+    found = nodes(text, hold={"N0": "driven"})
+    assert len(found) == 200
+    assert {node.role for node in found.values()} == {"low-pass"}
+    assert len(found["N200"].parts) < 200
+
+
+def test_two_equal_stages_are_low_passes_and_no_termination():
+    found = nodes("R1 1k A M\nC1 1n M GND\nR2 1k M N\nC2 1n N GND\nU1 AIN1:input=N", hold=DRIVEN)
+    assert [found[net].role for net in "MN"] == ["low-pass", "low-pass"]
