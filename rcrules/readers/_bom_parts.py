@@ -16,7 +16,7 @@ from rcrules.readers._table import Row
 
 _EMPTY: Final = frozenset({"", "~", "-", "--", "—"})
 _COUNT: Final = re.compile(r"(\d+)(?:[.,]0*)?")
-MAX_LISTED: Final = 400_000
+MAX_LISTED: Final = 250_000
 """References of one file, each as often as it is listed."""
 _SHOWN: Final = 8
 _ENOUGH: Final = 4

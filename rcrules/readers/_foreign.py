@@ -34,10 +34,11 @@ _TEXTS: Final = tuple(
         (r"\A(?:[CP] [^\n]*\n)*(?:317|327|367)\S|^P  (?:JOB|CODE|UNITS|TITLE|VER)\b", "an IPC-D-356 test netlist"),
         (r"^\.(?:subckt|ends?|model|param|include|lib|tran|ac|dc|op|control|title)\b", "a SPICE deck"),
         (r"^[\[(][ \t\r]*$", "a netlist in bracket lists"),
-        (r"\A\s*\((?!\s*\"?export[\s()\"])", "a parenthesised text, but no netlist known here"),
+        (r"\A\s*\(", "a parenthesised text, but no netlist known here"),
         (r"\A\s*[{\[]\s*[\"{\[\]}]", "a JSON text"),
     )
 )
+_OURS: Final = re.compile(r"\s*\(\s*\"?export[\s()\"]")
 _ELEMENT_LINE: Final = re.compile(r"^[RCLVIDQMX]\w*(?: +[^\s,;|]+){3,}[ \r]*$", re.IGNORECASE | re.MULTILINE)
 _ROOTS: Final = {"ipc-2581": "an IPC-2581 file", "html": "an HTML page", "svg": "a picture"}
 
@@ -67,6 +68,8 @@ def unknown(source: Source) -> UserMistake:
 
 
 def _text_format(text: str) -> str | None:
+    if _OURS.match(text):
+        return None
     for pattern, name in _TEXTS:
         if pattern.search(text):
             return name

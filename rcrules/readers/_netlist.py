@@ -62,6 +62,7 @@ class Netlist:
         self._library: dict[tuple[str, str], LibraryPart] = {}
         self._by_symbol: dict[str, LibraryPart] = {}
         self._nets: dict[str, Place] = {}
+        self._pending: list[Node] = []
         self._nodes: list[tuple[str, Node]] = []
         self._places: dict[int, Place] = {}
 
@@ -91,8 +92,12 @@ class Netlist:
             self._library.setdefault((library, name), part)
             self._by_symbol.setdefault(name, part)
 
-    def add_net(self, name: str, code: str, line: int, nodes: list[Node]) -> None:
-        """Keep a net; nets without a name are told apart by their code."""
+    def add_node(self, node: Node) -> None:
+        """Keep a connection for the net that is added next."""
+        self._pending.append(node)
+
+    def add_net(self, name: str, code: str, line: int) -> None:
+        """Keep a net with the connections added before it; nets without a name are told apart by their code."""
         key = name or f"#{code or len(self._nets) + 1}"
         if key in self._nets:
             if name:
@@ -100,7 +105,8 @@ class Netlist:
             else:
                 key = f"{key}@{line}"
         self._nets.setdefault(key, self.place(line))
-        self._nodes.extend((key, node) for node in nodes)
+        self._nodes.extend((key, node) for node in self._pending)
+        self._pending.clear()
 
     def export(self) -> Export:
         """Everything collected, with pin names and types joined in from the library."""

@@ -1,5 +1,6 @@
 """Pin types in every spelling that exports use, brought to the words of the vocabulary."""
 
+from functools import lru_cache
 from typing import Final
 
 _SPELLINGS: Final = {
@@ -41,6 +42,7 @@ _SPELLINGS: Final = {
 }
 
 
+@lru_cache(maxsize=1024)
 def pin_type(text: str) -> str | None:
     """The word of ``vocabulary.PIN_TYPES`` for a type as exported, or None for a spelling not known.
 

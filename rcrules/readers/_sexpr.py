@@ -9,8 +9,8 @@ from rcrules.readers._mistakes import refusal, shorten
 from rcrules.readers._text import Lines
 
 MAX_DEPTH: Final = 256
-MAX_KEPT: Final = 1_000_000
-"""Forms kept at one time, those of one component or net."""
+MAX_KEPT: Final = 100_000
+"""Forms kept at one time, those of one component or library part."""
 _TOKEN: Final = re.compile(r'[()]|"[^"\\]*+(?:\\.[^"\\]*+)*+"|\r\n|[\n\r]|[^\s()"]++|"', re.DOTALL)
 _ESCAPE: Final = re.compile(r"\\(.)", re.DOTALL)
 _ESCAPES: Final = {"n": "\n", "r": "\r", "t": "\t"}
@@ -109,7 +109,7 @@ def _misplaced(file: str, text: str, match: re.Match[str], stack: list[Form], ke
     elif len(stack) >= MAX_DEPTH:
         problem, expected = "brackets nested too deeply", f"at most {MAX_DEPTH} levels"
     elif kept > MAX_KEPT:
-        problem, expected = "too many brackets inside one component or net", f"at most {MAX_KEPT}"
+        problem, expected = "too many brackets inside one component", f"at most {MAX_KEPT}"
     else:
         problem, expected = "text after the end of the netlist", "the end of the file: the first bracket is closed"
     lines = Lines(text)

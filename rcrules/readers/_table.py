@@ -94,7 +94,7 @@ def _split(source: Source, text: str, delimiter: str, limit: int | None) -> tupl
 def _cell_pattern(delimiter: str) -> re.Pattern[str]:
     """Quoted part (1), what follows it or stands alone (2), delimiter or line end (3)."""
     mark = re.escape(delimiter)
-    quoted = rf'[ ]*+"((?:[^"]++|"")*+)"(?=[ \t]*+(?:{mark}|[\r\n]|\Z))'
+    quoted = rf'[ ]*+"((?:[^"]++|"")*+)"(?=[ ]*+(?:{mark}|[\r\n]|\Z))'
     return re.compile(rf"(?:{quoted})?([^{mark}\r\n]*+)({mark}|\r\n|\n|\r|\Z)")
 
 

@@ -5,7 +5,7 @@ from collections.abc import Mapping
 from typing import Final
 
 from rcrules.readers._export import Export, Reader, Source
-from rcrules.readers._netlist import Component, Entry, LibraryPart, Netlist, Node
+from rcrules.readers._netlist import Component, Entry, LibraryPart, Netlist
 from rcrules.readers._sexpr import Form, parse
 from rcrules.readers._text import decode, head
 
@@ -44,7 +44,7 @@ def read(source: Source, columns: Mapping[str, str]) -> Export:
         taker = _TAKE.get((around or "", form.head or ""))
         if taker is not None:
             taker(netlist, form)
-        return around in _CONTAINERS
+        return taker is not None or around in _CONTAINERS
 
     parse(source.name, text, take)
     return netlist.export()
@@ -102,23 +102,14 @@ def _take_library_part(netlist: Netlist, form: Form) -> None:
 
 
 def _take_net(netlist: Netlist, form: Form) -> None:
-    nodes: list[Node] = []
-    name = code = ""
-    for child in form.forms:
-        match child.head:
-            case "node":
-                nodes.append(_node(child, child.line))
-            case "name":
-                name = _first(child)
-            case "code":
-                code = _first(child)
-    netlist.add_net(name, code, form.line, nodes)
+    netlist.add_net(_resolved(form.text("name")), form.text("code"), form.line)
 
 
-def _node(form: Form, line: int) -> Node:
+def _take_node(netlist: Netlist, form: Form) -> None:
     said = {child.head: child.atoms[0] for child in form.forms if child.atoms}
     function = _resolved(said.get("pinfunction", ""))
-    return said.get("ref", "").strip(), said.get("pin", "").strip(), function, said.get("pintype", ""), line
+    names = said.get("ref", "").strip(), said.get("pin", "").strip()
+    netlist.add_node((*names, function, said.get("pintype", ""), form.line))
 
 
 _TAKE: Final = {
@@ -126,6 +117,7 @@ _TAKE: Final = {
     ("components", "comp"): _take_component,
     ("libparts", "libpart"): _take_library_part,
     ("nets", "net"): _take_net,
+    ("net", "node"): _take_node,
 }
 
 

@@ -8,7 +8,7 @@ from typing import TYPE_CHECKING, Final, cast
 
 from rcrules.readers._export import Export, Reader, Source
 from rcrules.readers._mistakes import refusal, shorten
-from rcrules.readers._netlist import Component, Entry, LibraryPart, Netlist, Node
+from rcrules.readers._netlist import Component, Entry, LibraryPart, Netlist
 from rcrules.readers._xml import doctype_refusal, refuse_doctype, root_name
 
 if TYPE_CHECKING:
@@ -134,13 +134,12 @@ def _take_library_part(netlist: Netlist, element: _Element, skipped: int) -> Non
 
 
 def _take_net(netlist: Netlist, element: _Element, skipped: int) -> None:
-    nodes: list[Node] = []
     for child in element:
         if _local(child) == "node":
             get = child.get
             names = get("pinfunction", ""), get("pintype", "")
-            nodes.append((get("ref", "").strip(), get("pin", "").strip(), *names, _line(child, skipped)))
-    netlist.add_net(element.get("name", ""), element.get("code", ""), _line(element, skipped), nodes)
+            netlist.add_node((get("ref", "").strip(), get("pin", "").strip(), *names, _line(child, skipped)))
+    netlist.add_net(element.get("name", ""), element.get("code", ""), _line(element, skipped))
 
 
 _TAKE: Final = {
