@@ -2,14 +2,13 @@
 
 from collections.abc import Iterable, Iterator, Sequence
 from dataclasses import dataclass
-from fnmatch import fnmatchcase
 from typing import Generic, TypeVar
 
 from rcrules.design import Fact, Part
 from rcrules.errors import Place
 from rcrules.parts._fields import holds, read_field
 from rcrules.parts._texts import ValueKind, ValueText, read_value
-from rcrules.project import PartFacts, Project
+from rcrules.project import PartFacts, Project, ranked
 from rcrules.quantities import show
 
 T = TypeVar("T")
@@ -55,18 +54,8 @@ class Facts:
 
 
 def tables_for(part: Part, project: Project) -> tuple[tuple[str, PartFacts], ...]:
-    """The [part] tables that name a reference: exact names and lists (``C7, C8``) first, then globs."""
-    named = [(f'project [part."{key}"]', table) for key, table in project.parts.items() if part.ref in _listed(key)]
-    globs = [
-        (f'project [part."{key}"]', table)
-        for key, table in project.parts.items()
-        if part.ref not in _listed(key) and any(fnmatchcase(part.ref, glob) for glob in _listed(key))
-    ]
-    return (*named, *globs)
-
-
-def _listed(key: str) -> tuple[str, ...]:
-    return (key, *(name.strip() for name in key.split(","))) if "," in key else (key,)
+    """The [part] tables that name a reference, the most specific first."""
+    return tuple((f'project [part."{key}"]', table) for key, table in ranked(project.parts, (part.ref,)))
 
 
 def gather(part: Part, kind: ValueKind, tables: Sequence[tuple[str, PartFacts]], project: Project) -> Facts:

@@ -11,7 +11,8 @@ from rcrules.parts._texts import ValueKind, ValueText, read_value
 _FIELDS: Final = {
     "tolerance": "tol tolerance toleranz tolerancia tolérance допуск tolerance% tol%",
     "voltage": "v vdc vac wvdc wv voltage volt volts ratedvoltage voltagerating voltagerated vrated ratedv vmax "
-    "maxvoltage workingvoltage voltaje tension tensión tensionnominal spannung nennspannung voltagev voltagedc напряжение",
+    "maxvoltage workingvoltage voltaje tension tensión tensionnominal spannung nennspannung voltagev "
+    "voltagedc напряжение",
     "dielectric": "dielectric dielectrico dieléctrico diélectrique dielektrikum tc construct construction material "
     "temperaturecoefficient tempcoeff tempco tcc characteristic composition technology type",
     "coefficient": "tc tcr tempco temperaturecoefficient tempcoeff ppm",

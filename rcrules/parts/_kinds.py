@@ -151,9 +151,9 @@ def _listed(text: str) -> tuple[str, ...]:
     """
     bare = "".join(letter for letter in unicodedata.normalize("NFD", text[:200]) if letter not in "\u0300\u0301\u0308")
     words = tokens(unicodedata.normalize("NFC", bare).replace("{slash}", " ").replace("/", " "))
-    words = tuple(word for index, word in enumerate(words) if index == 0 or len(word) > 1)
     joined = (first + second for first, second in pairwise(words))
-    return tuple(item for pair in zip_longest(words, joined, fillvalue="") for item in pair if item)
+    pairs = enumerate(zip_longest(words, joined, fillvalue=""))
+    return tuple(item for index, pair in pairs for item in pair if index == 0 or len(item) > 1)
 
 
 @lru_cache(maxsize=65536)

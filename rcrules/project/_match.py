@@ -1,7 +1,7 @@
 """Which table of the project file speaks about a net, pin or part.
 
-A table may name one thing or many by a glob (``*``, ``?``, ``[…]``; upper and lower case differ). For each key the most
-specific table that has it wins: an exact name before any glob, a glob with more letters of its own before one with
+A table may name one thing, several (``C7, C8``), or many by a glob (``*``, ``?``, ``[…]``; upper and lower case
+differ). For each key the most specific table that has it wins: an exact name before any glob, a glob with more letters of its own before one with
 fewer, the later of two equals. So ``[net."AIN*"]`` may give the swing of all, and ``[net."AIN0"]`` one more key of one.
 """
 
@@ -21,8 +21,12 @@ _WILD: Final = re.compile(r"\[[^\]]*\]|[*?]")
 
 
 def match(pattern: str, name: str) -> bool:
-    """Whether a name is meant by a name or glob."""
-    return name == pattern or (("*" in pattern or "?" in pattern or "[" in pattern) and fnmatchcase(name, pattern))
+    """Whether a name is meant by a name, a glob, or a list of them with a comma and a blank between."""
+    if name == pattern:
+        return True
+    if ", " in pattern:
+        return any(match(one.strip(), name) for one in pattern.split(", "))
+    return ("*" in pattern or "?" in pattern or "[" in pattern) and fnmatchcase(name, pattern)
 
 
 def supply_for(project: Project, net: str) -> SupplyFacts | None:
@@ -101,7 +105,8 @@ def unmatched(project: Project, nets: Collection[str], pins: Collection[str], pa
 
 
 def _means_any(pattern: str, names: Collection[str]) -> bool:
-    return pattern in names or (_WILD.search(pattern) is not None and any(fnmatchcase(name, pattern) for name in names))
+    listed = ", " in pattern or _WILD.search(pattern) is not None
+    return pattern in names or (listed and any(match(pattern, name) for name in names))
 
 
 def _nothing(place: Place, word: str, table: str, name: str, names: Collection[str]) -> Notice:

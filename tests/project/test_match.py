@@ -57,3 +57,10 @@ def test_names_that_mean_nothing_are_reported_with_the_nearest():
 def test_globs_cannot_hang():
     found = project.load("p", f'[net."{"*a" * 90}b"]\nheld = "free"')
     assert project.net_facts(found, "a" * 5000) is None
+
+
+def test_one_table_may_name_several_things():
+    found = project.load("p", '[part."C7, C8, D?"]\ndielectric = "X7R"')
+    assert [bool(project.part_facts(found, ref)) for ref in ("C7", "C8", "D1", "C9")] == [True, True, True, False]
+    assert project.unmatched(found, [], [], ["C8"]) == []
+    assert len(project.unmatched(found, [], [], ["R1"])) == 1
