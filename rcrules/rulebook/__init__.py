@@ -1,5 +1,28 @@
 """Step 8: rule packs in TOML in, compiled rules out."""
 
-from rcrules.rulebook._model import Limit, Pack, Rule, Selection
+from rcrules.rulebook._condition import FACTS, holds
+from rcrules.rulebook._model import Comparison, Condition, Example, Junction, Limit, OptionValue, Pack, Rule, Selection
+from rcrules.rulebook._packs import compile_pack, load, packs, packs_folder, shipped
+from rcrules.rulebook._sentence import sentence
+from rcrules.rulebook._settings import check_settings
 
-__all__ = ["Limit", "Pack", "Rule", "Selection"]
+__all__ = [
+    "FACTS",
+    "Comparison",
+    "Condition",
+    "Example",
+    "Junction",
+    "Limit",
+    "OptionValue",
+    "Pack",
+    "Rule",
+    "Selection",
+    "check_settings",
+    "compile_pack",
+    "holds",
+    "load",
+    "packs",
+    "packs_folder",
+    "sentence",
+    "shipped",
+]

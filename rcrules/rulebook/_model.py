@@ -13,6 +13,26 @@ OptionValue = str | float | Level
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
+class Comparison:
+    """``supply_high >= 1.8 V``: facts by name, numbers in SI."""
+
+    left: str | float
+    right: str | float
+    sign: Literal["<", "<=", ">", ">="]
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Junction:
+    """Conditions joined by ``and`` or ``or``."""
+
+    word: Literal["and", "or"]
+    terms: "tuple[Condition, ...]"
+
+
+Condition = Comparison | Junction
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
 class Selection:
     """All given keys must match; an empty tuple matches everything."""
 
@@ -33,6 +53,9 @@ class Selection:
     value_at_least: Spread | None = None
     value_at_most: Spread | None = None
     polarised: bool | None = None
+    when: Condition | None = None
+    """Ask ``rulebook.holds``."""
+    when_text: str = ""
     any_of: tuple["Selection", ...] = ()
     exclude: tuple["Selection", ...] = ()
     """The key ``not``."""
@@ -62,6 +85,16 @@ class Pack:
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
+class Example:
+    """A tiny circuit in text and the outcome that the rule must have on it."""
+
+    place: Place
+    circuit: str
+    outcome: str
+    """One of vocabulary.OUTCOMES."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
 class Rule:
     """One rule, ready to be held against any board."""
 
@@ -79,8 +112,10 @@ class Rule:
     limits: tuple[Limit, ...]
     given: Mapping[str, Spread | Literal["ask"]] = field(default_factory=dict)
     given_units: Mapping[str, str] = field(default_factory=dict)
-    """Unit expected of each given name."""
+    """Unit of each name that the rule looks up (its own and those of the project file); ``word`` for words."""
     never: Literal["fails", "holds"] = "fails"
     why: str = ""
     source: str = ""
     must_meet: int = 0
+    """Subjects that the rule must at least meet."""
+    examples: tuple[Example, ...] = ()

@@ -1,0 +1,142 @@
+"""The key ``when``: comparisons of facts with quantities, joined by ``and`` and ``or``.
+
+condition  = both { "or" both }          both = term { "and" term }
+term       = "(" condition ")" | operand sign operand
+sign       = ">=" | "<=" | ">" | "<"     operand = name of a fact | quantity
+"""
+
+import re
+from collections.abc import Iterator, Mapping
+from typing import Final, Literal
+
+from rcrules.quantities import QuantityError, parse_quantity
+from rcrules.rulebook._model import Comparison, Condition, Junction
+from rcrules.tomlfile import cut, guess, listed, quantity_name
+
+FACTS: Final[Mapping[str, str]] = {
+    f"{fact}_{end}": "V" for fact in ("supply", "voltage", "rated_voltage") for end in ("low", "nominal", "high")
+}
+"""Facts by name, with their units: of the supplies that feed the subject, of the voltage across or at it, of its rating."""
+
+_LONGEST: Final = 400
+_DEEPEST: Final = 8
+_MARK: Final = re.compile(r"(\band\b|\bor\b|>=|<=|>|<|\(|\))")
+_NAME: Final = re.compile(r"[A-Za-z_][A-Za-z0-9_]*")
+
+
+def parse_condition(text: str) -> Condition:
+    """Read a condition. Raises QuantityError with the offset of the first character not understood."""
+    if len(text) > _LONGEST:
+        raise QuantityError("too long for a condition", at=_LONGEST, expected=f"at most {_LONGEST} characters")
+    reader = _Reader(text)
+    found = reader.condition(0)
+    if reader.mark is not None:
+        raise QuantityError(
+            f"'{reader.mark}' not understood", at=reader.at, length=len(reader.mark), expected="the end"
+        )
+    return found
+
+
+def holds(condition: Condition, facts: Mapping[str, float]) -> bool | None:
+    """Whether a condition holds; None when that hangs on a fact that is not known."""
+    if isinstance(condition, Comparison):
+        return _compare(condition, facts)
+    found = [holds(term, facts) for term in condition.terms]
+    decisive = condition.word == "or"
+    if decisive in found:
+        return decisive
+    return None if None in found else not decisive
+
+
+def _compare(condition: Comparison, facts: Mapping[str, float]) -> bool | None:
+    left = facts.get(condition.left) if isinstance(condition.left, str) else condition.left
+    right = facts.get(condition.right) if isinstance(condition.right, str) else condition.right
+    if left is None or right is None:
+        return None
+    match condition.sign:
+        case ">=":
+            return left >= right
+        case "<=":
+            return left <= right
+        case ">":
+            return left > right
+    return left < right
+
+
+class _Reader:
+    """Splits the text at its marks and reads them one by one."""
+
+    def __init__(self, text: str) -> None:
+        self._pieces = self._split(text)
+        self.at, self.mark, self._words = 0, None, ""  # type: tuple[int, str | None, str]
+        self._next()
+
+    def _split(self, text: str) -> Iterator[tuple[int, str, str | None]]:
+        """Offset of a mark, the words before it, the mark (None = the end)."""
+        begin = 0
+        for match in _MARK.finditer(text):
+            yield match.start(), text[begin : match.start()], match[0]
+            begin = match.end()
+        yield len(text), text[begin:], None
+
+    def _next(self) -> None:
+        self.at, self._words, self.mark = next(self._pieces)
+
+    def condition(self, depth: int) -> Condition:
+        """Terms joined by ``or``."""
+        return self._joined("or", depth)
+
+    def _joined(self, word: Literal["and", "or"], depth: int) -> Condition:
+        terms = [self._inner(word, depth)]
+        while self.mark == word:
+            self._next()
+            terms.append(self._inner(word, depth))
+        return terms[0] if len(terms) == 1 else Junction(word=word, terms=tuple(terms))
+
+    def _inner(self, word: str, depth: int) -> Condition:
+        return self._joined("and", depth) if word == "or" else self._term(depth)
+
+    def _term(self, depth: int) -> Condition:
+        if self.mark == "(" and not self._words.strip():
+            if depth >= _DEEPEST:
+                raise QuantityError("too many brackets", at=self.at, expected=f"at most {_DEEPEST}")
+            self._next()
+            found = self.condition(depth + 1)
+            if self.mark != ")":
+                raise QuantityError("a bracket that does not close", at=self.at, expected="')'")
+            self._next()
+            if self._words.strip():
+                raise QuantityError(f"'{cut(self._words.strip())}' not understood", at=self.at - len(self._words))
+            return found
+        return self._comparison()
+
+    def _comparison(self) -> Comparison:
+        left, left_unit = self._operand()
+        sign, start = self.mark, self.at - len(self._words)
+        if sign not in (">=", "<=", ">", "<"):
+            raise QuantityError("no comparison", at=self.at, expected="'>=', '<=', '>' or '<'")
+        self._next()
+        right, right_unit = self._operand()
+        if isinstance(left, float) and isinstance(right, float):
+            raise QuantityError("no fact to compare", at=start, length=self.at - start, expected=listed(FACTS))
+        if left_unit != right_unit:
+            problem = f"{quantity_name(left_unit)} is compared with {quantity_name(right_unit)}"
+            raise QuantityError(problem, at=start, length=self.at - start)
+        return Comparison(left=left, right=right, sign=sign)  # type: ignore[arg-type]  # tested above
+
+    def _operand(self) -> tuple[str | float, str]:
+        """A fact or number, with its unit."""
+        words = self._words.strip()
+        start = self.at - len(self._words.lstrip())
+        if words in FACTS:
+            return words, FACTS[words]
+        if not words or _NAME.fullmatch(words):
+            problem = f"no fact is called '{cut(words)}'{guess(words, FACTS)}" if words else "a fact is missing"
+            raise QuantityError(problem, at=start, length=max(len(words), 1), expected=listed(FACTS))
+        try:
+            spread = parse_quantity(words)
+        except QuantityError as error:
+            raise error.moved(start) from None
+        if spread.low != spread.high:
+            raise QuantityError("a range cannot be compared", at=start, length=len(words), expected="one quantity")
+        return spread.nominal, spread.unit

@@ -1,0 +1,101 @@
+"""Where rules come from: packs that ship with the tool, and files of the team."""
+
+from collections.abc import Iterable, Mapping
+from functools import cache
+from importlib.resources import files
+from importlib.resources.abc import Traversable
+from pathlib import Path
+from typing import Final
+
+import rcrules
+from rcrules.errors import Mistake, Place, Problems, UserMistake
+from rcrules.measures import Measure, registry
+from rcrules.project import Project
+from rcrules.rulebook._compile import pack_of, rules_of
+from rcrules.rulebook._model import Pack, Rule
+from rcrules.rulebook._settings import check_settings
+from rcrules.tomlfile import TomlFile, cut, guess, listed, root
+from rcrules.tomlfile import load as load_toml
+from rcrules.tomlfile import read as read_toml
+
+_SUFFIX: Final = ".toml"
+MAX_FILES: Final = 200
+
+
+def packs_folder() -> Traversable:
+    """Folder of the shipped packs: inside the installed package, or beside it in a checkout."""
+    packaged = files("rcrules") / "rules"
+    checkout = Path(rcrules.__file__).parent.parent
+    if not packaged.is_dir() and (checkout / "pyproject.toml").is_file():
+        return checkout / "rules"
+    return packaged
+
+
+@cache
+def shipped() -> tuple[str, ...]:
+    """Names of the shipped packs, sorted."""
+    found = (item.name.removesuffix(_SUFFIX) for item in packs_folder().iterdir() if item.name.endswith(_SUFFIX))
+    return tuple(sorted(found))
+
+
+def packs() -> list[Pack]:
+    """The shipped packs, by name."""
+    problems = Problems()
+    found = [pack_of(root(_file(name, None), problems)) for name in shipped()]
+    problems.stop_if_any()
+    return [pack for pack in found if pack is not None]
+
+
+def load(
+    names: Iterable[str],
+    folder: Path | None = None,
+    project: Project | None = None,
+    measures: Mapping[str, Measure] | None = None,
+) -> list[Rule]:
+    """The rules of shipped packs and files (``….toml``, taken from ``folder``), in that order, each pack once.
+
+    With a project its settings are held against the rules too. Raises UserMistake with the mistakes of all files.
+    """
+    known, problems = registry() if measures is None else measures, Problems()
+    wanted = list(dict.fromkeys(names))
+    if len(wanted) > MAX_FILES:
+        raise UserMistake(Mistake(place=Place(file="rules"), problem=f"more than {MAX_FILES} packs and files"))
+    rules: list[Rule] = []
+    for name in wanted:
+        with problems.collecting():
+            rules += compile_pack(_file(name, folder), known)
+    _distinct(rules, problems)
+    if project is not None:
+        problems.mistakes.extend(check_settings(project, rules))
+    problems.stop_if_any()
+    return rules
+
+
+def compile_pack(file: TomlFile, measures: Mapping[str, Measure]) -> list[Rule]:
+    """The rules of one file. Raises UserMistake with all its mistakes."""
+    top = root(file, Problems())
+    rules = rules_of(top, pack_of(top), measures)
+    top.stop_if_wrong()
+    return rules
+
+
+def _file(name: str, folder: Path | None) -> TomlFile:
+    """A pack by its name, or a file by its path."""
+    if name.endswith(_SUFFIX) or "/" in name or "\\" in name:
+        return read_toml((folder or Path()) / name, name)
+    if name not in shipped():
+        problem = f"no pack is called '{cut(name)}'{guess(name, shipped())}"
+        do = "name a shipped pack, or a file that ends in .toml"
+        raise UserMistake(Mistake(place=Place(file="rules"), problem=problem, expected=listed(shipped()), do=do))
+    return load_toml(f"{name}{_SUFFIX}", (packs_folder() / f"{name}{_SUFFIX}").read_text(encoding="utf-8"))
+
+
+def _distinct(rules: Iterable[Rule], problems: Problems) -> None:
+    """Settings and findings go by the id of a rule, so no two packs may share one."""
+    first: dict[str, Rule] = {}
+    for rule in rules:
+        other = first.setdefault(rule.id, rule)
+        if other is not rule:
+            problem, found = f"the rule id '{rule.id}' is taken", f"first in {other.place}"
+            do = "give it a name of its own"
+            problems.mistakes.append(Mistake(place=rule.place, problem=problem, found=found, do=do))

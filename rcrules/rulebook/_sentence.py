@@ -1,0 +1,94 @@
+"""A rule in one plain sentence."""
+
+from collections.abc import Iterator
+
+from rcrules.levels import Level
+from rcrules.quantities import show
+from rcrules.rulebook._model import Limit, OptionValue, Rule, Selection
+from rcrules.tomlfile import listed
+
+
+def sentence(rule: Rule) -> str:
+    """``For every node with role debounce, the delay after release to 'may switch' must be at least bounce (asked).``"""
+    selection = "".join(f" {phrase}," for phrase in [_selected(rule.selection, rule.measure.subject)] if phrase)
+    subject = f"for every {rule.measure.subject}{selection or ','}"
+    what = " ".join([f"the {rule.measure.name.replace('_', ' ')}", *_options(rule)])
+    bounds = " and ".join(_limit(rule, limit) for limit in rule.limits)
+    never = "; never reaching the level is fine" if rule.never == "holds" else ""
+    return f"{subject} {what} must be {bounds}{never}"
+
+
+def _selected(selection: Selection, subject: str) -> str:
+    return " ".join(_phrases(selection, subject))
+
+
+def _phrases(selection: Selection, subject: str) -> Iterator[str]:
+    """What each key asks, in words."""
+    kinds = tuple(kind for kind in selection.kind if kind != subject)
+    words = (
+        ("with role", selection.role),
+        ("named", selection.name),
+        ("on net", selection.net),
+        ("feeding pin", selection.pin),
+        ("with part", selection.part),
+        ("on sheet", selection.sheet),
+        ("of kind", kinds),
+        ("feeding a pin of kind", selection.kind_fed),
+        ("of dielectric", selection.dielectric),
+        ("recognised as", selection.certainty),
+    )
+    yield from (f"{phrase} {listed(items)}" for phrase, items in words if items)
+    if selection.value_at_least is not None:
+        yield f"of at least {show(selection.value_at_least.nominal, selection.value_at_least.unit)}"
+    if selection.value_at_most is not None:
+        yield f"of at most {show(selection.value_at_most.nominal, selection.value_at_most.unit)}"
+    if selection.polarised is not None:
+        yield "polarised" if selection.polarised else "not polarised"
+    if selection.when is not None:
+        yield f"where {selection.when_text}"
+    if selection.any_of:
+        yield "either " + ", or ".join(_selected(item, subject) for item in selection.any_of)
+    if selection.exclude:
+        yield "except those " + ", and those ".join(_selected(item, subject) for item in selection.exclude)
+
+
+def _options(rule: Rule) -> Iterator[str]:
+    for key, value in rule.options.items():
+        if key == "event":
+            yield f"after {value}"
+        elif key == "from" and value == "event":
+            continue
+        else:
+            yield f"{key.replace('_', ' ')} {_shown(rule, key, value)}"
+
+
+def _shown(rule: Rule, key: str, value: OptionValue) -> str:
+    if isinstance(value, Level):
+        return f"'{value.text}'"
+    if isinstance(value, float | int):
+        return show(float(value), rule.measure.options[key].unit)
+    return _name(rule, value[1:]) if value.startswith("?") else value
+
+
+def _limit(rule: Rule, limit: Limit) -> str:
+    words = limit.kind.replace("-", " ")
+    if limit.value is not None:
+        return f"{words} {show(limit.value.nominal, limit.value.unit)}"
+    if limit.table is not None:
+        name, amounts = limit.table
+        return f"{words} " + ", ".join(
+            f"{show(item.nominal, item.unit)} where {name} is {word}" for word, item in amounts.items()
+        )
+    return f"{words} {_name(rule, limit.name or '')}"
+
+
+def _name(rule: Rule, name: str) -> str:
+    """A looked-up number, and where it comes from."""
+    own = rule.given.get(name)
+    if own is None:
+        return f"{name} (of the project file)"
+    return (
+        f"{name} (asked)"
+        if own == "ask"
+        else f"{name} ({show(own.nominal, own.unit)} unless the project says otherwise)"
+    )
