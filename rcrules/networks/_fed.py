@@ -108,7 +108,7 @@ def _named(name: str) -> str:
     plain = {word for word in words if not word.isdigit()}
     if any(has_token(name, word) for word in RESET):
         return "reset"
-    if plain & CONVERTER and not any(word.startswith("VREF") for word in plain):
+    if any(word in CONVERTER or word.startswith("AIN") for word in plain) and "VREF" not in name.upper():
         return "adc"
     return (
         "supply"

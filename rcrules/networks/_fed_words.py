@@ -25,7 +25,7 @@ CONVERTER: Final = frozenset(("ADC", "AIN", "AN"))
 CHANNEL: Final = frozenset(("CH", "IN", "AIN", "VIN", "AN", "A"))
 OUTPUT: Final = ("AOUT", "VOUT", "IOUT", "DOUT", "OUT", "SDO", "DAC")
 """Starts of the words of pins that drive, at parts that are no controllers."""
-BUS: Final = frozenset(("SDA", "SCL", "SMBDAT", "SMBCLK", "SMBDATA", "SMBCLOCK", "SMDAT", "SMCLK", "ALERT"))
+BUS: Final = frozenset(("SDA", "SCL", "SMBDAT", "SMBCLK", "SMBDATA", "SMBCLOCK", "SMDAT", "SMCLK", "ALERT", "DQ"))
 CENTRE: Final = frozenset(("SPLIT", "CT", "CTT", "VCM", "VTT", "VOCM"))
 BUTTON: Final = frozenset(("BTN", "BUTTON", "KEY", "SW", "SWITCH", "PUSH"))
 CHASSIS: Final = frozenset((

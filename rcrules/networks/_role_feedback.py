@@ -19,7 +19,8 @@ def _regulator(view: View, here: Spot) -> Judged | None:
     for pin in _pins_around(view, here):
         if _is_feedback_pin(view, pin):
             why = f"{pin.key} closes a control loop here"
-            return Judged(role="feedback", why=(why,), active=f"regulator {pin.ref} inside the loop")
+            alone = here.bare and all(len({arm.far for arm in arms}) == 1 for arms in (here.resistors, here.capacitors))
+            return Judged(role="feedback", why=(why,), active=f"regulator {pin.ref} inside the loop", alone=alone)
     return None
 
 

@@ -68,7 +68,10 @@ def _from_pin(view: View, here: Spot) -> Judged | None:
 
 
 def _is_signal(view: View, here: Spot, arm: Arm) -> bool:
-    return arm.to == "driven" or (arm.held is None and signal_above(view, arm.far, here.joint))
+    if arm.held is not None:
+        return arm.to == "driven"
+    outside = view.has_kind(view.at(arm.far), "connector") and not view.has_kind(here, "connector")
+    return outside or signal_above(view, arm.far, here.joint)
 
 
 def _is_bias(view: View, here: Spot, arm: Arm) -> bool:

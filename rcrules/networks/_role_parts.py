@@ -59,6 +59,7 @@ def _take_capacitors(view: View, found: Ways, here: Spot, arms: Iterable[Arm]) -
             _climb(view, found, arm.far, here.joint)
         elif not _light(view, here, arm):
             found.capacitors.setdefault(arm.ref, arm)
+            found.resistors.update((leg.ref, leg) for leg in cr_leg(view, arm, here.joint))
 
 
 def ends(view: View, start: str, but: str) -> dict[str, float]:
@@ -142,6 +143,14 @@ def rc_leg(view: View, arm: Arm, but: str) -> tuple[Arm, ...]:
     return tuple(other for other in far.capacitors if other.held is not None)
 
 
+def cr_leg(view: View, arm: Arm, but: str) -> tuple[Arm, ...]:
+    """Resistors to held joints behind a capacitor whose far joint holds nothing else; () where it is no such leg."""
+    far = view.at(arm.far)
+    if not far.bare or any(other.far != but for other in far.capacitors):
+        return ()
+    return far.resistors if all(other.held is not None for other in far.resistors) else ()
+
+
 def _acts(view: View, here: Spot, arm: Arm) -> bool:
     if arm.held is not None:
         return not (here.local and _is_load(here, arm))
@@ -211,6 +220,8 @@ def _climb_capacitor(view: View, found: Ways, arm: Arm, joint: str, todo: list[t
 
 def _light(view: View, here: Spot, arm: Arm) -> bool:
     """Whether a coupling capacitor leads only to a load that hardly acts on this joint."""
+    if view.at(arm.far).pins and not view.at(arm.far).resistors:
+        return False
     beyond = min(ends(view, arm.far, here.joint).values(), default=float("inf"))
     own = min((way(view, leg, here.joint) for leg in here.resistors), default=0.0)
     return own != float("inf") and beyond >= LIGHT * own

@@ -24,7 +24,7 @@ def debounce(view: View, here: Spot) -> Judged | None:
         reached += [contact for joint in _across_diodes(view, here) for contact in view.at(joint).contacts]
     if not reached or not here.capacitors:
         return None
-    pulled = any(arm.fixed for arm in here.resistors)
+    pulled = any(arm.fixed for at in (here, *(view.at(arm.far) for arm in behind)) for arm in at.resistors)
     names = ", ".join(sorted({contact.ref for contact in reached}))
     why = f"contact {names} " + ("at the node" if contacts else "behind a resistor or diode")
     near = bool(contacts) or any(view.at(arm.far).contacts for arm in behind)

@@ -127,3 +127,17 @@ def test_capacitor_from_an_output_to_its_own_other_input_is_feedback_but_not_for
 def test_output_of_a_converter_is_not_fed():
     node = nodes("R1 1k A N\nC1 1n N GND\nU1 AOUT1:bidirectional=N\nU2 IN:input=N", hold={"A": "driven"})["N"]
     assert node.feeds == ("U2.IN",)
+
+
+def test_lead_network_over_the_upper_resistor_of_a_feedback_divider_takes_its_series_resistor():
+    text = "R1 10k +3V3 N\nR2 1k +3V3 M\nC1 1n M N\nR3 4.7k N GND\nU1 FB=N VIN=+5V SW=SWN"
+    found = nodes(text, hold={"SWN": "driven"})
+    assert _feedback(found["N"])
+    assert set(found["N"].parts) == {"R1", "R2", "R3", "C1"}
+    assert _feedback(found["M"])
+    assert found["M"].parts == ("R2", "C1")
+
+
+def test_timing_capacitor_between_two_pins_sets_the_time():
+    text = "R1 100k +5V N\nC1 1u M N\nU1 RXCX=N CX=M Q:output=B"
+    assert nodes(text, hold={"B": "driven"})["N"].parts == ("R1", "C1")

@@ -73,3 +73,8 @@ def test_long_ladder_takes_no_more_parts_than_a_bounded_way_gives():
 def test_two_equal_stages_are_low_passes_and_no_termination():
     found = nodes("R1 1k A M\nC1 1n M GND\nR2 1k M N\nC2 1n N GND\nU1 AIN1:input=N", hold=DRIVEN)
     assert [found[net].role for net in "MN"] == ["low-pass", "low-pass"]
+
+
+def test_capacitor_from_a_biased_connector_net_is_a_high_pass():
+    node = nodes("R1 2.2k +3V3 J\nJ1 MIC=J\nC1 1u J N\nR2 10k N GND\nU1 AIN0=N")["N"]
+    assert (node.role, node.parts) == ("high-pass", ("R2", "C1"))

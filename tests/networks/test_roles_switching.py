@@ -49,3 +49,8 @@ def test_gate_with_resistor_and_capacitor_is_a_gate_drive():
 def test_unnamed_pin_one_of_a_transistor_is_its_base_but_not_for_sure():
     node = nodes("R1 10k A N\nC1 1n N GND\nQ1 =N =GND =OUT", hold={"A": "driven"})["N"]
     assert (node.role, node.certainty) == ("gate-drive", "unsure")
+
+
+def test_contact_with_its_own_pull_before_the_filter_is_a_debounce():
+    node = nodes("R1 10k +3V3 E\nSW1 E GND\nR2 10k E N\nC1 10n N GND\nU1 PA0=N")["N"]
+    assert (node.role, node.certainty, set(node.parts)) == ("debounce", "sure", {"R1", "R2", "C1"})
