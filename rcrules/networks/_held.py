@@ -192,7 +192,7 @@ def only_fed_by_resistors(scene: Scene, joint: str) -> bool:
     """Whether a resistor from a supply feeds the joint and nothing else does, as far as pins and names tell."""
     if scene.says(joint, say.SOURCE) or scene.of_kind(joint, "connector", "battery", "transformer"):
         return False
-    feeding = [item for item, far in scene.far_ends(joint, "resistor") if _like_a_supply(scene, far)]
+    feeding = [item for item, far in scene.far_ends(joint, "resistor") if _rank(scene, far) > _rank(scene, joint)]
     if not feeding or len({pin.ref for pin in scene.says(joint, say.SUPPLY)}) >= MANY_PARTS:
         return False
     blocked = any(item.cathode == joint for item in scene.diodes.get(joint, ()))
@@ -200,9 +200,12 @@ def only_fed_by_resistors(scene: Scene, joint: str) -> bool:
     return not active or any(_is_small(scene, item.ref) for item in feeding)
 
 
-def _like_a_supply(scene: Scene, joint: str) -> bool:
-    named = any(named.kind == "supply" and named.strong for named in scene.hints(joint))
-    return named or bool(scene.says(joint, say.SUPPLY, say.SOURCE, say.NEGATIVE))
+def _rank(scene: Scene, joint: str) -> tuple[bool, bool, bool, int]:
+    """How much a joint looks like the source of another: it makes a supply, has its voltage in its name, is larger."""
+    named = [named for named in scene.hints(joint) if named.kind == "supply" and named.strong]
+    like = bool(named) or bool(scene.says(joint, say.SUPPLY, say.SOURCE, say.NEGATIVE))
+    told = any(item.volts is not None for item in named)
+    return like, bool(scene.says(joint, say.SOURCE)), told, len(scene.pins[joint]) if like else 0
 
 
 def _supply(scene: Scene, joint: str, evidence: tuple[str, ...], *, sure: bool) -> Verdict:

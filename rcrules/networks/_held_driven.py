@@ -2,13 +2,13 @@
 
 from typing import Final
 
-from rcrules.names import has_token
+from rcrules.names import tokens
 from rcrules.networks import _held_claims as say
 from rcrules.networks._held_verdict import Verdict, Verdicts, keys
 from rcrules.networks._scene import Scene
 from rcrules.parts import Known
 
-_BUS_LINES: Final = ("SDA", "SCL", "SMBDAT", "SMBCLK", "ALERT", "ONEWIRE")
+_BUS_LINES: Final = frozenset(("SDA", "SCL", "SMBDAT", "SMBCLK", "ALERT", "ONEWIRE"))
 """Shared open-drain lines: free, their rise is the pull-up's."""
 _LINE_OHMS: Final = 200.0
 """Up to here a resistor matches a line; above, it pulls."""
@@ -89,7 +89,7 @@ def _is_supply(verdicts: Verdicts, joint: str) -> bool:
 
 def _is_bus(scene: Scene, joint: str) -> bool:
     names = (*scene.members[joint], *(pin.name for pin in scene.of_kind(joint, "ic") if len(pin.name) <= 8))
-    return any(has_token(name, line) for name in names for line in _BUS_LINES)
+    return any(not _BUS_LINES.isdisjoint(tokens(name)) for name in names)
 
 
 def _asked(scene: Scene, joint: str) -> bool:

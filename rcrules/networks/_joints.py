@@ -5,7 +5,7 @@ from dataclasses import dataclass, field
 from typing import Final
 
 from rcrules.design import Design, Pin, natural
-from rcrules.networks._held_names import leaf
+from rcrules.networks._held_names import hint, leaf
 from rcrules.parts import RatedPart
 
 GROUND: Final = "ground"
@@ -71,9 +71,10 @@ def _representative(design: Design, parts: Mapping[str, RatedPart], nets: list[s
     if len(nets) == 1:
         return nets[0]
 
-    def rank(net: str) -> tuple[bool, int, int, object]:
+    def rank(net: str) -> tuple[bool, bool, int, int, object]:
         pins = design.nets[net].pins
         capacitors = sum(pin.ref in parts and parts[pin.ref].kind == "capacitor" for pin in pins)
-        return leaf(net) is None, -capacitors, -len(pins), natural(net)
+        named = hint(net)
+        return named is None or not named.strong, leaf(net) is None, -capacitors, -len(pins), natural(net)
 
     return min(nets, key=rank)
