@@ -93,11 +93,16 @@ def _project_path(job: Job) -> Path | None:
 def _listed(project: "Project") -> tuple[str, ...]:
     """The inputs of the project file. Raises UserMistake where there are none."""
     if project.netlists or project.boms:
-        return (*project.netlists, *project.boms)
+        return tuple(str(_folder(project) / name) for name in (*project.netlists, *project.boms))
     place = Place(file=project.file or "command line")
     expected = "[board] netlist or bom" if project.file else None
     do = "name a netlist or BOM: rcrules check board.xml bom.csv"
     raise UserMistake(Mistake(place=place, problem="no inputs", expected=expected, do=do))
+
+
+def _folder(project: "Project") -> Path:
+    """Where the paths of the project file start."""
+    return Path(project.file).parent if project.file else Path()
 
 
 def _export(path: str, project: "Project") -> "Export":
@@ -110,11 +115,12 @@ def _export(path: str, project: "Project") -> "Export":
 
 def _rules(job: Job, project: "Project") -> "list[Rule]":
     """The rules asked for, else the project's; else those that need no facts, at most as warnings."""
-    from rcrules.rulebook import load
+    from rcrules.rulebook import load, packs
 
     if job.rules or project.rules:
-        return load(job.rules or project.rules)
-    return [replace(rule, level="warning") if rule.level == "error" else rule for rule in load(None)]
+        return load(job.rules or project.rules, Path() if job.rules else _folder(project), project)
+    ready = load([pack.name for pack in packs() if not pack.needs_facts], project=project)
+    return [replace(rule, level="warning") if rule.level == "error" else rule for rule in ready]
 
 
 def _document(job: Job, project: "Project", board: "Board", rules: "list[Rule]") -> "Document":

@@ -44,8 +44,9 @@ def check(board: Board, project: Project, rules: Sequence[Rule], also: Iterable[
 
 
 def _cases(rule: Rule, subjects: Subjects, board: Board, project: Project) -> list[Case]:
-    chosen = [subject for subject in subjects.of(rule.measure.subject) if selected(rule.selection, subject)]
-    return [resolve(rule, subject, board, project) for subject in chosen]
+    """A case per subject that the rule meets, or may meet."""
+    chosen = [(item, selected(rule.selection, item, board)) for item in subjects.of(rule.measure.subject)]
+    return [resolve(rule, item, board, project, sure=met is True) for item, met in chosen if met is not False]
 
 
 def _judge(cases: Iterable[Case], board: Board, project: Project) -> list[Judged]:

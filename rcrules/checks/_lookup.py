@@ -5,7 +5,7 @@ from dataclasses import dataclass
 
 from rcrules.checks._subjects import Subject
 from rcrules.networks import Board
-from rcrules.project import Project, ranked
+from rcrules.project import Project, line_for, ranked
 from rcrules.quantities import Spread
 from rcrules.rulebook import Rule
 
@@ -68,11 +68,10 @@ def _pin_names(feeds: Iterable[str], board: Board) -> set[str]:
 
 def _lines(name: str, rule: Rule, subject: Subject) -> tuple[str, ...]:
     """The line for all subjects of the rule first, then the one for this subject alone."""
-    key = name.replace("_", "-")
     if subject.feeds:
-        own = f'[pin."{subject.feeds[0]}"] {key} = "…"'
+        own = line_for("pin", subject.feeds[0], name)
     elif subject.net is not None:
-        own = f'[net."{subject.nets[0]}"] set = {{ {key} = "…" }}'
+        own = line_for("net", subject.nets[0], name)
     else:
-        own = f'[part."{subject.refs[0]}"] {key} = "…"'
+        own = line_for("part", subject.refs[0], name)
     return (f'[settings."{rule.id}"] {name} = "…"', own)

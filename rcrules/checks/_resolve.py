@@ -39,9 +39,12 @@ class Case:
     missing: tuple[Missing, ...]
 
 
-def resolve(rule: Rule, subject: Subject, board: Board, project: Project) -> Case:
-    """Look up every name; everything missing at once."""
-    missing: list[Missing] = []
+def resolve(rule: Rule, subject: Subject, board: Board, project: Project, *, sure: bool = True) -> Case:
+    """Look up every name; everything missing at once.
+
+    sure: False where a fact is missing that decides whether the rule meets the subject.
+    """
+    missing: list[Missing] = [] if sure else [_condition(rule, subject, board)]
     options = {name: _option(value, rule, subject, board, project) for name, value in rule.options.items()}
     bounds = [_bound(limit, rule, subject, board, project) for limit in rule.limits]
     missing += [item for item in (*options.values(), *bounds) if isinstance(item, Missing)]
@@ -51,6 +54,16 @@ def resolve(rule: Rule, subject: Subject, board: Board, project: Project) -> Cas
         options={name: value for name, value in options.items() if not isinstance(value, Missing)},
         bounds=tuple(item for item in bounds if not isinstance(item, Missing)),
         missing=tuple(dict.fromkeys(missing)),
+    )
+
+
+def _condition(rule: Rule, subject: Subject, board: Board) -> Missing:
+    """What must be known to tell whether a rule meets a subject."""
+    fed_from = [net for view in subject.views for net in view.fed_from]
+    unknown = [net for net in dict.fromkeys(fed_from) if net in board.held and board.held[net].voltage is None]
+    text = rule.selection.when_text or "the rule's condition"
+    return Missing(
+        reason=f"whether {text} is not known", ask=tuple(f'[supply."{net}"] voltage = "…"' for net in unknown)
     )
 
 

@@ -4,27 +4,34 @@ from collections.abc import Callable, Iterable
 from fnmatch import fnmatchcase
 from typing import Final
 
+from rcrules.checks._facts import facts
 from rcrules.checks._subjects import Subject, View
 from rcrules.names import has_token
+from rcrules.networks import Board
 from rcrules.parts import Known, RatedPart
 from rcrules.quantities import Spread
-from rcrules.rulebook import Selection
+from rcrules.rulebook import Selection, holds
 
 _UNITS: Final = {"resistor": "Ω", "capacitor": "F"}
 
 
-def selected(selection: Selection, subject: Subject) -> bool:
-    """Whether all given keys match at one and the same node."""
-    return any(matches(selection, view) for view in subject.views)
+def selected(selection: Selection, subject: Subject, board: Board) -> bool | None:
+    """Whether all given keys match at one and the same node; None where that hangs on a fact that is not known."""
+    found = [matches(selection, view, board) for view in subject.views]
+    return True if True in found else None if None in found else False
 
 
-def matches(selection: Selection, view: View) -> bool:
+def matches(selection: Selection, view: View, board: Board) -> bool | None:
     """Whether all given keys match, one of ``any-of`` does, and none of ``not``."""
-    return (
-        all(test(selection, view) for test in _TESTS)
-        and (not selection.any_of or any(matches(item, view) for item in selection.any_of))
-        and not any(matches(item, view) for item in selection.exclude)
-    )
+    if not all(test(selection, view) for test in _TESTS):
+        return False
+    any_of = [matches(item, view, board) for item in selection.any_of] or [True]
+    excluded = [matches(item, view, board) for item in selection.exclude]
+    when = True if selection.when is None else holds(selection.when, facts(view, board))
+    one = True if True in any_of else None if None in any_of else False
+    none = False if True in excluded else None if None in excluded else True
+    together = (one, none, when)
+    return False if False in together else None if None in together else True
 
 
 def _within(wanted: tuple[str, ...], found: Iterable[str]) -> bool:

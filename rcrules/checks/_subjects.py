@@ -16,6 +16,7 @@ class View:
     roles: tuple[str, ...]
     certainty: str
     nets: tuple[str, ...]
+    fed_from: tuple[str, ...]
     feeds: tuple[str, ...]
     kinds_fed: tuple[str, ...]
     parts: tuple[RatedPart, ...]
@@ -130,6 +131,7 @@ def _view(node: Node, nets: Iterable[str], parts: tuple[RatedPart, ...]) -> View
         roles=(node.role,),
         certainty=node.certainty,
         nets=tuple(dict.fromkeys((node.net, *nets))),
+        fed_from=node.fed_from,
         feeds=node.feeds,
         kinds_fed=node.kinds_fed,
         parts=parts,
@@ -139,4 +141,4 @@ def _view(node: Node, nets: Iterable[str], parts: tuple[RatedPart, ...]) -> View
 def _apart(part: RatedPart, nets: tuple[str, ...], coverage: str) -> View:
     """The facts of a part that hangs on no node."""
     roles = ("decoupling",) if coverage == "decoupling" else ()
-    return View(roles=roles, certainty="sure", nets=nets, feeds=(), kinds_fed=(), parts=(part,))
+    return View(roles=roles, certainty="sure", nets=nets, fed_from=nets, feeds=(), kinds_fed=(), parts=(part,))

@@ -1,5 +1,6 @@
 """The case that makes the worst margin, in parts and their shares, the most influential first."""
 
+import math
 from collections.abc import Sequence
 from typing import Final
 
@@ -12,6 +13,10 @@ from rcrules.parts import RatedPart, Share
 from rcrules.problems import Parameter, Problem
 
 _TINY: Final = 1e-9
+_EXACT: Final = 1e-6
+"""Shares that make up a change agree with it to this."""
+_SHOWN: Final = 5e-5
+"""Least share that is told."""
 
 
 def worst_case(problem: Problem, case: Sequence[float], measure: Measure, board: Board) -> list[Json]:
@@ -52,10 +57,20 @@ def _row(item: Parameter, value: float, board: Board) -> Json:
 
 
 def _shares(part: RatedPart, relative: float) -> str:
-    """``tolerance -20 %, temperature -15 %``; '' where one share says it all."""
-    moves = [(share, share.low if relative < 0 else share.high) for share in part.shares]
-    moves = [(share, move) for share, move in moves if abs(move) >= 5e-5]
-    return ", ".join(f"{_name(share)} {100 * move:+.2g} %" for share, move in moves) if len(moves) > 1 else ""
+    """``tolerance -20 %, temperature -15 %``; '' where one share says it all, or the case lies between the ends.
+
+    The loss by bias depends on the voltage that the problem applies, so it is what the other shares leave.
+    """
+    moves = {share: share.low if relative < 0 else share.high for share in part.shares}
+    bias = next((share for share in moves if share.name == "bias"), None)
+    others = math.prod(1 + move for share, move in moves.items() if share is not bias)
+    left = (1 + relative) / others - 1
+    if abs(left) > _EXACT and (bias is None or not bias.low - _EXACT <= left <= max(bias.high, 0.0) + _EXACT):
+        return ""
+    if bias is not None:
+        moves[bias] = left
+    told = [f"{_name(share)} {100 * move:+.2g} %" for share, move in moves.items() if abs(move) >= _SHOWN]
+    return ", ".join(told) if len(told) > 1 else ""
 
 
 def _name(share: Share) -> str:

@@ -6,28 +6,37 @@ from pathlib import Path
 from typing import TYPE_CHECKING
 
 if TYPE_CHECKING:
+    from rcrules.cli._output import Target
     from rcrules.findings import Document
 
 
 def check(chosen: argparse.Namespace) -> int:
     """Findings of every board; 1 when one counts."""
+    asked = _targets(chosen)
     documents = _documents(chosen, with_rules=True)
-    _write(documents, chosen)
+    _write(documents, asked, chosen)
     return int(any(_counts(document, chosen.fail_on, chosen.fail_on_undecided) for document in documents))
 
 
 def networks(chosen: argparse.Namespace) -> int:
     """What was found on every board."""
-    _write(_documents(chosen, with_rules=False), chosen)
+    asked = _targets(chosen)
+    _write(_documents(chosen, with_rules=False), asked, chosen)
     return 0
 
 
 def rules(chosen: argparse.Namespace) -> int:
     """Packs and rules, or measures, in words."""
-    from rcrules.cli._listing import measures_text, rules_text
     from rcrules.cli._output import to_stdout
 
-    to_stdout(measures_text() if chosen.measures else rules_text(tuple(chosen.packs)))
+    if chosen.measures:
+        from rcrules.cli._measures import measures_text
+
+        to_stdout(measures_text())
+    else:
+        from rcrules.cli._rules import rules_text
+
+        to_stdout(rules_text(tuple(chosen.packs)))
     return 0
 
 
@@ -59,11 +68,16 @@ def _documents(chosen: argparse.Namespace, *, with_rules: bool) -> "list[Documen
     return run_all(jobs, processes=chosen.jobs)
 
 
-def _write(documents: "list[Document]", chosen: argparse.Namespace) -> None:
-    """All reports asked for; text on standard output when none is."""
-    from rcrules.cli._output import targets, wants_color, write
+def _targets(chosen: argparse.Namespace) -> "list[Target]":
+    """Reports asked for, checked before any work is done; text on standard output when none is."""
+    from rcrules.cli._output import targets
 
-    asked = targets(chosen.report or ([] if chosen.quiet else ["text"]), boards=len(documents))
+    return targets(chosen.report or ([] if chosen.quiet else ["text"]), boards=len(chosen.project))
+
+
+def _write(documents: "list[Document]", asked: "list[Target]", chosen: argparse.Namespace) -> None:
+    from rcrules.cli._output import wants_color, write
+
     for document in documents:
         for target in asked:
             write(document, target, verbose=chosen.verbose, color=wants_color(chosen.color))

@@ -82,7 +82,7 @@ def _case_text(worst: list[Json]) -> str:
     """``C7 -38 % (tolerance -20 %, X5R -15 %), R12 -1 %``; the rest counted."""
     texts = [_parameter_text(item) for item in worst[:_SHOWN_CASES]]
     rest = len(worst) - _SHOWN_CASES
-    return ", ".join(texts) + (f", {count(rest, 'further part', 'further parameters')}" if rest > 0 else "")
+    return ", ".join(texts) + (f", {rest} more" if rest > 0 else "")
 
 
 def _parameter_text(item: Json) -> str:

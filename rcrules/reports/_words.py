@@ -49,7 +49,7 @@ def asked(finding: Finding) -> str:
     """What was measured: ``delay at power-up from supply valid to "may switch" (30 % of +3V3)``."""
     words = [finding.measure.replace("_", " ")]
     for name, value in finding.options.items():
-        text = f'"{value}"' if name == "to" else str(value)
+        text = f'"{value}"' if name == "to" and str(value)[:1].isalpha() else str(value)
         words.append(f"{_PREPOSITIONS.get(name, name.replace('_', ' '))} {text}")
     level = finding.detail.get("level_text")
     return " ".join(words) + (f" ({level})" if level else "")

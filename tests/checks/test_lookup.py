@@ -64,7 +64,7 @@ def test_what_is_asked_for_tells_the_line_to_add() -> None:
     found = look_up("hold_time", asking, node(), board(), Project())
     assert found == Missing(
         reason="hold_time is not given",
-        ask=('[settings."late-enough"] hold_time = "…"', '[pin."U3.NRST"] hold-time = "…"'),
+        ask=('[settings."late-enough"] hold_time = "…"', '[pin."U3.NRST"] set = { hold_time = "…" }'),
     )
 
 

@@ -1,3 +1,4 @@
+from dataclasses import replace
 from typing import Any
 
 import pytest
@@ -5,13 +6,13 @@ import pytest
 from rcrules.checks._select import selected
 from rcrules.checks._subjects import Subjects
 from rcrules.quantities import Spread
-from rcrules.rulebook import Selection
+from rcrules.rulebook import Comparison, Selection
 from tests.checks._objects import board
 
 
 def met(kind: str, /, **keys: Any) -> list[str]:
     """References, or net, of what a selection meets."""
-    chosen = [item for item in Subjects(board()).of(kind) if selected(Selection(**keys), item)]
+    chosen = [item for item in Subjects(board()).of(kind) if selected(Selection(**keys), item, board())]
     return [item.net or item.refs[0] for item in chosen]
 
 
@@ -87,7 +88,7 @@ def test_a_net_with_brackets_is_met_by_its_own_name() -> None:
 def test_a_node_answers_to_every_net_joined_to_it() -> None:
     joined = board(joints={"+3V3": "+3V3", "GND": "GND", "NRST": "NRST", "MCU_RESET": "NRST"})
     subject = Subjects(joined).of("node")[0]
-    assert selected(Selection(name=("RESET",)), subject)
+    assert selected(Selection(name=("RESET",)), subject, joined)
 
 
 def test_parts_that_are_not_fitted_or_have_no_value_are_no_subjects() -> None:
@@ -100,3 +101,30 @@ def test_parts_that_are_not_fitted_or_have_no_value_are_no_subjects() -> None:
         "C10": part("C10", "capacitor", 1e-6),
     }
     assert Subjects(board(parts={**board().parts, **odd})).of("capacitor") == Subjects(board()).of("capacitor")
+
+
+def above(volts: float, fact: str = "supply_high") -> Comparison:
+    return Comparison(left=fact, right=volts, sign=">=")
+
+
+@pytest.mark.parametrize(
+    ("kind", "condition", "hit"),
+    [
+        ("node", above(3.2), ["NRST"]),
+        ("node", above(3.4), []),
+        ("capacitor", above(3.2, "voltage_low"), ["C2"]),
+    ],
+)
+def test_a_condition_on_facts(kind: str, condition: Comparison, hit: list[str]) -> None:
+    found = [item for item in Subjects(board()).of(kind) if selected(Selection(when=condition), item, board()) is True]
+    assert [item.net or item.refs[0] for item in found] == hit
+
+
+def test_a_condition_on_a_fact_that_is_not_known_neither_holds_nor_fails() -> None:
+    held = {**board().held, "+3V3": replace(board().held["+3V3"], voltage=None)}
+    dark = board(held=held)
+    subject = Subjects(dark).of("node")[0]
+    assert selected(Selection(when=above(3.2)), subject, dark) is None
+    assert selected(Selection(when=above(3.2), net=("GND",)), subject, dark) is False
+    assert selected(Selection(exclude=(Selection(when=above(3.2)),)), subject, dark) is None
+    assert selected(Selection(any_of=(Selection(when=above(3.2)), Selection())), subject, dark) is True
