@@ -46,7 +46,9 @@ def _series(view: View, resistor: Arm, capacitor: Arm, ohms: float) -> Judged | 
     if any(_is_switched(view, arm) for arm in (resistor, capacitor)):
         return Judged(role="snubber", why=(where, "one end is a switched net"), alone=True)
     if resistor.held is None:
-        return _onward(resistor, capacitor, where)
+        return _onward(resistor, capacitor, where, ohms)
+    if resistor.to == "driven" and capacitor.held is None:
+        return Judged(role="other", sure=False, why=(where, f"couples into {capacitor.far}"), alone=True)
     if resistor.fixed and capacitor.fixed and 0 < ohms <= ADDED_ESR:
         return Judged(
             role="other", sure=False, why=(where, "adds series resistance to an output capacitor"), alone=True
@@ -60,14 +62,15 @@ def _series(view: View, resistor: Arm, capacitor: Arm, ohms: float) -> Judged | 
     return Judged(role="snubber", sure=False, why=(where,), alone=True)
 
 
-def _onward(resistor: Arm, capacitor: Arm, where: str) -> Judged | None:
+def _onward(resistor: Arm, capacitor: Arm, where: str, ohms: float) -> Judged | None:
     """A capacitor and a resistor in series into a free joint: coupling from a signal, or a leg to a fixed net."""
     if capacitor.held is None:
         return None
     if capacitor.to == "driven":
         why = f"{capacitor.ref} couples {capacitor.far} onward"
         return Judged(role="high-pass", sure=False, why=(why,), alone=True)
-    return Judged(role="other", sure=False, why=(where, f"loads the node {resistor.far}"), alone=True)
+    role = "snubber" if 0 < ohms <= LINE[1] else "other"
+    return Judged(role=role, sure=False, why=(where, f"loads the node {resistor.far}"), alone=True)
 
 
 def _is_switched(view: View, arm: Arm) -> bool:

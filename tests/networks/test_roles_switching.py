@@ -54,3 +54,15 @@ def test_unnamed_pin_one_of_a_transistor_is_its_base_but_not_for_sure():
 def test_contact_with_its_own_pull_before_the_filter_is_a_debounce():
     node = nodes("R1 10k +3V3 E\nSW1 E GND\nR2 10k E N\nC1 10n N GND\nU1 PA0=N")["N"]
     assert (node.role, node.certainty, set(node.parts)) == ("debounce", "sure", {"R1", "R2", "C1"})
+
+
+def test_leg_from_a_pin_to_ground_is_a_snubber_only_with_a_small_resistor():
+    legs = {ohms: nodes(f"R1 {ohms} P N\nC1 100n N GND\nU1 APD:input=P")["N"] for ohms in ("51", "4.3k")}
+    assert [(node.role, node.certainty) for node in legs.values()] == [("snubber", "unsure"), ("other", "unsure")]
+
+
+def test_series_branch_from_a_signal_into_another_node_is_no_snubber():
+    text = "R1 100k A N\nC1 10u N M\nC2 1n A M\nR2 5k M GND"
+    found = nodes(text, hold={"A": "driven"})
+    assert (found["N"].role, found["M"].role) == ("other", "high-pass")
+    assert set(found["M"].parts) == {"R1", "R2", "C1", "C2"}
