@@ -5,11 +5,15 @@ from pathlib import Path
 
 import pytest
 
-from rcrules import project
+from rcrules import project, rulebook, tomlfile
 from rcrules.errors import UserMistake
+from rcrules.measures import registry
 
 FOLDER = Path(__file__).parent / "messages"
-LOADERS = {"project": project.load}
+LOADERS = {
+    "project": project.load,
+    "rulebook": lambda name, text: rulebook.compile_pack(tomlfile.load(name, text), registry()),
+}
 
 
 @pytest.mark.parametrize("path", sorted(FOLDER.rglob("*.toml")), ids=lambda path: f"{path.parent.name}-{path.stem}")

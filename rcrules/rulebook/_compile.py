@@ -68,13 +68,11 @@ def _rule(table: Table, pack: Pack | None, measures: Mapping[str, Measure], seen
     if own_id is not None:
         seen.setdefault(own_id, table)
     measure = _measure(table, measures)
-    rule = _body(table, pack, measure, own_id or "") if measure else _quietly(table)
+    if measure is None:
+        selection(table)  # what is wrong there is told in the same run
+        return None
+    rule = _body(table, pack, measure, own_id or "")
     return rule if len(table.problems.mistakes) == before else None
-
-
-def _quietly(table: Table) -> None:
-    """Without a measure the selection can still be wrong, and should be told in the same run."""
-    selection(table)
 
 
 def _body(table: Table, pack: Pack | None, measure: Measure, own_id: str) -> Rule:

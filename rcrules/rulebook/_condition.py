@@ -16,7 +16,7 @@ from rcrules.tomlfile import cut, guess, listed, quantity_name
 FACTS: Final[Mapping[str, str]] = {
     f"{fact}_{end}": "V" for fact in ("supply", "voltage", "rated_voltage") for end in ("low", "nominal", "high")
 }
-"""Facts by name, with their units: of the supplies that feed the subject, of the voltage across or at it, of its rating."""
+"""Facts by name, with their units: supplies that feed the subject, voltage across or at it, rated voltage."""
 
 _LONGEST: Final = 400
 _DEEPEST: Final = 8

@@ -54,8 +54,10 @@ def _named(unit: str) -> str:
 def options(table: Table, measure: Measure, names: Names) -> dict[str, OptionValue]:
     """``with``: every option of the measure, defaults filled in."""
     given = table.table("with")
-    if given is not None:
-        given.only(tuple(measure.options) or ("(none)",), do=f"measure '{measure.name}' has these options")
+    if given is not None and not measure.options:
+        table.wrong("with", f"measure '{measure.name}' has no options", on="key")
+    elif given is not None:
+        given.only(tuple(measure.options), do=f"these are the options of '{measure.name}'")
     found: dict[str, OptionValue] = {}
     for key, option in measure.options.items():
         if given is not None and key in given.data:

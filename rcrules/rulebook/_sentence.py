@@ -9,7 +9,7 @@ from rcrules.tomlfile import listed
 
 
 def sentence(rule: Rule) -> str:
-    """``For every node with role debounce, the delay after release to 'may switch' must be at least bounce (asked).``"""
+    """``for every node with role debounce, the delay after release to 'may switch' must be at least 10 ms``"""
     selection = "".join(f" {phrase}," for phrase in [_selected(rule.selection, rule.measure.subject)] if phrase)
     subject = f"for every {rule.measure.subject}{selection or ','}"
     what = " ".join([f"the {rule.measure.name.replace('_', ' ')}", *_options(rule)])
@@ -30,7 +30,7 @@ def _phrases(selection: Selection, subject: str) -> Iterator[str]:
         ("named", selection.name),
         ("on net", selection.net),
         ("feeding pin", selection.pin),
-        ("with part", selection.part),
+        ("of reference", selection.part),
         ("on sheet", selection.sheet),
         ("of kind", kinds),
         ("feeding a pin of kind", selection.kind_fed),
@@ -66,19 +66,19 @@ def _shown(rule: Rule, key: str, value: OptionValue) -> str:
     if isinstance(value, Level):
         return f"'{value.text}'"
     if isinstance(value, float | int):
-        return show(float(value), rule.measure.options[key].unit)
+        unit = rule.measure.options[key].unit
+        return f"{100 * value:.4g} %" if unit == "1" else show(float(value), unit)
     return _name(rule, value[1:]) if value.startswith("?") else value
 
 
 def _limit(rule: Rule, limit: Limit) -> str:
     words = limit.kind.replace("-", " ")
     if limit.value is not None:
-        return f"{words} {show(limit.value.nominal, limit.value.unit)}"
+        return f"{words} {limit.text}"
     if limit.table is not None:
         name, amounts = limit.table
-        return f"{words} " + ", ".join(
-            f"{show(item.nominal, item.unit)} where {name} is {word}" for word, item in amounts.items()
-        )
+        by_word = (f"{show(item.nominal, item.unit)} where {name} is {word}" for word, item in amounts.items())
+        return f"{words} {', '.join(by_word)}"
     return f"{words} {_name(rule, limit.name or '')}"
 
 
@@ -87,8 +87,6 @@ def _name(rule: Rule, name: str) -> str:
     own = rule.given.get(name)
     if own is None:
         return f"{name} (of the project file)"
-    return (
-        f"{name} (asked)"
-        if own == "ask"
-        else f"{name} ({show(own.nominal, own.unit)} unless the project says otherwise)"
-    )
+    if own == "ask":
+        return f"{name} (asked)"
+    return f"{name} ({show(own.nominal, own.unit)} unless the project says otherwise)"

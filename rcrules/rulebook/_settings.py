@@ -26,9 +26,9 @@ def _of_rules(project: Project, rules: list[Rule]) -> Iterator[Mistake]:
                 problem = f"rule '{rule.id}' has no setting '{name}'{guess(name, units)}"
                 yield replace(at, problem=problem, expected=listed(sorted(units)) or "none")
             else:
-                spread = project.setting_spreads[rule.id].get(name)
-                if (problem := _wrong(name, units[key], spread)) is not None:
-                    yield replace(at, problem=problem, expected=_expected(units[key]))
+                wrong = _wrong(name, units[key], project.setting_spreads[rule.id].get(name))
+                if wrong is not None:
+                    yield replace(at, problem=wrong, expected=_expected(units[key]))
 
 
 def _of_tables(project: Project, rules: list[Rule]) -> Iterator[Mistake]:

@@ -26,10 +26,10 @@ def guess(word: str, known: Iterable[str]) -> str:
 
 
 def listed(words: Iterable[str]) -> str:
-    """``a, b or c``, cut after a dozen."""
+    """``a, b or c``, cut after two dozen."""
     items = list(words)
-    if len(items) > 12:
-        return ", ".join(items[:12]) + " …"
+    if len(items) > 24:
+        return ", ".join(items[:24]) + " …"
     return " or ".join((", ".join(items[:-1]), items[-1])) if len(items) > 1 else "".join(items)
 
 

@@ -1,0 +1,67 @@
+"""The key ``when``."""
+
+import pytest
+
+from rcrules.quantities import QuantityError
+from rcrules.rulebook import Comparison, Junction, holds
+from rcrules.rulebook._condition import parse_condition
+
+
+def test_and_binds_closer_than_or():
+    found = parse_condition("supply_low > 1 V or supply_high < 2 V and 3 V >= voltage_low")
+    assert found == Junction(
+        word="or",
+        terms=(
+            Comparison(left="supply_low", right=1.0, sign=">"),
+            Junction(
+                word="and",
+                terms=(
+                    Comparison(left="supply_high", right=2.0, sign="<"),
+                    Comparison(left=3.0, right="voltage_low", sign=">="),
+                ),
+            ),
+        ),
+    )
+
+
+@pytest.mark.parametrize(
+    ("text", "outcome"),
+    [
+        ("supply_low >= 3 V", True),
+        ("supply_low > 3 V", False),
+        ("supply_low <= 3 V", True),
+        ("supply_low < 3000 mV", False),
+        ("voltage_high > 60 V", None),
+        ("voltage_high > 60 V or supply_low >= 3 V", True),
+        ("voltage_high > 60 V or supply_low > 3 V", None),
+        ("voltage_high > 60 V and supply_low > 3 V", False),
+        ("voltage_high > 60 V and supply_low >= 3 V", None),
+        ("(supply_low > 3 V or supply_high > 3 V) and supply_low < supply_high", True),
+    ],
+)
+def test_a_fact_that_is_not_known_leaves_it_open_only_where_it_matters(text, outcome):
+    assert holds(parse_condition(text), {"supply_low": 3.0, "supply_high": 3.6}) is outcome
+
+
+@pytest.mark.parametrize(
+    ("text", "at", "problem"),
+    [
+        ("", 0, "a fact is missing"),
+        ("supply_low", 10, "no comparison"),
+        ("supply_low > 1 mz", 15, "unit 'mz' is not known"),
+        ("supply_low > 1 V)", 16, "')' not understood"),
+        ("supply_low > 1 V supply_high", 17, "'supply_high' not understood"),
+        ("supply_lo > 1 V", 0, "no fact is called 'supply_lo'; did you mean 'supply_low'?"),
+        ("(supply_low > 1 V", 17, "a bracket that does not close"),
+        ("(supply_low > 1 V) 3", 18, "'3' not understood"),
+        ("supply_low > 1 V .. 2 V", 13, "a range cannot be compared"),
+        ("supply_low > 1 s", 0, "a voltage is compared with a time"),
+        ("1 V > 2 V", 0, "no fact to compare"),
+        ("(" * 20 + "supply_low > 1 V" + ")" * 20, 8, "too many brackets"),
+        ("supply_low > 1 V and " * 50, 400, "too long for a condition"),
+    ],
+)
+def test_mistakes_have_an_offset(text, at, problem):
+    with pytest.raises(QuantityError) as caught:
+        parse_condition(text)
+    assert (caught.value.problem[: len(problem)], caught.value.at) == (problem, at)
