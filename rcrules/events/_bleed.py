@@ -4,8 +4,8 @@ from collections import deque
 from collections.abc import Iterable
 from dataclasses import dataclass
 
+from rcrules.design import natural
 from rcrules.events._bench import Bench
-from rcrules.events._build import natural
 from rcrules.events._circuit import LARGEST, ZERO
 from rcrules.events._sources import Sources
 from rcrules.events._unmeasurable import Unmeasurable
@@ -47,7 +47,7 @@ def bleeders(bench: Bench, sources: Sources, branch: Branch) -> Wires:
         branches = lasting
     if len(live) > LARGEST:
         raise Unmeasurable(f"{len(live)} nets hang on {branch.ref}; more than {LARGEST} are not solved")
-    ordered = sorted(branches, key=lambda item: (item.kind, natural(item.ref)), reverse=False)
+    ordered = sorted(branches, key=lambda item: (item.kind, natural(item.ref)))
     return Wires(branches=tuple(ordered), live=frozenset(live))
 
 

@@ -1,10 +1,10 @@
 """From a network of the board to a circuit with its columns, loads of pins and wiring included."""
 
-import re
 from collections import deque
 from collections.abc import Callable, Sequence
 from dataclasses import dataclass
 
+from rcrules.design import natural
 from rcrules.events._bench import Bench
 from rcrules.events._circuit import ZERO, Arm, Circuit
 from rcrules.events._table import LEAST_OHMS, Table
@@ -52,11 +52,6 @@ def terminal_of(bench: Bench, circuit: Circuit, joint: str) -> str:
     if held is not None and held.kind == "ground":
         return circuit.hold(ZERO)
     return circuit.hold(joint, joint)
-
-
-def natural(ref: str) -> tuple[str | int, ...]:
-    """References in the order in which people count: R2 before R10."""
-    return tuple(int(item) if item.isdigit() else item for item in re.split(r"(\d+)", ref))
 
 
 def _of_part(bench: Bench, circuit: Circuit, table: Table, ref: str, kind: str, a: str, b: str) -> Wire:
@@ -130,6 +125,6 @@ def _ordered(free: Sequence[str], wires: Sequence[Wire], first: Sequence[str]) -
     return [*found, *(name for name in free if name not in found)]
 
 
-def _rank(circuit: Circuit, wire: Wire) -> tuple[str, int, int, tuple[str | int, ...]]:
+def _rank(circuit: Circuit, wire: Wire) -> tuple[str, int, int, tuple[tuple[int, int, str], ...]]:
     ends = sorted((circuit.terminal(wire.a), circuit.terminal(wire.b)))
     return ((wire.kind == "capacitor" and "c") or "r", ends[0], ends[1], natural(wire.ref))

@@ -1,6 +1,6 @@
 """What discharges a capacitor once all supplies are open."""
 
-from collections.abc import Mapping, Sequence
+from collections.abc import Mapping
 from dataclasses import dataclass, replace
 
 from rcrules.engine import Shape
@@ -11,11 +11,11 @@ from rcrules.events._levels import Leveller
 from rcrules.events._options import OptionValue, levels_of
 from rcrules.events._part import place_of
 from rcrules.events._sources import Sources, still
-from rcrules.events._table import LEAST_OHMS, Table
+from rcrules.events._table import Table
 from rcrules.events._unmeasurable import Unmeasurable
 from rcrules.measures import Measure
 from rcrules.parts import RatedPart
-from rcrules.problems import Form, Problem, Structure, constant
+from rcrules.problems import Form, Problem, Structure
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -57,21 +57,18 @@ def _falling(case: _Case, circuit: Circuit) -> Structure:
         Arm(ref=item.ref, kind=item.kind, a=item.a, b=item.b, value=case.table.part(parts[item.ref]))
         for item in case.wires.branches
     ]
-    feeds = []
-    for joint in [name for name in circuit.free if case.sources.kind(name) == "supply"]:
-        name = circuit.hold(f"{joint} source", joint)
-        feeds.append(Arm(ref=name, kind="resistor", a=name, b=joint, value=constant(LEAST_OHMS)))
-    if circuit.floating(feeds):
-        raise Unmeasurable(f"no resistive path from {circuit.floating(feeds)[0]} to a source or ground")
+    pinned = [name for name in circuit.free if case.sources.kind(name) == "supply"]
+    floating = [name for name in circuit.floating() if name not in circuit.driven([*circuit.held, *pinned])]
+    if floating:
+        raise Unmeasurable(f"no resistive path from {floating[0]} to a source or ground")
     pairs, farads = _merged(circuit)
-    ohms = circuit.values("resistor")
-    waves = [case.sources.supply(circuit.joints[name]) if name in circuit.joints else () for name in circuit.held]
+    whole = circuit.shape()
     return Structure(
-        shape=_shape(circuit, (), pairs),
-        ohms=ohms,
+        shape=Shape(whole.free, whole.held, whole.resistors, pairs),
+        ohms=circuit.values("resistor"),
         farads=farads,
-        waveforms=tuple(still(volts) for volts in waves),
-        earlier=(_shape(circuit, feeds, pairs), (*ohms, *(item.value for item in feeds))),
+        waveforms=tuple(still(()) for _ in circuit.held),
+        pinned=tuple((circuit.terminal(name), case.sources.supply(name)) for name in pinned),
         at=circuit.terminal(case.ends[0]),
         against=None if case.ends[1] == ZERO else circuit.terminal(case.ends[1]),
         rising=False,
@@ -98,11 +95,6 @@ def _charged(case: _Case, joint: str) -> Form:
     if case.sources.kind(joint) != "supply":
         raise Unmeasurable(f"no resistive path from {joint} to ground: its voltage after power-off is not known")
     return case.sources.supply(joint)
-
-
-def _shape(circuit: Circuit, feeds: Sequence[Arm], capacitors: tuple[tuple[int, int], ...]) -> Shape:
-    whole = circuit.shape(feeds)
-    return Shape(whole.free, whole.held, whole.resistors, capacitors)
 
 
 def _merged(circuit: Circuit) -> tuple[tuple[tuple[int, int], ...], tuple[Form, ...]]:

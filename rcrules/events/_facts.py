@@ -1,22 +1,17 @@
-"""Facts of the project file by name; the names of its tables may be globs."""
+"""Facts of the project file about joints, each of which may be several nets."""
 
-from collections.abc import Callable, Iterable, Mapping
-from fnmatch import fnmatchcase
+from collections.abc import Callable, Mapping
 from typing import TypeVar
 
-Facts = TypeVar("Facts")
+from rcrules.project import NetFacts, PartFacts, PinFacts, SupplyFacts, ranked
+
+Facts = TypeVar("Facts", SupplyFacts, NetFacts, PinFacts, PartFacts)
 Value = TypeVar("Value")
 
 
-def fact(tables: Mapping[str, Facts], names: Iterable[str], value: Callable[[Facts], Value | None]) -> Value | None:
-    """The first value that any table gives for any of the names: exact names first, then globs in the file's order."""
+def fact(tables: Mapping[str, Facts], names: tuple[str, ...], value: Callable[[Facts], Value | None]) -> Value | None:
+    """The value in the most specific table that gives one for any of the names; None where none does."""
     if not tables:
         return None
-    names = tuple(names)
-    exact = [tables[name] for name in names if name in tables]
-    globs = [table for glob, table in tables.items() if any(fnmatchcase(name, glob) for name in names)]
-    for table in (*exact, *globs):
-        found = value(table)
-        if found is not None:
-            return found
-    return None
+    found = (value(table) for _, table in ranked(tables, names))
+    return next((item for item in found if item is not None), None)

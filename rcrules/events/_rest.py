@@ -23,7 +23,8 @@ def at_rest(bench: Bench, node: Node, measure: Measure, options: Mapping[str, Op
         raise Unmeasurable(f"both ends of {node.net} are held: nothing moves there")
     table = Table()
     network = _freed(bench.network(node), node)
-    circuit = build(bench, network, table, [node.joint], currents=False)
+    alike = measure.poses == "network"  # the same problem for every node of the network
+    circuit = build(bench, network, table, network.free[:1] if alike else [node.joint], currents=False)
     contacts = switched(bench, network, circuit, table, node.joint, "none").after
     floating = circuit.floating(contacts)
     if floating:
@@ -35,7 +36,7 @@ def at_rest(bench: Bench, node: Node, measure: Measure, options: Mapping[str, Op
         ohms=(*circuit.values("resistor"), *(arm.value for arm in contacts)),
         farads=circuit.values("capacitor"),
         waveforms=tuple(still(()) for _ in circuit.held),
-        at=circuit.terminal(node.joint),
+        at=0 if alike else circuit.terminal(node.joint),
         options=plain_of(measure, options),
     )
     if measure.poses == "transfer":

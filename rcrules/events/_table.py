@@ -42,12 +42,14 @@ class Table:
             )
         )
 
-    def given(self, name: str, spread: Spread, origin: str, *, least: float | None = None) -> Form:
-        """A number that an input gives; one without spread is no parameter."""
+    def given(
+        self, name: str, spread: Spread, origin: str, *, least: float | None = None, always: bool = False
+    ) -> Form:
+        """A number that an input gives; one without spread is a parameter only where it is ``always`` to be named."""
         if name in self.forms:
             return self.forms[name]
         low, nominal, high = (_at_least(value, least) for value in (spread.low, spread.nominal, spread.high))
-        if low == high:
+        if low == high and not always:
             self.forms[name] = constant(nominal)
             return self.forms[name]
         return self.add(

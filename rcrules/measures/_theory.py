@@ -6,6 +6,7 @@ T2  Every time constant rises with every resistance and every capacitance (min-m
 T3  Grounded capacitors, one common start, sources that move away from it and never back: with u = |v - start|,
     C u' = -G u + s is a cooperative system (off-diagonals of -G are >= 0) whose state never falls, so at every instant u
     falls with each C, falls with each R to a moved source, rises with each R to a source at rest (Kamke-Müller comparison).
+T3b The same for a network at rest on one supply that is then left open: no node ever rises, since the supply fed current in.
 T4  The far end of a ladder that is driven at the other end and loaded nowhere: u falls with every R and every C.
 """
 
@@ -20,6 +21,7 @@ from rcrules.measures._topology import (
     increasing,
     is_zero,
     ladder_end,
+    left_open,
     monotone,
     single_mode,
     stepped,
@@ -141,6 +143,8 @@ def _exponential(structure: Structure, low: Array) -> bool:
 def _charging(structure: Structure, low: Array, high: Array, level: LevelForm) -> Theory:
     """One exponential from 0 V to a fixed level, t = τ ln(1/(1 - level/final)), currents drawn included."""
     fixed = level.kind == "voltage" and not level.follows and increasing(level.offset, low)
+    if fixed and left_open(structure, low):
+        return _decaying(structure, low, level)
     if not (fixed and structure.empty and structure.rising and _exponential(structure, low)):
         return unproved(structure, low, high)
     slopes = Slopes([0] * len(low))
@@ -152,6 +156,17 @@ def _charging(structure: Structure, low: Array, high: Array, level: LevelForm) -
         volts = wave.points[-1][1]
         slopes.add(columns([volts]), -1 if increasing(volts, low) else None)
     slopes.add(columns([level.offset]), 1)
+    return slopes.theory()
+
+
+def _decaying(structure: Structure, low: Array, level: LevelForm) -> Theory:
+    """T3b for the time of the fall to a fixed level."""
+    slopes = Slopes([0] * len(low))
+    slopes.add(columns(structure.farads), 1)
+    for pair, form in zip(structure.shape.resistors, structure.ohms, strict=True):
+        slopes.add(columns([form]), 1 if max(pair) >= structure.shape.free else None)
+    slopes.add(columns(form for _, form in structure.pinned), 1)
+    slopes.add(columns([level.offset]), -1)
     return slopes.theory()
 
 
@@ -223,6 +238,7 @@ def _sources(structure: Structure) -> frozenset[int]:
         forms.append(wave.before)
         for time, volts in wave.points:
             forms += [time, volts]
+    forms += [form for _, form in structure.pinned]
     return columns([*forms, *(form for state in structure.states for form in state)])
 
 

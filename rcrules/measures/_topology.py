@@ -77,6 +77,15 @@ def grounded(structure: Structure) -> bool:
     )
 
 
+def left_open(structure: Structure, low: Array) -> bool:
+    """Whether everything was at rest on one voltage, which is then left open, and all held terminals are at 0 V."""
+    forms = {form for _, form in structure.pinned}
+    still = all(is_zero(wave.before) and _still(wave) for wave in structure.waveforms)
+    passives = (*structure.ohms, *structure.farads, *forms)
+    plain = not structure.amps and not structure.empty and structure.earlier is None and structure.against is None
+    return plain and still and len(forms) == 1 and grounded(structure) and all(increasing(f, low) for f in passives)
+
+
 def single_mode(structure: Structure) -> bool:
     """Whether all capacitors lie at the observed terminal against held terminals that never move."""
     pairs = structure.shape.capacitors
@@ -119,34 +128,31 @@ def _track(wave: Waveform, start: Form, rising: bool) -> Form | None:
 
 def _common_start(structure: Structure) -> Form | None:
     """The one voltage at which every free terminal starts, whatever the resistances; None where there is no such."""
-    befores = [() if is_zero(wave.before) else wave.before for wave in structure.waveforms]
+    free = structure.shape.free
+    sources = {free + index: wave.before for index, wave in enumerate(structure.waveforms)} | dict(structure.pinned)
+    sources = {terminal: () if is_zero(form) else form for terminal, form in sources.items()}
     if structure.empty:
-        return () if all(form == () for form in befores) else None
-    shape = structure.earlier[0] if structure.earlier else structure.shape
-    found = set()
-    for group in _components(shape.free, shape.free + shape.held, shape.resistors):
-        if any(terminal < shape.free for terminal in group):
-            found |= {befores[terminal - shape.free] for terminal in group if terminal >= shape.free}
+        return () if all(form == () for form in sources.values()) else None
+    pairs = (structure.earlier[0] if structure.earlier else structure.shape).resistors
+    found = {sources[terminal] for terminal, _ in structure.pinned}
+    for group in _components([item for item in range(free) if item not in sources], pairs):
+        found |= {sources[terminal] for terminal in group if terminal in sources}
     return found.pop() if len(found) == 1 else None
 
 
-def _components(free: int, terminals: int, pairs: Iterable[tuple[int, int]]) -> list[set[int]]:
-    """Terminals joined by resistors through free terminals; a held terminal may be in several."""
-    group = list(range(terminals))
-
-    def root(item: int) -> int:
-        while group[item] != item:
-            item = group[item]
-        return item
-
-    joins = list(pairs)
-    for a, b in joins:
-        if a < free and b < free:
-            group[root(a)] = root(b)
-    found = {root(item): {item} for item in range(free)}
-    for item in range(free):
-        found[root(item)].add(item)
-    for a, b in joins:
-        if min(a, b) < free <= max(a, b):
-            found[root(min(a, b))].add(max(a, b))
-    return list(found.values())
+def _components(free: Iterable[int], pairs: Iterable[tuple[int, int]]) -> list[set[int]]:
+    """Free terminals joined by resistors, each set with the other terminals around it."""
+    near: dict[int, set[int]] = {terminal: set() for terminal in free}
+    for a, b in pairs:
+        for here, there in ((a, b), (b, a)):
+            if here in near:
+                near[here].add(there)
+    groups: list[set[int]] = []
+    while near:
+        group, queue = set(), [next(iter(near))]
+        while queue:
+            here = queue.pop()
+            group.add(here)
+            queue += near.pop(here, set()) - group
+        groups.append(group)
+    return groups

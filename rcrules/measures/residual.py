@@ -9,7 +9,7 @@ import numpy as np
 from rcrules.measures._measure import Measure, Option
 from rcrules.measures._options import event
 from rcrules.measures._passing import step
-from rcrules.measures._theory import unproved
+from rcrules.measures._theory import fraction_left
 from rcrules.problems import Array, Structure, solved
 
 
@@ -18,7 +18,7 @@ def compute(structure: Structure, cases: Array) -> Array:
     case = solved(structure, cases)
     size = step(case)
     left = np.abs(case.signal.at(np.full(len(cases), float(structure.option("time")))) - case.final)
-    return np.divide(left, size, out=np.full_like(size, np.nan), where=size > 0.0)
+    return left / size
 
 
 MEASURE = Measure(
@@ -27,7 +27,7 @@ MEASURE = Measure(
     unit="1",
     summary="Part of the node's step that is still missing at a time after the event.",
     compute=compute,
-    theory=unproved,
+    theory=fraction_left,
     options={
         "event": event("step-up"),
         "time": Option(kind="quantity", default=None, unit="s", summary="time after the event"),

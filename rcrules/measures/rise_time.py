@@ -17,7 +17,7 @@ def compute(structure: Structure, cases: Array) -> Array:
     """Rise or fall time [s] (case,); cases: (case, column), SI."""
     case = solved(structure, cases)
     low, high = passed(case, structure.level("low")), passed(case, structure.level("high"))
-    span = np.subtract(high, low, out=np.full_like(high, np.inf), where=np.isfinite(low) & np.isfinite(high))
+    span = np.where(np.isinf(low) | np.isinf(high), np.inf, high - np.where(np.isinf(low), 0.0, low))
     relative = structure.level("low").kind == "step"
     return span if structure.rising or relative else -span
 

@@ -14,10 +14,12 @@ from rcrules.problems import Array, Structure, solved
 
 
 def compute(structure: Structure, cases: Array) -> Array:
-    """Settling time [s] (case,); cases: (case, column), SI."""
+    """Settling time [s] (case,); nan where nothing moves; cases: (case, column), SI."""
     case = solved(structure, cases)
-    band = np.abs(float(structure.option("band"))) * step(case)
-    return case.watch(case.weights(), case.final).last_exit(-band, band)
+    size = step(case)
+    band = np.abs(float(structure.option("band"))) * np.nan_to_num(size)
+    settled = case.watch(case.weights(), case.final).last_exit(-band, band)
+    return np.where(np.isnan(size), np.nan, settled)
 
 
 MEASURE = Measure(

@@ -82,25 +82,29 @@ def solve_bounds(
 ) -> list[Bounds | Failure]:
     """Lowest, nominal and highest of every request, in order."""
     numbers: dict[Structure, int] = {}
-    running = [_start(Request(*item), numbers) for item in requests]
-    structures = list(numbers)
+    started: dict[tuple[object, ...], _Running] = {}
+    asked = [_ask(Request(*item), numbers, started) for item in requests]
+    running, structures = list(started.values()), list(numbers)
     while waiting := [item for item in running if item.cases is not None]:
         groups: dict[tuple[int, Compute], list[_Running]] = defaultdict(list)
         for item in waiting:
             groups[item.structure, item.compute].append(item)
         for (number, compute), members in groups.items():
             _advance(structures[number], compute, members)
-    return [item.result for item in running if item.result is not None]
+    return [item.result for item in asked if item.result is not None]
 
 
-def _start(request: Request, numbers: dict[Structure, int]) -> _Running:
+def _ask(request: Request, numbers: dict[Structure, int], started: dict[tuple[object, ...], _Running]) -> _Running:
+    """The search of a request; equal ones share it."""
     problem, quantity, given_only = request
     low, nominal, high = problem.given_box() if given_only else problem.box()
-    theory = quantity.theory(problem.structure, low, high)
     number = numbers.setdefault(problem.structure, len(numbers))
-    started = _Running(number, quantity.compute, search(low, nominal, high, theory.signs, theory.vertices))
-    started.advance(None)
-    return started
+    key = (number, quantity.compute, low.tobytes(), nominal.tobytes(), high.tobytes())
+    if key not in started:
+        theory = quantity.theory(problem.structure, low, high)
+        started[key] = _Running(number, quantity.compute, search(low, nominal, high, theory.signs, theory.vertices))
+        started[key].advance(None)
+    return started[key]
 
 
 def _advance(structure: Structure, compute: Compute, members: list[_Running]) -> None:

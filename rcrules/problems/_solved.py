@@ -7,6 +7,7 @@ from typing import Literal
 import numpy as np
 
 from rcrules.engine import Modes, Response, Signal, corner, solve
+from rcrules.problems._pinned import pinned_state
 from rcrules.problems._structure import Array, Form, LevelForm, Structure, evaluate
 from rcrules.problems._waves import before, currents, drive, reached, stack
 
@@ -56,6 +57,8 @@ class Solved:
         held = before(self.structure, self.cases)
         if self.structure.empty or not self.structure.shape.free:
             free = np.zeros((len(self.cases), self.structure.shape.free))
+        elif self.structure.pinned:
+            return pinned_state(self.structure, self.cases, held, self.ohms, self.amps)
         else:
             free = self.earlier.steady(held, self.amps)
         return np.concatenate([free, held], axis=1)

@@ -98,6 +98,8 @@ class Structure:
     """(free terminal, current drawn out of it [A])."""
     earlier: tuple[Shape, tuple[Form, ...]] | None = None
     """Shape and ohms in the steady state before the event, where a contact changes it; None = the same. Same terminals, same capacitors."""
+    pinned: tuple[tuple[int, Form], ...] = ()
+    """Free terminals, and the voltage [V] at which a source held each of them until the event."""
     empty: bool = False
     """True: all capacitors start at 0 V; False: from DC steady state with the sources at ``before``."""
     at: int = 0

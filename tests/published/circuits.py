@@ -34,7 +34,10 @@ def circuit(free: str, held: str, branches: str, waves: dict[str, Waveform], **n
     resistors, capacitors = [r for r in pairs if r[0] == "R"], [c for c in pairs if c[0] == "C"]
     structure = Structure(
         shape=Shape(
-            len(free.split()), len(held.split()), tuple(pairs[r] for r in resistors), tuple(pairs[c] for c in capacitors)
+            len(free.split()),
+            len(held.split()),
+            tuple(pairs[r] for r in resistors),
+            tuple(pairs[c] for c in capacitors),
         ),
         ohms=tuple(column(index[ref]) for ref in resistors),
         farads=tuple(column(index[ref]) for ref in capacitors),

@@ -82,7 +82,9 @@ def test_active_high_reset_holds_for_a_pulse():
 
 
 def test_slow_supply_gives_no_reset_pulse_at_all():
-    problem = changed(active_high(ramps(constant(5.0), 10e-3)), levels=(("level", volts(1.5)),), options=(("side", "above"),))
+    problem = changed(
+        active_high(ramps(constant(5.0), 10e-3)), levels=(("level", volts(1.5)),), options=(("side", "above"),)
+    )
     assert bounds(problem, "pulse_width").nominal == 0.0
     assert bounds(problem, "peak_voltage").nominal == approx(0.499977, rel=1e-6)
     fast = changed(problem, waveforms=(ramps(constant(5.0), 1e-3), steps(())))
@@ -118,9 +120,7 @@ def test_pressed_level_may_stay_too_high(ohms: float, low: float, seconds: float
     assert delay(pressed, volts(0.99)).nominal == approx(seconds, rel=5e-6)
 
 
-@pytest.mark.parametrize(
-    ("amps", "seconds"), [(0.0, 1.20397), (0.98e-6, 5.44674), (1e-6, inf), (-1e-6, 0.770480)]
-)
+@pytest.mark.parametrize(("amps", "seconds"), [(0.0, 1.20397), (0.98e-6, 5.44674), (1e-6, inf), (-1e-6, 0.770480)])
 def test_leakage_of_the_pin_decides_with_a_large_resistor(amps: float, seconds: float):
     """Circuit 7: 1 MΩ, 1 µF, 3.3 V, to 2.31 V."""
     problem = circuit("N", "S G", "R1 S N, C1 N G", {"S": steps(constant(3.3))}, R1=(1e6, 0), C1=(1e-6, 0))
