@@ -6,8 +6,9 @@ from dataclasses import dataclass
 import numpy as np
 
 from rcrules.engine._box import Best, Box, vertices
-from rcrules.engine._climb import climb, scan, turn
+from rcrules.engine._climb import climb
 from rcrules.engine._shape import Array
+from rcrules.engine._turn import scan, turn
 
 Search = Generator[Array, Array, "Bounds"]
 
@@ -69,16 +70,12 @@ def search(low: Array, nominal: Array, high: Array, signs: Sequence[int | None],
     signs: as for ``bounds``
     vertices_prove: as for ``bounds``
     """
-    box = Box(
-        low=np.asarray(low, float), nominal=np.asarray(nominal, float), high=np.asarray(high, float), signs=tuple(signs)
-    )
+    low, nominal, high = (np.asarray(numbers, float) for numbers in (low, nominal, high))
+    box = Box(low=low, nominal=nominal, high=high, signs=tuple(signs))
     best = Best(box=box)
     unknown = box.unknown()
     everywhere = len(unknown) <= (PROVABLE if vertices_prove else ALL_VERTICES)
-    first = np.concatenate(
-        [box.nominal[None], *(vertices(box, side, unknown if everywhere else ()) for side in (-1, 1))]
-    )
-    yield from best.ask(first)
+    yield from best.ask(_first(box, unknown if everywhere else ()))
     proved = not len(unknown) or (vertices_prove and everywhere)
     if not proved and not best.undefined():
         if not everywhere:
@@ -86,6 +83,14 @@ def search(low: Array, nominal: Array, high: Array, signs: Sequence[int | None],
         yield from scan(best)
         yield from climb(best)
     return _result(best, proved)
+
+
+def _first(box: Box, columns: tuple[int, ...]) -> Array:
+    """Nominal, then the vertices in these columns for both sides. (case, p)"""
+    sides = [vertices(box, -1, columns)]
+    if any(box.signs):
+        sides.append(vertices(box, 1, columns))
+    return np.concatenate([box.nominal[None], *sides])
 
 
 def _result(best: Best, proved: bool) -> Bounds:

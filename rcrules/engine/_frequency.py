@@ -16,6 +16,8 @@ PER_DECADE = 12
 """Frequencies scanned per decade; poles are real, so nothing happens within less than an octave."""
 BEYOND = 1e3
 """How far beyond the outermost poles is scanned."""
+NOTHING = 1e-8
+"""Share of the greatest gain at and below which a pass band has no gain."""
 STEPS = 60
 """Of the search between two scanned frequencies."""
 
@@ -56,15 +58,15 @@ def corner(
     scanned = _scanned(modes.decays)
     if passes == "high":
         scanned = scanned[::-1]
-    edge = scanned[0] / 1e9 if passes == "low" else scanned[0] * 1e9
-    level = line.gain(edge) / np.sqrt(2.0)
-    below = line.gain(scanned) < level
+    gains = line.gain(scanned)
+    level = line.gain(0.0 * scanned[0] if passes == "low" else scanned[0] / NOTHING) / np.sqrt(2.0)
+    below = gains < level
     first = below.argmax(axis=0)
     case = np.flatnonzero(below.any(axis=0))
     found = np.full(len(level), np.inf if passes == "low" else 0.0)
     inside, outside = scanned[np.maximum(first[case] - 1, 0), case], scanned[first[case], case]
     found[case] = line.take(case).falling(level[case], inside, outside)
-    return np.where(level > 0.0, found, np.nan)
+    return np.where(level > NOTHING * gains.max(axis=0), found, np.nan)
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

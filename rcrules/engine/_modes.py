@@ -30,7 +30,7 @@ class Modes:
     root: Array
     """Y of the elimination: Yᵀ Y is the inverse of the conductance matrix. [Ω^½], (n, node, case)"""
     stores: Array
-    """U Y A sqrt(c), A the incidence of the columns: a row's squared length is its time constant. [s^½], (n, column, case)"""
+    """U Y A sqrt(c), A the incidence of the columns; row length² = time constant. [s^½], (n, column, case)"""
     vectors: Array
     """U Y: node voltages of each mode, normed to the conductances. [Ω^½], (n, node, case)"""
     decays: Array
@@ -168,7 +168,7 @@ def _rows(columns: Sequence[Column], sizes: Array, root: Array) -> Array:
 
 
 def _instant(shape: Shape, columns: Sequence[Column], sizes: Array) -> Flags | None:
-    """Which time constants, the slowest first, are exactly zero, by which capacitors are there. (n, case); None = none"""
+    """Which time constants, slowest first, are exactly zero, by which capacitors are there. (n, case); None = none"""
     present = sizes > 0.0
     if present.all():
         count = len(floating_groups(shape.free, columns))

@@ -73,6 +73,6 @@ def _step(rising: ExponentialSum, t: Array, value: Array, slope: Array) -> Array
     """Next time by Newton's rule; in exp(-t) of the slowest mode, in which the tail is a straight line."""
     with np.errstate(divide="ignore", invalid="ignore", over="ignore"):
         if not len(rising.amps):
-            return t - value / slope
+            return np.asarray(t - value / slope)
         rate = rising.rates[0]
-        return t - np.log1p(rate * value / slope) / rate
+        return np.asarray(t - np.log1p(rate * value / slope) / rate)

@@ -5,6 +5,7 @@ from itertools import pairwise
 
 import numpy as np
 
+from rcrules.engine._energy import squared
 from rcrules.engine._exponential import ExponentialSum
 from rcrules.engine._shape import Array
 from rcrules.engine._zeros import zeros
@@ -77,7 +78,7 @@ class Signal:
             todo = np.flatnonzero((result < 0.0) & (length > 0.0))
             last = _last(found.take(todo).merged(), low[todo], high[todo], length[todo])
             result[todo] = np.where(last >= 0.0, start[todo] + last, -1.0)
-        return np.maximum(result, 0.0)
+        return np.asarray(np.maximum(result, 0.0))
 
     def extremes(self) -> tuple[Array, Array]:
         """Least and greatest value over t >= 0, limits included. [V], (case,) each"""
@@ -99,6 +100,13 @@ class Signal:
         total = np.zeros(self.starts.shape[1])
         for found, length in zip(self.sums, self.lengths, strict=True):
             total = total + _time_above(found.merged(), length)
+        return total
+
+    def energy(self) -> Array:
+        """Integral of f² over t >= 0. [V² s], (case,); inf where f does not end at 0"""
+        total = np.zeros(self.starts.shape[1])
+        for found, length in zip(self.sums, self.lengths, strict=True):
+            total = total + squared(found, length)
         return total
 
     def _just_after(self, values: tuple[Array, ...]) -> Array:

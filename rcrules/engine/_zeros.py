@@ -1,8 +1,8 @@
 """All zeros of sums of exponentials on an interval that starts at 0.
 
 The sign changes of the partial sums of the amplitudes, in order of rising rate, bound the number of zeros (Laguerre's
-rule). Where that leaves at most one, a bracket and a bracketed Newton iteration find it; else the interval is split until
-bounds exclude a zero or the slope keeps its sign.
+rule). Where that leaves at most one, a bracket and a bracketed Newton iteration find it; else the interval is split
+until bounds exclude a zero or the slope keeps its sign.
 """
 
 import numpy as np
