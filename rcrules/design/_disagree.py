@@ -15,6 +15,8 @@ _SHOWN: Final = 12
 _FOLDED: Final = str.maketrans({"\u00b5": "u", "\u03bc": "u", "\u2126": "r", "\u03c9": "r", "\u043a": "k", ",": "."})
 """Micro and ohm signs (lower case) and the Cyrillic letter for kilo, as Latin letters; the decimal comma as a point."""
 _SPLIT: Final = re.compile(r"[\s/;()_|]+|-(?=\D|$)")
+_APART: Final = re.compile(r"((?<![^\W_])[\d.,]*\d)\s+(?=[^\W\d_]{1,4}\b)")
+"""A number with a blank before its unit."""
 _LETTER_AS_POINT: Final = re.compile(r"^(\d+)([a-z])(\d+)$")
 _NUMBER: Final = re.compile(r"^(\d*\.?\d+)([a-z]?)(?:hms?|hm|f|r|h)?$")
 
@@ -74,7 +76,7 @@ def _contradict(first: str, second: str) -> bool:
 
 
 def _words(text: str) -> frozenset[str]:
-    glued = re.sub(r"(?<=\d)\s+(?=[^\W\d_]+\b)", "", text.lower().replace(", ", " "))
+    glued = _APART.sub(r"\1", text.lower().replace(", ", " ; "))
     words = (_folded(word) for word in _SPLIT.split(glued.translate(_FOLDED)))
     return frozenset(word for word in words if word)
 

@@ -8,6 +8,7 @@ from typing import Final
 from rcrules.readers._columns import (
     DESCRIPTION,
     FOOTPRINT,
+    PIN_LIST_KEYS,
     QUANTITY,
     REFERENCE,
     SYMBOL,
@@ -18,8 +19,9 @@ from rcrules.readers._columns import (
     plain,
 )
 from rcrules.readers._references import looks_like_references
-from rcrules.readers._table import Row
+from rcrules.readers._table import Row, rejoined
 
+_SHOWN: Final = 8
 _VALUE_LIKE: Final = re.compile(r"[.,]?\d|[RCL]\d")
 
 
@@ -59,6 +61,7 @@ def _table(
     header: Row, rows: Sequence[Row], columns: Mapping[str, str], remarks: tuple[tuple[int, str], ...] = ()
 ) -> Table:
     names = header.cells
+    rows, overlong = _fitted_rows(rows, len(names))
     reference = _reference(names, rows, columns)
     taken = frozenset({reference})
 
@@ -77,8 +80,28 @@ def _table(
         description=pick("description", DESCRIPTION),
         symbol=pick("symbol", SYMBOL),
         named=_named(names, columns),
-        remarks=(*remarks, *_header_remarks(header, columns)),
+        remarks=(*remarks, *_header_remarks(header, columns), *overlong),
     )
+
+
+def _fitted_rows(rows: Sequence[Row], width: int) -> tuple[list[Row], list[tuple[int, str]]]:
+    """The rows with decimal commas rejoined where a row is longer than the header, and a remark on such rows."""
+    long = [row for row in rows if any(row.cells[width:])]
+    if not long:
+        return list(rows), []
+    mended = {row.line: rejoined(row, width) for row in long}
+    still = [line for line, row in mended.items() if any(row.cells[width:])]
+    joined = [row.line for row in long if len(mended[row.line].cells) < len(row.cells)]
+    said = f"{len(long)} rows hold more cells than the header, for commas in cells that are not quoted"
+    if joined:
+        said += f"; numbers cut in two are put together again in line {_listed(joined)}"
+    if still:
+        said += f"; cells may stand in the wrong column in line {_listed(still)}"
+    return [mended.get(row.line, row) for row in rows], [(long[0].line, said)]
+
+
+def _listed(lines: Sequence[int]) -> str:
+    return ", ".join(map(str, lines[:_SHOWN])) + (f" and {len(lines) - _SHOWN} more" if len(lines) > _SHOWN else "")
 
 
 def _reference(names: Sequence[str], rows: Sequence[Row], columns: Mapping[str, str]) -> int:
@@ -111,7 +134,7 @@ def _header_remarks(header: Row, columns: Mapping[str, str]) -> list[tuple[int, 
             remarks.append((header.line, f"two columns are headed {name!r}; the first is taken, both are kept"))
         seen.add(name)
     for key, wanted in columns.items():
-        if find_named(header.cells, columns, key) is None:
+        if key not in PIN_LIST_KEYS and find_named(header.cells, columns, key) is None:
             remarks.append((header.line, f"[columns] {key} = {wanted!r} is the header of no column here"))
     return remarks
 

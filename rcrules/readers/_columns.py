@@ -62,6 +62,8 @@ JOINED: Final = (
     *("ref pin", "part pin", "refdes pin", "component pin", "reference pin", "pin", "pins"),
     *("connection", "connections", "node", "nodes", "terminal", "terminals", "members"),
 )
+PIN_LIST_KEYS: Final = frozenset({"net", "pin", "pin-name", "pin-type"})
+"""Canonical names that only a pin list has."""
 _BOM_NAMES: Final = frozenset({*REFERENCE, *VALUE, *QUANTITY, *FOOTPRINT, *DESCRIPTION, *SYMBOL}) | OTHERS
 _LONGEST: Final = 60
 """Characters of the longest cell that may be a header."""

@@ -13,6 +13,8 @@ DELIMITERS: Final = (",", ";", "\t", "|")
 MAX_COLUMNS: Final = 1024
 MAX_CELL: Final = 131_072
 """Characters of the longest cell."""
+_WHOLE: Final = re.compile(r"(?<![\w.,])\d{1,3}$")
+_FRACTION: Final = re.compile(r"\d+ ?[^\W\d_]")
 _SAMPLE: Final = 400
 """Rows by which the delimiter is chosen."""
 
@@ -25,6 +27,7 @@ class Row:
     cells: tuple[str, ...]
     columns: tuple[int, ...]
     """Column of the file at which each cell starts, from 1."""
+    delimiter: str
 
     def cell(self, index: int | None) -> str:
         """Text of a cell, '' where the row is too short or no index is given."""
@@ -49,6 +52,20 @@ def rows(source: Source, text: str, is_header: Callable[[Sequence[str]], bool]) 
             if best is None or score > best[0]:
                 best = score, delimiter
     return _split(source, text, best[1] if best else ",", None)
+
+
+def rejoined(row: Row, width: int) -> Row:
+    """The row with decimal commas put back that cut a number in two, ``4`` and ``7uF``, as far as it is too long."""
+    cells, columns = list(row.cells), list(row.columns)
+    index = 0
+    while row.delimiter == "," and len(cells) > width and index + 1 < len(cells):
+        adjacent = columns[index + 1] == columns[index] + len(cells[index]) + 1
+        if adjacent and _WHOLE.search(cells[index]) and _FRACTION.match(cells[index + 1]):
+            cells[index : index + 2] = [f"{cells[index]},{cells[index + 1]}"]
+            del columns[index + 1]
+        else:
+            index += 1
+    return Row(line=row.line, cells=tuple(cells), columns=tuple(columns), delimiter=row.delimiter)
 
 
 def _score(sample: Sequence[Row], is_header: Callable[[Sequence[str]], bool]) -> tuple[bool, int, int]:
@@ -82,7 +99,7 @@ def _split(source: Source, text: str, delimiter: str, limit: int | None) -> tupl
         if end == delimiter:
             continue
         if any(cells):
-            found.append(Row(line=first_line, cells=tuple(cells), columns=tuple(columns)))
+            found.append(Row(line=first_line, cells=tuple(cells), columns=tuple(columns), delimiter=delimiter))
         cells, columns = [], []
         line += 1
         first_line, start = line, at

@@ -69,7 +69,14 @@ def test_values_that_contradict_are_told_with_both_places() -> None:
 
 
 def test_values_that_say_the_same_in_other_words_do_not_contradict() -> None:
-    same = [("4k7", "4.7K"), ("100n", "100 nF 16V"), ("10R", "10 Ohm"), ("0603, 1uF, 10V", "1µF"), ("2,2k", "2k2")]
+    same = [
+        ("4k7", "4.7K"),
+        ("100n", "100 nF 16V"),
+        ("10R", "10 Ohm"),
+        ("0603, 1uF, 10V", "1µF"),
+        ("2,2k", "2k2"),
+        ("ST1, SD 4", "ST1"),
+    ]
     for one, other in same:
         netlist = f"<export><components><comp ref='R1'><value>{one}</value></comp></components></export>"
         made = built(f'Ref,Value\nR1,"{other}"\n', netlist)

@@ -236,10 +236,20 @@ def test_the_projects_column_names_come_first() -> None:
 
 
 def test_a_column_name_of_the_project_that_is_no_header_is_said() -> None:
-    export = read("Ref,Value\nR1,10k\n", value="Wert")
+    export = read("Ref,Value\nR1,10k\n", value="Wert", net="Netz")
     assert values(export) == {"R1": "10k"}
     assert export.remarks[0].text == "[columns] value = 'Wert' is the header of no column here"
 
 
 def test_a_header_alone_is_a_bom_without_parts() -> None:
     assert read("Reference,Value\n\n,\n").parts == ()
+
+
+def test_a_decimal_comma_that_cuts_a_value_in_two_is_put_back_and_said() -> None:
+    export = read("Ref,Value,Desc,Package\nR1,10k,,0402\nC2,4,7uF,CAP TANT 4,7uF 6,3V,1206\nU1,QX7301,A,SOT23,x\n")
+    assert values(export) == {"R1": "10k", "C2": "4,7uF", "U1": "QX7301"}
+    assert (export.parts[1].description, export.parts[1].footprint) == ("CAP TANT 4,7uF 6,3V", "1206")
+    assert export.remarks[0].text == (
+        "2 rows hold more cells than the header, for commas in cells that are not quoted; numbers cut in two are put "
+        "together again in line 3; cells may stand in the wrong column in line 4"
+    )
