@@ -2,7 +2,8 @@
 
 from rcrules.parts._kinds import kind_of
 from rcrules.parts._model import Known, RatedPart, Share, Unknown
-from rcrules.parts._rate import at_bias, rate
+from rcrules.parts._rate import rate
+from rcrules.parts._spread import at_bias
 from rcrules.parts._texts import ValueText, read_value
 
 __all__ = ["Known", "RatedPart", "Share", "Unknown", "ValueText", "at_bias", "kind_of", "rate", "read_value"]

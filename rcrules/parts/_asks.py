@@ -6,21 +6,24 @@ from typing import Final
 
 from rcrules.design import Part
 
-_MOST: Final = 8
-"""References in one table name; beyond it the line names the first part only."""
+_MOST: Final = 12
+"""References in one table name; beyond it the line gives the default of the kind."""
+_KINDS: Final = {"R": "resistor", "C": "capacitor"}
 
 
 def asks(parts: Iterable[Part]) -> dict[str, str]:
-    """Reference -> head of the project line, ``[part."C7, C8"]``: parts with the same texts share a line."""
+    """Reference -> head of the project line; parts written alike share ``[part."C7, C8"]``, many share the default."""
     groups: dict[tuple[object, ...], list[str]] = defaultdict(list)
     for part in parts:
         groups[_written(part)].append(part.ref)
-    return {ref: _head(ref, refs) for refs in groups.values() for ref in refs}
+    return {ref: head for refs in groups.values() for head in [_head(refs)] for ref in refs}
 
 
-def _head(ref: str, refs: list[str]) -> str:
-    names = ", ".join(refs) if len(refs) <= _MOST else ref
-    return f'[part."{names}"]'
+def _head(refs: list[str]) -> str:
+    kind = _KINDS.get(refs[0][:1].upper())
+    if len(refs) > _MOST and kind is not None:
+        return f"[defaults.{kind}]"
+    return f'[part."{", ".join(refs)}"]'
 
 
 def _written(part: Part) -> tuple[object, ...]:

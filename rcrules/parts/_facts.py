@@ -43,14 +43,17 @@ class Facts:
     """Rating fields, of the BOM first."""
     values: tuple[Source, ...]
     """Value texts, of the BOM first."""
-    descriptions: tuple[Source, ...]
+    valued: tuple[Source, ...]
+    """The texts that may give the value: value texts and descriptions."""
+    sources: tuple[Source, ...]
+    """All texts in order of precedence."""
     defaults: tuple[tuple[str, PartFacts], ...]
     """``project [defaults.capacitor]``."""
 
     @property
-    def sources(self) -> tuple[Source, ...]:
-        """All texts in order of precedence."""
-        return (*self.fields, *self.values, *self.descriptions)
+    def tables(self) -> tuple[tuple[str, PartFacts], ...]:
+        """All tables of the project file in order of precedence."""
+        return (*self.project, *self.defaults)
 
 
 def tables_for(part: Part, project: Project) -> tuple[tuple[str, PartFacts], ...]:
@@ -69,7 +72,8 @@ def gather(part: Part, kind: ValueKind, tables: Sequence[tuple[str, PartFacts]],
         project=tuple(tables),
         fields=fields,
         values=values,
-        descriptions=believed,
+        valued=(*values, *believed),
+        sources=(*fields, *values, *believed),
         defaults=((f"project [defaults.{kind}]", defaults),) if defaults is not None else (),
     )
 
@@ -114,9 +118,11 @@ def tables_say(tables: Iterable[tuple[str, PartFacts]], attribute: str) -> Itera
 
 def disagreements(name: str, said: Sequence[Said[T]], unit: str) -> tuple[str, ...]:
     """The facts that lost and differ from the winner, in words."""
-    lost = [other for other in said[1:] if _told(other.fact, unit) != _told(said[0].fact, unit)]
-    words = (f"{name} {_told(item.fact, unit)} ({item.origin})" for item in lost)
-    return tuple(f"{text} against {_told(said[0].fact, unit)} ({said[0].origin})" for text in dict.fromkeys(words))
+    if len(said) < 2:
+        return ()
+    won = _told(said[0].fact, unit)
+    lost = {_told(item.fact, unit): item.origin for item in reversed(said) if item.fact != said[0].fact}
+    return tuple(f"{name} {text} ({lost[text]}) against {won} ({said[0].origin})" for text in lost if text != won)
 
 
 def _told(fact: object, unit: str) -> str:

@@ -3,6 +3,7 @@
 import re
 import unicodedata
 from collections.abc import Iterator
+from dataclasses import dataclass
 from functools import lru_cache
 from itertools import pairwise, zip_longest
 from typing import Final, Literal
@@ -26,21 +27,46 @@ _LEADING: Final = 5
 """Words at the start of a description that may name the part."""
 
 
+@dataclass(frozen=True, slots=True, kw_only=True)
+class _Written:
+    """What a part has in common with all parts written alike."""
+
+    letters: str
+    """Of the reference, in capitals."""
+    values: tuple[str, ...]
+    symbol: str
+    footprint: str
+    description: str
+    pins: int
+    """Pins with different numbers."""
+
+
 def kind_of(part: Part) -> tuple[str, str]:
     """(kind, why): one of vocabulary.PART_KINDS, and the evidence in words."""
-    letters = _prefix(part.ref)
-    usual = PREFIXES.get(letters)
-    if usual in _VALUED and letters in ("R", "C"):
-        return _valued(part, letters, usual)
-    if usual is None:
-        return _unusual(part, letters)
-    return _usual(part, letters, usual)
+    return _kind(
+        _Written(
+            letters=_prefix(part.ref),
+            values=tuple(fact.text for fact in part.values),
+            symbol=part.symbol,
+            footprint=part.footprint,
+            description=part.description,
+            pins=len({pin.number for pin in part.pins}),
+        )
+    )
 
 
-def _usual(part: Part, letters: str, usual: str) -> tuple[str, str]:
+@lru_cache(maxsize=16384)
+def _kind(part: _Written) -> tuple[str, str]:
+    usual = PREFIXES.get(part.letters)
+    if usual in _VALUED and part.letters in ("R", "C"):
+        return _valued(part, usual)
+    return _unusual(part) if usual is None else _usual(part, usual)
+
+
+def _usual(part: _Written, usual: str) -> tuple[str, str]:
     """References whose letters name a kind: it stands unless the part's own words name one that shares the letters."""
-    why, pins = f"reference {letters}", len(part.pins)
-    if letters == "D" and pins > _MANY_PINS and not _names(part, "diode"):
+    why, pins = f"reference {part.letters}", part.pins
+    if part.letters == "D" and pins > _MANY_PINS and not _names(part, "diode"):
         return "ic", f"{why} with {pins} pins"
     if usual == "thermistor" and _names(part, "fuse"):
         return "fuse", f"called a resettable fuse, {why}"
@@ -60,10 +86,10 @@ def _usual(part: Part, letters: str, usual: str) -> tuple[str, str]:
     return usual, why
 
 
-def _valued(part: Part, letters: str, usual: str) -> tuple[str, str]:
+def _valued(part: _Written, usual: str) -> tuple[str, str]:
     """R and C: the letters stand unless symbol or value name another kind."""
-    why = f"reference {letters}"
-    reads = any(read_value(fact.text, _as(usual)).value is not None for fact in part.values)
+    why = f"reference {part.letters}"
+    reads = any(read_value(text, _as(usual)).value is not None for text in part.values)
     array = _array(part, usual, reads=reads)
     if array:
         return f"{usual}-array", f"{array}, {why}"
@@ -74,31 +100,30 @@ def _valued(part: Part, letters: str, usual: str) -> tuple[str, str]:
         kind = _kind_of_words(words, telling)
         if kind is not None:
             return kind, f"{place}, {why}"
-    if usual == "resistor" and any(_IMPEDANCE.search(fact.text) for fact in part.values):
+    if usual == "resistor" and any(_IMPEDANCE.search(text) for text in part.values):
         return "ferrite", f"value with impedance at 100 MHz, {why}"
     return usual, why
 
 
-def _array(part: Part, usual: str, *, reads: bool) -> str:
+def _array(part: _Written, usual: str, *, reads: bool) -> str:
     """Why several elements are in one body, '' when they are not."""
-    texts = (part.symbol.rpartition(":")[2], part.footprint, *(fact.text for fact in part.values))
+    texts = (part.symbol.rpartition(":")[2], part.footprint, *part.values)
     if any(_words(text) & ARRAY_WORDS for text in texts[:1] + texts[2:]) or any(map(_FOR_ARRAYS.search, texts)):
         return "named an array"
-    numbers = len({pin.number for pin in part.pins})
-    if numbers > 4 or (numbers == 4 and usual == "resistor" and reads and not _shunt(part)):
-        return f"{numbers} pins"
+    if part.pins > 4 or (part.pins == 4 and usual == "resistor" and reads and not _shunt(part)):
+        return f"{part.pins} pins"
     return ""
 
 
-def _shunt(part: Part) -> bool:
+def _shunt(part: _Written) -> bool:
     """A four-terminal current shunt: below 1 Ω."""
-    values = [read_value(fact.text, "resistor").value for fact in part.values]
+    values = [read_value(text, "resistor").value for text in part.values]
     return any(value is not None and value < 1 for value in values)
 
 
-def _unusual(part: Part, letters: str) -> tuple[str, str]:
+def _unusual(part: _Written) -> tuple[str, str]:
     """References whose letters say nothing: the words decide, then the value, then the number of pins."""
-    many = len(part.pins) > _MANY_PINS
+    many = part.pins > _MANY_PINS
     for place, words in _evidence(part):
         general = place == "description" or place.startswith("library")
         untold = _PLAIN if place == "footprint" else frozenset()
@@ -109,10 +134,10 @@ def _unusual(part: Part, letters: str) -> tuple[str, str]:
         if kind is not None:
             return kind, place
     for kind in _VALUED:
-        if letters.startswith(kind[0].upper()) and any(read_value(f.text, _as(kind)).value for f in part.values):
-            return kind, f"value, reference {letters}"
+        if part.letters.startswith(kind[0].upper()) and any(read_value(text, _as(kind)).value for text in part.values):
+            return kind, f"value, reference {part.letters}"
     if many:
-        return "ic", f"{len(part.pins)} pins"
+        return "ic", f"{part.pins} pins"
     return "other", "nothing tells its kind"
 
 
@@ -120,19 +145,20 @@ def _as(kind: str) -> Literal["resistor", "capacitor"]:
     return "resistor" if kind == "resistor" else "capacitor"
 
 
-def _names(part: Part, kind: str) -> bool:
+def _names(part: _Written, kind: str) -> bool:
     return any(words & WORDS[kind] for _, words in _evidence(part))
 
 
-def _evidence(part: Part) -> Iterator[tuple[str, frozenset[str]]]:
+def _evidence(part: _Written) -> Iterator[tuple[str, frozenset[str]]]:
     """Words of each text about the part, the most telling first."""
     library, _, symbol = part.symbol.rpartition(":")
     yield f"symbol {symbol}", _words(symbol)
-    for fact in part.values:
-        yield f"value '{fact.text[:40]}'", _words(fact.text)
+    for text in part.values:
+        yield f"value '{text[:40]}'", _words(text)
     yield "footprint", _words(part.footprint.rpartition(":")[2])
     yield "description", frozenset(_listed(part.description)[:_LEADING])
-    yield f"library {library}", _words(library) - {"R", "C", "L"}
+    for name in (library, part.footprint.rpartition(":")[0]):
+        yield f"library {name}", _words(name) - {"R", "C", "L"}
 
 
 def _kind_of_words(words: frozenset[str], allowed: frozenset[str]) -> str | None:

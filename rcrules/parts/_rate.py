@@ -2,20 +2,20 @@
 
 import re
 from collections.abc import Iterator, Mapping, Sequence
-from dataclasses import replace
+from dataclasses import dataclass, replace
+from functools import lru_cache
 from itertools import chain
 from typing import Final
 
 from rcrules.design import Design, Part
-from rcrules.errors import Place
 from rcrules.parts._asks import asks
-from rcrules.parts._dielectrics import class_two, code_of
+from rcrules.parts._dielectrics import ELECTROLYTIC, code_of
 from rcrules.parts._facts import Facts, Said, disagreements, gather, tables_for, tables_say, texts_say
 from rcrules.parts._kinds import kind_of
-from rcrules.parts._model import Known, RatedPart, Share, Unknown
-from rcrules.parts._shares import age, bias, capacitor_drift, curve_share, drift, is_electrolytic, resistor_drift
-from rcrules.parts._shares import tolerance as tolerance_share
+from rcrules.parts._model import Known, RatedPart, Unknown
+from rcrules.parts._shares import Conditions, conditions
 from rcrules.parts._spelling import SIZES
+from rcrules.parts._spread import Written, spread
 from rcrules.parts._texts import ValueKind
 from rcrules.project import PartFacts, Project
 from rcrules.quantities import Spread
@@ -29,8 +29,23 @@ _READ: Final[dict[str, ValueKind]] = {
     "capacitor-array": "capacitor",
 }
 """Kinds with a value -> how their texts are read."""
-_UNITS: Final = {"resistor": "Ω", "capacitor": "F"}
+_UNITS: Final = {"value": "", "rated_voltage": "V", "rated_power": "W"}
 _NOT_GIVEN: Final = Unknown(why="not given")
+_NO_VALUE: Final = Unknown(why="not a resistor or capacitor")
+
+
+_Named = Mapping[str, Sequence[Said[object]]]
+"""Fact name -> every source that gives it, the strongest first."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class _Told:
+    """What a part is, and whether it is there."""
+
+    kind: str
+    why: str
+    fitted: bool
+    fitted_why: str
 
 
 def rate(design: Design, project: Project) -> Mapping[str, RatedPart]:
@@ -39,28 +54,27 @@ def rate(design: Design, project: Project) -> Mapping[str, RatedPart]:
     Precedence: project part, BOM field, netlist field, value text, description, project default, and last an
     assumption, which is marked as such and carries the project line that would replace it.
     """
-    asked = asks(design.parts.values())
-    return {ref: _rated(part, project, asked[ref]) for ref, part in design.parts.items()}
+    asked, around = asks(design.parts.values()), conditions(project)
+    return {ref: _rated(part, project, around, asked[ref]) for ref, part in design.parts.items()}
 
 
-def _rated(part: Part, project: Project, ask: str) -> RatedPart:
-    tables = tables_for(part, project)
+def _rated(part: Part, project: Project, around: Conditions, ask: str) -> RatedPart:
+    tables = tables_for(part, project) if project.parts else ()
     kind, why = next(((table.kind, origin) for origin, table in tables if table.kind is not None), kind_of(part))
     fitted, fitted_why = _fitted(part, tables)
     reads = _READ.get(kind)
-    if reads is None:
-        text = next((fact.text for fact in part.values), "")
-        unknown = Unknown(why="not a resistor or capacitor")
-        return RatedPart(
-            part=part, kind=kind, kind_why=why, text=text, value=unknown, fitted=fitted, fitted_why=fitted_why
-        )
-    facts = gather(part, reads, tables, project)
-    marked = next((source.read for source in facts.values if not source.read.fitted), None)
-    if marked is not None and fitted and not any(table.fitted for _, table in tables):
-        fitted, fitted_why = False, marked.fitted_why
-    rated = _with_value(part, kind, why, facts, _UNITS[reads])
-    rated = replace(rated, fitted=fitted, fitted_why=fitted_why)
-    return replace(rated, shares=_shares(rated, reads, facts, project, ask))
+    if reads is not None:
+        facts = gather(part, reads, tables, project)
+        if fitted and not any(table.fitted for _, table in tables):
+            marks = (source.read.fitted_why for source in facts.values if not source.read.fitted)
+            fitted_why = next(marks, "") or fitted_why
+            fitted = all(source.read.fitted for source in facts.values)
+        told = _Told(kind=kind, why=why, fitted=fitted, fitted_why=fitted_why)
+        return _valued(part, told, reads, facts, around, ask)
+    text = next((fact.text for fact in part.values), "")
+    return RatedPart(
+        part=part, kind=kind, kind_why=why, text=text, value=_NO_VALUE, fitted=fitted, fitted_why=fitted_why
+    )
 
 
 def _fitted(part: Part, tables: Sequence[tuple[str, PartFacts]]) -> tuple[bool, str]:
@@ -68,66 +82,102 @@ def _fitted(part: Part, tables: Sequence[tuple[str, PartFacts]]) -> tuple[bool, 
     return said if said is not None else (part.fitted, part.fitted_why)
 
 
-def _with_value(part: Part, kind: str, why: str, facts: Facts, unit: str) -> RatedPart:
-    """The part with value and ratings, their origins, and what lost."""
-    values = [*_spreads(facts.project, "value"), *texts_say((*facts.values, *facts.descriptions), "value")]
-    winner = next((s.text for s in (*facts.values, *facts.descriptions) if s.read.value is not None), None)
-    text = winner if winner is not None else next((source.text for source in facts.values), "")
-    voltages = [*_spreads(facts.project, "rated_voltage"), *texts_say(facts.sources, "rated_voltage")]
-    powers = [*_spreads(facts.project, "rated_power"), *texts_say(facts.sources, "rated_power")]
-    dielectrics = list(_dielectrics(facts))
-    shares = list(_tolerances(facts))
-    voltages += _spreads(facts.defaults, "rated_voltage")
-    powers += _spreads(facts.defaults, "rated_power")
-    found = {"value": values, "tolerance": shares, "rated_voltage": voltages, "rated_power": powers}
-    named: dict[str, Sequence[Said[object]]] = {**found, "dielectric": dielectrics}
-    units = {"value": unit, "rated_voltage": "V", "rated_power": "W"}
-    dielectric = dielectrics[0].fact if dielectrics else None
+def _valued(part: Part, told: _Told, reads: ValueKind, facts: Facts, around: Conditions, ask: str) -> RatedPart:
+    """A resistor or capacitor with value, ratings and spread, their origins, and what lost."""
+    named = _named(facts)
+    value = _known(named["value"]) or _unread(facts)
+    written = _written(part, reads, value, named, facts, ask)
     return RatedPart(
         part=part,
-        kind=kind,
-        kind_why=why,
-        text=text,
-        value=_known(values) or _unread(facts),
-        rated_voltage=_known(voltages) or _NOT_GIVEN,
-        rated_power=_known(powers) or _NOT_GIVEN,
-        dielectric=str(dielectric) if dielectric is not None else None,
-        bias_curve=next((table.bias_curve for _, table in facts.project if table.bias_curve), ()),
-        polarised=unit == "F" and (is_electrolytic(str(dielectric)) or _polar(part)),
-        size=_size(part, facts),
-        origins=_origins(named),
-        disagreements=tuple(chain(*(disagreements(_word(n), s, units.get(n, "1")) for n, s in named.items() if s))),
+        kind=told.kind,
+        kind_why=told.why,
+        text=_text(facts),
+        value=value,
+        shares=spread(written, around),
+        rated_voltage=_known(named["rated_voltage"]) or _NOT_GIVEN,
+        rated_power=_known(named["rated_power"]) or _NOT_GIVEN,
+        dielectric=written.dielectric,
+        bias_curve=written.curve,
+        polarised=written.polarised,
+        size=_size(part.footprint) or next((s.read.size for s in facts.sources if s.read.size), ""),
+        fitted=told.fitted,
+        fitted_why=told.fitted_why,
+        origins={name: (said[0].origin, said[0].place) for name, said in named.items() if said},
+        disagreements=_lost(named, "Ω" if reads == "resistor" else "F"),
     )
 
 
-def _word(name: str) -> str:
-    return name.replace("_", " ")
+def _written(part: Part, reads: ValueKind, value: Known | Unknown, named: _Named, facts: Facts, ask: str) -> Written:
+    """What the spread depends on."""
+    dielectric = next((str(said.fact) for said in named["dielectric"]), None)
+    curve, curve_from = next(((t.bias_curve, origin) for origin, t in facts.tables if t.bias_curve), ((), ""))
+    return Written(
+        kind=reads,
+        value=value.si if isinstance(value, Known) else 0.0,
+        tolerance=_pair(named["tolerance"]),
+        coefficient=_coefficient(facts, tables_only=reads == "capacitor"),
+        dielectric=dielectric,
+        polarised=reads == "capacitor" and (dielectric in ELECTROLYTIC or _polar(part)),
+        curve=curve,
+        curve_from=curve_from,
+        ask=ask,
+    )
 
 
-def _origins(named: Mapping[str, Sequence[Said[object]]]) -> dict[str, tuple[str, Place | None]]:
-    return {name: (said[0].origin, said[0].place) for name, said in named.items() if said}
+def _named(facts: Facts) -> _Named:
+    """Every fact by name, each with all its sources, the strongest first."""
+    return {
+        "value": [*_nominals(facts.project, "value"), *texts_say(facts.valued, "value")],
+        "tolerance": [
+            *tables_say(facts.project, "tolerance"),
+            *texts_say(facts.sources, "tolerance"),
+            *tables_say(facts.defaults, "tolerance"),
+        ],
+        "rated_voltage": _quantity(facts, "rated_voltage"),
+        "rated_power": _quantity(facts, "rated_power"),
+        "dielectric": list(_dielectrics(facts)),
+    }
 
 
-def _spreads(tables: Sequence[tuple[str, PartFacts]], attribute: str) -> list[Said[object]]:
+def _quantity(facts: Facts, attribute: str) -> list[Said[object]]:
+    texts = texts_say(facts.sources, attribute)
+    return [*_nominals(facts.project, attribute), *texts, *_nominals(facts.defaults, attribute)]
+
+
+def _nominals(tables: Sequence[tuple[str, PartFacts]], attribute: str) -> Iterator[Said[object]]:
     """Nominal of a quantity that the project file gives."""
-    said = tables_say(tables, attribute)
-    return [replace(item, fact=item.fact.nominal) for item in said if isinstance(item.fact, Spread)]
+    for item in tables_say(tables, attribute):
+        if isinstance(item.fact, Spread):
+            yield replace(item, fact=item.fact.nominal)
 
 
 def _dielectrics(facts: Facts) -> Iterator[Said[object]]:
-    """Letter codes first within each source; ``ceramic`` alone names no dielectric."""
+    """Letter codes in one spelling; ``ceramic`` alone names no dielectric."""
     for item in tables_say(facts.project, "dielectric"):
         yield replace(item, fact=code_of(str(item.fact)) or str(item.fact))
-    said = [item for item in texts_say(facts.sources, "dielectric") if item.fact != "ceramic"]
-    yield from said
+    yield from (item for item in texts_say(facts.sources, "dielectric") if item.fact != "ceramic")
     for item in tables_say(facts.defaults, "dielectric"):
         yield replace(item, fact=code_of(str(item.fact)) or str(item.fact))
 
 
-def _tolerances(facts: Facts) -> Iterator[Said[object]]:
-    yield from tables_say(facts.project, "tolerance")
-    yield from texts_say(facts.sources, "tolerance")
-    yield from tables_say(facts.defaults, "tolerance")
+def _coefficient(facts: Facts, *, tables_only: bool) -> tuple[float, str] | None:
+    """Temperature coefficient [1/K], both ways, and its origin."""
+    sources = () if tables_only else facts.sources
+    said = chain(tables_say(facts.project, "tcr"), texts_say(sources, "coefficient"), tables_say(facts.defaults, "tcr"))
+    for item in said:
+        if isinstance(item.fact, Spread):
+            return max(abs(item.fact.low), abs(item.fact.high)), item.origin
+        if isinstance(item.fact, float):
+            return item.fact, item.origin
+    return None
+
+
+def _pair(said: Sequence[Said[object]]) -> tuple[float, float, str] | None:
+    """Relative low and high of a tolerance, and its origin."""
+    if not said or not isinstance(said[0].fact, tuple):
+        return None
+    low, high = said[0].fact
+    return low, high, said[0].origin
 
 
 def _known(said: Sequence[Said[object]]) -> Known | None:
@@ -141,75 +191,29 @@ def _unread(facts: Facts) -> Unknown:
     return Unknown(why=next((source.read.why_unknown for source in facts.values), "no value text"))
 
 
+def _text(facts: Facts) -> str:
+    """The text that gave the value, else the first value text."""
+    winner = next((source.text for source in facts.valued if source.read.value is not None), None)
+    return winner if winner is not None else next((source.text for source in facts.values), "")
+
+
+def _lost(named: _Named, unit: str) -> tuple[str, ...]:
+    several = ((name, said) for name, said in named.items() if len(said) > 1)
+    words = (disagreements(name.replace("_", " "), said, _UNITS.get(name, "1") or unit) for name, said in several)
+    return tuple(chain(*words))
+
+
 def _polar(part: Part) -> bool:
-    names = {pin.name for pin in part.pins}
-    return bool(_POLAR.search(part.symbol)) or "+" in names or any(_POLAR.fullmatch(f.text) for f in part.values)
+    names = any(pin.name == "+" for pin in part.pins)
+    return names or _is_polar(part.symbol) or any(_POLAR.fullmatch(fact.text) for fact in part.values)
 
 
-def _size(part: Part, facts: Facts) -> str:
-    in_footprint = _SIZE.search(part.footprint)
-    if in_footprint is not None:
-        return in_footprint[1]
-    return next((source.read.size for source in facts.sources if source.read.size), "")
+@lru_cache(maxsize=4096)
+def _is_polar(symbol: str) -> bool:
+    return _POLAR.search(symbol) is not None
 
 
-def _shares(part: RatedPart, kind: ValueKind, facts: Facts, project: Project, ask: str) -> tuple[Share, ...]:
-    if not isinstance(part.value, Known) or part.value.si == 0:
-        return ()
-    said = next(_tolerances(facts), None)
-    given = said.fact if said is not None and isinstance(said.fact, tuple) else None
-    first = tolerance_share(kind, given, said.origin if said is not None else "", ask)
-    if kind == "resistor":
-        coefficient, origin = _coefficient(facts)
-        return first, resistor_drift(part.value.si, coefficient, origin, project, ask)
-    return (first, *_capacitor_shares(part, part.value.si, facts, project, ask))
-
-
-def _capacitor_shares(part: RatedPart, farads: float, facts: Facts, project: Project, ask: str) -> Iterator[Share]:
-    coefficient, origin = _coefficient(facts, project_only=True)
-    letters = part.dielectric or ""
-    if coefficient is not None:
-        yield drift(-coefficient, coefficient, f"tcr from {origin}", project, given=True, ask="")
-    else:
-        yield capacitor_drift(part.dielectric, project, ask, electrolytic=part.polarised)
-    unknown = part.dielectric is None and not part.polarised
-    if part.bias_curve or unknown or class_two(letters):
-        named = next((origin for origin, table in facts.project if table.bias_curve), "")
-        yield bias(farads, part.bias_curve, named, ask)
-    if unknown or class_two(letters):
-        yield age(part.dielectric, project, ask)
-
-
-def _coefficient(facts: Facts, *, project_only: bool = False) -> tuple[float | None, str]:
-    """Temperature coefficient [1/K], both ways, and its origin."""
-    for origin, table in facts.project:
-        if table.tcr is not None:
-            return max(abs(table.tcr.low), abs(table.tcr.high)), origin
-    for item in () if project_only else texts_say(facts.sources, "coefficient"):
-        if isinstance(item.fact, float):
-            return item.fact, item.origin
-    for origin, table in facts.defaults:
-        if table.tcr is not None:
-            return max(abs(table.tcr.low), abs(table.tcr.high)), origin
-    return None, ""
-
-
-def at_bias(part: RatedPart, volts: float) -> RatedPart:
-    """The part with its bias share narrowed to what happens between 0 V and ``volts`` across it.
-
-    A given curve is taken from 0 V to ``volts``. The assumed envelope holds at rated voltage and is scaled down in
-    proportion below it where the rating is known.
-    """
-    return replace(part, shares=tuple(_narrowed(part, share, abs(volts)) for share in part.shares))
-
-
-def _narrowed(part: RatedPart, share: Share, volts: float) -> Share:
-    if share.name != "bias":
-        return share
-    if part.bias_curve:
-        named = share.origin.partition("bias curve from ")[2].partition(", 0 V")[0]
-        return curve_share(part.bias_curve, named, volts)
-    if not isinstance(part.rated_voltage, Known) or part.rated_voltage.si <= 0:
-        return share
-    ratio = min(1.0, volts / part.rated_voltage.si)
-    return replace(share, low=share.low * ratio, origin=f"{share.origin}, taken in proportion to the voltage")
+@lru_cache(maxsize=4096)
+def _size(footprint: str) -> str:
+    found = _SIZE.search(footprint)
+    return found[1] if found is not None else ""

@@ -1,8 +1,9 @@
 """What spreads a part's value: tolerance, temperature, bias, ageing; given or assumed, each with its origin."""
 
+from dataclasses import dataclass
 from typing import Final
 
-from rcrules.parts._dielectrics import ELECTROLYTIC, TYPICAL_TEMPERATURE, ageing, ageing_rate, class_one, class_two
+from rcrules.parts._dielectrics import TYPICAL_TEMPERATURE, ageing, ageing_rate, class_one, class_two
 from rcrules.parts._model import Share
 from rcrules.project import Project
 from rcrules.quantities import show
@@ -32,16 +33,34 @@ def tolerance(kind: str, given: tuple[float, float] | None, origin: str, ask: st
     return Share(name="tolerance", low=-share, high=share, given=False, origin=why, ask=f'{ask} tolerance = "…"')
 
 
-def temperature_range(project: Project) -> tuple[float, float, bool]:
-    """Lowest and highest temperature [°C], and whether the project file gives them."""
-    if project.temperature is None:
-        return *ASSUMED_TEMPERATURE, False
-    return project.temperature.low, project.temperature.high, True
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Conditions:
+    """What the project file says about the surroundings, or what is assumed."""
+
+    coldest: float
+    """[°C]"""
+    hottest: float
+    temperature_given: bool
+    life: float
+    """[s]"""
+    life_given: bool
 
 
-def drift(low: float, high: float, origin: str, project: Project, *, given: bool, ask: str) -> Share:
+def conditions(project: Project) -> Conditions:
+    """The conditions of a project; 0 °C to 70 °C and ten years where it gives none."""
+    temperature, life = project.temperature, project.life
+    return Conditions(
+        coldest=temperature.low if temperature is not None else ASSUMED_TEMPERATURE[0],
+        hottest=temperature.high if temperature is not None else ASSUMED_TEMPERATURE[1],
+        temperature_given=temperature is not None,
+        life=life.high if life is not None else _ASSUMED_LIFE,
+        life_given=life is not None,
+    )
+
+
+def drift(low: float, high: float, origin: str, around: Conditions, *, given: bool, ask: str) -> Share:
     """Temperature share from a coefficient between low and high [1/K]."""
-    coldest, hottest, known = temperature_range(project)
+    coldest, hottest, known = around.coldest, around.hottest, around.temperature_given
     corners = [slope * (end - ROOM) for slope in (low, high) for end in (coldest, hottest)]
     words = f"{origin} over {_celsius(coldest, hottest)}" + ("" if known else " (assumed range)")
     return Share(
@@ -54,23 +73,23 @@ def drift(low: float, high: float, origin: str, project: Project, *, given: bool
     )
 
 
-def resistor_drift(ohms: float, coefficient: float | None, origin: str, project: Project, ask: str) -> Share:
+def resistor_drift(ohms: float, coefficient: float | None, origin: str, around: Conditions, ask: str) -> Share:
     """Temperature share of a resistor; thick-film chips have 100 ppm/K from 10 Ω to 1 MΩ, more beside."""
     if coefficient is not None:
         words = f"{show(coefficient, '1/K')} from {origin}"
-        return drift(-coefficient, coefficient, words, project, given=True, ask="")
+        return drift(-coefficient, coefficient, words, around, given=True, ask="")
     usual = 400e-6 if ohms < 10 else 100e-6 if ohms <= 1e6 else 200e-6
-    return drift(-usual, usual, show(usual, "1/K"), project, given=False, ask=f'{ask} tcr = "…"')
+    return drift(-usual, usual, show(usual, "1/K"), around, given=False, ask=f'{ask} tcr = "…"')
 
 
-def capacitor_drift(dielectric: str | None, project: Project, ask: str, *, electrolytic: bool) -> Share:
+def capacitor_drift(dielectric: str | None, around: Conditions, ask: str, *, electrolytic: bool) -> Share:
     """Temperature share of a capacitor, by the rule of its letter code or the typical figure of its technology."""
     letters = dielectric or ""
     if class_one(letters) is not None:
         low, high = class_one(letters) or (0.0, 0.0)
-        return drift(low, high, f"{letters} letter code", project, given=True, ask="")
+        return drift(low, high, f"{letters} letter code", around, given=True, ask="")
     if class_two(letters) is not None:
-        return _letter_drift(letters, project)
+        return _letter_drift(letters, around)
     technology = dielectric if dielectric in TYPICAL_TEMPERATURE else "aluminium" if electrolytic else None
     if technology is not None:
         share = TYPICAL_TEMPERATURE[technology]
@@ -80,9 +99,9 @@ def capacitor_drift(dielectric: str | None, project: Project, ask: str, *, elect
     return Share(name="temperature", low=-0.15, high=0.15, given=False, origin=words, ask=f'{ask} dielectric = "…"')
 
 
-def _letter_drift(letters: str, project: Project) -> Share:
+def _letter_drift(letters: str, around: Conditions) -> Share:
     lowest, highest, low, high = class_two(letters) or (0.0, 0.0, 0.0, 0.0)
-    coldest, hottest, known = temperature_range(project)
+    coldest, hottest, known = around.coldest, around.hottest, around.temperature_given
     if lowest <= coldest and hottest <= highest:
         return Share(name="temperature", low=low, high=high, given=True, origin=f"{letters} letter code")
     words = f"assumed: {letters} promises nothing outside {_celsius(lowest, highest)}"
@@ -122,24 +141,18 @@ def _at(points: list[tuple[float, float]], volts: float) -> float:
     return first + (second - first) * (volts - low) / (high - low)
 
 
-def age(dielectric: str | None, project: Project, ask: str) -> Share:
+def age(dielectric: str | None, around: Conditions, ask: str) -> Share:
     """Ageing of a class 2 ceramic around the value marked for 1000 h, from soldering to the end of its life."""
     rate = ageing_rate(dielectric) if dielectric else 0.025
-    life = project.life.high if project.life is not None else _ASSUMED_LIFE
-    low, high = ageing(rate, life / 3600.0)
-    words = f"{show(rate, '%')} per decade, 1 h to {show(life, 's')}"
+    low, high = ageing(rate, around.life / 3600.0)
+    words = f"{show(rate, '%')} per decade, 1 h to {show(around.life, 's')}"
     if dielectric is None:
         origin, ask = f"assumed: no dielectric given, {words}", f'{ask} dielectric = "…"'
-    elif project.life is None:
+    elif not around.life_given:
         origin, ask = f"assumed: no life given, {dielectric} {words}", '[conditions] life = "…"'
     else:
         return Share(name="ageing", low=low, high=high, given=True, origin=f"{dielectric} {words}")
     return Share(name="ageing", low=low, high=high, given=False, origin=origin, ask=ask)
-
-
-def is_electrolytic(dielectric: str | None) -> bool:
-    """Whether a dielectric named by technology is a polarised one."""
-    return dielectric in ELECTROLYTIC
 
 
 def _celsius(low: float, high: float) -> str:

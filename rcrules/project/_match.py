@@ -1,8 +1,9 @@
 """Which table of the project file speaks about a net, pin or part.
 
 A table may name one thing, several (``C7, C8``), or many by a glob (``*``, ``?``, ``[…]``; upper and lower case
-differ). For each key the most specific table that has it wins: an exact name before any glob, a glob with more letters of its own before one with
-fewer, the later of two equals. So ``[net."AIN*"]`` may give the swing of all, and ``[net."AIN0"]`` one more key of one.
+differ). For each key the most specific table that has it wins: an exact name before any glob, a glob with more letters
+of its own before one with fewer, the later of two equals. So ``[net."AIN*"]`` may give the swing of all, and
+``[net."AIN0"]`` one more key of one.
 """
 
 import re
