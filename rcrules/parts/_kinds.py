@@ -45,7 +45,7 @@ def kind_of(part: Part) -> tuple[str, str]:
     """(kind, why): one of vocabulary.PART_KINDS, and the evidence in words."""
     return _kind(
         _Written(
-            letters=_prefix(part.ref),
+            letters=prefix(part.ref),
             values=tuple(fact.text for fact in part.values),
             symbol=part.symbol,
             footprint=part.footprint,
@@ -183,7 +183,7 @@ def _listed(text: str) -> tuple[str, ...]:
 
 
 @lru_cache(maxsize=65536)
-def _prefix(ref: str) -> str:
+def prefix(ref: str) -> str:
     """``C`` of ``C12``, ``RN`` of ``/sheet/RN3``, in capitals."""
     found = _LETTERS.match(ref.rpartition("/")[2])
     return found[0].upper() if found else ""

@@ -1,14 +1,14 @@
 """Rates every part of a design: kind, value, spread, ratings, each fact from its strongest source."""
 
 import re
-from collections.abc import Iterator, Mapping, Sequence
+from collections.abc import Hashable, Iterator, Mapping, Sequence
 from dataclasses import dataclass, replace
 from functools import lru_cache
 from itertools import chain
 from typing import Final
 
 from rcrules.design import Design, Part
-from rcrules.parts._asks import asks
+from rcrules.parts._alike import asks, moved, written
 from rcrules.parts._dielectrics import ELECTROLYTIC, code_of
 from rcrules.parts._facts import Facts, Said, disagreements, gather, tables_for, tables_say, texts_say
 from rcrules.parts._kinds import kind_of
@@ -34,6 +34,8 @@ _NOT_GIVEN: Final = Unknown(why="not given")
 _NO_VALUE: Final = Unknown(why="not a resistor or capacitor")
 
 
+Tables = Sequence[tuple[str, PartFacts]]
+"""Tables of the project file that name a part, with their origin in words."""
 _Named = Mapping[str, Sequence[Said[object]]]
 """Fact name -> every source that gives it, the strongest first."""
 
@@ -54,12 +56,21 @@ def rate(design: Design, project: Project) -> Mapping[str, RatedPart]:
     Precedence: project part, BOM field, netlist field, value text, description, project default, and last an
     assumption, which is marked as such and carries the project line that would replace it.
     """
-    asked, around = asks(design.parts.values()), conditions(project)
-    return {ref: _rated(part, project, around, asked[ref]) for ref, part in design.parts.items()}
+    parts = [(part, written(part)) for part in design.parts.values()]
+    asked, around = asks(parts), conditions(project)
+    known: dict[Hashable, RatedPart] = {}
+    rated = {}
+    for part, writing in parts:
+        tables = tables_for(part, project) if project.parts else ()
+        alike = writing, tuple(origin for origin, _ in tables)
+        model = known.get(alike)
+        if model is None:
+            known[alike] = model = _rated(part, tables, project, around, asked[writing])
+        rated[part.ref] = model if model.part is part else moved(model, part)
+    return rated
 
 
-def _rated(part: Part, project: Project, around: Conditions, ask: str) -> RatedPart:
-    tables = tables_for(part, project) if project.parts else ()
+def _rated(part: Part, tables: Tables, project: Project, around: Conditions, ask: str) -> RatedPart:
     kind, why = next(((table.kind, origin) for origin, table in tables if table.kind is not None), kind_of(part))
     fitted, fitted_why = _fitted(part, tables)
     reads = _READ.get(kind)
@@ -77,7 +88,7 @@ def _rated(part: Part, project: Project, around: Conditions, ask: str) -> RatedP
     )
 
 
-def _fitted(part: Part, tables: Sequence[tuple[str, PartFacts]]) -> tuple[bool, str]:
+def _fitted(part: Part, tables: Tables) -> tuple[bool, str]:
     said = next(((table.fitted, origin) for origin, table in tables if table.fitted is not None), None)
     return said if said is not None else (part.fitted, part.fitted_why)
 
@@ -86,19 +97,19 @@ def _valued(part: Part, told: _Told, reads: ValueKind, facts: Facts, around: Con
     """A resistor or capacitor with value, ratings and spread, their origins, and what lost."""
     named = _named(facts)
     value = _known(named["value"]) or _unread(facts)
-    written = _written(part, reads, value, named, facts, ask)
+    depends = _depends(part, reads, value, named, facts, ask)
     return RatedPart(
         part=part,
         kind=told.kind,
         kind_why=told.why,
         text=_text(facts),
         value=value,
-        shares=spread(written, around),
+        shares=spread(depends, around),
         rated_voltage=_known(named["rated_voltage"]) or _NOT_GIVEN,
         rated_power=_known(named["rated_power"]) or _NOT_GIVEN,
-        dielectric=written.dielectric,
-        bias_curve=written.curve,
-        polarised=written.polarised,
+        dielectric=depends.dielectric,
+        bias_curve=depends.curve,
+        polarised=depends.polarised,
         size=_size(part.footprint) or next((s.read.size for s in facts.sources if s.read.size), ""),
         fitted=told.fitted,
         fitted_why=told.fitted_why,
@@ -107,7 +118,7 @@ def _valued(part: Part, told: _Told, reads: ValueKind, facts: Facts, around: Con
     )
 
 
-def _written(part: Part, reads: ValueKind, value: Known | Unknown, named: _Named, facts: Facts, ask: str) -> Written:
+def _depends(part: Part, reads: ValueKind, value: Known | Unknown, named: _Named, facts: Facts, ask: str) -> Written:
     """What the spread depends on."""
     dielectric = next((str(said.fact) for said in named["dielectric"]), None)
     curve, curve_from = next(((t.bias_curve, origin) for origin, t in facts.tables if t.bias_curve), ((), ""))
@@ -144,7 +155,7 @@ def _quantity(facts: Facts, attribute: str) -> list[Said[object]]:
     return [*_nominals(facts.project, attribute), *texts, *_nominals(facts.defaults, attribute)]
 
 
-def _nominals(tables: Sequence[tuple[str, PartFacts]], attribute: str) -> Iterator[Said[object]]:
+def _nominals(tables: Tables, attribute: str) -> Iterator[Said[object]]:
     """Nominal of a quantity that the project file gives."""
     for item in tables_say(tables, attribute):
         if isinstance(item.fact, Spread):

@@ -7,15 +7,15 @@ PLACE = Place(file="board.xml", line=7)
 BOM = Place(file="bom.csv", line=3, column=4)
 
 
-def part(ref, value="", *, bom="", symbol="", footprint="", description="", pins=2, fitted=True, **fields):
+def part(ref, value="", *, bom="", symbol="", footprint="", description="", pins=2, fitted=True, place=PLACE, **fields):
     """A part; field names with a leading ``bom_`` come from the BOM, an underscore is a blank."""
     values = [Fact(text=bom, origin="BOM value", place=BOM)] if bom else []
-    values += [Fact(text=value, origin="netlist value", place=PLACE)] if value else []
+    values += [Fact(text=value, origin="netlist value", place=place)] if value else []
     facts = {}
     for name, text in fields.items():
         word = name.removeprefix("bom_").replace("_", " ")
-        origin, place = (f"BOM field '{word}'", BOM) if name.startswith("bom_") else (f"netlist field '{word}'", PLACE)
-        facts[word.lower()] = (*facts.get(word.lower(), ()), Fact(text=text, origin=origin, place=place))
+        origin, at = (f"BOM field '{word}'", BOM) if name.startswith("bom_") else (f"netlist field '{word}'", place)
+        facts[word.lower()] = (*facts.get(word.lower(), ()), Fact(text=text, origin=origin, place=at))
     if description:
         facts["description"] = (Fact(text=description, origin="netlist description", place=PLACE),)
     return Part(

@@ -153,6 +153,25 @@ def test_parts_written_alike_share_one_line():
     assert asks(found["C9"])["tolerance"] == '[part."C9"] tolerance = "…"'
 
 
+def test_many_parts_written_alike_share_the_default_of_their_kind():
+    found = rate(design(*[part(f"C{number}", "100n") for number in range(1, 14)]), Project())
+    assert asks(found["C13"])["tolerance"] == '[defaults.capacitor] tolerance = "…"'
+
+
+def test_parts_written_alike_keep_their_own_places():
+    first, second = part("C7", "10u 16V"), part("C8", "10u 16V", place=Place(file="board.xml", line=99))
+    found = rate(design(first, second), Project())
+    assert (found["C8"].part, found["C8"].value.place.line) == (second, 99)
+    assert found["C8"].origins["rated_voltage"] == ("netlist value", Place(file="board.xml", line=99))
+    assert (found["C7"].value.place.line, found["C7"].shares) == (7, found["C8"].shares)
+
+
+def test_a_project_table_of_one_part_leaves_its_twin_alone():
+    project = Project(parts={"C7": facts(tolerance=(-0.05, 0.05))})
+    found = rate(design(part("C7", "10u"), part("C8", "10u")), project)
+    assert [shares(found[ref])["tolerance"][2] for ref in ("C7", "C8")] == [True, False]
+
+
 def test_that_line_is_understood():
     project = Project(parts={"C7, C8": facts(tolerance=(-0.05, 0.05))})
     found = rate(design(part("C7", "10u"), part("C8", "10u"), part("C9", "22u")), project)
