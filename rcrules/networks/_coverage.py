@@ -82,5 +82,6 @@ def _lonely(draft: Draft, item: Branch, kinds: list[str]) -> str:
     if not others:
         return "one end is open"
     if item.kind == "resistor":
-        return f"pull to {kinds[0]}, no capacitor with it" if kinds else "no capacitor with it"
+        link = "in series with" if kinds == [_HELD["driven"]] else "pull to"
+        return f"{link} {kinds[0]}, no capacitor with it" if kinds else "no capacitor with it"
     return "no resistor with it"

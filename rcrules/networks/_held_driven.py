@@ -65,7 +65,13 @@ def _open_drain(scene: Scene, joint: str) -> Verdict | None:
 def _connector(scene: Scene, joint: str, verdicts: Verdicts) -> Verdict | None:
     """A connector drives its net, unless a contact, a bus, or only a pull and a capacitor say otherwise."""
     pins = scene.of_kind(joint, "connector")
-    if not pins or scene.contacts.get(joint) or _is_bus(scene, joint) or _asked(scene, joint):
+    if (
+        not pins
+        or scene.contacts.get(joint)
+        or scene.says(joint, say.NEVER)
+        or _is_bus(scene, joint)
+        or _asked(scene, joint)
+    ):
         return None
     capacitors = scene.far_ends(joint, "capacitor")
     sources = [far for _, far in scene.far_ends(joint, "resistor") if _feeds(scene, far, verdicts)]

@@ -17,6 +17,8 @@ from rcrules.networks._named import Facts
 from rcrules.parts import RatedPart
 
 Ends = TypeVar("Ends", Branch, Contact)
+_MOST_SWITCHED: Final = 8
+"""Pins on a switching node that its pin names do not tell; larger nets are rails."""
 _MAKERS: Final = frozenset(("ic", "other"))
 
 
@@ -110,18 +112,31 @@ def _switching(
     design: Design, parts: Mapping[str, RatedPart], claims: Mapping[str, Mapping[str, list[Pin]]]
 ) -> set[str]:
     """Nets between a power switch and an inductor, by pin name, or by an inductor, a diode and an active pin."""
-    return {name for name, net in design.nets.items() if _is_switching(net.pins, parts, claims.get(name, {}))}
+    grounds = {net for net in design.nets if _is_like_ground(net, claims.get(net, {}))}
+    found = ((name, net.pins, claims.get(name, {})) for name, net in design.nets.items())
+    return {name for name, pins, said in found if _is_switching(pins, parts, said, grounds)}
 
 
-def _is_switching(pins: tuple[Pin, ...], parts: Mapping[str, RatedPart], claims: Mapping[str, list[Pin]]) -> bool:
-    kinds = [parts[pin.ref].kind for pin in pins if pin.ref in parts and parts[pin.ref].fitted]
-    if "inductor" not in kinds and "transformer" not in kinds:
+def _is_switching(
+    pins: tuple[Pin, ...], parts: Mapping[str, RatedPart], said: Mapping[str, list[Pin]], grounds: set[str]
+) -> bool:
+    fitted = [parts[pin.ref] for pin in pins if pin.ref in parts and parts[pin.ref].fitted]
+    kinds = {part.kind for part in fitted}
+    if kinds.isdisjoint(("inductor", "transformer")):
         return False
-    if say.SWITCH in claims:
+    if say.SWITCH in said:
         return True
-    actor = "transistor" in kinds or any(kind == "ic" for kind in kinds)
-    quiet = say.SUPPLY in claims or say.GROUND in claims or hint(pins[0].net) is not None or "connector" in kinds
-    return actor and "diode" in kinds and not quiet and kinds.count("capacitor") <= 1 and len(pins) <= 8
+    held = not {say.SUPPLY, say.GROUND, say.NEVER}.isdisjoint(said) or hint(pins[0].net) is not None
+    smoothed = any(part.kind == "capacitor" and any(pin.net in grounds for pin in part.part.pins) for part in fitted)
+    acted = "diode" in kinds and not kinds.isdisjoint(("ic", "transistor")) and "connector" not in kinds
+    return acted and not held and not smoothed and len(pins) <= _MOST_SWITCHED
+
+
+def _is_like_ground(net: str, said: Mapping[str, list[Pin]]) -> bool:
+    named = hint(net)
+    return (named is not None and named.kind == "ground") or len(said.get(say.GROUND, ())) > len(
+        said.get(say.SUPPLY, ())
+    )
 
 
 def _coil(part: RatedPart, switching: set[str]) -> bool:

@@ -130,6 +130,14 @@ def test_a_switching_node_is_told_without_pin_names() -> None:
     assert (kinds(text)["N1"], kinds(text)["N2"]) == ("driven", "supply")
 
 
+def test_the_smoothed_end_of_an_inductor_is_no_switching_node() -> None:
+    power = "U1 [QX2596-5.0] 1=N0 2=N1 3=GND FB:input=N2\nL1 N1 N2\nD1 A=GND K=N1"
+    text = (
+        f"{power}\nC1 330u N2 GND\nD2 A=N2 K=+5V\nD3 A=GND K=N2\nC2 10u +5V GND\nU2 VDD:power-in=+5V GND:power-in=GND"
+    )
+    assert (kinds(text)["N1"], kinds(text)["N2"], volts(text, "N2")) == ("driven", "supply", 5.0)
+
+
 def test_the_output_of_an_amplifier_without_pin_names_is_told_by_its_supply_pins() -> None:
     text = "U1 =N1 V-=GND =N2 =N3 V+=+5V\nR1 1k N1 N4\nC1 1n N4 GND"
     assert kinds(text)["N1"] == "driven"
@@ -146,7 +154,9 @@ def test_an_output_pin_at_a_crystal_drives_nothing() -> None:
     assert "N1" not in kinds(text)
 
 
-@pytest.mark.parametrize("pin", ["VBST:output", "COMP:output", "BTST:power-in", "SS:output", "SPLIT:output"])
+@pytest.mark.parametrize(
+    "pin", ["VBST:output", "COMP:output", "BTST:power-in", "SS1/PG1:output", "RUN1:output", "SPLIT:output"]
+)
 def test_pins_that_need_a_network_hold_none_whatever_their_type(pin: str) -> None:
     assert "N1" not in kinds(f"U1 {pin}=N1 GND:power-in=GND SW=N2\nC1 100n N1 N2\nR1 2 N1 N3")
 

@@ -114,3 +114,18 @@ def test_the_order_of_parts_does_not_matter() -> None:
     lines = f"{RC}\nR2 1k NRST N2\nC2 1n N2 GND".splitlines()
     there, back = (board("\n".join(order)).networks[0] for order in (lines, lines[::-1]))
     assert (there.id, there.branches, there.free, there.held) == (back.id, back.branches, back.free, back.held)
+
+
+@pytest.mark.parametrize(
+    ("part", "why"),
+    [
+        ("R5 33 OUT N3", "in series with a driven net, no capacitor with it"),
+        ("R5 10k +3V3 OUT", "between a supply and a driven net"),
+        ("R5 1k +3V3 N3", "one end is open"),
+        ("C5 18p N3 GND\nY1 N3 N4", "at a crystal"),
+    ],
+)
+def test_a_part_that_makes_no_node_says_what_it_is_at(part: str, why: str) -> None:
+    text = f"{RAIL}\nC9 1u +3V3 GND\nU1 Y:output=OUT A:input=OUT\n{part}"
+    load = "" if "open" in why else "\nU2 IO:bidirectional=N3 GND:power-in=GND"
+    assert board(f"{text}{load}").reasons[part[:2]] == why
