@@ -119,7 +119,7 @@ class PartList:
             said = f" with value {other!r} instead of {one!r}" if one != other else ""
             text = f"{part.ref} is listed again{said}; line {first.place.line} stands"
             self._remarks.add(part.place, text)
-        if first.place != part.place:
+        if _adds(first, part):
             self._parts[part.ref] = _completed(first, part)
 
     def _part(self, table: Table, row: Row, ref: str) -> ExportPart:
@@ -155,6 +155,23 @@ class PartList:
 
     def _place(self, line: int, column: int | None = None) -> Place:
         return Place(file=self._source.name, line=line, column=column)
+
+
+def _adds(first: ExportPart, later: ExportPart) -> bool:
+    """True where the later entry of a reference says something that the first does not."""
+    return (
+        (first.value is None and later.value is not None)
+        or (first.fitted is not False and later.fitted is not None)
+        or any(
+            not said and more
+            for said, more in (
+                (first.footprint, later.footprint),
+                (first.symbol, later.symbol),
+                (first.description, later.description),
+            )
+        )
+        or not later.fields.keys() <= first.fields.keys()
+    )
 
 
 def _completed(first: ExportPart, later: ExportPart) -> ExportPart:

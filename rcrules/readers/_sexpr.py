@@ -11,6 +11,8 @@ from rcrules.readers._text import Lines
 MAX_DEPTH: Final = 256
 MAX_KEPT: Final = 100_000
 """Forms kept at one time, those of one component or library part."""
+MAX_ATOM: Final = 1_000_000
+"""Characters of the longest text."""
 _TOKEN: Final = re.compile(r'[()]|"[^"\\]*+(?:\\.[^"\\]*+)*+"|\r\n|[\n\r]|[^\s()"]++|"', re.DOTALL)
 _ESCAPE: Final = re.compile(r"\\(.)", re.DOTALL)
 _ESCAPES: Final = {"n": "\n", "r": "\r", "t": "\t"}
@@ -68,7 +70,7 @@ def parse(file: str, text: str, take: Callable[[str | None, Form], bool]) -> Non
                 kept += 1
         elif token[0] in "\n\r":
             line += 1
-        elif not stack or token == '"':
+        elif not stack or token == '"' or len(token) > MAX_ATOM:
             raise _misplaced(file, text, match, stack, kept)
         else:
             line += _add_atom(stack[-1], token)
@@ -106,6 +108,8 @@ def _not_closed(file: str, stack: list[Form]) -> UserMistake:
 def _misplaced(file: str, text: str, match: re.Match[str], stack: list[Form], kept: int) -> UserMistake:
     if match[0] == '"':
         problem, expected = "a quoted text is not closed", 'a closing "'
+    elif len(match[0]) > MAX_ATOM:
+        problem, expected = "a text is too long", f"at most {MAX_ATOM} characters"
     elif len(stack) >= MAX_DEPTH:
         problem, expected = "brackets nested too deeply", f"at most {MAX_DEPTH} levels"
     elif kept > MAX_KEPT:

@@ -97,6 +97,10 @@ def test_too_many_brackets_in_one_component_are_refused() -> None:
     assert "too many brackets" in refused("(export (components (comp " + "(a)" * 200_000).problem
 
 
+def test_a_text_without_end_is_refused() -> None:
+    assert refused('(export (nets "' + "\\\\" * 1_000_000 + '"))').problem == "a text is too long"
+
+
 def test_an_entity_bomb_is_refused() -> None:
     entities = "".join(f'<!ENTITY e{n} "{f"&e{n - 1};" * 10}">' for n in range(1, 10))
     bomb = f'<?xml version="1.0"?>\n<!DOCTYPE export [<!ENTITY e0 "lol">{entities}]>\n<export>&e9;</export>'
