@@ -77,6 +77,9 @@ def _ends(view: View, start: str, but: str) -> dict[str, float]:
     best, todo = {start: 0.0}, [(0.0, start)]
     while todo and len(best) < FAR:
         ohms, joint = heappop(todo)
+        if view.at(joint).hub:
+            found[joint] = min(found.get(joint, ohms), ohms)
+            continue
         for arm in view.at(joint).resistors:
             total = ohms + (arm.value or 0.0)
             if arm.held is not None:
@@ -112,8 +115,9 @@ def signal_above(view: View, start: str, but: str) -> bool:
 def _signal_above(view: View, start: str, but: str) -> bool:
     seen, todo = {but, start}, deque([start])
     while todo and len(seen) < FAR:
-        here = view.at(todo.popleft())
-        for arm in here.resistors + here.capacitors:
+        joint = todo.popleft()
+        here = view.at(joint)
+        for arm in () if view.at(joint).hub else here.resistors + here.capacitors:
             if arm.to == "driven":
                 return True
             if arm.held is None and arm.far not in seen:
@@ -188,6 +192,8 @@ def _climb(view: View, found: Ways, joint: str, below: str) -> None:
         if joint in found.visited:
             continue
         found.visited.add(joint)
+        if view.at(joint).hub:
+            continue
         lowest = min((way(view, arm, joint) for arm in view.at(joint).resistors), default=0.0)
         for arm in view.at(joint).resistors:
             if arm.held is not None or way(view, arm, joint) < LIGHT * lowest or lowest == 0.0:

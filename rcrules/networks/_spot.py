@@ -16,6 +16,8 @@ SILENT: Final = frozenset(
     }
 )  # fmt: skip
 """Kinds of parts whose pins say nothing about who drives or reads a joint."""
+HUB: Final = 64
+"""A free joint of more resistors or capacitors counts as a source of its own."""
 SMALL: Final = 0.02
 """A resistor below this share of another one at either end is a stopper: what is behind it counts as at the joint."""
 
@@ -56,6 +58,11 @@ class Spot:
     diodes: tuple[Diode, ...]
     local: bool
     """A supply behind a filter resistor, held for what it feeds."""
+
+    @property
+    def hub(self) -> bool:
+        """Whether so much meets here that what lies beyond does not matter."""
+        return len(self.resistors) > HUB or len(self.capacitors) > HUB
 
     @property
     def bare(self) -> bool:
@@ -107,7 +114,8 @@ class View:
                 yield arm
 
     def _is_small(self, arm: Arm, here: Spot) -> bool:
-        beyond = [other for other in self.at(arm.far).resistors if other.far != here.joint]
+        far = self.at(arm.far)
+        beyond = [other for other in far.resistors if other.far != here.joint] if not far.hub else []
         beside = max(greatest(here.resistors), least(beyond) if beyond else 0.0)
         return arm.value is not None and arm.value <= SMALL * beside
 

@@ -78,3 +78,9 @@ def test_two_equal_stages_are_low_passes_and_no_termination():
 def test_capacitor_from_a_biased_connector_net_is_a_high_pass():
     node = nodes("R1 2.2k +3V3 J\nJ1 MIC=J\nC1 1u J N\nR2 10k N GND\nU1 AIN0=N")["N"]
     assert (node.role, node.parts) == ("high-pass", ("R2", "C1"))
+
+
+def test_many_filters_on_one_free_joint_take_its_parts_no_further():
+    text = "\n".join(f"R{i} 1k HUB N{i}\nC{i} 1n N{i} GND\nU{i} IN=N{i}" for i in range(300))
+    node = nodes(text + "\nR999 1k A HUB", hold=DRIVEN)["N7"]
+    assert (node.role, node.parts) == ("low-pass", ("R7", "C7"))
