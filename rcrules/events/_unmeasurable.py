@@ -1,7 +1,7 @@
 """What cannot be measured, and what would make it measurable."""
 
 
-class Unmeasurable(Exception):
+class Unmeasurable(Exception):  # noqa: N818 - a word of the room's contract; it is an answer, no error
     """The passive model is not true at a subject, or a fact is missing."""
 
     def __init__(self, reason: str, ask: str = "") -> None:

@@ -152,7 +152,7 @@ def check_signs(measure: Measure, structure: Structure, low: np.ndarray, high: n
         less, more = cases.copy(), cases.copy()
         less[:, index], more[:, index] = low[index], high[index]
         a, b = measure.compute(structure, less), measure.compute(structure, more)
-        scale = np.where(np.isfinite(a), np.abs(a), 0.0) + 1e-9
+        scale = np.where(np.isfinite(a), np.abs(a), 0.0) + 1e-2
         both = (np.isinf(a) & np.isinf(b)) | (np.isnan(a) & np.isnan(b))
         change = np.where(both, 0.0, np.subtract(b, a, out=np.zeros_like(a), where=~both))
         if sign == 0:
