@@ -12,14 +12,15 @@ FUNCTIONS = [engine.solve, engine.transfer, engine.corner, engine.bounds, engine
 CLASSES = [engine.Modes, engine.Response, engine.Signal, engine.Drive]
 
 
-def methods():
-    """Public functions and public methods of the door."""
-    yield from FUNCTIONS
-    for kind in CLASSES:
-        yield from (item for name, item in vars(kind).items() if inspect.isfunction(item) and not name.startswith("_"))
+METHODS = [
+    item
+    for kind in CLASSES
+    for name, item in vars(kind).items()
+    if inspect.isfunction(item) and not name.startswith("_")
+]
 
 
-@pytest.mark.parametrize("function", methods(), ids=lambda function: function.__qualname__)
+@pytest.mark.parametrize("function", [*FUNCTIONS, *METHODS], ids=lambda function: function.__qualname__)
 def test_every_array_and_number_is_named_with_its_unit(function):
     text = inspect.getdoc(function) or ""
     for name, parameter in inspect.signature(function).parameters.items():
@@ -38,7 +39,7 @@ def test_every_array_field_is_documented_with_its_unit(kind):
 
 
 def test_what_comes_out_has_a_unit_too():
-    for function in methods():
+    for function in [*FUNCTIONS, *METHODS]:
         if str(inspect.signature(function).return_annotation).endswith("float64]]"):
             assert re.search(r"\[[^\]]+\]", inspect.getdoc(function) or ""), function.__qualname__
 

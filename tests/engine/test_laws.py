@@ -74,7 +74,7 @@ def test_steady_voltages_lie_between_the_sources(seed):
 @quick
 @given(seeds)
 def test_a_jump_moves_no_charge_onto_a_node_without_resistors_to_carry_it(seed):
-    """Just after a step the charge on every capacitor group is as before: C v - D u summed over what each node holds."""
+    """Just after a step the charge that the capacitors at each node hold together is as before."""
     rng = np.random.default_rng(seed)
     free = int(rng.integers(1, 6))
     shape = random_shape(rng, free)

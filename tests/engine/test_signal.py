@@ -236,7 +236,7 @@ def test_energy_of_a_discharge_is_half_r_c_v_squared():
 
 
 def test_energy_over_a_ramp_is_the_integral_of_its_square():
-    """Charging current (V) under a ramp of T, then its decay: (RC/T)² [T - 2 RC (1-e) + RC/2 (1-e²)] + tail, e = exp(-T/RC).
+    """Voltage on R, ramp of T, RC 1 s: (1/T)² [T - 2 (1-e) + (1-e²)/2], and the tail (1-e)²/2 of it, e = exp(-T).
 
     With T = 1 s, RC = 1 s, and with T = 1 µs, where the closed form of the sum would lose all digits.
     """
