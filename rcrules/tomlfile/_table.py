@@ -7,7 +7,7 @@ from math import isfinite
 from typing import Any, Final, TypeVar
 
 from rcrules.errors import Place, Problems
-from rcrules.quantities import QUANTITY_NAMES, QuantityError, Spread, parse_quantity
+from rcrules.quantities import QUANTITY_NAMES, QuantityError, Spread, parse_quantity, show
 from rcrules.tomlfile._file import TomlFile
 from rcrules.tomlfile._scanner import Path
 
@@ -183,10 +183,10 @@ class Table:
             what = f"{quantity_name(unit) if unit else 'a quantity'} such as '{sample}'"
             spread = self.parsed(below, lambda text: _with_unit(text, unit), what)
         if spread is not None and least is not None and spread.low < least:
-            self.wrong(below, f"'{below[0]}' must not be below {least:g} {spread.unit}", found=self.found(below))
+            self.wrong(below, f"'{below[0]}' must not be below {show(least, spread.unit, 5)}", found=self.found(below))
             return None
         if spread is not None and most is not None and spread.high > most:
-            self.wrong(below, f"'{below[0]}' must not be above {most:g} {spread.unit}", found=self.found(below))
+            self.wrong(below, f"'{below[0]}' must not be above {show(most, spread.unit, 5)}", found=self.found(below))
             return None
         return spread
 
