@@ -22,6 +22,8 @@ from rcrules.readers._references import looks_like_references
 from rcrules.readers._table import Row, rejoined
 
 _SHOWN: Final = 8
+_SAMPLE: Final = 1000
+"""Rows by which a column is told to hold references."""
 _VALUE_LIKE: Final = re.compile(r"[.,]?\d|[RCL]\d")
 
 
@@ -115,8 +117,8 @@ def _reference(names: Sequence[str], rows: Sequence[Row], columns: Mapping[str, 
 
 
 def _share(rows: Sequence[Row], index: int) -> float:
-    """Share of the filled cells of a column that are lists of references."""
-    filled = [row.cell(index) for row in rows if row.cell(index)]
+    """Share of the filled cells of a column that are lists of references, in the first rows."""
+    filled = [row.cell(index) for row in rows[:_SAMPLE] if row.cell(index)]
     return sum(map(looks_like_references, filled)) / len(filled) if filled else 0.0
 
 

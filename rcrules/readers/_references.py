@@ -23,6 +23,8 @@ def references(text: str, quantity: int | None = None) -> tuple[str, ...]:
     A range is written out where both ends have one prefix and rise by at most ``MAX_RANGE``. With a quantity that
     only the text without ranges meets, ``R1-4`` stays one name. Raises TooManyError.
     """
+    if text.isalnum():
+        return _names(text)
     ranges = [_size(found) for found in _RANGE.finditer(text)]
     if sum(ranges) > MAX_REFERENCES:
         raise TooManyError(f"{sum(ranges)} references in one cell")
