@@ -1,11 +1,26 @@
 """A rule in one plain sentence."""
 
 from collections.abc import Iterator
+from typing import Final
 
 from rcrules.levels import Level
 from rcrules.quantities import show
 from rcrules.rulebook._model import Limit, OptionValue, Rule, Selection
 from rcrules.tomlfile import listed
+
+_PHRASES: Final = (
+    ("with role", "role"),
+    ("named", "name"),
+    ("on net", "net"),
+    ("feeding pin", "pin"),
+    ("of reference", "part"),
+    ("on sheet", "sheet"),
+    ("of kind", "kind"),
+    ("feeding a pin of kind", "kind_fed"),
+    ("of dielectric", "dielectric"),
+    ("recognised as", "certainty"),
+)
+"""Words, and the field of the selection that they tell."""
 
 
 def sentence(rule: Rule) -> str:
@@ -24,20 +39,10 @@ def _selected(selection: Selection, subject: str) -> str:
 
 def _phrases(selection: Selection, subject: str) -> Iterator[str]:
     """What each key asks, in words."""
-    kinds = tuple(kind for kind in selection.kind if kind != subject)
-    words = (
-        ("with role", selection.role),
-        ("named", selection.name),
-        ("on net", selection.net),
-        ("feeding pin", selection.pin),
-        ("of reference", selection.part),
-        ("on sheet", selection.sheet),
-        ("of kind", kinds),
-        ("feeding a pin of kind", selection.kind_fed),
-        ("of dielectric", selection.dielectric),
-        ("recognised as", selection.certainty),
-    )
-    yield from (f"{phrase} {listed(items)}" for phrase, items in words if items)
+    for phrase, key in _PHRASES:
+        items = tuple(item for item in getattr(selection, key) if key != "kind" or item != subject)
+        if items:
+            yield f"{phrase} {listed(items)}"
     if selection.value_at_least is not None:
         yield f"of at least {show(selection.value_at_least.nominal, selection.value_at_least.unit)}"
     if selection.value_at_most is not None:
