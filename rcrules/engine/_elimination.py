@@ -1,8 +1,8 @@
 """Star-mesh elimination of a conductance network without a single subtraction.
 
 The network is kept as conductances between nodes and slacks to held terminals; the diagonal of the nodal matrix is
-never summed, so a small leak beside a large conductance keeps all its digits (Grassmann, Taksar, Heyman, Operations
-Research 33 (1985) 1107, for Markov chains: the same arithmetic; from memory).
+never summed, so a small leak beside a large conductance keeps all its digits (Operations Research 33 (1985) 1107, for
+Markov chains: the same arithmetic; from memory).
 """
 
 import numpy as np

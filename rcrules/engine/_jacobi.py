@@ -1,7 +1,7 @@
 """One-sided Jacobi: rows made orthogonal by plane rotations, many cases at once.
 
-Keeps the relative precision of small rows, where a symmetric eigensolver keeps only that of the largest (Demmel,
-Veselić, SIAM J. Matrix Anal. Appl. 13 (1992) 1204; from memory).
+Keeps the relative precision of small rows, where a symmetric eigensolver keeps only that of the largest (SIAM Journal
+on Matrix Analysis and Applications 13 (1992) 1204; from memory).
 """
 
 from functools import lru_cache
