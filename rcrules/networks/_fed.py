@@ -12,9 +12,11 @@ from rcrules.networks._spot import Spot, View
 
 
 def whole(pin: Pin) -> str:
-    """The one word of a pin name without marks and index: ``COMP`` of ``COMP1``, '' where it has several words."""
+    """The one word of a pin name without marks and index: ``COMP`` of ``COMP1``, ``SS`` of ``SS/TR``, else ''."""
     words = [word for word in tokens(pin.name) if not word.isdigit()]
-    return words[0] if len(words) == 1 else "".join(words) if len(words) == 2 and "/" not in pin.name else ""
+    if len(words) == 2:
+        return words[0] if "/" in pin.name else "".join(words)
+    return words[0] if len(words) == 1 else ""
 
 
 def words_of(pin: Pin) -> frozenset[str]:
@@ -40,11 +42,6 @@ def kind_fed(view: View, pin: Pin) -> str:
     if view.kind(pin) != "ic":
         return "other"
     return _kind_of_ic_pin(family_of(view, pin.ref), pin, _hint(pin))
-
-
-def is_reset(view: View, pin: Pin) -> bool:
-    """Whether the pin resets an IC."""
-    return kind_fed(view, pin) == "reset"
 
 
 def reads(view: View, pin: Pin) -> bool:

@@ -10,6 +10,7 @@ from rcrules.networks._role import SURE, UNSURE
 from rcrules.networks._role_lines import SHUNT
 from rcrules.networks._role_words import arm_text
 from rcrules.networks._spot import Arm, View, least
+from rcrules.parts import Known
 
 
 def bridged(draft: Draft) -> tuple[Node, ...]:
@@ -31,7 +32,7 @@ def _pairs(draft: Draft) -> dict[tuple[str, str], list[Branch]]:
 
 def _node(view: View, one: str, other: str, branches: Iterable[Branch]) -> Node | None:
     high, low = _in_order(view, one, other)
-    arms = tuple(_arms(view, low, branches))
+    arms = tuple(sorted(_arms(view, low, branches), key=lambda pair: pair[1] != "resistor"))
     role = _role(view, high, low, [arm for arm, kind in arms if kind == "resistor"])
     if role is None:
         return None
@@ -43,7 +44,7 @@ def _node(view: View, one: str, other: str, branches: Iterable[Branch]) -> Node 
         role=name,
         certainty=certainty,
         evidence=(*(arm_text(view, arm) for arm, _ in arms), *why),
-        parts=tuple(arm.ref for arm, _ in sorted(arms, key=lambda pair: pair[1] != "resistor")),
+        parts=tuple(arm.ref for arm, _ in arms),
         fed_from=(high,),
         feeds=(),
         active=active,
@@ -53,7 +54,7 @@ def _node(view: View, one: str, other: str, branches: Iterable[Branch]) -> Node 
 def _arms(view: View, low: str, branches: Iterable[Branch]) -> Iterator[tuple[Arm, str]]:
     for branch in branches:
         part = view.draft.parts.get(branch.ref)
-        value = getattr(part.value, "si", None) if part is not None else None
+        value = part.value.si if part is not None and isinstance(part.value, Known) else None
         yield Arm(ref=branch.ref, far=low, value=value, held=view.draft.held_joint(low)), branch.kind
 
 

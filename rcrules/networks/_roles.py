@@ -76,20 +76,28 @@ def _node(view: View, here: Spot) -> Node:
     judged = next((found for judge in ORDER if (found := judge(view, here)) is not None), _OTHER)
     met = ways(view, here, judged)
     pins = feeding(view, here)
+    fed_from = _fed_from(here, met, judged)
+    doubts = _doubts(view, fed_from)
     node = Node(
         net=here.joint,
         joint=here.joint,
         across=None,
         role=judged.role,
-        certainty=SURE if judged.sure else UNSURE,
-        evidence=(*arms_text(view, here, met.parts), *judged.why, *fed_text(view, pins)),
+        certainty=SURE if judged.sure and not doubts else UNSURE,
+        evidence=(*arms_text(view, here, met.parts), *judged.why, *doubts, *fed_text(view, pins)),
         parts=met.parts,
-        fed_from=_fed_from(here, met, judged),
+        fed_from=fed_from,
         feeds=tuple(pin.key for pin in pins),
         kinds_fed=_kinds_fed(view, here),
         active=judged.active or _helped(met, judged),
     )
     return _corrected(view.draft, node)
+
+
+def _doubts(view: View, sources: tuple[str, ...]) -> tuple[str, ...]:
+    """One sentence for each source whose own voltage is not sure."""
+    held = (view.draft.held_joint(joint) for joint in sources)
+    return tuple(f"what holds {one.net} is not sure" for one in held if one is not None and not one.sure)
 
 
 def _helped(met: Ways, judged: Judged) -> str | None:

@@ -86,7 +86,7 @@ def test_timer_with_resistor_and_capacitor_is_timing():
 
 
 def test_soft_start_pin_is_timing():
-    text = "R1 1M +5V N\nC1 10n N GND\nU1 SS:input=N VIN:power-in=+5V SW:output=X"
+    text = "R1 1M +5V N\nC1 10n N GND\nU1 SS/TR:input=N VIN:power-in=+5V SW:output=X"
     assert nodes(text)["N"].role == "timing"
 
 

@@ -1,4 +1,8 @@
-from tests.networks.drafts import nodes
+from dataclasses import replace
+
+from rcrules.networks._roles import nodes_of
+from rcrules.project import Project
+from tests.networks.drafts import draft, nodes
 
 DRIVEN = {"A": "driven", "B": "driven"}
 
@@ -84,3 +88,12 @@ def test_many_filters_on_one_free_joint_take_its_parts_no_further():
     text = "\n".join(f"R{i} 1k HUB N{i}\nC{i} 1n N{i} GND\nU{i} IN=N{i}" for i in range(300))
     node = nodes(text + "\nR999 1k A HUB", hold=DRIVEN)["N7"]
     assert (node.role, node.parts) == ("low-pass", ("R7", "C7"))
+
+
+def test_source_that_is_not_sure_makes_the_node_unsure():
+    text = "R1 100 A N\nC1 100n N GND\nU1 AIN1=N"
+    board = draft(text, {"A": "driven", "GND": "ground"}, frozenset(), Project())
+    held = {**board.held, "A": replace(board.held["A"], sure=False)}
+    (node,) = nodes_of(replace(board, held=held), board.networks[0])
+    assert (node.role, node.certainty) == ("low-pass", "unsure")
+    assert "what holds A is not sure" in node.evidence
