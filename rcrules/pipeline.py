@@ -154,13 +154,14 @@ def _judged(
     job: Job, found: "Document", project: "Project", board: "Board", rules: "list[Rule]", also: "list[Parameter]"
 ) -> "Document":
     """The document with what the rules find."""
-    from rcrules.checks import check, packs, unmet
+    from rcrules.checks import check, packs, unclear, unmet
 
-    checked = check(board, project, rules, also=also)
+    asked = job.rules or project.rules
+    checked = check(board, project, rules, also=also, sure_only=not asked)
     return replace(
         found,
         packs=packs(rules, checked.met),
         findings=checked.findings,
         assumptions=checked.assumptions,
-        problems=[*found.problems, *unmet(rules, checked.met, own=job.rules or project.rules)],
+        problems=[*found.problems, *unclear(rules, checked.unclear), *unmet(rules, checked.met, own=asked)],
     )

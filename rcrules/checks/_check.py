@@ -1,5 +1,6 @@
 """The whole check: subjects of every rule, posed, solved together, judged, told."""
 
+from collections import Counter
 from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass
 
@@ -26,21 +27,33 @@ class Checked:
     assumptions: list[Json]
     met: Mapping[str, int]
     """Rule id -> number of subjects."""
+    unclear: Mapping[str, int]
+    """Rule id -> number of subjects left out because a fact is missing that decides whether the rule meets them."""
 
 
-def check(board: Board, project: Project, rules: Sequence[Rule], also: Iterable[Parameter] = ()) -> Checked:
+def check(
+    board: Board,
+    project: Project,
+    rules: Sequence[Rule],
+    *,
+    also: Iterable[Parameter] = (),
+    sure_only: bool = False,
+) -> Checked:
     """Hold every rule against every subject that it selects.
 
     also: parameters of other quantities of the document, whose assumptions are listed as well.
+    sure_only: leave out subjects of which it is not known whether a rule meets them, instead of calling them undecided.
     """
     subjects = Subjects(board)
-    cases = [case for rule in rules for case in _cases(rule, subjects, board, project)]
+    found = [case for rule in rules for case in _cases(rule, subjects, board, project)]
+    cases = [case for case in found if case.sure or not sure_only]
     judged = _judge(cases, board, project)
     posed = (item.problem.parameters for item in judged if item.problem)
     listed, numbers = listed_assumptions(key for parameters in (also, *posed) for key in assumptions_of(parameters))
     findings = [finding(item, board, project, _indexes(item, numbers)) for item in judged]
-    met = {rule.id: sum(case.rule is rule for case in cases) for rule in rules}
-    return Checked(findings=sorted(findings, key=_order), assumptions=listed, met=met)
+    met = Counter(case.rule.id for case in cases)
+    unclear = Counter(case.rule.id for case in found if not case.sure) if sure_only else Counter[str]()
+    return Checked(findings=sorted(findings, key=_order), assumptions=listed, met=met, unclear=unclear)
 
 
 def _cases(rule: Rule, subjects: Subjects, board: Board, project: Project) -> list[Case]:

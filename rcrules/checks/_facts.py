@@ -10,30 +10,46 @@ from rcrules.quantities import Spread
 
 def facts(view: View, board: Board) -> dict[str, float]:
     """``supply_low`` … ``rated_voltage_high`` in volts; a fact that is not known is left out."""
-    supplies = [held.voltage for held in _held(view.fed_from, board) if held.kind == "supply"]
+    supplies = [held for held in _held(view.fed_from, board) if held.kind == "supply"]
     return {**_ends("supply", _hull(supplies)), **_ends("voltage", _across(view, board)), **_rating(view)}
 
 
+def unknown(view: View, board: Board) -> list[Held]:
+    """Held nets around the subject whose voltage is not known."""
+    return [held for held in _held((*view.fed_from, *view.around), board) if held.voltage is None]
+
+
 def _held(nets: Iterable[str], board: Board) -> list[Held]:
-    return [board.held[net] for net in nets if net in board.held]
+    return [board.held[net] for net in dict.fromkeys(nets) if net in board.held]
 
 
-def _hull(voltages: list[Spread | None]) -> Spread | None:
-    """Lowest and highest of several; None where one is not known, or there is none."""
-    known = [voltage for voltage in voltages if voltage is not None]
-    if not known or len(known) < len(voltages):
+def _hull(held: list[Held]) -> Spread | None:
+    """Lowest and highest voltage of several nets; None where one is not known, or there is none."""
+    known = [item.voltage for item in held if item.voltage is not None]
+    if not known or len(known) < len(held):
         return None
-    highest = max(voltage.nominal for voltage in known)
+    highest = max(item.nominal for item in known)
     return Spread(low=min(item.low for item in known), nominal=highest, high=max(item.high for item in known), unit="V")
 
 
 def _across(view: View, board: Board) -> Spread | None:
-    """Voltage between the two held nets of a part; None at a free node."""
-    held = [item.voltage for item in _held(view.nets, board)]
-    if len(view.nets) != 2 or len(held) != 2 or held[0] is None or held[1] is None:
+    """Voltage between two held nets; at free nodes from nothing to the widest that resistors alone could pass on."""
+    held = _held(view.around, board)
+    if len(held) == 2 and set(view.nets) == {item.net for item in held}:
+        lower, upper = sorted(held, key=lambda item: item.voltage.nominal if item.voltage else 0.0)
+        return _between(lower.voltage, upper.voltage)
+    hull = _hull(held)
+    if hull is None:
         return None
-    ends = sorted(held, key=lambda item: item.nominal if item else 0.0)
-    lower, upper = ends[0], ends[1]
+    return Spread(
+        low=0.0,
+        nominal=max(hull.nominal, 0.0) - min(hull.low, 0.0),
+        high=max(hull.high, 0.0) - min(hull.low, 0.0),
+        unit="V",
+    )
+
+
+def _between(lower: Spread | None, upper: Spread | None) -> Spread | None:
     if lower is None or upper is None:
         return None
     return Spread(

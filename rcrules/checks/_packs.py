@@ -40,6 +40,19 @@ def _pack(pack: Pack, rules: Sequence[Rule], met: Mapping[str, int]) -> Json:
     }
 
 
+def unclear(rules: Sequence[Rule], counts: Mapping[str, int]) -> list[Json]:
+    """Rules that left subjects out because a fact is missing."""
+    return [
+        {
+            "place": place_json(rule.place),
+            "text": f"rule {rule.id} left out {counts[rule.id]} {rule.measure.subject}s: whether "
+            f"{rule.selection.when_text or 'its condition'} is not known there; the project file can give the voltages",
+        }
+        for rule in rules
+        if counts.get(rule.id)
+    ]
+
+
 def unmet(rules: Sequence[Rule], met: Mapping[str, int], own: Collection[str]) -> list[Json]:
     """Rules that met fewer subjects than they must; of the team's own files also those that met nothing.
 

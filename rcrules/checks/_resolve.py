@@ -3,6 +3,7 @@
 from collections.abc import Mapping
 from dataclasses import dataclass
 
+from rcrules.checks._facts import unknown
 from rcrules.checks._lookup import Missing, look_up
 from rcrules.checks._subjects import Subject
 from rcrules.levels import Level
@@ -37,6 +38,8 @@ class Case:
     options: Mapping[str, OptionValue]
     bounds: tuple[Bound, ...]
     missing: tuple[Missing, ...]
+    sure: bool = True
+    """False: whether the rule meets the subject is not known."""
 
 
 def resolve(rule: Rule, subject: Subject, board: Board, project: Project, *, sure: bool = True) -> Case:
@@ -54,17 +57,18 @@ def resolve(rule: Rule, subject: Subject, board: Board, project: Project, *, sur
         options={name: value for name, value in options.items() if not isinstance(value, Missing)},
         bounds=tuple(item for item in bounds if not isinstance(item, Missing)),
         missing=tuple(dict.fromkeys(missing)),
+        sure=sure,
     )
 
 
 def _condition(rule: Rule, subject: Subject, board: Board) -> Missing:
     """What must be known to tell whether a rule meets a subject."""
-    fed_from = [net for view in subject.views for net in view.fed_from]
-    unknown = [net for net in dict.fromkeys(fed_from) if net in board.held and board.held[net].voltage is None]
-    text = rule.selection.when_text or "the rule's condition"
-    return Missing(
-        reason=f"whether {text} is not known", ask=tuple(f'[supply."{net}"] voltage = "…"' for net in unknown)
+    nets = [held for view in subject.views for held in unknown(view, board)]
+    lines = dict.fromkeys(
+        f'[supply."{held.net}"] voltage = "…"' if held.kind == "supply" else f'[net."{held.net}"] swing = "…"'
+        for held in nets
     )
+    return Missing(reason=f"whether {rule.selection.when_text or 'its condition'} is not known", ask=tuple(lines))
 
 
 def _option(value: OptionValue, rule: Rule, subject: Subject, board: Board, project: Project) -> OptionValue | Missing:

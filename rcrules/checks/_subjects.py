@@ -16,6 +16,8 @@ class View:
     roles: tuple[str, ...]
     certainty: str
     nets: tuple[str, ...]
+    around: tuple[str, ...]
+    """Held nets around the network; of a part between held nets those two."""
     fed_from: tuple[str, ...]
     feeds: tuple[str, ...]
     kinds_fed: tuple[str, ...]
@@ -67,7 +69,7 @@ class Subjects:
     def _node_subject(self, node: Node, network: Network) -> Subject:
         parts = tuple(self._board.parts[ref] for ref in node.parts)
         nets = self._nets(node)
-        view = _view(node, nets, parts)
+        view = _view(node, network, nets, parts)
         return Subject(
             kind="node",
             target=node,
@@ -81,12 +83,14 @@ class Subjects:
 
     def _part_subject(self, part: RatedPart) -> Subject:
         nets = tuple(dict.fromkeys(pin.net for pin in part.part.pins))
-        views = tuple(_view(node, nets, (part,)) for node in self._nodes_of.get(part.ref, ()))
+        network = self._network_of.get(part.ref)
+        nodes = self._nodes_of.get(part.ref, ()) if network else ()
+        views = tuple(_view(node, network, nets, (part,)) for node in nodes if network)
         apart = _apart(part, nets, self._board.coverage.get(part.ref, ""))
         return Subject(
             kind=part.kind,
             target=part,
-            network=self._network_of.get(part.ref),
+            network=network,
             net=None,
             refs=(part.ref,),
             feeds=(),
@@ -125,12 +129,13 @@ class Subjects:
         return {**touched, **named}
 
 
-def _view(node: Node, nets: Iterable[str], parts: tuple[RatedPart, ...]) -> View:
+def _view(node: Node, network: Network, nets: Iterable[str], parts: tuple[RatedPart, ...]) -> View:
     """The facts at a node, for the node itself or for a part at it."""
     return View(
         roles=(node.role,),
         certainty=node.certainty,
         nets=tuple(dict.fromkeys((node.net, *nets))),
+        around=network.held,
         fed_from=node.fed_from,
         feeds=node.feeds,
         kinds_fed=node.kinds_fed,
@@ -141,4 +146,6 @@ def _view(node: Node, nets: Iterable[str], parts: tuple[RatedPart, ...]) -> View
 def _apart(part: RatedPart, nets: tuple[str, ...], coverage: str) -> View:
     """The facts of a part that hangs on no node."""
     roles = ("decoupling",) if coverage == "decoupling" else ()
-    return View(roles=roles, certainty="sure", nets=nets, fed_from=nets, feeds=(), kinds_fed=(), parts=(part,))
+    return View(
+        roles=roles, certainty="sure", nets=nets, around=nets, fed_from=nets, feeds=(), kinds_fed=(), parts=(part,)
+    )

@@ -5,10 +5,10 @@ from typing import Final
 
 from rcrules.findings import Document, Finding, Json
 from rcrules.reports._lines import Line
+from rcrules.reports._text_undecided import undecided_lines
 from rcrules.reports._words import (
     asked,
     bounds,
-    count,
     extreme,
     in_percent,
     limit_text,
@@ -16,12 +16,12 @@ from rcrules.reports._words import (
     number,
     part_texts,
     parts_text,
+    subjects_text,
 )
 from rcrules.vocabulary import SEVERITIES
 
 _INDENT: Final = " " * 8
 _SHOWN_CASES: Final = 4
-_SHOWN_SUBJECTS: Final = 3
 
 
 def findings_lines(document: Document, *, verbose: bool) -> list[Line]:
@@ -30,7 +30,7 @@ def findings_lines(document: Document, *, verbose: bool) -> list[Line]:
     lines: list[Line] = []
     for group in _groups(item for item in document.findings if item.outcome == "fails"):
         lines += [(), *_block(group, texts)]
-    lines += [*_undecided(document, texts, verbose=verbose), *_cautions(document)]
+    lines += [*undecided_lines(document, texts, verbose=verbose), *_cautions(document)]
     return lines + _holding(document, texts) if verbose else lines
 
 
@@ -53,7 +53,7 @@ def _block(group: list[Finding], texts: Mapping[str, str]) -> list[Line]:
     if first.detail.get("worst"):
         lines.append((_INDENT, f"{extreme(first)} at  ", _case_text(first.detail["worst"])))
     if len(group) > 1:
-        lines.append((_INDENT, f"the same on  {_subjects(group[1:], texts, limit=12)}"))
+        lines.append((_INDENT, f"the same on  {subjects_text(group[1:], texts, limit=12)}"))
     return [*lines, _why(first)]
 
 
@@ -94,43 +94,6 @@ def _parameter_text(item: Json) -> str:
 def _why(finding: Finding) -> Line:
     source = f"   (source: {finding.source})" if finding.source else ""
     return (_INDENT, "why  ", finding.why or finding.title, (source, "dim"))
-
-
-def _subjects(findings: list[Finding], texts: Mapping[str, str], *, limit: int) -> str:
-    """Nets or parts, the first few by name."""
-    names = [item.net or parts_text(item.parts, texts) for item in findings]
-    rest = len(names) - limit
-    return ", ".join(names[:limit]) + (f" and {rest} more" if rest > 0 else "")
-
-
-def _undecided(document: Document, texts: Mapping[str, str], *, verbose: bool) -> list[Line]:
-    """Entries by the one line that decides most findings, the most useful first."""
-    entries: dict[str, list[Finding]] = {}
-    for item in document.findings:
-        if item.outcome == "undecided":
-            entries.setdefault(item.ask[0] if item.ask else "", []).append(item)
-    lines: list[Line] = []
-    for ask, findings in sorted(entries.items(), key=lambda entry: (not entry[0], -len(entry[1]), entry[0])):
-        lines += [(), _entry_heading(ask, len(findings)), *_entry_details(findings, texts, verbose=verbose)]
-    return lines
-
-
-def _entry_heading(ask: str, findings: int) -> Line:
-    if not ask:
-        return (("undecided", "open"), f": {count(findings, 'finding')} that no line of the project file would decide")
-    return (("undecided", "open"), f": one line decides {count(findings, 'finding')}   ", (ask, "name"))
-
-
-def _entry_details(findings: list[Finding], texts: Mapping[str, str], *, verbose: bool) -> list[Line]:
-    """Rule, reason and subjects; findings of one rule and reason on one line."""
-    together: dict[tuple[str, str], list[Finding]] = {}
-    for item in findings:
-        together.setdefault((item.rule, item.reason or ""), []).append(item)
-    limit = len(findings) if verbose else _SHOWN_SUBJECTS
-    return [
-        (_INDENT, f"{rule}   {_subjects(group, texts, limit=limit)}   {reason}")
-        for (rule, reason), group in together.items()
-    ]
 
 
 def _cautions(document: Document) -> list[Line]:

@@ -98,3 +98,14 @@ def margin_text(finding: Finding) -> str:
     if margin >= 0:
         return f"{amount} to spare"
     return f"{'short' if broken_side(finding) == 'at_least' else 'over'} by {amount}"
+
+
+def subjects_text(findings: list[Finding], texts: Mapping[str, str], *, limit: int) -> str:
+    """Nets or parts, the first few by name."""
+    return names_text([item.net or parts_text(item.parts, texts) for item in findings], limit=limit)
+
+
+def names_text(names: list[str], *, limit: int) -> str:
+    """``C1, C2, C3 and 4 more``."""
+    rest = len(names) - limit
+    return ", ".join(names[:limit]) + (f" and {rest} more" if rest > 0 else "")

@@ -72,3 +72,23 @@ def test_nothing_found_says_so() -> None:
     found = of()
     assert "0 of 0 findings decided" in found
     assert "nothing fails, 0 hold" in found
+
+
+def test_lines_that_ask_the_same_of_many_parts_share_an_entry() -> None:
+    asking = [
+        finding(
+            outcome="undecided", net=None, parts=[ref], reason="not given", ask=[f'[part."{ref}"] rated-voltage = "…"']
+        )
+        for ref in ("C1", "C2", "C3")
+    ]
+    found = of(*asking)
+    assert 'one line each decides 3 findings   [part."C1"] rated-voltage = "…"   and so for C2, C3' in found
+    assert found.count("undecided:") == 1
+
+
+def test_many_reasons_are_counted_and_listed_on_request() -> None:
+    document = replace(
+        DOCUMENT, findings=[finding(outcome="undecided", net=f"N{n}", ask=[], reason=f"reason {n}") for n in range(9)]
+    )
+    assert "and 3 more (--verbose lists them)" in text(document)
+    assert "reason 8" in text(document, verbose=True)

@@ -1,0 +1,109 @@
+from pathlib import Path
+
+import pytest
+
+from rcrules.cli import main
+from tests.cli._board import NETLIST, write_board
+
+
+@pytest.mark.usefixtures("board")
+def test_a_board_that_keeps_its_rules_exits_0(capsys: pytest.CaptureFixture[str]) -> None:
+    assert main(["check"]) == 0
+    out, err = capsys.readouterr()
+    assert out.startswith("small board   5 parts, 3 nets, 1 RC node   1 of 1 finding decided (100 %)")
+    assert err == ""
+
+
+def test_a_failing_finding_exits_1_and_names_the_limit(board: Path, capsys: pytest.CaptureFixture[str]) -> None:
+    write_board(board, limit="1 s")
+    assert main(["check"]) == 1
+    assert "must be at least 1 s" in capsys.readouterr().out
+
+
+@pytest.mark.parametrize(("fail_on", "code"), [("error", 1), ("warning", 1), ("note", 1), ("never", 0)])
+def test_the_fail_level_decides_the_exit_code(board: Path, fail_on: str, code: int) -> None:
+    write_board(board, limit="1 s")
+    assert main(["check", "--fail-on", fail_on]) == code
+
+
+def test_a_warning_does_not_fail_by_default(board: Path) -> None:
+    write_board(board, limit="1 s")
+    rules = board / "our-rules.toml"
+    rules.write_text(rules.read_text().replace('"error"', '"warning"'))
+    assert main(["check"]) == 0
+    assert main(["check", "--fail-on", "warning"]) == 1
+
+
+def test_undecided_findings_count_only_when_asked(board: Path) -> None:
+    rules = board / "our-rules.toml"
+    rules.write_text(rules.read_text().replace('"1 ms"', '"least"\ngiven = { least = "ask" }'))
+    assert main(["check"]) == 0
+    assert main(["check", "--fail-on-undecided"]) == 1
+
+
+def test_a_broken_input_exits_2_and_prints_no_report(board: Path, capsys: pytest.CaptureFixture[str]) -> None:
+    (board / "board.xml").write_text(NETLIST[:400])
+    assert main(["check"]) == 2
+    out, err = capsys.readouterr()
+    assert out == ""
+    assert err.startswith("board.xml:")
+
+
+def test_mistakes_of_inputs_and_rules_are_told_in_one_run(board: Path, capsys: pytest.CaptureFixture[str]) -> None:
+    (board / "board.xml").write_text("hello")
+    (board / "our-rules.toml").write_text('[[rule]]\nid = "x"\n')
+    assert main(["check"]) == 2
+    err = capsys.readouterr().err
+    assert "board.xml" in err
+    assert "our-rules.toml" in err
+
+
+@pytest.mark.usefixtures("board")
+def test_a_missing_file_exits_2(capsys: pytest.CaptureFixture[str]) -> None:
+    assert main(["check", "nowhere.xml"]) == 2
+    assert "no such file" in capsys.readouterr().err
+
+
+def test_no_inputs_at_all_exit_2(
+    tmp_path: Path, monkeypatch: pytest.MonkeyPatch, capsys: pytest.CaptureFixture[str]
+) -> None:
+    monkeypatch.chdir(tmp_path)
+    monkeypatch.setattr("rcrules.project.find", lambda _: None)
+    assert main(["check"]) == 2
+    assert "no inputs" in capsys.readouterr().err
+
+
+def test_wrong_usage_exits_2() -> None:
+    with pytest.raises(SystemExit) as stopped:
+        main(["check", "--no-such-option"])
+    assert stopped.value.code == 2
+
+
+@pytest.mark.usefixtures("board")
+def test_our_own_bug_exits_3_with_its_traceback(
+    monkeypatch: pytest.MonkeyPatch, capsys: pytest.CaptureFixture[str]
+) -> None:
+    def broken(*_: object, **__: object) -> None:
+        raise ZeroDivisionError("planted")
+
+    monkeypatch.setattr("rcrules.pipeline.run", broken)
+    assert main(["check"]) == 3
+    err = capsys.readouterr().err
+    assert "Traceback" in err
+    assert "ZeroDivisionError: planted" in err
+    assert "bug of rcrules" in err
+
+
+@pytest.mark.usefixtures("board")
+def test_an_interrupt_exits_130(monkeypatch: pytest.MonkeyPatch) -> None:
+    def interrupted(*_: object, **__: object) -> None:
+        raise KeyboardInterrupt
+
+    monkeypatch.setattr("rcrules.pipeline.run", interrupted)
+    assert main(["check"]) == 130
+
+
+@pytest.mark.usefixtures("board")
+def test_mistakes_cannot_steer_the_terminal(capsys: pytest.CaptureFixture[str]) -> None:
+    assert main(["check", "evil\x1b[2J.xml"]) == 2
+    assert "\x1b" not in capsys.readouterr().err
