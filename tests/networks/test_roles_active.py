@@ -80,7 +80,7 @@ def test_low_pass_into_the_other_half_of_a_dual_amplifier_is_no_feedback():
 
 
 def test_timer_with_resistor_and_capacitor_is_timing():
-    node = nodes("R1 100k +5V N\nC1 1u N GND\nU1 [NE555] THR:input=N DIS:input=N TR:input=X")["N"]
+    node = nodes("R1 100k +5V N\nC1 1u N GND\nU1 [555 timer] THR:input=N DIS:input=N TR:input=X")["N"]
     assert (node.role, node.kinds_fed) == ("timing", ("timer",))
     assert node.active
 
