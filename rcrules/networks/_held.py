@@ -12,6 +12,7 @@ from typing import Final
 from rcrules.design import Pin
 from rcrules.networks import _held_claims as say
 from rcrules.networks._held_driven import driven
+from rcrules.networks._held_ground import ground, only_ground
 from rcrules.networks._held_verdict import Verdict, Verdicts, keys
 from rcrules.networks._held_voltage import volts_here
 from rcrules.networks._passing import passed
@@ -20,9 +21,9 @@ from rcrules.parts import Known
 
 FILTER_OHMS: Final = 100.0
 """Up to here a resistor from a supply to a local supply pin is a filter; above, it is a node like any other."""
-
-SHUNT_OHMS: Final = 10.0
-"""Below, a resistor in a ground lead measures its current."""
+MANY_CAPACITORS: Final = 3
+BULK_FARADS: Final = 1e-6
+"""A chip's net with so many capacitors to ground, one of them so large, is a supply even where no pin has a name."""
 _INTERNAL: Final = re.compile(
     r"V[A-Z]{0,4}\d?|V(DD|CC|REF|REG|OUT|CAP|INT|CM|COM|MID|BIAS)\w*|\w*(CAP|REG|LDO|REF|DEC|BYP)\w*"
 )
@@ -38,6 +39,8 @@ def held_joints(scene: Scene) -> tuple[Verdicts, frozenset[str]]:
     verdicts: Verdicts = {}
     for step in _FIRST:
         verdicts.update(_deciding(scene, verdicts, step))
+        if step is ground:
+            verdicts.update(only_ground(scene, verdicts))
     passed(scene, verdicts)
     local = dict(_deciding(scene, verdicts, _local))
     verdicts.update(local)
@@ -73,41 +76,6 @@ def _by_project(scene: Scene, joint: str, _: Verdicts) -> Verdict | None:
     return None
 
 
-def _ground(scene: Scene, joint: str, _: Verdicts) -> Verdict | None:
-    grounds, supplies = scene.says(joint, say.GROUND), scene.says(joint, say.SUPPLY, say.SOURCE)
-    hints = scene.hints(joint)
-    named = next((f"name {net}" for net in scene.members[joint] if hints and hints[0].kind == "ground"), None)
-    strong = named is not None and hints[0].strong
-    against = bool(hints) and hints[0].kind == "supply" and hints[0].strong
-    real = [pin for pin in grounds if scene.kind(pin.ref) != "connector"]
-    lifted = named is None and len(real) == 1 and _is_lifted(scene, joint)
-    enough = (
-        not lifted
-        and len(grounds) > len(supplies)
-        and not against
-        and (bool(real) or named is not None or len(grounds) > 1)
-    )
-    bonded = (named is not None or bool(grounds)) and not supplies and _bonded(scene, joint)
-    if not (strong or enough or bonded):
-        return None
-    return Verdict(kind="ground", volts=0.0, evidence=(*_given(named), *keys(grounds)), sure=strong or bool(real))
-
-
-def _is_lifted(scene: Scene, joint: str) -> bool:
-    """A single ground pin on resistors that are no shunts: an adjustable regulator's, lifted by a divider."""
-    values = [scene.parts[item.ref].value for item, _ in scene.far_ends(joint, "resistor")]
-    return any(isinstance(value, Known) and value.si >= SHUNT_OHMS for value in values)
-
-
-def _bonded(scene: Scene, joint: str) -> bool:
-    """A shield or common: nothing but connectors, holes, resistors and capacitors on it, and a resistor at it."""
-    kinds = {scene.kind(pin.ref) for pin in scene.pins[joint]}
-    return (
-        kinds <= {"connector", "mechanical", "resistor", "capacitor", "test-point", "diode", "ferrite"}
-        and "resistor" in kinds
-    )
-
-
 def _source(scene: Scene, joint: str, verdicts: Verdicts) -> Verdict | None:
     pins = scene.says(joint, say.SOURCE) or _own_supply(scene, joint, verdicts)
     batteries = [pin for pin in scene.of_kind(joint, "battery") if pin in scene.says(joint, say.SUPPLY)]
@@ -132,7 +100,9 @@ def _named_supply(scene: Scene, joint: str, _: Verdicts) -> Verdict | None:
         return None
     backed = scene.says(joint, say.SUPPLY) or scene.says(joint, say.NEGATIVE)
     outside = scene.of_kind(joint, "connector", "diode", "transistor", "transformer", "battery", "other")
-    quiet = not scene.far_ends(joint, "resistor") and scene.of_kind(joint, "ic")
+    quiet = scene.of_kind(joint, "ic") and (
+        not scene.far_ends(joint, "resistor") or len(scene.far_ends(joint, "capacitor")) >= MANY_CAPACITORS
+    )
     if not (hints[0].strong or backed or outside or quiet):
         return None
     return _supply(scene, joint, (f"name {joint}", *keys(backed)), sure=hints[0].strong or bool(backed))
@@ -172,13 +142,15 @@ def _local(scene: Scene, joint: str, verdicts: Verdicts) -> Verdict | None:
     )
 
 
-def _left_over(scene: Scene, joint: str, _: Verdicts) -> Verdict | None:
+def _left_over(scene: Scene, joint: str, verdicts: Verdicts) -> Verdict | None:
     """Supply pins or strong names that nothing known feeds: a sheet that is not in the export, or a resistor alone."""
     strong = [
         named for named in scene.hints(joint) if named.kind == "supply" and named.strong and named.volts is not None
     ]
     if strong:
         return _supply(scene, joint, (f"name {joint}",), sure=False)
+    if _is_smoothed(scene, joint, verdicts):
+        return _supply(scene, joint, ("a chip's net with many capacitors to ground",), sure=False)
     pins = scene.says(joint, say.SUPPLY)
     resistors = scene.far_ends(joint, "resistor")
     return (
@@ -186,6 +158,18 @@ def _left_over(scene: Scene, joint: str, _: Verdicts) -> Verdict | None:
         if pins and not resistors and joint not in scene.switching
         else None
     )
+
+
+def _is_smoothed(scene: Scene, joint: str, verdicts: Verdicts) -> bool:
+    """Many capacitors to ground at a chip whose pins say nothing, one of them large, and no resistor from a supply."""
+    chips = scene.of_kind(joint, "ic")
+    values = [
+        scene.parts[item.ref].value for item, far in scene.far_ends(joint, "capacitor") if _is(verdicts, far, "ground")
+    ]
+    bulk = any(isinstance(value, Known) and value.si >= BULK_FARADS for value in values)
+    fed = any(_is(verdicts, far, "supply") for _, far in scene.far_ends(joint, "resistor"))
+    silent = bool(chips) and not any(pin.name for pin in chips)
+    return silent and bulk and len(values) >= MANY_CAPACITORS and not fed and joint not in scene.switching
 
 
 def only_fed_by_resistors(scene: Scene, joint: str) -> bool:
@@ -226,5 +210,5 @@ def _given(text: str | None) -> tuple[str, ...]:
     return () if text is None else (text,)
 
 
-_FIRST: Final[tuple[Step, ...]] = (_by_project, _ground, _source, _named_supply, _supply_pins)
+_FIRST: Final[tuple[Step, ...]] = (_by_project, ground, _source, _named_supply, _supply_pins)
 _LAST: Final[tuple[Step, ...]] = (_left_over, driven)

@@ -58,11 +58,7 @@ def _tells_more(known: Verdict, source: Verdict) -> bool:
 def _onward(scene: Scene, joint: str, verdicts: Verdicts) -> Iterator[tuple[str, Verdict]]:
     here = verdicts[joint]
     for diode in scene.diodes.get(joint, ()):
-        if (
-            diode.anode == joint
-            and diode.cathode not in scene.switching
-            and _takes_supply(scene, diode.cathode, verdicts)
-        ):
+        if diode.anode == joint and _is_fed_by_diode(scene, joint, diode.cathode, verdicts):
             yield diode.cathode, here.passed(f"diode {diode.ref} from {joint}", drop=DIODE_DROP)
     for ref, far in _switched(scene, joint):
         if _takes_supply(scene, far, verdicts) or _is_power_output(scene, far, verdicts):
@@ -115,6 +111,13 @@ def _is_rectified(scene: Scene, joint: str, verdicts: Verdicts) -> bool:
         diode.cathode == joint and diode.anode in scene.switching for diode in scene.diodes.get(joint, ())
     )
     return from_switch and _has_bulk(scene, joint, verdicts)
+
+
+def _is_fed_by_diode(scene: Scene, joint: str, cathode: str, verdicts: Verdicts) -> bool:
+    """Whether a diode feeds a supply; beside a resistor between the same joints it speeds a node up or down."""
+    if cathode not in verdicts and any(far == joint for _, far in scene.far_ends(cathode, "resistor")):
+        return False
+    return cathode not in scene.switching and _takes_supply(scene, cathode, verdicts)
 
 
 def _takes_supply(scene: Scene, joint: str, verdicts: Verdicts) -> bool:

@@ -128,8 +128,10 @@ def _is_switching(
         return True
     held = not {say.SUPPLY, say.GROUND, say.NEVER}.isdisjoint(said) or hint(pins[0].net) is not None
     smoothed = any(part.kind == "capacitor" and any(pin.net in grounds for pin in part.part.pins) for part in fitted)
-    acted = "diode" in kinds and not kinds.isdisjoint(("ic", "transistor")) and "connector" not in kinds
-    return acted and not held and not smoothed and len(pins) <= _MOST_SWITCHED
+    chips = [pin for pin in pins if pin.ref in parts and parts[pin.ref].kind == "ic"]
+    silent = "inductor" in kinds and bool(chips) and not any(pin.name for pin in chips) and "capacitor" in kinds
+    acted = silent or ("diode" in kinds and not kinds.isdisjoint(("ic", "transistor")))
+    return acted and not held and not smoothed and "connector" not in kinds and len(pins) <= _MOST_SWITCHED
 
 
 def _is_like_ground(net: str, said: Mapping[str, list[Pin]]) -> bool:

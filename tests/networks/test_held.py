@@ -185,6 +185,23 @@ def test_an_open_drain_output_with_a_capacitor_leaves_its_net_free() -> None:
     assert "N1" not in kinds(f"{text}\nC1 10n N1 GND")
 
 
+def test_without_any_name_the_net_that_most_capacitors_share_is_ground() -> None:
+    text = "U1 N1 N2 N3 N9\nC1 1u N1 N9\nC2 1u N1 N9\nC3 1u N2 N9\nC4 1n N3 N9\nC5 1n N4 N9\nC6 10u N1 N9\nR1 1k N3 N4"
+    assert (kinds(text)["N9"], held(text)["N9"].sure) == ("ground", False)
+    assert kinds(text)["N1"] == "supply"
+    assert "N3" not in kinds(text)
+
+
+def test_a_diode_across_the_resistor_of_a_reset_feeds_no_supply() -> None:
+    text = f"{LOAD}\nR1 10k +3V3 N1\nD1 N1 +3V3\nC1 100n N1 GND\nU1 N1 =GND"
+    assert "N1" not in kinds(text)
+
+
+def test_a_switching_node_of_a_chip_without_pin_names_is_told_by_its_inductor() -> None:
+    text = f"{LOAD}\nU1 N1 N2 GND\nL1 N1 +1V8\nC1 10u +1V8 GND\nC2 100n N1 N2\nU2 VDD:power-in=+1V8 GND:power-in=GND"
+    assert kinds(text)["N1"] == "driven"
+
+
 def test_a_shield_bonded_by_a_resistor_is_a_ground() -> None:
     text = f"{LOAD}\nJ1 SHIELD=N1 1=N2\nR1 1M N1 GND\nC1 10n N1 GND"
     assert kinds(text)["N1"] == "ground"
