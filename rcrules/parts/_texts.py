@@ -17,10 +17,11 @@ ValueKind = Literal["resistor", "capacitor"]
 _LONGEST: Final = 300
 _WHOLE: Final = frozenset(("opt", "option", "optional", "tbd", "nf", "np", "nc", "nm", "ni", "n/a", "none", "not used"))
 _NOT_FITTED: Final = re.compile(
-    r"(?<![a-z0-9])(?:dnp|dni|dnf|dns|dnm|n\.\s?p\.?|n\.\s?m\.?|n/p|do[\s_-]{1,3}not[\s_-]{1,3}\w{3,12}"
+    r"(?:dnp|(?<![a-z0-9])(?:dni|dnf|dns|dnm|n\.\s?p\.?|n\.\s?m\.?|n/p|do[\s_-]{1,3}not[\s_-]{1,3}\w{3,12}"
     r"|not[\s_-]{1,3}(?:fitted|populated|placed|mounted|installed|stuffed|assembled|used)"
     r"|no[\s_-]{1,3}(?:soldar|stuff|pop|poner|montar|mount|fit|load|place|colocar|poblar)|nopop"
-    r"|nicht\s{1,3}best(?:ü|ue)ckt|non\s{1,3}mont[eé]e?|unpopulated|не\s{1,3}(?:ставить|устанавливать|монтировать))(?![a-z0-9])"
+    r"|nicht\s{1,3}best(?:ü|ue)ckt|non\s{1,3}mont[eé]e?|unpopulated"
+    r"|не\s{1,3}(?:ставить|устанавливать|монтировать)))(?![a-z0-9])"
 )
 _SYMBOLS: Final = re.compile(
     r"(?:r|c|cp\d?|res|cap|resistor|capacitor|resistencia|condensador|capa?pol)"
@@ -114,7 +115,10 @@ def _value(
     text: str, found: Sequence[Token], kind: ValueKind, *, bare: bool, tolerance: bool
 ) -> tuple[float | None, str, str | None]:
     """Value, why there is none, and the tolerance letter glued to it."""
-    several = [(token, token_value(token, kind)) for token in found if token.kind in ("value", "rkm", "code")]
+    if any(token.kind == "range" for token in found):
+        return None, f"'{shown(text.strip())}' is a range", None
+    written = [token for token in found if token.kind in ("value", "rkm")]
+    several = [(t, token_value(t, kind)) for t in written or [token for token in found if token.kind == "code"]]
     values = {f"{value:.9g}": (value, token) for token, value in several if value is not None}
     if len(values) > 1:
         return None, "two values: " + " and ".join(token.text.strip() for _, token in values.values()), None

@@ -35,22 +35,25 @@ _COMMON: Final = (
     ("voltage", rf"(?P<a>\d{{1,4}})[Vv](?P<b>\d{{1,2}}){_END}"),
     ("size", rf"(?:RES|CAP|IND|SMD|R|C|L|CHIP)?_?(?P<size>{_SIZE})(?:X\d)?(?:DNP|TBD)?(?![\w.])"),
 )
+_TO: Final = r"\s?(?:-|\.{2,3}|…|~)\s?"
 _RESISTOR: Final = (
+    ("range", rf"{_N}[kKMRΩ]?{_TO}{_N}\s?(?:[kKM]{_OHM}?|{_OHM}){_END}"),
     ("unclear", rf"\d{{1,6}}E\d{_END}"),
     ("rkm", rf"(?P<whole>\d{{0,9}})(?P<mark>[RrL])(?P<part>\d{{1,6}}){_MARK}{_LETTER}{_END}"),
     ("rkm", rf"(?P<whole>\d{{1,9}})(?P<mark>[kKMG])(?P<part>\d{{1,6}}){_MARK}{_OHM}?{_LETTER}{_END}"),
     ("value", rf"(?P<n>{_N})\s?(?P<prefix>[Mm][Ee][Gg]|[mkKMGT])?\s?{_OHM}{_LETTER}{_END}"),
     ("value", rf"(?P<n>{_N})\s?(?P<prefix>[Mm][Ee][Gg]|[mkKMG]){_LETTER}{_END}"),
-    ("value", rf"(?P<n>{_N})E{_END}"),
+    ("value", rf"(?P<n>{_N})[Ee](?![+-]?\d){_END}"),
 )
 _CAPACITOR: Final = (
+    ("range", rf"{_N}(?:[pnuµ]F?)?{_TO}{_N}\s?[pnuµ][Ff]?{_END}"),
     ("tantalum", r"T(?=\d)"),
     ("rkm", rf"(?P<whole>\d{{0,9}})(?P<mark>[pnuµPNU])(?P<part>\d{{1,6}}){_MARK}[Ff]?(?P<letter>[BCDGJKMZ])?{_END}"),
     ("value", rf"(?P<n>{_N})\s?(?P<prefix>[pnuµmPNU])\s?(?:[Ff][Dd]?|farads?)(?P<letter>[JKMGZ])?{_END}"),
     ("value", rf"(?P<n>{_N})\s?(?P<prefix>[pnuµPNU])(?P<letter>[JKMGZ])?{_END}"),
     ("value", rf"(?P<n>{_N})\s?(?P<prefix>MFD|mfd){_END}"),
     ("value", rf"(?P<n>{_N})\s?(?:F|farads?){_END}"),
-    ("code", rf"(?P<code>\d{{3}})(?P<letter>[BCDFGJKMZ]){_END}"),
+    ("code", rf"(?P<code>\d{{3}})(?P<letter>[BDFGJKMZ]){_END}"),
     ("code", rf"(?P<a>\d)R(?P<b>\d)(?P<letter>[BCDFGJK])?{_END}"),
     ("unclear", rf"{_N}\s?[mMf]F?{_END}"),
 )
@@ -62,7 +65,7 @@ class Token:
     """A piece of a value text."""
 
     kind: str
-    """``value rkm code bare unclear``, a rating, or ``word``."""
+    """``value rkm code bare range unclear``, a rating, or ``word``."""
     text: str
     parts: dict[str, str | None]
     """Named groups of the pattern."""

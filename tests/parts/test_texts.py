@@ -27,6 +27,7 @@ RESISTORS = [
     ("0", 0.0),
     ("0.0", 0.0),
     ("240E", 240.0),
+    ("240e", 240.0),
     ("49.9E", 49.9),
     ("100", 100.0),
     ("2700", 2700.0),
@@ -49,6 +50,8 @@ RESISTORS = [
     ("78,7к", 78.7e3),
     ("1 МОм", 1e6),
     ("1e+06", 1e6),
+    ("1E+06", 1e6),
+    ("4.7E-3", 4.7e-3),
     ("9.8E4", 98e3),
     ("10k*", 10e3),
     ("2K2, 2.2k", 2200.0),
@@ -93,6 +96,9 @@ CAPACITORS = [
     ("T10uF", 10e-6),
     ("CAP0402 (4.7U)", 4.7e-6),
     ("100nF-X7R", 100e-9),
+    ("0.1uF(104)", 100e-9),
+    ("22uF 25V 105C", 22e-6),
+    ("10u-16V", 10e-6),
 ]
 
 
@@ -174,6 +180,7 @@ def test_ratings_are_read_beside_the_value(text, kind, facts):
         ("10k do not populate", "resistor", 10e3),
         ("100n nicht bestückt", "capacitor", 100e-9),
         ("10n не ставить", "capacitor", 10e-9),
+        ("10kDNP", "resistor", 10e3),
         ("DNP", "resistor", None),
         ("OPT", "resistor", None),
         ("np", "capacitor", None),
@@ -206,6 +213,8 @@ def test_other_texts_do_not(text, kind):
         ("4992", "resistor", "'4992' may be 4992 Ω or the code for 49900 Ω"),
         ("4E7", "resistor", "'4E7' may be an exponent or a letter code"),
         ("15K, 1k", "resistor", "two values: 15K and 1k"),
+        ("5-30pF", "capacitor", "'5-30pF' is a range"),
+        ("1k..10k", "resistor", "'1k..10k' is a range"),
         ("0603", "resistor", "'0603' names a package, no value"),
         ("2512", "resistor", "'2512' names a package, no value"),
         ("R0402TBD", "resistor", "'R0402TBD' names a package, no value"),
