@@ -102,9 +102,9 @@ class Bench:
         return next((pin for pin in part.pins if name in (pin.name, pin.number)), None) if part else None
 
     def network(self, node: Node) -> Network:
-        """The network of a node. Raises KeyError."""
+        """The network of a node of the board, or of any other free joint."""
         found = self.network_of_node.get(id(node))
-        return found or next(network for network in self.board.networks if node in network.nodes)
+        return found or next(network for network in self.board.networks if node.joint in network.free)
 
     def _passive(self, ref: str) -> bool:
         part = self.board.parts.get(ref)

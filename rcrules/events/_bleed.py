@@ -33,8 +33,8 @@ class Wires:
 def bleeders(bench: Bench, sources: Sources, branch: Branch) -> Wires:
     """Branches through which charge of a capacitor can move. Raises Unmeasurable where there are too many.
 
-    Left out, because no current flows there: dead ends without a capacitor, and capacitors to nets without a way to 0 V.
-    What drives a net counts as open, and so do contacts and diodes.
+    Left out, because no current flows there: dead ends without a capacitor, and capacitors to nets without a way to 0
+    V. What drives a net counts as open, and so do contacts and diodes.
     """
     branches = _reached(bench, sources, branch)
     ends = {branch.a, branch.b}

@@ -78,7 +78,7 @@ class Circuit:
         return [name for name in self.free if name not in reached]
 
     def driven(self, sources: Iterable[str], further: Iterable[Arm] = ()) -> dict[str, int]:
-        """Free terminals that resistors join to any of the sources through free terminals -> number of resistors between."""
+        """Free terminals that resistors join to a source, through free terminals -> number of resistors between."""
         free = set(self.free)
         next_to: dict[str, list[str]] = {}
         for arm in (*self.of("resistor"), *further):

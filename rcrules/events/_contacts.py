@@ -72,4 +72,4 @@ def _nearest(bench: Bench, network: Network, circuit: Circuit, joint: str) -> Co
             found.append((min(near), item.ref, item))
     if not found:
         raise Unmeasurable(f"no contact acts on {joint}")
-    return min(found)[2]
+    return min(found, key=lambda item: item[:2])[2]

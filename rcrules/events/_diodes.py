@@ -11,9 +11,9 @@ from rcrules.problems import Waveform
 def check_diodes(scene: Scene, event: Transient) -> None:
     """Raises Unmeasurable, with the diode's name, where one could conduct.
 
-    Every free voltage lies between the lowest and the highest source as long as no capacitor leads to a source that moves
-    and no current is drawn. A diode from 0 V, the lowest source, into the network and one from the network into the highest
-    source, which never falls, are then reverse-biased at every instant.
+    Every free voltage lies between the lowest and the highest source as long as no capacitor leads to a source that
+    moves and no current is drawn. A diode from 0 V, the lowest source, into the network and one from the network into
+    the highest source, which never falls, are then reverse-biased at every instant.
     """
     for diode in scene.network.diodes:
         if not _blocks(scene, event, diode):
@@ -29,7 +29,9 @@ def _blocks(scene: Scene, event: Transient, diode: Diode) -> bool:
     wave = event.waves.get(cathode)
     if wave is None or anode in scene.circuit.held:
         return False
-    return all(name == cathode or _below(scene, event, name, cathode) for name in scene.circuit.held) and _not_falling(wave)
+    return all(name == cathode or _below(scene, event, name, cathode) for name in scene.circuit.held) and _not_falling(
+        wave
+    )
 
 
 def _pushed(scene: Scene, event: Transient) -> bool:

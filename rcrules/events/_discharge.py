@@ -32,7 +32,7 @@ class _Case:
 
 
 def pose_discharge(bench: Bench, part: RatedPart, measure: Measure, options: Mapping[str, OptionValue]) -> Problem:
-    """The capacitor with everything that hangs on it, from the steady state with all supplies on. Raises Unmeasurable."""
+    """The capacitor with all that hangs on it, from the steady state with all supplies on. Raises Unmeasurable."""
     branch, table = place_of(bench, part).branch, Table()
     sources = Sources(bench=bench, table=table)
     ends = _oriented(sources, (branch.a, branch.b))

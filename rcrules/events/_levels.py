@@ -51,7 +51,9 @@ class Leveller:
     def _edge(self, edge: str, *, rising: bool) -> tuple[str, Level]:
         """The threshold of the fed pin that decides: of several pins the first to switch, or the last."""
         earliest = (edge == "may switch") == rising
-        return (min if earliest else max)(self._thresholds(edge, rising=rising), key=lambda item: self._nominal(item[1]))
+        return (min if earliest else max)(
+            self._thresholds(edge, rising=rising), key=lambda item: self._nominal(item[1])
+        )
 
     def _thresholds(self, edge: str, *, rising: bool) -> list[tuple[str, Level]]:
         """Name and level of the threshold of every fed pin of which it is known. Raises Unmeasurable where none is."""

@@ -95,7 +95,12 @@ def _rises(scene: Scene, event: Transient, structure: Structure, table: Table) -
     spreads = [scene.sources.volts(joint) for joint in joints]
     plain = bool(joints) and all(spread is None or spread.low >= 0.0 for spread in spreads)
     pushing = any(name in event.movers for arm in scene.circuit.of("capacitor") for name in (arm.a, arm.b))
-    if plain and not pushing and not scene.circuit.draws and scene.joint in scene.circuit.driven(event.movers, event.after):
+    if (
+        plain
+        and not pushing
+        and not scene.circuit.draws
+        and scene.joint in scene.circuit.driven(event.movers, event.after)
+    ):
         wave = structure.waveforms[scene.circuit.held.index(event.movers[0])]
         return wave.before == () and wave.points[-1][1] != ()
     start = _nominal(structure, table)

@@ -163,7 +163,7 @@ def _states(
 
 
 def _switched_on(circuit: Circuit, sources: Sources) -> tuple[tuple[Waveform, ...], bool]:
-    """All sources from 0 V to their highest at once, and whether a capacitor lets any voltage go beyond its DC states."""
+    """All sources from 0 V to their highest at once, and whether a capacitor lets a voltage go beyond its DC states."""
     waves, bridging = [], False
     for name in circuit.held:
         _, high = _ends(circuit, sources, name)

@@ -24,7 +24,8 @@ def pose(
 ) -> Problem:
     """What a measure asks of a subject, in numbers.
 
-    options: values by option name, SI; defaults are filled in. Raises Unmeasurable, with the project line that would help.
+    options: values by option name, SI; defaults are filled in. Raises Unmeasurable, with the project line that would
+    help.
     """
     at, values = bench(board, project), chosen(measure, options or {})
     if isinstance(subject, Node):

@@ -49,7 +49,9 @@ def at_rest(bench: Bench, node: Node, measure: Measure, options: Mapping[str, Op
             unit=True,
         )
         source = float(circuit.terminal(mover(scene)))
-        structure = replace(structure, options=(*structure.options, ("source", source), ("passes", _passes(circuit, node))))
+        structure = replace(
+            structure, options=(*structure.options, ("source", source), ("passes", _passes(circuit, node)))
+        )
     return Problem(structure=structure, parameters=tuple(table.parameters))
 
 

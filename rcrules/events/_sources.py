@@ -59,7 +59,9 @@ class Sources:
         spread = self.swing(joint)
         text = f"{joint} rests anywhere within its swing"
         rest = Spread(low=spread.low, nominal=spread.low, high=spread.high, unit="V")
-        return self.table.assumed(f"{joint} at rest", rest, text, "") if spread.low < spread.high else constant(spread.low)
+        return (
+            self.table.assumed(f"{joint} at rest", rest, text, "") if spread.low < spread.high else constant(spread.low)
+        )
 
     def swing(self, joint: str) -> Spread:
         """Levels between which a driven net moves. Raises Unmeasurable where they are not known."""

@@ -34,7 +34,7 @@ class Scene:
     sources: Sources
     joint: str
     unit: bool
-    """True: the measure counts in parts of the step, so that the moved source goes from 0 to 1 V and the others rest at 0 V."""
+    """True: the measure counts in parts of the step: the moved source goes from 0 to 1 V, the others rest at 0 V."""
 
 
 def transient(scene: Scene, event: str) -> Transient:
@@ -89,7 +89,7 @@ def _step(scene: Scene, contacts: Switched, *, up: bool) -> Transient:
 
 
 def mover(scene: Scene) -> str:
-    """The nearest driven net that feeds the joint through resistors, else through capacitors; else the nearest supply."""
+    """The nearest driven net that feeds the joint, through resistors if any does; else the nearest supply."""
     for kind in ("driven", "supply"):
         names = [name for name in scene.circuit.held if _kind(scene, name) == kind]
         for arms in (scene.circuit.of("resistor"), scene.circuit.arms):

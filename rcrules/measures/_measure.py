@@ -46,6 +46,6 @@ class Measure:
     """Structure, lowest and highest of the columns -> what is proved."""
     options: Mapping[str, Option] = field(default_factory=dict)
     poses: Literal["event", "network", "transfer", "states", "discharge"] = "event"
-    """What the structure is: a transient, the network at rest, a transfer from its source, DC states, supplies left open."""
+    """What the structure is: a transient, the network at rest, a transfer, DC states, supplies left open."""
     scale_free: bool = False
     """True: a single source of unknown voltage does not matter, because the measure counts in parts of its own step."""

@@ -11,8 +11,8 @@ LEAST_STEP = 1e-12
 def passed(case: Solved, level: LevelForm) -> Array:
     """Time at which the observed voltage passes a level in the structure's direction [s] (case,).
 
-    inf = never; nan = not defined: a part of a step that is not there. A voltage that is beyond the level before the event
-    already (a pulse that returns) passes it when it leaves the other side for the last time.
+    inf = never; nan = not defined: a part of a step that is not there. A voltage that is beyond the level before the
+    event already (a pulse that returns) passes it when it leaves the other side for the last time.
     """
     rising = case.structure.rising
     signal, before = case.above(level)
@@ -26,7 +26,7 @@ def passed(case: Solved, level: LevelForm) -> Array:
 
 
 def step(case: Solved) -> Array:
-    """Size of the step [V] (case,): how far from the end the voltage before or just after the event is; nan where none."""
+    """Size of the step [V] (case,): the end against the voltage before or just after the event; nan where none."""
     size = np.maximum(np.abs(case.final - case.start), np.abs(case.final - case.signal.initial()))
     greatest = np.maximum(np.abs(case.volts_before).max(axis=1), np.abs(case.sources[1]).max(axis=(1, 2), initial=0.0))
     return np.where(size > LEAST_STEP * greatest, size, np.nan)

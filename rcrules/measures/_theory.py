@@ -1,12 +1,12 @@
 """What is proved about the slope of a quantity in each column, and where its extremes lie.
 
-T1  A DC voltage or current is linear-fractional in each resistance and linear in each source: its extremes over a box lie
-    at vertices (each column alone moves it one way, whatever the others are).
+T1  A DC voltage or current is linear-fractional in each resistance and linear in each source: its extremes over a box
+    lie at vertices (each column alone moves it one way, whatever the others are).
 T2  Every time constant rises with every resistance and every capacitance (min-max principle of the pencil C - τG).
 T3  Grounded capacitors, one common start, sources that move away from it and never back: with u = |v - start|,
-    C u' = -G u + s is a cooperative system (off-diagonals of -G are >= 0) whose state never falls, so at every instant u
-    falls with each C, falls with each R to a moved source, rises with each R to a source at rest (Kamke-Müller comparison).
-T3b The same for a network at rest on one supply that is then left open: no node ever rises, since the supply fed current in.
+    C u' = -G u + s is a cooperative system (off-diagonals of -G are >= 0) whose state never falls. At every instant u
+    falls with each C and each R to a moved source, and rises with each R to a source at rest (Kamke and Müller).
+T3b The same for a network at rest on one supply that is then left open: no node rises, since the supply fed it.
 T4  The far end of a ladder that is driven at the other end and loaded nowhere: u falls with every R and every C.
 """
 
@@ -60,7 +60,7 @@ def slowest_mode(structure: Structure, low: Array, high: Array) -> Theory:
 
 
 def corner(structure: Structure, low: Array, high: Array) -> Theory:
-    """T2 for a corner of 1/(2πτ): all capacitors at the observed terminal, one way from the source to it; else nothing."""
+    """T2 for a corner of 1/(2πτ): all capacitors at the observed terminal, one way from the source to it."""
     source = int(structure.option("source"))
     paths = [any(source in pair for pair in pairs) for pairs in (structure.shape.resistors, structure.shape.capacitors)]
     passives = (*structure.ohms, *structure.farads)
@@ -192,11 +192,13 @@ def _comparable(structure: Structure, moves: Monotone, level: LevelForm, low: Ar
         return not swing & columns([level.offset])
     parts = [fraction for _, fraction in level.follows]
     known = moves.far | moves.near
-    return is_zero(level.offset) and all(t in known for t, _ in level.follows) and all(increasing(f, low) for f in parts)
+    return (
+        is_zero(level.offset) and all(t in known for t, _ in level.follows) and all(increasing(f, low) for f in parts)
+    )
 
 
 def _passives(slopes: Slopes, structure: Structure, moves: Monotone, *, relative: bool) -> None:
-    """Signs of a crossing time in R and C; relative = to the observed terminal's own end, which then must not move with R."""
+    """Signs of a crossing time in R and C; relative = to the terminal's own end, which then must not move with R."""
     for form in structure.farads:
         slopes.add(columns([form]), 1)
     if len(moves.far) == 1 and ladder_end(structure, next(iter(moves.far))):

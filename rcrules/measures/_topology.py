@@ -1,4 +1,4 @@
-"""Properties of a structure under which a theorem of ``_theory`` holds; each is decided exactly, never by a tolerance."""
+"""Properties of a structure under which a theorem of ``_theory`` holds, decided exactly, never by a tolerance."""
 
 from collections.abc import Iterable
 from dataclasses import dataclass
@@ -116,7 +116,7 @@ def _still(wave: Waveform) -> bool:
 
 
 def _track(wave: Waveform, start: Form, rising: bool) -> Form | None:
-    """() where a source stays at the start; where it moves away for good, the swing; None where it does anything else."""
+    """() where a source stays at the start; the swing where it moves away for good; None where it does else."""
     volts = [form for _, form in wave.points]
     moved = [form for form in volts if form != start and not (rising and is_zero(form))]
     if not moved:

@@ -1,8 +1,8 @@
 """Applied voltage of a capacitor: the most, or the least, that ever lies across it.
 
-Over every subset of supplies that may be on, both levels of every driver, both positions of a contact, and the transient
-where a bridging capacitor lets it go further. A polarised capacitor counts from + to -, signed; any other its magnitude.
-Source: nodal analysis; the DC voltage does not depend on capacitance.
+Over every subset of supplies that may be on, both levels of every driver, both positions of a contact, and the
+transient where a bridging capacitor lets it go further. A polarised capacitor counts from + to -, signed; any other
+its magnitude. Source: nodal analysis; the DC voltage does not depend on capacitance.
 """
 
 import numpy as np

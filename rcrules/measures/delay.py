@@ -1,8 +1,8 @@
 """Delay of a node: the time at which its voltage passes a level, from the event or from a valid supply.
 
-t(to) - t(from), with v(t) the exact response of the whole network: a sum of real exponentials, jumps and ramps. For one
-resistor and one capacitor stepped from rest, t = RC ln(V/(V - v)). Infinite where the level is never passed; not defined
-where the supply never becomes valid. It may be negative: the level is passed while the supply still rises.
+t(to) - t(from), with v(t) the exact response of the whole network: a sum of real exponentials, jumps and ramps. For
+one resistor and one capacitor stepped from rest, t = RC ln(V/(V - v)). Infinite where the level is never passed; not
+defined where the supply never becomes valid. It may be negative: the level is passed while the supply still rises.
 Source: first-order charging law, e.g. the Navy training series NEETS, module 2; NAVEDTRA 14174 (from memory).
 """
 
@@ -49,7 +49,9 @@ MEASURE = Measure(
     theory=theory,
     options={
         "event": event(None),
-        "from": Option(kind="choice", default="event", choices=("event", "supply valid"), summary="where time counts from"),
+        "from": Option(
+            kind="choice", default="event", choices=("event", "supply valid"), summary="where time counts from"
+        ),
         "to": level(None, "the level to pass"),
     },
 )

@@ -1,8 +1,9 @@
 """Discharge time of a capacitor after power-off: from its greatest steady voltage down to a level.
 
-All supplies are left open: the supply net becomes free and joins what hangs on it through resistors and capacitors. What
-integrated circuits draw never counts as bleed, nor does leakage. One resistor and one capacitor: RC ln(V/to). Infinite
-where no resistive path discharges it. Source: first-order discharging law; IEC 60335-1, IEC 62368-1 use such limits.
+All supplies are left open: the supply net becomes free and joins what hangs on it through resistors and capacitors.
+What integrated circuits draw never counts as bleed, nor does leakage. One resistor and one capacitor: RC ln(V/to).
+Infinite where no resistive path discharges it. Source: first-order discharging law; IEC 60335-1, IEC 62368-1 use such
+limits.
 """
 
 import numpy as np

@@ -1,7 +1,7 @@
 """Final voltage: the node a long time after the event.
 
-v(∞) = G⁻¹ (sources - currents drawn): a DC divider, with leakage. Linear-fractional in each resistance, so that its extremes
-lie at vertices (T1). Source: nodal analysis.
+v(∞) = G⁻¹ (sources - currents drawn): a DC divider, with leakage. Linear-fractional in each resistance, so that its
+extremes lie at vertices (T1). Source: nodal analysis.
 """
 
 from rcrules.measures._measure import Measure

@@ -1,8 +1,8 @@
 """Peak current of a capacitor: the greatest magnitude from the event on.
 
-By Kirchhoff's law the sum of the currents that reach the capacitor through resistors; V/R just after a step from rest.
-Infinite where a source jumps right across it. Not defined where further capacitors share the current at both of its ends.
-Source: OpenStax University Physics 2, section 10.5, initial current V/R.
+By Kirchhoff's law the sum of the currents that reach the capacitor through resistors; V/R just after a step from
+rest. Infinite where a source jumps right across it. Not defined where further capacitors share the current at both of
+its ends. Source: OpenStax University Physics 2, section 10.5, initial current V/R.
 """
 
 import numpy as np
@@ -50,7 +50,10 @@ def _across_sources(case: Solved, pair: tuple[int, int], element: int) -> Array:
     a, b = (terminal - case.structure.shape.free for terminal in pair)
     volts, slope = levels[:, :, a] - levels[:, :, b], slopes[:, :, a] - slopes[:, :, b]
     arrived = np.concatenate(
-        [(case.volts_before[:, pair[0]] - case.volts_before[:, pair[1]])[:, None], (volts + slope * _spans(starts))[:, :-1]],
+        [
+            (case.volts_before[:, pair[0]] - case.volts_before[:, pair[1]])[:, None],
+            (volts + slope * _spans(starts))[:, :-1],
+        ],
         axis=1,
     )
     jumps = np.abs(volts - arrived) > 1e-9 * np.abs(volts).max(axis=1, keepdims=True)

@@ -1,8 +1,8 @@
 """Pulse width: how long the node is above (or below) a level after the event.
 
-Sum of all times with v(t) >= level. For a capacitor from a stepped supply and a resistor to ground RC ln(V/level); 0 where
-the level is not reached at all, as behind a slow supply. Infinite where it ends beyond the level.
-Source: first-order discharging law.
+Sum of all times with v(t) >= level. For a capacitor from a stepped supply and a resistor to ground RC ln(V/level); 0
+where the level is not reached at all, as behind a slow supply. Infinite where it ends beyond the level. Source:
+first-order discharging law.
 """
 
 from rcrules.measures._measure import Measure, Option

@@ -14,7 +14,7 @@ from rcrules.problems import Array, Structure, solved
 
 
 def compute(structure: Structure, cases: Array) -> Array:
-    """Part of the step left [1] (case,) at the option ``time`` [s]; nan where nothing moves; cases: (case, column), SI."""
+    """Part of the step left [1] (case,) at option ``time`` [s]; nan = nothing moves; cases: (case, column), SI."""
     case = solved(structure, cases)
     size = step(case)
     left = np.abs(case.signal.at(np.full(len(cases), float(structure.option("time")))) - case.final)

@@ -1,7 +1,7 @@
 """Settling time: after it the node stays within a band around its final value.
 
-The last time at which |v(t) - v(∞)| > band * step, with step the larger of |v(∞) - v(before)| and |v(∞) - v(0+)|. For one
-resistor and one capacitor t = RC ln(1/band). Source: IEC 60050-351-45-37, settling time (from memory).
+The last time at which |v(t) - v(∞)| > band * step, with step the larger of |v(∞) - v(before)| and |v(∞) - v(0+)|. For
+one resistor and one capacitor t = RC ln(1/band). Source: IEC 60050-351-45-37, settling time (from memory).
 """
 
 import numpy as np
@@ -31,7 +31,9 @@ MEASURE = Measure(
     theory=fraction_left,
     options={
         "event": event("step-up"),
-        "band": Option(kind="quantity", default=0.01, unit="1", summary="half width of the band, as a part of the step"),
+        "band": Option(
+            kind="quantity", default=0.01, unit="1", summary="half width of the band, as a part of the step"
+        ),
     },
     scale_free=True,
 )

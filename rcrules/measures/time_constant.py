@@ -1,8 +1,8 @@
 """Time constant of a network: its slowest mode.
 
-The largest τ with (G - C/τ) x = 0, G and C the conductance and capacitance matrices of all free nodes; sources held at 0 V.
-For one resistor and one capacitor τ = RC. Proved monotone in every R and C (T2).
-Source: natural frequencies of RC networks, e.g. Desoer and Kuh, Basic Circuit Theory, chapter 15 (from memory).
+The largest τ with (G - C/τ) x = 0, G and C the conductance and capacitance matrices of all free nodes; sources held
+at 0 V. For one resistor and one capacitor τ = RC. Proved monotone in every R and C (T2). Source: natural frequencies
+of RC networks, e.g. Desoer and Kuh, Basic Circuit Theory, chapter 15 (from memory).
 """
 
 from rcrules.measures._measure import Measure

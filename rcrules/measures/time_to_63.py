@@ -1,7 +1,7 @@
 """Time to 63 %: when a node has made 1 - 1/e = 63.2 % of its own step.
 
-Equal to RC for one resistor and one capacitor; for more, it lies beside the slowest time constant and says how fast this
-node is. Source: definition of the time constant of a first-order response, IEC 60050-103-05-26 (from memory).
+Equal to RC for one resistor and one capacitor; for more, it lies beside the slowest time constant and says how fast
+this node is. Source: definition of the time constant of a first-order response, IEC 60050-103-05-26 (from memory).
 """
 
 import math

@@ -121,7 +121,7 @@ class Solved:
         return self.response.observe(weights, offset)
 
     def above(self, level: LevelForm, *, turned: bool = False) -> tuple[Signal, Array]:
-        """The observed voltage minus a level (turned: the level minus it) over time, and its value just before the event."""
+        """The observed voltage minus a level (turned: the reverse) over time, and its value just before the event."""
         weights, offset = self.weights(), self._fixed(level)
         for terminal, fraction in level.follows:
             weights[:, terminal] -= evaluate(fraction, self.cases)
@@ -163,9 +163,9 @@ def steady_states(structure: Structure, cases: Array) -> Array:
 
 
 def corner_omega(structure: Structure, cases: Array) -> Array:
-    """Angular frequency 3 dB below the pass band from the terminal in option ``source`` to the observed one [rad/s] (case,).
+    """Angular frequency 3 dB below the pass band [rad/s] (case,).
 
-    Option ``passes``: ``low`` or ``high``. Raises FloatingNode.
+    From the terminal in option ``source`` to the observed one; ``passes``: ``low`` or ``high``. Raises FloatingNode.
     """
     case = Solved(structure=structure, cases=cases)
     passes: Literal["low", "high"] = "low" if structure.option("passes") == "low" else "high"

@@ -62,7 +62,7 @@ class Parameter:
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Waveform:
-    """Voltage of one held terminal: ``before`` until 0, then linear between points; equal times = a jump; constant after the last."""
+    """Voltage of a held terminal: ``before`` until 0, then linear between points; equal times are a jump."""
 
     before: Form
     points: tuple[tuple[Form, Form], ...]
@@ -71,7 +71,7 @@ class Waveform:
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class LevelForm:
-    """A level in columns: ``offset + sum(fraction * terminal voltage)``, or ``fraction`` of the final value or the step."""
+    """A level: ``offset + sum(fraction * terminal voltage)``, or ``fraction`` of the final value or the step."""
 
     kind: Literal["voltage", "final", "step"]
     offset: Form = ()
@@ -97,7 +97,7 @@ class Structure:
     amps: tuple[tuple[int, Form], ...] = ()
     """(free terminal, current drawn out of it [A])."""
     earlier: tuple[Shape, tuple[Form, ...]] | None = None
-    """Shape and ohms in the steady state before the event, where a contact changes it; None = the same. Same terminals, same capacitors."""
+    """Shape and ohms in the steady state before the event, where a contact changes it; None = the same."""
     pinned: tuple[tuple[int, Form], ...] = ()
     """Free terminals, and the voltage [V] at which a source held each of them until the event."""
     empty: bool = False
@@ -115,7 +115,7 @@ class Structure:
     levels: tuple[tuple[str, LevelForm], ...] = ()
     """Levels by option name."""
     states: tuple[tuple[Form, ...], ...] = ()
-    """DC source vectors (one form per held terminal) over supply subsets and driver states, for measures over states."""
+    """DC source vectors, one form per held terminal, over supply subsets and driver states."""
     rising: bool = True
     """Direction of the observed change."""
     options: tuple[tuple[str, float | str], ...] = ()

@@ -12,7 +12,7 @@ def before(structure: Structure, cases: Array) -> Array:
 
 
 def drive(structure: Structure, cases: Array) -> Drive:
-    """Sources after the event: a piece starts wherever any waveform bends; of two points at one time the later counts."""
+    """Sources after the event: a piece starts where any waveform bends; of two points at one time the later counts."""
     starts = _starts(structure, cases)
     levels = np.empty((*starts.shape, len(structure.waveforms)))
     slopes = np.empty_like(levels)

@@ -12,7 +12,16 @@ from rcrules.problems import Bounds, Problem, solve_bounds
 from rcrules.project import Project, load
 from rcrules.readers import Source, read
 
-SYMBOLS = {"R": "R", "C": "C", "U": "QX7301", "J": "Conn_01x02", "SW": "SW_Push", "D": "D", "L": "L", "FB": "Ferrite_Bead"}
+SYMBOLS = {
+    "R": "R",
+    "C": "C",
+    "U": "QX7301",
+    "J": "Conn_01x02",
+    "SW": "SW_Push",
+    "D": "D",
+    "L": "L",
+    "FB": "Ferrite_Bead",
+}
 
 
 @dataclass(frozen=True, kw_only=True)

@@ -26,7 +26,7 @@ def joined(free: int, held: int, rng: np.random.Generator, *, bridges: bool) -> 
 
 
 def build(rng: np.random.Generator, **traits: bool) -> tuple[Structure, np.ndarray, np.ndarray]:
-    """A structure of one moved supply (terminal ``free``), further grounds, and its box. Columns: R, C, supply, time."""
+    """A structure of one moved supply (terminal ``free``) and grounds, and its box. Columns: R, C, supply, time."""
     free, held = int(rng.integers(1, 4)), int(rng.integers(2, 4))
     shape = joined(free, held, rng, bridges=traits.get("bridges", False))
     r, c = len(shape.resistors), len(shape.capacitors)

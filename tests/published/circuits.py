@@ -25,7 +25,7 @@ def ramps(volts: Form, seconds: float) -> Waveform:
 
 
 def circuit(free: str, held: str, branches: str, waves: dict[str, Waveform], **numbers: tuple[float, float]) -> Problem:
-    """``branches`` = "R1 IN N, C1 N GND"; numbers = value and relative spread of each; one letter or word per terminal."""
+    """``branches`` = "R1 IN N, C1 N GND"; numbers = value and relative spread of each; one word per terminal."""
     names = [*free.split(), *held.split()]
     parts = [item.split() for item in branches.split(",")]
     parameters = [parameter(name, *number) for name, number in numbers.items()]
