@@ -48,13 +48,18 @@ def _tables(rule: Rule, subject: Subject, board: Board, project: Project) -> Ite
         yield f'[pin."{pattern}"]', pin.set, pin.spreads
     for pattern, net in ranked(project.nets, subject.nets):
         yield f'[net."{pattern}"]', net.set, net.spreads
-    for pattern, part in ranked(project.parts, subject.refs):
+    for pattern, part in ranked(project.parts, (*subject.refs, *_contacts(subject))):
         yield f'[part."{pattern}"]', part.set, part.spreads
     yield f'[settings."{rule.id}"]', project.settings.get(rule.id, {}), project.setting_spreads.get(rule.id, {})
 
 
 def _value(value: str | float, unit: str) -> Spread | str:
     return value if isinstance(value, str) else Spread(low=value, nominal=value, high=value, unit=unit)
+
+
+def _contacts(subject: Subject) -> tuple[str, ...]:
+    """Contacts that act on the subject's network: their bounce and resistance are facts of it."""
+    return tuple(contact.ref for contact in subject.network.contacts) if subject.network else ()
 
 
 def _pin_names(feeds: Iterable[str], board: Board) -> set[str]:

@@ -1,3 +1,4 @@
+from dataclasses import replace
 from typing import Any
 
 import pytest
@@ -5,6 +6,7 @@ import pytest
 from rcrules.checks._lookup import Found, Missing, look_up
 from rcrules.checks._resolve import resolve
 from rcrules.checks._subjects import Subject, Subjects
+from rcrules.networks import Contact
 from rcrules.project import NetFacts, PartFacts, PinFacts, Project
 from rcrules.quantities import Spread
 from rcrules.rulebook import Limit
@@ -47,9 +49,17 @@ def test_a_pin_may_be_named_by_number() -> None:
 
 
 def _fed(pin: str) -> Subject:
-    from dataclasses import replace
-
     return replace(node(), feeds=(pin,))
+
+
+def test_a_contact_of_the_network_speaks_for_its_nodes() -> None:
+    network = replace(board().networks[0], contacts=(Contact(ref="SW1", a="NRST", b="GND", normally="open"),))
+    subject = Subjects(board(networks=(network,))).of("node")[0]
+    bounce = Spread(low=0.005, nominal=0.0075, high=0.01, unit="s")
+    project = Project(parts={"SW1": PartFacts(place=PLACE, set={"bounce": 0.0075}, spreads={"bounce": bounce})})
+    asking = rule(given={"bounce": "ask"}, given_units={"bounce": "s"}, limits=(limit(name="bounce"),))
+    assert look_up("bounce", asking, subject, board(), project) == Found(value=bounce, origin='[part."SW1"]')
+    assert resolve(asking, subject, board(), project).bounds[0].strict == 0.01
 
 
 def test_a_name_goes_before_a_glob() -> None:
