@@ -98,8 +98,9 @@ def solve(shape: Shape, ohms: Array, farads: Array) -> Modes:
     columns = layout(shape).columns
     sizes = _sizes(columns, farads)
     root = factor(*_conductances(shape, siemens), _node_capacitance(shape, columns, sizes))
-    rows = orthogonalise(_rows(columns, sizes, root), len(columns))
-    stores, vectors = rows[:, : len(columns)], rows[:, len(columns) :]
+    own = _own(shape, columns, sizes)
+    rows = orthogonalise(_rows(columns, sizes, root, own), len(columns))
+    stores, vectors = rows[:, : len(columns)], _vectors(rows, sizes, own)
     decays = np.einsum("kmc,kmc->kc", stores, stores)
     instant = _instant(shape, columns, sizes)
     if instant is not None:
@@ -157,14 +158,36 @@ def _node_capacitance(shape: Shape, columns: Sequence[Column], sizes: Array) -> 
     return total
 
 
-def _rows(columns: Sequence[Column], sizes: Array, root: Array) -> Array:
-    """Y A sqrt(c), one column per merged capacitor, and Y beside it. (n, column + node, case)"""
-    rows = np.empty((len(root), len(columns) + len(root), root.shape[2]))
-    rows[:, len(columns) :] = root
+def _own(shape: Shape, columns: Sequence[Column], sizes: Array) -> list[int | None]:
+    """For each free node the column of its capacitor to held terminals, where it has one in every case."""
+    own: list[int | None] = [None] * shape.free
+    for index, column in enumerate(columns):
+        if column.other is None and (sizes[index] > 0.0).all():
+            own[column.node] = index
+    return own
+
+
+def _rows(columns: Sequence[Column], sizes: Array, root: Array, own: list[int | None]) -> Array:
+    """Y A sqrt(c), one column per merged capacitor, and beside it Y for the nodes without a column of their own."""
+    apart = [node for node, index in enumerate(own) if index is None]
+    rows = np.empty((len(root), len(columns) + len(apart), root.shape[2]))
+    rows[:, len(columns) :] = root[:, apart]
     for index, column in enumerate(columns):
         voltage = root[:, column.node] if column.other is None else root[:, column.node] - root[:, column.other]
         np.multiply(voltage, np.sqrt(sizes[index]), out=rows[:, index])
     return rows
+
+
+def _vectors(rows: Array, sizes: Array, own: list[int | None]) -> Array:
+    """U Y from the rotated rows: a node's own column is its voltage times the root of its capacitance. (n, node, case)"""
+    vectors = np.empty((len(rows), len(own), rows.shape[2]))
+    apart = len(sizes)
+    for node, index in enumerate(own):
+        if index is None:
+            vectors[:, node], apart = rows[:, apart], apart + 1
+        else:
+            np.divide(rows[:, index], np.sqrt(sizes[index]), out=vectors[:, node])
+    return vectors
 
 
 def _instant(shape: Shape, columns: Sequence[Column], sizes: Array) -> Flags | None:
