@@ -57,4 +57,4 @@ def _below(scene: Scene, event: Transient, name: str, top: str) -> bool:
 
 
 def _not_falling(wave: Waveform) -> bool:
-    return len({volts for _, volts in wave.points}) == 1 or wave.before == ()
+    return wave.before == () or all(volts == wave.before for _, volts in wave.points)

@@ -28,11 +28,14 @@ def most(structure: Structure, cases: Array) -> Array:
 
 
 def of_states(structure: Structure, low: Array, high: Array) -> Theory:
-    """T1 where a single DC state decides; where no resistor is in between, the signs of its sources too."""
-    states = len(structure.states) * (2 if structure.earlier else 1)
-    if states != 1 or ("transient", 1.0) in structure.options:
+    """T1 where a single DC state decides; capacitances matter in a transient only."""
+    if ("transient", 1.0) in structure.options:
         return unproved(structure, low, high)
-    return Theory(signs=unproved(structure, low, high).signs, vertices=True)
+    slopes = Slopes([0] * len(low))
+    forms = [*structure.ohms, *(form for _, form in structure.amps), *(structure.earlier or ((), ()))[1]]
+    slopes.add(columns([*forms, *(form for state in structure.states for form in state), structure.rating or ()]), None)
+    states = len(structure.states) * (2 if structure.earlier else 1)
+    return slopes.theory(vertices=states == 1)
 
 
 def with_capacitance(structure: Structure, low: Array, high: Array) -> Theory:

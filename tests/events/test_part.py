@@ -1,0 +1,88 @@
+"""Questions about capacitors and resistors, posed on small boards."""
+
+import pytest
+
+from rcrules.events import Unmeasurable
+from tests.events.boards import Bench, bench
+
+EXACT = '[defaults.resistor]\ntolerance = "0 %"\n[defaults.capacitor]\ntolerance = "0 %"\nrated-voltage = "10 V"\n'
+SUPPLIES = '[supply."+5V"]\nvoltage = "5 V +/- 10 %"\n[supply."+3V3"]\nvoltage = "3.3 V"\n'
+
+
+def board(project: str = SUPPLIES + EXACT) -> Bench:
+    """C1 at +5V, C2 between +5V and +3V3, C3 at a divider's tap, C4 from a driven net."""
+    nets = """
+        +5V: U2.3/VI/power_in C1.1 C2.1 R1.1
+        +3V3: U2.1/VO/power_out C2.2 U1.3/VDD/power_in
+        TAP: R1.2 R2.1 C3.1 U1.1/AIN0/input
+        IN: J1.1 R3.1
+        N: R3.2 C4.1 U1.4/AIN1/input
+        GND: U2.2/GND/power_in C1.2 R2.2 C3.2 C4.2 J1.2 U1.2/GND/power_in
+    """
+    parts = "C1 10u, C2 1u, R1 10k, R2 10k, C3 100n, R3 1k, C4 100n, J1 IN, U1 QX7301, U2 QX3300"
+    return bench(parts, nets, project)
+
+
+def test_a_decoupling_capacitor_takes_the_whole_supply():
+    found = board().measure("C1", "applied_voltage")
+    assert (found.low, found.nominal, found.high, found.proved) == (4.5, 5.0, 5.5, True)
+    assert board().measure("C1", "voltage_ratio").high == pytest.approx(0.55)
+
+
+def test_between_two_supplies_either_may_be_off():
+    assert board().measure("C2", "applied_voltage").nominal == pytest.approx(5.0)
+    assert board().measure("C2", "applied_voltage", extreme="least").nominal == pytest.approx(0.0)
+
+
+def test_a_divider_takes_its_part_away():
+    found = board().measure("C3", "applied_voltage")
+    assert found.nominal == pytest.approx(2.5)
+    assert found.proved
+
+
+def test_charge_and_energy_are_those_at_the_greatest_voltage():
+    assert board().measure("C1", "stored_charge").nominal == pytest.approx(50e-6)
+    assert board().measure("C1", "stored_energy").nominal == pytest.approx(125e-6)
+
+
+def test_a_driven_net_of_unknown_swing_is_asked_for():
+    with pytest.raises(Unmeasurable) as caught:
+        board().pose("C4", "applied_voltage")
+    assert caught.value.ask == '[net."IN"] swing = "…"'
+    swung = board(SUPPLIES + EXACT + '[net."IN"]\nswing = "0 V .. 2 V"\n')
+    assert swung.measure("C4", "applied_voltage").nominal == pytest.approx(2.0)
+
+
+def test_a_rating_that_is_not_known_is_asked_for():
+    bare = board(SUPPLIES + EXACT.replace('rated-voltage = "10 V"\n', ""))
+    with pytest.raises(Unmeasurable) as caught:
+        bare.pose("C1", "voltage_ratio")
+    assert caught.value.ask == '[part."C1"] rated-voltage = "…"'
+
+
+def test_the_first_current_of_a_capacitor_is_volts_over_ohms():
+    found = board().measure("C3", "peak_current", event="power-up")
+    assert found.nominal == pytest.approx(5.0 / 10e3)
+    assert board().measure("C1", "peak_current", event="power-up").nominal == float("inf")
+
+
+def test_a_ramped_supply_charges_its_capacitor_with_a_steady_current():
+    ramped = board(SUPPLIES.replace("10 %", "0 %").replace('5 V +/- 0 %"', '5 V"\nrise = "1 ms"') + EXACT)
+    assert ramped.measure("C1", "peak_current", event="power-up").nominal == pytest.approx(10e-6 * 5.0 / 1e-3)
+
+
+def test_power_of_a_divider():
+    assert board().measure("R1", "power").nominal == pytest.approx(2.5**2 / 10e3)
+
+
+def test_a_coupling_capacitor_is_followed_through_the_transient():
+    """C1 from a stepped net into a divider at 2.5 V: it takes the whole step at first, then the difference."""
+    nets = """
+        +5V: U2.1/VO/power_out R1.1 U1.3/VDD/power_in
+        IN: J1.1 C1.1
+        B: C1.2 R1.2 R2.1 U1.1/AIN0/input
+        GND: U2.2/GND/power_in J1.2 R2.2 U1.2/GND/power_in
+    """
+    project = '[supply."+5V"]\nvoltage = "5 V"\n[net."IN"]\nswing = "0 V .. 4 V"\n' + EXACT
+    found = bench("R1 10k, R2 10k, C1 1u, J1 IN, U1 QX7301, U2 QX5000", nets, project)
+    assert found.measure("C1", "applied_voltage").nominal == pytest.approx(4.0)
