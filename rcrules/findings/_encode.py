@@ -6,7 +6,7 @@ list stands on a line of its own, so that two documents compare line by line.
 
 import json
 import math
-from dataclasses import fields
+from dataclasses import fields, replace
 from typing import Any, Final
 
 from rcrules.errors import Mistake, Place, UserMistake
@@ -32,6 +32,7 @@ _NUMBERS: Final = frozenset(
     )
 )
 _CASES: Final = frozenset(("low_case", "high_case", "margin_case"))
+_ENCODER: Final = json.JSONEncoder(ensure_ascii=False, allow_nan=False)
 _INFINITE: Final = {"inf": math.inf, "-inf": -math.inf}
 
 
@@ -62,7 +63,20 @@ def loads(text: str, name: str = "<saved>") -> Document:
 
 def settled(document: Document) -> Document:
     """The document as it reads after saving: numbers at 12 significant digits, plain lists and dictionaries."""
-    return loads(dumps(document))
+    return Document(**{item.name: _settled(getattr(document, item.name)) for item in fields(Document)})
+
+
+def _settled(value: Any) -> Any:
+    match value:
+        case float():
+            return _rounded(value)
+        case dict():
+            return {str(key): _settled(item) for key, item in value.items()}
+        case list() | tuple():
+            return [_settled(item) for item in value]
+        case Finding() | Quantity():
+            return replace(value, **{item.name: _settled(getattr(value, item.name)) for item in fields(value)})
+    return value
 
 
 def _block(value: Any) -> str:
@@ -73,7 +87,7 @@ def _block(value: Any) -> str:
 
 
 def _line(value: Any) -> str:
-    return json.dumps(_plain(value), ensure_ascii=False, allow_nan=False)
+    return _ENCODER.encode(_plain(value))
 
 
 def _plain(value: Any) -> Any:
@@ -98,7 +112,12 @@ def _number(value: float) -> float | str | None:
         return None
     if math.isinf(value):
         return "inf" if value > 0 else "-inf"
-    return float(f"{value:.12g}") + 0.0
+    return _rounded(value)
+
+
+def _rounded(value: float) -> float:
+    """At 12 significant digits, without a negative zero; infinities stay, not-a-number is always the same object."""
+    return math.nan if math.isnan(value) else float(f"{value:.12g}") + 0.0
 
 
 def _parsed(text: str, name: str) -> Json:

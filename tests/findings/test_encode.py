@@ -64,3 +64,10 @@ def test_negative_zero_is_zero() -> None:
 def test_what_is_no_saved_document_is_refused(text: str, message: str) -> None:
     with pytest.raises(UserMistake, match=message):
         loads(text, "old.json")
+
+
+def test_a_settled_document_is_what_reads_back() -> None:
+    measured = replace(finding().measured, low=1 / 3, nominal=math.nan, high=math.inf)
+    document = replace(DOCUMENT, findings=[finding(measured=measured, margin=2 / 3, margin_case={"R1": -0.0})])
+    assert settled(document) != document
+    assert settled(document) == loads(dumps(document))
