@@ -6,9 +6,11 @@ from dataclasses import dataclass
 
 from rcrules.design import natural
 from rcrules.events._bench import Bench
+from rcrules.events._bias import most_across
 from rcrules.events._circuit import ZERO, Arm, Circuit
+from rcrules.events._sources import Sources
 from rcrules.events._table import LEAST_OHMS, Table
-from rcrules.networks import Network
+from rcrules.networks import Branch, Network
 from rcrules.problems import Form
 from rcrules.quantities import Spread
 
@@ -31,7 +33,8 @@ def build(bench: Bench, network: Network, table: Table, first: Sequence[str], *,
     """
     circuit = Circuit(free=list(network.free))
     circuit.hold(ZERO)
-    wires = [_of_part(bench, circuit, table, item.ref, item.kind, item.a, item.b) for item in network.branches]
+    volts = most_across(Sources(bench=bench, table=table), network.branches, network.free)
+    wires = [_of_part(bench, circuit, table, item, volts) for item in network.branches]
     for joint in network.held:
         wires += _source_resistance(bench, circuit, table, joint)
     for joint in network.free:
@@ -54,10 +57,10 @@ def terminal_of(bench: Bench, circuit: Circuit, joint: str) -> str:
     return circuit.hold(joint, joint)
 
 
-def _of_part(bench: Bench, circuit: Circuit, table: Table, ref: str, kind: str, a: str, b: str) -> Wire:
-    part = bench.board.parts[ref]
-    ends = terminal_of(bench, circuit, a), terminal_of(bench, circuit, b)
-    return Wire(ref=ref, kind=kind, a=ends[0], b=ends[1], value=lambda: table.part(part))
+def _of_part(bench: Bench, circuit: Circuit, table: Table, branch: Branch, volts: float | None) -> Wire:
+    part = bench.board.parts[branch.ref]
+    ends = terminal_of(bench, circuit, branch.a), terminal_of(bench, circuit, branch.b)
+    return Wire(ref=branch.ref, kind=branch.kind, a=ends[0], b=ends[1], value=lambda: table.part(part, volts))
 
 
 def _source_resistance(bench: Bench, circuit: Circuit, table: Table, joint: str) -> list[Wire]:

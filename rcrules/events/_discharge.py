@@ -5,6 +5,7 @@ from dataclasses import dataclass, replace
 
 from rcrules.engine import Shape
 from rcrules.events._bench import Bench
+from rcrules.events._bias import spanned
 from rcrules.events._bleed import Wires, bleeders
 from rcrules.events._circuit import ZERO, Arm, Circuit
 from rcrules.events._levels import Leveller
@@ -53,8 +54,9 @@ def _falling(case: _Case, circuit: Circuit) -> Structure:
     """Supply nets are free; before the event each hangs on its source."""
     circuit.free = case.wires.order(case.ends)
     parts = case.bench.board.parts
+    volts = spanned(case.sources, (name for name in circuit.free if case.sources.kind(name) == "supply"))
     circuit.arms = [
-        Arm(ref=item.ref, kind=item.kind, a=item.a, b=item.b, value=case.table.part(parts[item.ref]))
+        Arm(ref=item.ref, kind=item.kind, a=item.a, b=item.b, value=case.table.part(parts[item.ref], volts))
         for item in case.wires.branches
     ]
     pinned = [name for name in circuit.free if case.sources.kind(name) == "supply"]

@@ -1,16 +1,17 @@
 """A question about a node: its network, its event and its levels in numbers."""
 
-from collections.abc import Mapping, Sequence
+from collections.abc import Mapping
 from dataclasses import dataclass, replace
 
 from rcrules.events._bench import Bench
 from rcrules.events._build import build, terminal_of
-from rcrules.events._circuit import Arm, Circuit
+from rcrules.events._circuit import Circuit
 from rcrules.events._diodes import check_diodes
 from rcrules.events._levels import Leveller
 from rcrules.events._options import OptionValue, levels_of, plain_of
 from rcrules.events._rest import at_rest
 from rcrules.events._sources import PROJECT, Sources
+from rcrules.events._structure import structure_of
 from rcrules.events._table import Table
 from rcrules.events._transients import Scene, Transient, transient
 from rcrules.events._unmeasurable import Unmeasurable
@@ -41,7 +42,9 @@ def pose_node(bench: Bench, node: Node, measure: Measure, options: Mapping[str, 
     scene = Scene(bench=bench, network=network, circuit=circuit, sources=sources, joint=node.joint, unit=relative)
     found = transient(scene, event)
     check_diodes(scene, found)
-    structure = replace(_structure(circuit, found), at=circuit.terminal(node.joint), options=plain_of(measure, options))
+    structure = replace(
+        structure_of(circuit, found), at=circuit.terminal(node.joint), options=plain_of(measure, options)
+    )
     structure = replace(structure, rising=_rises(scene, found, structure, table))
     forms = tuple((name, leveller.form(name, level, rising=structure.rising)) for name, level in levels.items())
     reference = _reference(scene, found, str(options.get("from", "event")))
@@ -54,30 +57,6 @@ def _hold_followed(bench: Bench, circuit: Circuit, leveller: Leveller, levels: M
         for rising in (True, False) if level.edge else (True,):
             for joint in leveller.nets(level, rising=rising):
                 terminal_of(bench, circuit, joint)
-
-
-def _structure(circuit: Circuit, event: Transient) -> Structure:
-    _check_paths(circuit, event.after)
-    earlier = None
-    if event.before != event.after and not event.empty:
-        _check_paths(circuit, event.before)
-        ohms = (*circuit.values("resistor"), *(arm.value for arm in event.before))
-        earlier = (circuit.shape(event.before), ohms)
-    return Structure(
-        shape=circuit.shape(event.after),
-        ohms=(*circuit.values("resistor"), *(arm.value for arm in event.after)),
-        farads=circuit.values("capacitor"),
-        waveforms=tuple(event.waves[name] for name in circuit.held),
-        amps=circuit.amps(),
-        earlier=earlier,
-        empty=event.empty,
-    )
-
-
-def _check_paths(circuit: Circuit, contacts: Sequence[Arm]) -> None:
-    floating = circuit.floating(contacts)
-    if floating:
-        raise Unmeasurable(f"no resistive path from {floating[0]} to a source or ground")
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

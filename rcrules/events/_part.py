@@ -1,7 +1,7 @@
 """A question about a capacitor or resistor: the DC states of all sources around it, or an event."""
 
 from collections.abc import Mapping, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from itertools import product
 
 from rcrules.events._bench import Bench
@@ -10,6 +10,7 @@ from rcrules.events._circuit import ZERO, Arm, Circuit
 from rcrules.events._contacts import arm
 from rcrules.events._options import OptionValue, plain_of
 from rcrules.events._sources import Sources, moved
+from rcrules.events._structure import structure_of
 from rcrules.events._table import Table
 from rcrules.events._transients import Scene, transient
 from rcrules.events._unmeasurable import Unmeasurable
@@ -81,21 +82,8 @@ def pose_part_event(bench: Bench, part: RatedPart, measure: Measure, options: Ma
     circuit, sources, ends = _circuit(bench, place, table)
     watched = next((end for end in ends if end in circuit.free), ends[0])
     scene = Scene(bench=bench, network=place.network, circuit=circuit, sources=sources, joint=watched, unit=False)
-    event = transient(scene, str(options["event"]))
-    _check(circuit, place, event.after)
-    earlier = None
-    if event.before != event.after and not event.empty:
-        _check(circuit, place, event.before)
-        ohms = (*circuit.values("resistor"), *(item.value for item in event.before))
-        earlier = (circuit.shape(event.before), ohms)
-    structure = Structure(
-        shape=circuit.shape(event.after),
-        ohms=(*circuit.values("resistor"), *(item.value for item in event.after)),
-        farads=circuit.values("capacitor"),
-        waveforms=tuple(event.waves[name] for name in circuit.held),
-        amps=circuit.amps(),
-        earlier=earlier,
-        empty=event.empty,
+    structure = replace(
+        structure_of(circuit, transient(scene, str(options["event"]))),
         at=circuit.terminal(ends[0]),
         against=circuit.terminal(ends[1]),
         element=_element(circuit, part),

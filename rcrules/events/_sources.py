@@ -34,6 +34,12 @@ class Sources:
         held = self.bench.held(joint)
         return given or (held.voltage if held else None)
 
+    def most(self, joint: str) -> Spread | None:
+        """Everything that a supply or driven net may be at, what is assumed included; None = not known."""
+        found = self.volts(joint)
+        known = self.kind(joint) != "supply" or self.bench.supply_fact(joint, lambda facts: facts.voltage) is not None
+        return found if found is None or known else _widened(found)
+
     def supply(self, joint: str, note: str = "") -> Form:
         """The column of a supply's voltage. Raises Unmeasurable where it is not known.
 

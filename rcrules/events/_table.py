@@ -3,7 +3,7 @@
 from dataclasses import dataclass, field
 
 from rcrules.events._unmeasurable import Unmeasurable
-from rcrules.parts import RatedPart, Unknown
+from rcrules.parts import RatedPart, Unknown, at_bias
 from rcrules.problems import Form, Parameter, column, constant
 from rcrules.quantities import Spread
 
@@ -18,12 +18,17 @@ class Table:
     parameters: list[Parameter] = field(default_factory=list)
     forms: dict[str, Form] = field(default_factory=dict)
 
-    def part(self, part: RatedPart) -> Form:
-        """The column of a resistor's or capacitor's value. Raises Unmeasurable where it is not known."""
+    def part(self, part: RatedPart, volts: float | None = None) -> Form:
+        """The column of a resistor's or capacitor's value. Raises Unmeasurable where it is not known.
+
+        volts: the most that a capacitor sees [V]; its bias loss is taken up to there, or at its worst if None.
+        """
         if part.ref in self.forms:
             return self.forms[part.ref]
         if isinstance(part.value, Unknown):
             raise Unmeasurable(f"value of {part.ref}: {part.value.why}", f'[part."{part.ref}"] value = "…"')
+        if volts is not None:
+            part = at_bias(part, volts)
         (low, nominal, high), (given_low, _, given_high) = part.bounds(), part.bounds(given_only=True)
         least = LEAST_OHMS if part.kind == "resistor" else 0.0
         assumed = [share for share in part.shares if not share.given]
