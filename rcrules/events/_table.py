@@ -25,8 +25,10 @@ class Table:
         """
         if part.ref in self.forms:
             return self.forms[part.ref]
-        if isinstance(part.value, Unknown):
-            raise Unmeasurable(f"value of {part.ref}: {part.value.why}", f'[part."{part.ref}"] value = "…"')
+        known = part.value
+        if isinstance(known, Unknown):
+            raise Unmeasurable(f"value of {part.ref}: {known.why}", f'[part."{part.ref}"] value = "…"')
+        origin = part.value.origin
         if volts is not None:
             part = at_bias(part, volts)
         (low, nominal, high), (given_low, _, given_high) = part.bounds(), part.bounds(given_only=True)
@@ -41,7 +43,7 @@ class Table:
                 high=max(high, least),
                 given_low=max(given_low, least),
                 given_high=max(given_high, least),
-                origin=", ".join(share.origin for share in part.shares) or part.value.origin,
+                origin=", ".join(share.origin for share in part.shares) or origin,
                 assumed=tuple(share.origin for share in assumed),
                 ask=next((share.ask for share in assumed if share.ask), ""),
             )
