@@ -47,12 +47,15 @@ class Subjects:
 
     def __init__(self, board: Board) -> None:
         self._board = board
+        self._parts: dict[str, tuple[Subject, ...]] = {}
 
     def of(self, kind: str) -> tuple[Subject, ...]:
         """Subjects of a kind of measure, in the board's order; none for a kind that is not judged."""
         if kind == "node":
             return self._node_subjects
-        return self._part_subjects(kind) if kind in ("capacitor", "resistor") else ()
+        if kind not in self._parts:
+            self._parts[kind] = self._part_subjects(kind) if kind in ("capacitor", "resistor") else ()
+        return self._parts[kind]
 
     @cached_property
     def _node_subjects(self) -> tuple[Subject, ...]:
