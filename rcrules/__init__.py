@@ -1,3 +1,7 @@
-"""Exports in, findings out: readers, design, parts, networks, events, problems, engine, measures, rulebook, checks, findings, reports."""
+"""The rooms in the order of the flow.
+
+readers, design, parts, networks, events, problems, measures, rulebook, checks, inventory, findings, reports;
+``pipeline`` is the whole flow on one page, and ``engine`` below ``problems`` knows numbers only.
+"""
 
 __version__ = "0.1.0"

@@ -47,7 +47,7 @@ class Mistake:
         return "\n".join(lines)
 
 
-class UserMistake(Exception):
+class UserMistake(Exception):  # noqa: N818 - the word of the trade here; it is no error of ours
     """Inputs, rules or usage are wrong; the command prints the mistakes and exits 2."""
 
     def __init__(self, *mistakes: Mistake) -> None:

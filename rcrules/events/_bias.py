@@ -12,13 +12,18 @@ from rcrules.events._sources import Sources
 from rcrules.networks import Branch
 
 
-def most_across(sources: Sources, branches: Sequence[Branch], free: Iterable[str]) -> float | None:
-    """Highest voltage across any capacitor of the branches [V]; None = not bounded, or a source is not known."""
+def most_across(
+    sources: Sources, branches: Sequence[Branch], free: Iterable[str], further: Iterable[str] = ()
+) -> float | None:
+    """Highest voltage across any capacitor of the branches [V]; None = not bounded, or a source is not known.
+
+    further: held joints that pins pull to.
+    """
     inside = set(free)
     capacitors = [item for item in branches if item.kind == "capacitor"]
     ends = [[joint for joint in (item.a, item.b) if joint not in inside] for item in capacitors]
     held = {joint for item in branches for joint in (item.a, item.b) if joint not in inside}
-    span = spanned(sources, held)
+    span = spanned(sources, held.union(further))
     if span is None or not all(ends):
         return None
     calm = len(capacitors) == 1 or all(sources.kind(joint) == "ground" for joints in ends for joint in joints)

@@ -3,6 +3,7 @@
 from collections import deque
 from collections.abc import Callable, Sequence
 from dataclasses import dataclass
+from functools import cache
 
 from rcrules.design import natural
 from rcrules.events._bench import Bench
@@ -33,8 +34,8 @@ def build(bench: Bench, network: Network, table: Table, first: Sequence[str], *,
     """
     circuit = Circuit(free=list(network.free))
     circuit.hold(ZERO)
-    volts = most_across(Sources(bench=bench, table=table), network.branches, network.free)
-    wires = [_of_part(bench, circuit, table, item, volts) for item in network.branches]
+    most = cache(lambda: _most(bench, circuit, table, network))
+    wires = [_of_part(bench, circuit, table, item, most) for item in network.branches]
     for joint in network.held:
         wires += _source_resistance(bench, circuit, table, joint)
     for joint in network.free:
@@ -57,10 +58,16 @@ def terminal_of(bench: Bench, circuit: Circuit, joint: str) -> str:
     return circuit.hold(joint, joint)
 
 
-def _of_part(bench: Bench, circuit: Circuit, table: Table, branch: Branch, volts: float | None) -> Wire:
+def _most(bench: Bench, circuit: Circuit, table: Table, network: Network) -> float | None:
+    """The most that a capacitor of the network sees [V], nets that pins pull to included."""
+    sources = Sources(bench=bench, table=table)
+    return most_across(sources, network.branches, network.free, circuit.joints.values())
+
+
+def _of_part(bench: Bench, circuit: Circuit, table: Table, branch: Branch, most: Callable[[], float | None]) -> Wire:
     part = bench.board.parts[branch.ref]
     ends = terminal_of(bench, circuit, branch.a), terminal_of(bench, circuit, branch.b)
-    return Wire(ref=branch.ref, kind=branch.kind, a=ends[0], b=ends[1], value=lambda: table.part(part, volts))
+    return Wire(ref=branch.ref, kind=branch.kind, a=ends[0], b=ends[1], value=lambda: table.part(part, most()))
 
 
 def _source_resistance(bench: Bench, circuit: Circuit, table: Table, joint: str) -> list[Wire]:

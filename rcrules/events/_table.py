@@ -25,9 +25,8 @@ class Table:
         """
         if part.ref in self.forms:
             return self.forms[part.ref]
-        known = part.value
-        if isinstance(known, Unknown):
-            raise Unmeasurable(f"value of {part.ref}: {known.why}", f'[part."{part.ref}"] value = "…"')
+        if isinstance(part.value, Unknown):
+            raise Unmeasurable(f"value of {part.ref}: {part.value.why}", f'[part."{part.ref}"] value = "…"')
         origin = part.value.origin
         if volts is not None:
             part = at_bias(part, volts)

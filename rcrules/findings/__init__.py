@@ -1,4 +1,4 @@
-"""Step 10: the one document that every report is made from."""
+"""Step 11: the one document that every report is made from."""
 
 from rcrules.findings._document import Document, Finding, Json, Quantity
 from rcrules.findings._encode import SCHEMA, dumps, loads, settled

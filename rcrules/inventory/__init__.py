@@ -1,4 +1,4 @@
-"""Step 8b: a recognised board in; its parts, held nets, networks and quantities as the document holds them out."""
+"""Step 10: a recognised board in; its parts, held nets, networks and quantities as the document holds them out."""
 
 from rcrules.inventory._assumptions import Key, assumptions_of, listed_assumptions
 from rcrules.inventory._board import board_counts, inputs, problems

@@ -106,6 +106,7 @@ class Board:
     """Net name -> joint: the name of the net that stands for all nets joined at DC."""
     networks: tuple[Network, ...]
     coverage: Mapping[str, str]
-    """Reference of each resistor and capacitor -> ``not_fitted unreadable network decoupling elsewhere`` (before rules)."""
+    """Reference of each resistor and capacitor -> its class before rules: ``not_fitted``, ``unreadable``, ``network``,
+    ``decoupling``, ``elsewhere``."""
     reasons: Mapping[str, str]
     """Reference -> why it is in that class, where that needs saying."""

@@ -1,4 +1,4 @@
-"""Step 11: the document in, a text out; one report per file."""
+"""Step 12: the document in, a text out; one report per file."""
 
 from functools import cache
 
