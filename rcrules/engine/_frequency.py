@@ -18,7 +18,7 @@ BEYOND = 1e3
 """How far beyond the outermost poles is scanned."""
 NOTHING = 1e-8
 """Share of the greatest gain at and below which a pass band has no gain."""
-STEPS = 60
+STEPS = 48
 """Of the search between two scanned frequencies."""
 
 

@@ -12,6 +12,10 @@ from rcrules.engine._shape import Array, Flags
 
 BLOCK = 2**16
 """Numbers worked on at a time, so that they stay in the cache."""
+MANY = 8
+"""Rows from which a dense eigensolver goes first."""
+SIMILAR = 1e-10
+"""Least ratio of squared row lengths for that."""
 SWEEPS = 60
 """More than ever needed; ten serve for a hundred rows."""
 ORTHOGONAL = 4e-16
@@ -23,16 +27,25 @@ LAST = 1e-9
 def orthogonalise(rows: Array, width: int) -> Array:
     """Rotate rows until their first ``width`` columns are orthogonal, longest row first.
 
-    rows: (n, columns, case), overwritten; columns from ``width`` on are carried along.
-    Returns the rows.
+    rows: (n, columns, case), may be overwritten; columns from ``width`` on are carried along.
+    Returns the rows; those that are zero in these columns in every case come last.
     """
-    if len(rows) < 2 or width == 0:
+    live = rows[:, :width].any(axis=(1, 2))
+    if not live.all():
+        return np.concatenate([orthogonalise(rows[live], width), rows[~live]])
+    if len(rows) < 2:
         return rows
     cases, block = rows.shape[2], max(64, BLOCK // (len(rows) * rows.shape[1]))
-    if cases > 2 * block:
-        for start in range(0, cases, block):
-            rows[:, :, start : start + block] = orthogonalise(rows[:, :, start : start + block].copy(), width)
-        return rows
+    if cases <= 2 * block:
+        return _swept(rows, width)
+    for start in range(0, cases, block):
+        rows[:, :, start : start + block] = _swept(rows[:, :, start : start + block].copy(), width)
+    return rows
+
+
+def _swept(rows: Array, width: int) -> Array:
+    """Sweeps over all pairs of rows, until no case is left that is not orthogonal."""
+    rows, cases = _prepared(rows, width) if len(rows) >= MANY else rows, rows.shape[2]
     for _ in range(SWEEPS):
         active = np.zeros(cases, dtype=bool)
         for first, second in _schedule(len(rows)):
@@ -40,9 +53,24 @@ def orthogonalise(rows: Array, width: int) -> Array:
         if not active.any():
             break
         if cases > 64 and 2 * np.count_nonzero(active) < cases:
-            rows[:, :, active] = orthogonalise(rows[:, :, active], width)
+            rows[:, :, active] = _swept(rows[:, :, active], width)
             break
     return rows
+
+
+def _prepared(rows: Array, width: int) -> Array:
+    """Many rows of similar length turned by a dense eigensolver first, which leaves a sweep or two.
+
+    Its rounding is that of the longest row, so rows of very different lengths are left as they are.
+    """
+    stored = np.ascontiguousarray(rows[:, :width].transpose(2, 0, 1))
+    products = stored @ stored.transpose(0, 2, 1)
+    lengths = np.diagonal(products, axis1=1, axis2=2)
+    if not (lengths.min(axis=1) > SIMILAR * lengths.max(axis=1)).all():
+        return rows
+    turns = np.linalg.eigh(products)[1][:, :, ::-1]
+    turned: Array = turns.transpose(0, 2, 1) @ rows.transpose(2, 0, 1)
+    return np.ascontiguousarray(turned.transpose(1, 2, 0))
 
 
 @lru_cache(maxsize=256)

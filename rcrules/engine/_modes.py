@@ -102,7 +102,7 @@ def solve(shape: Shape, ohms: Array, farads: Array) -> Modes:
     rows = orthogonalise(_rows(columns, sizes, root, own), len(columns))
     stores, vectors = rows[:, : len(columns)], _vectors(rows, sizes, own)
     decays = np.einsum("kmc,kmc->kc", stores, stores)
-    instant = _instant(shape, columns, sizes)
+    instant = _instant(shape, columns, sizes, decays)
     if instant is not None:
         decays, stores = np.where(instant, 0.0, decays), np.where(instant[:, None], 0.0, stores)
     rates = 1.0 / (decays if instant is None else np.where(instant, 1.0, decays))
@@ -179,7 +179,7 @@ def _rows(columns: Sequence[Column], sizes: Array, root: Array, own: list[int | 
 
 
 def _vectors(rows: Array, sizes: Array, own: list[int | None]) -> Array:
-    """U Y from the rotated rows: a node's own column is its voltage times the root of its capacitance. (n, node, case)"""
+    """U Y from the rotated rows: a node's own column is its voltage times the root of its size. (n, node, case)"""
     vectors = np.empty((len(rows), len(own), rows.shape[2]))
     apart = len(sizes)
     for node, index in enumerate(own):
@@ -190,20 +190,26 @@ def _vectors(rows: Array, sizes: Array, own: list[int | None]) -> Array:
     return vectors
 
 
-def _instant(shape: Shape, columns: Sequence[Column], sizes: Array) -> Flags | None:
-    """Which time constants, slowest first, are exactly zero, by which capacitors are there. (n, case); None = none"""
-    present = sizes > 0.0
-    if present.all():
-        count = len(floating_groups(shape.free, columns))
-        late = np.arange(shape.free)[:, None] >= shape.free - count
-        return np.repeat(late, sizes.shape[1], axis=1) if count else None
-    patterns, which = np.unique(present, axis=1, return_inverse=True)
-    counts = np.array([_zeros(shape, columns, pattern) for pattern in patterns.T], dtype=np.intp)
-    found: Flags = np.arange(shape.free)[:, None] >= shape.free - counts[which.reshape(-1)]
+def _instant(shape: Shape, columns: Sequence[Column], sizes: Array, decays: Array) -> Flags | None:
+    """Which time constants are exactly zero, by which capacitors are there, or too small. (n, case); None = none
+
+    decays: time constants, slowest first. [s], (n, case)
+    """
+    patterns, which = _patterns(sizes > 0.0)
+    counts = np.array([_zeros(shape, columns, pattern) for pattern in patterns], dtype=np.intp)
+    found: Flags = (np.arange(shape.free)[:, None] >= shape.free - counts[which]) | (decays == 0.0)
     return found if found.any() else None
 
 
-def _zeros(shape: Shape, columns: Sequence[Column], present: Indices | Flags) -> int:
+def _patterns(present: Flags) -> tuple[Flags, Indices]:
+    """The different columns of the flags (column, case) as rows, and which of them each case has."""
+    if present.all():
+        return np.ones((1, len(present)), dtype=bool), np.zeros(present.shape[1], dtype=np.intp)
+    patterns, which = np.unique(present, axis=1, return_inverse=True)
+    return patterns.T, which.reshape(-1)
+
+
+def _zeros(shape: Shape, columns: Sequence[Column], present: Flags) -> int:
     """Number of time constants that are zero when only these columns are there."""
     kept = [column for column, there in zip(columns, present, strict=True) if there]
     return len(floating_groups(shape.free, kept))

@@ -16,6 +16,10 @@ Terms = list[tuple[int, Array]]
 """Rows and their weights. [1], (case,) or (1,)"""
 
 
+ROUNDING = 1e-15
+"""Share of its parts at and below which a sum counts as zero."""
+
+
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Drive:
     """Sources of a network over time, piecewise linear; a step between two pieces is a jump."""
@@ -85,7 +89,7 @@ class Response:
     def _piece(self, piece: Piece, shares: Array, held: Terms, offset: Array | float) -> ExponentialSum:
         """One piece of the signal; modes without time constant follow their target."""
         instant, rates = self.modes.instant, self.modes.rates
-        start = (shares * piece.state).sum(axis=0) + _summed(held, piece.volts) - offset
+        start = _start(shares * piece.state, _summed(held, piece.volts) - offset, offset)
         amps = shares * (piece.state - piece.target)
         if instant is not None:
             amps[instant] = 0.0
@@ -97,6 +101,18 @@ class Response:
             slope += np.where(instant, ramps, 0.0).sum(axis=0)
             ramps[instant] = 0.0
         return ExponentialSum(start=start, slope=slope, amps=amps, rates=rates, ramps=ramps)
+
+
+def _start(parts: Array, others: Array | float, offset: Array | float) -> Array:
+    """Sum of all parts, exactly 0 where rounding has decided its sign.
+
+    parts: of the modes. [V], (n, case)
+    others: of the held terminals, less the offset. [V], (case,)
+    offset: [V], (case,)
+    """
+    start = np.asarray(parts.sum(axis=0) + others)
+    size = np.abs(parts).sum(axis=0) + np.abs(others) + np.abs(offset)
+    return np.where(np.abs(start) <= ROUNDING * size, 0.0, start)
 
 
 def _summed(terms: Terms, values: Array) -> Array | float:

@@ -181,3 +181,23 @@ def test_time_constants_over_tolerances_need_two_cases():
     found = bounds(evaluate, low, 0.5 * (low + high), high, [1] * 4, False)
     every = evaluate(np.array(list(itertools.product(*zip(low, high, strict=True)))))
     assert (found.low, found.high) == (every.min(), every.max())
+
+
+@pytest.mark.parametrize("seed", range(4))
+def test_searched_delays_reach_the_worst_of_all_vertices(seed):
+    """Trees with side branches, ±20 %, ten numbers of unknown sign: as late and as early as any of 1 024 vertices."""
+    rng = np.random.default_rng(seed)
+    resistors = tuple((node, int(rng.integers(node)) if node else 5) for node in range(5))
+    shape = Shape(5, 2, resistors, tuple((node, 6) for node in range(5)))
+    nominal = np.concatenate([10.0 ** rng.uniform(3.0, 4.0, 5), 10.0 ** rng.uniform(-9.0, -8.0, 5)])
+    node = at_node(shape, int(rng.integers(5)))
+
+    def evaluate(x):
+        response = solve(shape, x[:, :5], x[:, 5:]).respond(step(shape, [1.0, 0.0], len(x)), np.zeros((len(x), 5)))
+        return response.observe(node, 0.05).first_crossing(1.0)
+
+    found = bounds(evaluate, 0.8 * nominal, nominal, 1.2 * nominal, [None] * 10, False)
+    every = evaluate(nominal * np.array(list(itertools.product((0.8, 1.2), repeat=10))))
+    assert found.high >= every.max() * (1.0 - 1e-9)
+    assert found.low <= every.min() * (1.0 + 1e-9)
+    assert evaluate(np.array([found.high_at]))[0] == approx(found.high, rel=1e-9)

@@ -109,3 +109,31 @@ def test_energy_in_is_energy_stored_and_energy_turned_to_heat(seed):
     heat = sum(response.observe(weight, 0.0).energy()[0] / ohm for weight, ohm in zip(weights, ohms[0], strict=True))
     volts = [response.observe(at_node(shape, a) - at_node(shape, b), 0.0).initial()[0] for a, b in shape.capacitors]
     assert heat == approx(0.5 * float(farads[0] @ np.square(volts)), rel=1e-9)
+
+
+@quick
+@given(seeds, st.floats(1.01, 10.0))
+def test_every_time_constant_rises_with_every_resistance_and_capacitance(seed, factor):
+    """The min-max principle, for any topology."""
+    rng, shape, ohms, farads = network(seed)
+    before = solve(shape, ohms, farads).taus
+    row = (ohms, farads)[len(farads[0]) > 0 and rng.random() < 0.5]
+    row[0, int(rng.integers(row.shape[1]))] *= factor
+    assert np.all(solve(shape, ohms, farads).taus >= before * (1.0 - 1e-13))
+
+
+@quick
+@given(seeds, st.floats(1.01, 10.0))
+def test_without_bridging_capacitors_a_grounded_capacitor_delays(seed, factor):
+    """A cooperative system: from rest, one source stepping up, a first crossing is later with a larger capacitor."""
+    rng = np.random.default_rng(seed)
+    shape = random_shape(rng, int(rng.integers(1, 6)))
+    shape = Shape(shape.free, 2, shape.resistors, tuple((node, shape.free + 1) for node in range(shape.free)))
+    ohms, farads = random_values(rng, shape, 2, 4.0)
+    ohms[1], farads[1] = ohms[0], farads[0]
+    farads[1, int(rng.integers(shape.free))] *= factor
+    modes, node = solve(shape, ohms, farads), at_node(shape, int(rng.integers(shape.free)))
+    level = rng.uniform(0.0, 1.0) * modes.steady(np.array([[1.0, 0.0]] * 2), np.zeros((2, shape.free)))[0] @ node[:-2]
+    signal = modes.respond(step(shape, [1.0, 0.0], 2), np.zeros((2, shape.free))).observe(node, level)
+    times = signal.first_crossing(1.0)
+    assert times[1] >= times[0] * (1.0 - 1e-12)

@@ -142,7 +142,43 @@ def test_fifteen_decades_against_ninety_digits():
             assert found == approx(wanted, rel=0.0, abs=1e-9 * np.abs(volts).max())
 
 
-def test_an_ideal_oracle_is_in_use():
+def test_coupling_capacitors_alone_against_ninety_digits():
+    """Groups of nodes that only capacitors between them join: as many zeros as groups, the rest to 1e-13."""
+    rng = np.random.default_rng(16)
+    for _ in range(40):
+        free = int(rng.integers(3, 7))
+        pairs = tuple(tuple(int(k) for k in rng.choice(free, 2, replace=False)) for _ in range(free - 1))
+        shape = Shape(free, 2, random_shape(rng, free).resistors, pairs)
+        ohms, farads = random_values(rng, shape, 1, 12.0)
+        wanted = [float(tau) for tau in exact(shape, ohms[0], farads[0]).taus]
+        assert solve(shape, ohms, farads).taus[0] == approx(wanted, rel=1e-13, abs=0.0)
+
+
+def test_many_nodes_against_ninety_digits():
+    """Ten nodes, values over 4 and over 12 decades: with and without the dense eigensolver before."""
+    rng = np.random.default_rng(17)
+    for decades in (4.0, 12.0):
+        shape = random_shape(rng, 10)
+        ohms, farads = random_values(rng, shape, 1, decades)
+        truth, modes = exact(shape, ohms[0], farads[0]), solve(shape, ohms, farads)
+        assert modes.taus[0] == approx([float(tau) for tau in truth.taus], rel=1e-10, abs=0.0)
+        response = modes.respond(step(shape, [1.0, 0.0]), np.zeros((1, len(shape.capacitors))))
+        t = modes.taus[0, 0]
+        found = [response.observe(at_node(shape, k), 0.0).at(np.array([t]))[0] for k in range(10)]
+        assert found == approx([float(v) for v in truth.step([0.0, 0.0], [1.0, 0.0], t)], abs=1e-9)
+
+
+def test_a_case_comes_out_of_a_batch_as_it_does_alone():
+    """A batch of thousands goes through in blocks."""
+    rng = np.random.default_rng(18)
+    shape = random_shape(rng, 5)
+    ohms, farads = random_values(rng, shape, 5000, 8.0)
+    together = solve(shape, ohms, farads).taus
+    for case in range(0, 5000, 617):
+        assert together[case] == approx(solve(shape, ohms[case : case + 1], farads[case : case + 1]).taus[0], rel=1e-14)
+
+
+def test_the_oracle_knows_the_golden_ratio():
     """The oracle itself: the golden ratio of the two-section ladder in forty digits."""
     with mp.workdps(60):
         taus = exact(ladder(2), [1.0, 1.0], [1.0, 1.0]).taus
