@@ -1,8 +1,7 @@
 """Step 2: exports in, one design out."""
 
 from rcrules.design._build import build
-from rcrules.design._graph import graph
 from rcrules.design._model import Design, Fact, Net, Part, Pin
 from rcrules.design._order import natural
 
-__all__ = ["Design", "Fact", "Net", "Part", "Pin", "build", "graph", "natural"]
+__all__ = ["Design", "Fact", "Net", "Part", "Pin", "build", "natural"]

@@ -44,20 +44,23 @@ def _said(exports: Sequence[Export], pins: Mapping[str, Sequence[Pin]]) -> dict[
 
 
 def _pins(exports: Sequence[Export]) -> tuple[dict[str, list[Pin]], list[Remark]]:
-    """Pins by reference in natural order; of two netlists the first one to connect a pin decides."""
-    found: dict[str, dict[tuple[str, str], Pin]] = defaultdict(dict)
+    """Pins by reference in natural order; of two netlists the first one to connect a pin decides.
+
+    Two pads of one number, listed twice in a netlist, are two connections.
+    """
+    found: dict[str, list[Pin]] = defaultdict(list)
     remarks: list[Remark] = []
     for export in exports:
-        known = {(ref, number): net for ref, own in found.items() for number, net in own}
+        known = {(pin.ref, pin.number): pin for own in found.values() for pin in own}
         for pin in export.pins:
             elsewhere = known.get((pin.ref, pin.number))
             if elsewhere is None:
-                found[pin.ref].setdefault((pin.number, pin.net), _pin(pin))
-            elif elsewhere != pin.net:
-                other = found[pin.ref][pin.number, elsewhere].place
-                text = f"pin {pin.number} of {pin.ref} is on {pin.net!r}; {elsewhere!r} of {other} stands"
+                found[pin.ref].append(_pin(pin))
+            elif elsewhere.net != pin.net:
+                stands = f"{elsewhere.net!r} of {elsewhere.place} stands"
+                text = f"pin {pin.number} of {pin.ref} is on {pin.net!r}; {stands}"
                 remarks.append(Remark(place=pin.place, text=text))
-    return {ref: sorted(own.values(), key=_pin_order) for ref, own in found.items()}, remarks
+    return {ref: sorted(own, key=_pin_order) for ref, own in found.items()}, remarks
 
 
 def _pin(pin: ExportPin) -> Pin:

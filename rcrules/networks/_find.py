@@ -19,23 +19,18 @@ def networks(draft: Draft) -> tuple[RawNetwork, ...]:
 
 def _components(draft: Draft) -> Iterator[list[str]]:
     """Sets of free joints connected by branches."""
-    seen: set[str] = set()
-    for start in draft.branches:
-        if start in seen or draft.held_joint(start) is not None:
-            continue
-        seen.add(start)
-        reached = [start]
-        for joint in reached:
-            new = dict.fromkeys(
-                far for far in _neighbours(draft, joint) if far not in seen and draft.held_joint(far) is None
-            )
-            seen.update(new)
-            reached.extend(new)
-        yield reached
+    import networkx as nx
 
-
-def _neighbours(draft: Draft, joint: str) -> Iterator[str]:
-    return (item.b if item.a == joint else item.a for item in draft.branches_at(joint))
+    graph: nx.Graph[str] = nx.Graph()
+    graph.add_nodes_from(joint for joint in draft.branches if draft.held_joint(joint) is None)
+    graph.add_edges_from(
+        (joint, far)
+        for joint in list(graph)
+        for item in draft.branches_at(joint)
+        if (far := item.b if item.a == joint else item.a) in graph
+    )
+    for free in nx.connected_components(graph):
+        yield sorted(free, key=natural)
 
 
 def _network(draft: Draft, free: list[str]) -> RawNetwork:

@@ -131,3 +131,10 @@ def test_the_order_of_the_inputs_changes_nothing_that_is_decided() -> None:
 def test_natural_order_counts_runs_of_digits() -> None:
     names = ["R10", "R2", "r1", "R2A", "10", "9", "A1B10", "A1B9", ""]
     assert sorted(names, key=design.natural) == ["", "9", "10", "A1B9", "A1B10", "R2", "R2A", "R10", "r1"]
+
+
+def test_two_pads_of_one_number_are_two_connections():
+    """A netlist that lists a pin twice on its net means two pads."""
+    nets = '<net code="1" name="GND"><node ref="U1" pin="2"/><node ref="U1" pin="2"/></net>'
+    made = built(None, f'<export version="E"><components><comp ref="U1"/></components><nets>{nets}</nets></export>')
+    assert [pin.number for pin in made.nets["GND"].pins] == ["2", "2"]
