@@ -77,11 +77,10 @@ def search(low: Array, nominal: Array, high: Array, signs: Sequence[int | None],
     everywhere = len(unknown) <= (PROVABLE if vertices_prove else ALL_VERTICES)
     yield from best.ask(_first(box, unknown if everywhere else ()))
     proved = not len(unknown) or (vertices_prove and everywhere)
-    if not proved and not best.undefined():
-        if not everywhere:
-            yield from turn(best)
-        yield from scan(best)
-        yield from climb(best)
+    if not proved:
+        for part in (turn, scan, climb)[everywhere:]:
+            if not best.undefined():
+                yield from part(best)
     return _result(best, proved)
 
 

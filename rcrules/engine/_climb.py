@@ -91,7 +91,7 @@ def _at(box: Box, case: Array, shares: Array) -> Array:
 
 
 def _way(climber: Climber, shares: Array, ends: Array, heights: Array) -> Array:
-    """Conjugate direction (Polak, Ribière), as long as one step; 0 in numbers that press against an end. (column,)"""
+    """Conjugate gradient direction, as long as one step; 0 in numbers that press against an end. (column,)"""
     if not np.isfinite(heights).all():
         return np.zeros_like(shares)
     slope = (heights[:, 1] - heights[:, 0]) / np.maximum(ends[:, 1] - ends[:, 0], 1e-300)

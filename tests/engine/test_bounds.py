@@ -201,3 +201,32 @@ def test_searched_delays_reach_the_worst_of_all_vertices(seed):
     assert found.high >= every.max() * (1.0 - 1e-9)
     assert found.low <= every.min() * (1.0 + 1e-9)
     assert evaluate(np.array([found.high_at]))[0] == approx(found.high, rel=1e-9)
+
+
+def test_a_wide_range_is_searched_by_ratio():
+    """x/(1 + x²)-like peak at 30 in 1 .. 10 000; the peak is found to ten digits."""
+    found = bounds(lambda x: x[:, 0] / (900.0 + x[:, 0] ** 2), [1.0], [5000.0], [1e4], [None], False)
+    assert found.high == approx(1.0 / 60.0, rel=1e-10)
+    assert found.high_at == approx((30.0,), rel=1e-3)
+
+
+def test_what_is_not_defined_ends_a_search_among_many_vertices():
+    evaluate, calls = counted(lambda x: np.where(x.sum(axis=1) > 8.0, np.nan, x.sum(axis=1)))
+    found = bounds(evaluate, np.zeros(10), np.full(10, 0.5), np.ones(10), [None] * 10, False)
+    assert np.isnan(found.low)
+    assert np.isnan(found.high)
+    assert len(calls) == 2
+
+
+def test_a_value_that_is_infinite_inside_ends_the_climb_of_its_side():
+    """Never reached somewhere inside: that is the highest; the lowest is still sought."""
+    found = bounds(
+        lambda x: np.where(np.abs(x[:, 0] - 0.5) < 0.2, np.inf, (x[:, 0] - 0.9) ** 2),
+        [0.0],
+        [1.0],
+        [1.0],
+        [None],
+        False,
+    )
+    assert found.high == np.inf
+    assert found.low == approx(0.0, abs=1e-9)

@@ -246,3 +246,21 @@ def test_energy_over_a_ramp_is_the_integral_of_its_square():
         e = np.exp(-seconds)
         hand = (seconds - 2.0 * (1.0 - e) + 0.5 * (1.0 - e * e) + 0.5 * (1.0 - e) ** 2) / seconds**2
         assert drop.energy() == approx([hand if wanted is None else wanted], rel=1e-12 if wanted is None else 1e-6)
+
+
+def test_a_ramp_between_held_terminals_alone_is_crossed():
+    """0 to 4 V in 2 s passes 1 V at 0.5 s; no free node is needed."""
+    shape = Shape(0, 2, (), ())
+    modes = solve(shape, np.zeros((1, 0)), np.zeros((1, 0)))
+    found = modes.respond(ramp(shape, [4.0, 0.0], 2.0), np.zeros((1, 0))).observe(np.array([1.0, -1.0]), 1.0)
+    assert found.first_crossing(1.0) == approx([0.5], rel=1e-14)
+
+
+def test_a_voltage_that_equals_the_level_but_for_rounding_is_at_the_level():
+    """0.1 + 0.2 is not 0.3 in binary: a divider held there has still reached 0.3 V."""
+    shape = Shape(0, 2, (), ())
+    modes = solve(shape, np.zeros((1, 0)), np.zeros((1, 0)))
+    found = modes.respond(step(shape, [0.1, 0.2]), np.zeros((1, 0))).observe(np.array([1.0, 1.0]), 0.3)
+    assert list(found.initial()) == [0.0]
+    assert list(found.first_crossing(1.0)) == [0.0]
+    assert list(found.first_crossing(-1.0)) == [0.0]
