@@ -1,6 +1,10 @@
-"""Options that all tests share."""
+"""Options and settings that all tests share."""
 
 import pytest
+from hypothesis import settings
+
+settings.register_profile("rcrules", deadline=None)  # a busy machine is no failure; speed is measured in tests/bench
+settings.load_profile("rcrules")
 
 
 def pytest_addoption(parser: pytest.Parser) -> None:

@@ -4,6 +4,7 @@ from difflib import get_close_matches
 from functools import lru_cache
 from typing import Final
 
+from rcrules.quantities._foreign import worth
 from rcrules.quantities._model import QuantityError
 
 PREFIXES: Final = {
@@ -160,8 +161,11 @@ def _simple(text: str, at: int) -> tuple[str, float]:
 
 def _expected(text: str) -> str:
     meant = _MISTAKEN.get(text.lower())
-    if meant is None and text:
-        same = [spelling for spelling in SPELLINGS if spelling.lower() == text.lower()]
-        near = same or get_close_matches(text, SPELLINGS, n=1, cutoff=0.6)
-        meant = near[0] if near else None
-    return f"did you mean '{meant}'?" if meant else "a unit such as V, ohm, uF or ms"
+    same = [spelling for spelling in SPELLINGS if text and spelling.lower() == text.lower()]
+    if meant or same:
+        return f"did you mean '{meant or same[0]}'?"
+    foreign = worth(text)
+    if foreign is not None:
+        return f"another unit: 1 {text} is {foreign[0]:.6g} {foreign[1]}"
+    near = get_close_matches(text, SPELLINGS, n=1, cutoff=0.6) if text else []
+    return f"did you mean '{near[0]}'?" if near else "a unit such as V, ohm, uF or ms"

@@ -80,3 +80,20 @@ def test_a_misspelt_unit_gets_a_guess(wrong, meant):
 
 def test_every_unit_has_a_name_in_words():
     assert {unit for unit, _ in SPELLINGS.values()} <= set(QUANTITY_NAMES)
+
+
+def test_a_unit_that_is_foreign_here_is_told_in_si():
+    """A week has 604 800 s by definition; one horsepower is 550 foot-pounds-force a second (745.7 W)."""
+    with pytest.raises(QuantityError) as week:
+        parse_unit("week")
+    assert week.value.expected == "another unit: 1 week is 604800 s"
+    with pytest.raises(QuantityError) as horsepower:
+        parse_unit("hp")
+    assert horsepower.value.expected == "another unit: 1 hp is 745.7 W"
+
+
+@pytest.mark.parametrize("text", ["9**9**8", "x" * 10_000, "furlong", "qqq", "__import__"])
+def test_no_expression_reaches_the_unit_library(text):
+    with pytest.raises(QuantityError) as caught:
+        parse_unit(text)
+    assert "another unit" not in caught.value.expected
