@@ -6,7 +6,7 @@ from dataclasses import dataclass, field
 
 from rcrules.engine import Shape
 from rcrules.events._unmeasurable import Unmeasurable
-from rcrules.problems import Form
+from rcrules.problems import Form, Names
 
 ZERO = "0 V"
 """The terminal that stands for all grounds."""
@@ -71,6 +71,16 @@ class Circuit:
         resistors = [(index[arm.a], index[arm.b]) for arm in (*self.of("resistor"), *further)]
         capacitors = [(index[arm.a], index[arm.b]) for arm in self.of("capacitor")]
         return Shape(len(self.free), len(self.held), tuple(resistors), tuple(capacitors))
+
+    def names(self, after: Iterable[Arm] = (), before: Iterable[Arm] = ()) -> Names:
+        """Names in the order of the shape, with further resistors after and before the event."""
+        own = [arm.ref for arm in self.of("resistor")]
+        return Names(
+            terminals=(*self.free, *self.held),
+            resistors=(*own, *(arm.ref for arm in after)),
+            capacitors=tuple(arm.ref for arm in self.of("capacitor")),
+            earlier=(*own, *(arm.ref for arm in before)),
+        )
 
     def floating(self, further: Iterable[Arm] = ()) -> list[str]:
         """Free terminals without a resistive path to a held one."""

@@ -16,7 +16,7 @@ from rcrules.events._table import Table
 from rcrules.events._unmeasurable import Unmeasurable
 from rcrules.measures import Measure
 from rcrules.parts import RatedPart
-from rcrules.problems import Form, Problem, Structure
+from rcrules.problems import Form, Names, Problem, Structure
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -47,7 +47,21 @@ def pose_discharge(bench: Bench, part: RatedPart, measure: Measure, options: Map
         raise Unmeasurable("a discharge is measured down to a fixed voltage")
     structure = _falling(case, circuit) if set(ends) & wires.live else _endless(case)
     level = leveller.form("to", to, rising=False)
-    return Problem(structure=replace(structure, levels=(("to", level),)), parameters=tuple(table.parameters))
+    return Problem(
+        structure=replace(structure, levels=(("to", level),)),
+        parameters=tuple(table.parameters),
+        names=_names(circuit, ends),
+    )
+
+
+def _names(circuit: Circuit, ends: tuple[str, str]) -> Names:
+    """Names of the merged circuit; of the two ends alone where nothing discharges the capacitor."""
+    if not circuit.arms:
+        return Names(terminals=ends, resistors=(), capacitors=())
+    merged: dict[tuple[str, ...], list[str]] = {}
+    for item in circuit.of("capacitor"):
+        merged.setdefault(tuple(sorted((item.a, item.b), key=circuit.terminal)), []).append(item.ref)
+    return replace(circuit.names(), capacitors=tuple(" + ".join(refs) for refs in merged.values()))
 
 
 def _falling(case: _Case, circuit: Circuit) -> Structure:

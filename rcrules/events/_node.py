@@ -48,7 +48,11 @@ def pose_node(bench: Bench, node: Node, measure: Measure, options: Mapping[str, 
     structure = replace(structure, rising=_rises(scene, found, structure, table))
     forms = tuple((name, leveller.form(name, level, rising=structure.rising)) for name, level in levels.items())
     reference = _reference(scene, found, str(options.get("from", "event")))
-    return Problem(structure=replace(structure, levels=forms, reference=reference), parameters=tuple(table.parameters))
+    return Problem(
+        structure=replace(structure, levels=forms, reference=reference),
+        parameters=tuple(table.parameters),
+        names=circuit.names(found.after, found.before),
+    )
 
 
 def _hold_followed(bench: Bench, circuit: Circuit, leveller: Leveller, levels: Mapping[str, Level]) -> None:

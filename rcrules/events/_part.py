@@ -73,7 +73,7 @@ def pose_states(bench: Bench, part: RatedPart, measure: Measure, options: Mappin
         states=states,
         options=(*plain_of(measure, options), ("transient", float(transient_matters)), ("signed", float(signed))),
     )
-    return Problem(structure=structure, parameters=tuple(table.parameters))
+    return Problem(structure=structure, parameters=tuple(table.parameters), names=circuit.names(before=closed))
 
 
 def pose_part_event(bench: Bench, part: RatedPart, measure: Measure, options: Mapping[str, OptionValue]) -> Problem:
@@ -82,14 +82,16 @@ def pose_part_event(bench: Bench, part: RatedPart, measure: Measure, options: Ma
     circuit, sources, ends = _circuit(bench, place, table)
     watched = next((end for end in ends if end in circuit.free), ends[0])
     scene = Scene(bench=bench, network=place.network, circuit=circuit, sources=sources, joint=watched, unit=False)
+    event = transient(scene, str(options["event"]))
     structure = replace(
-        structure_of(circuit, transient(scene, str(options["event"]))),
+        structure_of(circuit, event),
         at=circuit.terminal(ends[0]),
         against=circuit.terminal(ends[1]),
         element=_element(circuit, part),
         options=plain_of(measure, options),
     )
-    return Problem(structure=structure, parameters=tuple(table.parameters))
+    names = circuit.names(event.after, event.before)
+    return Problem(structure=structure, parameters=tuple(table.parameters), names=names)
 
 
 def _circuit(bench: Bench, place: Place, table: Table) -> tuple[Circuit, Sources, tuple[str, str]]:

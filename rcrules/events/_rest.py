@@ -52,7 +52,7 @@ def at_rest(bench: Bench, node: Node, measure: Measure, options: Mapping[str, Op
         structure = replace(
             structure, options=(*structure.options, ("source", source), ("passes", _passes(circuit, node)))
         )
-    return Problem(structure=structure, parameters=tuple(table.parameters))
+    return Problem(structure=structure, parameters=tuple(table.parameters), names=circuit.names(contacts))
 
 
 def _passes(circuit: Circuit, node: Node) -> str:

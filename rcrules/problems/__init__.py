@@ -2,11 +2,13 @@
 
 from rcrules.engine import Bounds
 from rcrules.problems._bounds import Failure, Quantity, Request, solve_bounds
+from rcrules.problems._rest import elastance, gain_at
 from rcrules.problems._solved import Solved, corner_omega, solved, steady_states
 from rcrules.problems._structure import (
     Array,
     Form,
     LevelForm,
+    Names,
     Parameter,
     Problem,
     Structure,
@@ -22,6 +24,7 @@ __all__ = [
     "Failure",
     "Form",
     "LevelForm",
+    "Names",
     "Parameter",
     "Problem",
     "Quantity",
@@ -32,7 +35,9 @@ __all__ = [
     "column",
     "constant",
     "corner_omega",
+    "elastance",
     "evaluate",
+    "gain_at",
     "solve_bounds",
     "solved",
     "steady_states",

@@ -131,11 +131,27 @@ class Structure:
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
+class Names:
+    """What the terminals and branches of a structure are called, in its order; for people, never for numbers."""
+
+    terminals: tuple[str, ...]
+    """Joints; the free ones first."""
+    resistors: tuple[str, ...]
+    """References, ``U3.NRST pull-up``, closed contacts."""
+    capacitors: tuple[str, ...]
+    """References; parallel ones that are one branch joined by `` + ``."""
+    earlier: tuple[str, ...] = ()
+    """Resistors of the shape before the event, where the structure has one."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
 class Problem:
     """A structure with its parameters; column i of the cases is parameters[i]."""
 
     structure: Structure
     parameters: tuple[Parameter, ...]
+    names: Names | None = None
+    """None where nobody asks how a number comes about."""
 
     def given_box(self) -> tuple[Array, Array, Array]:
         """The same over what the inputs give alone; assumed effects left out."""
