@@ -1,6 +1,5 @@
 """The case that makes the worst margin, in parts and their shares, the most influential first."""
 
-import math
 from collections.abc import Sequence
 from typing import Final
 
@@ -9,14 +8,10 @@ import numpy as np
 from rcrules.findings import Json
 from rcrules.measures import Measure
 from rcrules.networks import Board
-from rcrules.parts import RatedPart, Share
+from rcrules.parts import RatedPart, Share, apart
 from rcrules.problems import Parameter, Problem
 
 _TINY: Final = 1e-9
-_EXACT: Final = 1e-6
-"""Shares that make up a change agree with it to this."""
-_SHOWN: Final = 5e-5
-"""Least share that is told."""
 
 
 def worst_case(problem: Problem, case: Sequence[float], measure: Measure, board: Board) -> list[Json]:
@@ -57,19 +52,8 @@ def _row(item: Parameter, value: float, board: Board) -> Json:
 
 
 def _shares(part: RatedPart, relative: float) -> str:
-    """``tolerance -20 %, temperature -15 %``; '' where one share says it all, or the case lies between the ends.
-
-    The loss by bias depends on the voltage that the problem applies, so it is what the other shares leave.
-    """
-    moves = {share: share.low if relative < 0 else share.high for share in part.shares}
-    bias = next((share for share in moves if share.name == "bias"), None)
-    others = math.prod(1 + move for share, move in moves.items() if share is not bias)
-    left = (1 + relative) / others - 1
-    if abs(left) > _EXACT and (bias is None or not bias.low - _EXACT <= left <= max(bias.high, 0.0) + _EXACT):
-        return ""
-    if bias is not None:
-        moves[bias] = left
-    told = [f"{_name(share)} {100 * move:+.2g} %" for share, move in moves.items() if abs(move) >= _SHOWN]
+    """``tolerance -20 %, temperature -15 %``; '' where one share says it all, or the case lies between the ends."""
+    told = [f"{_name(share)} {100 * move:+.2g} %" for share, move in apart(part, relative)]
     return ", ".join(told) if len(told) > 1 else ""
 
 

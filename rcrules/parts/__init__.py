@@ -1,9 +1,10 @@
 """Step 3: design in, parts with kind, value, spread and ratings out."""
 
+from rcrules.parts._apart import apart
 from rcrules.parts._kinds import kind_of
 from rcrules.parts._model import Known, RatedPart, Share, Unknown
 from rcrules.parts._rate import rate
 from rcrules.parts._spread import at_bias
 from rcrules.parts._texts import ValueText, read_value
 
-__all__ = ["Known", "RatedPart", "Share", "Unknown", "ValueText", "at_bias", "kind_of", "rate", "read_value"]
+__all__ = ["Known", "RatedPart", "Share", "Unknown", "ValueText", "apart", "at_bias", "kind_of", "rate", "read_value"]
