@@ -4,6 +4,7 @@ from rcrules.parts._apart import apart
 from rcrules.parts._kinds import kind_of
 from rcrules.parts._model import Known, RatedPart, Share, Unknown
 from rcrules.parts._rate import rate
+from rcrules.parts._shares import ASSUMED_TEMPERATURE
 from rcrules.parts._spread import at_bias
 from rcrules.parts._texts import ValueText, read_value
 

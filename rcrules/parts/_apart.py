@@ -20,7 +20,8 @@ def apart(part: RatedPart, relative: float) -> tuple[tuple[Share, float], ...]:
     bias = next((share for share in moves if share.name == "bias"), None)
     others = math.prod(1 + move for share, move in moves.items() if share is not bias)
     left = (1 + relative) / others - 1
-    if abs(left) > _EXACT and (bias is None or not bias.low - _EXACT <= left <= max(bias.high, 0.0) + _EXACT):
+    least, most = (0.0, 0.0) if bias is None else (min(bias.low, 0.0), 0.0) if relative < 0 else (0.0, bias.high)
+    if not least - _EXACT <= left <= most + _EXACT:
         return ()
     if bias is not None:
         moves[bias] = left

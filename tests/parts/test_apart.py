@@ -11,7 +11,8 @@ def share(name: str, low: float, high: float) -> Share:
 
 
 SHARES = (share("tolerance", -0.2, 0.2), share("temperature", -0.15, 0.15), share("bias", -0.6, 0.0))
-PART = RatedPart(part=part("C7"), kind="capacitor", kind_why="", text="", value=Known(si=1e-5, origin=""), shares=SHARES)
+VALUE = Known(si=1e-5, origin="the test")
+PART = RatedPart(part=part("C7"), kind="capacitor", kind_why="", text="", value=VALUE, shares=SHARES)
 
 
 def moves(relative: float) -> dict[str, float]:
