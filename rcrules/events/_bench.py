@@ -1,13 +1,15 @@
 """A board as the posing of problems looks things up in it."""
 
 from collections import defaultdict
-from collections.abc import Callable
+from collections.abc import Callable, Hashable
 from dataclasses import dataclass
 from functools import cached_property, lru_cache
 from typing import TypeVar
 
 from rcrules.design import Pin
+from rcrules.events._circuit import Circuit
 from rcrules.events._facts import fact
+from rcrules.events._table import Table
 from rcrules.networks import Board, Branch, Held, Network, Node
 from rcrules.parts import RatedPart
 from rcrules.project import NetFacts, PinFacts, Project, SupplyFacts
@@ -21,6 +23,11 @@ class Bench:
 
     board: Board
     project: Project
+
+    @cached_property
+    def built(self) -> dict[Hashable, tuple[Circuit, Table]]:
+        """Circuits that were built so far, with their columns; never changed, only copied."""
+        return {}
 
     @cached_property
     def network_of_node(self) -> dict[int, Network]:

@@ -28,10 +28,23 @@ class Wire:
 
 
 def build(bench: Bench, network: Network, table: Table, first: Sequence[str], *, currents: bool = True) -> Circuit:
-    """The circuit of a network.
+    """The circuit of a network, built once for all questions about it that number its joints alike.
 
-    first: joints to be numbered first. currents: whether leakage of pins is drawn. Raises Unmeasurable.
+    table: empty, filled here. first: joints to be numbered first. currents: whether leakage of pins is drawn. Raises
+    Unmeasurable.
     """
+    joints = tuple(joint for joint in first if (held := bench.held(joint)) is None or held.kind != "ground")
+    drawn = currents and bool(bench.project.pins)
+    key = tuple(item.ref for item in network.branches), network.free, joints, drawn
+    if key not in bench.built:
+        own = Table()
+        bench.built[key] = _built(bench, network, own, joints, currents=drawn), own
+    circuit, filled = bench.built[key]
+    table.take(filled)
+    return circuit.copy()
+
+
+def _built(bench: Bench, network: Network, table: Table, first: Sequence[str], *, currents: bool) -> Circuit:
     circuit = Circuit(free=list(network.free))
     circuit.hold(ZERO)
     most = cache(lambda: _most(bench, circuit, table, network))
@@ -43,7 +56,7 @@ def build(bench: Bench, network: Network, table: Table, first: Sequence[str], *,
     circuit.free = _ordered(circuit.free, wires, first)
     for wire in sorted(wires, key=lambda wire: _rank(circuit, wire)):
         circuit.arms.append(Arm(ref=wire.ref, kind=wire.kind, a=wire.a, b=wire.b, value=wire.value()))
-    if currents and bench.project.pins:
+    if currents:
         circuit.draws = [item for joint in circuit.free for item in _leakages(bench, table, joint)]
     return circuit
 

@@ -51,6 +51,16 @@ class Circuit:
             self.joints[name] = joint
         return name
 
+    def copy(self) -> "Circuit":
+        """A circuit of its own with the same branches."""
+        return Circuit(
+            free=list(self.free),
+            held=list(self.held),
+            arms=list(self.arms),
+            draws=list(self.draws),
+            joints=dict(self.joints),
+        )
+
     def amps(self) -> tuple[tuple[int, Form], ...]:
         """Currents drawn, by terminal number."""
         return tuple((self.terminal(name), form) for name, form in self.draws)

@@ -18,6 +18,10 @@ class Table:
     parameters: list[Parameter] = field(default_factory=list)
     forms: dict[str, Form] = field(default_factory=dict)
 
+    def take(self, other: "Table") -> None:
+        """Fill an empty table with the columns of another."""
+        self.parameters, self.forms = list(other.parameters), dict(other.forms)
+
     def part(self, part: RatedPart, volts: float | None = None) -> Form:
         """The column of a resistor's or capacitor's value. Raises Unmeasurable where it is not known.
 
