@@ -8,13 +8,20 @@ from rcrules.events._build import build
 from rcrules.events._circuit import ZERO, Circuit
 from rcrules.events._contacts import switched
 from rcrules.events._options import OptionValue, plain_of
-from rcrules.events._sources import Sources, still
+from rcrules.events._sources import PROJECT, Sources, still
 from rcrules.events._table import Table
 from rcrules.events._transients import Scene, mover
 from rcrules.events._unmeasurable import Unmeasurable
 from rcrules.measures import Measure
 from rcrules.networks import Network, Node
+from rcrules.parts import ASSUMED_TEMPERATURE
 from rcrules.problems import Problem, Structure
+from rcrules.quantities import Spread
+
+KELVIN = 273.15
+"""0 °C [K]"""
+ROOM = 25.0
+"""[°C]"""
 
 
 def at_rest(bench: Bench, node: Node, measure: Measure, options: Mapping[str, OptionValue]) -> Problem:
@@ -39,6 +46,8 @@ def at_rest(bench: Bench, node: Node, measure: Measure, options: Mapping[str, Op
         at=0 if alike else circuit.terminal(node.joint),
         options=plain_of(measure, options),
     )
+    if measure.poses == "noise":
+        structure = replace(structure, options=(*structure.options, ("kelvin", _kelvin(bench, table))))
     if measure.poses == "transfer":
         scene = Scene(
             bench=bench,
@@ -53,6 +62,20 @@ def at_rest(bench: Bench, node: Node, measure: Measure, options: Mapping[str, Op
             structure, options=(*structure.options, ("source", source), ("passes", _passes(circuit, node)))
         )
     return Problem(structure=structure, parameters=tuple(table.parameters), names=circuit.names(contacts))
+
+
+def _kelvin(bench: Bench, table: Table) -> float:
+    """Number of the column of the temperature [K]."""
+    given = bench.project.temperature
+    low, high = (given.low, given.high) if given else ASSUMED_TEMPERATURE
+    nominal = given.nominal if given else ROOM
+    spread = Spread(low=low + KELVIN, nominal=nominal + KELVIN, high=high + KELVIN, unit="K")
+    if given is not None:
+        table.given("temperature", spread, PROJECT, always=True)
+    else:
+        text = f"temperature {low:g} to {high:g} °C"
+        table.assumed("temperature", spread, text, '[conditions] temperature = "…"')
+    return float(next(index for index, item in enumerate(table.parameters) if item.name == "temperature"))
 
 
 def _passes(circuit: Circuit, node: Node) -> str:

@@ -82,6 +82,6 @@ _CURRENT = "a current feeds it, not a voltage"
 def _side_by_side(here: Spot) -> str | None:
     """The one held joint that all resistors and capacitors lead to."""
     ends = {arm.far for arm in here.resistors + here.capacitors}
-    if len(ends) != 1 or not all(arm.fixed for arm in here.resistors):
+    if len(ends) != 1 or not here.capacitors or not all(arm.fixed for arm in here.resistors):
         return None
     return next(iter(ends))

@@ -19,6 +19,7 @@ from rcrules.networks._role_resets import power_on_delay, supply_filter
 from rcrules.networks._role_switching import debounce, snubber
 from rcrules.networks._role_words import arms_text, fed_text
 from rcrules.networks._spot import Spot, View
+from rcrules.project import match
 
 ORDER: Final[tuple[Callable[[View, Spot], Judged | None], ...]] = (
     oscillator,
@@ -64,12 +65,22 @@ def bridged_nodes(draft: Draft) -> tuple[Node, ...]:
 
 
 def _is_node(view: View, here: Spot) -> bool:
-    """A resistor and a capacitor at the joint, or a feedback resistor with its capacitor behind a small one."""
+    """A resistor and a capacitor (or wiring of a capacitance that the project gives) at the joint.
+
+    Or a feedback resistor with its capacitor behind a small one.
+    """
     if not here.resistors:
         return False
-    if here.capacitors:
+    if here.capacitors or _wired(view.draft, here.joint):
         return True
     return any(view.at(arm.far).capacitors for arm in view.stoppers(here)) and feedback(view, here) is not None
+
+
+def _wired(draft: Draft, joint: str) -> bool:
+    """Whether the project file gives the net a capacitance of its wiring."""
+    names = (joint, *draft.members.get(joint, ()))
+    given = (pattern for pattern, facts in draft.project.nets.items() if facts.wiring_capacitance is not None)
+    return any(match(pattern, name) for pattern in given for name in names)
 
 
 def _node(view: View, here: Spot) -> Node:

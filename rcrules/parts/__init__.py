@@ -8,4 +8,16 @@ from rcrules.parts._shares import ASSUMED_TEMPERATURE
 from rcrules.parts._spread import at_bias
 from rcrules.parts._texts import ValueText, read_value
 
-__all__ = ["Known", "RatedPart", "Share", "Unknown", "ValueText", "apart", "at_bias", "kind_of", "rate", "read_value"]
+__all__ = [
+    "ASSUMED_TEMPERATURE",
+    "Known",
+    "RatedPart",
+    "Share",
+    "Unknown",
+    "ValueText",
+    "apart",
+    "at_bias",
+    "kind_of",
+    "rate",
+    "read_value",
+]

@@ -8,6 +8,9 @@ from rcrules.engine import Shape, solve, transfer
 from rcrules.problems._solved import Solved
 from rcrules.problems._structure import Array, Structure
 
+LEAST = 1e-30
+"""Capacitance that stands for none [F]."""
+
 
 def gain_at(structure: Structure, cases: Array, omega: float) -> Array:
     """Magnitude of the transfer from the terminal in option ``source`` to the observed one [1] (case,).
@@ -35,7 +38,7 @@ def elastance(structure: Structure, cases: Array) -> Array:
     number = {terminal: index for index, terminal in enumerate(free)}
     kept = [index for index, pair in enumerate(shape.capacitors) if number.keys() & set(pair)]
     pairs = tuple((_end(a, number), _end(b, number)) for a, b in (shape.capacitors[index] for index in kept))
-    farads = Solved(structure=structure, cases=cases).farads[:, kept]
+    farads = np.maximum(Solved(structure=structure, cases=cases).farads[:, kept], LEAST)
     modes = solve(Shape(len(free), 1, pairs, ()), 1.0 / farads, np.zeros((len(cases), 0)))
     amps = np.zeros((len(cases), len(free)))
     amps[:, number[structure.at]] = -1.0
