@@ -23,7 +23,7 @@ ROLES: Final = (
     "decoupling",
     "other",
 )
-EVENTS: Final = ("power-up", "power-down", "press", "release", "step-up", "step-down")
+EVENTS: Final = ("power-up", "power-down", "press", "release", "step-up", "step-down", "sample")
 HELD_KINDS: Final = ("ground", "supply", "driven")
 CERTAINTIES: Final = ("sure", "unsure")
 SEVERITIES: Final = ("error", "warning", "note")

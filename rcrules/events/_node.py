@@ -10,6 +10,7 @@ from rcrules.events._diodes import check_diodes
 from rcrules.events._levels import Leveller
 from rcrules.events._options import OptionValue, levels_of, plain_of
 from rcrules.events._rest import at_rest
+from rcrules.events._sample import pose_sample
 from rcrules.events._sources import PROJECT, Sources
 from rcrules.events._structure import structure_of
 from rcrules.events._table import Table
@@ -27,6 +28,8 @@ def pose_node(bench: Bench, node: Node, measure: Measure, options: Mapping[str, 
     """The problem of a measure at a node. Raises Unmeasurable."""
     if node.active is not None:
         raise Unmeasurable(f"active network: {node.active}")
+    if measure.poses == "sample" and node.across is None:
+        return pose_sample(bench, node, measure, options)
     if measure.poses != "event" or node.across is not None:
         return at_rest(bench, node, measure, options)
     levels = levels_of(measure, options)

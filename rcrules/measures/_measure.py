@@ -45,8 +45,8 @@ class Measure:
     theory: Callable[[Structure, Array, Array], Theory]
     """Structure, lowest and highest of the columns -> what is proved."""
     options: Mapping[str, Option] = field(default_factory=dict)
-    poses: Literal["event", "network", "noise", "transfer", "states", "discharge"] = "event"
+    poses: Literal["event", "network", "noise", "sample", "transfer", "states", "discharge"] = "event"
     """What the structure is: a transient, the network at rest (for all its nodes, or at one with its temperature), a
-    transfer, DC states, supplies left open."""
+    node with a converter's sampling capacitor, a transfer, DC states, supplies left open."""
     scale_free: bool = False
     """True: a single source of unknown voltage does not matter, because the measure counts in parts of its own step."""

@@ -70,6 +70,8 @@ class Solved:
         charged = self.volts_before[:, ends[:, 0]] - self.volts_before[:, ends[:, 1]]
         if self.structure.empty:
             charged = np.zeros_like(charged)
+        for index, form in self.structure.charged:
+            charged[:, index] = evaluate(form, self.cases)
         return self.modes.respond(drive(self.structure, self.cases), charged)
 
     @cached_property

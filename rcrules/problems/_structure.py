@@ -100,6 +100,8 @@ class Structure:
     """Shape and ohms in the steady state before the event, where a contact changes it; None = the same."""
     pinned: tuple[tuple[int, Form], ...] = ()
     """Free terminals, and the voltage [V] at which a source held each of them until the event."""
+    charged: tuple[tuple[int, Form], ...] = ()
+    """Capacitors that something else charged before the event, and the voltage across each [V], first minus second."""
     empty: bool = False
     """True: all capacitors start at 0 V; False: from DC steady state with the sources at ``before``."""
     at: int = 0
