@@ -1,14 +1,20 @@
 """Packs and rules as the document holds them, and rules that met nothing."""
 
-from collections.abc import Collection, Mapping, Sequence
+from collections.abc import Collection, Iterator, Mapping, Sequence
 from pathlib import PurePath
 from typing import Final
 
 from rcrules.findings import Json
 from rcrules.inventory import place_json
-from rcrules.rulebook import Pack, Rule, sentence
+from rcrules.rulebook import Pack, Rule, Selection, facts_of, sentence
 
 _FILE_SUFFIX: Final = ".toml"
+_FACT_WORDS: Final = {
+    "rated_voltage": ("the rated voltage is", "a field of the BOM or [part]"),
+    "supply": ("the voltage of the supply is", "[supply]"),
+    "voltage": ("the voltage there is", "[supply] or [net]"),
+}
+"""Fact of a condition -> what is missing, and what would give it."""
 
 
 def packs(rules: Sequence[Rule], met: Mapping[str, int]) -> list[Json]:
@@ -41,16 +47,37 @@ def _pack(pack: Pack, rules: Sequence[Rule], met: Mapping[str, int]) -> Json:
 
 
 def unclear(rules: Sequence[Rule], counts: Mapping[str, int]) -> list[Json]:
-    """Rules that left subjects out because a fact is missing."""
+    """Rules that left subjects out because a fact is missing; rules of one pack that miss the same share a remark."""
+    together: dict[tuple[str, str, int, tuple[str, ...]], list[Rule]] = {}
+    for rule in rules:
+        if counts.get(rule.id):
+            key = (rule.pack.name, rule.measure.subject, counts[rule.id], _missing(rule))
+            together.setdefault(key, []).append(rule)
     return [
-        {
-            "place": place_json(rule.place),
-            "text": f"rule {rule.id} left out {counts[rule.id]} {rule.measure.subject}s: whether "
-            f"{rule.selection.when_text or 'its condition'} is not known there; the project file can give the voltages",
-        }
-        for rule in rules
-        if counts.get(rule.id)
+        {"place": {}, "text": _left_out(members, subject, number, missing)}
+        for (_, subject, number, missing), members in together.items()
     ]
+
+
+def _missing(rule: Rule) -> tuple[str, ...]:
+    """The facts that its conditions compare, without their ends: ``voltage``, ``rated_voltage``, ``supply``."""
+    return tuple(sorted({name.rpartition("_")[0] for name in _compared(rule.selection)}))
+
+
+def _compared(selection: Selection) -> Iterator[str]:
+    if selection.when is not None:
+        yield from facts_of(selection.when)
+    for item in (*selection.any_of, *selection.exclude):
+        yield from _compared(item)
+
+
+def _left_out(rules: Sequence[Rule], subject: str, number: int, missing: tuple[str, ...]) -> str:
+    """``voltage-within-rating leaves out 34 capacitors: their rated voltage is not known (…)``."""
+    names, verb = " and ".join(rule.id for rule in rules), "leaves out" if len(rules) == 1 else "each leave out"
+    known = " or ".join(_FACT_WORDS[name][0] for name in missing)
+    sources = " or ".join(_FACT_WORDS[name][1] for name in missing)
+    subjects = subject if number == 1 else f"{subject}s"
+    return f"{names} {verb} {number} {subjects}: {known} not known ({sources} can tell)"
 
 
 def unmet(rules: Sequence[Rule], met: Mapping[str, int], own: Collection[str]) -> list[Json]:

@@ -12,6 +12,8 @@ from rcrules.errors import Place
 from rcrules.readers import Export, Remark
 
 _SHOWN: Final = 12
+_TOLD_APART: Final = 3
+"""More contradictions between values share one remark."""
 _FOLDED: Final = str.maketrans({"\u00b5": "u", "\u03bc": "u", "\u2126": "r", "\u03c9": "r", "\u043a": "k", ",": "."})
 """Micro and ohm signs (lower case) and the Cyrillic letter for kilo, as Latin letters; the decimal comma as a point."""
 _SPLIT: Final = re.compile(r"[\s/;()_|]+|-(?=\D|$)")
@@ -38,11 +40,23 @@ def _values(parts: Mapping[str, Part], said: Mapping[str, Sequence[Said]]) -> It
             if _contradict(first.text, other.text):
                 groups[first.text, other.text].append((ref, first, other))
                 break
+    if len(groups) > _TOLD_APART:
+        yield _many([member for members in groups.values() for member in members])
+        return
     for (winner, loser), members in groups.items():
         refs = listed([ref for ref, _, _ in members])
         _, first, other = members[0]
         text = f"{refs}: {first.origin} {winner!r}, {other.origin} {loser!r} ({other.place}); the first is taken"
         yield Remark(place=first.place, text=text)
+
+
+def _many(members: Sequence[tuple[str, Fact, Fact]]) -> Remark:
+    """One remark for many contradictions, by reference."""
+    ordered = sorted(members, key=lambda member: natural(member[0]))
+    told = [f"{ref} {first.text!r} not {other.text!r}" for ref, first, other in ordered]
+    _, first, other = ordered[0]
+    text = f"{len(told)} parts: the {first.origin} is taken, not the {other.origin}: {', '.join(told)}"
+    return Remark(place=first.place, text=text)
 
 
 def _references(said: Mapping[str, Sequence[Said]], exports: Sequence[Export]) -> Iterator[Remark]:

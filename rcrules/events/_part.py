@@ -41,9 +41,18 @@ def place_of(bench: Bench, part: RatedPart) -> Place:
         raise Unmeasurable(f"{part.ref} does not lie between two nets")
     for joint in (found.a, found.b):
         if bench.held(joint) is None:
-            raise Unmeasurable(f"nothing holds {joint}")
+            raise _unheld(bench, joint)
     lone = Network(id="", branches=(found,), free=(), held=(found.a, found.b), nodes=())
     return Place(branch=found, network=lone)
+
+
+def _unheld(bench: Bench, joint: str) -> Unmeasurable:
+    """Why the voltage of a joint outside every network is not known, and the line that would give it."""
+    kinds = {pin.ref: bench.board.parts[pin.ref].kind for pin in bench.pins(joint) if pin.ref in bench.board.parts}
+    crystal = next((ref for ref, kind in kinds.items() if kind == "crystal"), None)
+    if crystal is not None:
+        return Unmeasurable(f"active network: crystal {crystal} oscillates with the part that drives it")
+    return Unmeasurable(f"what drives {joint} is not known", f'[net."{joint}"] swing = "…"')
 
 
 def pose_states(bench: Bench, part: RatedPart, measure: Measure, options: Mapping[str, OptionValue]) -> Problem:
@@ -52,11 +61,11 @@ def pose_states(bench: Bench, part: RatedPart, measure: Measure, options: Mappin
     circuit, sources, ends = _circuit(bench, place, table)
     closed = tuple(arm(bench, circuit, table, item) for item in place.network.contacts)
     for contacts in ((), closed) if closed else ((),):
-        _check(circuit, place, contacts)
+        check_paths(circuit, contacts)
     wants = str(options.get("extreme", "most"))
     signed = part.polarised and measure.name == "applied_voltage"
-    states = _states(circuit, sources, ends, least=wants == "least", signed=signed)
-    waves, transient_matters = _switched_on(circuit, sources)
+    states = states_of(circuit, sources, ends, least=wants == "least", signed=signed)
+    waves, transient_matters = switched_on(circuit, sources)
     ohms = circuit.values("resistor")
     structure = Structure(
         shape=circuit.shape(),
@@ -106,10 +115,10 @@ def _circuit(bench: Bench, place: Place, table: Table) -> tuple[Circuit, Sources
     return circuit, Sources(bench=bench, table=table), ends
 
 
-def _check(circuit: Circuit, place: Place, contacts: Sequence[Arm]) -> None:
+def check_paths(circuit: Circuit, contacts: Sequence[Arm]) -> None:
     floating = circuit.floating(contacts)
     if floating:
-        raise Unmeasurable(f"no resistive path from {floating[0]} to a source or ground around {place.branch.ref}")
+        raise Unmeasurable(f"no resistive path from {floating[0]} to a source or ground")
 
 
 def _element(circuit: Circuit, part: RatedPart) -> int:
@@ -126,7 +135,7 @@ def _rating(part: RatedPart, measure: Measure) -> Form | None:
     return constant(part.rated_voltage.si)
 
 
-def _ends(circuit: Circuit, sources: Sources, name: str) -> tuple[Form, Form]:
+def ends_of(circuit: Circuit, sources: Sources, name: str) -> tuple[Form, Form]:
     """Lowest and highest voltage of a held terminal over its states. Raises Unmeasurable where they are not known."""
     joint = circuit.joints.get(name)
     if joint is None:
@@ -138,11 +147,11 @@ def _ends(circuit: Circuit, sources: Sources, name: str) -> tuple[Form, Form]:
     return (volts, ()) if spread is not None and spread.nominal < 0.0 else ((), volts)
 
 
-def _states(
+def states_of(
     circuit: Circuit, sources: Sources, ends: tuple[str, str], *, least: bool, signed: bool
 ) -> tuple[tuple[Form, ...], ...]:
     """Every combination of lowest and highest; one where the other end is at 0 V and nothing is ever negative."""
-    levels = [_ends(circuit, sources, name) for name in circuit.held]
+    levels = [ends_of(circuit, sources, name) for name in circuit.held]
     spreads = [sources.volts(joint) for joint in circuit.joints.values()]
     positive = all(spread is not None and spread.low >= 0.0 for spread in spreads) and not circuit.draws
     if ZERO in ends and positive and (ends[1] == ZERO or not signed):
@@ -152,11 +161,11 @@ def _states(
     return tuple(dict.fromkeys(product(*levels)))
 
 
-def _switched_on(circuit: Circuit, sources: Sources) -> tuple[tuple[Waveform, ...], bool]:
+def switched_on(circuit: Circuit, sources: Sources) -> tuple[tuple[Waveform, ...], bool]:
     """All sources from 0 V to their highest at once, and whether a capacitor lets a voltage go beyond its DC states."""
     waves, bridging = [], False
     for name in circuit.held:
-        _, high = _ends(circuit, sources, name)
+        _, high = ends_of(circuit, sources, name)
         waves.append(moved((), high))
     for item in circuit.of("capacitor"):
         held = [end for end in (item.a, item.b) if end != ZERO and end in circuit.held]

@@ -57,7 +57,7 @@ class Sources:
             return self.table.assumed(joint, given, note, rise, given=given) if note else self._given(joint, given)
         if held is None or held.voltage is None:
             raise Unmeasurable(f"voltage of {joint} is not known", ask)
-        told = f"{joint} is {held.voltage.nominal:g} V ±{SPREAD_ASSUMED:.0%} by its name or pins"
+        told = f"{joint} is {held.voltage.nominal:g} V ±{100 * SPREAD_ASSUMED:g} % by its name or pins"
         return self.table.assumed(joint, _widened(held.voltage), f"{told}; {note}" if note else told, ask)
 
     def at_rest(self, joint: str) -> Form:

@@ -30,7 +30,7 @@ class Table:
         if part.ref in self.forms:
             return self.forms[part.ref]
         if isinstance(part.value, Unknown):
-            raise Unmeasurable(f"value of {part.ref}: {part.value.why}", f'[part."{part.ref}"] value = "…"')
+            raise _unvalued(part, part.value)
         origin = part.value.origin
         if volts is not None:
             part = at_bias(part, volts)
@@ -104,3 +104,13 @@ class Table:
 
 def _at_least(value: float, least: float | None) -> float:
     return value if least is None else max(value, least)
+
+
+def _unvalued(part: RatedPart, value: Unknown) -> Unmeasurable:
+    """Why a part has no number to calculate with, and the line that would give one."""
+    if part.kind in ("resistor", "capacitor"):
+        return Unmeasurable(f"value of {part.ref}: {value.why}", f'[part."{part.ref}"] value = "…"')
+    what = "setting" if part.kind == "potentiometer" else "resistance"
+    reason = f"{part.ref} is a {part.kind.replace('-', ' ')}, and its {what} is not known"
+    ends = {pin.net for pin in part.part.pins}
+    return Unmeasurable(reason, f'[part."{part.ref}"] kind = "resistor"  value = "…"' if len(ends) <= 2 else "")

@@ -81,5 +81,5 @@ class Document:
     coverage: Json
     waivers: list[Json]
     problems: list[Json]
-    """Remarks about inputs: ``{"place": {...}, "text": …}``."""
+    """Remarks about inputs: ``{"place": {...}, "text": …}``; the place is empty where it is none of an input."""
     schema: int = 1

@@ -1,8 +1,11 @@
 """Counts of the board, its inputs and the remarks about them."""
 
 import re
+from collections.abc import Iterable, Iterator
 from pathlib import PurePath
+from typing import Final
 
+from rcrules.design import natural
 from rcrules.findings import Json
 from rcrules.inventory._parts import listed
 from rcrules.inventory._place import place_json, shown
@@ -10,6 +13,9 @@ from rcrules.networks import Board
 from rcrules.parts import RatedPart
 from rcrules.project import Notice, Project, unmatched
 from rcrules.readers import Export, Remark
+
+_SHOWN: Final = 12
+"""References in one remark."""
 
 
 def board_counts(board: Board, name: str | None) -> Json:
@@ -58,11 +64,21 @@ def problems(board: Board, project: Project) -> list[Json]:
     """Remarks about the inputs and the project file, and facts on which inputs disagree; by place."""
     said: tuple[Remark | Notice, ...] = (*board.design.remarks, *project.notices, *_unmatched(board, project))
     remarks: list[Json] = [{"place": place_json(item.place), "text": item.text} for item in said]
-    for part in listed(board):
-        remarks += [
-            {"place": place_json(part.part.place), "text": f"{part.ref}: {text}"} for text in part.disagreements
-        ]
+    remarks += _contradicted(listed(board))
     return sorted(remarks, key=lambda item: (item["place"]["file"], item["place"].get("line", 0), item["text"]))
+
+
+def _contradicted(rows: Iterable[RatedPart]) -> Iterator[Json]:
+    """Facts of parts on which inputs disagree; the same ones of many parts are told once."""
+    together: dict[tuple[str, ...], list[RatedPart]] = {}
+    for part in rows:
+        if part.disagreements:
+            together.setdefault(part.disagreements, []).append(part)
+    for texts, parts in together.items():
+        refs = sorted((part.ref for part in parts), key=natural)
+        more = f" and {len(refs) - _SHOWN} more" if len(refs) > _SHOWN else ""
+        text = f"{', '.join(refs[:_SHOWN])}{more}: {'; '.join(texts)}"
+        yield {"place": place_json(parts[0].part.place), "text": text}
 
 
 def _unmatched(board: Board, project: Project) -> list[Notice]:

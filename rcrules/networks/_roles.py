@@ -54,8 +54,8 @@ def nodes_of(draft: Draft, network: RawNetwork) -> tuple[Node, ...]:
 
 def _beside_loops(view: View, network: RawNetwork, nodes: tuple[Node, ...]) -> tuple[Node, ...]:
     """The nodes; those that lead to a control loop of their network are active as the loop is."""
-    found = ((joint, feedback(view, view.at(joint))) for joint in network.free if view.at(joint).pins)
-    loop = next((f"{judged.active} at {joint}" for joint, judged in found if judged is not None), None)
+    found = (feedback(view, view.at(joint)) for joint in network.free if view.at(joint).pins)
+    loop = next((judged.active for judged in found if judged is not None), None)
     return tuple(node if node.active or loop is None else replace(node, active=loop) for node in nodes)
 
 

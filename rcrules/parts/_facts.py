@@ -117,12 +117,20 @@ def tables_say(tables: Iterable[tuple[str, PartFacts]], attribute: str) -> Itera
 
 
 def disagreements(name: str, said: Sequence[Said[T]], unit: str) -> tuple[str, ...]:
-    """The facts that lost and differ from the winner, in words."""
+    """The facts that lost and differ from the winner, in words; where two value texts differ the design tells it."""
     if len(said) < 2:
         return ()
     won = _told(said[0].fact, unit)
-    lost = {_told(item.fact, unit): item.origin for item in reversed(said) if item.fact != said[0].fact}
-    return tuple(f"{name} {text} ({lost[text]}) against {won} ({said[0].origin})" for text in lost if text != won)
+    lost = {
+        _told(item.fact, unit): item.origin
+        for item in reversed(said)
+        if item.fact != said[0].fact and not _is_value_text(item, said[0])
+    }
+    return tuple(f"{name} {won} ({said[0].origin}) is taken, not {text} ({lost[text]})" for text in lost if text != won)
+
+
+def _is_value_text(*said: Said[T]) -> bool:
+    return all(item.origin in ("BOM value", "netlist value") for item in said)
 
 
 def _told(fact: object, unit: str) -> str:

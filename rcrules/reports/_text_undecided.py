@@ -6,6 +6,7 @@ from dataclasses import dataclass
 from typing import Final
 
 from rcrules.findings import Document, Finding
+from rcrules.reports._alike import merged
 from rcrules.reports._lines import Line
 from rcrules.reports._words import count, names_text, subjects_text
 
@@ -42,7 +43,7 @@ def _entries(findings: list[Finding]) -> list[_Entry]:
     for ask, own in by_ask.items():
         together.setdefault(ask if len(own) >= _OWN_ENTRY else _same_fact(ask), []).append(ask)
     entries = [_Entry(asks=asks, findings=[item for ask in asks for item in by_ask[ask]]) for asks in together.values()]
-    return sorted(entries, key=lambda entry: (not entry.asks[0], -len(entry.findings), entry.asks[0]))
+    return sorted(entries, key=lambda entry: (not entry.asks[0], -len(entry.findings) / len(entry.asks), entry.asks[0]))
 
 
 def _same_fact(ask: str) -> str:
@@ -64,17 +65,27 @@ def _heading(entry: _Entry) -> Line:
 
 def _details(findings: list[Finding], texts: Mapping[str, str], *, verbose: bool) -> list[Line]:
     """Rule, subjects and reason; findings of one rule and reason on one line, the largest groups first."""
-    together: dict[tuple[str, str], list[Finding]] = {}
-    for item in findings:
-        together.setdefault((item.rule, _reason(item)), []).append(item)
-    ordered = sorted(together.items(), key=lambda entry: -len(entry[1]))
+    ordered = sorted(_together(findings, verbose=verbose), key=lambda entry: -len(entry[2]))
     shown = ordered if verbose else ordered[:_SHOWN_REASONS]
     limit = len(findings) if verbose else _SHOWN_SUBJECTS
     lines: list[Line] = [
-        (_INDENT, f"{rule}   {subjects_text(group, texts, limit=limit)}   {reason}") for (rule, reason), group in shown
+        (_INDENT, f"{rule}   {subjects_text(group, texts, limit=limit)}   {reason}") for rule, reason, group in shown
     ]
-    rest = sum(len(group) for _, group in ordered[len(shown) :])
+    rest = sum(len(group) for *_, group in ordered[len(shown) :])
     return [*lines, (_INDENT, f"and {rest} more (--verbose lists them)")] if rest else lines
+
+
+def _together(findings: list[Finding], *, verbose: bool) -> list[tuple[str, str, list[Finding]]]:
+    """Rule, reason, findings; where not everything is asked for, reasons that differ only by a name count as one."""
+    found: list[tuple[str, str, list[Finding]]] = []
+    for rule in dict.fromkeys(item.rule for item in findings):
+        by_reason: dict[str, list[Finding]] = {}
+        for item in findings:
+            if item.rule == rule:
+                by_reason.setdefault(_reason(item), []).append(item)
+        reasons = [(reason, [reason]) for reason in by_reason] if verbose else merged(by_reason)
+        found += [(rule, told, [item for reason in own for item in by_reason[reason]]) for told, own in reasons]
+    return found
 
 
 def _reason(finding: Finding) -> str:

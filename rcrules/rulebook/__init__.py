@@ -1,6 +1,6 @@
 """Step 8: rule packs in TOML in, compiled rules out."""
 
-from rcrules.rulebook._condition import FACTS, holds
+from rcrules.rulebook._condition import FACTS, facts_of, holds
 from rcrules.rulebook._model import Comparison, Condition, Example, Junction, Limit, OptionValue, Pack, Rule, Selection
 from rcrules.rulebook._packs import compile_pack, load, packs, packs_folder, shipped
 from rcrules.rulebook._sentence import sentence
@@ -19,6 +19,7 @@ __all__ = [
     "Selection",
     "check_settings",
     "compile_pack",
+    "facts_of",
     "holds",
     "load",
     "packs",

@@ -48,6 +48,15 @@ def holds(condition: Condition, facts: Mapping[str, float]) -> bool | None:
     return None if None in found else not decisive
 
 
+def facts_of(condition: Condition) -> Iterator[str]:
+    """Names of the facts that a condition compares."""
+    if isinstance(condition, Comparison):
+        yield from (side for side in (condition.left, condition.right) if isinstance(side, str))
+    else:
+        for term in condition.terms:
+            yield from facts_of(term)
+
+
 def _compare(condition: Comparison, facts: Mapping[str, float]) -> bool | None:
     left = facts.get(condition.left) if isinstance(condition.left, str) else condition.left
     right = facts.get(condition.right) if isinstance(condition.right, str) else condition.right

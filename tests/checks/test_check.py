@@ -103,6 +103,20 @@ def test_a_rule_of_the_team_that_meets_nothing_is_told(folder: Path) -> None:
     assert document.packs[0]["rules"][0]["met"] == 0
 
 
+def test_rules_that_miss_the_same_fact_say_so_in_one_remark(folder: Path) -> None:
+    """Without rules asked for, a condition on a fact that is not known leaves its subjects out."""
+    unrated = NETLIST.replace(" 16V", "").replace("+3V3", "VCC")
+    (folder / "board.xml").write_text(unrated)
+    remarks = [item for item in run(Job(inputs=("board.xml",))).problems if "not known" in item["text"]]
+    assert [item["text"] for item in remarks] == [
+        "voltage-within-rating leaves out 2 capacitors: the rated voltage is not known (a field of the BOM or [part] "
+        "can tell)",
+        "discharged-in-five-seconds and energy-above-ten-joules-is-known each leave out 2 capacitors: the voltage "
+        "there is not known ([supply] or [net] can tell)",
+    ]
+    assert all(item["place"] == {} for item in remarks)
+
+
 def test_one_cause_on_many_parts_is_one_group(folder: Path) -> None:
     twice = (
         NETLIST.replace('<comp ref="C2">', '<comp ref="C3"><value>100nF 10% 16V</value></comp><comp ref="C2">')

@@ -91,6 +91,13 @@ def test_the_same_contradiction_on_many_parts_is_told_once() -> None:
     assert remark.text.startswith("R1, R2, R3, R4, R5, R6, R7, R8, R9, R10, R11, R12 and 8 more: BOM value '2k'")
 
 
+def test_many_contradictions_share_a_remark() -> None:
+    components = "".join(f"<comp ref='R{number}'><value>{number}k</value></comp>" for number in range(1, 6))
+    rows = "".join(f"R{number},{number}1k\n" for number in range(1, 6))
+    (remark,) = built(f"Ref,Value\n{rows}", f"<export><components>{components}</components></export>").remarks
+    assert remark.text.startswith("5 parts: the BOM value is taken, not the netlist value: R1 '11k' not '1k', R2 '21k'")
+
+
 def test_files_of_different_boards_are_told() -> None:
     made = built("Ref,Value\nQ1,QX1\nQ2,QX2\n")
     assert [remark.text for remark in made.remarks] == [

@@ -21,6 +21,8 @@ SYMBOLS = {
     "D": "D",
     "L": "L",
     "FB": "Ferrite_Bead",
+    "RV": "R_Potentiometer",
+    "Y": "Crystal",
 }
 
 

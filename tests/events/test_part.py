@@ -86,3 +86,42 @@ def test_a_coupling_capacitor_is_followed_through_the_transient():
     project = '[supply."+5V"]\nvoltage = "5 V"\n[net."IN"]\nswing = "0 V .. 4 V"\n' + EXACT
     found = bench("R1 10k, R2 10k, C1 1u, J1 IN, U1 QX7301, U2 QX5000", nets, project)
     assert found.measure("C1", "applied_voltage").nominal == pytest.approx(4.0)
+
+
+def test_a_capacitor_at_a_crystal_is_part_of_an_active_network():
+    found = bench(
+        "C1 18pF, Y1 8MHz, U1 QX7301",
+        "XI: C1.1 Y1.1 U1.1/XIN/input\nXO: Y1.2 U1.2/XOUT/output\nGND: C1.2 U1.3/GND/power_in",
+    )
+    with pytest.raises(Unmeasurable) as told:
+        found.pose("C1", "applied_voltage")
+    assert (told.value.reason, told.value.ask) == (
+        "active network: crystal Y1 oscillates with the part that drives it",
+        "",
+    )
+
+
+def test_a_coupling_capacitor_between_open_nets_is_decided_by_their_swings():
+    """What the line asks for is taken: with both swings the voltage is their greatest difference."""
+    parts, nets = "C1 100nF, U1 QX7301, U2 QX7302", "TXA: C1.1 U1.1/A/input\nTXB: C1.2 U2.1/B/input"
+    with pytest.raises(Unmeasurable) as told:
+        bench(parts, nets).pose("C1", "applied_voltage")
+    assert told.value.ask == '[net."TXA"] swing = "…"'
+    given = '[net."TXA"]\nswing = "0 V .. 1.2 V"\n[net."TXB"]\nswing = "0 V .. 0.4 V"\n'
+    assert bench(parts, nets, given).measure("C1", "applied_voltage").high == pytest.approx(1.2)
+
+
+@pytest.mark.parametrize(
+    ("ends", "line"),
+    [
+        ("MID: RV1.2 R2.1\nGND: RV1.3 R2.2", ""),
+        ("GND: RV1.2 RV1.3 R2.1 R2.2", '[part."RV1"] kind = "resistor"  value = "…"'),
+    ],
+)
+def test_a_potentiometer_has_no_setting(ends: str, line: str):
+    """As a divider nothing tells its setting; as a variable resistor a value does."""
+    nets = f"+5V: R1.1 U1.2/VDD/power_in\nN: R1.2 RV1.1 C1.1 U1.1/IN/input\n{ends} C1.2 U1.3/GND/power_in"
+    with pytest.raises(Unmeasurable) as told:
+        bench("R1 10k, R2 1M, RV1 20k, C1 100nF, U1 QX7301", nets).pose("N", "time_constant")
+    assert told.value.reason == "RV1 is a potentiometer, and its setting is not known"
+    assert told.value.ask == line

@@ -103,7 +103,7 @@ def test_delay_between_two_gates_of_one_package_is_a_low_pass():
 def test_filter_before_an_inverting_amplifier_is_no_feedback_but_active():
     text = f"R1 1k A M\nC1 1n M GND\nR2 10k M N\nR3 10k N VO\n{AMP}"
     node = nodes(text, hold={"A": "driven", "VO": "driven"})["M"]
-    assert (node.role, node.active) == ("low-pass", "amplifier U1 inside the loop at N")
+    assert (node.role, node.active) == ("low-pass", "amplifier U1 inside the loop")
 
 
 def test_leg_from_the_inverting_input_to_ground_is_feedback():

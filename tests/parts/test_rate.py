@@ -37,7 +37,14 @@ def test_a_value_keeps_its_origin_and_place():
 def test_the_bom_wins_over_the_schematic_and_the_loser_is_told():
     found = rated(part("R1", "10k", bom="4k7"))
     assert found.value == Known(si=4700.0, origin="BOM value", place=BOM)
-    assert found.disagreements == ("value 10 kΩ (netlist value) against 4.7 kΩ (BOM value)",)
+    assert found.disagreements == (), "the design tells where two value texts differ"
+
+
+def test_a_rating_that_another_source_contradicts_is_told():
+    found = rated(part("C1", "100n 10V", bom="100nF 16V"))
+    assert found.disagreements == ()
+    told = rated(part("R1", "10k 1/4W", description="RES 10K OHM 1% 1/10W 0603")).disagreements
+    assert told == ("rated power 250 mW (netlist value) is taken, not 100 mW (netlist description)",)
 
 
 def test_equal_values_in_other_spelling_do_not_disagree():

@@ -87,8 +87,26 @@ def test_lines_that_ask_the_same_of_many_parts_share_an_entry() -> None:
 
 
 def test_many_reasons_are_counted_and_listed_on_request() -> None:
+    reasons = [f"{word} is not known" for word in "abcdefghi"]
     document = replace(
-        DOCUMENT, findings=[finding(outcome="undecided", net=f"N{n}", ask=[], reason=f"reason {n}") for n in range(9)]
+        DOCUMENT, findings=[finding(outcome="undecided", net=word, ask=[], reason=word) for word in reasons]
     )
     assert "and 3 more (--verbose lists them)" in text(document)
-    assert "reason 8" in text(document, verbose=True)
+    assert "i is not known" in text(document, verbose=True)
+
+
+def test_reasons_that_differ_only_by_a_name_are_one_line() -> None:
+    reasons = [f"active network: amplifier IC{number} inside the loop" for number in range(201, 217)]
+    reasons += [f"diode {name} may conduct, and diodes are not modelled" for name in ("D1", "D2")]
+    asking = [finding(outcome="undecided", net=f"N{n}", ask=[], reason=reason) for n, reason in enumerate(reasons)]
+    found = of(*asking)
+    assert "   N0, N1, N2 and 13 more   active network: amplifier IC201 and 15 more inside the loop" in found
+    assert "   N16, N17   diode D1 and 1 more may conduct, and diodes are not modelled" in found
+    verbose = text(replace(DOCUMENT, findings=asking), verbose=True)
+    assert "amplifier IC210 inside the loop" in verbose
+
+
+def test_reasons_that_differ_in_two_places_stay_apart() -> None:
+    reasons = ["#1: #1 is 3.3 V; holds where #1 is at most 3 V", "#2: #2 is 5 V; holds where #2 is at most 4 V"]
+    found = of(*(finding(outcome="undecided", net="N", ask=[], reason=reason) for reason in reasons))
+    assert all(reason in found for reason in reasons)
