@@ -58,7 +58,7 @@ def check(
 
 def _cases(rule: Rule, subjects: Subjects, board: Board, project: Project) -> list[Case]:
     """A case per subject that the rule meets, or may meet."""
-    chosen = [(item, selected(rule.selection, item, board)) for item in subjects.of(rule.measure.subject)]
+    chosen = [(item, selected(rule.selection, item, board)) for item in subjects.of(rule.held_against)]
     return [resolve(rule, item, board, project, sure=met is True) for item, met in chosen if met is not False]
 
 

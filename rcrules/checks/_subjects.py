@@ -1,12 +1,16 @@
-"""What a rule may be held against: nodes, capacitors and resistors, each with the facts that selections ask for."""
+"""What a rule may be held against: nodes, parts, pins, supplies and networks, each with the facts of selections."""
 
 from collections import defaultdict
 from collections.abc import Iterable, Mapping
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from functools import cached_property
 
-from rcrules.networks import Board, Network, Node
+from rcrules.design import Pin
+from rcrules.networks import Board, Held, Network, Node
 from rcrules.parts import Known, RatedPart
+
+PIN_KINDS = ("ic", "transistor", "contact", "connector")
+"""Kinds of parts whose pins are subjects."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -26,15 +30,15 @@ class View:
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Subject:
-    """A node, or a capacitor or resistor."""
+    """A node, a capacitor or resistor, a pin, a supply, or a network."""
 
     kind: str
-    """``node``, ``capacitor``, ``resistor``."""
-    target: Node | RatedPart
+    """``node``, ``capacitor``, ``resistor``, ``pin``, ``supply``, ``network``."""
+    target: Node | RatedPart | Pin | Held | Network
     network: Network | None
     """Where it stands; None for a part between held nets."""
     net: str | None
-    """Name of the node; None for a part."""
+    """Name of the node, of the pin's or supply's net; None for a part."""
     refs: tuple[str, ...]
     feeds: tuple[str, ...]
     nets: tuple[str, ...]
@@ -54,7 +58,8 @@ class Subjects:
         if kind == "node":
             return self._node_subjects
         if kind not in self._parts:
-            self._parts[kind] = self._part_subjects(kind) if kind in ("capacitor", "resistor") else ()
+            further = {"pin": self._pin_subjects, "supply": self._supply_subjects, "network": self._network_subjects}
+            self._parts[kind] = further[kind]() if kind in further else self._part_subjects(kind)
         return self._parts[kind]
 
     @cached_property
@@ -101,6 +106,67 @@ class Subjects:
             views=views or (apart,),
         )
 
+    def _pin_subjects(self) -> tuple[Subject, ...]:
+        """Pins of ICs, transistors, contacts and connectors at free nets; of one contact and net one pin."""
+        found: dict[tuple[str, str], Subject] = {}
+        for network in self._board.networks:
+            nodes = {node.joint: node for node in network.nodes if node.across is None}
+            for joint in network.free:
+                for pin in self._pins(joint):
+                    kind = self._board.parts[pin.ref].kind
+                    key = (pin.ref, joint) if kind == "contact" else (pin.ref, pin.number)
+                    if kind in PIN_KINDS:
+                        found.setdefault(key, self._pin_subject(pin, joint, network, nodes.get(joint)))
+        return tuple(found.values())
+
+    def _pins(self, joint: str) -> list[Pin]:
+        nets = dict.fromkeys((joint, *self._members.get(joint, ())))
+        pins = [pin for net in nets if net in self._board.design.nets for pin in self._board.design.nets[net].pins]
+        return [pin for pin in pins if pin.ref in self._board.parts and self._board.parts[pin.ref].fitted]
+
+    def _pin_subject(self, pin: Pin, joint: str, network: Network, node: Node | None) -> Subject:
+        nets, parts = tuple(dict.fromkeys((joint, *self._members.get(joint, ())))), (self._board.parts[pin.ref],)
+        apart = _around(nets, network.held, parts, feeds=(pin.key,))
+        view = apart if node is None else replace(_view(node, network, nets, parts), feeds=(pin.key,))
+        return Subject(
+            kind="pin",
+            target=pin,
+            network=network,
+            net=joint,
+            refs=(pin.ref,),
+            feeds=(pin.key,),
+            nets=nets,
+            views=(view,),
+        )
+
+    def _supply_subjects(self) -> tuple[Subject, ...]:
+        """Every supply, once for all nets that are joined to it at DC."""
+        held = (self._board.held[net] for net in self._board.held if self._board.joints.get(net, net) == net)
+        return tuple(self._supply_subject(item) for item in held if item.kind == "supply")
+
+    def _supply_subject(self, held: Held) -> Subject:
+        nets = tuple(dict.fromkeys((held.net, *self._members.get(held.net, ()))))
+        view = _around(nets, nets[:1], (), certainty="sure" if held.sure else "unsure")
+        return Subject(
+            kind="supply", target=held, network=None, net=held.net, refs=(), feeds=(), nets=nets, views=(view,)
+        )
+
+    def _network_subjects(self) -> tuple[Subject, ...]:
+        return tuple(self._network_subject(network) for network in self._board.networks)
+
+    def _network_subject(self, network: Network) -> Subject:
+        parts = tuple(self._board.parts[branch.ref] for branch in network.branches)
+        return Subject(
+            kind="network",
+            target=network,
+            network=network,
+            net=network.id,
+            refs=tuple(part.ref for part in parts),
+            feeds=tuple(dict.fromkeys(pin for node in network.nodes for pin in node.feeds)),
+            nets=tuple(dict.fromkeys((*network.free, *(node.net for node in network.nodes)))),
+            views=tuple(_view(node, network, self._nets(node), parts) for node in network.nodes),
+        )
+
     def _nets(self, node: Node) -> tuple[str, ...]:
         """Every net joined to the node; it answers to each name."""
         joints = tuple(item for item in (node.joint, node.across) if item)
@@ -142,6 +208,27 @@ def _view(node: Node, network: Network, nets: Iterable[str], parts: tuple[RatedP
         fed_from=node.fed_from,
         feeds=node.feeds,
         kinds_fed=node.kinds_fed,
+        parts=parts,
+    )
+
+
+def _around(
+    nets: tuple[str, ...],
+    around: tuple[str, ...],
+    parts: tuple[RatedPart, ...],
+    *,
+    feeds: tuple[str, ...] = (),
+    certainty: str = "sure",
+) -> View:
+    """The facts of a pin that is at no node, or of a supply."""
+    return View(
+        roles=(),
+        certainty=certainty,
+        nets=nets,
+        around=around,
+        fed_from=around,
+        feeds=feeds,
+        kinds_fed=(),
         parts=parts,
     )
 

@@ -11,9 +11,12 @@ _INDENT = "  "
 
 def measures_text() -> str:
     """Every measure by subject, with its unit and options."""
-    ordered = sorted(registry().values(), key=lambda measure: (measure.subject, measure.name))
+    listed = [(subject, item) for item in registry().values() for subject in (item.subject, *item.also)]
+    ordered = sorted(listed, key=lambda pair: (pair[0], pair[1].name))
     lines = [
-        line for subject, own in groupby(ordered, key=lambda item: item.subject) for line in _subject(subject, own)
+        line
+        for subject, own in groupby(ordered, key=lambda pair: pair[0])
+        for line in _subject(subject, [item for _, item in own])
     ]
     return "\n".join(lines) + "\n"
 
@@ -23,6 +26,8 @@ def _subject(subject: str, measures: Iterable[Measure]) -> Iterable[str]:
     for measure in measures:
         unit = f" [{measure.unit}]" if measure.unit != "1" else ""
         yield f"{_INDENT}{measure.name}{unit}   {measure.summary}"
+        if subject in measure.also:
+            yield f'{_INDENT * 5}with subject = "{subject}" in the rule'
         for name, option in measure.options.items():
             yield f"{_INDENT * 5}{name} = {_option(option)}" + (f"   {option.summary}" if option.summary else "")
     yield ""

@@ -29,7 +29,7 @@ def switched(bench: Bench, network: Network, circuit: Circuit, table: Table, joi
     usual = {item.ref: normally(bench, item) == "closed" for item in network.contacts}
     before, after = dict(usual), dict(usual)
     if event in ("press", "release"):
-        moved = _nearest(bench, network, circuit, joint).ref
+        moved = nearest(bench, network, circuit, joint).ref
         (after if event == "press" else before)[moved] = not usual[moved]
     return Switched(
         before=tuple(arm(bench, circuit, table, item) for item in network.contacts if before[item.ref]),
@@ -57,7 +57,7 @@ def _ohms(bench: Bench, table: Table, ref: str) -> Form:
     return table.assumed(f"{ref} contact", CLOSED_ASSUMED, text, f'[part."{ref}"] contact-resistance = "…"')
 
 
-def _nearest(bench: Bench, network: Network, circuit: Circuit, joint: str) -> Contact:
+def nearest(bench: Bench, network: Network, circuit: Circuit, joint: str) -> Contact:
     """The contact with the fewest parts between it and a joint."""
     if not network.contacts:
         raise Unmeasurable(f"no contact acts on {joint}")

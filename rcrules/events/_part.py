@@ -97,7 +97,7 @@ def pose_part_event(bench: Bench, part: RatedPart, measure: Measure, options: Ma
         at=circuit.terminal(ends[0]),
         against=circuit.terminal(ends[1]),
         element=_element(circuit, part),
-        options=plain_of(measure, options),
+        options=(*plain_of(measure, options), ("kind", part.kind)),
     )
     names = circuit.names(event.after, event.before)
     return Problem(structure=structure, parameters=tuple(table.parameters), names=names)
@@ -127,12 +127,13 @@ def _element(circuit: Circuit, part: RatedPart) -> int:
 
 def _rating(part: RatedPart, measure: Measure) -> Form | None:
     """The rating that a ratio counts in. Raises Unmeasurable where it is not known."""
-    if measure.name != "voltage_ratio":
+    if measure.rating is None:
         return None
-    if not isinstance(part.rated_voltage, Known):
-        ask = f'[part."{part.ref}"] rated-voltage = "…"'
-        raise Unmeasurable(f"rated voltage of {part.ref}: {part.rated_voltage.why}", ask)
-    return constant(part.rated_voltage.si)
+    rating = part.rated_voltage if measure.rating == "voltage" else part.rated_power
+    if not isinstance(rating, Known):
+        ask = f'[part."{part.ref}"] rated-{measure.rating} = "…"'
+        raise Unmeasurable(f"rated {measure.rating} of {part.ref}: {rating.why}", ask)
+    return constant(rating.si)
 
 
 def ends_of(circuit: Circuit, sources: Sources, name: str) -> tuple[Form, Form]:

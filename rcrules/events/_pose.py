@@ -2,23 +2,27 @@
 
 from collections.abc import Mapping
 
+from rcrules.design import Pin
 from rcrules.events._bench import bench
 from rcrules.events._discharge import pose_discharge
 from rcrules.events._node import pose_node
 from rcrules.events._options import OptionValue, chosen
 from rcrules.events._part import pose_part_event, pose_states
+from rcrules.events._pin import pose_pin
 from rcrules.events._unmeasurable import Unmeasurable
 from rcrules.measures import Measure
-from rcrules.networks import Board, Node
+from rcrules.networks import Board, Held, Network, Node
 from rcrules.parts import RatedPart
 from rcrules.problems import Problem
 from rcrules.project import Project
+
+Subject = Node | RatedPart | Pin | Held | Network
 
 
 def pose(
     board: Board,
     project: Project,
-    subject: Node | RatedPart,
+    subject: Subject,
     measure: Measure,
     options: Mapping[str, OptionValue] | None = None,
 ) -> Problem:
@@ -28,11 +32,20 @@ def pose(
     help.
     """
     at, values = bench(board, project), chosen(measure, options or {})
+    kind = _kind(subject)
+    if kind not in (measure.subject, *measure.also):
+        raise Unmeasurable(f"{measure.name} is measured at a {measure.subject}, not at a {kind}")
     if isinstance(subject, Node):
-        if measure.subject != "node":
-            raise Unmeasurable(f"{measure.name} is measured at a {measure.subject}")
         return pose_node(at, subject, measure, values)
-    if measure.subject != subject.kind:
-        raise Unmeasurable(f"{measure.name} is measured at a {measure.subject}; {subject.ref} is a {subject.kind}")
+    if isinstance(subject, Pin):
+        return pose_pin(at, subject, measure, values)
+    if isinstance(subject, Held | Network):
+        raise Unmeasurable(f"{measure.name} is not measured at a {kind}")
     by_kind = {"states": pose_states, "discharge": pose_discharge}
     return by_kind.get(measure.poses, pose_part_event)(at, subject, measure, values)
+
+
+def _kind(subject: Subject) -> str:
+    """What a measure calls a subject."""
+    kinds: dict[type, str] = {Node: "node", Pin: "pin", Held: "supply", Network: "network"}
+    return subject.kind if isinstance(subject, RatedPart) else kinds[type(subject)]

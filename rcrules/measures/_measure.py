@@ -6,6 +6,25 @@ from typing import Literal
 
 from rcrules.problems import Array, Structure
 
+Poses = Literal[
+    "event",
+    "network",
+    "noise",
+    "sample",
+    "transfer",
+    "states",
+    "discharge",
+    "level",
+    "short",
+    "supply",
+    "dip",
+    "string",
+]
+"""A transient; the network at rest (for all its nodes, or at one with its temperature); a node with a converter's
+sampling capacitor; a transfer; all DC states of a part or pin; supplies left open; the DC state in which an input is
+lowest or highest; a pin or contact that shorts what is charged; a supply with its capacitors and load; a supply that
+dips; capacitors in series."""
+
 OptionKind = Literal["event", "level", "quantity", "choice", "names"]
 
 
@@ -44,9 +63,12 @@ class Measure:
     """cases (case, column) -> values (case,); inf = never or unlimited, nan = not defined (undecided)."""
     theory: Callable[[Structure, Array, Array], Theory]
     """Structure, lowest and highest of the columns -> what is proved."""
+    also: tuple[str, ...] = ()
+    """Further subjects that it is a quantity of; a rule names one of them in ``subject``."""
     options: Mapping[str, Option] = field(default_factory=dict)
-    poses: Literal["event", "network", "noise", "sample", "transfer", "states", "discharge"] = "event"
-    """What the structure is: a transient, the network at rest (for all its nodes, or at one with its temperature), a
-    node with a converter's sampling capacitor, a transfer, DC states, supplies left open."""
+    poses: Poses = "event"
+    """What the structure is."""
+    rating: Literal["voltage", "power"] | None = None
+    """The rating of the part that it counts in; None = it counts in none."""
     scale_free: bool = False
     """True: a single source of unknown voltage does not matter, because the measure counts in parts of its own step."""

@@ -21,6 +21,17 @@ def across(structure: Structure, cases: Array) -> tuple[Array, Array]:
     return low, high
 
 
+def clamped(structure: Structure, cases: Array) -> Array:
+    """Steady voltage of the observed terminal [V] (case, state), within the outermost sources of each state.
+
+    What a pin leaks comes from a rail, so that it cannot push the terminal beyond.
+    """
+    states = steady_states(structure, cases)
+    held = states[:, :, structure.shape.free :]
+    found: Array = np.clip(states[:, :, structure.at], held.min(axis=2), held.max(axis=2))
+    return found
+
+
 def most(structure: Structure, cases: Array) -> Array:
     """Greatest magnitude of the voltage across the part [V] (case,)."""
     low, high = across(structure, cases)

@@ -1,12 +1,13 @@
-"""Peak current of a capacitor: the greatest magnitude from the event on.
+"""Peak current of a capacitor or resistor: the greatest magnitude from the event on.
 
-By Kirchhoff's law the sum of the currents that reach the capacitor through resistors; V/R just after a step from
-rest. Infinite where a source jumps right across it. Not defined where further capacitors share the current at both of
-its ends. Source: OpenStax University Physics 2, section 10.5, initial current V/R.
+Of a resistor |v|/R. Of a capacitor, by Kirchhoff's law, the sum of the currents that reach it through resistors: V/R
+just after a step from rest. Infinite where a source jumps right across it. Not defined where further capacitors share
+the current at both of its ends. Source: OpenStax University Physics 2, section 10.5, initial current V/R.
 """
 
 import numpy as np
 
+from rcrules.measures._branches import into
 from rcrules.measures._measure import Measure
 from rcrules.measures._options import event
 from rcrules.measures._theory import unproved
@@ -17,13 +18,16 @@ def compute(structure: Structure, cases: Array) -> Array:
     """Greatest current [A] (case,); cases: (case, column), SI. Needs structure.element."""
     case = solved(structure, cases)
     element = structure.element or 0
+    if structure.option("kind") == "resistor":
+        low, high = case.signal.extremes()
+        return np.maximum(high, -low) / case.ohms[:, element]
     pair = structure.shape.capacitors[element]
     if min(pair) >= structure.shape.free:
         return _across_sources(case, pair, element)
     alone = [terminal for terminal in pair if _alone(structure, terminal, element)]
     if not alone:
         return np.full(len(cases), np.nan)
-    low, high = case.watch(*_into(case, alone[0])).extremes()
+    low, high = case.watch(*into(case, alone[0])).extremes()
     return np.maximum(high, -low)
 
 
@@ -31,17 +35,6 @@ def _alone(structure: Structure, terminal: int, element: int) -> bool:
     """Whether the capacitor is the only one at a free terminal."""
     others = [pair for index, pair in enumerate(structure.shape.capacitors) if index != element]
     return terminal < structure.shape.free and not any(terminal in pair for pair in others)
-
-
-def _into(case: Solved, terminal: int) -> tuple[Array, Array]:
-    """Weights and offset of the current that flows into a terminal through resistors."""
-    weights = np.zeros_like(case.weights())
-    for index, pair in enumerate(case.structure.shape.resistors):
-        if terminal in pair:
-            other = sum(pair) - terminal
-            weights[:, other] += 1.0 / case.ohms[:, index]
-            weights[:, terminal] -= 1.0 / case.ohms[:, index]
-    return weights, case.amps[:, terminal]
 
 
 def _across_sources(case: Solved, pair: tuple[int, int], element: int) -> Array:
@@ -67,8 +60,9 @@ def _spans(starts: Array) -> Array:
 MEASURE = Measure(
     name="peak_current",
     subject="capacitor",
+    also=("resistor",),
     unit="A",
-    summary="Greatest current of the capacitor from the event on.",
+    summary="Greatest current of the part from the event on.",
     compute=compute,
     theory=unproved,
     options={"event": event("power-up")},

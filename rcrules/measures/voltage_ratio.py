@@ -1,4 +1,4 @@
-"""Voltage ratio of a capacitor: the greatest voltage across it in parts of its rated voltage.
+"""Voltage ratio of a capacitor or resistor: the greatest voltage across it in parts of its rated voltage.
 
 max |v| / rated. Source: the derating practice of ECSS-Q-ST-30-11 and IPC guides counts in this ratio (from memory).
 """
@@ -16,9 +16,11 @@ def compute(structure: Structure, cases: Array) -> Array:
 MEASURE = Measure(
     name="voltage_ratio",
     subject="capacitor",
+    also=("resistor",),
     unit="1",
-    summary="Greatest voltage across the capacitor over its rated voltage.",
+    summary="Greatest voltage across the part over its rated voltage.",
     compute=compute,
     theory=of_states,
     poses="states",
+    rating="voltage",
 )

@@ -15,8 +15,8 @@ MAX_RULES: Final = 500
 _ID: Final = re.compile(r"[a-z][a-z0-9]*(?:-[a-z0-9]+)*")
 _PACK: Final = ("name", "title", "needs-facts", "caution")
 _RULE: Final = (
-    "id", "title", "level", *KEYS, "measure", "with", "at-least", "at-most", "given", "never", "why", "source",
-    "must-meet", "example",
+    "id", "title", "level", *KEYS, "measure", "subject", "with", "at-least", "at-most", "given", "never", "why",
+    "source", "must-meet", "example",
 )  # fmt: skip
 _NEVER: Final[Mapping[str, Literal["fails", "holds"]]] = {"fails": "fails", "holds": "holds"}
 
@@ -96,6 +96,7 @@ def _body(table: Table, pack: Pack | None, measure: Measure, own_id: str) -> Rul
         never=_NEVER[never or "fails"],
         why=table.text("why") or "",
         source=table.text("source") or "",
+        subject=table.word("subject", (measure.subject, *measure.also)) or "",
         must_meet=table.count("must-meet") or 0,
         examples=tuple(_example(item) for item in table.tables("example")),
     )

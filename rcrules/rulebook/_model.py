@@ -116,6 +116,13 @@ class Rule:
     never: Literal["fails", "holds"] = "fails"
     why: str = ""
     source: str = ""
+    subject: str = ""
+    """What it is held against; '' = what its measure is first of all a quantity of."""
     must_meet: int = 0
     """Subjects that the rule must at least meet."""
     examples: tuple[Example, ...] = ()
+
+    @property
+    def held_against(self) -> str:
+        """``node``, ``capacitor``, ``resistor``, ``pin``, ``supply`` or ``network``."""
+        return self.subject or self.measure.subject

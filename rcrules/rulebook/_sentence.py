@@ -25,8 +25,8 @@ _PHRASES: Final = (
 
 def sentence(rule: Rule) -> str:
     """``for every node with role debounce, the delay after release to 'may switch' must be at least 10 ms``"""
-    selection = "".join(f" {phrase}," for phrase in [_selected(rule.selection, rule.measure.subject)] if phrase)
-    subject = f"for every {rule.measure.subject}{selection or ','}"
+    selection = "".join(f" {phrase}," for phrase in [_selected(rule.selection, rule.held_against)] if phrase)
+    subject = f"for every {rule.held_against}{selection or ','}"
     what = " ".join([f"the {rule.measure.name.replace('_', ' ')}", *_options(rule)])
     bounds = " and ".join(_limit(rule, limit) for limit in rule.limits)
     never = "; never reaching the level is fine" if rule.never == "holds" else ""

@@ -24,7 +24,9 @@ def test_without_keys_everything_is_met() -> None:
     assert met("node") == ["NRST"]
     assert met("capacitor") == ["C1", "C2"]
     assert met("resistor") == ["R1"]
-    assert met("supply") == []
+    assert met("supply") == ["+3V3"]
+    assert met("network") == ["NRST"]
+    assert met("pin") == ["NRST"]
 
 
 @pytest.mark.parametrize(

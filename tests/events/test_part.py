@@ -125,3 +125,32 @@ def test_a_potentiometer_has_no_setting(ends: str, line: str):
         bench("R1 10k, R2 1M, RV1 20k, C1 100nF, U1 QX7301", nets).pose("N", "time_constant")
     assert told.value.reason == "RV1 is a potentiometer, and its setting is not known"
     assert told.value.ask == line
+
+
+RATED = SUPPLIES + EXACT.replace('"0 %"\n[', '"0 %"\nrated-voltage = "50 V"\nrated-power = "62.5 mW"\n[')
+
+
+def test_a_resistor_has_voltage_and_ratios_too():
+    """Half of 5 V ±10 % across 10 kΩ: 2.75 V at most, in 50 V; 0.75625 mW in 62.5 mW."""
+    assert board(RATED).measure("R1", "applied_voltage", given_only=True).high == pytest.approx(2.75)
+    assert board(RATED).measure("R1", "voltage_ratio", given_only=True).high == pytest.approx(0.055)
+    assert board(RATED).measure("R1", "power_ratio", given_only=True).high == pytest.approx(2.75**2 / 10e3 / 62.5e-3)
+
+
+def test_a_rated_power_that_is_not_known_is_asked_for():
+    with pytest.raises(Unmeasurable) as caught:
+        board().pose("R1", "power_ratio")
+    assert caught.value.ask == '[part."R1"] rated-power = "…"'
+
+
+def test_a_resistor_takes_as_much_energy_as_the_capacitor_that_it_charges():
+    """OpenStax University Physics 2, section 10.5: C V²/2 each, whatever R; and V/R at first."""
+    nets = """
+        IN: J1.1 R1.1
+        N: R1.2 C1.1 U1.1/AIN0/input
+        GND: J1.2 C1.2 U1.2/GND/power_in
+        +5V: U1.3/VDD/power_in
+    """
+    swung = bench("R1 1k, C1 1u, J1 IN, U1 QX7301", nets, '[net."IN"]\nswing = "0 V .. 4 V"\n' + EXACT)
+    assert swung.measure("R1", "pulse_energy", event="step-up").nominal == pytest.approx(8e-6, rel=1e-12)
+    assert swung.measure("R1", "peak_current", event="step-up").nominal == pytest.approx(4e-3, rel=1e-12)

@@ -1,0 +1,21 @@
+"""Currents into a terminal and through a part."""
+
+import numpy as np
+
+from rcrules.problems import Array, Solved, Structure
+
+
+def capacitors_at(structure: Structure, terminal: int) -> list[int]:
+    """Capacitors with an end at a terminal."""
+    return [index for index, pair in enumerate(structure.shape.capacitors) if terminal in pair]
+
+
+def into(case: Solved, terminal: int, without: int | None = None) -> tuple[Array, Array]:
+    """Weights and offset of the current that flows into a terminal through resistors, but for one of them."""
+    weights = np.zeros_like(case.weights())
+    for index, pair in enumerate(case.structure.shape.resistors):
+        if terminal in pair and index != without:
+            other = sum(pair) - terminal
+            weights[:, other] += 1.0 / case.ohms[:, index]
+            weights[:, terminal] -= 1.0 / case.ohms[:, index]
+    return weights, case.amps[:, terminal]
