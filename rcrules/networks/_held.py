@@ -194,7 +194,7 @@ def _rank(scene: Scene, joint: str) -> tuple[bool, bool, bool, int]:
 
 def _supply(scene: Scene, joint: str, evidence: tuple[str, ...], *, sure: bool) -> Verdict:
     volts, why = volts_here(scene, joint)
-    return Verdict(kind="supply", volts=volts, evidence=(*evidence, *_given(why)), sure=sure)
+    return Verdict(kind="supply", spread=volts, evidence=(*evidence, *_given(why)), sure=sure)
 
 
 def _is_small(scene: Scene, ref: str) -> bool:

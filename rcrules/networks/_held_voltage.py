@@ -1,48 +1,68 @@
 """The voltage of a supply, as far as net names, part values and pin names tell it."""
 
 import re
-from collections.abc import Iterator
+from collections.abc import Iterable, Iterator
 from typing import Final
 
 from rcrules.design import Pin
 from rcrules.networks import _held_claims as say
 from rcrules.networks._held_names import volts_in
+from rcrules.networks._held_regulator import adjusted, regulated
+from rcrules.networks._links import words
 from rcrules.networks._scene import Scene
 from rcrules.parts import RatedPart
+from rcrules.quantities import Spread
 
-_FIXED: Final = re.compile(
-    r"[-_ /](?P<whole>\d{1,2})[.,V](?P<part>\d{1,2})V?(?!\d)"
-    r"|[-_ /]V?(?P<pair>33|18|25|28)(?:V|\b)|[-_ /](?P<plain>\d{1,2})V\b",
-    re.IGNORECASE,
-)
-"""``…-3.3``, ``…_1V8``, ``…-33``, ``…-5V`` at the end of a regulator's value."""
-_SERIES: Final = re.compile(
-    r"(?<!\d)(?P<sign>78|79)(?:[LMTS]|HC)?(?P<volts>05|06|08|09|10|12|15|18|24|33)(?!\d)", re.IGNORECASE
-)
-"""The type numbers 78xx and 79xx, whose last digits are the voltage (33 = 3.3 V)."""
 _QUIET: Final = re.compile(r"BYP(ASS)?|NR|CRES|DEC\w*|SS\w*|INT\w*|V?CAP\w*")
 """Pins of a regulator that carry another voltage than its output."""
 _COIN: Final = re.compile(r"\b[BC]R\d{4}\b", re.IGNORECASE)
 """Designations of lithium coin cells in IEC 60086: 3 V."""
 _COIN_VOLTS: Final = 3.0
+_RECHARGEABLE: Final = re.compile(
+    r"\bLI[-_ ]?(?:ION|PO(?:LY)?)\b|\bLITHIUM[-_ ]?(?:ION|POLYMER)|(?<!\d)(?:18650|14500|16340)(?!\d)", re.IGNORECASE
+)
+_SEVERAL: Final = re.compile(r"\b[2-9]\s?[SX]|[SX]\s?[2-9]\b", re.IGNORECASE)
+"""Words of several cells in series or side by side."""
+_RECHARGEABLE_VOLTS: Final = (3.0, 3.7, 4.2)
+"""A lithium-ion cell: empty, nominal, full [V] (from memory)."""
+_USB: Final = re.compile(r"(?<![A-Z])USB", re.IGNORECASE)
+_USB_VOLTS: Final = 5.0
 _PIN_VOLTS: Final = re.compile(
     r"(?<![A-Z0-9.])V?(?:OUT|LDO|REG|REGOUT|CAP)?_?(?P<pair>33|18|25|12|15)(?:_?OUT)?$|(?P<whole>\d)(?:\.|V|P)(?P<part>\d)"
 )
 _MOST_PLAUSIBLE: Final = 1000.0
 
+Reading = tuple[float | tuple[float, float, float] | None, str]
+"""[V], or least, nominal and most [V], and where it was read."""
 
-def volts_here(scene: Scene, joint: str) -> tuple[float | None, str | None]:
+
+def volts_here(scene: Scene, joint: str) -> tuple[Spread | None, str | None]:
     """Voltage [V] and where it was read, (None, None) when nothing tells it."""
-    for volts, why in _readings(scene, joint):
-        if volts is not None and abs(volts) <= _MOST_PLAUSIBLE:
-            return volts, f"{volts:g} V from {why}"
+    for read, why in _readings(scene, joint):
+        low, nominal, high = read if isinstance(read, tuple) else (read, read, read)
+        if low is not None and nominal is not None and high is not None and abs(nominal) <= _MOST_PLAUSIBLE:
+            told = f"{nominal:g} V" if low == high else f"{low:g} V .. {high:g} V"
+            return Spread(low=low, nominal=nominal, high=high, unit="V"), f"{told} from {why}"
     return None, None
 
 
-def _readings(scene: Scene, joint: str) -> Iterator[tuple[float | None, str]]:
+def _readings(scene: Scene, joint: str) -> Iterator[Reading]:
     for named in scene.hints(joint):
         if named.kind == "supply":
             yield named.volts, "the net name"
+    yield from _of_sources(scene, joint)
+    for pin in scene.says(joint, say.SUPPLY):
+        if scene.kind(pin.ref) == "connector":
+            usb = _USB.search(f"{words(scene.parts[pin.ref])} {scene.parts[pin.ref].part.footprint}")
+            yield volts_in(pin.name), f"pin {pin.key}"
+            yield _USB_VOLTS if usb else None, f"pin {pin.key} of a USB connector"
+    for pin in scene.of_kind(joint, "battery"):
+        yield _cell(scene.parts[pin.ref]), f"the value of {pin.ref}"
+    yield from _of_consumers(scene.says(joint, say.SUPPLY))
+
+
+def _of_sources(scene: Scene, joint: str) -> Iterator[Reading]:
+    """What regulators on the joint, or behind its inductor, say of their output."""
     sources = scene.says(joint, say.SOURCE)
     coils = [pin for far in scene.coils.get(joint, ()) for pin in scene.of_kind(far, "ic")]
     for pin in (*sources, *coils):
@@ -50,25 +70,19 @@ def _readings(scene: Scene, joint: str) -> Iterator[tuple[float | None, str]]:
             yield regulated(scene.parts[pin.ref]), f"the value of {pin.ref}"
     for pin in sources:
         yield pin_volts(pin), f"pin {pin.key}"
-    for pin in scene.says(joint, say.SUPPLY):
-        if scene.kind(pin.ref) == "connector":
-            yield volts_in(pin.name), f"pin {pin.key}"
-    for pin in scene.of_kind(joint, "battery"):
-        yield _cell(scene.parts[pin.ref]), f"the value of {pin.ref}"
+        found = adjusted(scene, joint, pin)
+        if found is not None:
+            yield found
 
 
-def regulated(part: RatedPart) -> float | None:
-    """The output voltage written in a regulator's value: ``…1117-3.3``, ``78L05``, ``…-33``."""
-    series = _SERIES.search(part.text)
-    if series:
-        volts = 3.3 if series["volts"] == "33" else float(series["volts"])
-        return -volts if series["sign"] == "79" else volts
-    fixed = _FIXED.search(part.text)
-    if fixed is None:
-        return None
-    if fixed["pair"]:
-        return float(fixed["pair"]) / 10
-    return float(fixed["plain"] or f"{fixed['whole']}.{fixed['part']}")
+def _of_consumers(pins: Iterable[Pin]) -> Iterator[Reading]:
+    """The voltage in the names of supply pins, such as ``VDD18``, where the digits do not count the pins."""
+    told = {pin.key: volts_in(pin.name) for pin in pins}
+    stems = {re.sub(r"\d+", "", pin.name.upper()): pin.name for pin in pins}
+    counted = any(stems[re.sub(r"\d+", "", pin.name.upper())] != pin.name for pin in pins)
+    found = {volts for volts in told.values() if volts is not None}
+    if len(found) == 1 and not counted:
+        yield next((volts, f"pin {key}") for key, volts in told.items() if volts is not None)
 
 
 def pin_volts(pin: Pin) -> float | None:
@@ -79,7 +93,11 @@ def pin_volts(pin: Pin) -> float | None:
     return float(found["pair"]) / 10 if found["pair"] else float(f"{found['whole']}.{found['part']}")
 
 
-def _cell(part: RatedPart) -> float | None:
-    words = f"{part.text} {part.part.symbol} {part.part.footprint} {part.part.description}"
+def _cell(part: RatedPart) -> float | tuple[float, float, float] | None:
+    text = f"{words(part)} {part.part.footprint}"
     written = volts_in(part.text)
-    return written if written is not None else _COIN_VOLTS if _COIN.search(words) else None
+    if written is not None:
+        return written
+    if _RECHARGEABLE.search(text) and not _SEVERAL.search(part.text):
+        return _RECHARGEABLE_VOLTS
+    return _COIN_VOLTS if _COIN.search(text) else None

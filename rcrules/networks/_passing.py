@@ -22,6 +22,7 @@ _ENTRY: Final = re.compile(
     re.IGNORECASE,
 )
 """Words that name a power input in a connector's value, symbol, description or footprint."""
+_BIPOLAR: Final = re.compile(r"(?<![A-Z])(NPN|PNP|BJT)(?![A-Z])", re.IGNORECASE)
 _ENTRY_PINS: Final = 4
 _SIGNALS: Final = ("ic", "transistor", "contact", "crystal")
 
@@ -62,7 +63,8 @@ def _onward(scene: Scene, joint: str, verdicts: Verdicts) -> Iterator[tuple[str,
             yield diode.cathode, here.passed(f"diode {diode.ref} from {joint}", drop=DIODE_DROP)
     for ref, far in _switched(scene, joint):
         if _takes_supply(scene, far, verdicts) or _is_power_output(scene, far, verdicts):
-            yield far, here.passed(f"power switch {ref} from {joint}", sure=False)
+            passed_on = here.passed(f"power switch {ref} from {joint}", sure=False)
+            yield far, replace(passed_on, spread=None, given=False) if _is_bipolar(scene, ref) else passed_on
     for source in scene.coils.get(joint, ()):
         yield from _rectified(scene, source, verdicts)
 
@@ -82,14 +84,14 @@ def _inputs(scene: Scene, verdicts: Verdicts) -> Iterator[tuple[str, Verdict]]:
             why = f"connector, and diode {into[0].ref} into {into[0].cathode}"
             yield joint, replace(verdicts[into[0].cathode], evidence=(why,), sure=False, given=False)
         elif _is_power_entry(scene, joint):
-            yield joint, Verdict(kind="supply", volts=volts, evidence=("power connector",), sure=False)
+            yield joint, Verdict(kind="supply", spread=volts, evidence=("power connector",), sure=False)
         elif scene.coils.get(joint) and not _is_filtered(scene, joint, verdicts) and _has_bulk(scene, joint, verdicts):
             yield (
                 joint,
-                Verdict(kind="supply", volts=volts, evidence=(f"switched inductor from {scene.coils[joint][0]}",)),
+                Verdict(kind="supply", spread=volts, evidence=(f"switched inductor from {scene.coils[joint][0]}",)),
             )
         elif _is_rectified(scene, joint, verdicts):
-            yield joint, Verdict(kind="supply", volts=volts, evidence=("diode from a switching node",))
+            yield joint, Verdict(kind="supply", spread=volts, evidence=("diode from a switching node",))
 
 
 def _is_filtered(scene: Scene, joint: str, verdicts: Verdicts) -> bool:
@@ -189,6 +191,13 @@ def _switched(scene: Scene, joint: str) -> Iterator[tuple[str, str]]:
                 and other.number != pin.number
             ):
                 yield pin.ref, far
+
+
+def _is_bipolar(scene: Scene, ref: str) -> bool:
+    """Whether a transistor is a bipolar one, which as often regulates what it passes as it switches it."""
+    part = scene.parts[ref]
+    pins = {pin.name.upper()[:1] for pin in part.part.pins}
+    return {"B", "C", "E"} <= pins or _BIPOLAR.search(words(part)) is not None
 
 
 def _control(scene: Scene, ref: str) -> frozenset[str]:
