@@ -16,6 +16,8 @@ from rcrules.readers._table import Row
 
 _EMPTY: Final = frozenset({"", "~", "-", "--", "—"})
 _COUNT: Final = re.compile(r"(\d+)(?:[.,]0*)?")
+_PIECE: Final = re.compile(r"[^\W\d_]+\d+#\d+")
+"""``J10#1``: one of several pieces bought for the part J10."""
 MAX_LISTED: Final = 250_000
 """References of one file, each as often as it is listed."""
 _SHOWN: Final = 8
@@ -64,14 +66,23 @@ class PartList:
         if factor > 1:
             said = f"every quantity is {factor} times the number of references; taken as for {factor} boards"
             self._remarks.add(self._place(table.rows[0].line), said)
+        if factor == 0:
+            self._remarks.add(self._place(table.rows[0].line), "every quantity is 0; quantities are not compared")
         for row in table.rows:
             self._add_row(table, row, factor)
 
     def _add_row(self, table: Table, row: Row, factor: int) -> None:
         text = row.cell(table.reference)
         quantity = _count(row.cell(table.quantity))
-        wanted = None if quantity is None else quantity // factor
+        wanted = None if quantity is None or factor == 0 else quantity // factor
         refs = self._references(row, text, wanted)
+        pieces = tuple(ref for ref in refs if _PIECE.fullmatch(ref))
+        if pieces:
+            said = f"pieces that are bought for a part are no parts of their own: {shorten(', '.join(pieces))}"
+            self._remarks.add(self._place(row.line), said)
+            refs = tuple(ref for ref in refs if ref not in pieces)
+            if not refs:
+                return
         if not refs:
             if not row.cells[0].startswith("#") and sum(1 for cell in row.cells if cell) > 1:
                 self._left_out.append(row)
@@ -198,7 +209,7 @@ def _count(text: str) -> int | None:
 
 
 def _boards(table: Table) -> int:
-    """How many boards the quantities are for: the one factor that holds in every row, else 1."""
+    """How many boards the quantities are for: the one factor of every row, 0 where none is filled in, else 1."""
     factors = set()
     rows = 0
     for row in table.rows:
@@ -210,4 +221,4 @@ def _boards(table: Table) -> int:
             return 1
         rows += 1
         factors.add(quantity // count)
-    return max(factors.pop(), 1) if len(factors) == 1 and rows >= _ENOUGH else 1
+    return factors.pop() if len(factors) == 1 and rows >= _ENOUGH else 1

@@ -94,7 +94,8 @@ def _fitted_rows(rows: Sequence[Row], width: int) -> tuple[list[Row], list[tuple
     mended = {row.line: rejoined(row, width) for row in long}
     still = [line for line, row in mended.items() if any(row.cells[width:])]
     joined = [row.line for row in long if len(mended[row.line].cells) < len(row.cells)]
-    said = f"{len(long)} rows hold more cells than the header, for commas in cells that are not quoted"
+    why = ", for commas in cells that are not quoted" if long[0].delimiter == "," else ""
+    said = f"{len(long)} rows hold more cells than the header{why}"
     if joined:
         said += f"; numbers cut in two are put together again in line {_listed(joined)}"
     if still:

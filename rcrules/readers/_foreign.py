@@ -6,6 +6,7 @@ from typing import Final
 from rcrules.errors import UserMistake
 from rcrules.readers._export import Source
 from rcrules.readers._mistakes import refusal, shorten
+from rcrules.readers._sheets import is_workbook
 from rcrules.readers._text import head
 from rcrules.readers._xml import root_name
 
@@ -47,6 +48,8 @@ def refuse_foreign(source: Source) -> None:
     """Raise UserMistake where the content is recognised as something else, or is empty or binary."""
     if not source.data.strip():
         raise refusal(source.name, "the file is empty", do=_INSTEAD)
+    if is_workbook(source.data):
+        return
     for signature, name, instead in _SIGNATURES:
         if source.data.startswith(signature):
             raise _foreign(source, name, instead)
