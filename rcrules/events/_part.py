@@ -15,7 +15,7 @@ from rcrules.events._table import Table
 from rcrules.events._transients import Scene, transient
 from rcrules.events._unmeasurable import Unmeasurable
 from rcrules.measures import Measure
-from rcrules.networks import Branch, Network
+from rcrules.networks import OPEN_END, Branch, Network
 from rcrules.parts import Known, RatedPart
 from rcrules.problems import Form, Problem, Structure, Waveform, constant
 
@@ -39,6 +39,8 @@ def place_of(bench: Bench, part: RatedPart) -> Place:
     found = bench.branch(part)
     if found is None or found.a == found.b:
         raise Unmeasurable(f"{part.ref} does not lie between two nets")
+    if bench.board.reasons.get(part.ref) == OPEN_END:
+        raise Unmeasurable(f"one end of {part.ref} is open")
     for joint in (found.a, found.b):
         if bench.held(joint) is None:
             raise _unheld(bench, joint)

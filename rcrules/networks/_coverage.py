@@ -13,6 +13,8 @@ from rcrules.parts import RatedPart, Unknown
 _RC: Final = re.compile(r"[RC]\d")
 _KINDS: Final = ("resistor", "capacitor")
 _HELD: Final = {"ground": "ground", "supply": "a supply", "driven": "a driven net"}
+OPEN_END: Final = "one end is open"
+"""The reason of a part that carries no current, because nothing else is at one of its ends."""
 
 Class = tuple[str, str]
 """Coverage class and the reason, empty where the class says it all."""
@@ -52,7 +54,8 @@ def _unplaced(draft: Draft, part: RatedPart) -> Class:
         return "elsewhere", "joins its nets (0 Ω)"
     if not any(True for _ in branches(part)):
         return "elsewhere", "not connected to two nets"
-    return "elsewhere", "both ends on one net at DC"
+    apart = any(draft.joints[one.net] != draft.joints[other.net] for _, one, other in branches(part))
+    return "elsewhere", OPEN_END if apart else "both ends on one net at DC"
 
 
 def _between(draft: Draft, item: Branch) -> Class:
@@ -79,8 +82,6 @@ def _lonely(draft: Draft, item: Branch, kinds: list[str]) -> str:
     ):
         if kind in others.values():
             return why
-    if not others:
-        return "one end is open"
     if item.kind == "resistor":
         link = "in series with" if kinds == [_HELD["driven"]] else "pull to"
         return f"{link} {kinds[0]}, no capacitor with it" if kinds else "no capacitor with it"

@@ -174,7 +174,7 @@ def _is_smoothed(scene: Scene, joint: str, verdicts: Verdicts) -> bool:
 
 def only_fed_by_resistors(scene: Scene, joint: str) -> bool:
     """Whether a resistor from a supply feeds the joint and nothing else does, as far as pins and names tell."""
-    if scene.says(joint, say.SOURCE) or scene.of_kind(joint, "connector", "battery", "transformer"):
+    if scene.says(joint, say.SOURCE) or scene.of_kind(joint, "battery", "transformer") or _brings_power(scene, joint):
         return False
     feeding = [item for item, far in scene.far_ends(joint, "resistor") if _rank(scene, far) > _rank(scene, joint)]
     if not feeding or len({pin.ref for pin in scene.says(joint, say.SUPPLY)}) >= MANY_PARTS:
@@ -182,6 +182,12 @@ def only_fed_by_resistors(scene: Scene, joint: str) -> bool:
     blocked = any(item.cathode == joint for item in scene.diodes.get(joint, ()))
     active = blocked or bool(scene.coils.get(joint)) or bool(scene.of_kind(joint, "transistor"))
     return not active or any(_is_small(scene, item.ref) for item in feeding)
+
+
+def _brings_power(scene: Scene, joint: str) -> bool:
+    """Whether a connector may feed the joint; one whose pin takes power in, such as a card's, is fed."""
+    takers = [pin for pin in scene.says(joint, say.SUPPLY) if pin.type == "power-in"]
+    return any(pin not in takers for pin in scene.of_kind(joint, "connector"))
 
 
 def _rank(scene: Scene, joint: str) -> tuple[bool, bool, bool, int]:

@@ -13,6 +13,8 @@ from rcrules.parts import RatedPart
 _MARKS: Final = re.compile(r"[~{}\\\s#*]|_?\d+$")
 _OPEN_NAMES: Final = re.compile(r"N?INT|IRQ|ALERT|P?GOOD|PG|FAULT|FLA?G|FLT|SDA|SCL|OD|OC|ALARM|RDY|BUSY")
 _LOGIC_OUT: Final = re.compile(r"[A-D1-8]?(OUT|Y|Q)[A-D1-8]?|V?O|OUT[+\-PNAB]?|[A-Z]?DOUT|[TR]OUT|RO|TXOUT")
+_CONVERTER_OUT: Final = re.compile(r"[AI]OUT[A-Z]{0,2}\d{0,2}[PNLR+\-]?")
+"""Outputs of digital-to-analog converters, by channel, side and sign; no pin of such a name takes a voltage in."""
 _ANALOG_OUT: Final = re.compile(r"VOUT[+\-A-D]?|VOUT_?[A-D1-8]")
 """Outputs of amplifiers, converters and sensors, where the part makes no supply."""
 _FLYING: Final = re.compile(r"C(F|FLY|AP|P)?\d?[+\-]")
@@ -42,6 +44,7 @@ _POSITIONS: Final = {
 """Supply pins, positive and negative -> outputs: single in 5 and 8 pins, dual, quad amplifier, quad comparator."""
 _POWERED: Final = ("power-in", "power-out")
 _CONNECTOR_NAMES: Final = frozenset((GROUND, SUPPLY))
+_MODULE_PINS: Final = 4
 
 
 def claim(pin: Pin, part: RatedPart, *, regulator: bool) -> str:
@@ -52,8 +55,20 @@ def claim(pin: Pin, part: RatedPart, *, regulator: bool) -> str:
     if kind == "connector":
         found = by_name(pin.name)
         signal = found == SUPPLY and (_IN.fullmatch(pin.name.upper()) is not None and pin.type not in _POWERED)
-        return found if found in _CONNECTOR_NAMES and not signal else NOTHING
+        if found in _CONNECTOR_NAMES and not signal:
+            return found
+        drives = _LOGIC_OUT.fullmatch(pin.name.upper()) or _ANALOG_OUT.fullmatch(pin.name.upper())
+        return OUTPUT if drives and _is_module(part) else NOTHING
     return SUPPLY if kind == "battery" and _positive(pin) else NOTHING
+
+
+def _is_module(part: RatedPart) -> bool:
+    """Whether a part drawn as a connector is a sensor or receiver: three or four named pins, supply and ground.
+
+    With an input and an output instead it makes a supply.
+    """
+    names = {by_name(pin.name) for pin in part.part.pins if not _IN.fullmatch(pin.name.upper())}
+    return len(part.part.pins) <= _MODULE_PINS and {GROUND, SUPPLY} <= names
 
 
 def by_name(name: str) -> str:
@@ -130,7 +145,8 @@ def _typed(pin: Pin, name: str, named: str) -> str:
         return OPEN
     if pin.type in _BY_TYPE:
         return SOURCE if named == SUPPLY else _BY_TYPE[pin.type]
-    return OUTPUT if pin.type in ("", "passive", "unspecified", "input") and _LOGIC_OUT.fullmatch(name) else NOTHING
+    drives = _LOGIC_OUT.fullmatch(name) or _CONVERTER_OUT.fullmatch(name)
+    return OUTPUT if pin.type in ("", "passive", "unspecified", "input") and drives else NOTHING
 
 
 def _positive(pin: Pin) -> bool:

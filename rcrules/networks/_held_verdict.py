@@ -60,5 +60,6 @@ Verdicts = dict[str, Verdict]
 def keys(pins: Iterable[Pin]) -> tuple[str, ...]:
     """The first few pins as evidence: ``pin U1.VDD``, and how many more there are."""
     names = list(dict.fromkeys(f"pin {pin.key}" for pin in pins))
-    more = (f"{len(names) - _SHOWN} more pins",) if len(names) > _SHOWN else ()
+    rest = len(names) - _SHOWN
+    more = (f"{rest} more {'pin' if rest == 1 else 'pins'}",) if rest > 0 else ()
     return (*names[:_SHOWN], *more)

@@ -17,7 +17,7 @@ def feedback(view: View, here: Spot) -> Judged | None:
 
 def _regulator(view: View, here: Spot) -> Judged | None:
     for pin in _pins_around(view, here):
-        if _is_feedback_pin(view, pin):
+        if _is_feedback_pin(view, pin) or _is_lifted(view, here, pin):
             why = f"{pin.key} closes a control loop here"
             alone = here.bare and all(len({arm.far for arm in arms}) == 1 for arms in (here.resistors, here.capacitors))
             return Judged(role="feedback", why=(why,), active=f"regulator {pin.ref} inside the loop", alone=alone)
@@ -39,6 +39,14 @@ def _is_feedback_pin(view: View, pin: Pin) -> bool:
     if view.kind(pin) != "ic" or word not in FEEDBACK or group in ("controller", "amplifier", "logic", "timer"):
         return False
     return group == "regulator" or word not in ("VC", "INV", "EA", "COMP") or len(view.pins_of(pin.ref)) <= 64
+
+
+def _is_lifted(view: View, here: Spot, pin: Pin) -> bool:
+    """The ground pin of a regulator that a resistor from the regulator's own output lifts: its adjust pin."""
+    if view.kind(pin) != "ic" or family_of(view, pin.ref) != "regulator" or whole(pin) != "GND":
+        return False
+    supplied = [view.at(arm.far).pins for arm in here.resistors if arm.to == "supply"]
+    return any(other.ref == pin.ref for pins in supplied for other in pins)
 
 
 def _amplifier(view: View, here: Spot) -> Judged | None:

@@ -10,6 +10,9 @@ PULL = 5.0
 PULL_DOWN = 20.0
 """The same for a resistor to ground, where a divider is the usual case."""
 
+ALIKE = 2.0
+"""Two series resistors within this ratio make a pair of lines. [1]"""
+
 
 def high_pass(view: View, here: Spot) -> Judged | None:
     """A series capacitor from a signal, resistors to a fixed bias."""
@@ -33,21 +36,32 @@ def divider(view: View, here: Spot) -> Judged | None:
         low, high = _two_levels(view, here, high)
     if not low or not high or _is_pull(view, here, low, high):
         return None
-    why = f"tap between {high[0].ref} and {low[0].ref}"
+    refs = list(dict.fromkeys((high[0].ref, low[0].ref)))
+    why = f"tap between {' and '.join(refs)}" if len(refs) > 1 else f"tap of {refs[0]}"
     return Judged(role="divider-low-pass", why=(why,))
 
 
 def low_pass(view: View, here: Spot) -> Judged | None:
     """A series resistor from a signal, or from a supply into an analog input; a capacitor to a fixed or driven net."""
-    if not any(arm.held is not None for arm in here.capacitors):
-        return None
     driven = [arm for arm in here.resistors if "driven" in kinds_at(view, arm, here.joint)]
+    if not any(arm.held is not None for arm in here.capacitors):
+        return _differential(view, here, driven)
     if driven:
         return Judged(role="low-pass", why=(f"{driven[0].ref} in series from {_source(view, here, driven[0])}",))
     later = [arm for arm in here.resistors if arm.held is None and ends(view, arm.far, here.joint)]
     if later:
         return Judged(role="low-pass", why=(f"{later[0].ref} from the node {later[0].far}",))
     return _from_supply(view, here) or _from_pin(view, here)
+
+
+def _differential(view: View, here: Spot, driven: list[Arm]) -> Judged | None:
+    """A capacitor across two lines that both come from signals through resistors of a size."""
+    for arm in here.capacitors if driven else ():
+        others = [far for far in view.at(arm.far).resistors if far.to == "driven"]
+        if others and least(driven) <= ALIKE * least(others) and least(others) <= ALIKE * least(driven):
+            why = f"{driven[0].ref} in series from {_source(view, here, driven[0])}, {arm.ref} across to {arm.far}"
+            return Judged(role="low-pass", why=(why,))
+    return None
 
 
 def _from_supply(view: View, here: Spot) -> Judged | None:

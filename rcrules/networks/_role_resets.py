@@ -30,7 +30,8 @@ def supply_filter(view: View, here: Spot) -> Judged | None:
             role="sense-shunt", sure=False, why=("low resistance between a supply and what it feeds",), only=only
         )
     pins = feeding(view, here)
-    supplied = [pin for pin in pins if kind_fed(view, pin) == "supply"]
+    takers = [pin for pin in here.pins if view.kind(pin) == "connector" and pin.type == "power-in"]
+    supplied = [*(pin for pin in pins if kind_fed(view, pin) == "supply"), *takers]
     if here.local or supplied:
         return _filter(here, sources, tuple(pin.key for pin in supplied))
     return _filter_without_pin(view, here, sources, pins)

@@ -7,6 +7,7 @@ from typing import Final, TypeVar
 
 from rcrules.design import Design, Pin
 from rcrules.networks import _held_claims as say
+from rcrules.networks._connected import connected
 from rcrules.networks._held_names import NameHint, hint
 from rcrules.networks._held_pins import claim, is_regulator, outputs_by_position
 from rcrules.networks._joints import Rail
@@ -83,7 +84,7 @@ def scene(design: Design, parts: Mapping[str, RatedPart], facts: Facts) -> Scene
     return Scene(
         design=design, parts=parts, facts=facts, joints=joints, members=members, pins=pins,
         claims=_merged(by_net, joints),
-        branches=_by_ends(_branches(fitted, joints)),
+        branches=_by_ends(connected(_branches(fitted, joints), pins, facts)),
         contacts=_by_ends(_contacts(fitted, facts, joints)),
         diodes=_diodes(fitted, joints),
         coils=_coils(fitted, switching, joints),

@@ -154,3 +154,10 @@ def test_a_resistor_takes_as_much_energy_as_the_capacitor_that_it_charges():
     swung = bench("R1 1k, C1 1u, J1 IN, U1 QX7301", nets, '[net."IN"]\nswing = "0 V .. 4 V"\n' + EXACT)
     assert swung.measure("R1", "pulse_energy", event="step-up").nominal == pytest.approx(8e-6, rel=1e-12)
     assert swung.measure("R1", "peak_current", event="step-up").nominal == pytest.approx(4e-3, rel=1e-12)
+
+
+def test_a_capacitor_with_an_open_end_says_so():
+    found = bench("C1 100nF, C2 1uF, U1 QX7301", "+5V: C1.1 C2.1 U1.1/VDD/power_in\nGND: C2.2 U1.2/GND/power_in\nN: C1.2")
+    with pytest.raises(Unmeasurable) as told:
+        found.pose("C1", "applied_voltage")
+    assert (told.value.reason, told.value.ask) == ("one end of C1 is open", "")
