@@ -110,7 +110,7 @@ def _unvalued(part: RatedPart, value: Unknown) -> Unmeasurable:
     """Why a part has no number to calculate with, and the line that would give one."""
     if part.kind in ("resistor", "capacitor"):
         return Unmeasurable(f"value of {part.ref}: {value.why}", f'[part."{part.ref}"] value = "…"')
-    what = "setting" if part.kind == "potentiometer" else "resistance"
-    reason = f"{part.ref} is a {part.kind.replace('-', ' ')}, and its {what} is not known"
+    kind, what = ("potentiometer", "setting") if part.kind == "potentiometer" else ("thermistor", "resistance")
+    reason = f"{part.ref} is a {kind}, and its {what} is not known"
     ends = {pin.net for pin in part.part.pins}
     return Unmeasurable(reason, f'[part."{part.ref}"] kind = "resistor"  value = "…"' if len(ends) <= 2 else "")

@@ -61,7 +61,7 @@ def _unplaced(draft: Draft, part: RatedPart) -> Class:
 def _between(draft: Draft, item: Branch) -> Class:
     """A branch that is in no network with a node."""
     ends = [draft.held_joint(joint) for joint in (item.a, item.b)]
-    kinds = [_HELD[held.kind] for held in ends if held is not None]
+    kinds = [_HELD[kind] for kind in _HELD for held in ends if held is not None and held.kind == kind]
     if len(kinds) == 2:
         rails = all(held is not None and held.kind != "driven" for held in ends)
         if item.kind == "capacitor":

@@ -3,7 +3,7 @@
 from rcrules.networks._fed import feeding, kinds
 from rcrules.networks._role import Judged
 from rcrules.networks._role_parts import LIGHT, ends, kinds_at, signal_above, strong_ends
-from rcrules.networks._spot import Arm, Spot, View, greatest, least
+from rcrules.networks._spot import SMALL, Arm, Spot, View, greatest, least
 
 PULL = 5.0
 """A resistor to a supply of this many times the series resistor is its pull, not a divider's arm."""
@@ -20,7 +20,7 @@ def high_pass(view: View, here: Spot) -> Judged | None:
     shunt = [arm for arm in here.capacitors if arm.fixed]
     if not series or not any(_is_bias(view, here, arm) for arm in here.resistors):
         return None
-    if any(arm.to == "driven" for arm in here.resistors) or greatest(shunt) > greatest(series) > 0:
+    if greatest(shunt) > greatest(series) > 0 or any(_is_driven(view, here, arm) for arm in here.resistors):
         return None
     why = f"{series[0].ref} couples {series[0].far} to a fixed bias"
     return Judged(role="high-pass", why=(why,))
@@ -86,6 +86,14 @@ def _is_signal(view: View, here: Spot, arm: Arm) -> bool:
         return arm.to == "driven"
     outside = view.has_kind(view.at(arm.far), "connector") and not view.has_kind(here, "connector")
     return outside or signal_above(view, arm.far, here.joint)
+
+
+def _is_driven(view: View, here: Spot, arm: Arm) -> bool:
+    """Whether a resistor leads to a driven net, directly or through one that is small beside it."""
+    if arm.held is not None:
+        return arm.to == "driven"
+    beyond = (far for far in view.at(arm.far).resistors if far.far != here.joint)
+    return any(far.to == "driven" and (far.value or 0.0) <= SMALL * (arm.value or 0.0) for far in beyond)
 
 
 def _is_bias(view: View, here: Spot, arm: Arm) -> bool:

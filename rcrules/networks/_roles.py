@@ -100,7 +100,7 @@ def _node(view: View, here: Spot) -> Node:
         fed_from=fed_from,
         feeds=tuple(pin.key for pin in pins),
         kinds_fed=_kinds_fed(view, here),
-        active=judged.active or _helped(met, judged),
+        active=judged.active or _helped(view, met, judged),
     )
     return _corrected(view.draft, node)
 
@@ -111,11 +111,14 @@ def _doubts(view: View, sources: tuple[str, ...]) -> tuple[str, ...]:
     return tuple(f"what holds {one.net} is not sure" for one in held if one is not None and not one.sure)
 
 
-def _helped(met: Ways, judged: Judged) -> str | None:
+def _helped(view: View, met: Ways, judged: Judged) -> str | None:
     """A capacitor on the way that returns to a driven net: an amplifier, not a fixed level, moves its far end."""
     if judged.role not in ("low-pass", "divider-low-pass"):
         return None
-    driven = next((ref for ref, arm in met.capacitors.items() if arm.to == "driven"), None)
+    driven = next(
+        (ref for ref, arm in met.capacitors.items() if arm.to == "driven" and view.has_kind(view.at(arm.far), "ic")),
+        None,
+    )
     return f"an amplifier drives {driven}" if driven else None
 
 
