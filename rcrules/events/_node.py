@@ -34,7 +34,8 @@ def pose_node(bench: Bench, node: Node, measure: Measure, options: Mapping[str, 
         return at_rest(bench, node, measure, options)
     levels = levels_of(measure, options)
     event = str(options["event"])
-    relative = measure.scale_free and all(level.of == "step" for level in levels.values())
+    parts_of_step = all(level.of == "step" for level in levels.values())
+    relative = measure.scale_free and parts_of_step and options.get("from", "event") == "event"
     table = Table()
     network = bench.network(node)
     unit = relative and event in STEPS

@@ -47,6 +47,7 @@ MEASURE = Measure(
     summary="Time from an event, or from a valid supply, until the node passes a level.",
     compute=compute,
     theory=theory,
+    scale_free=True,
     options={
         "event": event(None),
         "from": Option(

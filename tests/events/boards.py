@@ -50,11 +50,11 @@ class Bench:
 def bench(parts: str, nets: str, project: str = "") -> Bench:
     """``parts``: "R1 10k, C1 100n"; ``nets``: one a line, "N: R1.2 C1.1 U1.7/NRST/input"."""
     facts = load("rcrules.toml", project)
-    design = build([read(Source(name="board.xml", data=_xml(parts, nets).encode()))])
+    design = build([read(Source(name="board.xml", data=xml(parts, nets).encode()))])
     return Bench(board=recognise(design, rate(design, facts), facts), project=facts)
 
 
-def _xml(parts: str, nets: str) -> str:
+def xml(parts: str, nets: str) -> str:
     components = "".join(_component(*item.strip().split(" ", 1)) for item in parts.split(","))
     lines = [line.split(":", 1) for line in nets.strip().splitlines()]
     found = "".join(_net(code, name.strip(), pins.split()) for code, (name, pins) in enumerate(lines, 1))

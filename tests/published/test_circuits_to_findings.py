@@ -1,0 +1,204 @@
+"""The circuits of ``test_circuits`` once more, as a user meets them: netlist, project and rule as files, findings out.
+
+The answers were worked out apart, in closed form and by a matrix exponential. Each question is asked by two rules whose
+limits lie on both sides of the answer: one finding must fail, the other hold.
+"""
+
+from dataclasses import dataclass
+from math import inf
+from pathlib import Path
+
+import pytest
+
+from rcrules.findings import Finding
+from rcrules.pipeline import Job, run
+from tests.events.boards import xml
+
+EXACT = '[defaults.resistor]\ntolerance = "0 %"\n[defaults.capacitor]\ntolerance = "0 %"\n'
+GND = "GND: U2.2/GND/power_in U1.2/GND/power_in"
+
+
+@dataclass(frozen=True, kw_only=True)
+class Circuit:
+    """A board as text, with what its project file says."""
+
+    parts: str
+    nets: str
+    facts: str
+
+
+DIVIDER = Circuit(
+    parts="R1 30k, R2 10k, C1 100n C0G, J1 IN, U1 QX7301, U2 QX5000",
+    nets="IN: J1.1 R1.1\nN: R1.2 R2.1 C1.1 U1.1/AIN0/input\n+5V: U2.1/VO/power_out U1.3/VDD/power_in\n"
+    f"{GND} J1.2 R2.2 C1.2",
+    facts='[net."IN"]\nswing = "0 V .. 12 V"\n',
+)
+RESET = "+3V3: U2.1/VO/power_out R1.1 U1.3/VDD/power_in\nN: R1.2 C1.1 U1.7/NRST/input\n" + GND + " C1.2"
+VALID = '[supply."+3V3"]\nvoltage = "3.3 V"\nvalid = "3 V"\nrise = "10 ms"\n'
+STEP = '[supply."+3V3"]\nvoltage = "3.3 V"\n'
+PIN = '[pin."U1.NRST"]\nlow = "30 % of +3V3"\nhigh = "70 % of +3V3"\n'
+RAMPED = Circuit(parts="R1 10k, C1 100n C0G, U1 QX7301, U2 QX3300", nets=RESET, facts=VALID + PIN)
+LARGE = Circuit(parts="R1 1M, C1 1u C0G, U1 QX7301, U2 QX3300", nets=RESET, facts=STEP)
+ACTIVE_HIGH = Circuit(
+    parts="R1 10k, C1 100n C0G, U1 QX7301, U2 QX5000",
+    nets=f"+5V: U2.1/VO/power_out C1.1 U1.3/VDD/power_in\nN: C1.2 R1.1 U1.7/RST/input\n{GND} R1.2",
+    facts='[supply."+5V"]\nvoltage = "5 V"\nrise = "1 ms"\n',
+)
+CONTACT = STEP + '[part."SW1"]\ncontact = "normally open"\ncontact-resistance = "0 ohm"\n'
+BUTTON = Circuit(
+    parts="R1 10k, R2 1k, C1 1u C0G, SW1 push, U1 QX7301, U2 QX3300",
+    nets="+3V3: U2.1/VO/power_out R1.1 U1.3/VDD/power_in\nA: R1.2 R2.1 SW1.1\n"
+    f"N: R2.2 C1.1 U1.7/KEY/input\n{GND} C1.2 SW1.2",
+    facts=CONTACT,
+)
+DIVIDING = Circuit(
+    parts="R1 10k, R2 3.3k, C1 1u C0G, SW1 push, U1 QX7301, U2 QX3300",
+    nets="+3V3: U2.1/VO/power_out R1.1 U1.3/VDD/power_in\nN: R1.2 C1.1 R2.1 U1.7/KEY/input\n"
+    f"S: R2.2 SW1.1\n{GND} C1.2 SW1.2",
+    facts=CONTACT,
+)
+STAGES = Circuit(
+    parts="R1 10k, R2 10k, C1 100n C0G, C2 100n C0G, J1 IN, U1 QX7301, U2 QX3300",
+    nets="IN: J1.1 R1.1\nN: R1.2 R2.1 C1.1\nB: R2.2 C2.1 U1.1/AIN0/input\n+3V3: U2.1/VO/power_out U1.3/VDD/power_in\n"
+    f"{GND} J1.2 C1.2 C2.2",
+    facts="",
+)
+TAPPED = Circuit(
+    parts="R1 10k, R2 10k, C1 100n C0G, J1 IN, U1 QX7301, U2 QX3300",
+    nets="IN: J1.1 R1.1\nA: R1.2 R2.1\nN: R2.2 C1.1 U1.1/AIN0/input\n+3V3: U2.1/VO/power_out U1.3/VDD/power_in\n"
+    f"{GND} J1.2 C1.2",
+    facts='[net."IN"]\nswing = "0 V .. 3.3 V"\n',
+)
+LOADED = Circuit(
+    parts="R1 100, R2 100, C1 100n C0G, U2 QX5000, U1 QX7301",
+    nets=f"+5V: U2.1/VO/power_out R1.1\nN: R1.2 R2.1 C1.1\n{GND} R2.2 C1.2",
+    facts='[supply."+5V"]\nvoltage = "5 V"\n[part."R2"]\ntolerance = "50 %"\n',
+)
+
+UP, PRESS, RELEASE, STEPS = (f'event = "{event}"' for event in ("power-up", "press", "release", "step-up"))
+CASES = {
+    "1 time to 2 V": (DIVIDER, "N", "delay", f'{STEPS}, to = "2 V"', 823.959e-6, "s"),
+    "1b time to 2.9 V": (DIVIDER, "N", "delay", f'{STEPS}, to = "2.9 V"', 2.55090e-3, "s"),
+    "1c corner": (DIVIDER, "N", "corner_frequency", "", 212.207, "Hz"),
+    "2 ramp to 0.99 V": (RAMPED, "N", "delay", f'{UP}, to = "0.99 V"', 3.98134e-3, "s"),
+    "2 ramp to 2.31 V": (RAMPED, "N", "delay", f'{UP}, to = "2.31 V"', 7.99966e-3, "s"),
+    "2b 30 % of the moment": (RAMPED, "N", "delay", f'{UP}, to = "may switch"', 0.761434e-3, "s"),
+    "2b 70 % of the moment": (RAMPED, "N", "delay", f'{UP}, to = "must have switched"', 3.19706e-3, "s"),
+    "3a above 1.5 V": (ACTIVE_HIGH, "N", "pulse_width", f'{UP}, level = "1.5 V"', 1.38862e-3, "s"),
+    "3a peak": (ACTIVE_HIGH, "N", "peak_voltage", UP, 3.16060, "V"),
+    "6 press": (BUTTON, "N", "delay", f'{PRESS}, to = "0.99 V"', 1.20397e-3, "s"),
+    "6 release": (BUTTON, "N", "delay", f'{RELEASE}, to = "2.31 V"', 13.2437e-3, "s"),
+    "6b press": (DIVIDING, "N", "delay", f'{PRESS}, to = "0.99 V"', 6.63387e-3, "s"),
+    "7 without leakage": (LARGE, "N", "delay", f'{UP}, to = "2.31 V"', 1.20397, "s"),
+    "10 tapped line to 2.31 V": (TAPPED, "N", "delay", f'{STEPS}, to = "2.31 V"', 2e-3 * 1.2039728, "s"),
+    "10a to 50 % of the step": (STAGES, "B", "delay", f'{STEPS}, to = "50 % of step"', 2.22492e-3, "s"),
+    "10a settled at A": (STAGES, "N", "settling_time", f'{STEPS}, band = "0.01220703125 %"', 22.7439e-3, "s"),
+    "10a settled at B": (STAGES, "B", "settling_time", f'{STEPS}, band = "0.01220703125 %"', 24.0038e-3, "s"),
+}
+
+
+def findings(
+    folder: Path, circuit: Circuit, subject: str, measure: str, options: str, limits: list[str]
+) -> list[Finding]:
+    """One finding a limit, from files alone."""
+    (folder / "board.xml").write_text(xml(circuit.parts, circuit.nets), encoding="utf-8")
+    board = '[board]\nnetlist = "board.xml"\nrules = ["asked.toml"]\n'
+    (folder / "rcrules.toml").write_text(board + circuit.facts + EXACT, encoding="utf-8")
+    rules = ['[pack]\nname = "asked"\ntitle = "Asked"\n']
+    for number, limit in enumerate(limits):
+        rules.append(
+            f'[[rule]]\nid = "asked-{number}"\ntitle = "asked"\nlevel = "error"\n{subject}\nmeasure = "{measure}"\n'
+            f'{f"with = {{ {options} }}" if options else ""}\n{limit}\nwhy = "asked"\nsource = "asked"\n'
+        )
+    (folder / "asked.toml").write_text("\n".join(rules), encoding="utf-8")
+    return sorted(run(Job(project=str(folder / "rcrules.toml"))).findings, key=lambda finding: finding.rule)
+
+
+@pytest.mark.parametrize("name", CASES)
+def test_each_answer_is_found_and_decides(name: str, tmp_path: Path):
+    circuit, net, measure, options, answer, unit = CASES[name]
+    limits = [f'at-most = "{answer * factor:.9g} {unit}"' for factor in (0.9, 1.1)]
+    below, above = findings(tmp_path, circuit, f'net = ["{net}"]', measure, options, limits)
+    assert below.measured is not None
+    assert below.measured.nominal == pytest.approx(answer, rel=5e-6)
+    assert (below.outcome, above.outcome) == ("fails", "holds")
+
+
+@pytest.mark.parametrize(("level", "answer"), [("0.99 V", -5.10957e-3), ("2.31 V", -1.09124e-3)])
+def test_a_delay_from_a_valid_supply_is_negative_behind_a_slow_ramp(level: str, answer: float, tmp_path: Path):
+    """Circuit 2a: the supply is valid at 9.09091 ms."""
+    options = f'{UP}, from = "supply valid", to = "{level}"'
+    (found,) = findings(tmp_path, RAMPED, 'net = ["N"]', "delay", options, ['at-least = "0 s"'])
+    assert found.measured is not None
+    assert found.measured.nominal == pytest.approx(answer, abs=6e-9)
+    assert found.outcome == "fails"
+
+
+def test_tolerances_given_on_the_parts_bound_the_time(tmp_path: Path):
+    """Circuit 1a, R ±1 %, C ±10 %; the C0G letters and the resistors' drift widen the bounds by what is assumed."""
+    parts = "R1 30k 1%, R2 10k 1%, C1 100n 10% C0G, J1 IN, U1 QX7301, U2 QX5000"
+    circuit = Circuit(parts=parts, nets=DIVIDER.nets, facts=DIVIDER.facts)
+    limits = ['at-most = "927.014 us"', 'at-most = "950 us"', 'at-most = "900 us"']
+    edge, wide, narrow = findings(tmp_path, circuit, 'net = ["N"]', "delay", f'{STEPS}, to = "2 V"', limits)
+    assert narrow.measured is not None
+    assert narrow.measured.low == pytest.approx(725.360e-6, rel=1.5e-2)
+    assert narrow.measured.high == pytest.approx(927.014e-6, rel=1.5e-2)
+    assert narrow.measured.high >= 927.014e-6
+    assert narrow.measured.method == "proved"
+    assert (narrow.outcome, edge.outcome, wide.outcome) == ("fails", "undecided", "holds")
+
+
+def test_a_level_near_the_end_is_never_reached_in_the_worst_case(tmp_path: Path):
+    """Circuit 1b, R ±5 %."""
+    parts = "R1 30k 5%, R2 10k 5%, C1 100n C0G, J1 IN, U1 QX7301, U2 QX5000"
+    circuit = Circuit(parts=parts, nets=DIVIDER.nets, facts=DIVIDER.facts)
+    options = f'{STEPS}, to = "2.9 V"'
+    (found,) = findings(tmp_path, circuit, 'net = ["N"]', "delay", options, ['at-most = "1 s"'])
+    assert found.measured is not None
+    assert found.measured.high == inf
+    assert found.outcome == "fails"
+
+
+@pytest.mark.parametrize(("leakage", "high"), [("0 A .. 0.98 uA", 5.44674), ("-1 uA .. 1 uA", inf)])
+def test_the_leakage_of_the_pin_decides(leakage: str, high: float, tmp_path: Path):
+    """Circuit 7: with +1 µA the pin ends at 2.3 V and never reaches 2.31 V."""
+    circuit = Circuit(parts=LARGE.parts, nets=LARGE.nets, facts=f'{STEP}[pin."U1.NRST"]\nleakage = "{leakage}"\n')
+    options = f'{UP}, to = "2.31 V"'
+    (found,) = findings(tmp_path, circuit, 'net = ["N"]', "delay", options, ['at-most = "2 s"'])
+    assert found.measured is not None
+    assert found.measured.high == pytest.approx(high, rel=0.2)
+    assert found.outcome == "fails"
+
+
+def test_a_ratiometric_level_cancels_the_supply_and_a_fixed_one_does_not(tmp_path: Path):
+    """Circuit 8: VS 3.3 V ±10 %; ln 2 · RC whatever the supply, 6.06136 .. 8.10930 ms to 1.65 V."""
+    facts = '[supply."+3V3"]\nvoltage = "3.3 V +/- 10 %"\n'
+    circuit = Circuit(parts="R1 10k, C1 1u C0G, U1 QX7301, U2 QX3300", nets=RESET, facts=facts)
+    limit = ['at-most = "7.1 ms"']
+    (ratio,) = findings(tmp_path, circuit, 'net = ["N"]', "delay", f'{UP}, to = "50 % of +3V3"', limit)
+    (fixed,) = findings(tmp_path, circuit, 'net = ["N"]', "delay", f'{UP}, to = "1.65 V"', limit)
+    assert ratio.measured is not None
+    assert fixed.measured is not None
+    assert ratio.measured.nominal == pytest.approx(6.93147e-3, rel=1e-6)
+    assert ratio.outcome == "holds"
+    assert fixed.measured.high >= 8.10930e-3
+    assert fixed.measured.high == pytest.approx(8.10930e-3, rel=1e-2)
+    assert fixed.outcome == "fails"
+
+
+def test_a_pressed_level_that_stays_too_high_is_never_reached(tmp_path: Path):
+    """Circuit 6a: 4.7 kΩ against 10 kΩ leaves 1.0551 V, above 0.99 V."""
+    circuit = Circuit(parts=DIVIDING.parts.replace("3.3k", "4.7k"), nets=DIVIDING.nets, facts=DIVIDING.facts)
+    (found,) = findings(tmp_path, circuit, 'net = ["N"]', "delay", f'{PRESS}, to = "0.99 V"', ['at-most = "1 s"'])
+    assert found.measured is not None
+    assert found.measured.nominal == inf
+    assert found.outcome == "fails"
+
+
+def test_power_peaks_inside_the_box(tmp_path: Path):
+    """Circuit 14: 62.5 mW at matched resistance, more than at either end of 50..150 Ω (55.556 and 60.0 mW)."""
+    low, high = findings(tmp_path, LOADED, 'part = ["R2"]', "power", "", ['at-most = "61 mW"', 'at-most = "64 mW"'])
+    assert low.measured is not None
+    assert low.measured.high == pytest.approx(62.5e-3, rel=1e-2)
+    assert low.measured.low == pytest.approx(55.556e-3, rel=2e-2)
+    assert (low.outcome, high.outcome) == ("fails", "holds")
