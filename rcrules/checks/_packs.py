@@ -1,20 +1,15 @@
 """Packs and rules as the document holds them, and rules that met nothing."""
 
-from collections.abc import Collection, Iterator, Mapping, Sequence
+from collections.abc import Collection, Mapping, Sequence
 from pathlib import PurePath
 from typing import Final
 
+from rcrules.checks._conditions import FACT_WORDS, compared
 from rcrules.findings import Json
 from rcrules.inventory import place_json
-from rcrules.rulebook import Pack, Rule, Selection, facts_of, sentence
+from rcrules.rulebook import Pack, Rule, sentence
 
 _FILE_SUFFIX: Final = ".toml"
-_FACT_WORDS: Final = {
-    "rated_voltage": ("the rated voltage is", "a field of the BOM or [part]"),
-    "supply": ("the voltage of the supply is", "[supply]"),
-    "voltage": ("the voltage there is", "[supply] or [net]"),
-}
-"""Fact of a condition -> what is missing, and what would give it."""
 
 
 def packs(rules: Sequence[Rule], met: Mapping[str, int]) -> list[Json]:
@@ -51,7 +46,7 @@ def unclear(rules: Sequence[Rule], counts: Mapping[str, int]) -> list[Json]:
     together: dict[tuple[str, str, int, tuple[str, ...]], list[Rule]] = {}
     for rule in rules:
         if counts.get(rule.id):
-            key = (rule.pack.name, rule.measure.subject, counts[rule.id], _missing(rule))
+            key = (rule.pack.name, rule.measure.subject, counts[rule.id], compared(rule.selection))
             together.setdefault(key, []).append(rule)
     return [
         {"place": {}, "text": _left_out(members, subject, number, missing)}
@@ -59,23 +54,11 @@ def unclear(rules: Sequence[Rule], counts: Mapping[str, int]) -> list[Json]:
     ]
 
 
-def _missing(rule: Rule) -> tuple[str, ...]:
-    """The facts that its conditions compare, without their ends: ``voltage``, ``rated_voltage``, ``supply``."""
-    return tuple(sorted({name.rpartition("_")[0] for name in _compared(rule.selection)}))
-
-
-def _compared(selection: Selection) -> Iterator[str]:
-    if selection.when is not None:
-        yield from facts_of(selection.when)
-    for item in (*selection.any_of, *selection.exclude):
-        yield from _compared(item)
-
-
 def _left_out(rules: Sequence[Rule], subject: str, number: int, missing: tuple[str, ...]) -> str:
     """``voltage-within-rating leaves out 34 capacitors: their rated voltage is not known (…)``."""
     names, verb = " and ".join(rule.id for rule in rules), "leaves out" if len(rules) == 1 else "each leave out"
-    known = " or ".join(_FACT_WORDS[name][0] for name in missing)
-    sources = " or ".join(_FACT_WORDS[name][1] for name in missing)
+    known = " or ".join(FACT_WORDS[name][0] for name in missing)
+    sources = " or ".join(FACT_WORDS[name][1] for name in missing)
     subjects = subject if number == 1 else f"{subject}s"
     return f"{names} {verb} {number} {subjects}: {known} not known ({sources} can tell)"
 

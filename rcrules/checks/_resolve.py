@@ -3,7 +3,7 @@
 from collections.abc import Mapping
 from dataclasses import dataclass
 
-from rcrules.checks._facts import unknown
+from rcrules.checks._conditions import condition
 from rcrules.checks._lookup import Missing, look_up
 from rcrules.checks._subjects import Subject
 from rcrules.levels import Level
@@ -47,7 +47,7 @@ def resolve(rule: Rule, subject: Subject, board: Board, project: Project, *, sur
 
     sure: False where a fact is missing that decides whether the rule meets the subject.
     """
-    missing: list[Missing] = [] if sure else [_condition(rule, subject, board)]
+    missing: list[Missing] = [] if sure else [condition(rule, subject, board)]
     options = {name: _option(value, rule, subject, board, project) for name, value in rule.options.items()}
     bounds = [_bound(limit, rule, subject, board, project) for limit in rule.limits]
     missing += [item for item in (*options.values(), *bounds) if isinstance(item, Missing)]
@@ -59,16 +59,6 @@ def resolve(rule: Rule, subject: Subject, board: Board, project: Project, *, sur
         missing=tuple(dict.fromkeys(missing)),
         sure=sure,
     )
-
-
-def _condition(rule: Rule, subject: Subject, board: Board) -> Missing:
-    """What must be known to tell whether a rule meets a subject."""
-    nets = [held for view in subject.views for held in unknown(view, board)]
-    lines = dict.fromkeys(
-        f'[supply."{held.net}"] voltage = "…"' if held.kind == "supply" else f'[net."{held.net}"] swing = "…"'
-        for held in nets
-    )
-    return Missing(reason=f"whether {rule.selection.when_text or 'its condition'} is not known", ask=tuple(lines))
 
 
 def _option(value: OptionValue, rule: Rule, subject: Subject, board: Board, project: Project) -> OptionValue | Missing:

@@ -2,7 +2,7 @@
 
 from collections.abc import Iterable, Iterator, Sequence
 from dataclasses import dataclass
-from typing import Generic, TypeVar
+from typing import Final, Generic, TypeVar
 
 from rcrules.design import Fact, Part
 from rcrules.errors import Place
@@ -12,6 +12,7 @@ from rcrules.project import PartFacts, Project, ranked
 from rcrules.quantities import show
 
 T = TypeVar("T")
+_DEFAULT: Final = "project [defaults."
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -74,7 +75,7 @@ def gather(part: Part, kind: ValueKind, tables: Sequence[tuple[str, PartFacts]],
         values=values,
         valued=(*values, *believed),
         sources=(*fields, *values, *believed),
-        defaults=((f"project [defaults.{kind}]", defaults),) if defaults is not None else (),
+        defaults=((f"{_DEFAULT}{kind}]", defaults),) if defaults is not None else (),
     )
 
 
@@ -117,14 +118,17 @@ def tables_say(tables: Iterable[tuple[str, PartFacts]], attribute: str) -> Itera
 
 
 def disagreements(name: str, said: Sequence[Said[T]], unit: str) -> tuple[str, ...]:
-    """The facts that lost and differ from the winner, in words; where two value texts differ the design tells it."""
+    """The facts that lost and differ from the winner, in words.
+
+    Where two value texts differ the design tells it, and a default is there to lose.
+    """
     if len(said) < 2:
         return ()
     won = _told(said[0].fact, unit)
     lost = {
         _told(item.fact, unit): item.origin
         for item in reversed(said)
-        if item.fact != said[0].fact and not _is_value_text(item, said[0])
+        if item.fact != said[0].fact and not _is_value_text(item, said[0]) and not item.origin.startswith(_DEFAULT)
     }
     return tuple(f"{name} {won} ({said[0].origin}) is taken, not {text} ({lost[text]})" for text in lost if text != won)
 

@@ -22,6 +22,8 @@ from rcrules.vocabulary import SEVERITIES
 
 _INDENT: Final = " " * 8
 _SHOWN_CASES: Final = 4
+_MOST_RELATIVE: Final = 10.0
+"""A number more than so many times its nominal value off is shown as it is."""
 
 
 def findings_lines(document: Document, *, verbose: bool) -> list[Line]:
@@ -87,7 +89,8 @@ def _case_text(worst: list[Json]) -> str:
 
 def _parameter_text(item: Json) -> str:
     relative = item["relative"]
-    amount = number(item["value"], item["unit"]) if relative is None else f"{100 * relative:+.3g} %"
+    plain = relative is None or abs(relative) > _MOST_RELATIVE
+    amount = number(item["value"], item["unit"]) if plain else f"{100 * relative:+.3g} %"
     return f"{item['parameter']} {amount}" + (f" ({item['why']})" if item["why"] else "")
 
 

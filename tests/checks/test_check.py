@@ -117,6 +117,31 @@ def test_rules_that_miss_the_same_fact_say_so_in_one_remark(folder: Path) -> Non
     assert all(item["place"] == {} for item in remarks)
 
 
+@pytest.mark.parametrize(
+    ("when", "netlist", "reason", "line"),
+    [
+        (
+            "rated_voltage_nominal > 10 V",
+            NETLIST.replace(" 16V", ""),
+            "the rated voltage is not known, and the rule is for rated_voltage_nominal > 10 V",
+            '[part."C1"] rated-voltage = "…"',
+        ),
+        (
+            "voltage_high > 60 V",
+            NETLIST.replace("+3V3", "VCC"),
+            "the voltage there is not known, and the rule is for voltage_high > 60 V",
+            '[supply."VCC"] voltage = "…"',
+        ),
+    ],
+)
+def test_a_condition_on_a_fact_that_is_missing_asks_for_that_fact(
+    folder: Path, when: str, netlist: str, reason: str, line: str
+) -> None:
+    body = f'kind = ["capacitor"]\npart = ["C1"]\nwhen = "{when}"\nmeasure = "stored_charge"\nat-most = "1 C"'
+    found = only(judged(folder, body, netlist=netlist))
+    assert (found.outcome, found.reason, found.ask[0]) == ("undecided", reason, line)
+
+
 def test_one_cause_on_many_parts_is_one_group(folder: Path) -> None:
     twice = (
         NETLIST.replace('<comp ref="C2">', '<comp ref="C3"><value>100nF 10% 16V</value></comp><comp ref="C2">')

@@ -47,6 +47,12 @@ def test_a_rating_that_another_source_contradicts_is_told():
     assert told == ("rated power 250 mW (netlist value) is taken, not 100 mW (netlist description)",)
 
 
+def test_a_default_that_loses_contradicts_nothing():
+    default = Project(defaults={"capacitor": facts(tolerance=(-0.3, 0.3), dielectric="X7R")})
+    found = rated(part("C1", "100n 5% C0G"), default)
+    assert (found.dielectric, found.disagreements) == ("C0G", ())
+
+
 def test_equal_values_in_other_spelling_do_not_disagree():
     assert rated(part("C1", "100nF", bom="0.1uF")).disagreements == ()
 

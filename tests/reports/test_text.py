@@ -68,6 +68,11 @@ def test_ratios_are_shown_as_the_rule_writes_them() -> None:
     assert "0 % .. 100 % .. 105 %   must be at most 100 %   over by 5 %" in text(DOCUMENT)
 
 
+def test_a_number_far_off_its_nominal_is_shown_as_it_is() -> None:
+    worst = [{"parameter": "SW1 contact", "value": 0.1, "unit": "Ω", "relative": 1e8, "why": "", "from": ""}]
+    assert "SW1 contact 100 mΩ" in of(finding(detail={"side": "at_least", "worst": worst}))
+
+
 def test_nothing_found_says_so() -> None:
     found = of()
     assert "0 of 0 findings decided" in found
