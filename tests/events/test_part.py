@@ -157,7 +157,8 @@ def test_a_resistor_takes_as_much_energy_as_the_capacitor_that_it_charges():
 
 
 def test_a_capacitor_with_an_open_end_says_so():
-    found = bench("C1 100nF, C2 1uF, U1 QX7301", "+5V: C1.1 C2.1 U1.1/VDD/power_in\nGND: C2.2 U1.2/GND/power_in\nN: C1.2")
+    nets = "+5V: C1.1 C2.1 U1.1/VDD/power_in\nGND: C2.2 U1.2/GND/power_in\nN: C1.2"
+    found = bench("C1 100nF, C2 1uF, U1 QX7301", nets)
     with pytest.raises(Unmeasurable) as told:
         found.pose("C1", "applied_voltage")
     assert (told.value.reason, told.value.ask) == ("one end of C1 is open", "")
