@@ -49,13 +49,17 @@ def run_all(jobs: Sequence[Job], processes: int = 1) -> "list[Document]":
 def run(job: Job) -> "Document":
     """Read, recognise, judge, tell. Raises UserMistake with all mistakes of project, inputs and rules."""
     from rcrules.design import build
+    from rcrules.events import let_go
     from rcrules.networks import recognise
     from rcrules.parts import rate
 
     project, exports, rules = _read(job)
     design = build(exports)
     board = recognise(design, rate(design, project), project)
-    return _document(job, project, board, rules)
+    try:
+        return _document(job, project, board, rules)
+    finally:
+        let_go()  # reports need the document alone
 
 
 def _read(job: Job) -> "tuple[Project, list[Export], list[Rule]]":

@@ -94,7 +94,7 @@ def _posed(
         try:
             known[key] = pose(board, project, case.subject.target, case.rule.measure, case.options)
         except Unmeasurable as error:
-            known[key] = error
+            known[key] = error.with_traceback(None)  # the frames on it would keep the board
     return known[key]
 
 

@@ -32,6 +32,7 @@ def main(arguments: Sequence[str] | None = None) -> int:
         print("this is a bug of rcrules, not of your files; please report it with the lines above", file=sys.stderr)
         return BUG
     finally:
+        gc.freeze()  # what is left goes with the process: looking through it for cycles on the way out is slow
         gc.enable()
     return found
 

@@ -2,8 +2,6 @@
 
 import argparse
 import sys
-from collections.abc import Iterator
-from contextlib import contextmanager
 from pathlib import Path
 from typing import TYPE_CHECKING
 
@@ -67,22 +65,7 @@ def _documents(chosen: argparse.Namespace, *, with_rules: bool) -> "list[Documen
     jobs = [
         Job(inputs=tuple(chosen.inputs), project=project, rules=rules, with_rules=with_rules) for project in projects
     ]
-    with _uncollected():
-        return run_all(jobs, processes=chosen.jobs)
-
-
-@contextmanager
-def _uncollected() -> Iterator[None]:
-    """Without the search for unreachable cycles: a run builds one large tree and ends, and the search costs a fifth."""
-    import gc
-
-    enabled = gc.isenabled()
-    gc.disable()
-    try:
-        yield
-    finally:
-        if enabled:
-            gc.enable()
+    return run_all(jobs, processes=chosen.jobs)
 
 
 def _targets(chosen: argparse.Namespace) -> "list[Target]":

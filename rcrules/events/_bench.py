@@ -137,6 +137,11 @@ def bench(board: Board, project: Project) -> Bench:
     return _bench(_Same(board, project))
 
 
+def let_go() -> None:
+    """Forget the bench that is kept, and the board with it."""
+    _bench.cache_clear()
+
+
 @lru_cache(maxsize=1)
 def _bench(same: _Same) -> Bench:
     return Bench(board=same.board, project=same.project)
