@@ -1,6 +1,6 @@
 """Which subjects a rule is held against."""
 
-from collections.abc import Callable, Iterable
+from collections.abc import Callable, Iterable, Mapping
 from fnmatch import fnmatchcase
 from typing import Final
 
@@ -23,7 +23,8 @@ def selected(selection: Selection, subject: Subject, board: Board) -> bool | Non
 
 def matches(selection: Selection, view: View, board: Board) -> bool | None:
     """Whether all given keys match, one of ``any-of`` does, and none of ``not``."""
-    if not all(test(selection, view) for test in _TESTS):
+    asked = ((wanted, test) for key, test in _TESTS.items() if (wanted := getattr(selection, key)))
+    if not (all(test(wanted, view) for wanted, test in asked) and _valued(selection, view)):
         return False
     any_of = [matches(item, view, board) for item in selection.any_of] or [True]
     excluded = [matches(item, view, board) for item in selection.exclude]
@@ -49,11 +50,11 @@ def _named(wanted: tuple[str, ...], view: View) -> bool:
     return not wanted or any(has_token(name, word) for name in names for word in wanted)
 
 
-def _valued(low: Spread | None, high: Spread | None, parts: tuple[RatedPart, ...]) -> bool:
-    """Whether a part of the unit asked for has a marked value within both bounds."""
-    if low is None and high is None:
-        return True
-    return any(_between(part, low, high) for part in parts)
+def _valued(selection: Selection, view: View) -> bool:
+    """Whether a part of the unit asked for has a marked value within both bounds, and one the polarity asked for."""
+    low, high, polarised = selection.value_at_least, selection.value_at_most, selection.polarised
+    within = (low is None and high is None) or any(_between(part, low, high) for part in view.parts)
+    return within and (polarised is None or any(part.polarised == polarised for part in view.parts))
 
 
 def _between(part: RatedPart, low: Spread | None, high: Spread | None) -> bool:
@@ -62,19 +63,17 @@ def _between(part: RatedPart, low: Spread | None, high: Spread | None) -> bool:
     return (low is None or part.value.si >= low.nominal) and (high is None or part.value.si <= high.nominal)
 
 
-_TESTS: Final[tuple[Callable[[Selection, View], bool], ...]] = (
-    lambda selection, view: _within(selection.role, view.roles),
-    lambda selection, view: _named(selection.name, view),
-    lambda selection, view: globbed(selection.net, view.nets),
-    lambda selection, view: globbed(selection.pin, view.feeds),
-    lambda selection, view: globbed(selection.part, (part.ref for part in view.parts)),
-    lambda selection, view: globbed(selection.sheet, (part.part.sheet for part in view.parts)),
-    lambda selection, view: _within(selection.kind, (part.kind for part in view.parts)),
-    lambda selection, view: _within(selection.kind_fed, view.kinds_fed),
-    lambda selection, view: _within(selection.dielectric, (part.dielectric or "" for part in view.parts)),
-    lambda selection, view: _within(selection.certainty, (view.certainty,)),
-    lambda selection, view: _valued(selection.value_at_least, selection.value_at_most, view.parts),
-    lambda selection, view: (
-        selection.polarised is None or any(part.polarised == selection.polarised for part in view.parts)
-    ),
-)
+_Test = Callable[[tuple[str, ...], View], bool]
+_TESTS: Final[Mapping[str, _Test]] = {
+    "role": lambda wanted, view: _within(wanted, view.roles),
+    "name": lambda wanted, view: _named(wanted, view),
+    "net": lambda wanted, view: globbed(wanted, view.nets),
+    "pin": lambda wanted, view: globbed(wanted, view.feeds),
+    "part": lambda wanted, view: globbed(wanted, (part.ref for part in view.parts)),
+    "sheet": lambda wanted, view: globbed(wanted, (part.part.sheet for part in view.parts)),
+    "kind": lambda wanted, view: _within(wanted, (part.kind for part in view.parts)),
+    "kind_fed": lambda wanted, view: _within(wanted, view.kinds_fed),
+    "dielectric": lambda wanted, view: _within(wanted, (part.dielectric or "" for part in view.parts)),
+    "certainty": lambda wanted, view: _within(wanted, (view.certainty,)),
+}
+"""Key -> whether one of the texts given for it matches."""

@@ -7,6 +7,7 @@ list stands on a line of its own, so that two documents compare line by line.
 import json
 import math
 from dataclasses import fields
+from functools import lru_cache
 from typing import Any, Final
 
 from rcrules.errors import Mistake, Place, UserMistake
@@ -33,7 +34,9 @@ _NUMBERS: Final = frozenset(
 )
 _CASES: Final = frozenset(("low_case", "high_case", "margin_case"))
 _MEMBERS: Final = {kind: tuple(item.name for item in fields(kind)) for kind in (Finding, Quantity)}
-_ENCODER: Final = json.JSONEncoder(ensure_ascii=False, allow_nan=False)
+_AS_IS: Final = frozenset((str, int, bool, type(None)))
+"""Types of the values that need no second look; a large board has millions of them."""
+_ENCODER: Final = json.JSONEncoder(ensure_ascii=False, allow_nan=False, check_circular=False)
 _INFINITE: Final = {"inf": math.inf, "-inf": -math.inf}
 
 
@@ -69,12 +72,10 @@ def settled(document: Document) -> Document:
 
 def _settled(value: Any) -> Any:
     kind = type(value)
-    if kind is str:
-        return value
     if kind is dict:
-        return {str(key): _settled(item) for key, item in value.items()}
+        return {str(key): item if type(item) in _AS_IS else _settled(item) for key, item in value.items()}
     if kind is list or kind is tuple:
-        return [_settled(item) for item in value]
+        return [item if type(item) in _AS_IS else _settled(item) for item in value]
     if kind in _MEMBERS:
         return kind(**{name: _settled(getattr(value, name)) for name in _MEMBERS[kind]})
     return _rounded(value) if isinstance(value, float) else value
@@ -92,14 +93,14 @@ def _line(value: Any) -> str:
 
 
 def _plain(value: Any) -> Any:
-    """Only what JSON knows. Told apart by the exact type, the most frequent first: a board has millions of values."""
+    """Only what JSON knows."""
     kind = type(value)
-    if value is None or kind is str or kind is int or kind is bool:
+    if kind in _AS_IS:
         return value
     if kind is dict:
-        return {str(key): _plain(item) for key, item in value.items()}
+        return {str(key): item if type(item) in _AS_IS else _plain(item) for key, item in value.items()}
     if kind is list or kind is tuple:
-        return [_plain(item) for item in value]
+        return [item if type(item) in _AS_IS else _plain(item) for item in value]
     if kind in _MEMBERS:
         return {name: _plain(getattr(value, name)) for name in _MEMBERS[kind]}
     if isinstance(value, float):
@@ -116,6 +117,7 @@ def _number(value: float) -> float | str | None:
     return _rounded(value)
 
 
+@lru_cache(maxsize=2**16)
 def _rounded(value: float) -> float:
     """At 12 significant digits, without a negative zero; infinities stay, not-a-number is always the same object."""
     return math.nan if math.isnan(value) else float(f"{value:.12g}") + 0.0

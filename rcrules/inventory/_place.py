@@ -1,5 +1,6 @@
 """Places as the document holds them."""
 
+from os.path import isabs
 from pathlib import Path
 
 from rcrules.errors import Place
@@ -18,7 +19,7 @@ def place_json(place: Place) -> Json:
 
 def shown(path: str) -> str:
     """A path that tells nothing of the machine: relative as given, or below the working folder, else the file name."""
-    given = Path(path)
-    if not given.is_absolute():
+    if not isabs(path):
         return path
+    given = Path(path)
     return str(given.relative_to(Path.cwd())) if given.is_relative_to(Path.cwd()) else given.name

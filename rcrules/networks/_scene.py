@@ -3,6 +3,7 @@
 from collections import defaultdict
 from collections.abc import Mapping
 from dataclasses import dataclass, replace
+from itertools import chain
 from typing import Final, TypeVar
 
 from rcrules.design import Design, Pin
@@ -33,6 +34,8 @@ class Scene:
     joints: Mapping[str, str]
     members: Mapping[str, tuple[str, ...]]
     pins: Mapping[str, tuple[Pin, ...]]
+    kinds: Mapping[str, frozenset[str]]
+    """Kinds of the parts with a pin at the joint."""
     claims: Mapping[str, Mapping[str, tuple[Pin, ...]]]
     """What pins say (a word of _held_pins) -> the pins that say it."""
     branches: Mapping[str, tuple[Branch, ...]]
@@ -46,16 +49,18 @@ class Scene:
     def says(self, joint: str, *claims: str) -> tuple[Pin, ...]:
         """The pins at the joint that say any of the claims."""
         found = self.claims.get(joint, {})
-        return tuple(pin for claim in claims for pin in found.get(claim, ()))
+        said = [found[claim] for claim in claims if claim in found]
+        return said[0] if len(said) == 1 else tuple(chain.from_iterable(said))
 
     def of_kind(self, joint: str, *kinds: str) -> tuple[Pin, ...]:
         """The pins at the joint of parts of these kinds."""
-        return tuple(pin for pin in self.pins.get(joint, ()) if self.kind(pin.ref) in kinds)
+        if self.kinds.get(joint, frozenset()).isdisjoint(kinds):
+            return ()
+        return tuple(pin for pin in self.pins[joint] if self.kind(pin.ref) in kinds)
 
     def kind(self, ref: str) -> str:
         """Kind of the part, ``other`` where it is not known."""
-        part = self.parts.get(ref)
-        return part.kind if part else "other"
+        return _kind(self.parts, ref)
 
     def hints(self, joint: str) -> tuple[NameHint, ...]:
         """What the names of the joint's nets say, strong ones first."""
@@ -83,6 +88,7 @@ def scene(design: Design, parts: Mapping[str, RatedPart], facts: Facts) -> Scene
     }
     return Scene(
         design=design, parts=parts, facts=facts, joints=joints, members=members, pins=pins,
+        kinds={joint: frozenset(_kind(parts, pin.ref) for pin in own) for joint, own in pins.items()},
         claims=_merged(by_net, joints),
         branches=_by_ends(connected(_branches(fitted, joints), pins, facts)),
         contacts=_by_ends(_contacts(fitted, facts, joints)),
@@ -90,6 +96,11 @@ def scene(design: Design, parts: Mapping[str, RatedPart], facts: Facts) -> Scene
         coils=_coils(fitted, switching, joints),
         switching=frozenset(joints[net] for net in switching if net in joints),
     )  # fmt: skip
+
+
+def _kind(parts: Mapping[str, RatedPart], ref: str) -> str:
+    part = parts.get(ref)
+    return part.kind if part else "other"
 
 
 def _is_fitted(parts: Mapping[str, RatedPart], pin: Pin) -> bool:
