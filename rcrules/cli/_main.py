@@ -6,7 +6,6 @@ from collections.abc import Sequence
 from typing import Final
 
 from rcrules.cli._arguments import parser
-from rcrules.errors import UserMistake
 
 USAGE: Final = 2
 BUG: Final = 3
@@ -16,6 +15,8 @@ INTERRUPTED: Final = 130
 def main(arguments: Sequence[str] | None = None) -> int:
     """Run one command; everything but reports goes to standard error."""
     chosen = parser().parse_args(arguments)
+    from rcrules.errors import UserMistake  # help is shown without it
+
     gc.disable()  # one short run that makes few cycles: collecting costs a third of a large board's time
     try:
         found: int = chosen.run(chosen)

@@ -2,7 +2,6 @@
 
 import argparse
 import sys
-from pathlib import Path
 from typing import TYPE_CHECKING
 
 if TYPE_CHECKING:
@@ -42,6 +41,8 @@ def rules(chosen: argparse.Namespace) -> int:
 
 def demo(chosen: argparse.Namespace) -> int:
     """Copy the demo board, check it, show the report; its planted faults are no failure of the command."""
+    from pathlib import Path
+
     from rcrules.cli._demo import copy_demo
     from rcrules.cli._output import to_stdout, wants_color
     from rcrules.pipeline import Job, run
