@@ -6,16 +6,18 @@ list stands on a line of its own, so that two documents compare line by line.
 
 import json
 import math
+from collections.abc import Mapping
 from dataclasses import fields
 from functools import lru_cache
 from typing import Any, Final
 
 from rcrules.errors import Mistake, Place, UserMistake
 from rcrules.findings._document import Document, Finding, Json, Quantity
+from rcrules.findings._shape import damage
 
 SCHEMA: Final = 1
-_KEYS: Final = tuple("rcrules" if item.name == "schema" else item.name for item in fields(Document))
-_ORDER: Final = ("rcrules", *(key for key in _KEYS if key != "rcrules"))
+_FIELDS: Final = tuple(item.name for item in fields(Document) if item.init)
+_ORDER: Final = ("rcrules", *(name for name in _FIELDS if name != "schema"))
 _NUMBERS: Final = frozenset(
     (
         "low",
@@ -33,19 +35,19 @@ _NUMBERS: Final = frozenset(
     )
 )
 _CASES: Final = frozenset(("low_case", "high_case", "margin_case"))
-_MEMBERS: Final = {kind: tuple(item.name for item in fields(kind)) for kind in (Finding, Quantity)}
+_MEMBERS: Final[Mapping[type, tuple[str, ...]]] = {
+    kind: tuple(item.name for item in fields(kind)) for kind in (Finding, Quantity)
+}
 _AS_IS: Final = frozenset((str, int, bool, type(None)))
 """Types of the values that need no second look; a large board has millions of them."""
-_ENCODER: Final = json.JSONEncoder(ensure_ascii=False, allow_nan=False, check_circular=False)
 _INFINITE: Final = {"inf": math.inf, "-inf": -math.inf}
 
 
 def dumps(document: Document) -> str:
     """The JSON text of section "findings document", ending in a newline."""
-    members = {
-        "rcrules" if item.name == "schema" else item.name: getattr(document, item.name) for item in fields(Document)
-    }
-    return "{\n" + ",\n".join(f"{json.dumps(key)}: {_block(members[key])}" for key in _ORDER) + "\n}\n"
+    whole = document if document.settled else settled(document)
+    members = ((key, getattr(whole, "schema" if key == "rcrules" else key)) for key in _ORDER)
+    return "{\n" + ",\n".join(f"{json.dumps(key)}: {_block(member)}" for key, member in members) + "\n}\n"
 
 
 def loads(text: str, name: str = "<saved>") -> Document:
@@ -61,13 +63,19 @@ def loads(text: str, name: str = "<saved>") -> Document:
         )
     if data["rcrules"] != SCHEMA:
         raise _mistake(name, "another schema number", found=str(data["rcrules"]), expected=f"schema number {SCHEMA}")
+    if found := damage(data):
+        raise _mistake(
+            name, "a findings document of another shape", found=found, expected="a file saved by this version"
+        )
     members = {key: _revived(data[key]) for key in _ORDER if key not in ("rcrules", "findings")}
-    return Document(**members, schema=SCHEMA, findings=[_finding(item, name) for item in data["findings"]])
+    return Document(**members, schema=SCHEMA, findings=[_finding(item) for item in data["findings"]])
 
 
 def settled(document: Document) -> Document:
     """The document as it reads after saving: numbers at 12 significant digits, plain lists and dictionaries."""
-    return Document(**{item.name: _settled(getattr(document, item.name)) for item in fields(Document)})
+    found = Document(**{name: _settled(getattr(document, name)) for name in _FIELDS})
+    object.__setattr__(found, "settled", True)
+    return found
 
 
 def _settled(value: Any) -> Any:
@@ -89,32 +97,40 @@ def _block(value: Any) -> str:
 
 
 def _line(value: Any) -> str:
-    return _ENCODER.encode(_plain(value))
+    """A settled value on one line; what JSON has no number for is replaced where it occurs."""
+    try:
+        return _ENCODER.encode(value)
+    except ValueError:
+        return _ENCODER.encode(plain(value))
 
 
-def _plain(value: Any) -> Any:
-    """Only what JSON knows."""
-    kind = type(value)
-    if kind in _AS_IS:
-        return value
-    if kind is dict:
-        return {str(key): item if type(item) in _AS_IS else _plain(item) for key, item in value.items()}
-    if kind is list or kind is tuple:
-        return [item if type(item) in _AS_IS else _plain(item) for item in value]
-    if kind in _MEMBERS:
-        return {name: _plain(getattr(value, name)) for name in _MEMBERS[kind]}
-    if isinstance(value, float):
-        return _number(value)
-    raise TypeError(f"{kind.__name__} has no place in a findings document")
+def _members(value: object) -> Json:
+    """Findings and their quantities as objects of JSON."""
+    names = _MEMBERS.get(type(value))
+    if names is None:
+        raise TypeError(f"{type(value).__name__} has no place in a findings document")
+    return {name: getattr(value, name) for name in names}
 
 
-def _number(value: float) -> float | str | None:
-    """A float of 12 significant digits, ``inf``, ``-inf`` or None."""
-    if math.isnan(value):
-        return None
-    if math.isinf(value):
-        return "inf" if value > 0 else "-inf"
-    return _rounded(value)
+_ENCODER: Final = json.JSONEncoder(ensure_ascii=False, allow_nan=False, check_circular=False, default=_members)
+
+
+def plain(value: Any) -> Any:
+    """Only what JSON knows: numbers at 12 significant digits, infinities as texts, objects as dictionaries."""
+    return _finite(_settled(value))
+
+
+def _finite(value: Any) -> Any:
+    """With infinities as the texts ``inf`` and ``-inf``, and None for not-a-number."""
+    if type(value) in _MEMBERS:
+        value = _members(value)
+    if isinstance(value, dict):
+        return {key: _finite(item) for key, item in value.items()}
+    if isinstance(value, list):
+        return [_finite(item) for item in value]
+    if isinstance(value, float) and not math.isfinite(value):
+        return None if math.isnan(value) else "inf" if value > 0 else "-inf"
+    return value
 
 
 @lru_cache(maxsize=2**16)
@@ -140,17 +156,12 @@ def _mistake(name: str, problem: str, *, found: str, expected: str) -> UserMista
     return UserMistake(Mistake(place=Place(file=name), problem=problem, found=found, expected=expected))
 
 
-def _finding(data: Json, name: str) -> Finding:
-    """A Finding of its JSON object; absent optional keys take their defaults."""
+def _finding(data: Json) -> Finding:
+    """A Finding of its JSON object, whose shape has been seen to."""
     revived = _revived(data)
-    measured = revived.get("measured")
-    try:
-        quantity = None if measured is None else Quantity(**{key: _or_nan(key, item) for key, item in measured.items()})
-        return Finding(**{**revived, "measured": quantity})
-    except TypeError as error:
-        raise _mistake(
-            name, "a finding of another shape", found=str(error), expected="a file saved by this version"
-        ) from error
+    measured = revived["measured"]
+    quantity = None if measured is None else Quantity(**{key: _or_nan(key, item) for key, item in measured.items()})
+    return Finding(**{**revived, "measured": quantity})
 
 
 def _or_nan(key: str, value: Any) -> Any:

@@ -1,7 +1,7 @@
 """Counts of the board, its inputs and the remarks about them."""
 
 import re
-from collections.abc import Iterable, Iterator
+from collections.abc import Iterable, Iterator, Sequence
 from pathlib import PurePath
 from typing import Final
 
@@ -23,7 +23,7 @@ def board_counts(board: Board, name: str | None) -> Json:
     rows = listed(board)
     capacitors = sum(is_capacitor(part) for part in rows)
     return {
-        "name": name or _title(board.design.exports),
+        "name": name or _title(_ordered(board.design.exports)),
         "parts": len(board.design.parts),
         "nets": len(board.design.nets),
         "pins": sum(len(net.pins) for net in board.design.nets.values()),
@@ -32,7 +32,7 @@ def board_counts(board: Board, name: str | None) -> Json:
     }
 
 
-def _title(exports: tuple[Export, ...]) -> str:
+def _title(exports: Sequence[Export]) -> str:
     titles = (export.title for export in exports if export.title)
     return next(titles, PurePath(exports[0].source).stem if exports else "board")
 
@@ -45,7 +45,7 @@ def is_capacitor(part: RatedPart) -> bool:
 
 
 def inputs(exports: tuple[Export, ...]) -> list[Json]:
-    """One object per export, in the order given."""
+    """One object per export: netlists, then BOMs, each in the order given, which tells the first from the others."""
     return [
         {
             "file": shown(export.source),
@@ -56,8 +56,12 @@ def inputs(exports: tuple[Export, ...]) -> list[Json]:
             "nets": len(export.nets),
             "pins": len(export.pins),
         }
-        for export in exports
+        for export in _ordered(exports)
     ]
+
+
+def _ordered(exports: tuple[Export, ...]) -> list[Export]:
+    return sorted(exports, key=lambda export: export.kind == "bom")
 
 
 def problems(board: Board, project: Project) -> list[Json]:

@@ -6,10 +6,10 @@ from rcrules.networks import Board, Held
 
 def held(board: Board) -> list[Json]:
     """One object per held net, by name."""
-    return [_row(board.held[net]) for net in sorted(board.held)]
+    return [_row(board.held[net], board.joints.get(net, net)) for net in sorted(board.held)]
 
 
-def _row(net: Held) -> Json:
+def _row(net: Held, joint: str) -> Json:
     low, nominal, high = (net.voltage.low, net.voltage.nominal, net.voltage.high) if net.voltage else (None, None, None)
     return {
         "net": net.net,
@@ -21,4 +21,5 @@ def _row(net: Held) -> Json:
         "given": net.given,
         "sure": net.sure,
         "evidence": list(net.evidence),
+        "joined": None if joint == net.net else joint,
     }

@@ -71,3 +71,8 @@ def test_a_settled_document_is_what_reads_back() -> None:
     document = replace(DOCUMENT, findings=[finding(measured=measured, margin=2 / 3, margin_case={"R1": -0.0})])
     assert settled(document) != document
     assert settled(document) == loads(dumps(document))
+
+
+def test_a_changed_copy_of_a_settled_document_is_settled_anew() -> None:
+    document = replace(settled(DOCUMENT), findings=[finding(margin=1 / 3)])
+    assert json.loads(dumps(document))["findings"][0]["margin"] == 0.333333333333

@@ -1,45 +1,104 @@
+import copy
 import json
+from collections.abc import Iterator
+from pathlib import Path as Folder
+from typing import Any
 
 import jsonschema
 import pytest
 
-from rcrules.findings import dumps, schema_text
+from rcrules.errors import UserMistake
+from rcrules.findings import dumps, loads, schema_text
+from rcrules.pipeline import Job, run
+from tests.cli._board import write_board
 from tests.reports._sample import DOCUMENT
 
+SAVED: Any = json.loads(dumps(DOCUMENT))
+FREE = ("origins", "options", "low_case", "high_case", "margin_case", "quantities", "unmeasured", "detail", "deciding")
+"""Objects whose keys differ from case to case."""
+OPTIONAL = ("line", "column", "at_least", "at_most")
+Path = tuple[str | int, ...]
 
-@pytest.fixture
+
+@pytest.fixture(scope="module")
 def validator() -> jsonschema.Draft202012Validator:
     schema = json.loads(schema_text())
     jsonschema.Draft202012Validator.check_schema(schema)
     return jsonschema.Draft202012Validator(schema)
 
 
+def paths(value: Any, at: Path = ()) -> Iterator[Path]:
+    """The path of every member of every object and list, of lists the first."""
+    members = value.items() if isinstance(value, dict) else enumerate(value[:1]) if isinstance(value, list) else ()
+    for key, item in members:
+        yield (*at, key)
+        yield from paths(item, (*at, key))
+
+
+def damaged(path: Path, new: object = None, *, drop: bool = False) -> Any:
+    """The sample with the member at the path replaced or left out."""
+    document = copy.deepcopy(SAVED)
+    inner = document
+    for key in path[:-1]:
+        inner = inner[key]
+    if drop:
+        del inner[path[-1]]
+    else:
+        inner[path[-1]] = new
+    return document
+
+
+def refused(document: object) -> bool:
+    """Whether reading the document complains."""
+    try:
+        loads(json.dumps(document), "old.json")
+    except UserMistake:
+        return True
+    return False
+
+
 def test_a_saved_document_is_valid(validator: jsonschema.Draft202012Validator) -> None:
-    errors = [f"{list(error.path)}: {error.message}" for error in validator.iter_errors(json.loads(dumps(DOCUMENT)))]
-    assert errors == []
+    assert [f"{list(error.path)}: {error.message}" for error in validator.iter_errors(SAVED)] == []
 
 
-@pytest.mark.parametrize("key", sorted(json.loads(dumps(DOCUMENT))))
-def test_no_key_may_be_missing(validator: jsonschema.Draft202012Validator, key: str) -> None:
-    document = json.loads(dumps(DOCUMENT))
-    del document[key]
-    assert not validator.is_valid(document)
+def test_what_a_run_writes_is_valid(
+    tmp_path: Folder, monkeypatch: pytest.MonkeyPatch, validator: jsonschema.Draft202012Validator
+) -> None:
+    """Also where a remark stands at no place of an input."""
+    netlist = write_board(tmp_path).with_name("board.xml")
+    netlist.write_text(netlist.read_text().replace(" 16V", ""))
+    monkeypatch.chdir(tmp_path)
+    document = json.loads(dumps(run(Job(rules=("our-rules.toml", "capacitor-voltage")))))
+    assert [f"{list(error.path)}: {error.message}" for error in validator.iter_errors(document)] == []
+    assert any(item["place"] == {} for item in document["problems"])
 
 
-@pytest.mark.parametrize("key", sorted(json.loads(dumps(DOCUMENT))["findings"][0]))
-def test_no_key_of_a_finding_may_be_missing(validator: jsonschema.Draft202012Validator, key: str) -> None:
-    document = json.loads(dumps(DOCUMENT))
-    del document["findings"][0][key]
-    assert not validator.is_valid(document)
+@pytest.mark.parametrize("path", list(paths(SAVED)), ids=lambda path: ".".join(map(str, path)))
+def test_what_is_damaged_is_refused(path: Path, validator: jsonschema.Draft202012Validator) -> None:
+    """No member may be of another type; none may be missing where the keys are fixed."""
+    assert not validator.is_valid(damaged(path, [[]]))
+    assert refused(damaged(path, [[]]))
+    if isinstance(path[-1], str) and not set(path[-2:-1]) & set(FREE):
+        without = damaged(path, drop=True)
+        assert refused(without) != validator.is_valid(without)
+        assert refused(without) or path[-1] in OPTIONAL
 
 
-def test_an_unknown_key_is_not_valid(validator: jsonschema.Draft202012Validator) -> None:
-    document = json.loads(dumps(DOCUMENT))
-    document["findings"][0]["verdict"] = "fails"
-    assert not validator.is_valid(document)
-
-
-def test_an_unknown_outcome_is_not_valid(validator: jsonschema.Draft202012Validator) -> None:
-    document = json.loads(dumps(DOCUMENT))
-    document["findings"][0]["outcome"] = "passes"
-    assert not validator.is_valid(document)
+@pytest.mark.parametrize(
+    ("path", "new", "message"),
+    [
+        (("findings", 0, "outcome"), "passes", r'document.findings\[0\].outcome: expected "fails" or'),
+        (("findings", 0, "verdict"), "fails", r"document.findings\[0\]: unknown key 'verdict'"),
+        (("findings", 2, "measured", "low"), "low", r"document.findings\[2\].measured.low: expected"),
+        (("board", "parts"), -1, "document.board.parts: expected 0 or more"),
+        (("board", "parts"), True, "document.board.parts: expected integer"),
+        (("problems", 0, "place"), {"line": 1}, r"document.problems\[0\].place: "),
+        (("networks", 0, "branches", 0, "nets"), ["A"], r"nets: expected 2 items"),
+    ],
+)
+def test_the_message_tells_where(
+    path: Path, new: object, message: str, validator: jsonschema.Draft202012Validator
+) -> None:
+    assert not validator.is_valid(damaged(path, new))
+    with pytest.raises(UserMistake, match=message):
+        loads(json.dumps(damaged(path, new)), "old.json")

@@ -205,6 +205,7 @@ DOCUMENT = Document(
             "given": True,
             "sure": True,
             "evidence": ["project"],
+            "joined": None,
         },
         {
             "net": "+48V",
@@ -216,6 +217,7 @@ DOCUMENT = Document(
             "given": False,
             "sure": True,
             "evidence": ["name"],
+            "joined": None,
         },
         {
             "net": "GND",
@@ -227,6 +229,7 @@ DOCUMENT = Document(
             "given": False,
             "sure": True,
             "evidence": ["name"],
+            "joined": None,
         },
         {
             "net": "LEVEL_IN",
@@ -238,6 +241,7 @@ DOCUMENT = Document(
             "given": False,
             "sure": False,
             "evidence": ["connector J1 alone"],
+            "joined": None,
         },
     ],
     packs=[
@@ -264,7 +268,17 @@ DOCUMENT = Document(
                     "parts": ["R12", "C7"],
                     "fed_from": ["+3V3"],
                     "feeds": ["U3.NRST"],
-                    "quantities": {"time_constant": {"low": 0.0613, "nominal": 0.1, "high": 0.1394, "unit": "s"}},
+                    "quantities": {
+                        "time_constant": {
+                            "low": 0.0613,
+                            "nominal": 0.1,
+                            "high": 0.1394,
+                            "unit": "s",
+                            "low_case": {"C7": 6.188e-06, "R12": 9900.0},
+                            "high_case": {"C7": 1.38e-05, "R12": 10100.0},
+                            "method": "proved",
+                        }
+                    },
                     "unmeasured": {},
                 },
                 {
@@ -297,7 +311,8 @@ DOCUMENT = Document(
         {
             "place": {"file": "gauge-bom.csv", "line": 14, "column": 5},
             "text": "C7: value 10uF of the BOM, 1uF of the netlist",
-        }
+        },
+        {"place": {}, "text": "pulse-survives meets nothing on this board"},
     ],
 )
 
