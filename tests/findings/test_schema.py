@@ -10,7 +10,7 @@ import pytest
 from rcrules.errors import UserMistake
 from rcrules.findings import dumps, loads, schema_text
 from rcrules.pipeline import Job, run
-from tests.cli._board import write_board
+from tests.cli._board import NETLIST
 from tests.reports._sample import DOCUMENT
 
 SAVED: Any = json.loads(dumps(DOCUMENT))
@@ -65,10 +65,9 @@ def test_what_a_run_writes_is_valid(
     tmp_path: Folder, monkeypatch: pytest.MonkeyPatch, validator: jsonschema.Draft202012Validator
 ) -> None:
     """Also where a remark stands at no place of an input."""
-    netlist = write_board(tmp_path).with_name("board.xml")
-    netlist.write_text(netlist.read_text().replace(" 16V", ""))
+    (tmp_path / "board.xml").write_text(NETLIST.replace(" 16V", ""))
     monkeypatch.chdir(tmp_path)
-    document = json.loads(dumps(run(Job(rules=("our-rules.toml", "capacitor-voltage")))))
+    document = json.loads(dumps(run(Job(inputs=("board.xml",)))))
     assert [f"{list(error.path)}: {error.message}" for error in validator.iter_errors(document)] == []
     assert any(item["place"] == {} for item in document["problems"])
 
