@@ -83,3 +83,5 @@ class Document:
     problems: list[Json]
     """Remarks about inputs: ``{"place": {...}, "text": …}``; the place is empty where it is none of an input."""
     schema: int = 1
+    settled: bool = field(default=False, init=False, compare=False, repr=False)
+    """Whether it is as it reads after saving; a changed copy is not. No key of the JSON."""
