@@ -18,9 +18,18 @@ _WORD: Final = re.compile(
 )
 _BAR: Final = re.compile(r"(?<=\w)\\(?=\w|$)|[{}~]")
 """Marks of an overbar: a backslash after each letter; braces and tildes."""
+_AUTOMATIC: Final = re.compile(
+    r"#\w+|Net-?\(.*|N-?\d{4,}|\$\$\$\d+|N\$\d+|\$?N\d{3,}|\$?Net\d+|Net[A-Z]+\d+_.*|unconnected-.*", re.IGNORECASE
+)
 _SLASH: Final = "{slash}"
 _ACTIVE_LOW: Final = (("N", ""), ("", "N"), ("", "B"))
 """Letters that mark a word as active low when glued to it: NRST, RSTN, RSTB."""
+
+
+def automatic(net: str) -> bool:
+    """Whether a net's name, after its sheet path, was made up by the schematic editor: ``Net-(R13-Pad2)``, ``N$12``."""
+    own = net.rsplit("/", 1)[-1] if net.startswith("/") else net
+    return _AUTOMATIC.fullmatch(own.strip()) is not None
 
 
 @lru_cache(maxsize=65536)

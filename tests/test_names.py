@@ -2,7 +2,7 @@
 
 import pytest
 
-from rcrules.names import has_token, tokens
+from rcrules.names import automatic, has_token, tokens
 
 
 @pytest.mark.parametrize(
@@ -70,3 +70,15 @@ def test_a_part_of_a_word_or_a_sheet_name_is_no_match(name, wanted):
 def test_several_words_must_stand_side_by_side():
     assert has_token("~{POWER_GOOD}", "power good")
     assert not has_token("POWER_IS_GOOD", "power good")
+
+
+@pytest.mark.parametrize(
+    "name", ["Net-(R13-Pad2)", "/cpu/Net-(C1-Pad1)", "N$12", "#7", "N00123", "NetR1_2", "unconnected-(U1-Pad3)"]
+)
+def test_names_that_the_schematic_editor_makes_up_are_known(name):
+    assert automatic(name)
+
+
+@pytest.mark.parametrize("name", ["NRST", "NET_A", "+3V3", "N12V", "/cpu/OUT", "NETWORK1", ""])
+def test_names_that_people_gave_are_no_automatic_names(name):
+    assert not automatic(name)

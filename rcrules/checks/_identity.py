@@ -4,6 +4,7 @@ from collections.abc import Iterable
 from hashlib import sha256
 
 from rcrules.checks._subjects import Subject
+from rcrules.names import automatic
 from rcrules.networks import Board, Branch, Node
 
 
@@ -12,8 +13,17 @@ def fingerprint(rule: str, subject: Subject, board: Board) -> str:
 
     Neither holds values or names that the schematic editor makes up; the second holds no references.
     """
-    own = _digest(rule, subject.kind, *sorted(subject.refs), *sorted(subject.feeds))
+    own = _digest(rule, subject.kind, *sorted(_pins(subject, board)))
     return f"{own}.{_digest(rule, subject.kind, *_topology(subject, board))}"
+
+
+def _pins(subject: Subject, board: Board) -> list[str]:
+    """References and pins; of a supply, which has neither, its own names, else the pins of what is neither R nor C."""
+    if subject.refs or subject.feeds:
+        return [*subject.refs, *subject.feeds]
+    named = [net for net in subject.nets if not automatic(net)]
+    pins = [pin for net in subject.nets if net in board.design.nets for pin in board.design.nets[net].pins]
+    return named or [pin.key for pin in pins if board.parts[pin.ref].kind not in ("resistor", "capacitor")]
 
 
 def _digest(*texts: str) -> str:
@@ -37,10 +47,10 @@ def _branch(branch: Branch, board: Board, own: Iterable[str]) -> str:
 
 
 def _end(net: str, board: Board, own: Iterable[str]) -> str:
-    """``here``, a held net by kind (a supply also by name), or ``free``."""
+    """``here``, a held net by kind (a supply also by its own name), or ``free``."""
     if net in own:
         return "here"
     held = board.held.get(net)
     if held is None:
         return "free"
-    return f"{held.kind} {held.net}" if held.kind == "supply" else held.kind
+    return f"{held.kind} {held.net}" if held.kind == "supply" and not automatic(held.net) else held.kind

@@ -5,16 +5,12 @@ from dataclasses import dataclass
 from functools import lru_cache
 from typing import Final
 
-from rcrules.names import tokens
+from rcrules.names import automatic, tokens
 
 _LETTERS: Final = str.maketrans(
     {"В": "V", "в": "V", "А": "A", "а": "A", ",": ".", "−": "-", "–": "-", "﹣": "-", "＋": "+"}
 )
 """Look-alikes: Cyrillic volts, decimal comma, typographic minus."""
-
-_AUTOMATIC: Final = re.compile(
-    r"#\w+|Net-?\(.*|N-?\d{4,}|\$\$\$\d+|\$?N\d{3,}|\$?Net\d+|Net[A-Z]+\d+_.*|unconnected-.*", re.IGNORECASE
-)
 
 _VOLTAGES: Final = tuple(
     re.compile(pattern)
@@ -86,7 +82,7 @@ def hint(net: str) -> NameHint | None:
 def leaf(net: str) -> str | None:
     """The name without its sheet path, look-alike letters made Latin, in upper case; None for an automatic name."""
     own = (net.rsplit("/", 1)[-1] if net.startswith("/") else net).strip()
-    return None if _AUTOMATIC.fullmatch(own) else own.translate(_LETTERS).upper().strip("~{}")
+    return None if automatic(own) else own.translate(_LETTERS).upper().strip("~{}")
 
 
 def volts_in(text: str) -> float | None:
