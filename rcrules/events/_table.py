@@ -49,6 +49,7 @@ class Table:
                 origin=", ".join(share.origin for share in part.shares) or origin,
                 assumed=tuple(share.origin for share in assumed),
                 ask=next((share.ask for share in assumed if share.ask), ""),
+                asks=tuple(share.ask for share in assumed),
             )
         )
 

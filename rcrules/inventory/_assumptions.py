@@ -10,8 +10,12 @@ Key = tuple[str, str, str]
 
 
 def assumptions_of(parameters: Iterable[Parameter]) -> list[Key]:
-    """Every assumption that the parameters rest on."""
-    return [(item.name, text, item.ask) for item in parameters for text in item.assumed]
+    """Every assumption that the parameters rest on, each with the line that would replace it."""
+    return [
+        (item.name, text, ask)
+        for item in parameters
+        for text, ask in zip(item.assumed, item.asks or (item.ask,) * len(item.assumed), strict=True)
+    ]
 
 
 def listed_assumptions(found: Iterable[Key]) -> tuple[list[Json], dict[Key, int]]:

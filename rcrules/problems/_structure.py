@@ -57,7 +57,9 @@ class Parameter:
     assumed: tuple[str, ...] = ()
     """What is assumed about it, in words; empty = all given."""
     ask: str = ""
-    """The project line that would replace the assumption."""
+    """The project line that would replace the assumption; of several the first."""
+    asks: tuple[str, ...] = ()
+    """Where there are several: the line that would replace each of ``assumed``, '' for none."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
