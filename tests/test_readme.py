@@ -1,5 +1,6 @@
 """The README's commands are the truth: they run on the demo board."""
 
+import argparse
 import re
 import shlex
 from pathlib import Path
@@ -7,6 +8,7 @@ from pathlib import Path
 import pytest
 
 from rcrules.cli import main
+from rcrules.cli._arguments import parser
 
 ROOT = Path(__file__).parent.parent
 README = (ROOT / "README.md").read_text(encoding="utf-8")
@@ -35,6 +37,28 @@ def reader_folder(tmp_path: Path, monkeypatch: pytest.MonkeyPatch) -> Path:
     return tmp_path
 
 
+def options(parser: argparse.ArgumentParser) -> set[str]:
+    """Every long option of the command line, of all commands."""
+    found: set[str] = set()
+    for action in parser._actions:
+        found.update(name for name in action.option_strings if name.startswith("--"))
+        if isinstance(action, argparse._SubParsersAction):
+            found.update(*(options(command) for command in action.choices.values()))
+    return found
+
+
+def test_every_option_named_is_one_of_the_help() -> None:
+    own = "\n".join(line for line in README.splitlines() if "pip install" not in line)
+    named = set(re.findall(r"(?<![\w-])--[a-z][a-z-]*", own))
+    assert {"--report", "--fail-on", "--verbose"} <= named
+    assert named <= options(parser())
+
+
+def test_every_command_stands_in_the_readme() -> None:
+    (commands,) = (action for action in parser()._actions if isinstance(action, argparse._SubParsersAction))
+    assert [name for name in commands.choices if f"rcrules {name}" not in README] == []
+
+
 def test_the_readme_shows_commands() -> None:
     assert len(commands()) >= 7
 
@@ -42,6 +66,9 @@ def test_the_readme_shows_commands() -> None:
 @pytest.mark.parametrize("command", commands())
 def test_each_command_runs(command: str, reader_folder: Path, capfd: pytest.CaptureFixture[str]) -> None:
     """Each shown command gives a report and no complaint about usage or inputs."""
+    if " render " in command:
+        main(["check", "--report", "json=findings.json"])
+        capfd.readouterr()
     status = main(shlex.split(command)[1:])
     out, err = capfd.readouterr()
     assert status in (0, 1), err

@@ -10,9 +10,16 @@ _DESCRIPTION: Final = (
     "Finds the RC networks of a board, works out what each does in the worst case, and holds it against rules."
 )
 _EXIT: Final = (
-    "exit: 0 nothing at or above the fail level, 1 findings, 2 inputs, rules or usage wrong, 3 a bug of rcrules, "
+    "exit code: 0 nothing at or above the fail level, 1 findings, 2 inputs, rules or usage wrong, 3 a bug of rcrules, "
     "130 interrupted"
 )
+_SUMMARIES: Final = {
+    "check": "hold every RC network of a board against the rules, and report what fails",
+    "networks": "show what was found on a board: held nets, RC networks, roles, time constants; no rules",
+    "render": "show a saved findings document again, as any report; needs no board",
+    "rules": "list the packs and rules there are, or check rule files for mistakes",
+    "demo": "copy the demo board to a folder, check it, show the report",
+}
 
 
 def parser() -> argparse.ArgumentParser:
@@ -20,18 +27,18 @@ def parser() -> argparse.ArgumentParser:
     whole = argparse.ArgumentParser(prog="rcrules", description=_DESCRIPTION, epilog=_EXIT, allow_abbrev=False)
     whole.add_argument("--version", action="version", version=f"rcrules {__version__}")
     commands = whole.add_subparsers(title="commands", required=True, metavar="COMMAND")
-    _check(_command(commands, "check", _run.check, "inputs (or rcrules.toml) and rules to findings"))
-    _networks(
-        _command(commands, "networks", _run.networks, "what was found: networks, nodes, roles, quantities; no rules")
-    )
-    _rules(_command(commands, "rules", _run.rules, "list and validate rules"))
-    _demo(_command(commands, "demo", _run.demo, "the demo board: copies it, checks it, shows the report"))
+    _check(_command(commands, "check", _run.check))
+    _networks(_command(commands, "networks", _run.networks))
+    _render(_command(commands, "render", _run.render))
+    _rules(_command(commands, "rules", _run.rules))
+    _demo(_command(commands, "demo", _run.demo))
     return whole
 
 
 def _command(
-    commands: "argparse._SubParsersAction[argparse.ArgumentParser]", name: str, run: object, summary: str
+    commands: "argparse._SubParsersAction[argparse.ArgumentParser]", name: str, run: object
 ) -> argparse.ArgumentParser:
+    summary = _SUMMARIES[name]
     made = commands.add_parser(
         name, help=summary, description=f"{summary[0].upper()}{summary[1:]}.", epilog=_EXIT, allow_abbrev=False
     )
@@ -65,12 +72,20 @@ def _networks(command: argparse.ArgumentParser) -> None:
     _output_options(command)
 
 
+def _render(command: argparse.ArgumentParser) -> None:
+    command.add_argument(
+        "saved", metavar="SAVED", help="what check or networks wrote with --report json=SAVED; - reads standard input"
+    )
+    _output_options(command)
+
+
 def _board_options(command: argparse.ArgumentParser) -> None:
     command.add_argument(
         "inputs",
         nargs="*",
         metavar="INPUT",
-        help="netlists and BOMs of one board, told apart by content; - reads standard input",
+        help="netlists and BOMs of one board, told apart by content; - reads standard input (default: those of the "
+        "project file)",
     )
     command.add_argument(
         "--project",

@@ -58,6 +58,22 @@ def write(document: Document, target: Target, *, verbose: bool, color: bool) -> 
         raise _mistake(f"cannot write the report: {error.strerror}", place=str(path)) from error
 
 
+def saved(name: str) -> Document:
+    """The document in a file, ``-`` for standard input. Raises UserMistake where there is none."""
+    from rcrules.findings import loads
+
+    try:
+        data = sys.stdin.buffer.read() if name == "-" else Path(name).read_bytes()
+        return loads(data.decode("utf-8"), "standard input" if name == "-" else name)
+    except OSError as error:
+        raise _mistake(f"cannot read it: {error.strerror}", place=name, do="check the path") from error
+    except UnicodeDecodeError as error:
+        expected = "a file saved with --report json=FILE"
+        raise _mistake(
+            "not a findings document", place=name, found="other bytes than UTF-8", expected=expected
+        ) from error
+
+
 def to_stdout(text: str) -> None:
     """Write a text; what the terminal cannot show is escaped; a reader that has gone away is no mistake."""
     encoding = sys.stdout.encoding or "utf-8"

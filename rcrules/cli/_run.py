@@ -11,7 +11,7 @@ if TYPE_CHECKING:
 
 def check(chosen: argparse.Namespace) -> int:
     """Findings of every board; 1 when one counts."""
-    asked = _targets(chosen)
+    asked = _targets(chosen.report, quiet=chosen.quiet, boards=len(chosen.project))
     documents = _documents(chosen, with_rules=True)
     _write(documents, asked, chosen)
     return int(any(_counts(document, chosen.fail_on, chosen.fail_on_undecided) for document in documents))
@@ -19,8 +19,17 @@ def check(chosen: argparse.Namespace) -> int:
 
 def networks(chosen: argparse.Namespace) -> int:
     """What was found on every board."""
-    asked = _targets(chosen)
+    asked = _targets(chosen.report, quiet=chosen.quiet, boards=len(chosen.project))
     _write(_documents(chosen, with_rules=False), asked, chosen)
+    return 0
+
+
+def render(chosen: argparse.Namespace) -> int:
+    """A saved document as any report; what it tells of is no failure of the command."""
+    from rcrules.cli._output import saved
+
+    asked = _targets(chosen.report, quiet=chosen.quiet, boards=1)
+    _write([saved(chosen.saved)], asked, chosen)
     return 0
 
 
@@ -69,11 +78,11 @@ def _documents(chosen: argparse.Namespace, *, with_rules: bool) -> "list[Documen
     return run_all(jobs, processes=chosen.jobs)
 
 
-def _targets(chosen: argparse.Namespace) -> "list[Target]":
+def _targets(reports: list[str], *, quiet: bool, boards: int) -> "list[Target]":
     """Reports asked for, checked before any work is done; text on standard output when none is."""
     from rcrules.cli._output import targets
 
-    return targets(chosen.report or ([] if chosen.quiet else ["text"]), boards=len(chosen.project))
+    return targets(reports or ([] if quiet else ["text"]), boards=boards)
 
 
 def _write(documents: "list[Document]", asked: "list[Target]", chosen: argparse.Namespace) -> None:
