@@ -19,7 +19,9 @@ BEYOND = 1e3
 NOTHING = 1e-8
 """Share of the greatest gain at and below which a pass band has no gain."""
 STEPS = 48
-"""Of the search between two scanned frequencies."""
+"""Most steps of the search between two scanned frequencies."""
+CLOSE = 1e-15
+"""Relative step after which the search ends."""
 
 
 def transfer(shape: Shape, ohms: Array, farads: Array, source: int, omega: Array | float) -> Complex:
@@ -85,22 +87,45 @@ class _Line:
 
         omega: [rad/s], (case,) or (k, case)
         """
-        total = np.zeros(omega.shape, dtype=complex)
+        real, imaginary = np.zeros(omega.shape), np.zeros(omega.shape)
+        square = omega * omega
         for constant, rising, tau in zip(self.constant, self.rising, self.taus, strict=True):
-            total += (constant + 1j * omega * rising) / (1.0 + 1j * omega * tau)
-        return np.abs(total)
+            size = 1.0 + square * (tau * tau)
+            real += (constant + square * (rising * tau)) / size
+            imaginary += (rising - constant * tau) / size
+        found: Array = np.sqrt(real * real + square * (imaginary * imaginary))
+        return found
 
     def take(self, case: NDArray[np.intp]) -> "_Line":
         """These cases only."""
         return _Line(constant=self.constant[:, case], rising=self.rising[:, case], taus=self.taus[:, case])
 
     def falling(self, level: Array, inside: Array, outside: Array) -> Array:
-        """Angular frequency between two at which the gain is the level, by geometric bisection. [rad/s], (case,)"""
+        """Angular frequency between two at which the gain is the level. [rad/s], (case,)
+
+        Regula falsi over the logarithm; an end that is kept twice counts half (Illinois rule), so that both ends move.
+        """
+        near, far = np.zeros(len(level)), np.log(outside / inside)
+        over, under = self.gain(inside) - level, self.gain(outside) - level
+        found, side = near, np.zeros(len(level), dtype=int)
         for _ in range(STEPS):
-            middle = np.sqrt(inside * outside)
-            above = self.gain(middle) >= level
-            inside, outside = np.where(above, middle, inside), np.where(above, outside, middle)
-        return np.sqrt(inside * outside)
+            last, found = found, _meeting(near, far, over, under)
+            value = self.gain(inside * np.exp(found)) - level
+            above = value >= 0.0
+            over = np.where(above, value, np.where(side < 0, 0.5 * over, over))
+            under = np.where(above, np.where(side > 0, 0.5 * under, under), value)
+            near, far = np.where(above, found, near), np.where(above, far, found)
+            side = np.where(above, 1, -1)
+            if np.all(np.abs(found - last) <= CLOSE):
+                break
+        return inside * np.exp(found)
+
+
+def _meeting(near: Array, far: Array, over: Array, under: Array) -> Array:
+    """Where the straight line from (near, over >= 0) to (far, under < 0) is 0; near where there is no such line."""
+    fall = over - under
+    share = np.maximum(over, 0.0) / np.where(fall > 0.0, fall, 1.0)
+    return np.where(fall > 0.0, near + (far - near) * share, near)
 
 
 def _excitation(modes: Modes, source: int) -> tuple[Array, Array]:
