@@ -9,6 +9,7 @@ from rcrules.checks._resolve import Case, resolve
 from rcrules.checks._select import selected
 from rcrules.checks._subjects import Subjects
 from rcrules.checks._verdict import Verdict, decide
+from rcrules.design import natural
 from rcrules.events import Unmeasurable, pose
 from rcrules.findings import Finding, Json
 from rcrules.inventory import Key, assumptions_of, listed_assumptions
@@ -115,5 +116,5 @@ def _indexes(item: Judged, numbers: Mapping[Key, int]) -> list[int]:
     return sorted({numbers[key] for key in assumptions_of(item.problem.parameters)}) if item.problem else []
 
 
-def _order(item: Finding) -> tuple[str, str, list[str], str]:
-    return (item.rule, item.net or "", item.parts, item.fingerprint)
+def _order(item: Finding) -> tuple[object, ...]:
+    return (item.rule, natural(item.net or ""), [natural(ref) for ref in item.parts], item.fingerprint)

@@ -2,6 +2,7 @@
 
 import os
 import re
+import shutil
 import sys
 from dataclasses import dataclass
 from pathlib import Path
@@ -47,7 +48,10 @@ def _target(text: str) -> Target:
 
 def write(document: Document, target: Target, *, verbose: bool, color: bool) -> None:
     """Render one report and put it where it goes; files are UTF-8, never coloured."""
-    text = target.report.render(document, verbose=verbose, color=color and target.path is None)
+    shown = target.path is None
+    text = target.report.render(
+        document, verbose=verbose, color=color and shown, width=terminal_width() if shown else None
+    )
     if target.path is None:
         to_stdout(text)
         return
@@ -82,6 +86,11 @@ def to_stdout(text: str) -> None:
         sys.stdout.flush()
     except BrokenPipeError:
         os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
+
+
+def terminal_width() -> int | None:
+    """Columns of the terminal on standard output; None in a pipe or file, where every line stays whole."""
+    return shutil.get_terminal_size().columns if sys.stdout.isatty() else None
 
 
 def wants_color(choice: str) -> bool:

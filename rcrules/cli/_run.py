@@ -14,7 +14,10 @@ def check(chosen: argparse.Namespace) -> int:
     asked = _targets(chosen.report, quiet=chosen.quiet, boards=len(chosen.project))
     documents = _documents(chosen, with_rules=True)
     _write(documents, asked, chosen)
-    return int(any(_counts(document, chosen.fail_on, chosen.fail_on_undecided) for document in documents))
+    counted = sum(_counted(document, chosen.fail_on, chosen.fail_on_undecided) for document in documents)
+    if counted and not chosen.quiet:
+        print(_exit_hint(counted, chosen), file=sys.stderr)
+    return int(counted > 0)
 
 
 def networks(chosen: argparse.Namespace) -> int:
@@ -53,14 +56,14 @@ def demo(chosen: argparse.Namespace) -> int:
     from pathlib import Path
 
     from rcrules.cli._demo import copy_demo
-    from rcrules.cli._output import to_stdout, wants_color
+    from rcrules.cli._output import terminal_width, to_stdout, wants_color
     from rcrules.pipeline import Job, run
     from rcrules.reports import reports
 
     folder = copy_demo(Path(chosen.folder) if chosen.folder else None)
     print(f"demo board in {folder}", file=sys.stderr)
     document = run(Job(project=str(folder / "rcrules.toml")))
-    to_stdout(reports()["text"].render(document, color=wants_color(chosen.color)))
+    to_stdout(reports()["text"].render(document, color=wants_color(chosen.color), width=terminal_width()))
     return 0
 
 
@@ -93,15 +96,22 @@ def _write(documents: "list[Document]", asked: "list[Target]", chosen: argparse.
             write(document, target, verbose=chosen.verbose, color=wants_color(chosen.color))
 
 
-def _counts(document: "Document", fail_on: str, undecided: bool) -> bool:
-    """Whether a finding at or above the level fails (or is undecided, where that counts)."""
+def _counted(document: "Document", fail_on: str, undecided: bool) -> int:
+    """Findings at or above the level that fail (or are undecided, where that counts)."""
     from rcrules.vocabulary import SEVERITIES
 
     if fail_on == "never":
-        return False
+        return 0
     levels = SEVERITIES[: SEVERITIES.index(fail_on) + 1]
     outcomes = ("fails", "undecided") if undecided else ("fails",)
-    return any(item.outcome in outcomes and item.level in levels for item in document.findings)
+    return sum(item.outcome in outcomes and item.level in levels for item in document.findings)
+
+
+def _exit_hint(counted: int, chosen: argparse.Namespace) -> str:
+    """Why the exit code is 1."""
+    findings = "1 finding" if counted == 1 else f"{counted} findings"
+    options = f"--fail-on {chosen.fail_on}" + (" --fail-on-undecided" if chosen.fail_on_undecided else "")
+    return f"exit code 1: {findings} at or above the fail level ({options})"
 
 
 def _usage(problem: str, do: str) -> Exception:

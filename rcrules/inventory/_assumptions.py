@@ -2,6 +2,7 @@
 
 from collections.abc import Iterable
 
+from rcrules.design import natural
 from rcrules.findings import Json
 from rcrules.problems import Parameter
 
@@ -19,7 +20,7 @@ def assumptions_of(parameters: Iterable[Parameter]) -> list[Key]:
 
 
 def listed_assumptions(found: Iterable[Key]) -> tuple[list[Json], dict[Key, int]]:
-    """One object per assumption, sorted, and the index of each."""
-    ordered = sorted(set(found))
+    """One object per assumption, in the order of what they are about, and the index of each."""
+    ordered = sorted(set(found), key=lambda key: (natural(key[0]), key[1:]))
     listed: list[Json] = [{"about": about, "text": text, "ask": ask} for about, text, ask in ordered]
     return listed, {key: index for index, key in enumerate(ordered)}

@@ -7,6 +7,7 @@ from typing import Final
 from rcrules.quantities._units import SPELLINGS
 
 _LETTERS: Final = {-15: "f", -12: "p", -9: "n", -6: "µ", -3: "m", 0: "", 3: "k", 6: "M", 9: "G", 12: "T"}
+_LEAST: Final = min(_LETTERS)
 _PREFIXED: Final = frozenset(("V", "A", "Ω", "F", "s", "Hz", "W", "J", "C", "H", "m", "Ω/V", "s/V", "A/V", "V/K"))
 _TIMES: Final = ((2, "year"), (2, "day"), (2, "h"), (1, "min"))
 """Long times: from how many of it a unit is used."""
@@ -55,6 +56,8 @@ def _prefixed(value: float, unit: str, digits: int) -> str:
     power = rounded.adjusted() // 3 * 3
     if unit == "F" and power == -3 and rounded.adjusted() == -3:
         power = -6
+    if power == _LEAST - 3:
+        power = _LEAST
     if power not in _LETTERS:
         return f"{_number(value, digits)} {unit}"
     return f"{_plain(rounded.scaleb(-power))} {_LETTERS[power]}{unit}"

@@ -10,8 +10,10 @@ from rcrules.findings import Document
 class Render(Protocol):
     """A pure function of the document."""
 
-    def __call__(self, document: Document, *, verbose: bool = False, color: bool = False) -> str:
-        """The whole report, ending in a newline."""
+    def __call__(
+        self, document: Document, *, verbose: bool = False, color: bool = False, width: int | None = None
+    ) -> str:
+        """The whole report, ending in a newline; ``width``: columns of the terminal, None = lines stay whole."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

@@ -5,9 +5,11 @@ from typing import Final
 
 from rcrules.findings import Document, Finding, Json
 from rcrules.reports._lines import Line
+from rcrules.reports._text_holding import holding_lines
 from rcrules.reports._text_undecided import undecided_lines
 from rcrules.reports._words import (
     asked,
+    badness,
     bounds,
     extreme,
     in_percent,
@@ -32,20 +34,22 @@ def findings_lines(document: Document, *, verbose: bool) -> list[Line]:
     lines: list[Line] = []
     for group in _groups(item for item in document.findings if item.outcome == "fails"):
         lines += [(), *_block(group, texts)]
-    lines += [*undecided_lines(document, texts, verbose=verbose), *_cautions(document)]
-    return lines + _holding(document, texts) if verbose else lines
+    lines += [*undecided_lines(document, texts, verbose=verbose), *_cautions(document, verbose=verbose)]
+    return lines + holding_lines(document, texts) if verbose else lines
 
 
 def _groups(findings: Iterable[Finding]) -> list[list[Finding]]:
-    """Findings of one rule and one cause together; the gravest level first, then the most broken."""
+    """Findings of one rule and one cause together; the gravest level first, then what is broken most."""
     groups: dict[tuple[str, ...], list[Finding]] = {}
     for item in findings:
         alone = () if item.cause else (item.net or "", *item.parts)
         groups.setdefault((item.rule, item.cause, *alone), []).append(item)
-    return sorted(
-        groups.values(),
-        key=lambda group: (SEVERITIES.index(group[0].level), group[0].rule, group[0].net or "", group[0].parts),
-    )
+    return sorted(groups.values(), key=lambda group: _order(group[0]))
+
+
+def _order(finding: Finding) -> tuple[object, ...]:
+    worst = -round(badness(finding), 9)
+    return (SEVERITIES.index(finding.level), worst, finding.rule, finding.net or "", finding.parts)
 
 
 def _block(group: list[Finding], texts: Mapping[str, str]) -> list[Line]:
@@ -81,17 +85,23 @@ def _numbers(finding: Finding) -> Line:
 
 
 def _case_text(worst: list[Json]) -> str:
-    """``C7 -38 % (tolerance -20 %, X5R -15 %), R12 -1 %``; the rest counted."""
-    texts = [_parameter_text(item) for item in worst[:_SHOWN_CASES]]
-    rest = len(worst) - _SHOWN_CASES
-    return ", ".join(texts) + (f", {rest} more" if rest > 0 else "")
+    """``C7 -38 % (tolerance -20 %, X5R -15 %), R12, R13 -1 %``: what moves alike together, the rest counted."""
+    alike: dict[tuple[str, str], list[str]] = {}
+    for item in worst:
+        alike.setdefault((_amount(item), item["why"]), []).append(item["parameter"])
+    texts = [
+        f"{', '.join(names)} {amount}" + (f" ({why})" if why else "")
+        for (amount, why), names in list(alike.items())[:_SHOWN_CASES]
+    ]
+    rest = sum(len(names) for names in list(alike.values())[_SHOWN_CASES:])
+    return ", ".join(texts) + (f", {rest} more" if rest else "")
 
 
-def _parameter_text(item: Json) -> str:
+def _amount(item: Json) -> str:
+    """How far off nominal; the number itself where a share would say little."""
     relative = item["relative"]
     plain = relative is None or abs(relative) > _MOST_RELATIVE
-    amount = number(item["value"], item["unit"]) if plain else f"{100 * relative:+.3g} %"
-    return f"{item['parameter']} {amount}" + (f" ({item['why']})" if item["why"] else "")
+    return number(item["value"], item["unit"]) if plain else f"{100 * relative:+.3g} %"
 
 
 def _why(finding: Finding) -> Line:
@@ -99,18 +109,10 @@ def _why(finding: Finding) -> Line:
     return (_INDENT, "why  ", finding.why or finding.title, (source, "dim"))
 
 
-def _cautions(document: Document) -> list[Line]:
+def _cautions(document: Document, *, verbose: bool) -> list[Line]:
     """What packs whose findings are shown warn of, each once."""
-    shown = {item.pack for item in document.findings if item.outcome in ("fails", "undecided")}
+    shown = {item.pack for item in document.findings if verbose or item.outcome in ("fails", "undecided")}
     told = [pack for pack in document.packs if pack["name"] in shown and pack["caution"]]
     lines: list[Line] = [((f"caution {pack['name']}", "name"), "   ", pack["caution"]) for pack in told]
     return [(), *lines] if lines else []
 
-
-def _holding(document: Document, texts: Mapping[str, str]) -> list[Line]:
-    """One line per holding or waived finding."""
-    lines: list[Line] = []
-    for item in document.findings:
-        if item.outcome in ("holds", "waived"):
-            lines += [(), ((f"{item.outcome:<8}", "good"), *_heading(item, texts)[1:]), _numbers(item)]
-    return lines

@@ -5,18 +5,10 @@ from typing import Final
 
 from rcrules.findings import Document, Json
 from rcrules.reports._lines import Line
+from rcrules.reports._text_whereabouts import CLASSES, counts_as, whereabouts
 from rcrules.reports._words import count
 from rcrules.vocabulary import SEVERITIES
 
-_CLASSES: Final = {
-    "judged": "judged",
-    "undecided": "undecided",
-    "unruled": "met no rule",
-    "decoupling": "decoupling",
-    "elsewhere": "elsewhere",
-    "not_fitted": "not fitted",
-    "unreadable": "value not understood",
-}
 _SHOWN_UNREADABLE: Final = 5
 
 
@@ -24,7 +16,9 @@ def header_lines(document: Document) -> list[Line]:
     """Board, counts, share decided."""
     board = document.board
     nodes = sum(len(network["nodes"]) for network in document.networks)
-    counts = f"   {count(board['parts'], 'part')}, {count(board['nets'], 'net')}, {count(nodes, 'RC node')}"
+    found = count(len(document.networks), "RC network")
+    found += f" with {count(nodes, 'node')}" if nodes != len(document.networks) else ""
+    counts = f"   {count(board['parts'], 'part')}, {count(board['nets'], 'net')}, {found}"
     return [((str(board["name"]), "name"), counts + _share(document))]
 
 
@@ -33,18 +27,21 @@ def _share(document: Document) -> str:
     if not document.packs:
         return ""
     total = len(document.findings)
+    if not total:
+        return "   no rule applies to anything on it"
     decided = sum(item.outcome != "undecided" for item in document.findings)
-    return f"   {decided} of {count(total, 'finding')} decided" + (f" ({100 * decided // total} %)" if total else "")
+    return f"   {decided} of {count(total, 'finding')} decided ({100 * decided // total} %)"
 
 
 def summary_lines(document: Document, *, verbose: bool) -> list[Line]:
     """Remarks, assumptions on request, counts of findings, coverage of parts."""
     lines: list[Line] = [*_problems(document, verbose=verbose)]
     if verbose and document.assumptions:
-        lines += [(), ("assumptions",), *(_assumption(index, row) for index, row in enumerate(document.assumptions, 1))]
+        lines += [(), (("assumptions", "name"), f"   {len(document.assumptions)}"), *_assumptions(document.assumptions)]
     lines.append(())
-    if document.packs:
-        lines.append((_totals(document, verbose=verbose),))
+    if not document.packs:
+        return lines + whereabouts(document, verbose=verbose)
+    lines.append((_totals(document, verbose=verbose),))
     return lines + [(text,) for text in (_coverage(document, "capacitor"), _coverage(document, "resistor")) if text]
 
 
@@ -64,16 +61,24 @@ def _at(place: Json | None) -> str:
     return ":".join(str(place[key]) for key in ("file", "line", "column") if place.get(key) is not None) + ": "
 
 
-def _assumption(index: int, row: Json) -> Line:
-    return (f"{index:>3}  {row['about']}: {row['text']}", (f"   {row['ask']}" if row["ask"] else "", "dim"))
+def _assumptions(rows: list[Json]) -> list[Line]:
+    """One line for all that assume the same and would be settled by the same line."""
+    alike: dict[tuple[str, str], list[str]] = {}
+    for row in rows:
+        alike.setdefault((row["text"].removeprefix("assumed: "), row["ask"]), []).append(row["about"])
+    return [
+        ("  ", f"{', '.join(names)}: {text}", *(("   ", (ask, "name")) if ask else ()))
+        for (text, ask), names in alike.items()
+    ]
 
 
 def _totals(document: Document, *, verbose: bool) -> str:
     """``1 error, 1 warning, 29 hold, 8 undecided, 12 assumptions (--verbose lists them)``."""
     failing = Counter(item.level for item in document.findings if item.outcome == "fails")
     outcomes = Counter(item.outcome for item in document.findings)
-    words = [count(failing[level], level) for level in SEVERITIES if failing[level]] or ["nothing fails"]
-    words.append(f"{outcomes['holds']} hold")
+    words = [count(failing[level], level) for level in SEVERITIES if failing[level]]
+    words = words or ["nothing fails" if document.findings else "nothing judged"]
+    words += [f"{outcomes['holds']} hold"] if document.findings else []
     words += [f"{outcomes[outcome]} {outcome}" for outcome in ("undecided", "waived") if outcomes[outcome]]
     assumptions = count(len(document.assumptions), "assumption")
     return ", ".join([*words, assumptions]) + (
@@ -83,20 +88,11 @@ def _totals(document: Document, *, verbose: bool) -> str:
 
 def _coverage(document: Document, kind: str) -> str:
     """``capacitors 74: 31 judged, 2 undecided, 40 decoupling, 1 value not understood (C44 "DNP?")``."""
-    rows = [row for row in document.parts if _counts_as(row) == kind]
+    rows = [row for row in document.parts if counts_as(row) == kind]
     if not rows:
         return ""
     classes = Counter(row["coverage"] for row in rows)
-    words = dict(_CLASSES) | ({} if document.packs else {"unruled": "in networks"})
-    texts = [f"{classes[name]} {word}" for name, word in words.items() if classes[name]]
+    texts = [f"{classes[name]} {word}" for name, word in CLASSES.items() if classes[name]]
     unreadable = [f'{row["ref"]} "{row["text"]}"' for row in rows if row["coverage"] == "unreadable"]
     shown = ", ".join(unreadable[:_SHOWN_UNREADABLE]) + (" …" if len(unreadable) > _SHOWN_UNREADABLE else "")
     return f"{kind}s {len(rows)}: {', '.join(texts)}" + (f" ({shown})" if unreadable else "")
-
-
-def _counts_as(row: Json) -> str:
-    """Capacitor or resistor; a part of another kind by its reference."""
-    kind = str(row["kind"])
-    if kind.startswith(("resistor", "capacitor")):
-        return kind.removesuffix("-array")
-    return "capacitor" if str(row["ref"]).startswith("C") else "resistor"

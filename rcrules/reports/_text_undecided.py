@@ -16,6 +16,7 @@ _SHOWN_REASONS: Final = 6
 _SHOWN_NAMES: Final = 8
 _OWN_ENTRY: Final = 3
 """A line that decides this many findings stands alone; lesser ones that differ only in the name share an entry."""
+_FILE: Final = ("   (rcrules.toml)", "dim")
 _LINE: Final = re.compile(r'\[(?P<table>\w+)\."(?P<name>.+)"\] (?P<fact>\S+) = .*')
 
 
@@ -57,10 +58,10 @@ def _heading(entry: _Entry) -> Line:
     if not entry.asks[0]:
         return (word, f": {number} that no line of the project file would decide")
     if len(entry.asks) == 1:
-        return (word, f": one line decides {number}   ", (entry.asks[0], "name"))
+        return (word, f": one line decides {number}   ", (entry.asks[0], "name"), _FILE)
     names = [found["name"] for ask in entry.asks if (found := _LINE.fullmatch(ask))]
     others = names_text(names[1:], limit=_SHOWN_NAMES)
-    return (word, f": one line each decides {number}   ", (entry.asks[0], "name"), f"   and so for {others}")
+    return (word, f": one line each decides {number}   ", (entry.asks[0], "name"), f"   and so for {others}", _FILE)
 
 
 def _details(findings: list[Finding], texts: Mapping[str, str], *, verbose: bool) -> list[Line]:

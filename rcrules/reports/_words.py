@@ -47,12 +47,12 @@ def parts_text(refs: Iterable[str], texts: Mapping[str, str]) -> str:
 
 def asked(finding: Finding) -> str:
     """What was measured: ``delay at power-up from supply valid to "may switch" (30 % of +3V3)``."""
-    words = [finding.measure.replace("_", " ")]
+    told = finding.measure.replace("_", " ")
     for name, value in finding.options.items():
         text = f'"{value}"' if name == "to" and str(value)[:1].isalpha() else str(value)
-        words.append(f"{_PREPOSITIONS.get(name, name.replace('_', ' '))} {text}")
+        told += f" {_PREPOSITIONS[name]} {text}" if name in _PREPOSITIONS else f", {name.replace('_', ' ')} {text}"
     level = finding.detail.get("level_text")
-    return " ".join(words) + (f" ({level})" if level else "")
+    return told + (f" ({level})" if level else "")
 
 
 def in_percent(finding: Finding) -> bool:
@@ -94,10 +94,25 @@ def margin_text(finding: Finding) -> str:
         return "never reached in the worst case"
     if math.isinf(margin):
         return "no bound" if margin < 0 else ""
-    amount = number(abs(margin), limit["unit"], percent=in_percent(finding))
-    if margin >= 0:
+    if margin == 0:
+        return "exactly at the limit"
+    percent = in_percent(finding)
+    amount = f"{show(100 * abs(margin), '1')} percentage points" if percent else show(abs(margin), limit["unit"])
+    if margin > 0:
         return f"{amount} to spare"
     return f"{'short' if broken_side(finding) == 'at_least' else 'over'} by {amount}"
+
+
+def badness(finding: Finding) -> float:
+    """How far beyond its limit, 0 to 1: the distance over the sum of both sizes, so that each unit counts alike."""
+    side, margin = broken_side(finding), finding.margin
+    limit = (finding.limit or {}).get(side)
+    if margin is None or limit is None or margin >= 0:
+        return 0.0
+    if math.isinf(margin) or math.isinf(limit):
+        return 1.0
+    measured = limit + margin if side == "at_least" else limit - margin
+    return float(-margin / (abs(limit) + abs(measured)))
 
 
 def subjects_text(findings: list[Finding], texts: Mapping[str, str], *, limit: int) -> str:

@@ -4,7 +4,13 @@ from rcrules.findings import Document, dumps
 from rcrules.reports._report import Report
 
 
-def render(document: Document, *, verbose: bool = False, color: bool = False) -> str:  # noqa: ARG001 - one form only
+def render(  # one form only
+    document: Document,
+    *,
+    verbose: bool = False,  # noqa: ARG001
+    color: bool = False,  # noqa: ARG001
+    width: int | None = None,  # noqa: ARG001
+) -> str:
     """The findings document as JSON."""
     return dumps(document)
 

@@ -10,14 +10,22 @@ from tests.cli._board import NETLIST, write_board
 def test_a_board_that_keeps_its_rules_exits_0(capsys: pytest.CaptureFixture[str]) -> None:
     assert main(["check"]) == 0
     out, err = capsys.readouterr()
-    assert out.startswith("small board   5 parts, 3 nets, 1 RC node   1 of 1 finding decided (100 %)")
+    assert out.startswith("small board   5 parts, 3 nets, 1 RC network   1 of 1 finding decided (100 %)")
     assert err == ""
 
 
 def test_a_failing_finding_exits_1_and_names_the_limit(board: Path, capsys: pytest.CaptureFixture[str]) -> None:
     write_board(board, limit="1 s")
     assert main(["check"]) == 1
-    assert "must be at least 1 s" in capsys.readouterr().out
+    out, err = capsys.readouterr()
+    assert "must be at least 1 s" in out
+    assert err == "exit code 1: 1 finding at or above the fail level (--fail-on error)\n"
+
+
+def test_quiet_says_nothing_at_all(board: Path, capsys: pytest.CaptureFixture[str]) -> None:
+    write_board(board, limit="1 s")
+    assert main(["check", "--quiet"]) == 1
+    assert capsys.readouterr() == ("", "")
 
 
 @pytest.mark.parametrize(("fail_on", "code"), [("error", 1), ("warning", 1), ("note", 1), ("never", 0)])

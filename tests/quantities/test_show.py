@@ -21,6 +21,8 @@ from rcrules.quantities import parse_quantity, show
         (0, "V", "0 V"),
         (-3.3, "V", "-3.3 V"),
         (0.0497, "s", "49.7 ms"),
+        (8.4e-16, "s", "0.84 fs"),
+        (8.4e-19, "s", "8.4e-19 s"),
         (999, "s", "999 s"),
         (7200, "s", "2 h"),
         (1200, "s", "20 min"),

@@ -1,5 +1,9 @@
+import math
 import re
 from dataclasses import replace
+from typing import Any
+
+import pytest
 
 from rcrules.findings import Document, Finding
 from rcrules.reports import reports
@@ -65,7 +69,7 @@ def test_undecided_findings_carry_the_caution_too() -> None:
 
 
 def test_ratios_are_shown_as_the_rule_writes_them() -> None:
-    assert "0 % .. 100 % .. 105 %   must be at most 100 %   over by 5 %" in text(DOCUMENT)
+    assert "0 % .. 100 % .. 105 %   must be at most 100 %   over by 5 percentage points" in text(DOCUMENT)
 
 
 def test_a_number_far_off_its_nominal_is_shown_as_it_is() -> None:
@@ -73,10 +77,56 @@ def test_a_number_far_off_its_nominal_is_shown_as_it_is() -> None:
     assert "SW1 contact 100 mΩ" in of(finding(detail={"side": "at_least", "worst": worst}))
 
 
+def test_parameters_that_move_alike_stand_together_and_the_rest_is_counted() -> None:
+    moved = [("R1", 0.01), ("C1", 0.2), ("R2", 0.01), ("C2", 0.1), ("C3", 0.05), ("C4", 0.04), ("C5", 0.03)]
+    worst = [
+        {"parameter": name, "value": 1.0, "unit": "F", "relative": share, "why": "tolerance", "from": ""}
+        for name, share in moved
+    ]
+    found = of(finding(detail={"side": "at_least", "worst": worst}))
+    assert "R1, R2 +1 % (tolerance), C1 +20 % (tolerance), C2 +10 % (tolerance), C3 +5 % (tolerance), 2 more\n" in found
+
+
+def test_options_are_told_apart_from_the_measure() -> None:
+    asking = finding(measure="settling_time", options={"event": "step-up", "band": "0.1 %"}, detail={})
+    assert "settling time at step-up, band 0.1 %   " in of(asking)
+
+
+def test_a_limit_met_exactly_reads_so() -> None:
+    exact = finding(outcome="holds", margin=0.0)
+    assert "exactly at the limit   proved" in text(replace(DOCUMENT, findings=[exact]), verbose=True)
+
+
+@pytest.mark.parametrize(
+    ("milder", "worse"),
+    [
+        ({"margin": -0.001}, {"margin": -0.02}),
+        ({"margin": -0.02}, {"margin": -math.inf}),
+        (
+            {"limit": {"at_least": 0.03, "unit": "s", "text": "", "from": ""}, "margin": -0.01},
+            {
+                "limit": {"at_most": 5.0, "unit": "V", "text": "", "from": ""},
+                "margin": -9.0,
+                "detail": {"side": "at_most"},
+            },
+        ),
+    ],
+)
+def test_of_one_level_what_is_broken_most_comes_first(milder: dict[str, Any], worse: dict[str, Any]) -> None:
+    found = of(finding(net="MILD", cause="", **milder), finding(net="WORSE", cause="", **worse))
+    assert found.index("WORSE") < found.index("MILD")
+
+
+def test_all_that_assume_the_same_share_a_line() -> None:
+    rows = [{"about": ref, "text": "assumed: no tolerance given, 20 %", "ask": "ask"} for ref in ("C1", "C2")]
+    found = text(replace(DOCUMENT, assumptions=rows), verbose=True)
+    assert "  C1, C2: no tolerance given, 20 %   ask\n" in found
+
+
 def test_nothing_found_says_so() -> None:
     found = of()
-    assert "0 of 0 findings decided" in found
-    assert "nothing fails, 0 hold" in found
+    assert "no rule applies to anything on it" in found
+    assert "nothing judged, 1 assumption" in found
 
 
 def test_lines_that_ask_the_same_of_many_parts_share_an_entry() -> None:
