@@ -1,22 +1,21 @@
 """What a run costs, counted in calls and objects, so that no clock decides."""
 
-import cProfile
 import gc
-import pstats
 from pathlib import Path
 
 from rcrules.networks import Board
 from rcrules.pipeline import Job, run
 from tests.bench._board import netlist
+from tests.work import Work
 
 
 def calls(folder: Path, parts: int) -> int:
     """Calls of functions in one run over a board of so many parts."""
     path = folder / f"board-{parts}.xml"
     path.write_text(netlist(parts), encoding="utf-8")
-    profile = cProfile.Profile()
-    profile.runcall(run, Job(inputs=(str(path),)))
-    return int(pstats.Stats(profile).total_calls)  # type: ignore[attr-defined]  # not in the stubs
+    with Work() as work:
+        run(Job(inputs=(str(path),)))
+    return work.calls
 
 
 def boards() -> set[int]:

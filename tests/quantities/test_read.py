@@ -1,12 +1,12 @@
 """Quantities as people write them."""
 
-import time
 
 import pytest
 from hypothesis import given
 from hypothesis import strategies as st
 
 from rcrules.quantities import QuantityError, Spread, parse_quantity
+from tests.work import Work
 
 
 def near(low, nominal, high, unit):
@@ -146,10 +146,9 @@ def test_another_dimension_than_expected_is_refused(text, unit, problem):
     ["9**9**8 s", "9" * 1_000_000, "1" + "0" * 150 + " V", "1 " + "k" * 150, "((((" * 40, "1 V " + "+" * 150, "\0"],
 )
 def test_hostile_texts_end_at_once(text):
-    start = time.perf_counter()
-    with pytest.raises(QuantityError):
+    with Work() as work, pytest.raises(QuantityError):
         parse_quantity(text)
-    assert time.perf_counter() - start < 0.5
+    assert work.calls < 10_000
 
 
 @given(st.text(alphabet="0123456789.,+-±%/eE VkmµΩsFA\u2126°C ", max_size=24))
