@@ -109,9 +109,7 @@ def _output_options(command: argparse.ArgumentParser) -> None:
     )
     command.add_argument("--verbose", action="store_true", help="also list assumptions, evidence and what holds")
     command.add_argument("--quiet", action="store_true", help="no report but those asked for by --report")
-    command.add_argument(
-        "--color", choices=("auto", "always", "never"), default="auto", help="colours (default: on a terminal)"
-    )
+    _color(command)
 
 
 def _rules(command: argparse.ArgumentParser) -> None:
@@ -121,12 +119,17 @@ def _rules(command: argparse.ArgumentParser) -> None:
     command.add_argument(
         "--measures", action="store_true", help="list the measures that rules may use, with their options"
     )
+    _color(command)
 
 
 def _demo(command: argparse.ArgumentParser) -> None:
     command.add_argument(
         "folder", nargs="?", metavar="FOLDER", help="where to copy it (default: a new temporary folder)"
     )
+    _color(command)
+
+
+def _color(command: argparse.ArgumentParser) -> None:
     command.add_argument(
         "--color", choices=("auto", "always", "never"), default="auto", help="colours (default: on a terminal)"
     )

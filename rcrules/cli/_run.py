@@ -38,16 +38,18 @@ def render(chosen: argparse.Namespace) -> int:
 
 def rules(chosen: argparse.Namespace) -> int:
     """Packs and rules, or measures, in words."""
-    from rcrules.cli._output import to_stdout
+    from rcrules.cli._output import terminal_width, to_stdout, wants_color
+    from rcrules.reports import laid_out
 
     if chosen.measures:
-        from rcrules.cli._measures import measures_text
+        from rcrules.cli._measures import measures_lines
 
-        to_stdout(measures_text())
+        lines = measures_lines()
     else:
-        from rcrules.cli._rules import rules_text
+        from rcrules.cli._rules import rules_lines
 
-        to_stdout(rules_text(tuple(chosen.packs)))
+        lines = rules_lines(tuple(chosen.packs))
+    to_stdout(laid_out(lines, color=wants_color(chosen.color), width=terminal_width()))
     return 0
 
 

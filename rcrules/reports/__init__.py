@@ -2,10 +2,12 @@
 
 from functools import cache
 
-from rcrules.reports._lines import safe
+from rcrules.reports._columns import aligned
+from rcrules.reports._lines import Line, safe
 from rcrules.reports._report import Render, Report
+from rcrules.reports._wrap import laid_out
 
-__all__ = ["Render", "Report", "reports", "safe"]
+__all__ = ["Line", "Render", "Report", "aligned", "laid_out", "reports", "safe"]
 
 
 @cache

@@ -1,11 +1,12 @@
 """Long lines folded at the width of a terminal, what follows set under what it belongs to."""
 
 import re
+from collections.abc import Iterable
 from itertools import groupby
 from typing import Final
 
 from rcrules.reports._columns import cells
-from rcrules.reports._lines import Line, safe
+from rcrules.reports._lines import Line, joined, safe
 
 _LEAST: Final = 40
 """On a narrower terminal lines stay whole."""
@@ -21,6 +22,11 @@ _INNER: Final = re.compile(r"\S+(?: \S+)*? {2}(?! )")
 
 Styled = list[tuple[str, str]]
 """Letters with their styles."""
+
+
+def laid_out(lines: Iterable[Line], *, color: bool, width: int | None) -> str:
+    """All lines as one text, folded at the width of the terminal; None = every line stays whole."""
+    return joined(lines if width is None else (part for line in lines for part in folded(line, width)), color=color)
 
 
 def folded(line: Line, width: int) -> list[Line]:

@@ -1,19 +1,18 @@
 """The report for a terminal or a log: what broke first, then what one line would decide, then the counts."""
 
 from rcrules.findings import Document
-from rcrules.reports._lines import joined
 from rcrules.reports._report import Report
 from rcrules.reports._text_findings import findings_lines
 from rcrules.reports._text_networks import networks_lines
 from rcrules.reports._text_summary import header_lines, summary_lines
-from rcrules.reports._wrap import folded
+from rcrules.reports._wrap import laid_out
 
 
 def render(document: Document, *, verbose: bool = False, color: bool = False, width: int | None = None) -> str:
     """The findings; the networks where no rules were applied."""
     body = findings_lines(document, verbose=verbose) if document.packs else networks_lines(document, verbose=verbose)
     lines = [*header_lines(document), *body, *summary_lines(document, verbose=verbose)]
-    return joined(lines if width is None else (part for line in lines for part in folded(line, width)), color=color)
+    return laid_out(lines, color=color, width=width)
 
 
 REPORT = Report(name="text", suffix=".txt", summary="For people at a terminal.", render=render)

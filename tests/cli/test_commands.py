@@ -3,6 +3,7 @@ from pathlib import Path
 import pytest
 
 from rcrules.cli import main
+from rcrules.cli._arguments import parser
 from rcrules.findings import loads
 from tests.cli._board import NETLIST, write_board
 
@@ -86,4 +87,36 @@ def test_measures_are_listed_with_their_options(capsys: pytest.CaptureFixture[st
     out = capsys.readouterr().out
     assert "time_constant [s]" in out
     assert "settling_time" in out
-    assert "band = " in out
+    assert "band = QUANTITY   (default 1 %)" in out
+
+
+def test_what_many_options_share_is_told_once(capsys: pytest.CaptureFixture[str]) -> None:
+    assert main(["rules", "--measures"]) == 0
+    out = capsys.readouterr().out
+    assert "event = EVENT" in out
+    assert out.count('"power-up" | "power-down"') == 1
+
+
+def test_names_in_rule_files_cannot_steer_the_terminal(board: Path, capsys: pytest.CaptureFixture[str]) -> None:
+    rules = board / "our-rules.toml"
+    rules.write_text(rules.read_text().replace("Rules of our team", "\\u001b[2JRules"))
+    assert main(["rules", "our-rules.toml"]) == 0
+    out = capsys.readouterr().out
+    assert "\x1b" not in out
+    assert "\\x1b[2JRules" in out
+    main(["rules", "our-rules.toml", "--color", "always"])
+    assert "\x1b[1mour-rules\x1b[0m" in capsys.readouterr().out
+
+
+@pytest.mark.parametrize("command", ["check", "networks", "render", "rules", "demo"])
+def test_every_command_explains_itself(command: str, capsys: pytest.CaptureFixture[str]) -> None:
+    """A sentence of what it does, a text for every argument and option, the exit codes."""
+    with pytest.raises(SystemExit) as stopped:
+        main([command, "--help"])
+    assert stopped.value.code == 0
+    out = capsys.readouterr().out
+    assert "exit code: 0" in " ".join(out.split())
+    (actions,) = (action.choices for action in parser()._actions if action.choices and action.metavar == "COMMAND")
+    assert all(action.help for action in actions[command]._actions)
+    assert actions[command].description.endswith(".")
+    assert len(actions[command].description) > 40
