@@ -37,7 +37,7 @@ class Solution:
 
 def endless(measure: Measure) -> bool:
     """Whether infinity says that something never happens."""
-    return measure.unit == "s"
+    return measure.unit == "s" and not measure.lasting
 
 
 def solve(asked: Sequence[tuple[Case, Problem]]) -> list[Solution | Failure]:

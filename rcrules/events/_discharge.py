@@ -9,12 +9,13 @@ from rcrules.events._bias import spanned
 from rcrules.events._bleed import Wires, bleeders
 from rcrules.events._circuit import ZERO, Arm, Circuit
 from rcrules.events._levels import Leveller
-from rcrules.events._options import OptionValue, levels_of
+from rcrules.events._options import OptionValue, levels_of, plain_of
 from rcrules.events._part import place_of
 from rcrules.events._sources import Sources, still
 from rcrules.events._table import Table
 from rcrules.events._unmeasurable import Unmeasurable
 from rcrules.measures import Measure
+from rcrules.networks import Branch
 from rcrules.parts import RatedPart
 from rcrules.problems import Form, Names, Problem, Structure
 
@@ -32,9 +33,14 @@ class _Case:
     level: Leveller
 
 
-def pose_discharge(bench: Bench, part: RatedPart, measure: Measure, options: Mapping[str, OptionValue]) -> Problem:
-    """The capacitor with all that hangs on it, from the steady state with all supplies on. Raises Unmeasurable."""
-    branch, table = place_of(bench, part).branch, Table()
+def pose_part_discharge(bench: Bench, part: RatedPart, measure: Measure, options: Mapping[str, OptionValue]) -> Problem:
+    """A capacitor with all that hangs on it. Raises Unmeasurable."""
+    return pose_discharge(bench, place_of(bench, part).branch, measure, options)
+
+
+def pose_discharge(bench: Bench, branch: Branch, measure: Measure, options: Mapping[str, OptionValue]) -> Problem:
+    """A branch with all that hangs on it, from the steady state with all supplies on. Raises Unmeasurable."""
+    table = Table()
     sources = Sources(bench=bench, table=table)
     ends = _oriented(sources, (branch.a, branch.b))
     wires = bleeders(bench, sources, branch)
@@ -48,7 +54,9 @@ def pose_discharge(bench: Bench, part: RatedPart, measure: Measure, options: Map
     structure = _falling(case, circuit) if set(ends) & wires.live else _endless(case)
     level = leveller.form("to", to, rising=False)
     return Problem(
-        structure=replace(structure, levels=(("to", level),)),
+        structure=replace(
+            structure, levels=(("to", level),), options=(*structure.options, *plain_of(measure, options))
+        ),
         parameters=tuple(table.parameters),
         names=_names(circuit, ends),
     )

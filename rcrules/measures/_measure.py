@@ -70,5 +70,7 @@ class Measure:
     """What the structure is."""
     rating: Literal["voltage", "power"] | None = None
     """The rating of the part that it counts in; None = it counts in none."""
+    lasting: bool = False
+    """True: it is a time that should be long, and infinite is as good as it gets."""
     scale_free: bool = False
     """True: a single source of unknown voltage does not matter, because the measure counts in parts of its own step."""

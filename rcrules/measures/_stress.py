@@ -50,10 +50,10 @@ def of_states(structure: Structure, low: Array, high: Array) -> Theory:
 
 
 def with_capacitance(structure: Structure, low: Array, high: Array) -> Theory:
-    """The same for a product with the part's own capacitance, on which the voltage does not depend."""
+    """The same for a product with the part's own capacitance, or all of a supply; the voltage does not depend on it."""
     found = of_states(structure, low, high)
     slopes = Slopes(list(found.signs))
-    if structure.element is not None and ("transient", 1.0) not in structure.options:
-        own = columns([structure.farads[structure.element]])
-        slopes.signs = [1 if index in own else sign for index, sign in enumerate(slopes.signs)]
+    own = structure.farads if structure.element is None else (structure.farads[structure.element],)
+    if ("transient", 1.0) not in structure.options:
+        slopes.signs = [1 if index in columns(own) else sign for index, sign in enumerate(slopes.signs)]
     return slopes.theory(vertices=found.vertices)

@@ -86,6 +86,14 @@ def left_open(structure: Structure, low: Array) -> bool:
     return plain and still and len(forms) == 1 and grounded(structure) and all(increasing(f, low) for f in passives)
 
 
+def discharges(structure: Structure) -> bool:
+    """Whether resistors lead from the observed terminals to held ones."""
+    free = structure.shape.free
+    groups = _components(range(free), structure.shape.resistors)
+    ends = [end for end in (structure.at, structure.against) if end is not None and end < free]
+    return all(any(end in group and max(group) >= free for group in groups) for end in ends)
+
+
 def single_mode(structure: Structure) -> bool:
     """Whether all capacitors lie at the observed terminal against held terminals that never move."""
     pairs = structure.shape.capacitors

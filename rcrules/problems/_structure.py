@@ -114,6 +114,8 @@ class Structure:
     """Index of the observed resistor or capacitor in the shape, for measures of parts."""
     rating: Form | None = None
     """Rated voltage [V] or power [W] of the observed part."""
+    load: Form = ()
+    """What is drawn from the observed supply: a current [A], or a power [W] where option ``draws`` says so."""
     reference: tuple[int, LevelForm] | None = None
     """Where delays count from: None = the event; else the first time at which this held terminal reaches this level."""
     levels: tuple[tuple[str, LevelForm], ...] = ()

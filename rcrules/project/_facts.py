@@ -65,6 +65,15 @@ def _resistance_to_net(text: str) -> tuple[Spread, str]:
     return spread, net.strip().strip("\"'")
 
 
+def _load(table: Table, key: str) -> Spread | None:
+    """A constant current, or a constant power."""
+    spread = table.quantity(key, None)
+    if spread is None or spread.unit in ("A", "W"):
+        return spread
+    table.wrong(key, f"'{key}' must be a current or a power, such as '0 A .. 120 mA'", found=table.found(key))
+    return None
+
+
 def _drive(table: Table, key: str) -> tuple[Spread, Spread] | None:
     return table.parsed(key, _voltage_at_current, "a voltage and a current, such as '0.4 V at 3 mA'")
 
@@ -131,7 +140,7 @@ SUPPLY: Final[Mapping[str, Reader]] = {
     "rise": _Amount("s", 0),
     "after": _text,
     "fall": _Amount("s", 0),
-    "load": _Amount("A"),
+    "load": _load,
 }
 NET: Final[Mapping[str, Reader]] = {
     "swing": _Amount("V"),

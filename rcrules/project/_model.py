@@ -19,6 +19,7 @@ class SupplyFacts:
     after: str | None = None
     fall: Spread | None = None
     load: Spread | None = None
+    """A constant current [A], or a constant power [W]."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

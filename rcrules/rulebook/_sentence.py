@@ -61,7 +61,7 @@ def _options(rule: Rule) -> Iterator[str]:
     for key, value in rule.options.items():
         if key == "event":
             yield f"after {value}"
-        elif key == "from" and value == "event":
+        elif (key == "from" and value == "event") or value == "none":
             continue
         else:
             yield f"{key.replace('_', ' ')} {_shown(rule, key, value)}"
