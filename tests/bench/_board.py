@@ -1,16 +1,32 @@
 """Generated boards of any size: controllers with reset, filters, divider, button, supply filter and decoupling."""
 
+from itertools import pairwise
+from random import Random
 from xml.sax.saxutils import quoteattr
 
 PARTS_PER_CELL = 25
+PARTS_PER_LADDER = 9
+"""On average."""
+
+Components = list[tuple[str, str, str]]
+"""Reference, value, symbol."""
+Nets = dict[str, list[tuple[str, str, str, str]]]
+"""Net -> reference, pin number, pin name, pin type."""
 
 
-def netlist(parts: int) -> str:
-    """An XML netlist (version E) with about ``parts`` parts."""
-    components: list[tuple[str, str, str]] = []
-    nets: dict[str, list[tuple[str, str, str, str]]] = {}
-    for cell in range(max(1, round(parts / PARTS_PER_CELL))):
+def netlist(parts: int, *, varied: bool = False) -> str:
+    """An XML netlist (version E) with about ``parts`` parts.
+
+    varied: half of the parts form ladders of which hardly two are alike; else every cell has the same networks, with
+    other values.
+    """
+    components: Components = []
+    nets: Nets = {}
+    own = parts / 2 if varied else parts
+    for cell in range(max(1, round(own / PARTS_PER_CELL))):
         _cell(cell, components, nets)
+    for ladder in range(round((parts - own) / PARTS_PER_LADDER)):
+        _ladder(ladder, components, nets)
     lines = ['<?xml version="1.0" encoding="UTF-8"?>', '<export version="E">', "<components>"]
     for ref, value, symbol in components:
         lines += [
@@ -30,7 +46,32 @@ def netlist(parts: int) -> str:
     return "\n".join([*lines, "</nets>", "</export>", ""])
 
 
-def _cell(cell: int, components: list[tuple[str, str, str]], nets: dict[str, list[tuple[str, str, str, str]]]) -> None:
+def _ladder(number: int, components: Components, nets: Nets) -> None:
+    """Two to five sections between a connector and a chip, with loads, bleeders and couplings by chance."""
+    chance = Random(number)
+    base, count = 1_000_000 + 20 * number, 0
+
+    def part(prefix: str, a: str, b: str) -> None:
+        nonlocal count
+        count += 1
+        value = f"{chance.randint(1, 99)}k 1%" if prefix == "R" else f"{chance.randint(1, 99)}nF 10% 50V X7R"
+        components.append((f"{prefix}{base + count}", value, prefix))
+        nets.setdefault(a, []).append((f"{prefix}{base + count}", "1", "", "passive"))
+        nets.setdefault(b, []).append((f"{prefix}{base + count}", "2", "", "passive"))
+
+    joints = [f"/ladder{number}/{name}" for name in "ABCDEF"[: chance.randint(3, 6)]]
+    for before, here in pairwise(joints):
+        part("R", before, here)
+        part("C", here, "GND")
+        for prefix, far in (("R", "GND"), ("R", "+3V3"), ("C", before)):
+            if chance.random() < 0.15:
+                part(prefix, here, far)
+    components.extend([(f"J{base}", "PROBE", "Conn_04"), (f"U{base}", "QX32", "QX32")])
+    nets[joints[0]].append((f"J{base}", "1", "", "passive"))
+    nets[joints[-1]].append((f"U{base}", "1", "AIN0", "input"))
+
+
+def _cell(cell: int, components: Components, nets: Nets) -> None:
     """One controller with what hangs on it; the values differ from cell to cell."""
 
     def passive(prefix: str, number: int, value: str, a: str, b: str) -> None:
