@@ -32,13 +32,13 @@ def findings_lines(document: Document, *, verbose: bool) -> list[Line]:
     """All blocks, each after an empty line."""
     texts = part_texts(document)
     lines: list[Line] = []
-    for group in _groups(item for item in document.findings if item.outcome == "fails"):
+    for group in groups(item for item in document.findings if item.outcome == "fails"):
         lines += [(), *_block(group, texts)]
     lines += [*undecided_lines(document, texts, verbose=verbose), *_cautions(document, verbose=verbose)]
     return lines + holding_lines(document, texts) if verbose else lines
 
 
-def _groups(findings: Iterable[Finding]) -> list[list[Finding]]:
+def groups(findings: Iterable[Finding]) -> list[list[Finding]]:
     """Findings of one rule and one cause together; the gravest level first, then what is broken most."""
     groups: dict[tuple[str, ...], list[Finding]] = {}
     for item in findings:
@@ -57,7 +57,7 @@ def _block(group: list[Finding], texts: Mapping[str, str]) -> list[Line]:
     first = group[0]
     lines = [_heading(first, texts), _numbers(first)]
     if first.detail.get("worst"):
-        lines.append((_INDENT, f"{extreme(first)} at  ", _case_text(first.detail["worst"])))
+        lines.append((_INDENT, f"{extreme(first)} at  ", case_text(first.detail["worst"])))
     if len(group) > 1:
         lines.append((_INDENT, f"the same on  {subjects_text(group[1:], texts, limit=12)}"))
     return [*lines, _why(first)]
@@ -84,7 +84,7 @@ def _numbers(finding: Finding) -> Line:
     )
 
 
-def _case_text(worst: list[Json]) -> str:
+def case_text(worst: list[Json]) -> str:
     """``C7 -38 % (tolerance -20 %, X5R -15 %), R12, R13 -1 %``: what moves alike together, the rest counted."""
     alike: dict[tuple[str, str], list[str]] = {}
     for item in worst:

@@ -14,18 +14,23 @@ _SHOWN_UNREADABLE: Final = 5
 
 def header_lines(document: Document) -> list[Line]:
     """Board, counts, share decided."""
-    board = document.board
-    nodes = sum(len(network["nodes"]) for network in document.networks)
+    return [((str(document.board["name"]), "name"), f"   {found_text(document)}{share_text(document)}")]
+
+
+def found_text(document: Document) -> str:
+    """``214 parts, 131 nets, 41 RC networks``."""
+    board, nodes = document.board, sum(len(network["nodes"]) for network in document.networks)
     found = count(len(document.networks), "RC network")
     found += f" with {count(nodes, 'node')}" if nodes != len(document.networks) else ""
-    counts = f"   {count(board['parts'], 'part')}, {count(board['nets'], 'net')}, {found}"
-    return [((str(board["name"]), "name"), counts + _share(document))]
+    return f"{count(board['parts'], 'part')}, {count(board['nets'], 'net')}, {found}"
 
 
-def _share(document: Document) -> str:
+def share_text(document: Document) -> str:
     """``31 of 39 findings decided (79 %)``."""
     if not document.packs:
         return ""
+    if not document.board["pins"]:
+        return "   no netlist, so nothing to judge"
     total = len(document.findings)
     if not total:
         return "   no rule applies to anything on it"
@@ -41,8 +46,7 @@ def summary_lines(document: Document, *, verbose: bool) -> list[Line]:
     lines.append(())
     if not document.packs:
         return lines + whereabouts(document, verbose=verbose)
-    lines.append((_totals(document, verbose=verbose),))
-    return lines + [(text,) for text in (_coverage(document, "capacitor"), _coverage(document, "resistor")) if text]
+    return [*lines, (totals(document, verbose=verbose),), *((text,) for text in coverage_texts(document))]
 
 
 def _problems(document: Document, *, verbose: bool) -> list[Line]:
@@ -72,7 +76,7 @@ def _assumptions(rows: list[Json]) -> list[Line]:
     ]
 
 
-def _totals(document: Document, *, verbose: bool) -> str:
+def totals(document: Document, *, verbose: bool) -> str:
     """``1 error, 1 warning, 29 hold, 8 undecided, 12 assumptions (--verbose lists them)``."""
     failing = Counter(item.level for item in document.findings if item.outcome == "fails")
     outcomes = Counter(item.outcome for item in document.findings)
@@ -84,6 +88,11 @@ def _totals(document: Document, *, verbose: bool) -> str:
     return ", ".join([*words, assumptions]) + (
         " (--verbose lists them)" if document.assumptions and not verbose else ""
     )
+
+
+def coverage_texts(document: Document) -> list[str]:
+    """A line for the capacitors, a line for the resistors."""
+    return [text for kind in ("capacitor", "resistor") if (text := _coverage(document, kind))]
 
 
 def _coverage(document: Document, kind: str) -> str:

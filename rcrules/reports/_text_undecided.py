@@ -21,7 +21,7 @@ _LINE: Final = re.compile(r'\[(?P<table>\w+)\."(?P<name>.+)"\] (?P<fact>\S+) = .
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
-class _Entry:
+class Entry:
     """Lines of the project file that ask for the same fact, and what they decide."""
 
     asks: list[str]
@@ -31,20 +31,20 @@ class _Entry:
 def undecided_lines(document: Document, texts: Mapping[str, str], *, verbose: bool) -> list[Line]:
     """Every entry after an empty line; what no line would decide comes last."""
     lines: list[Line] = []
-    for entry in _entries([item for item in document.findings if item.outcome == "undecided"]):
+    for entry in entries([item for item in document.findings if item.outcome == "undecided"]):
         lines += [(), _heading(entry), *_details(entry.findings, texts, verbose=verbose)]
     return lines
 
 
-def _entries(findings: list[Finding]) -> list[_Entry]:
+def entries(findings: list[Finding]) -> list[Entry]:
     by_ask: dict[str, list[Finding]] = {}
     for item in findings:
         by_ask.setdefault(item.ask[0] if item.ask else "", []).append(item)
-    together: dict[str, list[str]] = {}
+    shared: dict[str, list[str]] = {}
     for ask, own in by_ask.items():
-        together.setdefault(ask if len(own) >= _OWN_ENTRY else _same_fact(ask), []).append(ask)
-    entries = [_Entry(asks=asks, findings=[item for ask in asks for item in by_ask[ask]]) for asks in together.values()]
-    return sorted(entries, key=lambda entry: (not entry.asks[0], -len(entry.findings) / len(entry.asks), entry.asks[0]))
+        shared.setdefault(ask if len(own) >= _OWN_ENTRY else _same_fact(ask), []).append(ask)
+    found = [Entry(asks=asks, findings=[item for ask in asks for item in by_ask[ask]]) for asks in shared.values()]
+    return sorted(found, key=lambda entry: (not entry.asks[0], -len(entry.findings) / len(entry.asks), entry.asks[0]))
 
 
 def _same_fact(ask: str) -> str:
@@ -53,7 +53,7 @@ def _same_fact(ask: str) -> str:
     return f"{found['table']} {found['fact']}" if found and found["table"] != "settings" else ask
 
 
-def _heading(entry: _Entry) -> Line:
+def _heading(entry: Entry) -> Line:
     word, number = ("undecided", "open"), count(len(entry.findings), "finding")
     if not entry.asks[0]:
         return (word, f": {number} that no line of the project file would decide")
@@ -66,7 +66,7 @@ def _heading(entry: _Entry) -> Line:
 
 def _details(findings: list[Finding], texts: Mapping[str, str], *, verbose: bool) -> list[Line]:
     """Rule, subjects and reason; findings of one rule and reason on one line, the largest groups first."""
-    ordered = sorted(_together(findings, verbose=verbose), key=lambda entry: -len(entry[2]))
+    ordered = sorted(together(findings, verbose=verbose), key=lambda entry: -len(entry[2]))
     shown = ordered if verbose else ordered[:_SHOWN_REASONS]
     limit = len(findings) if verbose else _SHOWN_SUBJECTS
     lines: list[Line] = [
@@ -76,7 +76,7 @@ def _details(findings: list[Finding], texts: Mapping[str, str], *, verbose: bool
     return [*lines, (_INDENT, f"and {rest} more (--verbose lists them)")] if rest else lines
 
 
-def _together(findings: list[Finding], *, verbose: bool) -> list[tuple[str, str, list[Finding]]]:
+def together(findings: list[Finding], *, verbose: bool) -> list[tuple[str, str, list[Finding]]]:
     """Rule, reason, findings; where not everything is asked for, reasons that differ only by a name count as one."""
     found: list[tuple[str, str, list[Finding]]] = []
     for rule in dict.fromkeys(item.rule for item in findings):

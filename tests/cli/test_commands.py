@@ -1,3 +1,4 @@
+import re
 from pathlib import Path
 
 import pytest
@@ -5,6 +6,7 @@ import pytest
 from rcrules.cli import main
 from rcrules.cli._arguments import parser
 from rcrules.findings import loads
+from rcrules.reports import reports
 from tests.cli._board import NETLIST, write_board
 
 
@@ -120,3 +122,11 @@ def test_every_command_explains_itself(command: str, capsys: pytest.CaptureFixtu
     assert all(action.help for action in actions[command]._actions)
     assert actions[command].description.endswith(".")
     assert len(actions[command].description) > 40
+
+
+def test_the_help_names_every_report(capsys: pytest.CaptureFixture[str]) -> None:
+    with pytest.raises(SystemExit):
+        main(["check", "--help"])
+    told = re.search(r"text \(default\), ([\w, ]+), on", " ".join(capsys.readouterr().out.split()))
+    assert told is not None
+    assert {"text", *re.split(", | or ", told[1])} == set(reports())
