@@ -6,6 +6,7 @@ list stands on a line of its own, so that two documents compare line by line.
 
 import json
 import math
+import re
 from collections.abc import Mapping
 from dataclasses import fields
 from functools import lru_cache
@@ -16,6 +17,10 @@ from rcrules.findings._document import Document, Finding, Json, Quantity
 from rcrules.findings._shape import damage
 
 SCHEMA: Final = 1
+_UNSEEN: Final = re.compile(
+    "[\x7f-\x9f\u00ad\u061c\u180e\u200b-\u200f\u2028-\u202e\u2060-\u206f\ufeff\ufff9-\ufffb\ud800-\udfff\U000e0000-\U000e007f]"
+)
+"""What could steer a terminal or hide in a text; written as an escape."""
 _FIELDS: Final = tuple(item.name for item in fields(Document) if item.init)
 _ORDER: Final = ("rcrules", *(name for name in _FIELDS if name != "schema"))
 _NUMBERS: Final = frozenset(
@@ -47,7 +52,8 @@ def dumps(document: Document) -> str:
     """The JSON text of section "findings document", ending in a newline."""
     whole = document if document.settled else settled(document)
     members = ((key, getattr(whole, "schema" if key == "rcrules" else key)) for key in _ORDER)
-    return "{\n" + ",\n".join(f"{json.dumps(key)}: {_block(member)}" for key, member in members) + "\n}\n"
+    text = "{\n" + ",\n".join(f"{json.dumps(key)}: {_block(member)}" for key, member in members) + "\n}\n"
+    return _UNSEEN.sub(lambda found: json.dumps(found[0])[1:-1], text)
 
 
 def loads(text: str, name: str = "<saved>") -> Document:

@@ -24,6 +24,7 @@ from rcrules.vocabulary import SEVERITIES
 
 _INDENT: Final = " " * 8
 _SHOWN_CASES: Final = 4
+_SHOWN_ALIKE: Final = 12
 _MOST_RELATIVE: Final = 10.0
 """A number more than so many times its nominal value off is shown as it is."""
 
@@ -33,7 +34,7 @@ def findings_lines(document: Document, *, verbose: bool) -> list[Line]:
     texts = part_texts(document)
     lines: list[Line] = []
     for group in groups(item for item in document.findings if item.outcome == "fails"):
-        lines += [(), *_block(group, texts)]
+        lines += [(), *_block(group, texts, limit=len(group) if verbose else _SHOWN_ALIKE)]
     lines += [*undecided_lines(document, texts, verbose=verbose), *_cautions(document, verbose=verbose)]
     return lines + holding_lines(document, texts) if verbose else lines
 
@@ -52,14 +53,14 @@ def _order(finding: Finding) -> tuple[object, ...]:
     return (SEVERITIES.index(finding.level), worst, finding.rule, finding.net or "", finding.parts)
 
 
-def _block(group: list[Finding], texts: Mapping[str, str]) -> list[Line]:
+def _block(group: list[Finding], texts: Mapping[str, str], *, limit: int) -> list[Line]:
     """One failing group: heading, numbers, the worst case, why."""
     first = group[0]
     lines = [_heading(first, texts), _numbers(first)]
     if first.detail.get("worst"):
         lines.append((_INDENT, f"{extreme(first)} at  ", case_text(first.detail["worst"])))
     if len(group) > 1:
-        lines.append((_INDENT, f"the same on  {subjects_text(group[1:], texts, limit=12)}"))
+        lines.append((_INDENT, f"the same on  {subjects_text(group[1:], texts, limit=limit)}"))
     return [*lines, _why(first)]
 
 

@@ -76,3 +76,10 @@ def test_a_settled_document_is_what_reads_back() -> None:
 def test_a_changed_copy_of_a_settled_document_is_settled_anew() -> None:
     document = replace(settled(DOCUMENT), findings=[finding(margin=1 / 3)])
     assert json.loads(dumps(document))["findings"][0]["margin"] == 0.333333333333
+
+
+def test_what_could_steer_a_terminal_is_written_as_an_escape() -> None:
+    document = replace(DOCUMENT, findings=[finding(net="A\u202eB\x9b2J\x1b[2J\ud800\U000e0041 Ω")])
+    text = dumps(document)
+    assert r'"A\u202eB\u009b2J\u001b[2J\ud800\udb40\udc41 Ω"' in text
+    assert loads(text).findings[0].net == document.findings[0].net

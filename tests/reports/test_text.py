@@ -165,3 +165,9 @@ def test_reasons_that_differ_in_two_places_stay_apart() -> None:
     reasons = ["#1: #1 is 3.3 V; holds where #1 is at most 3 V", "#2: #2 is 5 V; holds where #2 is at most 4 V"]
     found = of(*(finding(outcome="undecided", net="N", ask=[], reason=reason) for reason in reasons))
     assert all(reason in found for reason in reasons)
+
+
+def test_parts_of_one_cause_are_all_named_on_request() -> None:
+    document = replace(DOCUMENT, findings=[finding(net=f"N{n}") for n in range(20)])
+    assert "N12 and 7 more\n" in text(document)
+    assert "N18, N19\n" in text(document, verbose=True)
