@@ -6,15 +6,31 @@ from typing import Final
 from rcrules.findings import Document, Json
 from rcrules.reports._lines import Line
 from rcrules.reports._text_whereabouts import CLASSES, counts_as, whereabouts
-from rcrules.reports._words import count
+from rcrules.reports._words import count, number
 from rcrules.vocabulary import SEVERITIES
 
 _SHOWN_UNREADABLE: Final = 5
 
 
-def header_lines(document: Document) -> list[Line]:
-    """Board, counts, share decided."""
-    return [((str(document.board["name"]), "name"), f"   {found_text(document)}{share_text(document)}")]
+def header_lines(document: Document, *, verbose: bool) -> list[Line]:
+    """Board, counts, share decided; on request under what conditions."""
+    first: Line = ((str(document.board["name"]), "name"), f"   {found_text(document)}{share_text(document)}")
+    return [first, *([_conditions(document)] if verbose else [])]
+
+
+def _conditions(document: Document) -> Line:
+    """``conditions   temperature -20 °C .. 60 °C, life 10 year``."""
+    given = {name: row for name, row in document.conditions.items() if row["low"] is not None}
+    texts = [f"{name} {_range(row)}" for name, row in given.items()]
+    missing = [name for name in document.conditions if name not in given]
+    texts += [f"no {' or '.join(missing)} given"] if missing else []
+    return (("conditions", "name"), f"   {', '.join(texts)}")
+
+
+def _range(row: Json) -> str:
+    """From lowest to highest; a time that starts at once by its end alone."""
+    ends = (row["high"], row["high"]) if row["low"] == 0 and row["unit"] == "s" else (row["low"], row["high"])
+    return " .. ".join(dict.fromkeys(number(end, row["unit"]) for end in ends))
 
 
 def found_text(document: Document) -> str:

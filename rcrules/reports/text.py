@@ -11,7 +11,7 @@ from rcrules.reports._wrap import laid_out
 def render(document: Document, *, verbose: bool = False, color: bool = False, width: int | None = None) -> str:
     """The findings; the networks where no rules were applied."""
     body = findings_lines(document, verbose=verbose) if document.packs else networks_lines(document, verbose=verbose)
-    lines = [*header_lines(document), *body, *summary_lines(document, verbose=verbose)]
+    lines = [*header_lines(document, verbose=verbose), *body, *summary_lines(document, verbose=verbose)]
     return laid_out(lines, color=color, width=width)
 
 

@@ -171,3 +171,11 @@ def test_parts_of_one_cause_are_all_named_on_request() -> None:
     document = replace(DOCUMENT, findings=[finding(net=f"N{n}") for n in range(20)])
     assert "N12 and 7 more\n" in text(document)
     assert "N18, N19\n" in text(document, verbose=True)
+
+
+def test_conditions_are_told_on_request() -> None:
+    assert "conditions   temperature -20 °C .. 60 °C, life 10 year\n" in text(DOCUMENT, verbose=True)
+    assert "conditions" not in text(DOCUMENT)
+    none = {"low": None, "nominal": None, "high": None, "unit": "s"}
+    document = replace(DOCUMENT, conditions={**DOCUMENT.conditions, "life": none})
+    assert "temperature -20 °C .. 60 °C, no life given\n" in text(document, verbose=True)
