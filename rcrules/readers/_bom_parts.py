@@ -7,6 +7,7 @@ from typing import Final
 
 from rcrules.errors import Place, UserMistake
 from rcrules.readers._bom_tables import Table
+from rcrules.readers._bounds import MAX_PARTS, named
 from rcrules.readers._export import Cell, ExportPart, Remark, Source
 from rcrules.readers._fitting import fitting
 from rcrules.readers._mistakes import refusal, shorten
@@ -18,8 +19,6 @@ _EMPTY: Final = frozenset({"", "~", "-", "--", "—"})
 _COUNT: Final = re.compile(r"(\d+)(?:[.,]0*)?")
 _PIECE: Final = re.compile(r"[^\W\d_]+\d+#\d+")
 """``J10#1``: one of several pieces bought for the part J10."""
-MAX_LISTED: Final = 250_000
-"""References of one file, each as often as it is listed."""
 _SHOWN: Final = 8
 _ENOUGH: Final = 4
 """Rows that must agree before quantities are taken as those of several boards."""
@@ -89,10 +88,11 @@ class PartList:
             return
         self._check_quantity(table, row, refs, wanted)
         self._listed += len(refs)
-        if self._listed > MAX_LISTED:
-            raise self._too_many(row, f"more than {MAX_LISTED} references in all")
+        if self._listed > MAX_PARTS:
+            raise self._too_many(row, f"more than {MAX_PARTS} references in all")
         entry = self._part(table, row, refs[0])
         for ref in refs:
+            named(self._source.name, row.line, "a reference", ref)
             self._add_part(entry if ref == refs[0] else replace(entry, ref=ref))
 
     def _references(self, row: Row, text: str, wanted: int | None) -> tuple[str, ...]:
@@ -107,7 +107,7 @@ class PartList:
             "the rows stand for too many parts",
             line=row.line,
             found=found,
-            expected=f"at most {MAX_REFERENCES} references in a cell and {MAX_LISTED} in a file",
+            expected=f"at most {MAX_REFERENCES} references in a cell and {MAX_PARTS} in a file",
             do="correct the ranges of references",
         )
 

@@ -73,8 +73,10 @@ _MARKS: Final = re.compile(r"[^\w]+|_")
 @lru_cache(maxsize=4096)
 def plain(name: str) -> str:
     """A header for comparison: lower case, without accents and marks; ``Reference(s)`` is ``references``."""
-    bare = unicodedata.normalize("NFKD", name.replace("(s)", "s").replace("#", " no "))
-    letters = "".join(character for character in bare if not unicodedata.combining(character))
+    letters = name.replace("(s)", "s").replace("#", " no ")
+    if not letters.isascii():
+        bare = unicodedata.normalize("NFKD", letters)
+        letters = "".join(character for character in bare if not unicodedata.combining(character))
     return " ".join(_MARKS.sub(" ", letters.lower()).split())
 
 

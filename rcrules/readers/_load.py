@@ -7,7 +7,7 @@ from typing import Final
 from rcrules.readers._export import Source
 from rcrules.readers._mistakes import refusal
 
-SIZE_LIMIT: Final = 512 * 2**20
+SIZE_LIMIT: Final = 64 * 2**20
 """Bytes of the largest input that is read, unless the caller says otherwise."""
 
 
@@ -30,7 +30,7 @@ def _whole(name: str, data: bytes, size_limit: int) -> Source:
         raise refusal(
             name,
             "the file is too large",
-            found=f"more than {size_limit} bytes",
+            found=f"more than {size_limit / 2**20:.3g} MiB",
             expected="a netlist or BOM of one board",
             do="check that this is the file you mean",
         )

@@ -2,11 +2,12 @@
 
 import hashlib
 from collections.abc import Mapping
-from dataclasses import dataclass, field
 from typing import Final
 
 from rcrules.errors import Place
+from rcrules.readers import _bounds
 from rcrules.readers._columns import DESCRIPTION, plain
+from rcrules.readers._component import Component, LibraryPart, Node, refuse_long
 from rcrules.readers._export import Cell, Export, ExportPart, ExportPin, Remark, Source
 from rcrules.readers._fitting import fitting
 from rcrules.readers._pin_types import pin_type
@@ -15,39 +16,6 @@ from rcrules.readers._remarks import Remarks
 _SHEET_PROPERTIES: Final = frozenset({"sheetname", "sheetfile"})
 _NO: Final = frozenset({"0", "no", "false", "n"})
 _PLACEHOLDER: Final = "~"
-
-Entry = tuple[str, str | None, int]
-"""Name, text (None = a flag without text) and line of a field or property."""
-Node = tuple[str, str, str, str, int]
-"""Reference, pin number, pin name, pin type and line of one connection, '' where not given."""
-
-
-@dataclass(slots=True, kw_only=True)
-class Component:
-    """A component as written."""
-
-    ref: str
-    line: int
-    value: str = ""
-    value_line: int = 0
-    footprint: str = ""
-    description: str = ""
-    datasheet: str = ""
-    library: str = ""
-    symbol: str = ""
-    sheet: str = ""
-    fields: list[Entry] = field(default_factory=list)
-    properties: list[Entry] = field(default_factory=list)
-    """The same fields once more in some versions, then fields of the sheet, then flags."""
-    variants: list[str] = field(default_factory=list)
-
-
-@dataclass(slots=True, kw_only=True)
-class LibraryPart:
-    """A symbol of the library: the names and types of its pins by number."""
-
-    pins: Mapping[str, tuple[str, str]]
-    description: str = ""
 
 
 class Netlist:
@@ -62,6 +30,7 @@ class Netlist:
         self._library: dict[tuple[str, str], LibraryPart] = {}
         self._by_symbol: dict[str, LibraryPart] = {}
         self._nets: dict[str, Place] = {}
+        self._listed = 0
         self._pending: list[Node] = []
         self._nodes: list[tuple[str, Node]] = []
         self._places: dict[int, Place] = {}
@@ -79,6 +48,9 @@ class Netlist:
 
     def add_component(self, component: Component) -> None:
         """Keep a component; of two with the same reference the first stands."""
+        self._listed += 1
+        _bounds.bound(self.source.name, component.line, "parts", self._listed, _bounds.MAX_PARTS)
+        refuse_long(self.source.name, component)
         first = self._components.setdefault(component.ref, component)
         if first is component:
             return
@@ -94,10 +66,16 @@ class Netlist:
 
     def add_node(self, node: Node) -> None:
         """Keep a connection for the net that is added next."""
+        ref, number, name, _, line = node
+        for what, text in (("a reference", ref), ("a pin number", number), ("a pin name", name)):
+            _bounds.named(self.source.name, line, what, text)
         self._pending.append(node)
+        _bounds.bound(self.source.name, line, "connections", len(self._pending) + len(self._nodes), _bounds.MAX_PINS)
 
     def add_net(self, name: str, code: str, line: int) -> None:
         """Keep a net with the connections added before it; nets without a name are told apart by their code."""
+        _bounds.named(self.source.name, line, "a net name", name or code)
+        _bounds.bound(self.source.name, line, "nets", len(self._nets) + 1, _bounds.MAX_NETS)
         key = name or f"#{code or len(self._nets) + 1}"
         if key in self._nets:
             if name:
@@ -222,6 +200,7 @@ class Netlist:
         for _, (ref, _, _, _, line) in self._nodes:
             if ref not in told:
                 told.add(ref)
+                _bounds.bound(self.source.name, line, "parts", len(told), _bounds.MAX_PARTS)
                 self.remark(line, f"{ref} stands in the nets but not in the list of components")
 
 

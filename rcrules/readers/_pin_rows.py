@@ -5,6 +5,7 @@ from dataclasses import dataclass
 from typing import Final
 
 from rcrules.errors import Place
+from rcrules.readers import _bounds
 from rcrules.readers._export import Cell, ExportPart, ExportPin, Remark, Source
 from rcrules.readers._fitting import fitting
 from rcrules.readers._pin_types import pin_type
@@ -43,6 +44,7 @@ class PinRows:
         self._nets: dict[str, Place] = {}
         self._pins: dict[tuple[str, str, str], ExportPin] = {}
         self._net_of: dict[tuple[str, str], str] = {}
+        self._ended = 0
         self._remarks = Remarks()
 
     def parts(self) -> tuple[ExportPart, ...]:
@@ -65,16 +67,28 @@ class PinRows:
         """Take in a row; comment rows (``#``) and repeated headers are the caller's to leave out."""
         net = row.cell(self._columns.net)
         if net:
+            self._bounded(row, "a net name", net)
             self._nets.setdefault(net, self._place(row, self._columns.net))
         ends = self._ends(row)
         if not ends and not net:
             self._remark(row, "this row names neither a net nor a pin; left out")
+        self._ended += len(ends)
         for ref, number in ends:
+            self._bounded(row, "a reference", ref)
+            self._bounded(row, "a pin number", number)
             self._add_part(row, ref)
             if not number:
                 self._remark(row, f"{ref} has no pin number here; the connection is left out")
             elif net:
                 self._add_pin(row, ref, number, net)
+
+    def _bounded(self, row: Row, what: str, text: str) -> None:
+        """Raise UserMistake where a name is endless or there is more of everything than on any board."""
+        file = self._source.name
+        _bounds.named(file, row.line, what, text)
+        _bounds.bound(file, row.line, "connections", self._ended, _bounds.MAX_PINS)
+        _bounds.bound(file, row.line, "parts", len(self._parts), _bounds.MAX_PARTS)
+        _bounds.bound(file, row.line, "nets", len(self._nets), _bounds.MAX_NETS)
 
     def _ends(self, row: Row) -> list[tuple[str, str]]:
         """Part and pin of each connection of a row."""

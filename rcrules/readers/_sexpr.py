@@ -9,11 +9,12 @@ from rcrules.readers._mistakes import refusal, shorten
 from rcrules.readers._text import Lines
 
 MAX_DEPTH: Final = 256
-MAX_KEPT: Final = 100_000
-"""Forms kept at one time, those of one component or library part."""
+MAX_KEPT: Final = 200_000
+"""Brackets and texts between two that are understood: those of one component or library part."""
 MAX_ATOM: Final = 1_000_000
 """Characters of the longest text."""
-_TOKEN: Final = re.compile(r'[()]|"[^"\\]*+(?:\\.[^"\\]*+)*+"|\r\n|[\n\r]|[^\s()"]++|"', re.DOTALL)
+_TOKEN: Final = re.compile(r'[()]|"[^"\\]*+(?:\\.[^"\\]*+)*+"|[\r\n]\s*+|[^\s()"]++|[ \t]{99}[ \t]*+|"', re.DOTALL)
+_BLANKS: Final = " \t\r\n"
 _ESCAPE: Final = re.compile(r"\\(.)", re.DOTALL)
 _ESCAPES: Final = {"n": "\n", "r": "\r", "t": "\t"}
 
@@ -43,22 +44,23 @@ class Form:
         return next((form for form in self.forms if form.head == head), None)
 
 
-def parse(file: str, text: str, take: Callable[[str | None, Form], bool]) -> None:
+def parse(file: str, text: str, take: Callable[[str | None, Form], bool], containers: frozenset[str]) -> None:
     """Go through the one form that the text holds.
 
-    take: called as each inner form ends, with the head of the form around it; where it returns True the form is let
-    go, so that a long file needs little memory. Raises UserMistake with line and column.
+    take: called as each inner form ends, with the head of the form around it; where it returns True the form is
+    understood and let go, so that a long file needs little memory. containers: heads of forms whose own forms are let
+    go in any case. Raises UserMistake with line and column.
     """
     stack: list[Form] = []
     line, kept, ended = 1, 0, False
     for match in _TOKEN.finditer(text):
         token = match[0]
         if token == "(":
-            if ended or len(stack) >= MAX_DEPTH or kept > MAX_KEPT:
+            if ended or len(stack) >= MAX_DEPTH:
                 raise _misplaced(file, text, match, stack, kept)
             stack.append(Form(line))
         elif token == ")":
-            if not stack:
+            if not stack or kept > MAX_KEPT:
                 raise _misplaced(file, text, match, stack, kept)
             form = stack.pop()
             if not stack:
@@ -66,16 +68,23 @@ def parse(file: str, text: str, take: Callable[[str | None, Form], bool]) -> Non
             elif take(stack[-1].head, form):
                 kept = 0
             else:
-                stack[-1].forms.append(form)
                 kept += 1
-        elif token[0] in "\n\r":
-            line += 1
-        elif not stack or token == '"' or len(token) > MAX_ATOM:
+                if stack[-1].head not in containers:
+                    stack[-1].forms.append(form)
+        elif token[0] in _BLANKS:
+            line += _line_ends(token)
+        elif not stack or token == '"' or len(token) > MAX_ATOM or kept > MAX_KEPT:
             raise _misplaced(file, text, match, stack, kept)
         else:
+            kept += 1
             line += _add_atom(stack[-1], token)
     if stack:
         raise _not_closed(file, stack)
+
+
+def _line_ends(text: str) -> int:
+    """Number of line ends: CR LF, LF, and a lone CR."""
+    return text.count("\n") + (text.count("\r") - text.count("\r\n") if "\r" in text else 0)
 
 
 def _add_atom(form: Form, token: str) -> int:
@@ -83,7 +92,7 @@ def _add_atom(form: Form, token: str) -> int:
     breaks = 0
     if token[0] == '"':
         token = token[1:-1]
-        breaks = token.count("\n")
+        breaks = _line_ends(token)
         if "\\" in token:
             token = _ESCAPE.sub(lambda found: _ESCAPES.get(found[1], found[1]), token)
     if form.head is None and not form.forms:
@@ -113,7 +122,7 @@ def _misplaced(file: str, text: str, match: re.Match[str], stack: list[Form], ke
     elif len(stack) >= MAX_DEPTH:
         problem, expected = "brackets nested too deeply", f"at most {MAX_DEPTH} levels"
     elif kept > MAX_KEPT:
-        problem, expected = "too many brackets inside one component", f"at most {MAX_KEPT}"
+        problem, expected = "too much inside one component, or outside of any", f"at most {MAX_KEPT} brackets and texts"
     else:
         problem, expected = "text after the end of the netlist", "the end of the file: the first bracket is closed"
     lines = Lines(text)

@@ -2,10 +2,13 @@
 
 import re
 from collections import Counter
-from collections.abc import Callable, Sequence
+from collections.abc import Callable, Iterator, Sequence
+from contextlib import suppress
 from dataclasses import dataclass
+from itertools import accumulate, islice
 from typing import Final
 
+from rcrules.errors import UserMistake
 from rcrules.readers._export import Source
 from rcrules.readers._mistakes import refusal, shorten
 
@@ -13,6 +16,8 @@ DELIMITERS: Final = (",", ";", "\t", "|")
 MAX_COLUMNS: Final = 1024
 MAX_CELL: Final = 131_072
 """Characters of the longest cell."""
+MAX_CELLS: Final = 1_000_000
+_LINE: Final = re.compile(r"([^\r\n]*+)(?:\r\n|\n|\r|\Z)")
 _WHOLE: Final = re.compile(r"(?<![\w.,])\d{1,3}$")
 _FRACTION: Final = re.compile(r"\d+ ?[^\W\d_]")
 _SAMPLE: Final = 400
@@ -76,36 +81,61 @@ def _score(sample: Sequence[Row], is_header: Callable[[Sequence[str]], bool]) ->
 
 def _split(source: Source, text: str, delimiter: str, limit: int | None) -> tuple[Row, ...]:
     """Rows of text cut at the delimiter outside quotes; blank rows are left out; with a limit, nothing is refused."""
-    cell = _cell_pattern(delimiter)
+    rows = (row for row in _cut(source, text, delimiter) if not row.blank())
+    if limit is None:
+        return tuple(rows)
     found: list[Row] = []
-    at, line, start = 0, 1, 0
+    with suppress(UserMistake):  # at the wrong delimiter, perhaps; at the right one it is raised when all is read
+        found.extend(islice(rows, limit))
+    return tuple(found)
+
+
+def _cut(source: Source, text: str, delimiter: str) -> Iterator[Row]:
+    """Every row, also the blank ones. Raises UserMistake."""
+    cell = _cell_pattern(delimiter)
+    at, line, count = 0, 1, 0
+    while at < len(text):
+        plain = _LINE.match(text, at)
+        assert plain is not None  # it also takes an empty line
+        if '"' in plain[1] or len(plain[1]) > MAX_CELL:
+            row, at, next_line = _quoted_row(source, text, at, line, delimiter, cell)
+        else:
+            row, at, next_line = _plain_row(plain[1], line, delimiter), plain.end(), line + 1
+        count += len(row.cells)
+        if len(row.cells) > MAX_COLUMNS or count > MAX_CELLS:
+            raise _too_many(source, line, len(row.cells))
+        yield row
+        line = next_line
+
+
+def _plain_row(text: str, line: int, delimiter: str) -> Row:
+    """A row without quotes."""
+    pieces = text.split(delimiter)
+    starts = accumulate(map(len, pieces[:-1]), lambda start, length: start + length + 1, initial=1)
+    return Row(line=line, cells=tuple(map(str.strip, pieces)), columns=tuple(starts), delimiter=delimiter)
+
+
+def _quoted_row(
+    source: Source, text: str, start: int, line: int, delimiter: str, cell: re.Pattern[str]
+) -> tuple[Row, int, int]:
+    """A row in which cells may be quoted, the offset behind it, and the line there."""
     cells: list[str] = []
     columns: list[int] = []
-    first_line = line
-    while at <= len(text) and (limit is None or len(found) < limit):
+    at, last = start, line
+    while True:
         match = cell.match(text, at)
         assert match is not None  # the pattern also takes an empty cell
-        quoted, rest, end = match.group(1), match.group(2), match.group(3)
-        if limit is None and quoted is None and rest.lstrip(" ").startswith('"'):
-            raise _not_closed(source, line, at - start + 1, rest)
+        quoted, rest, end = match.groups()
         columns.append(at - start + 1)
+        if quoted is None and rest.lstrip(" ").startswith('"'):
+            raise _not_closed(source, last, columns[-1], rest)
+        if match.end() - at > MAX_CELL:
+            raise _too_long(source, last, columns[-1])
         cells.append(_cell_text(quoted, rest))
-        if len(cells) > MAX_COLUMNS or match.end() - at > MAX_CELL:
-            if limit is not None:
-                return tuple(found)
-            raise _too_long(source, line, columns[-1])
-        line += _line_ends(quoted) if quoted else 0
+        last += _line_ends(quoted) if quoted else 0
         at = match.end()
-        if end == delimiter:
-            continue
-        if any(cells):
-            found.append(Row(line=first_line, cells=tuple(cells), columns=tuple(columns), delimiter=delimiter))
-        cells, columns = [], []
-        line += 1
-        first_line, start = line, at
-        if not end:
-            break
-    return tuple(found)
+        if end != delimiter or len(cells) > MAX_COLUMNS:
+            return Row(line=line, cells=tuple(cells), columns=tuple(columns), delimiter=delimiter), at, last + 1
 
 
 def _cell_pattern(delimiter: str) -> re.Pattern[str]:
@@ -124,18 +154,28 @@ def _line_ends(text: str) -> int:
     return len(re.findall(r"\r\n|\n|\r", text))
 
 
-def _too_long(source: Source, line: int, column: int) -> Exception:
+def _too_long(source: Source, line: int, column: int) -> UserMistake:
     return refusal(
         source.name,
-        "a row is too long",
+        "a cell is too long",
         line=line,
         column=column,
-        expected=f"at most {MAX_COLUMNS} cells of {MAX_CELL} characters",
+        expected=f"at most {MAX_CELL} characters",
         do="check that the file is a table and was not damaged",
     )
 
 
-def _not_closed(source: Source, line: int, column: int, rest: str) -> Exception:
+def _too_many(source: Source, line: int, width: int) -> UserMistake:
+    return refusal(
+        source.name,
+        "a row has too many cells" if width > MAX_COLUMNS else "the table is too large",
+        line=line,
+        expected=f"at most {MAX_COLUMNS} cells in a row and {MAX_CELLS} in all",
+        do="check that the file is the table of one board and was not damaged",
+    )
+
+
+def _not_closed(source: Source, line: int, column: int, rest: str) -> UserMistake:
     return refusal(
         source.name,
         "a quoted cell is not closed",

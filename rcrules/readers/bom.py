@@ -13,13 +13,15 @@ from rcrules.readers._table import DELIMITERS, Row, rows
 from rcrules.readers._text import decode, head
 
 NAME: Final = "bom"
+_HEAD: Final = 65_536
+"""Bytes of a file in which two rows must start; one description may be longer than most heads."""
 _STRAY: Final = 3
 """Control characters in the head of a file from which on it is no text."""
 
 
 def claims(source: Source) -> bool:
     """True for text of at least two lines with a delimiter in them."""
-    text = head(source)
+    text = head(source, _HEAD)
     if sum(character < " " and character not in "\t\r\n" for character in text) > _STRAY:
         return False
     lines = [line for line in text.splitlines() if line.strip()]

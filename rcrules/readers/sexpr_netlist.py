@@ -4,8 +4,9 @@ import re
 from collections.abc import Mapping
 from typing import Final
 
+from rcrules.readers._component import Component, Entry, LibraryPart
 from rcrules.readers._export import Export, Reader, Source
-from rcrules.readers._netlist import Component, Entry, LibraryPart, Netlist
+from rcrules.readers._netlist import Netlist
 from rcrules.readers._sexpr import Form, parse
 from rcrules.readers._text import decode, head
 
@@ -44,9 +45,9 @@ def read(source: Source, columns: Mapping[str, str]) -> Export:
         taker = _TAKE.get((around or "", form.head or ""))
         if taker is not None:
             taker(netlist, form)
-        return taker is not None or around in _CONTAINERS
+        return taker is not None
 
-    parse(source.name, text, take)
+    parse(source.name, text, take, _CONTAINERS)
     return netlist.export()
 
 

@@ -253,3 +253,9 @@ def test_a_decimal_comma_that_cuts_a_value_in_two_is_put_back_and_said() -> None
         "2 rows hold more cells than the header, for commas in cells that are not quoted; numbers cut in two are put "
         "together again in line 3; cells may stand in the wrong column in line 4"
     )
+
+
+def test_a_first_row_longer_than_most_heads_is_still_a_table() -> None:
+    assert values(read(f"Ref,Value,Note\nR1,10k,{'long ' * 3000}\nR2,1k,\n")) == {"R1": "10k", "R2": "1k"}
+    wide = ",".join(f"extra {number}" for number in range(900))
+    assert values(read(f"Ref,Value,{wide}\nR1,10k\n")) == {"R1": "10k"}

@@ -94,7 +94,10 @@ def test_a_quote_that_is_not_closed_is_pointed_at() -> None:
 
 
 def test_too_many_brackets_in_one_component_are_refused() -> None:
-    assert "too many brackets" in refused("(export (components (comp " + "(a)" * 200_000).problem
+    problem = "too much inside one component, or outside of any"
+    assert refused("(export (components (comp " + "(a)" * 200_000).problem == problem
+    assert refused("(export " + "()" * 2_000_000 + ")").problem == problem
+    assert refused("(export (components (comp (ref " + "a " * 5_000_000 + "))))").problem == problem
 
 
 def test_a_text_without_end_is_refused() -> None:
@@ -147,8 +150,8 @@ def test_text_broken_under_its_own_mark_is_refused() -> None:
 
 
 def test_an_endless_row_or_cell_is_refused() -> None:
-    assert refused("Ref,Value\n" + "R1,10k," * 500_000).problem == "a row is too long"
-    assert refused("Ref,Value\nR1," + "1" * 2_000_000 + "\n").problem == "a row is too long"
+    assert refused("Ref,Value\n" + "R1,10k," * 500_000).problem == "a row has too many cells"
+    assert refused("Ref,Value\nR1," + "1" * 2_000_000 + "\n").problem == "a cell is too long"
 
 
 def test_a_quoted_cell_that_is_not_closed_is_refused_where_it_starts() -> None:
@@ -160,7 +163,7 @@ def test_ranges_that_stand_for_more_parts_than_any_board_has_are_refused() -> No
     one_cell = "Ref;Value\n" + "R1-R999," * 60 + ";1k\n"
     assert refused(one_cell).found == "59940 references in one cell"
     many_rows = "Ref;Value\n" + "".join(f"R{n}000-R{n}999;1k\n" for n in range(1, 500))
-    assert refused(many_rows).found == "more than 250000 references in all"
+    assert refused(many_rows).found == "more than 100000 references in all"
 
 
 def test_remarks_without_end_are_counted() -> None:
