@@ -71,6 +71,7 @@ def demo(chosen: argparse.Namespace) -> int:
 
 def _documents(chosen: argparse.Namespace, *, with_rules: bool) -> "list[Document]":
     """One document per board, in the order given."""
+    from rcrules.cli._progress import progress
     from rcrules.pipeline import Job, run_all
 
     rules = tuple(chosen.rules) if with_rules else ()
@@ -80,7 +81,9 @@ def _documents(chosen: argparse.Namespace, *, with_rules: bool) -> "list[Documen
     jobs = [
         Job(inputs=tuple(chosen.inputs), project=project, rules=rules, with_rules=with_rules) for project in projects
     ]
-    return run_all(jobs, processes=chosen.jobs)
+    boards = "1 board" if len(jobs) == 1 else f"{len(jobs)} boards"
+    with progress(f"working on {boards}", quiet=chosen.quiet):
+        return run_all(jobs, processes=chosen.jobs)
 
 
 def _targets(reports: list[str], *, quiet: bool, boards: int) -> "list[Target]":

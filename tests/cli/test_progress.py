@@ -1,0 +1,55 @@
+"""A sign of life for long work, on terminals only."""
+
+import io
+import sys
+import time
+
+import pytest
+
+from rcrules.cli._progress import progress
+
+
+class Terminal(io.StringIO):
+    def isatty(self) -> bool:
+        return True
+
+
+@pytest.fixture
+def terminal(monkeypatch: pytest.MonkeyPatch) -> Terminal:
+    made = Terminal()
+    monkeypatch.setattr(sys, "stderr", made)
+    monkeypatch.setenv("TERM", "xterm")
+    return made
+
+
+def wait_for(stream: io.StringIO, text: str) -> bool:
+    """Whether the text comes; waits for it, for the clock of a busy machine proves nothing."""
+    deadline = time.monotonic() + 30
+    while text not in stream.getvalue() and time.monotonic() < deadline:
+        time.sleep(0.01)
+    return text in stream.getvalue()
+
+
+def test_long_work_shows_a_sign_of_life(terminal: Terminal) -> None:
+    with progress("working on 1 board", quiet=False, after_s=0.0):
+        assert wait_for(terminal, "working on 1 board")
+
+
+def test_short_work_shows_nothing(terminal: Terminal) -> None:
+    with progress("working on 1 board", quiet=False, after_s=3600.0):
+        pass
+    assert terminal.getvalue() == ""
+
+
+def test_quiet_work_shows_nothing(terminal: Terminal) -> None:
+    with progress("working on 1 board", quiet=True, after_s=0.0):
+        time.sleep(0.05)
+    assert terminal.getvalue() == ""
+
+
+def test_nothing_is_shown_where_nobody_watches(monkeypatch: pytest.MonkeyPatch) -> None:
+    pipe = io.StringIO()
+    monkeypatch.setattr(sys, "stderr", pipe)
+    with progress("working on 1 board", quiet=False, after_s=0.0):
+        time.sleep(0.05)
+    assert pipe.getvalue() == ""
