@@ -14,8 +14,8 @@ class Terminal(io.StringIO):
         return True
 
 
-@pytest.fixture
-def terminal(monkeypatch: pytest.MonkeyPatch) -> Terminal:
+def watched(monkeypatch: pytest.MonkeyPatch) -> Terminal:
+    """A terminal as standard error; made inside the test, for between set-up and test the test runner puts its own."""
     made = Terminal()
     monkeypatch.setattr(sys, "stderr", made)
     monkeypatch.setenv("TERM", "xterm")
@@ -30,18 +30,21 @@ def wait_for(stream: io.StringIO, text: str) -> bool:
     return text in stream.getvalue()
 
 
-def test_long_work_shows_a_sign_of_life(terminal: Terminal) -> None:
+def test_long_work_shows_a_sign_of_life(monkeypatch: pytest.MonkeyPatch) -> None:
+    terminal = watched(monkeypatch)
     with progress("working on 1 board", quiet=False, after_s=0.0):
         assert wait_for(terminal, "working on 1 board")
 
 
-def test_short_work_shows_nothing(terminal: Terminal) -> None:
+def test_short_work_shows_nothing(monkeypatch: pytest.MonkeyPatch) -> None:
+    terminal = watched(monkeypatch)
     with progress("working on 1 board", quiet=False, after_s=3600.0):
         pass
     assert terminal.getvalue() == ""
 
 
-def test_quiet_work_shows_nothing(terminal: Terminal) -> None:
+def test_quiet_work_shows_nothing(monkeypatch: pytest.MonkeyPatch) -> None:
+    terminal = watched(monkeypatch)
     with progress("working on 1 board", quiet=True, after_s=0.0):
         time.sleep(0.05)
     assert terminal.getvalue() == ""
