@@ -73,7 +73,7 @@ class NameHint:
 def hint(net: str) -> NameHint | None:
     """What the name says, None when it says nothing: ``+3,3В`` is a supply of 3.3 V, ``EN_3V3`` is a signal."""
     own = leaf(net)
-    if own is None:
+    if not own:
         return None
     words = set(tokens(own)) | set(re.split(r"[\W_]+", own))
     return _ground(own, words) or _supply(own, words)

@@ -101,5 +101,5 @@ def is_bom_header(cells: Sequence[str], columns: Mapping[str, str]) -> bool:
     wanted = {plain(name) for name in columns.values()}
     names = {plain(cell) for cell in cells if 0 < len(cell) <= _LONGEST}
     known = {name for name in names if name in _BOM_NAMES or name in wanted}
-    reference = plain(columns["reference"]) if "reference" in columns else ""
+    reference = plain(columns["reference"]) if "reference" in columns else None
     return len(known) > 1 and any(name in REFERENCE or name == reference for name in names)

@@ -90,6 +90,7 @@ class Reader:
     """``xml-netlist``, ``sexpr-netlist``, ``pin-list``, ``bom``."""
     order: int
     """Readers are asked in rising order; the first that claims the source reads it."""
-    claims: Callable[[Source], bool]
+    claims: Callable[[Source, Mapping[str, str]], bool]
+    """Whether the content is of this format, given the project's [columns] table."""
     read: Callable[[Source, Mapping[str, str]], Export]
     """Source and the project's [columns] table to an Export. Raises UserMistake."""

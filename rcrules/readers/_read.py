@@ -19,7 +19,7 @@ def read(source: Source, columns: Mapping[str, str] = _NO_COLUMNS) -> Export:
     """
     refuse_foreign(source)
     for reader in readers():
-        if reader.claims(source):
+        if reader.claims(source, columns):
             return reader.read(source, columns)
     raise unknown(source)
 

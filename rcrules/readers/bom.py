@@ -19,7 +19,7 @@ _STRAY: Final = 3
 """Control characters in the head of a file from which on it is no text."""
 
 
-def claims(source: Source) -> bool:
+def claims(source: Source, _: Mapping[str, str]) -> bool:
     """True for text of at least two lines with a delimiter in them."""
     text = head(source, _HEAD)
     if sum(character < " " and character not in "\t\r\n" for character in text) > _STRAY:

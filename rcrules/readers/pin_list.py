@@ -17,6 +17,7 @@ from rcrules.readers._columns import (
     find_named,
 )
 from rcrules.readers._export import Export, Reader, Source
+from rcrules.readers._mistakes import refusal, shorten
 from rcrules.readers._pin_rows import PinColumns, PinRows
 from rcrules.readers._table import DELIMITERS, rows
 from rcrules.readers._text import decode, head
@@ -24,23 +25,31 @@ from rcrules.readers._text import decode, head
 NAME: Final = "pin-list"
 
 
-def claims(source: Source) -> bool:
+def claims(source: Source, columns: Mapping[str, str]) -> bool:
     """True for delimited text with a header row that names nets and pins."""
     lines = head(source).splitlines()[:40]
-    return any(_columns(_cells(line, mark), {}) is not None for line in lines for mark in DELIMITERS if mark in line)
+    split = (_cells(line, mark) for line in lines for mark in DELIMITERS if mark in line)
+    return any(_columns(cells, columns) is not None for cells in split)
 
 
 def read(source: Source, columns: Mapping[str, str]) -> Export:
-    """Read every row below the header. Raises UserMistake where a quoted cell is not closed.
+    """Read every row below the header. Raises UserMistake where the header is hidden or a quoted cell is not closed.
 
     columns: canonical name (``net reference pin value footprint``) to the header that this team uses.
     """
     text, remarks = decode(source)
     found = rows(source, text, lambda cells: _columns(cells, columns) is not None)
-    start = next(index for index, row in enumerate(found) if _columns(row.cells, columns) is not None)
-    header = found[start].cells
-    known = _columns(header, columns)
-    assert known is not None  # the header row was found by it
+    headers = ((index, row.cells, _columns(row.cells, columns)) for index, row in enumerate(found))
+    start, header, known = next((item for item in headers if item[2] is not None), (0, (), None))
+    if known is None:  # letters that are broken, or quotes, hid it from the rows that ``claims`` looks at
+        raise refusal(
+            source.name,
+            "no header row that names nets and pins",
+            line=found[0].line if found else None,
+            found=shorten(" | ".join(found[0].cells)) if found else None,
+            expected="a header such as net, part, pin",
+            do="export the list again, as UTF-8",
+        )
     pins = PinRows(source, known)
     for row in found[start + 1 :]:
         if row.cells != header and not row.cells[0].startswith("#"):

@@ -30,7 +30,7 @@ _CHARACTERS: Final = {
 }
 
 
-def claims(source: Source) -> bool:
+def claims(source: Source, _: Mapping[str, str]) -> bool:
     """True for text that starts with ``(export``."""
     return _START.match(head(source)) is not None
 

@@ -16,7 +16,7 @@ NAME: Final = "bom-workbook"
 _SHOWN: Final = 8
 
 
-def claims(source: Source) -> bool:
+def claims(source: Source, _: Mapping[str, str]) -> bool:
     """True for a ZIP with the catalogue of a workbook."""
     return is_workbook(source.data)
 

@@ -20,7 +20,7 @@ MAX_MARKS: Final = 1_500_000
 _TAGS: Final = ("{*}title_block", "{*}comp", "{*}libpart", "{*}net")
 
 
-def claims(source: Source) -> bool:
+def claims(source: Source, _: Mapping[str, str]) -> bool:
     """True for XML whose root is called ``export``."""
     return root_name(source) == "export"
 

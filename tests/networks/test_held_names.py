@@ -56,3 +56,8 @@ def test_a_signal_about_a_supply_is_no_supply(name: str) -> None:
 @pytest.mark.parametrize("name", ["Net-(U6-VDD)", "#12", "N562363", "Net-(C1-Pad1)", "unconnected-(U1-VCC)"])
 def test_an_automatic_name_says_nothing(name: str) -> None:
     assert hint(name) is None
+
+
+@pytest.mark.parametrize("name", ["", "{", "~", "/", "~{}", " ", "/A/{}"])
+def test_a_name_of_marks_alone_says_nothing(name: str) -> None:
+    assert hint(name) is None

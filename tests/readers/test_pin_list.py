@@ -3,6 +3,7 @@
 import pytest
 
 from rcrules import readers
+from rcrules.errors import UserMistake
 from rcrules.readers import Export, Source
 
 
@@ -84,3 +85,21 @@ def test_title_rows_above_the_header_are_passed_over() -> None:
 def test_the_projects_column_names_come_first() -> None:
     export = read("net,knot,part,pin\nold,GND,R1,2\n", net="knot")
     assert ends(export) == [("GND", "R1", "2")]
+
+
+def test_a_header_hidden_by_broken_letters_is_refused() -> None:
+    data = b"net,part\xf4pin,pin name\nGND,R1,2\n"
+    with pytest.raises(UserMistake, match=r"pins\.csv:1: no header row that names nets and pins"):
+        readers.read(Source(name="pins.csv", data=data))
+
+
+def test_a_row_of_marks_and_known_words_is_no_header_of_a_bom() -> None:
+    with pytest.raises(UserMistake, match="no column of references found"):
+        read("?,pin,type\n!,1,in\n")
+
+
+def test_a_pin_list_is_told_by_the_headers_that_the_project_names() -> None:
+    text = "Knoten;Bauteil;Anschluss\nGND;R1;2\nNRST;R1;1\n"
+    export = read(text, net="Knoten", reference="Bauteil", pin="Anschluss")
+    assert export.reader == "pin-list"
+    assert ends(export) == [("GND", "R1", "2"), ("NRST", "R1", "1")]
