@@ -34,16 +34,24 @@ class Job:
 def run_all(jobs: Sequence[Job], processes: int = 1) -> "list[Document]":
     """The documents of several boards, in order; mistakes of all of them at once."""
     if processes == 1 or len(jobs) == 1:
-        problems, documents = Problems(), []
-        for job in jobs:
-            with problems.collecting():
-                documents.append(run(job))
-        problems.stop_if_any()
-        return documents
-    from concurrent.futures import ProcessPoolExecutor
+        outcomes = [_attempt(job) for job in jobs]
+    else:
+        from concurrent.futures import ProcessPoolExecutor
 
-    with ProcessPoolExecutor(processes) as pool:
-        return list(pool.map(run, jobs))
+        with ProcessPoolExecutor(processes) as pool:
+            outcomes = list(pool.map(_attempt, jobs))
+    mistakes = [mistake for _, wrong in outcomes for mistake in wrong]
+    if mistakes:
+        raise UserMistake(*mistakes)
+    return [document for document, _ in outcomes if document is not None]
+
+
+def _attempt(job: Job) -> "tuple[Document | None, Sequence[Mistake]]":
+    """The document of one board, or what is wrong with its inputs."""
+    try:
+        return run(job), ()
+    except UserMistake as error:
+        return None, error.mistakes
 
 
 def run(job: Job) -> "Document":
@@ -66,14 +74,14 @@ def _read(job: Job) -> "tuple[Project, list[Export], list[Rule]]":
     """Project, exports and rules; what is wrong with any of them is told at once."""
     from rcrules.project import Project, read
 
-    path = _project_path(job)
-    project = read(path, str(path)) if path else Project()
-    problems = Problems()
+    path, problems = _project_path(job), Problems()
+    project = read(path, str(path), problems) if path else Project()
     exports: list[Export] = []
     rules: list[Rule] = []
-    for name in job.inputs or _listed(project):
+    for name in job.inputs or _listed(project, problems):
         with problems.collecting():
             exports.append(_export(name, project))
+    problems.mistakes += _twice(exports)
     if job.with_rules:
         with problems.collecting():
             rules = _rules(job, project)
@@ -94,14 +102,31 @@ def _project_path(job: Job) -> Path | None:
     return found.relative_to(Path.cwd()) if found.is_relative_to(Path.cwd()) else found
 
 
-def _listed(project: "Project") -> tuple[str, ...]:
-    """The inputs of the project file. Raises UserMistake where there are none."""
+def _listed(project: "Project", problems: Problems) -> tuple[str, ...]:
+    """The inputs of the project file. Raises UserMistake where there are none, with what else is wrong in it."""
     if project.netlists or project.boms:
         return tuple(str(_folder(project) / name) for name in (*project.netlists, *project.boms))
+    problems.stop_if_any()
     place = Place(file=project.file or "command line")
     expected = "[board] netlist or bom" if project.file else None
     do = "name a netlist or BOM: rcrules check board.xml bom.csv"
     raise UserMistake(Mistake(place=place, problem="no inputs", expected=expected, do=do))
+
+
+def _twice(exports: "Sequence[Export]") -> list[Mistake]:
+    """Inputs with the same content as an earlier one: a slip, and each would agree with itself."""
+    first: dict[str, str] = {}
+    found = []
+    for export in exports:
+        other = first.get(export.sha256)
+        if other is not None:
+            found.append(
+                Mistake(
+                    place=Place(file=export.source), problem="the same content twice", found=other, do="name it once"
+                )
+            )
+        first.setdefault(export.sha256, export.source)
+    return found
 
 
 def _folder(project: "Project") -> Path:

@@ -78,6 +78,8 @@ def _documents(chosen: argparse.Namespace, *, with_rules: bool) -> "list[Documen
     projects = chosen.project or [None]
     if len(projects) > 1 and chosen.inputs:
         raise _usage("inputs and several --project", do="give each board its inputs in its project file")
+    if chosen.inputs.count("-") > 1:
+        raise _usage("standard input is named twice", do="name - once; give the other inputs as files")
     jobs = [
         Job(inputs=tuple(chosen.inputs), project=project, rules=rules, with_rules=with_rules) for project in projects
     ]

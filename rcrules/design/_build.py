@@ -3,7 +3,7 @@
 from collections import defaultdict
 from collections.abc import Iterable, Mapping, Sequence
 
-from rcrules.design._disagree import disagreements
+from rcrules.design._disagree import disagreements, refuse_other_board
 from rcrules.design._merge import Said, merge, word
 from rcrules.design._model import Design, Net, Part, Pin
 from rcrules.design._order import natural
@@ -46,12 +46,14 @@ def _said(exports: Sequence[Export], pins: Mapping[str, Sequence[Pin]]) -> dict[
 def _pins(exports: Sequence[Export]) -> tuple[dict[str, list[Pin]], list[Remark]]:
     """Pins by reference in natural order; of two netlists the first one to connect a pin decides.
 
-    Two pads of one number, listed twice in a netlist, are two connections.
+    Two pads of one number, listed twice in a netlist, are two connections. Raises UserMistake where two netlists agree
+    on hardly any pin.
     """
     found: dict[str, list[Pin]] = defaultdict(list)
     remarks: list[Remark] = []
     for export in exports:
         known = {(pin.ref, pin.number): pin for own in found.values() for pin in own}
+        refuse_other_board(export, known)
         for pin in export.pins:
             elsewhere = known.get((pin.ref, pin.number))
             if elsewhere is None:

@@ -32,10 +32,19 @@ def find(start_folder: Path) -> Path | None:
     return next((folder / FILE_NAME for folder in (start, *start.parents) if (folder / FILE_NAME).is_file()), None)
 
 
-def read(path: Path, name: str | None = None) -> Project:
-    """The project file at a path; ``name`` is the path as messages show it. Raises UserMistake."""
-    file = read_toml(path, name or str(path))
-    return _load(root(file, Problems()))
+def read(path: Path, name: str | None = None, problems: Problems | None = None) -> Project:
+    """The project file at a path; ``name`` is the path as messages show it. Raises UserMistake.
+
+    With ``problems`` the mistakes are kept there, and what is right is read all the same, so that the run can go on to
+    what else is wrong; only a file that is no TOML raises.
+    """
+    top = root(read_toml(path, name or str(path)), Problems())
+    if problems is None:
+        return _load(top)
+    project = _project(top)
+    with problems.collecting():
+        top.stop_if_wrong()
+    return project
 
 
 def load(file: str, text: str | None = None) -> Project:
@@ -44,6 +53,13 @@ def load(file: str, text: str | None = None) -> Project:
 
 
 def _load(top: Table) -> Project:
+    project = _project(top)
+    top.stop_if_wrong()
+    return project
+
+
+def _project(top: Table) -> Project:
+    """What is right in the file; the mistakes are noted."""
     top.only(_TABLES)
     board, conditions = top.table("board"), top.table("conditions")
     project = Project(
@@ -61,7 +77,6 @@ def _load(top: Table) -> Project:
         **_settings(top),
     )
     _check_order(top, project.supplies)
-    top.stop_if_wrong()
     return replace(project, notices=_outside(board) if board else ())
 
 

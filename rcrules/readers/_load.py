@@ -15,6 +15,8 @@ def load(path: str, size_limit: int = SIZE_LIMIT) -> Source:
     """The bytes of a file, or of standard input for ``-``. Raises UserMistake."""
     if path == "-":
         return _whole("<stdin>", sys.stdin.buffer.read(size_limit + 1), size_limit)
+    if not path:
+        raise refusal("command line", "an input without a name", expected="a file, or -", do="check the quotes")
     try:
         with Path(path).open("rb") as file:
             return _whole(path, file.read(size_limit + 1), size_limit)

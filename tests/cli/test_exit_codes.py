@@ -115,3 +115,46 @@ def test_an_interrupt_exits_130(monkeypatch: pytest.MonkeyPatch) -> None:
 def test_mistakes_cannot_steer_the_terminal(capsys: pytest.CaptureFixture[str]) -> None:
     assert main(["check", "evil\x1b[2J.xml"]) == 2
     assert "\x1b" not in capsys.readouterr().err
+
+
+def test_mistakes_of_project_inputs_and_rules_are_told_in_one_run(
+    board: Path, capsys: pytest.CaptureFixture[str]
+) -> None:
+    project = board / "rcrules.toml"
+    project.write_text(project.read_text().replace("voltage =", "volts ="))
+    (board / "board.xml").write_text("hello")
+    (board / "our-rules.toml").write_text('[[rule]]\nid = "x"\n')
+    assert main(["check"]) == 2
+    err = capsys.readouterr().err
+    assert err.index("rcrules.toml:10:1: unknown key 'volts'") < err.index("board.xml:1") < err.index("our-rules.toml")
+
+
+def test_a_mistyped_list_of_inputs_is_told_once(board: Path, capsys: pytest.CaptureFixture[str]) -> None:
+    project = board / "rcrules.toml"
+    project.write_text(project.read_text().replace("netlist =", "netlst ="))
+    assert main(["check"]) == 2
+    err = capsys.readouterr().err
+    assert "did you mean 'netlist'?" in err
+    assert "no inputs" not in err
+
+
+def test_mistakes_of_several_boards_are_told_whatever_the_jobs(board: Path, capsys: pytest.CaptureFixture[str]) -> None:
+    for name in ("one", "two"):
+        (board / name).mkdir()
+        write_board(board / name).write_text("[bord]\n")
+    arguments = ["check", "--project", "one/rcrules.toml", "--project", "two/rcrules.toml"]
+    assert main(arguments) == 2
+    err = capsys.readouterr().err
+    assert err.count("did you mean 'board'?") == 2
+    assert main([*arguments, "--jobs", "2"]) == 2
+    assert capsys.readouterr().err == err
+
+
+def test_one_input_twice_is_a_slip(board: Path, capsys: pytest.CaptureFixture[str]) -> None:
+    (board / "copy.xml").write_text(NETLIST)
+    assert main(["check", "board.xml", "copy.xml"]) == 2
+    assert "copy.xml: the same content twice" in capsys.readouterr().err
+    assert main(["check", "-", "-"]) == 2
+    assert "standard input is named twice" in capsys.readouterr().err
+    assert main(["check", ""]) == 2
+    assert "an input without a name" in capsys.readouterr().err

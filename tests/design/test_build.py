@@ -1,7 +1,10 @@
 """Merging the exports of one board."""
 
+import pytest
+
 from rcrules import design, readers
 from rcrules.design import Design
+from rcrules.errors import UserMistake
 from rcrules.readers import Export, Source
 
 NETLIST = """<export version="E"><components>
@@ -145,3 +148,14 @@ def test_two_pads_of_one_number_are_two_connections():
     nets = '<net code="1" name="GND"><node ref="U1" pin="2"/><node ref="U1" pin="2"/></net>'
     made = built(None, f'<export version="E"><components><comp ref="U1"/></components><nets>{nets}</nets></export>')
     assert [pin.number for pin in made.nets["GND"].pins] == ["2", "2"]
+
+
+def test_netlists_of_two_boards_are_refused() -> None:
+    rows = [f"R{number},1" for number in range(1, 7)]
+    first = readers.read(Source(name="a.csv", data="\n".join(["net,part,pin", *(f"A,{row}" for row in rows)]).encode()))
+    second = readers.read(
+        Source(name="b.csv", data="\n".join(["net,part,pin", *(f"B,{row}" for row in rows)]).encode())
+    )
+    with pytest.raises(UserMistake, match=r"this netlist and a\.csv are not of one board") as caught:
+        design.build([first, second])
+    assert caught.value.mistakes[0].found == "6 of 6 common pins on other nets: R1.1 on 'B' and on 'A'"
