@@ -18,13 +18,14 @@ Contract (arrays are float64, first axis = case):
         a touch of 0 at t = 0 with the slope away does not count; inf = never;
     .last_exit(low, high) last time outside [low, high], 0 if never outside, inf if it ends outside;
     .extremes() -> (lowest, highest) over t >= 0, the supremum included; .width() total time f >= 0;
-    .slope_initial(); .energy() integral of f² over t >= 0.
+    .slope_initial(); .energy() integral of f² over t >= 0; made of one ``ExponentialSum`` for each piece.
 ``transfer(shape, ohms, farads, source, omega) -> complex (case, free)``, ``source`` the number of a held terminal.
 ``corner(shape, ohms, farads, source, at, passes) -> (case,)``  angular frequency [rad/s] 3 dB below the pass band.
 ``bounds(evaluate, low, nominal, high, signs, vertices_prove) -> Bounds`` and the coroutine form ``search(...)``.
 """
 
 from rcrules.engine._bounds import Bounds, bounds, search
+from rcrules.engine._exponential import ExponentialSum
 from rcrules.engine._frequency import corner, transfer
 from rcrules.engine._modes import Modes, solve
 from rcrules.engine._response import Drive, Response
@@ -35,6 +36,7 @@ __all__ = [
     "Array",
     "Bounds",
     "Drive",
+    "ExponentialSum",
     "FloatingNode",
     "Modes",
     "Response",

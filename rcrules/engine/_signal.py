@@ -161,6 +161,7 @@ def _above(found: ExponentialSum, marks: Array) -> Array:
     for left, right in pairwise(marks):
         there = right > left
         middle = np.where(np.isfinite(right), 0.5 * (left + np.where(np.isfinite(right), right, 0.0)), left + tail)
+        middle = np.where(there, middle, 0.0)
         positive = there & (found.at(middle) >= 0.0)
         total = total + np.where(positive, np.where(there, right, 0.0) - left, 0.0)
     return total

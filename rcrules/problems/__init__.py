@@ -2,11 +2,13 @@
 
 from rcrules.engine import Bounds
 from rcrules.problems._bounds import Failure, Quantity, Request, solve_bounds
+from rcrules.problems._junctions import Unsettled
 from rcrules.problems._rest import elastance, gain_at
 from rcrules.problems._solved import Solved, corner_omega, solved, steady_states
 from rcrules.problems._structure import (
     Array,
     Form,
+    Junction,
     LevelForm,
     Names,
     Parameter,
@@ -23,6 +25,7 @@ __all__ = [
     "Bounds",
     "Failure",
     "Form",
+    "Junction",
     "LevelForm",
     "Names",
     "Parameter",
@@ -31,6 +34,7 @@ __all__ = [
     "Request",
     "Solved",
     "Structure",
+    "Unsettled",
     "Waveform",
     "column",
     "constant",

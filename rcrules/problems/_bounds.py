@@ -8,6 +8,7 @@ from typing import NamedTuple, Protocol
 import numpy as np
 
 from rcrules.engine import Bounds, FloatingNode, search
+from rcrules.problems._junctions import Unsettled
 from rcrules.problems._structure import Array, Problem, Structure
 
 Compute = Callable[[Structure, Array], Array]
@@ -101,10 +102,21 @@ def _ask(request: Request, numbers: dict[Structure, int], started: dict[tuple[ob
     number = numbers.setdefault(problem.structure, len(numbers))
     key = (number, quantity.compute, low.tobytes(), nominal.tobytes(), high.tobytes())
     if key not in started:
-        theory = quantity.theory(problem.structure, low, high)
-        started[key] = _Running(number, quantity.compute, search(low, nominal, high, theory.signs, theory.vertices))
+        signs, vertices = _proved(problem.structure, quantity, low, high)
+        started[key] = _Running(number, quantity.compute, search(low, nominal, high, signs, vertices))
         started[key].advance(None)
     return started[key]
+
+
+def _proved(structure: Structure, quantity: Quantity, low: Array, high: Array) -> tuple[tuple[int | None, ...], bool]:
+    """What is known of the slopes; with diodes nothing is.
+
+    A diode keeps the system cooperative, so that the signs of T3 should survive, but that is argued, not proved.
+    """
+    if structure.diodes:
+        return (None,) * len(low), False
+    theory = quantity.theory(structure, low, high)
+    return theory.signs, theory.vertices
 
 
 def _advance(structure: Structure, compute: Compute, members: list[_Running]) -> None:
@@ -112,7 +124,7 @@ def _advance(structure: Structure, compute: Compute, members: list[_Running]) ->
     tables = [item.cases for item in members if item.cases is not None]
     try:
         values = compute(structure, np.concatenate(tables) if len(tables) > 1 else tables[0])
-    except FloatingNode as error:
+    except (FloatingNode, Unsettled) as error:
         if len(members) == 1:
             members[0].fail(str(error) or "a node has no resistive path to a source")
             return

@@ -1,14 +1,17 @@
 """Cases of a structure, solved: what measures read their quantities from."""
 
-from dataclasses import dataclass
+from collections.abc import Sequence
+from dataclasses import dataclass, replace
 from functools import cached_property
 from typing import Literal
 
 import numpy as np
 
 from rcrules.engine import Modes, Response, Signal, corner, solve
+from rcrules.problems._junctions import Flags, Passive, at_rest, junctions
 from rcrules.problems._pinned import pinned_state
 from rcrules.problems._structure import Array, Form, LevelForm, Structure, evaluate
+from rcrules.problems._switching import Switching, follow
 from rcrules.problems._waves import before, currents, drive, reached, stack
 
 
@@ -53,26 +56,54 @@ class Solved:
 
     @cached_property
     def volts_before(self) -> Array:
-        """All terminals just before the event [V] (case, terminal)."""
-        held = before(self.structure, self.cases)
-        if self.structure.empty or not self.structure.shape.free:
-            free = np.zeros((len(self.cases), self.structure.shape.free))
-        elif self.structure.pinned:
-            return pinned_state(self.structure, self.cases, held, self.ohms, self.amps)
-        else:
-            free = self.earlier.steady(held, self.amps)
-        return np.concatenate([free, held], axis=1)
+        """All terminals just before the event [V] (case, terminal). Raises FloatingNode, Unsettled."""
+        return self._before[0]
 
     @cached_property
-    def response(self) -> Response:
-        """The response to the event. Raises FloatingNode."""
+    def _before(self) -> tuple[Array, Flags]:
+        """All terminals just before the event [V] (case, terminal), and which diodes conduct (case, diode)."""
+        structure, held = self.structure, before(self.structure, self.cases)
+        none = np.zeros((len(self.cases), len(structure.diodes)), dtype=bool)
+        if structure.empty or not structure.shape.free:
+            return np.concatenate([np.zeros((len(self.cases), structure.shape.free)), held], axis=1), none
+        if structure.pinned:
+            return pinned_state(structure, self.cases, held, self.ohms, self.amps), none
+        if structure.diodes:
+            return self.rest(held, earlier=True)
+        return np.concatenate([self.earlier.steady(held, self.amps), held], axis=1), none
+
+    def rest(self, held: Array, *, earlier: bool = False) -> tuple[Array, Flags]:
+        """DC voltages of all terminals [V] (case, terminal), and which diodes conduct (case, diode).
+
+        held: voltages of the held terminals [V] (case, held). earlier: with contacts as before the event. Raises
+        FloatingNode, Unsettled.
+        """
+        passive = self.passive
+        if earlier and self.structure.earlier is not None:
+            shape, forms = self.structure.earlier
+            ohms = stack([evaluate(form, self.cases) for form in forms], self.cases)
+            passive = replace(passive, shape=shape, ohms=ohms)
+        return at_rest(passive, junctions(self.structure, self.cases, held), held)
+
+    @cached_property
+    def passive(self) -> Passive:
+        """The network after the event without its diodes."""
+        return Passive(shape=self.structure.shape, ohms=self.ohms, farads=self.farads, amps=self.amps)
+
+    @cached_property
+    def response(self) -> Response | Switching:
+        """The response to the event. Raises FloatingNode, Unsettled."""
         ends = np.array(self.structure.shape.capacitors, dtype=int).reshape(-1, 2)
         charged = self.volts_before[:, ends[:, 0]] - self.volts_before[:, ends[:, 1]]
         if self.structure.empty:
             charged = np.zeros_like(charged)
         for index, form in self.structure.charged:
             charged[:, index] = evaluate(form, self.cases)
-        return self.modes.respond(drive(self.structure, self.cases), charged)
+        sources = drive(self.structure, self.cases)
+        if not self.structure.diodes:
+            return self.modes.respond(sources, charged)
+        found = junctions(self.structure, self.cases, self.volts_before, sources.levels)
+        return follow(self.passive, found, sources, charged, self._before[1])
 
     @cached_property
     def sources(self) -> tuple[Array, Array, Array]:
@@ -118,8 +149,10 @@ class Solved:
             weights[:, self.structure.against] -= 1.0
         return weights
 
-    def watch(self, weights: Array, offset: Array) -> Signal:
-        """weights . v - offset over time."""
+    def watch(self, weights: Array, offset: Array, through: Sequence[float] = ()) -> Signal:
+        """weights . v - offset + through . i over time, i the currents of the diodes."""
+        if isinstance(self.response, Switching):
+            return self.response.observe(weights, offset, through)
         return self.response.observe(weights, offset)
 
     def above(self, level: LevelForm, *, turned: bool = False) -> tuple[Signal, Array]:
@@ -150,13 +183,16 @@ def steady_states(structure: Structure, cases: Array) -> Array:
     """DC voltages of all terminals in each of the structure's states [V] (case, state, terminal).
 
     States are those of ``structure.states``; where there is an ``earlier`` shape (another position of a contact), those
-    of that shape follow. Raises FloatingNode.
+    of that shape follow. Raises FloatingNode, Unsettled.
     """
     case = Solved(structure=structure, cases=cases)
     found = []
     for earlier in (False, True) if structure.earlier is not None else (False,):
         for sources in structure.states:
             held = stack([evaluate(form, cases) for form in sources], cases)
+            if structure.diodes:
+                found.append(case.rest(held, earlier=earlier)[0])
+                continue
             free = np.zeros((len(cases), 0))
             if structure.shape.free:
                 free = (case.earlier if earlier else case.modes).steady(held, case.amps)

@@ -85,6 +85,22 @@ class LevelForm:
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
+class Junction:
+    """A diode: open while its forward voltage is below its drop, the drop in series with a resistance above."""
+
+    anode: int
+    cathode: int
+    drop: Form
+    """[V]"""
+    ohms: Form
+    """[Ω], > 0"""
+    breakdown: float | None = None
+    """Reverse voltage [V] beyond which nothing can be said; None = it never gets there."""
+    name: str = ""
+    """For people, where there is a breakdown."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
 class Structure:
     """Everything about a problem but the numbers in its columns."""
 
@@ -98,6 +114,8 @@ class Structure:
     """One per held terminal, in terminal order."""
     amps: tuple[tuple[int, Form], ...] = ()
     """(free terminal, current drawn out of it [A])."""
+    diodes: tuple[Junction, ...] = ()
+    """Diodes that may conduct, each between a free terminal and any other."""
     earlier: tuple[Shape, tuple[Form, ...]] | None = None
     """Shape and ohms in the steady state before the event, where a contact changes it; None = the same."""
     pinned: tuple[tuple[int, Form], ...] = ()

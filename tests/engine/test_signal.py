@@ -264,3 +264,16 @@ def test_a_voltage_that_equals_the_level_but_for_rounding_is_at_the_level():
     assert list(found.initial()) == [0.0]
     assert list(found.first_crossing(1.0)) == [0.0]
     assert list(found.first_crossing(-1.0)) == [0.0]
+
+
+def test_widths_of_cases_with_different_numbers_of_crossings():
+    """0.8 from 1 to 0.5 crosses once, 0.8 from 1 to 0.9 never; both without a warning."""
+    found = ExponentialSum(
+        start=np.array([0.2, 0.2]),
+        slope=np.zeros(2),
+        amps=np.array([[0.5, 0.1]]),
+        rates=np.ones((1, 2)),
+        ramps=None,
+    )
+    both = Signal(starts=np.zeros((1, 2)), sums=(found,), lengths=(np.full(2, np.inf),))
+    assert both.width() == approx([np.log(0.5 / 0.3), np.inf])
