@@ -80,7 +80,7 @@ def _read(job: Job) -> "tuple[Project, list[Export], list[Rule]]":
     rules: list[Rule] = []
     for name in job.inputs or _listed(project, problems):
         with problems.collecting():
-            exports.append(_export(name, project))
+            exports.append(_export(name, project, listed=not job.inputs))
     problems.mistakes += _twice(exports)
     if job.with_rules:
         with problems.collecting():
@@ -134,11 +134,12 @@ def _folder(project: "Project") -> Path:
     return Path(project.file).parent if project.file else Path()
 
 
-def _export(path: str, project: "Project") -> "Export":
+def _export(path: str, project: "Project", *, listed: bool) -> "Export":
+    """One input, of the command line or as the project file lists it."""
     from rcrules.inventory import shown
     from rcrules.readers import load, read
 
-    source = load(path)
+    source = load(path, named_in=f"[board] of {project.file}" if listed else None)
     return read(replace(source, name=shown(source.name)), project.columns)
 
 
@@ -147,7 +148,8 @@ def _rules(job: Job, project: "Project") -> "list[Rule]":
     from rcrules.rulebook import load, packs
 
     if job.rules or project.rules:
-        return load(job.rules or project.rules, Path() if job.rules else _folder(project), project)
+        folder, asked_by = (Path(), "--rules") if job.rules else (_folder(project), f"{project.file}")
+        return load(job.rules or project.rules, folder, project, asked_by=asked_by)
     ready = load([pack.name for pack in packs() if not pack.needs_facts], project=project)
     return [replace(rule, level="warning") if rule.level == "error" else rule for rule in ready]
 
@@ -183,7 +185,7 @@ def _judged(
     job: Job, found: "Document", project: "Project", board: "Board", rules: "list[Rule]", also: "list[Parameter]"
 ) -> "Document":
     """The document with what the rules find."""
-    from rcrules.checks import check, packs, unclear, unmet
+    from rcrules.checks import astray, check, packs, unclear, unmet
 
     asked = job.rules or project.rules
     checked = check(board, project, rules, also=also, sure_only=not asked)
@@ -192,5 +194,10 @@ def _judged(
         packs=packs(rules, checked.met),
         findings=checked.findings,
         assumptions=checked.assumptions,
-        problems=[*found.problems, *unclear(rules, checked.unclear), *unmet(rules, checked.met, own=asked)],
+        problems=[
+            *found.problems,
+            *(() if job.rules else astray(project, rules)),
+            *unclear(rules, checked.unclear),
+            *unmet(rules, checked.met, own=asked),
+        ],
     )

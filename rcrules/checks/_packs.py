@@ -7,7 +7,8 @@ from typing import Final
 from rcrules.checks._conditions import FACT_WORDS, compared
 from rcrules.findings import Json
 from rcrules.inventory import place_json
-from rcrules.rulebook import Pack, Rule, sentence
+from rcrules.project import Project
+from rcrules.rulebook import Pack, Rule, sentence, strange_settings
 
 _FILE_SUFFIX: Final = ".toml"
 
@@ -75,6 +76,11 @@ def unmet(rules: Sequence[Rule], met: Mapping[str, int], own: Collection[str]) -
         if met.get(rule.id, 0) < least:
             problems.append({"place": place_json(rule.place), "text": _text(rule, met.get(rule.id, 0))})
     return problems
+
+
+def astray(project: Project, rules: Sequence[Rule]) -> list[Json]:
+    """Settings of the project file for rules that are not applied."""
+    return [{"place": place_json(item.place), "text": item.text} for item in strange_settings(project, rules)]
 
 
 def _text(rule: Rule, met: int) -> str:

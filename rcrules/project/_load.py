@@ -7,6 +7,7 @@ from pathlib import Path
 from typing import Any, Final, TypeVar
 
 from rcrules.errors import Mistake, Place, Problems
+from rcrules.project._contradictions import check_pin, check_supply
 from rcrules.project._facts import DEFAULTS, free_words, net_facts, part_facts, pin_facts, supply_facts
 from rcrules.project._model import Notice, Project, SupplyFacts
 from rcrules.quantities import Spread
@@ -66,10 +67,10 @@ def _project(top: Table) -> Project:
         file=top.file.name,
         **(_board(board) if board else {}),
         **(_conditions(conditions) if conditions else {}),
-        supplies=_facts(top, "supply", supply_facts),
+        supplies=_facts(top, "supply", supply_facts, check_supply),
         grounds=_grounds(top),
         nets=_facts(top, "net", net_facts),
-        pins=_facts(top, "pin", pin_facts),
+        pins=_facts(top, "pin", pin_facts, check_pin),
         parts=_facts(top, "part", part_facts),
         defaults=_defaults(top),
         columns=_columns(top),
@@ -124,11 +125,17 @@ def _conditions(conditions: Table) -> dict[str, Any]:
     return {"temperature": temperature, "life": conditions.quantity("life", "s", least=0)}
 
 
-def _facts(top: Table, key: str, read_facts: Callable[[Table], Facts]) -> dict[str, Facts]:
+def _facts(
+    top: Table,
+    key: str,
+    read_facts: Callable[[Table], Facts],
+    check: Callable[[Table, Facts], None] = lambda table, facts: None,
+) -> dict[str, Facts]:
     found = {}
     for name, table in top.named(key).items():
         if _is_name(top, (key, name), name):
             found[name] = read_facts(table)
+            check(table, found[name])
     return found
 
 

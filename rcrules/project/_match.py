@@ -7,7 +7,7 @@ of its own before one with fewer, the later of two equals. So ``[net."AIN*"]`` m
 """
 
 import re
-from collections.abc import Collection, Iterable, Mapping
+from collections.abc import Collection, Iterable, Iterator, Mapping
 from dataclasses import fields, replace
 from difflib import get_close_matches
 from fnmatch import fnmatchcase
@@ -102,7 +102,22 @@ def unmatched(project: Project, nets: Collection[str], pins: Collection[str], pa
         for name, facts in project.supplies.items()
         if facts.after is not None and facts.after not in nets
     ]
+    notices += [
+        _nothing(facts.place, "net", f'[pin."{name}"] {key}', net, nets)
+        for name, facts in project.pins.items()
+        for key, net in _nets_of(facts)
+        if net not in nets
+    ]
     return notices
+
+
+def _nets_of(facts: PinFacts) -> Iterator[tuple[str, str]]:
+    """The nets that a pin's levels follow and its pulls go to, each with its key."""
+    for key, level in (("low", facts.low), ("high", facts.high), ("max-voltage", facts.max_voltage)):
+        yield from ((key, net) for _, net in (level.nets if level else ()))
+    for key, pull in (("pull-up", facts.pull_up), ("pull-down", facts.pull_down)):
+        if pull is not None:
+            yield key, pull[1]
 
 
 def _means_any(pattern: str, names: Collection[str]) -> bool:

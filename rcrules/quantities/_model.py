@@ -15,6 +15,18 @@ class QuantityError(ValueError):
         return QuantityError(self.problem, at=self.at + by, length=self.length, expected=self.expected)
 
 
+class UnknownUnitError(QuantityError):
+    """A unit outside the table; what was meant depends on the quantity that goes there."""
+
+    def __init__(self, spelling: str, *, at: int = 0, expected: str = "") -> None:
+        super().__init__(f"unit '{spelling}' is not known", at=at, length=max(len(spelling), 1), expected=expected)
+        self.spelling = spelling
+
+    def moved(self, by: int) -> "UnknownUnitError":
+        """The same error in a longer text, where this one starts at ``by``."""
+        return UnknownUnitError(self.spelling, at=self.at + by, expected=self.expected)
+
+
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Spread:
     """A number between two bounds, SI units."""

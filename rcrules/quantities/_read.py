@@ -10,16 +10,15 @@ from dataclasses import dataclass, replace
 from math import isfinite
 from typing import Final
 
-from rcrules.quantities._model import QuantityError, Spread
-from rcrules.quantities._units import QUANTITY_NAMES, parse_unit
+from rcrules.quantities._model import QuantityError, Spread, UnknownUnitError
+from rcrules.quantities._units import QUANTITY_NAMES, SAMPLES, meant, parse_unit
 
 _LONGEST: Final = 200
 _NUMBER: Final = re.compile(r"[+-]?(?:[0-9]{1,40}(?:\.(?!\.)[0-9]{0,40})?|\.(?!\.)[0-9]{1,40})(?:[eE][+-]?[0-9]{1,4})?")
-_LETTERS: Final = "[A-Za-zµμΩ\u2126°%]{1,40}"
+_LETTERS: Final = "[A-Za-zµμΩ\u2126°\u2103%]{1,40}"
 _UNIT: Final = re.compile(rf"{_LETTERS}(?:/{_LETTERS})?")
 _DOTS: Final = re.compile(r"\.\.|…")
 _BLANKS: Final = re.compile(r"\s*")
-_SAMPLES: Final = {"s": "1 ms", "V": "3.3 V", "Ω": "10 kohm", "F": "100 nF", "degC": "25 degC", "1": "5 %"}
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -42,6 +41,20 @@ def parse_quantity(text: str, unit: str | None = None) -> Spread:
     if len(text) > _LONGEST:
         raise QuantityError("too long for a quantity", at=_LONGEST, expected=f"at most {_LONGEST} characters")
     plain = text.replace("−", "-")
+    try:
+        spread, first = _quantity(plain)
+    except UnknownUnitError as error:
+        if unit is None or "/" in error.spelling:
+            raise
+        raise QuantityError(
+            error.problem, at=error.at, length=error.length, expected=meant(error.spelling, unit)
+        ) from None
+    _check_unit(spread, unit, first, len(plain))
+    return spread
+
+
+def _quantity(plain: str) -> tuple[Spread, _Amount]:
+    """The whole quantity, and its first amount."""
     first = _amount(plain, 0)
     rest = _skip(plain, first.end)
     dots = _DOTS.match(plain, rest)
@@ -51,8 +64,7 @@ def parse_quantity(text: str, unit: str | None = None) -> Spread:
         spread = _with_tolerance(plain, first, rest)
     else:
         spread = Spread(low=first.value, nominal=first.value, high=first.value, unit=first.unit)
-    _check_unit(spread, unit, first, len(plain))
-    return spread
+    return spread, first
 
 
 def _skip(text: str, at: int) -> int:
@@ -190,5 +202,5 @@ def _check_unit(spread: Spread, unit: str | None, first: _Amount, length: int) -
         return
     wanted, found = QUANTITY_NAMES.get(unit, unit), QUANTITY_NAMES[spread.unit]
     problem = f"no unit where a {wanted} goes" if first.bare else f"a {found} where a {wanted} goes"
-    expected = f"such as '{_SAMPLES.get(unit, '1 ' + unit)}'"
+    expected = f"such as '{SAMPLES.get(unit, '1 ' + unit)}'"
     raise QuantityError(problem, at=first.at, length=length - first.at, expected=expected)

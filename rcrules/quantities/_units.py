@@ -5,7 +5,7 @@ from functools import lru_cache
 from typing import Final
 
 from rcrules.quantities._foreign import worth
-from rcrules.quantities._model import QuantityError
+from rcrules.quantities._model import QuantityError, UnknownUnitError
 
 PREFIXES: Final = {
     "f": 1e-15,
@@ -47,6 +47,7 @@ _PLAIN: Final = {
     "mK": ("K", 1e-3),
     "degC": ("degC", 1.0),
     "°C": ("degC", 1.0),
+    "\u2103": ("degC", 1.0),
     "bit": ("bit", 1.0),
     "%": ("1", 0.01),
     "ppm": ("1", 1e-6),
@@ -80,6 +81,8 @@ QUANTITY_NAMES: Final = {
     "F/m": "capacitance per length",
 }
 """SI unit -> what it measures, in words."""
+SAMPLES: Final = {"s": "1 ms", "V": "3.3 V", "Ω": "10 kohm", "F": "100 nF", "degC": "25 degC", "1": "5 %"}
+"""SI unit -> a quantity as people write it."""
 _MISTAKEN: Final = {
     "r": "ohm",
     "ohms": "ohm",
@@ -155,17 +158,21 @@ def parse_unit(text: str) -> tuple[str, float]:
 def _simple(text: str, at: int) -> tuple[str, float]:
     found = SPELLINGS.get(text)
     if found is None:
-        raise QuantityError(f"unit '{text}' is not known", at=at, length=max(len(text), 1), expected=_expected(text))
+        raise UnknownUnitError(text, at=at, expected=meant(text))
     return found
 
 
-def _expected(text: str) -> str:
-    meant = _MISTAKEN.get(text.lower())
-    same = [spelling for spelling in SPELLINGS if text and spelling.lower() == text.lower()]
-    if meant or same:
-        return f"did you mean '{meant or same[0]}'?"
+def meant(text: str, wanted: str | None = None) -> str:
+    """What to write instead of a unit that is not known; with the SI unit ``wanted``, only units of that quantity."""
+    fitting = [spelling for spelling, (unit, _) in SPELLINGS.items() if wanted is None or unit == wanted]
+    known = _MISTAKEN.get(text.lower())
+    same = [spelling for spelling in fitting if text and spelling.lower() == text.lower()]
+    if known in fitting or same:
+        return f"did you mean '{known if known in fitting else same[0]}'?"
     foreign = worth(text)
-    if foreign is not None:
+    if foreign is not None and wanted in (None, foreign[1]):
         return f"another unit: 1 {text} is {foreign[0]:.6g} {foreign[1]}"
-    near = get_close_matches(text, SPELLINGS, n=1, cutoff=0.6) if text else []
-    return f"did you mean '{near[0]}'?" if near else "a unit such as V, ohm, uF or ms"
+    near = get_close_matches(text, fitting, n=1, cutoff=0.6 if len(text) > 2 else 0.5) if text else []
+    if near:
+        return f"did you mean '{near[0]}'?"
+    return "a unit such as V, ohm, uF or ms" if wanted is None else f"such as '{SAMPLES.get(wanted, '1 ' + wanted)}'"

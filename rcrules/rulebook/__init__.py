@@ -4,7 +4,7 @@ from rcrules.rulebook._condition import FACTS, facts_of, holds
 from rcrules.rulebook._model import Comparison, Condition, Example, Junction, Limit, OptionValue, Pack, Rule, Selection
 from rcrules.rulebook._packs import compile_pack, load, packs, packs_folder, shipped
 from rcrules.rulebook._sentence import sentence
-from rcrules.rulebook._settings import check_settings
+from rcrules.rulebook._settings import check_settings, strange_settings
 
 __all__ = [
     "FACTS",
@@ -26,4 +26,5 @@ __all__ = [
     "packs_folder",
     "sentence",
     "shipped",
+    "strange_settings",
 ]

@@ -51,19 +51,22 @@ def load(
     folder: Path | None = None,
     project: Project | None = None,
     measures: Mapping[str, Measure] | None = None,
+    *,
+    asked_by: str = "rules",
 ) -> list[Rule]:
     """The rules of shipped packs and files (``….toml``, taken from ``folder``), in that order, each pack once.
 
-    With a project its settings are held against the rules too. Raises UserMistake with the mistakes of all files.
+    With a project its settings are held against the rules too. asked_by: what names them. Raises
+    UserMistake with the mistakes of all files.
     """
     known, problems = registry() if measures is None else measures, Problems()
     wanted = list(dict.fromkeys(names))
     if len(wanted) > MAX_FILES:
-        raise UserMistake(Mistake(place=Place(file="rules"), problem=f"more than {MAX_FILES} packs and files"))
+        raise UserMistake(Mistake(place=Place(file=asked_by), problem=f"more than {MAX_FILES} packs and files"))
     rules: list[Rule] = []
     for name in wanted:
         with problems.collecting():
-            rules += compile_pack(_file(name, folder), known)
+            rules += compile_pack(_file(name, folder, asked_by), known)
     _distinct(rules, problems)
     if project is not None:
         problems.mistakes.extend(check_settings(project, rules))
@@ -79,14 +82,14 @@ def compile_pack(file: TomlFile, measures: Mapping[str, Measure]) -> list[Rule]:
     return rules
 
 
-def _file(name: str, folder: Path | None) -> TomlFile:
+def _file(name: str, folder: Path | None, asked_by: str = "rules") -> TomlFile:
     """A pack by its name, or a file by its path."""
     if name.endswith(_SUFFIX) or "/" in name or "\\" in name:
         return read_toml((folder or Path()) / name, name)
     if name not in shipped():
         problem = f"no pack is called '{cut(name)}'{guess(name, shipped())}"
         do = "name a shipped pack, or a file that ends in .toml"
-        raise UserMistake(Mistake(place=Place(file="rules"), problem=problem, expected=listed(shipped()), do=do))
+        raise UserMistake(Mistake(place=Place(file=asked_by), problem=problem, expected=listed(shipped()), do=do))
     return load_toml(f"{name}{_SUFFIX}", (packs_folder() / f"{name}{_SUFFIX}").read_text(encoding="utf-8"))
 
 

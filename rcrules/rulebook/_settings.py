@@ -4,17 +4,27 @@ from collections.abc import Iterable, Iterator
 from dataclasses import replace
 
 from rcrules.errors import Mistake
-from rcrules.project import Project
+from rcrules.project import Notice, Project
 from rcrules.quantities import Spread
 from rcrules.rulebook._model import Rule
 from rcrules.rulebook._numbers import WORD
-from rcrules.tomlfile import guess, listed, quantity_name
+from rcrules.tomlfile import cut, guess, listed, quantity_name
 
 
 def check_settings(project: Project, rules: Iterable[Rule]) -> list[Mistake]:
     """Settings that a rule does not know, and numbers of the wrong dimension under names that a rule looks up."""
     known = list(rules)
     return [*_of_rules(project, known), *_of_tables(project, known)]
+
+
+def strange_settings(project: Project, rules: Iterable[Rule]) -> list[Notice]:
+    """Settings of rules that are not applied, such as a mistyped id; each with the nearest rule."""
+    known = [rule.id for rule in rules]
+    return [
+        Notice(place=places[""].place, text=f'[settings."{cut(rule)}"] is of no rule applied here{guess(rule, known)}')
+        for rule, places in project.setting_places.items()
+        if rule not in known
+    ]
 
 
 def _of_rules(project: Project, rules: list[Rule]) -> Iterator[Mistake]:

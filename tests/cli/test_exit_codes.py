@@ -158,3 +158,24 @@ def test_one_input_twice_is_a_slip(board: Path, capsys: pytest.CaptureFixture[st
     assert "standard input is named twice" in capsys.readouterr().err
     assert main(["check", ""]) == 2
     assert "an input without a name" in capsys.readouterr().err
+
+
+def test_what_the_project_names_wrongly_is_said_to_stand_there(board: Path, capsys: pytest.CaptureFixture[str]) -> None:
+    project = board / "rcrules.toml"
+    text = project.read_text().replace('"board.xml"', '"bord.xml"').replace('"our-rules.toml"', '"debonce"')
+    project.write_text(text)
+    assert main(["check"]) == 2
+    err = capsys.readouterr().err
+    assert "bord.xml: no such file\n  do        check the path in [board] of rcrules.toml" in err
+    assert "rcrules.toml: no pack is called 'debonce'; did you mean 'debounce'?" in err
+    assert main(["check", "board.xml", "--rules", "debonce"]) == 2
+    assert "--rules: no pack is called 'debonce'" in capsys.readouterr().err
+
+
+def test_settings_of_a_rule_that_is_not_applied_are_remarked(board: Path, capsys: pytest.CaptureFixture[str]) -> None:
+    project = board / "rcrules.toml"
+    project.write_text(project.read_text() + '[settings."reset-slow-enuogh"]\nleast = "1 ms"\n')
+    assert main(["check"]) == 0
+    assert "is of no rule applied here; did you mean 'reset-slow-enough'?" in capsys.readouterr().out
+    assert main(["check", "--rules", "debounce"]) == 0
+    assert "of no rule applied here" not in capsys.readouterr().out

@@ -64,3 +64,14 @@ def test_one_table_may_name_several_things():
     assert [bool(project.part_facts(found, ref)) for ref in ("C7", "C8", "D1", "C9")] == [True, True, True, False]
     assert project.unmatched(found, [], [], ["C8"]) == []
     assert len(project.unmatched(found, [], [], ["R1"])) == 1
+
+
+def test_nets_that_levels_and_pulls_follow_are_looked_for_too():
+    found = project.load(
+        "p", '[pin."U1.A"]\nlow = "30 % of +3V3"\nhigh = "70 % of +9V"\npull-up = "25 kohm to +3V"\nmax-voltage = "5 V"'
+    )
+    told = project.unmatched(found, ["+3V3", "+5V"], ["U1.A"], [])
+    assert [item.text for item in told] == [
+        '[pin."U1.A"] high +9V names no net of this board (2 nets; nearest: +5V)',
+        '[pin."U1.A"] pull-up +3V names no net of this board (2 nets; nearest: +3V3)',
+    ]

@@ -1,6 +1,5 @@
 """Quantities as people write them."""
 
-
 import pytest
 from hypothesis import given
 from hypothesis import strategies as st
@@ -159,3 +158,25 @@ def test_any_text_is_a_quantity_or_a_quantity_error(text):
         found, place = Spread(low=0.0, nominal=0.0, high=0.0, unit="1"), error.at
     assert 0 <= place <= len(text)
     assert found.low <= found.nominal <= found.high
+
+
+@pytest.mark.parametrize(
+    ("text", "unit", "expected"),
+    [
+        ("1 mz", "s", "did you mean 'ms'?"),
+        ("1 mz", "Hz", "did you mean 'mHz'?"),
+        ("1 k", "Ω", "did you mean 'kohm'?"),
+        ("3 sek", "s", "such as '1 ms'"),
+        ("1 week", "s", "another unit: 1 week is 604800 s"),
+        ("1 week", "V", "such as '3.3 V'"),
+        ("3.3 V +/- 3 pct", "V", "such as '3.3 V'"),
+    ],
+)
+def test_a_unit_that_is_not_known_is_guessed_among_those_that_fit(text, unit, expected):
+    with pytest.raises(QuantityError) as caught:
+        parse_quantity(text, unit)
+    assert caught.value.expected == expected
+
+
+def test_one_sign_for_degrees_is_read_like_two():
+    assert parse_quantity("-20 ℃ .. 60℃") == parse_quantity("-20 °C .. 60 degC")

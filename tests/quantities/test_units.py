@@ -6,7 +6,15 @@ import pytest
 from rcrules.quantities import QUANTITY_NAMES, QuantityError, parse_unit
 from rcrules.quantities._units import SPELLINGS
 
-_SAME = {"%": "percent", "degC": "delta_degC", "°C": "delta_degC", "K": "kelvin", "mK": "millikelvin", "Ohm": "ohm"}
+_SAME = {
+    "%": "percent",
+    "degC": "delta_degC",
+    "°C": "delta_degC",
+    "\u2103": "delta_degC",
+    "K": "kelvin",
+    "mK": "millikelvin",
+    "Ohm": "ohm",
+}
 _BASE = {"Ω": "ohm", "degC": "delta_degC", "1": "dimensionless"}
 
 
