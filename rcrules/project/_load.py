@@ -129,13 +129,14 @@ def _facts(
     top: Table,
     key: str,
     read_facts: Callable[[Table], Facts],
-    check: Callable[[Table, Facts], None] = lambda table, facts: None,
+    check: Callable[[Table, Facts], None] | None = None,
 ) -> dict[str, Facts]:
     found = {}
     for name, table in top.named(key).items():
         if _is_name(top, (key, name), name):
             found[name] = read_facts(table)
-            check(table, found[name])
+            if check is not None:
+                check(table, found[name])
     return found
 
 
