@@ -72,9 +72,11 @@ def terminal_of(bench: Bench, circuit: Circuit, joint: str) -> str:
 
 
 def _most(bench: Bench, circuit: Circuit, table: Table, network: Network) -> float | None:
-    """The most that a capacitor of the network sees [V], nets that pins pull to included."""
+    """The most that a capacitor of the network sees [V], nets that pins pull to and known ones at diodes included."""
     sources = Sources(bench=bench, table=table)
-    return most_across(sources, network.branches, network.free, circuit.joints.values())
+    ends = {joint for diode in network.diodes for joint in (diode.anode, diode.cathode)} - set(network.free)
+    known = [joint for joint in ends if sources.kind(joint) == "ground" or sources.most(joint) is not None]
+    return most_across(sources, network.branches, network.free, [*circuit.joints.values(), *known])
 
 
 def _of_part(bench: Bench, circuit: Circuit, table: Table, branch: Branch, most: Callable[[], float | None]) -> Wire:

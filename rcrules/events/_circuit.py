@@ -6,7 +6,7 @@ from dataclasses import dataclass, field
 
 from rcrules.engine import Shape
 from rcrules.events._unmeasurable import Unmeasurable
-from rcrules.problems import Form, Names
+from rcrules.problems import Form, Junction, Names
 
 ZERO = "0 V"
 """The terminal that stands for all grounds."""
@@ -25,6 +25,19 @@ class Arm:
     value: Form
 
 
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Valve:
+    """A diode of the circuit that may conduct."""
+
+    ref: str
+    anode: str
+    cathode: str
+    drop: Form
+    ohms: Form
+    breakdown: float | None
+    """Reverse voltage beyond which nothing can be said [V]; None = it never gets there."""
+
+
 @dataclass(slots=True)
 class Circuit:
     """Terminals and branches; held terminals are numbered after the free ones."""
@@ -36,6 +49,7 @@ class Circuit:
     """Free terminal, current drawn out of it [A]."""
     joints: dict[str, str] = field(default_factory=dict)
     """Held terminal -> the joint whose voltage it has; the common 0 V has none."""
+    valves: list[Valve] = field(default_factory=list)
 
     def terminal(self, name: str) -> int:
         """Number of a terminal. Raises ValueError."""
@@ -59,11 +73,34 @@ class Circuit:
             arms=list(self.arms),
             draws=list(self.draws),
             joints=dict(self.joints),
+            valves=list(self.valves),
         )
 
     def amps(self) -> tuple[tuple[int, Form], ...]:
         """Currents drawn, by terminal number."""
         return tuple((self.terminal(name), form) for name, form in self.draws)
+
+    def diodes(self) -> tuple[Junction, ...]:
+        """Diodes that may conduct, by terminal number."""
+        return tuple(
+            Junction(
+                anode=self.terminal(item.anode),
+                cathode=self.terminal(item.cathode),
+                drop=item.drop,
+                ohms=item.ohms,
+                breakdown=item.breakdown,
+                name=item.ref if item.breakdown is not None else "",
+            )
+            for item in self.valves
+        )
+
+    def links(self) -> list[Arm]:
+        """All branches and diodes as resistors: what is joined to what."""
+        arms = [Arm(ref=arm.ref, kind="resistor", a=arm.a, b=arm.b, value=arm.value) for arm in self.arms]
+        return [
+            *arms,
+            *(Arm(ref=v.ref, kind="resistor", a=v.anode, b=v.cathode, value=v.ohms) for v in self.valves),
+        ]
 
     def of(self, kind: str) -> list[Arm]:
         """Branches of a kind, in the order of the shape."""

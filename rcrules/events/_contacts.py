@@ -62,8 +62,7 @@ def nearest(bench: Bench, network: Network, circuit: Circuit, joint: str) -> Con
     if not network.contacts:
         raise Unmeasurable(f"no contact acts on {joint}")
     everything = Circuit(free=circuit.free, held=circuit.held)
-    arms = [Arm(ref=item.ref, kind="resistor", a=item.a, b=item.b, value=item.value) for item in circuit.arms]
-    steps = {**everything.driven([joint], arms), joint: 0}
+    steps = {**everything.driven([joint], circuit.links()), joint: 0}
     found = []
     for item in network.contacts:
         ends = [terminal_of(bench, circuit, end) for end in (item.a, item.b)]

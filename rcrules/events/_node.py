@@ -6,7 +6,7 @@ from dataclasses import dataclass, replace
 from rcrules.events._bench import Bench
 from rcrules.events._build import build, terminal_of
 from rcrules.events._circuit import Circuit
-from rcrules.events._diodes import check_diodes
+from rcrules.events._diodes import widened, with_diodes
 from rcrules.events._levels import Leveller
 from rcrules.events._options import OptionValue, levels_of, plain_of
 from rcrules.events._rest import at_rest
@@ -14,12 +14,12 @@ from rcrules.events._sample import pose_sample
 from rcrules.events._sources import PROJECT, Sources
 from rcrules.events._structure import structure_of
 from rcrules.events._table import Table
-from rcrules.events._transients import Scene, Transient, transient
+from rcrules.events._transients import Scene, Transient
 from rcrules.events._unmeasurable import Unmeasurable
 from rcrules.levels import Level
 from rcrules.measures import Measure
 from rcrules.networks import Node
-from rcrules.problems import LevelForm, Problem, Structure, solved
+from rcrules.problems import LevelForm, Problem, Structure, Unsettled, solved
 
 STEPS = ("step-up", "step-down")
 
@@ -35,17 +35,17 @@ def pose_node(bench: Bench, node: Node, measure: Measure, options: Mapping[str, 
     levels = levels_of(measure, options)
     event = str(options["event"])
     parts_of_step = all(level.of == "step" for level in levels.values())
-    relative = measure.scale_free and parts_of_step and options.get("from", "event") == "event"
     table = Table()
-    network = bench.network(node)
+    network = widened(bench, bench.network(node))
+    linear = not network.diodes  # a forward drop is no part of a step
+    relative = linear and measure.scale_free and parts_of_step and options.get("from", "event") == "event"
     unit = relative and event in STEPS
     circuit = build(bench, network, table, [node.joint], currents=not unit)
     sources = Sources(bench=bench, table=table)
     leveller = Leveller(bench=bench, circuit=circuit, table=table, node=node)
     _hold_followed(bench, circuit, leveller, levels)
     scene = Scene(bench=bench, network=network, circuit=circuit, sources=sources, joint=node.joint, unit=relative)
-    found = transient(scene, event)
-    check_diodes(scene, found)
+    found = with_diodes(scene, event)
     structure = replace(
         structure_of(circuit, found), at=circuit.terminal(node.joint), options=plain_of(measure, options)
     )
@@ -100,7 +100,10 @@ def _rises(scene: Scene, event: Transient, structure: Structure, table: Table) -
 def _nominal(structure: Structure, table: Table) -> _Start:
     _, nominal, _ = Problem(structure=structure, parameters=tuple(table.parameters)).box()
     case = solved(structure, nominal[None, :])
-    return _Start(before=float(case.start[0]), initial=float(case.signal.initial()[0]), final=float(case.final[0]))
+    try:
+        return _Start(before=float(case.start[0]), initial=float(case.signal.initial()[0]), final=float(case.final[0]))
+    except Unsettled as error:
+        raise Unmeasurable(str(error)) from None
 
 
 def _reference(scene: Scene, event: Transient, origin: str) -> tuple[int, LevelForm] | None:

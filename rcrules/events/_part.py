@@ -1,18 +1,19 @@
 """A question about a capacitor or resistor: the DC states of all sources around it, or an event."""
 
-from collections.abc import Mapping, Sequence
+from collections.abc import Mapping
 from dataclasses import dataclass, replace
 from itertools import product
 
 from rcrules.events._bench import Bench
 from rcrules.events._build import build, terminal_of
-from rcrules.events._circuit import ZERO, Arm, Circuit
+from rcrules.events._circuit import ZERO, Circuit
 from rcrules.events._contacts import arm
+from rcrules.events._diodes import add_all, widened, with_diodes
 from rcrules.events._options import OptionValue, plain_of
 from rcrules.events._sources import Sources, moved
-from rcrules.events._structure import structure_of
+from rcrules.events._structure import check_paths, structure_of
 from rcrules.events._table import Table
-from rcrules.events._transients import Scene, transient
+from rcrules.events._transients import Scene
 from rcrules.events._unmeasurable import Unmeasurable
 from rcrules.measures import Measure
 from rcrules.networks import OPEN_END, Branch, Network
@@ -35,7 +36,7 @@ def place_of(bench: Bench, part: RatedPart) -> Place:
     """Where a part is. Raises Unmeasurable where it has not two ends on two joints."""
     if part.ref in bench.network_of_part:
         network, branch = bench.network_of_part[part.ref]
-        return Place(branch=branch, network=network)
+        return Place(branch=branch, network=widened(bench, network))
     found = bench.branch(part)
     if found is None or found.a == found.b:
         raise Unmeasurable(f"{part.ref} does not lie between two nets")
@@ -61,6 +62,7 @@ def pose_states(bench: Bench, part: RatedPart, measure: Measure, options: Mappin
     """The DC states around a part, and the transient where that may go further. Raises Unmeasurable."""
     place, table = place_of(bench, part), Table()
     circuit, sources, ends = _circuit(bench, place, table)
+    add_all(bench, circuit, sources, place.network)
     closed = tuple(arm(bench, circuit, table, item) for item in place.network.contacts)
     for contacts in ((), closed) if closed else ((),):
         check_paths(circuit, contacts)
@@ -75,6 +77,7 @@ def pose_states(bench: Bench, part: RatedPart, measure: Measure, options: Mappin
         farads=circuit.values("capacitor"),
         waveforms=waves,
         amps=circuit.amps(),
+        diodes=circuit.diodes(),
         earlier=(circuit.shape(closed), (*ohms, *(item.value for item in closed))) if closed else None,
         empty=True,
         at=circuit.terminal(ends[0]),
@@ -93,7 +96,7 @@ def pose_part_event(bench: Bench, part: RatedPart, measure: Measure, options: Ma
     circuit, sources, ends = _circuit(bench, place, table)
     watched = next((end for end in ends if end in circuit.free), ends[0])
     scene = Scene(bench=bench, network=place.network, circuit=circuit, sources=sources, joint=watched, unit=False)
-    event = transient(scene, str(options["event"]))
+    event = with_diodes(scene, str(options["event"]))
     structure = replace(
         structure_of(circuit, event),
         at=circuit.terminal(ends[0]),
@@ -112,15 +115,7 @@ def _circuit(bench: Bench, place: Place, table: Table) -> tuple[Circuit, Sources
             raise Unmeasurable(f"active network: {node.active}")
     circuit = build(bench, place.network, table, [branch.a, branch.b])
     ends = terminal_of(bench, circuit, branch.a), terminal_of(bench, circuit, branch.b)
-    if place.network.diodes:
-        raise Unmeasurable(f"diode {place.network.diodes[0].ref} may conduct, and diodes are not modelled")
     return circuit, Sources(bench=bench, table=table), ends
-
-
-def check_paths(circuit: Circuit, contacts: Sequence[Arm]) -> None:
-    floating = circuit.floating(contacts)
-    if floating:
-        raise Unmeasurable(f"no resistive path from {floating[0]} to a source or ground")
 
 
 def _element(circuit: Circuit, part: RatedPart) -> int:

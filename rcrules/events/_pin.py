@@ -8,10 +8,12 @@ from rcrules.events._bench import Bench
 from rcrules.events._build import build, terminal_of
 from rcrules.events._circuit import ZERO, Arm, Circuit
 from rcrules.events._contacts import arm, nearest, normally
+from rcrules.events._diodes import add_all, widened
 from rcrules.events._levels import Leveller
 from rcrules.events._options import OptionValue, plain_of
-from rcrules.events._part import check_paths, ends_of, states_of, switched_on
+from rcrules.events._part import ends_of, states_of, switched_on
 from rcrules.events._sources import PROJECT, Sources, still
+from rcrules.events._structure import check_paths
 from rcrules.events._table import LEAST_OHMS, Table
 from rcrules.events._unmeasurable import Unmeasurable
 from rcrules.measures import Measure
@@ -48,10 +50,10 @@ def _spot(bench: Bench, pin: Pin) -> _Spot:
     active = next((node.active for node in network.nodes if node.active and node.joint == joint), None)
     if active is not None:
         raise Unmeasurable(f"active network: {active}")
-    if network.diodes:
-        raise Unmeasurable(f"diode {network.diodes[0].ref} may conduct, and diodes are not modelled")
+    network = widened(bench, network)
     circuit = build(bench, network, table, [joint])
     sources = Sources(bench=bench, table=table)
+    add_all(bench, circuit, sources, network)
     return _Spot(bench=bench, pin=pin, joint=joint, network=network, table=table, circuit=circuit, sources=sources)
 
 
@@ -75,6 +77,7 @@ def _states(spot: _Spot, measure: Measure, options: Mapping[str, OptionValue]) -
         farads=circuit.values("capacitor"),
         waveforms=waves,
         amps=circuit.amps(),
+        diodes=circuit.diodes(),
         earlier=(circuit.shape(contacts), (*ohms, *(item.value for item in contacts))) if contacts else None,
         empty=True,
         at=circuit.terminal(spot.joint),
@@ -114,6 +117,7 @@ def _level(spot: _Spot, measure: Measure, options: Mapping[str, OptionValue]) ->
         farads=circuit.values("capacitor"),
         waveforms=tuple(still(volts) for volts in sources),
         amps=circuit.amps(),
+        diodes=circuit.diodes(),
         earlier=shapes[1] if len(shapes) > 1 else None,
         at=circuit.terminal(spot.joint),
         states=(sources,),
@@ -199,6 +203,7 @@ def _short(spot: _Spot, measure: Measure, options: Mapping[str, OptionValue]) ->
         farads=circuit.values("capacitor"),
         waveforms=tuple(sources),
         amps=circuit.amps(),
+        diodes=circuit.diodes(),
         earlier=(circuit.shape(before), (*ohms, *(item.value for item in before))),
         at=circuit.terminal(closing.a),
         against=circuit.terminal(closing.b),

@@ -34,7 +34,7 @@ def pose_sample(bench: Bench, node: Node, measure: Measure, options: Mapping[str
     """
     network, table = bench.network(node), Table()
     if network.diodes:
-        raise Unmeasurable(f"diode {network.diodes[0].ref} may conduct, and diodes are not modelled")
+        raise Unmeasurable(f"diode {network.diodes[0].ref} may conduct, and sampling is not modelled beside a diode")
     sampler = _sampler(bench, node)
     circuit = build(bench, network, table, [node.joint], currents=False)
     contacts = switched(bench, network, circuit, table, node.joint, "none").after

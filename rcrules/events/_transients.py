@@ -92,7 +92,7 @@ def mover(scene: Scene) -> str:
     """The nearest driven net that feeds the joint, through resistors if any does; else the nearest supply."""
     for kind in ("driven", "supply"):
         names = [name for name in scene.circuit.held if _kind(scene, name) == kind]
-        for arms in (scene.circuit.of("resistor"), scene.circuit.arms):
+        for arms in (scene.circuit.of("resistor"), scene.circuit.arms, scene.circuit.links()):
             found = [(steps, name) for name in names if (steps := _steps(scene, name, arms)) is not None]
             if found:
                 return min(found)[1]

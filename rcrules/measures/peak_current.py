@@ -27,7 +27,7 @@ def compute(structure: Structure, cases: Array) -> Array:
     alone = [terminal for terminal in pair if _alone(structure, terminal, element)]
     if not alone:
         return np.full(len(cases), np.nan)
-    low, high = case.watch(*into(case, alone[0])).extremes()
+    low, high = into(case, alone[0]).extremes()
     return np.maximum(high, -low)
 
 

@@ -22,7 +22,7 @@ def compute(structure: Structure, cases: Array) -> Array:
     pair = structure.shape.resistors[element]
     bare = [end for end in pair if end < structure.shape.free and not capacitors_at(structure, end)]
     if bare:
-        low, high = case.watch(*into(case, bare[0], without=element)).extremes()
+        low, high = into(case, bare[0], without=element).extremes()
         return np.maximum(high, -low)
     low, high = case.signal.extremes()
     volts, ohms = np.maximum(high, -low), case.ohms[:, element]

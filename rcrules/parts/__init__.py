@@ -1,6 +1,7 @@
 """Step 3: design in, parts with kind, value, spread and ratings out."""
 
 from rcrules.parts._apart import apart
+from rcrules.parts._diodes import DiodeModel, diode_model
 from rcrules.parts._kinds import kind_of
 from rcrules.parts._model import Known, RatedPart, Share, Unknown
 from rcrules.parts._rate import rate
@@ -10,6 +11,7 @@ from rcrules.parts._texts import ValueText, read_value
 
 __all__ = [
     "ASSUMED_TEMPERATURE",
+    "DiodeModel",
     "Known",
     "RatedPart",
     "Share",
@@ -17,6 +19,7 @@ __all__ = [
     "ValueText",
     "apart",
     "at_bias",
+    "diode_model",
     "kind_of",
     "rate",
     "read_value",

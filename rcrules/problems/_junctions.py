@@ -97,10 +97,7 @@ class Junctions:
         """Raises Unsettled where a reverse voltage [V] (case,) exceeds the diode's breakdown."""
         for index, limit, name in self.breakdowns:
             if index == diode and (volts > limit).any():
-                raise Unsettled(
-                    f"{volts.max():.3g} V lie across {name} in reverse, and its breakdown, from {limit:.3g} V, is not "
-                    "modelled"
-                )
+                raise Unsettled(f"more than {limit:.3g} V in reverse across {name}: its breakdown is not modelled")
 
 
 def junctions(structure: Structure, cases: Array, *volts: Array) -> Junctions:

@@ -175,6 +175,9 @@ DEFAULTS: Final[Mapping[str, Reader]] = {
     "bias-curve": _bias_curve,
     "contact-resistance": _Amount("Ω", 0),
     "bounce": _Amount("s", 0),
+    "forward": _Amount("V", 0),
+    "on-resistance": _Amount("Ω", 0),
+    "breakdown": _Amount("V", 0),
 }
 PART: Final[Mapping[str, Reader]] = {
     **DEFAULTS,

@@ -83,6 +83,12 @@ class PartFacts:
     """``normally open`` or ``normally closed``."""
     contact_resistance: Spread | None = None
     bounce: Spread | None = None
+    forward: Spread | None = None
+    """Forward drop of a diode [V]."""
+    on_resistance: Spread | None = None
+    """Resistance of a diode above its forward drop [Ω]."""
+    breakdown: Spread | None = None
+    """Reverse voltage at which a diode breaks down [V]."""
     set: Mapping[str, str | float] = field(default_factory=dict)
     """Every number of the table by its key, nominal, SI, and free words."""
     spreads: Mapping[str, Spread] = field(default_factory=dict)

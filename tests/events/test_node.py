@@ -105,13 +105,6 @@ def test_a_schmitt_pin_has_edges_by_direction(event: str, to: str, volts: float)
     assert found.nominal == pytest.approx(-1e-3 * log(left))
 
 
-def test_a_clamp_diode_to_the_rail_is_open_while_the_rail_is_up_and_undecided_when_it_falls():
-    board = reset(extra="D1.2", parts=", D1 DX48")
-    assert board.board.networks[0].diodes
-    assert board.measure("NRST", "delay", event="power-up", to="1 V").nominal == pytest.approx(1e-3 * log(3.3 / 2.3))
-    assert "D1" in refusal(board, "NRST", "delay", event="power-down", to="1 V").reason
-
-
 def test_the_drivers_own_resistance_adds_to_the_filter():
     board = low_pass('[net."IN"]\nsource-resistance = "1 kohm"\n')
     assert board.measure("N", "time_constant").nominal == pytest.approx(2e-4)

@@ -131,3 +131,13 @@ def test_the_line_that_gives_a_number_is_one_the_file_may_hold():
         header, _, rest = line.partition("] ")
         load(f"{header}]\n{rest}")
     assert project.NUMBERS["acquisition_time"] == "s"
+
+
+def test_a_diode_has_a_forward_drop_a_resistance_and_a_breakdown():
+    found = load(
+        '[part."D1"]\nforward = "0.3 V .. 0.8 V"\non-resistance = "0.1 ohm .. 10 ohm"\n'
+        '[defaults.diode]\nbreakdown = "5.6 V"\n'
+    )
+    assert found.parts["D1"].forward == spread(0.3, 0.8, "V")
+    assert found.parts["D1"].on_resistance == spread(0.1, 10.0, "Ω")
+    assert found.defaults["diode"].breakdown == spread(5.6, 5.6, "V")
