@@ -2,6 +2,7 @@
 
 from collections.abc import Generator
 from dataclasses import dataclass
+from math import isfinite
 
 import numpy as np
 
@@ -97,12 +98,16 @@ def _way(climber: Climber, shares: Array, ends: Array, heights: Array) -> Array:
     slope = (heights[:, 1] - heights[:, 0]) / np.maximum(ends[:, 1] - ends[:, 0], 1e-300)
     slope[((shares <= 0.0) & (slope < 0.0)) | ((shares >= 1.0) & (slope > 0.0))] = 0.0
     way = slope
-    if climber.way is not None and climber.slope is not None and climber.slope.any():
-        turn = slope @ (slope - climber.slope) / (climber.slope @ climber.slope)
-        way = slope + max(0.0, float(turn)) * climber.way
-    climber.slope, climber.way = slope, way
+    if climber.way is not None and climber.slope is not None:
+        with np.errstate(over="ignore", invalid="ignore"):  # values near the ends of the number range: see below
+            size = float(climber.slope @ climber.slope)
+            turn = float(slope @ (slope - climber.slope)) / size if size > 0.0 else 0.0
+            way = slope + max(0.0, turn) * climber.way
     longest = float(np.abs(way).max())
-    return way * (climber.step / longest) if longest > 0.0 else way
+    if not isfinite(longest):
+        return np.zeros_like(shares)
+    climber.slope, climber.way = slope, way
+    return way / longest * climber.step if longest > 0.0 else way
 
 
 def _top(here: float, ends: Array, heights: Array) -> float:

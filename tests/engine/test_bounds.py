@@ -230,3 +230,15 @@ def test_a_value_that_is_infinite_inside_ends_the_climb_of_its_side():
     )
     assert found.high == np.inf
     assert found.low == approx(0.0, abs=1e-9)
+
+
+@pytest.mark.parametrize("scale", [1e-310, 1e-200, 1e160, 1e300])
+def test_values_near_the_ends_of_the_number_range_do_not_mislead_the_climb(scale):
+    """A hill at (0.3, 0.6) of any height; each case asked for is a case of the box."""
+
+    def hill(x):
+        assert np.isfinite(x).all()
+        return scale * (1.0 - (x[:, 0] - 1.3) ** 2 - (x[:, 1] - 1.6) ** 2 - 0.5 * (x[:, 0] - 1.3) * (x[:, 1] - 1.6))
+
+    found = bounds(hill, [1.0, 1.0], [1.5, 1.5], [2.0, 2.0], [None, None], False)
+    assert found.high == approx(scale, rel=1e-3, abs=0.0)
