@@ -38,7 +38,7 @@ def run_all(jobs: Sequence[Job], processes: int = 1) -> "list[Document]":
     else:
         from concurrent.futures import ProcessPoolExecutor
 
-        with ProcessPoolExecutor(processes) as pool:
+        with ProcessPoolExecutor(min(processes, len(jobs))) as pool:
             outcomes = list(pool.map(_attempt, jobs))
     mistakes = [mistake for _, wrong in outcomes for mistake in wrong]
     if mistakes:

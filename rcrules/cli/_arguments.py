@@ -137,7 +137,6 @@ def _color(command: argparse.ArgumentParser) -> None:
 
 
 def _positive(text: str) -> int:
-    number = int(text)
-    if number < 1:
-        raise argparse.ArgumentTypeError(f"expected a number of 1 or more, found {text}")
-    return number
+    if not text.isdecimal() or len(text) > 9 or int(text) < 1:
+        raise argparse.ArgumentTypeError(f"expected a whole number of 1 or more, found {text!r}")
+    return int(text)

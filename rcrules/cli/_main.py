@@ -1,6 +1,7 @@
 """From arguments to an exit code."""
 
 import gc
+import os
 import sys
 from collections.abc import Sequence
 from typing import Final
@@ -14,6 +15,7 @@ INTERRUPTED: Final = 130
 
 def main(arguments: Sequence[str] | None = None) -> int:
     """Run one command; everything but reports goes to standard error."""
+    _open_streams()
     chosen = parser().parse_args(arguments)
     from rcrules.errors import UserMistake  # help is shown without it
 
@@ -36,6 +38,13 @@ def main(arguments: Sequence[str] | None = None) -> int:
         gc.freeze()  # what is left goes with the process: looking through it for cycles on the way out is slow
         gc.enable()
     return found
+
+
+def _open_streams() -> None:
+    """Where the caller has closed a standard stream, nothing goes out and nothing comes in."""
+    for name, mode in (("stdin", "r"), ("stdout", "w"), ("stderr", "w")):
+        if getattr(sys, name) is None:
+            setattr(sys, name, open(os.devnull, mode, encoding="utf-8"))  # noqa: SIM115 - open to the end of the process
 
 
 def _shown(text: str) -> str:

@@ -4,6 +4,7 @@ import os
 import re
 import shutil
 import sys
+from collections.abc import Sequence
 from dataclasses import dataclass
 from pathlib import Path
 
@@ -52,14 +53,32 @@ def write(document: Document, target: Target, *, verbose: bool, color: bool) -> 
     text = target.report.render(
         document, verbose=verbose, color=color and shown, width=terminal_width() if shown else None
     )
-    if target.path is None:
+    path = _path(document, target)
+    if path is None:
         to_stdout(text)
         return
-    path = Path(target.path.replace("{board}", _file_name(str(document.board["name"]))))
     try:
         path.write_bytes(text.encode("utf-8", "backslashreplace"))
     except OSError as error:
-        raise _mistake(f"cannot write the report: {error.strerror}", place=str(path)) from error
+        do = "name a file in a folder that is there and may be written"
+        raise _mistake(f"cannot write the report: {error.strerror}", place=str(path), do=do) from error
+
+
+def check_paths(documents: Sequence[Document], asked: Sequence[Target], inputs: Sequence[str]) -> None:
+    """Raise UserMistake where a report would overwrite another one or an input."""
+    taken = {Path(name).resolve(): "is an input" for name in inputs}
+    for path in (path for item in documents for target in asked if (path := _path(item, target)) is not None):
+        if path.resolve() in taken:
+            do = "give each report a file of its own; {board} in it stands for the board's name"
+            raise _mistake(f"the file {taken[path.resolve()]}", place=str(path), do=do)
+        taken[path.resolve()] = "would hold two reports"
+
+
+def _path(document: Document, target: Target) -> Path | None:
+    """Where a report goes; None for standard output."""
+    if target.path is None:
+        return None
+    return Path(target.path.replace("{board}", _file_name(str(document.board["name"]))))
 
 
 def saved(name: str) -> Document:
@@ -85,7 +104,15 @@ def to_stdout(text: str) -> None:
         sys.stdout.write(text.encode(encoding, "backslashreplace").decode(encoding))
         sys.stdout.flush()
     except BrokenPipeError:
-        os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
+        _silence()
+    except OSError as error:
+        _silence()
+        raise _mistake(f"cannot write the report: {error.strerror}", place="standard output") from error
+
+
+def _silence() -> None:
+    """Let what is still buffered go nowhere, or it would fail once more at the end."""
+    os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
 
 
 def terminal_width() -> int | None:

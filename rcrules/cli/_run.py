@@ -78,6 +78,8 @@ def _documents(chosen: argparse.Namespace, *, with_rules: bool) -> "list[Documen
     projects = chosen.project or [None]
     if len(projects) > 1 and chosen.inputs:
         raise _usage("inputs and several --project", do="give each board its inputs in its project file")
+    if len(set(projects)) < len(projects):
+        raise _usage("one project file is named twice", do="name each --project once")
     if chosen.inputs.count("-") > 1:
         raise _usage("standard input is named twice", do="name - once; give the other inputs as files")
     jobs = [
@@ -96,8 +98,10 @@ def _targets(reports: list[str], *, quiet: bool, boards: int) -> "list[Target]":
 
 
 def _write(documents: "list[Document]", asked: "list[Target]", chosen: argparse.Namespace) -> None:
-    from rcrules.cli._output import wants_color, write
+    from rcrules.cli._output import check_paths, wants_color, write
 
+    named = vars(chosen)
+    check_paths(documents, asked, [name for key in ("inputs", "project", "rules") for name in named.get(key, ())])
     for document in documents:
         for target in asked:
             write(document, target, verbose=chosen.verbose, color=wants_color(chosen.color))

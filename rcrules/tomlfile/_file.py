@@ -71,7 +71,7 @@ def read(path: pathlib.Path, name: str) -> TomlFile:
         with path.open("rb") as stream:
             raw = stream.read(4 * MAX_CHARACTERS + 1)
     except OSError as error:
-        raise _refused(name, f"cannot be read: {error.strerror or error}") from error
+        raise _refused(name, f"cannot be read: {error.strerror or error}", do="check the path") from error
     try:
         return load(name, raw.decode("utf-8-sig"))
     except UnicodeDecodeError as error:
