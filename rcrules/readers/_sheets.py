@@ -5,11 +5,14 @@ import zipfile
 from collections.abc import Iterator, Mapping
 from dataclasses import dataclass
 from io import BytesIO
+from itertools import islice
+from math import isfinite
 from typing import IO, TYPE_CHECKING, Final
 
 from rcrules.readers._export import Source
 from rcrules.readers._mistakes import refusal, shorten
-from rcrules.readers._table import MAX_CELL, MAX_COLUMNS, Row
+from rcrules.readers._table import MAX_CELL, MAX_CELLS, MAX_COLUMNS, Row
+from rcrules.readers._xml import BoundedStream
 
 if TYPE_CHECKING:
     from lxml import etree
@@ -17,7 +20,9 @@ if TYPE_CHECKING:
 MAX_ENTRIES: Final = 1000
 MAX_UNPACKED: Final = 64 * 1024 * 1024
 """Bytes of all entries together, as declared; the ZIP reader never yields more than it declares."""
-MAX_ROWS: Final = 200_000
+MAX_ROWS: Final = 100_000
+MAX_STRINGS: Final = 200_000
+"""Texts that cells share."""
 _CATALOGUE: Final = "xl/workbook.xml"
 _ADDRESS: Final = re.compile(r"([A-Z]{1,3})(\d{1,7})")
 _RELATION: Final = "{http://schemas.openxmlformats.org/officeDocument/2006/relationships}id"
@@ -73,8 +78,9 @@ def _elements(source: Source, stream: IO[bytes], tag: str) -> "Iterator[etree._E
     """Every element of a local name, let go after use. Raises UserMistake."""
     from lxml import etree
 
+    bounded = BoundedStream(source, stream)
     context = etree.iterparse(
-        stream,
+        bounded,
         events=("end",),
         tag=f"{{*}}{tag}",
         resolve_entities=False,
@@ -90,6 +96,7 @@ def _elements(source: Source, stream: IO[bytes], tag: str) -> "Iterator[etree._E
             element.clear()
             while element.getprevious() is not None:
                 del element.getparent()[0]
+            bounded.marks = 0
     except etree.XMLSyntaxError as error:
         raise _broken(source, str(error)) from error
 
@@ -105,7 +112,10 @@ def _strings(source: Source, archive: zipfile.ZipFile) -> list[str]:
     if path not in archive.namelist():
         return []
     with archive.open(path) as stream:
-        return [_text(item) for item in _elements(source, stream, "si")]
+        found = [_text(item) for item in islice(_elements(source, stream, "si"), MAX_STRINGS + 1)]
+    if len(found) > MAX_STRINGS:
+        raise _broken(source, f"more than {MAX_STRINGS} texts")
+    return found
 
 
 def _catalogue(source: Source, archive: zipfile.ZipFile) -> list[tuple[str, str]]:
@@ -132,7 +142,7 @@ def _entry(target: str) -> str:
 def _sheet(source: Source, archive: zipfile.ZipFile, name: str, path: str, strings: list[str]) -> Sheet:
     rows: list[Row] = []
     failed: list[tuple[int, int]] = []
-    line = 0
+    line = count = 0
     with archive.open(path) as stream:
         for element in _elements(source, stream, "row"):
             number = element.get("r", "")
@@ -141,8 +151,9 @@ def _sheet(source: Source, archive: zipfile.ZipFile, name: str, path: str, strin
             failed.extend((line, column) for column in bad)
             if any(cells.values()):
                 rows.append(_row(line, cells))
-            if len(rows) > MAX_ROWS:
-                raise _broken(source, f"more than {MAX_ROWS} rows in sheet {name!r}")
+            count += max(cells, default=1)
+            if count > MAX_CELLS or len(rows) > MAX_ROWS:
+                raise _broken(source, f"more than {MAX_ROWS} rows or {MAX_CELLS} cells in sheet {name!r}")
     return Sheet(name=name, rows=tuple(rows), failed=tuple(failed))
 
 
@@ -197,4 +208,6 @@ def _number(text: str) -> str:
         number = float(text)
     except ValueError:
         return text
-    return str(int(number)) if number == int(number) and abs(number) < 1e15 and "." not in text else repr(number)
+    if not isfinite(number):
+        return text
+    return str(int(number)) if abs(number) < 1e15 and number == int(number) and "." not in text else repr(number)

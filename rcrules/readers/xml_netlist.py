@@ -10,13 +10,12 @@ from rcrules.readers._component import Component, Entry, LibraryPart
 from rcrules.readers._export import Export, Reader, Source
 from rcrules.readers._mistakes import refusal, shorten
 from rcrules.readers._netlist import Netlist
-from rcrules.readers._xml import doctype_refusal, refuse_doctype, root_name
+from rcrules.readers._xml import BoundedStream, doctype_refusal, refuse_doctype, root_name
 
 if TYPE_CHECKING:
     from lxml.etree import _Element
 
 NAME: Final = "xml-netlist"
-MAX_MARKS: Final = 1_500_000
 _TAGS: Final = ("{*}title_block", "{*}comp", "{*}libpart", "{*}net")
 
 
@@ -41,7 +40,7 @@ def _elements(source: Source, data: bytes, skipped: int) -> Iterator[_Element]:
     """Each element of interest when it is complete; cleared after use, with all that stood before it."""
     from lxml import etree
 
-    stream = _Bounded(source, data, skipped)
+    stream = BoundedStream(source, BytesIO(data), skipped + 1)
     context = etree.iterparse(
         stream,
         events=("end",),
@@ -64,31 +63,6 @@ def _elements(source: Source, data: bytes, skipped: int) -> Iterator[_Element]:
         raise _broken(source, error, skipped) from error
     if root is not None and root.getroottree().docinfo.doctype:
         raise doctype_refusal(source, None)
-
-
-class _Bounded(BytesIO):
-    """Bytes that are refused where too much stands between two elements of interest: a parser keeps all of that."""
-
-    def __init__(self, source: Source, data: bytes, skipped: int) -> None:
-        super().__init__(data)
-        self._source, self._line = source, skipped + 1
-        self.marks = 0
-        """Elements and attributes read since the last element of interest."""
-
-    def read(self, size: int | None = -1) -> bytes:
-        data = super().read(size)
-        self._line += data.count(b"\n")
-        self.marks += data.count(b"<") + data.count(b"=")
-        if self.marks > MAX_MARKS:
-            raise refusal(
-                self._source.name,
-                "too much inside one component or net, or outside of any",
-                line=self._line,
-                found=f"more than {MAX_MARKS} elements and attributes",
-                expected="the netlist of one board",
-                do="check that this is the file you mean; export the netlist again",
-            )
-        return data
 
 
 def _let_go(element: _Element) -> None:

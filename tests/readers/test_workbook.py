@@ -159,3 +159,20 @@ def test_another_archive_is_named():
     with zipfile.ZipFile(stream, "w") as archive:
         archive.writestr("readme.txt", "x")
     assert "ZIP" in refusal(stream.getvalue())
+
+
+def test_a_workbook_that_unpacks_to_more_than_any_bom_is_refused(monkeypatch: pytest.MonkeyPatch) -> None:
+    head = [["Ref", "Value"], ["R1", "10k"]]
+    monkeypatch.setattr("rcrules.readers._sheets.MAX_STRINGS", 3)
+    assert "more than 3 texts" in refusal(workbook(("BOM", sheet(head)), strings="<si><t>a</t></si>" * 4))
+    monkeypatch.setattr("rcrules.readers._sheets.MAX_CELLS", 5)
+    assert "or 5 cells in sheet 'BOM'" in refusal(workbook(("BOM", sheet([*head, ['<c r="C9"/>', "C1"]]))))
+    monkeypatch.setattr("rcrules.readers._xml.MAX_MARKS", 1000)
+    junk = sheet(head).replace("<sheetData>", "<sheetData>" + "<a/>" * 1000)
+    assert "too much inside one component, net or row" in refusal(workbook(("BOM", junk)))
+
+
+def test_numbers_that_are_none_are_texts() -> None:
+    rows = [["Ref", "Value"], ["R1", "<c><v>1e999</v></c>"], ["R2", "<c><v>nan</v></c>"]]
+    parts = export(workbook(("BOM", sheet(rows)))).parts
+    assert [part.value.text for part in parts if part.value] == ["1e999", "nan"]
