@@ -89,13 +89,17 @@ def _step(scene: Scene, contacts: Switched, *, up: bool) -> Transient:
 
 
 def mover(scene: Scene) -> str:
-    """The nearest driven net that feeds the joint, through resistors if any does; else the nearest supply."""
-    for kind in ("driven", "supply"):
-        names = [name for name in scene.circuit.held if _kind(scene, name) == kind]
-        for arms in (scene.circuit.of("resistor"), scene.circuit.arms, scene.circuit.links()):
-            found = [(steps, name) for name in names if (steps := _steps(scene, name, arms)) is not None]
-            if found:
-                return min(found)[1]
+    """The nearest driven net that feeds the joint, through resistors if any does; else the nearest supply.
+
+    Where all that feeds it is behind diodes, the nearest one there.
+    """
+    for ways in ((scene.circuit.of("resistor"), scene.circuit.arms), (scene.circuit.links(),)):
+        for kind in ("driven", "supply"):
+            names = [name for name in scene.circuit.held if _kind(scene, name) == kind]
+            for arms in ways:
+                found = [(steps, name) for name in names if (steps := _steps(scene, name, arms)) is not None]
+                if found:
+                    return min(found)[1]
     raise Unmeasurable(f"nothing that could step feeds {scene.joint}")
 
 

@@ -175,3 +175,14 @@ def test_diodes_do_not_let_a_measure_count_in_parts_of_an_unknown_swing():
     """
     board = bench("R1 1k, C1 100n, D1 1N4148, J1 IN, U1 QX7301", nets, SUPPLY + EXACT)
     assert refusal(board, "N", "settling_time", band=0.01).ask == '[net."IN"] swing = "…"'
+
+
+def test_a_step_comes_through_a_resistor_where_one_feeds_the_node():
+    """The supply behind 10 kΩ steps, not the driver behind the diode."""
+    facts = SUPPLY + DIODE.replace("D1", "D2") + '[net."TRST"]\nswing = "0 V .. 5 V"\n'
+    board = reset(more="TRST: D2.1 J1.1", pins="D2.2", diode="D1 1N4148, D2 1N4148, J1 DEBUG", project=facts)
+    problem = board.pose("NRST", "delay", event="step-up", to="1 V")
+    waves = problem.structure.waveforms
+    names = problem.names.terminals[problem.structure.shape.free :]
+    moved = [name for name, wave in zip(names, waves, strict=True) if wave.points[-1][1] != wave.before]
+    assert moved == ["+3V3"]
