@@ -61,6 +61,11 @@ class Finding:
     detail: Json = field(default_factory=dict)
     """Derivation data: ``worst`` = list of {parameter, value, unit, relative, why}, most influential first;
     ``deciding`` = {parameter, text, flips_at, unit} of an undecided finding; ``never`` = the level is not reached."""
+    baseline: str | None = None
+    """Against the saved document of a comparison: ``new`` (fails now, did not), ``unchanged``, ``moved``; None = not
+    compared."""
+    waiver: int | None = None
+    """Index into Document.waivers, of a waived finding."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -80,8 +85,12 @@ class Document:
     """``{"about": "R12", "text": "no tolerance given, 5 % assumed", "ask": "[part.\\"R12\\"] tolerance = …"}``."""
     coverage: Json
     waivers: list[Json]
+    """As written, with ``state`` (``used``, ``lapsed``, ``expired``, ``unused``) and what was ``told`` about it."""
     problems: list[Json]
     """Remarks about inputs: ``{"place": {...}, "text": …}``; the place is empty where it is none of an input."""
+    comparison: Json | None = None
+    """Against a saved document: ``{board, tool, share, networks: {added, removed}, changes: [{about, what, was, now}],
+    findings: [{change, rule, net, parts, was, now, causes, finding}]}``."""
     schema: int = 1
     settled: bool = field(default=False, init=False, compare=False, repr=False)
     """Whether it is as it reads after saving; a changed copy is not. No key of the JSON."""

@@ -8,7 +8,10 @@ from rcrules.errors import UserMistake
 from rcrules.findings import dumps, loads, settled
 from tests.reports._sample import DOCUMENT, finding
 
-KEYS = "rcrules tool board inputs conditions parts held packs networks findings assumptions coverage waivers problems"
+KEYS = (
+    "rcrules tool board inputs conditions parts held packs networks findings assumptions coverage waivers problems "
+    "comparison"
+)
 
 
 def test_what_is_saved_reads_back_the_same() -> None:
