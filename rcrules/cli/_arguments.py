@@ -4,7 +4,7 @@ import argparse
 from typing import Final
 
 from rcrules import __version__
-from rcrules.cli import _run
+from rcrules.cli import _compare, _run
 
 _DESCRIPTION: Final = (
     "Finds the RC networks of a board, works out what each does in the worst case, and holds it against rules."
@@ -16,6 +16,7 @@ _EXIT: Final = (
 _SUMMARIES: Final = {
     "check": "hold every RC network of a board against the rules, and report what fails",
     "networks": "show what was found on a board: held nets, RC networks, roles, time constants; no rules",
+    "compare": "two saved findings documents: what broke, what mended, what moved and why",
     "render": "show a saved findings document again, as any report; needs no board",
     "rules": "list the packs and rules there are, or check rule files for mistakes",
     "demo": "copy the demo board to a folder, check it, show the report",
@@ -29,6 +30,7 @@ def parser() -> argparse.ArgumentParser:
     commands = whole.add_subparsers(title="commands", required=True, metavar="COMMAND")
     _check(_command(commands, "check", _run.check))
     _networks(_command(commands, "networks", _run.networks))
+    _compare_documents(_command(commands, "compare", _compare.compare))
     _render(_command(commands, "render", _run.render))
     _rules(_command(commands, "rules", _run.rules))
     _demo(_command(commands, "demo", _run.demo))
@@ -55,6 +57,31 @@ def _check(command: argparse.ArgumentParser) -> None:
         metavar="PACK|FILE",
         help="rules to apply (repeatable; else the project's; else the packs that need no project facts, as warnings)",
     )
+    _fail_options(command)
+    command.add_argument(
+        "--against",
+        metavar="SAVED",
+        help="compare with a document saved before (--report json=SAVED): only what is new counts for the exit code; "
+        "{board} in it: the board's name",
+    )
+    _moved(command)
+    _output_options(command)
+
+
+def _networks(command: argparse.ArgumentParser) -> None:
+    _board_options(command)
+    _output_options(command)
+
+
+def _compare_documents(command: argparse.ArgumentParser) -> None:
+    command.add_argument("old", metavar="OLD", help="what check wrote with --report json=OLD")
+    command.add_argument("new", metavar="NEW", help="the same of the newer board; - reads standard input")
+    _fail_options(command)
+    _moved(command)
+    _output_options(command)
+
+
+def _fail_options(command: argparse.ArgumentParser) -> None:
     command.add_argument(
         "--fail-on",
         choices=("error", "warning", "note", "never"),
@@ -64,12 +91,15 @@ def _check(command: argparse.ArgumentParser) -> None:
     command.add_argument(
         "--fail-on-undecided", action="store_true", help="undecided findings of that level count as well"
     )
-    _output_options(command)
 
 
-def _networks(command: argparse.ArgumentParser) -> None:
-    _board_options(command)
-    _output_options(command)
+def _moved(command: argparse.ArgumentParser) -> None:
+    command.add_argument(
+        "--moved",
+        default="5 %",
+        metavar="SHARE",
+        help="numbers that moved by more than this share are told (default: 5 %%)",
+    )
 
 
 def _render(command: argparse.ArgumentParser) -> None:

@@ -78,7 +78,12 @@ def _path(document: Document, target: Target) -> Path | None:
     """Where a report goes; None for standard output."""
     if target.path is None:
         return None
-    return Path(target.path.replace("{board}", _file_name(str(document.board["name"]))))
+    return board_path(target.path, document)
+
+
+def board_path(path: str, document: Document) -> Path:
+    """The path with the board's name in place of ``{board}``."""
+    return Path(path.replace("{board}", _file_name(str(document.board["name"]))))
 
 
 def saved(name: str) -> Document:

@@ -11,19 +11,38 @@ if TYPE_CHECKING:
 
 def check(chosen: argparse.Namespace) -> int:
     """Findings of every board; 1 when one counts."""
-    asked = _targets(chosen.report, quiet=chosen.quiet, boards=len(chosen.project))
-    documents = _documents(chosen, with_rules=True)
-    _write(documents, asked, chosen)
+    asked = targets_of(chosen.report, quiet=chosen.quiet, boards=len(chosen.project))
+    documents = _against(_documents(chosen, with_rules=True), chosen)
+    write_all(documents, asked, chosen)
+    return exit_code(documents, chosen)
+
+
+def exit_code(documents: "list[Document]", chosen: argparse.Namespace) -> int:
+    """1 when a finding counts, with a word on why."""
     counted = sum(_counted(document, chosen.fail_on, chosen.fail_on_undecided) for document in documents)
     if counted and not chosen.quiet:
         print(_exit_hint(counted, chosen), file=sys.stderr)
     return int(counted > 0)
 
 
+def _against(documents: "list[Document]", chosen: argparse.Namespace) -> "list[Document]":
+    """Each document compared with the one saved of its board, where asked."""
+    if chosen.against is None:
+        return documents
+    from rcrules.cli._compare import share
+    from rcrules.cli._output import board_path, saved
+    from rcrules.comparison import compared
+
+    moved = share(chosen.moved)
+    if len(documents) > 1 and "{board}" not in chosen.against:
+        raise _usage("several boards, one saved document", do="name it by board: --against 'saved/{board}.json'")
+    return [compared(saved(str(board_path(chosen.against, item))), item, moved) for item in documents]
+
+
 def networks(chosen: argparse.Namespace) -> int:
     """What was found on every board."""
-    asked = _targets(chosen.report, quiet=chosen.quiet, boards=len(chosen.project))
-    _write(_documents(chosen, with_rules=False), asked, chosen)
+    asked = targets_of(chosen.report, quiet=chosen.quiet, boards=len(chosen.project))
+    write_all(_documents(chosen, with_rules=False), asked, chosen)
     return 0
 
 
@@ -31,8 +50,8 @@ def render(chosen: argparse.Namespace) -> int:
     """A saved document as any report; what it tells of is no failure of the command."""
     from rcrules.cli._output import saved
 
-    asked = _targets(chosen.report, quiet=chosen.quiet, boards=1)
-    _write([saved(chosen.saved)], asked, chosen)
+    asked = targets_of(chosen.report, quiet=chosen.quiet, boards=1)
+    write_all([saved(chosen.saved)], asked, chosen)
     return 0
 
 
@@ -90,14 +109,14 @@ def _documents(chosen: argparse.Namespace, *, with_rules: bool) -> "list[Documen
         return run_all(jobs, processes=chosen.jobs)
 
 
-def _targets(reports: list[str], *, quiet: bool, boards: int) -> "list[Target]":
+def targets_of(reports: list[str], *, quiet: bool, boards: int) -> "list[Target]":
     """Reports asked for, checked before any work is done; text on standard output when none is."""
     from rcrules.cli._output import targets
 
     return targets(reports or ([] if quiet else ["text"]), boards=boards)
 
 
-def _write(documents: "list[Document]", asked: "list[Target]", chosen: argparse.Namespace) -> None:
+def write_all(documents: "list[Document]", asked: "list[Target]", chosen: argparse.Namespace) -> None:
     from rcrules.cli._output import check_paths, wants_color, write
 
     named = vars(chosen)
@@ -108,19 +127,23 @@ def _write(documents: "list[Document]", asked: "list[Target]", chosen: argparse.
 
 
 def _counted(document: "Document", fail_on: str, undecided: bool) -> int:
-    """Findings at or above the level that fail (or are undecided, where that counts)."""
+    """Findings at or above the level that fail (or are undecided, where that counts); of a comparison only new ones."""
     from rcrules.vocabulary import SEVERITIES
 
     if fail_on == "never":
         return 0
     levels = SEVERITIES[: SEVERITIES.index(fail_on) + 1]
     outcomes = ("fails", "undecided") if undecided else ("fails",)
-    return sum(item.outcome in outcomes and item.level in levels for item in document.findings)
+    return sum(
+        item.outcome in outcomes and item.level in levels and item.baseline in (None, "new")
+        for item in document.findings
+    )
 
 
 def _exit_hint(counted: int, chosen: argparse.Namespace) -> str:
     """Why the exit code is 1."""
-    findings = "1 finding" if counted == 1 else f"{counted} findings"
+    new = "new " if getattr(chosen, "against", None) or hasattr(chosen, "old") else ""
+    findings = f"1 {new}finding" if counted == 1 else f"{counted} {new}findings"
     options = f"--fail-on {chosen.fail_on}" + (" --fail-on-undecided" if chosen.fail_on_undecided else "")
     return f"exit code 1: {findings} at or above the fail level ({options})"
 

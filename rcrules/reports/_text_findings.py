@@ -33,10 +33,15 @@ def findings_lines(document: Document, *, verbose: bool) -> list[Line]:
     """All blocks, each after an empty line."""
     texts = part_texts(document)
     lines: list[Line] = []
-    for group in groups(item for item in document.findings if item.outcome == "fails"):
+    for group in groups(item for item in document.findings if item.outcome == "fails" and (verbose or is_news(item))):
         lines += [(), *_block(group, texts, limit=len(group) if verbose else _SHOWN_ALIKE)]
     lines += [*undecided_lines(document, texts, verbose=verbose), *_cautions(document, verbose=verbose)]
     return lines + holding_lines(document, texts) if verbose else lines
+
+
+def is_news(finding: Finding) -> bool:
+    """Whether it is told in full: against a saved document only what is new."""
+    return finding.baseline in (None, "new")
 
 
 def groups(findings: Iterable[Finding]) -> list[list[Finding]]:

@@ -4,14 +4,14 @@ Names come from strangers: letters that mean something in Markdown or HTML, and 
 person, are escaped.
 """
 
-import re
 from collections.abc import Iterable, Iterator, Mapping
 from typing import Final
 
 from rcrules.findings import Document, Finding
-from rcrules.reports._lines import safe
+from rcrules.reports._markdown_comparison import comparison_items
+from rcrules.reports._markdown_words import code, plain
 from rcrules.reports._report import Report
-from rcrules.reports._text_findings import case_text, groups
+from rcrules.reports._text_findings import case_text, groups, is_news
 from rcrules.reports._text_summary import coverage_texts, found_text, share_text, totals
 from rcrules.reports._text_undecided import entries
 from rcrules.reports._words import (
@@ -29,11 +29,6 @@ from rcrules.reports._words import (
 )
 from rcrules.vocabulary import ROLES
 
-_SPECIAL: Final = re.compile(r"[\\`*_\[\]#|~$]|^[-+=]")
-_NUMBERED: Final = re.compile(r"(\d+)([.)])")
-"""At the start of a text, where it would begin a list."""
-_ENTITIES: Final = {"&": "&amp;", "<": "&lt;", ">": "&gt;", "@": "&#64;", ":": "&#58;", ".": "&#46;"}
-_ENTITY: Final = re.compile(r"[&<>@]|:(?=\S)|(?<=www)\.", re.IGNORECASE)
 _SHOWN_LINES: Final = 8
 _SHOWN_SUBJECTS: Final = 4
 
@@ -48,14 +43,15 @@ def render(
     """Headings and lists; with verbose every line that would decide something and every remark."""
     texts = part_texts(document)
     blocks = [
-        [f"# {_plain(str(document.board['name']))}", ""],
-        [_plain(_summary(document)), ""],
+        [f"# {plain(str(document.board['name']))}", ""],
+        [plain(_summary(document)), ""],
+        comparison_items(document, texts),
         _list("Networks", () if document.packs else _networks(document)),
         _list("Fails", _failing(document, texts)),
         _list("Undecided", _undecided(document, texts, verbose=verbose)),
         _list("Caution", _cautions(document)),
-        _list("Remarks", (_plain(str(row["text"])) for row in document.problems) if verbose else ()),
-        [_plain(text) + "  " for text in coverage_texts(document)],
+        _list("Remarks", (plain(str(row["text"])) for row in document.problems) if verbose else ()),
+        [plain(text) + "  " for text in coverage_texts(document)],
     ]
     return "\n".join(line for block in blocks for line in block).rstrip() + "\n"
 
@@ -73,7 +69,7 @@ def _networks(document: Document) -> Iterator[str]:
     for role in dict.fromkeys((*ROLES, *sorted(node["role"] for node in nodes))):
         nets = sorted(str(node["net"]) for node in nodes if node["role"] == role)
         if nets:
-            yield f"{role} {len(nets)}: {_plain(', '.join(nets))}"
+            yield f"{role} {len(nets)}: {plain(', '.join(nets))}"
 
 
 def _list(heading: str, items: Iterable[str]) -> list[str]:
@@ -84,15 +80,15 @@ def _list(heading: str, items: Iterable[str]) -> list[str]:
 
 def _failing(document: Document, texts: Mapping[str, str]) -> Iterator[str]:
     """One item a group: level, rule and subject; below it the numbers, the worst case and why."""
-    for group in groups(item for item in document.findings if item.outcome == "fails"):
+    for group in groups(item for item in document.findings if item.outcome == "fails" and is_news(item)):
         first = group[0]
         below = [_numbers(first)]
         if first.detail.get("worst"):
-            below.append(_plain(f"{extreme(first)} at {case_text(first.detail['worst'])}"))
+            below.append(plain(f"{extreme(first)} at {case_text(first.detail['worst'])}"))
         if len(group) > 1:
-            below.append(_plain(f"the same on {subjects_text(group[1:], texts, limit=12)}"))
-        below.append(_plain(first.why or first.title))
-        yield "\n  - ".join([f"**{first.level}** {_code(first.rule)} at {_plain(_subject(first, texts))}", *below])
+            below.append(plain(f"the same on {subjects_text(group[1:], texts, limit=12)}"))
+        below.append(plain(first.why or first.title))
+        yield "\n  - ".join([f"**{first.level}** {code(first.rule)} at {plain(_subject(first, texts))}", *below])
 
 
 def _subject(finding: Finding, texts: Mapping[str, str]) -> str:
@@ -109,9 +105,9 @@ def _numbers(finding: Finding) -> str:
     if measured is not None:
         percent = in_percent(finding)
         words[0] += f": {bounds(measured.low, measured.nominal, measured.high, measured.unit, percent=percent)}"
-    told = ", ".join(_plain(text) for text in (*words, limit_text(finding)) if text)
+    told = ", ".join(plain(text) for text in (*words, limit_text(finding)) if text)
     method = f" ({measured.method})" if measured is not None else ""
-    return told + (f", **{_plain(margin)}**" if margin else "") + _plain(method)
+    return told + (f", **{plain(margin)}**" if margin else "") + plain(method)
 
 
 def _undecided(document: Document, texts: Mapping[str, str], *, verbose: bool) -> Iterator[str]:
@@ -120,13 +116,13 @@ def _undecided(document: Document, texts: Mapping[str, str], *, verbose: bool) -
     shown = found if verbose else found[:_SHOWN_LINES]
     for entry in shown:
         number = count(len(entry.findings), "finding")
-        subjects = _plain(names_text(_distinct(entry.findings, texts), limit=_SHOWN_SUBJECTS))
+        subjects = plain(names_text(_distinct(entry.findings, texts), limit=_SHOWN_SUBJECTS))
         if not entry.asks[0]:
             yield f"{number} that no line of the project file would decide: {subjects}"
         elif len(entry.asks) == 1:
-            yield f"{_code(entry.asks[0])} decides {number}: {subjects}"
+            yield f"{code(entry.asks[0])} decides {number}: {subjects}"
         else:
-            yield f"{_code(entry.asks[0])} and {len(entry.asks) - 1} like it decide {number}: {subjects}"
+            yield f"{code(entry.asks[0])} and {len(entry.asks) - 1} like it decide {number}: {subjects}"
     if len(found) > len(shown):
         yield f"{len(found) - len(shown)} more"
 
@@ -140,23 +136,7 @@ def _cautions(document: Document) -> Iterator[str]:
     shown = {item.pack for item in document.findings if item.outcome in ("fails", "undecided")}
     for pack in document.packs:
         if pack["name"] in shown and pack["caution"]:
-            yield f"{_code(pack['name'])} {_plain(pack['caution'])}"
-
-
-def _plain(text: str) -> str:
-    """The text as it is, whatever Markdown or HTML would make of it."""
-    escaped = _SPECIAL.sub(lambda found: "\\" + found[0], safe(text))
-    if found := _NUMBERED.match(escaped):
-        escaped = f"{found[1]}\\{escaped[found.start(2) :]}"
-    return _ENTITY.sub(lambda found: _ENTITIES[found[0]], escaped)
-
-
-def _code(text: str) -> str:
-    """A span of code, fenced by more backquotes than it holds."""
-    own = safe(text)
-    fence = "`" * (max((len(run) for run in re.findall("`+", own)), default=0) + 1)
-    pad = " " if own.startswith("`") or own.endswith("`") else ""
-    return f"{fence}{pad}{own}{pad}{fence}"
+            yield f"{code(pack['name'])} {plain(pack['caution'])}"
 
 
 REPORT = Report(name="markdown", suffix=".md", summary="For a comment on a pull request.", render=render)
