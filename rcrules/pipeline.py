@@ -15,6 +15,7 @@ if TYPE_CHECKING:
     from rcrules.project import Project
     from rcrules.readers import Export
     from rcrules.rulebook import Rule
+    from rcrules.waivers import Waiver
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -61,23 +62,33 @@ def run(job: Job) -> "Document":
     from rcrules.networks import recognise
     from rcrules.parts import rate
 
-    project, exports, rules = _read(job)
+    project, exports, rules, waivers = _read(job)
     design = build(exports)
     board = recognise(design, rate(design, project), project)
     try:
-        return _document(job, project, board, rules)
+        found = _document(job, project, board, rules)
     finally:
         let_go()  # reports need the document alone
+    return _waived(found, waivers)
 
 
-def _read(job: Job) -> "tuple[Project, list[Export], list[Rule]]":
-    """Project, exports and rules; what is wrong with any of them is told at once."""
+def project_of(job: Job) -> "Project":
+    """The project file of a job alone. Raises UserMistake with all its mistakes."""
+    from rcrules.project import Project, read
+
+    path = _project_path(job)
+    return read(path, str(path)) if path else Project()
+
+
+def _read(job: Job) -> "tuple[Project, list[Export], list[Rule], list[Waiver]]":
+    """Project, exports, rules and waivers; what is wrong with any of them is told at once."""
     from rcrules.project import Project, read
 
     path, problems = _project_path(job), Problems()
     project = read(path, str(path), problems) if path else Project()
     exports: list[Export] = []
     rules: list[Rule] = []
+    waivers: list[Waiver] = []
     for name in job.inputs or _listed(project, problems):
         with problems.collecting():
             exports.append(_export(name, project, listed=not job.inputs))
@@ -85,8 +96,10 @@ def _read(job: Job) -> "tuple[Project, list[Export], list[Rule]]":
     if job.with_rules:
         with problems.collecting():
             rules = _rules(job, project)
+        with problems.collecting():
+            waivers = _waivers(project)
     problems.stop_if_any()
-    return project, exports, rules
+    return project, exports, rules, waivers
 
 
 def _project_path(job: Job) -> Path | None:
@@ -152,6 +165,25 @@ def _rules(job: Job, project: "Project") -> "list[Rule]":
         return load(job.rules or project.rules, folder, project, asked_by=asked_by)
     ready = load([pack.name for pack in packs() if not pack.needs_facts], project=project)
     return [replace(rule, level="warning") if rule.level == "error" else rule for rule in ready]
+
+
+def _waivers(project: "Project") -> "list[Waiver]":
+    """Those of the file that the project names."""
+    if project.waivers is None:
+        return []
+    from rcrules.waivers import read
+
+    path = _folder(project) / project.waivers
+    return read(path, str(path))
+
+
+def _waived(found: "Document", waivers: "list[Waiver]") -> "Document":
+    """The document with what the waivers cover."""
+    if not waivers:
+        return found
+    from rcrules.waivers import today, waived
+
+    return waived(found, waivers, today())
 
 
 def _document(job: Job, project: "Project", board: "Board", rules: "list[Rule]") -> "Document":

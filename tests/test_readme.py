@@ -66,8 +66,8 @@ def test_the_readme_shows_commands() -> None:
 @pytest.mark.parametrize("command", commands())
 def test_each_command_runs(command: str, reader_folder: Path, capfd: pytest.CaptureFixture[str]) -> None:
     """Each shown command gives a report and no complaint about usage or inputs."""
-    if " render " in command:
-        main(["check", "--report", "json=findings.json"])
+    if shown := re.findall(r"(?<= )(?<!json=)\w+\.json", command):
+        main(["check", *(f"--report=json={name}" for name in dict.fromkeys(shown))])
         capfd.readouterr()
     status = main(shlex.split(command)[1:])
     out, err = capfd.readouterr()

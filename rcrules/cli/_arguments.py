@@ -65,6 +65,11 @@ def _check(command: argparse.ArgumentParser) -> None:
         "{board} in it: the board's name",
     )
     _moved(command)
+    command.add_argument(
+        "--waive",
+        action="store_true",
+        help="write an entry for each finding that counts to the waivers file, to be completed with reason and name",
+    )
     _output_options(command)
 
 

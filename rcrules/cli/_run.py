@@ -6,7 +6,8 @@ from typing import TYPE_CHECKING
 
 if TYPE_CHECKING:
     from rcrules.cli._output import Target
-    from rcrules.findings import Document
+    from rcrules.findings import Document, Finding
+    from rcrules.pipeline import Job
 
 
 def check(chosen: argparse.Namespace) -> int:
@@ -14,12 +15,16 @@ def check(chosen: argparse.Namespace) -> int:
     asked = targets_of(chosen.report, quiet=chosen.quiet, boards=len(chosen.project))
     documents = _against(_documents(chosen, with_rules=True), chosen)
     write_all(documents, asked, chosen)
+    if chosen.waive:
+        from rcrules.cli._waive import waive
+
+        waive(documents, chosen)
     return exit_code(documents, chosen)
 
 
 def exit_code(documents: "list[Document]", chosen: argparse.Namespace) -> int:
     """1 when a finding counts, with a word on why."""
-    counted = sum(_counted(document, chosen.fail_on, chosen.fail_on_undecided) for document in documents)
+    counted = sum(len(counted_of(document, chosen)) for document in documents)
     if counted and not chosen.quiet:
         print(_exit_hint(counted, chosen), file=sys.stderr)
     return int(counted > 0)
@@ -91,7 +96,17 @@ def demo(chosen: argparse.Namespace) -> int:
 def _documents(chosen: argparse.Namespace, *, with_rules: bool) -> "list[Document]":
     """One document per board, in the order given."""
     from rcrules.cli._progress import progress
-    from rcrules.pipeline import Job, run_all
+    from rcrules.pipeline import run_all
+
+    jobs = jobs_of(chosen, with_rules=with_rules)
+    boards = "1 board" if len(jobs) == 1 else f"{len(jobs)} boards"
+    with progress(f"working on {boards}", quiet=chosen.quiet):
+        return run_all(jobs, processes=chosen.jobs)
+
+
+def jobs_of(chosen: argparse.Namespace, *, with_rules: bool) -> "list[Job]":
+    """One job per board. Raises UserMistake where inputs and boards do not go together."""
+    from rcrules.pipeline import Job
 
     rules = tuple(chosen.rules) if with_rules else ()
     projects = chosen.project or [None]
@@ -101,12 +116,9 @@ def _documents(chosen: argparse.Namespace, *, with_rules: bool) -> "list[Documen
         raise _usage("one project file is named twice", do="name each --project once")
     if chosen.inputs.count("-") > 1:
         raise _usage("standard input is named twice", do="name - once; give the other inputs as files")
-    jobs = [
+    return [
         Job(inputs=tuple(chosen.inputs), project=project, rules=rules, with_rules=with_rules) for project in projects
     ]
-    boards = "1 board" if len(jobs) == 1 else f"{len(jobs)} boards"
-    with progress(f"working on {boards}", quiet=chosen.quiet):
-        return run_all(jobs, processes=chosen.jobs)
 
 
 def targets_of(reports: list[str], *, quiet: bool, boards: int) -> "list[Target]":
@@ -126,18 +138,19 @@ def write_all(documents: "list[Document]", asked: "list[Target]", chosen: argpar
             write(document, target, verbose=chosen.verbose, color=wants_color(chosen.color))
 
 
-def _counted(document: "Document", fail_on: str, undecided: bool) -> int:
+def counted_of(document: "Document", chosen: argparse.Namespace) -> "list[Finding]":
     """Findings at or above the level that fail (or are undecided, where that counts); of a comparison only new ones."""
     from rcrules.vocabulary import SEVERITIES
 
-    if fail_on == "never":
-        return 0
-    levels = SEVERITIES[: SEVERITIES.index(fail_on) + 1]
-    outcomes = ("fails", "undecided") if undecided else ("fails",)
-    return sum(
-        item.outcome in outcomes and item.level in levels and item.baseline in (None, "new")
+    if chosen.fail_on == "never":
+        return []
+    levels = SEVERITIES[: SEVERITIES.index(chosen.fail_on) + 1]
+    outcomes = ("fails", "undecided") if chosen.fail_on_undecided else ("fails",)
+    return [
+        item
         for item in document.findings
-    )
+        if item.outcome in outcomes and item.level in levels and item.baseline in (None, "new")
+    ]
 
 
 def _exit_hint(counted: int, chosen: argparse.Namespace) -> str:

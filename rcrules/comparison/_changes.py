@@ -13,7 +13,7 @@ _DIGITS: Final = 6
 def changes(old: Document, new: Document) -> list[Json]:
     """``{about, what, was, now}`` in the order parts, held nets, conditions; ``was`` or ``now`` None = not there."""
     return [
-        *_parts(_by(old.parts, "ref"), _by(new.parts, "ref"), _connections(old), _connections(new)),
+        *_parts(_by(old.parts, "ref"), _by(new.parts, "ref"), connections(old), connections(new)),
         *_held(_by(old.held, "net"), _by(new.held, "net")),
         *_conditions(old.conditions, new.conditions),
     ]
@@ -34,7 +34,7 @@ def _parts(
     for ref in sorted({*old, *new}):
         before, after = old.get(ref), new.get(ref)
         if before is None or after is None:
-            was_there, is_there = (None if row is None else _value(row) for row in (before, after))
+            was_there, is_there = (None if row is None else value(row) for row in (before, after))
             yield from _change(ref, "part", was_there, is_there)
             continue
         yield from _part(ref, before, after)
@@ -45,12 +45,12 @@ def _parts(
 def _part(ref: str, old: Json, new: Json) -> Iterator[Json]:
     """A changed value tells its spread with it; a spread alone is told alone."""
     yield from _change(ref, "fitted", _yes(old["fitted"]), _yes(new["fitted"]))
-    if _value(old) != _value(new):
-        yield from _change(ref, "value", _value(old), _value(new))
+    if value(old) != value(new):
+        yield from _change(ref, "value", value(old), value(new))
     else:
-        yield from _change(ref, "spread", _spread(old), _spread(new))
+        yield from _change(ref, "spread", spread(old), spread(new))
     for key, unit in (("rated_voltage", "V"), ("rated_power", "W")):
-        yield from _change(ref, key.replace("_", " "), _number(old[key], unit), _number(new[key], unit))
+        yield from _change(ref, key.replace("_", " "), number(old[key], unit), number(new[key], unit))
     yield from _change(ref, "dielectric", old["dielectric"], new["dielectric"])
 
 
@@ -58,25 +58,26 @@ def _yes(fitted: bool) -> str:
     return "fitted" if fitted else "not fitted"
 
 
-def _value(row: Json) -> str:
+def value(row: Json) -> str:
     """The number, else the text of the schematic."""
     if row["value"] is None or row["unit"] is None:
         return f'"{row["text"]}"'
     return show(row["value"], row["unit"], _DIGITS)
 
 
-def _number(value: float | None, unit: str) -> str | None:
+def number(value: float | None, unit: str) -> str | None:
+    """None stays None."""
     return None if value is None else show(value, unit, _DIGITS)
 
 
-def _spread(row: Json) -> str | None:
+def spread(row: Json) -> str | None:
     """From lowest to highest."""
     if row["low"] is None or row["high"] is None:
         return None
     return " .. ".join(dict.fromkeys(show(row[end], row["unit"], _DIGITS) for end in ("low", "high")))
 
 
-def _connections(document: Document) -> dict[str, str]:
+def connections(document: Document) -> dict[str, str]:
     """Reference -> the nets at its ends, of the parts in networks."""
     branches = [branch for network in document.networks for branch in network["branches"]]
     return {branch["part"]: " to ".join(branch["nets"]) for branch in branches}
@@ -84,18 +85,18 @@ def _connections(document: Document) -> dict[str, str]:
 
 def _held(old: Mapping[str, Json], new: Mapping[str, Json]) -> Iterator[Json]:
     for net in sorted({*old, *new}):
-        yield from _change(net, "held net", _source(old.get(net)), _source(new.get(net)))
+        yield from _change(net, "held net", source(old.get(net)), source(new.get(net)))
 
 
-def _source(row: Json | None) -> str | None:
+def source(row: Json | None) -> str | None:
     """``supply 3.2 V .. 3.4 V``."""
     if row is None:
         return None
-    spread = _spread(row)
-    return f"{row['kind']} {spread}" if spread else str(row["kind"])
+    ends = spread(row)
+    return f"{row['kind']} {ends}" if ends else str(row["kind"])
 
 
 def _conditions(old: Mapping[str, Any], new: Mapping[str, Any]) -> Iterator[Json]:
     for name in sorted({*old, *new}):
-        was, now = (_spread(rows[name]) if name in rows else None for rows in (old, new))
+        was, now = (spread(rows[name]) if name in rows else None for rows in (old, new))
         yield from _change(name, "condition", was, now)

@@ -7,9 +7,9 @@ from dataclasses import replace
 from typing import Final
 
 from rcrules.comparison._changes import changes
+from rcrules.comparison._circumstances import around, limit
 from rcrules.comparison._match import Pair, pairs
 from rcrules.findings import Document, Finding, Json, Quantity, settled
-from rcrules.quantities import show
 from rcrules.vocabulary import SEVERITIES
 
 MOVED: Final = 0.05
@@ -132,7 +132,7 @@ def _causes(
     """``C7 10 µF → 4.7 µF``: what changed of the rule, of the network's parts and sources, of the conditions."""
     if was is not None and now is not None:
         yield from _rule(was, now)
-    names = {*_around(was, old), *_around(now, new)}
+    names = {*around(was, old), *around(now, new)}
     yield from (cause(row) for row in about if row["what"] == "condition" or row["about"] in names)
     if was is not None and old.tool != new.tool:
         yield f"rcrules {old.tool} → {new.tool}"
@@ -151,39 +151,11 @@ def cause(row: Json) -> str:
 def _rule(was: Finding, now: Finding) -> Iterator[str]:
     if was.level != now.level:
         yield f"level {was.level} → {now.level}"
-    before, after = _limit(was), _limit(now)
+    before, after = limit(was), limit(now)
     if before != after:
         yield f"limit {before} → {after}"
     if was.options != now.options:
         yield "options of the measure"
-
-
-def _limit(item: Finding) -> str:
-    if item.limit is None:
-        return "none"
-    limit = item.limit
-    texts = [
-        f"{word} {show(limit[key], limit['unit'], 6)}"
-        for key, word in (("at_least", "at least"), ("at_most", "at most"))
-        if key in limit
-    ]
-    return " and ".join(texts) or str(limit["text"])
-
-
-def _around(item: Finding | None, document: Document) -> set[str]:
-    """References and held nets of the networks at which a finding stands."""
-    if item is None:
-        return set()
-    own = [network for network in document.networks if _holds(network, item)]
-    branches = [branch for network in own for branch in network["branches"]]
-    nets = {net for branch in branches for net in branch["nets"]}
-    return {*item.parts, *(branch["part"] for branch in branches), *nets, *((item.net,) if item.net else ())}
-
-
-def _holds(network: Json, item: Finding) -> bool:
-    return any(node["net"] == item.net for node in network["nodes"]) or any(
-        branch["part"] in item.parts for branch in network["branches"]
-    )
 
 
 def _networks(old: Document, new: Document) -> Json:

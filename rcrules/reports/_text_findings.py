@@ -117,7 +117,7 @@ def _why(finding: Finding) -> Line:
 
 def _cautions(document: Document, *, verbose: bool) -> list[Line]:
     """What packs whose findings are shown warn of, each once."""
-    shown = {item.pack for item in document.findings if verbose or item.outcome in ("fails", "undecided")}
+    shown = {item.pack for item in document.findings if verbose or item.outcome in ("fails", "undecided", "waived")}
     told = [pack for pack in document.packs if pack["name"] in shown and pack["caution"]]
     lines: list[Line] = [((f"caution {pack['name']}", "name"), "   ", pack["caution"]) for pack in told]
     return [(), *lines] if lines else []

@@ -14,6 +14,7 @@ from rcrules.reports._report import Report
 from rcrules.reports._text_findings import case_text, groups, is_news
 from rcrules.reports._text_summary import coverage_texts, found_text, share_text, totals
 from rcrules.reports._text_undecided import entries
+from rcrules.reports._text_waivers import waiver_subject, waiver_told
 from rcrules.reports._words import (
     asked,
     bounds,
@@ -49,6 +50,7 @@ def render(
         _list("Networks", () if document.packs else _networks(document)),
         _list("Fails", _failing(document, texts)),
         _list("Undecided", _undecided(document, texts, verbose=verbose)),
+        _list("Waivers that no longer count", _waivers(document)),
         _list("Caution", _cautions(document)),
         _list("Remarks", (plain(str(row["text"])) for row in document.problems) if verbose else ()),
         [plain(text) + "  " for text in coverage_texts(document)],
@@ -127,13 +129,20 @@ def _undecided(document: Document, texts: Mapping[str, str], *, verbose: bool) -
         yield f"{len(found) - len(shown)} more"
 
 
+def _waivers(document: Document) -> Iterator[str]:
+    """Lapsed and expired ones, with what changed."""
+    for row in document.waivers:
+        if row["state"] in ("lapsed", "expired"):
+            yield f"{row['state']}: {code(row['rule'])} at {plain(waiver_subject(row))}: {plain(waiver_told(row))}"
+
+
 def _distinct(findings: list[Finding], texts: Mapping[str, str]) -> list[str]:
     return list(dict.fromkeys(item.net or parts_text(item.parts, texts) for item in findings))
 
 
 def _cautions(document: Document) -> Iterator[str]:
     """What packs whose findings are shown warn of."""
-    shown = {item.pack for item in document.findings if item.outcome in ("fails", "undecided")}
+    shown = {item.pack for item in document.findings if item.outcome in ("fails", "undecided", "waived")}
     for pack in document.packs:
         if pack["name"] in shown and pack["caution"]:
             yield f"{code(pack['name'])} {plain(pack['caution'])}"

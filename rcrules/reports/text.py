@@ -6,6 +6,7 @@ from rcrules.reports._text_comparison import comparison_lines
 from rcrules.reports._text_findings import findings_lines
 from rcrules.reports._text_networks import networks_lines
 from rcrules.reports._text_summary import header_lines, summary_lines
+from rcrules.reports._text_waivers import waiver_lines
 from rcrules.reports._words import part_texts
 from rcrules.reports._wrap import laid_out
 
@@ -14,6 +15,7 @@ def render(document: Document, *, verbose: bool = False, color: bool = False, wi
     """The findings; the networks where no rules were applied."""
     body = findings_lines(document, verbose=verbose) if document.packs else networks_lines(document, verbose=verbose)
     against = comparison_lines(document, part_texts(document), verbose=verbose)
+    body += waiver_lines(document, verbose=verbose)
     lines = [*header_lines(document, verbose=verbose), *against, *body, *summary_lines(document, verbose=verbose)]
     return laid_out(lines, color=color, width=width)
 
