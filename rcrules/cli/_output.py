@@ -32,8 +32,9 @@ def targets(asked: list[str], *, boards: int) -> list[Target]:
         )
     if boards > 1 and any(target.path is not None and "{board}" not in target.path for target in found):
         raise _mistake("several boards, one report file", do="name the file by board: --report 'json={board}.json'")
-    if boards > 1 and any(target.report.name == "json" for target in bare):
-        raise _mistake("several boards, one JSON text", do="name files by board: --report 'json={board}.json'")
+    if boards > 1 and any(target.report.for_programs for target in bare):
+        do = "name files by board: --report 'json={board}.json'"
+        raise _mistake("several boards, one report for programs on standard output", do=do)
     return found
 
 
@@ -55,7 +56,7 @@ def write(document: Document, target: Target, *, verbose: bool, color: bool) -> 
     )
     path = _path(document, target)
     if path is None:
-        to_stdout(text)
+        to_stdout(text, as_is=target.report.for_programs)
         return
     try:
         path.write_bytes(text.encode("utf-8", "backslashreplace"))
@@ -102,11 +103,18 @@ def saved(name: str) -> Document:
         ) from error
 
 
-def to_stdout(text: str) -> None:
-    """Write a text; what the terminal cannot show is escaped; a reader that has gone away is no mistake."""
+def to_stdout(text: str, *, as_is: bool = False) -> None:
+    """Write a text; a reader that has gone away is no mistake.
+
+    What the terminal cannot show is escaped; ``as_is`` = UTF-8, whatever the terminal shows.
+    """
     encoding = sys.stdout.encoding or "utf-8"
     try:
-        sys.stdout.write(text.encode(encoding, "backslashreplace").decode(encoding))
+        if as_is:
+            sys.stdout.flush()
+            sys.stdout.buffer.write(text.encode("utf-8", "backslashreplace"))
+        else:
+            sys.stdout.write(text.encode(encoding, "backslashreplace").decode(encoding))
         sys.stdout.flush()
     except BrokenPipeError:
         _silence()

@@ -18,7 +18,7 @@ from rcrules.findings._shape import damage
 
 SCHEMA: Final = 1
 _UNSEEN: Final = re.compile(
-    "[\x7f-\x9f\u00ad\u061c\u180e\u200b-\u200f\u2028-\u202e\u2060-\u206f\ufeff\ufff9-\ufffb\ud800-\udfff\U000e0000-\U000e007f]"
+    "[\x7f-\x9f\u00ad\u061c\u180e\u200b-\u200f\u2028-\u202e\u2060-\u206f\ufeff\ufff9-\ufffb\ufffe\uffff\ud800-\udfff\U000e0000-\U000e007f]"
 )
 """What could steer a terminal or hide in a text; written as an escape."""
 _FIELDS: Final = tuple(item.name for item in fields(Document) if item.init)

@@ -27,3 +27,5 @@ class Report:
     summary: str
     """One plain sentence."""
     render: Render | Callable[..., str]
+    for_programs: bool = False
+    """Always UTF-8, also on standard output, which holds one such text and no more."""

@@ -16,5 +16,9 @@ def render(  # one form only
 
 
 REPORT = Report(
-    name="json", suffix=".json", summary="The findings document, for other programs and for later.", render=render
+    name="json",
+    suffix=".json",
+    summary="The findings document, for other programs and for later.",
+    render=render,
+    for_programs=True,
 )

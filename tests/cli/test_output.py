@@ -5,9 +5,14 @@ from pathlib import Path
 
 import pytest
 
+import rcrules
 from rcrules.cli import main
 from rcrules.findings import loads
+from rcrules.reports import reports
 from tests.cli._board import NETLIST
+
+OWN = {"PATH": "", "PYTHONPATH": str(Path(rcrules.__file__).parent.parent)}
+"""An environment with nothing but these sources."""
 
 
 def test_a_dash_reads_standard_input(board: Path) -> None:
@@ -68,13 +73,25 @@ def test_the_document_tells_nothing_of_the_machine(board: Path, capsys: pytest.C
     assert capsys.readouterr().out.replace(" ", "") == inside.replace(" ", "")
 
 
-def test_the_same_inputs_give_the_same_bytes(board: Path) -> None:
-    command = [sys.executable, "-m", "rcrules", "check", "--report", "json"]
-    seeds = [{"PYTHONHASHSEED": seed, "PATH": ""} for seed in ("1", "2")]
-    first, second = (
-        subprocess.run(command, cwd=board, env=env, capture_output=True, check=True).stdout for env in seeds
-    )
-    assert first == second
+def test_an_unchanged_board_gives_the_same_bytes_in_every_report(board: Path) -> None:
+    asked = [f"--report={name}=out{report.suffix}" for name, report in reports().items()]
+    command = [sys.executable, "-m", "rcrules", "check", *asked]
+    found = []
+    for seed in ("1", "2"):
+        subprocess.run(command, cwd=board, env={**OWN, "PYTHONHASHSEED": seed}, capture_output=True, check=True)
+        found.append({report.suffix: (board / f"out{report.suffix}").read_bytes() for report in reports().values()})
+    assert len(found[0]) == len(reports())
+    assert found[0] == found[1]
+
+
+@pytest.mark.parametrize("name", [name for name, report in reports().items() if report.for_programs])
+def test_reports_for_programs_are_utf_8_whatever_the_terminal_shows(name: str, board: Path) -> None:
+    project = board / "rcrules.toml"
+    project.write_text(project.read_text(encoding="utf-8").replace("small board", "µ board"), encoding="utf-8")
+    command = [sys.executable, "-m", "rcrules", "check", f"--report={name}"]
+    env = {**OWN, "PYTHONIOENCODING": "latin-1"}
+    done = subprocess.run(command, cwd=board, env=env, capture_output=True, check=True)
+    assert "µ" in done.stdout.decode("utf-8")
 
 
 def test_a_reader_that_goes_away_is_no_mistake(board: Path) -> None:

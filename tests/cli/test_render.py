@@ -6,8 +6,9 @@ from pathlib import Path
 import pytest
 
 from rcrules.cli import main
+from rcrules.reports import reports
 
-FORMS = [["--report", "text"], ["--report", "text", "--verbose"], ["--report", "json"], []]
+FORMS = [["--report", "text", "--verbose"], *(["--report", name] for name in reports()), []]
 
 
 @pytest.fixture

@@ -61,6 +61,68 @@ def test_a_saved_document_is_valid(validator: jsonschema.Draft202012Validator) -
     assert [f"{list(error.path)}: {error.message}" for error in validator.iter_errors(SAVED)] == []
 
 
+COMPARED: Any = {
+    "board": "harbour gauge",
+    "tool": "0.1.0",
+    "share": 0.1,
+    "findings": [
+        {
+            "change": "broke",
+            "rule": "reset-lifts-late-enough",
+            "net": "NRST",
+            "parts": ["R12", "C7"],
+            "was": {key: SAVED["findings"][6][key] for key in ("outcome", "level", "measured", "limit")},
+            "now": None,
+            "causes": ["C7 10 µF → 4.7 µF"],
+            "finding": 2,
+        }
+    ],
+    "networks": {"added": ["AIN2"], "removed": []},
+    "changes": [{"about": "C7", "what": "value", "was": "10 µF", "now": "4.7 µF"}],
+}
+
+
+def keys_met(value: Any, schema: Any, whole: Any, met: dict[int, set[str]]) -> None:
+    """Note, for each object of the schema, which of its keys the value has."""
+    if "$ref" in schema:
+        schema = whole["$defs"][schema["$ref"].rpartition("/")[2]]
+    for choice in schema.get("anyOf", ()):
+        keys_met(value, choice, whole, met)
+    if isinstance(value, dict) and "properties" in schema:
+        met.setdefault(id(schema), set()).update(set(value) & set(schema["properties"]))
+        for key in set(value) & set(schema["properties"]):
+            keys_met(value[key], schema["properties"][key], whole, met)
+    elif isinstance(value, dict) and isinstance(schema.get("additionalProperties"), dict):
+        for item in value.values():
+            keys_met(item, schema["additionalProperties"], whole, met)
+    elif isinstance(value, list) and "items" in schema:
+        for item in value:
+            keys_met(item, schema["items"], whole, met)
+
+
+def objects(schema: Any) -> Iterator[Any]:
+    """Every object with named keys of the schema."""
+    if isinstance(schema, dict):
+        if isinstance(schema.get("properties"), dict) and "type" in schema:
+            yield schema
+        for item in schema.values():
+            yield from objects(item)
+    elif isinstance(schema, list):
+        for item in schema:
+            yield from objects(item)
+
+
+def test_every_key_of_the_schema_occurs(validator: jsonschema.Draft202012Validator) -> None:
+    """The schema names nothing that no document holds."""
+    document = {**SAVED, "comparison": COMPARED}
+    assert [error.message for error in validator.iter_errors(document)] == []
+    schema = json.loads(schema_text())
+    met: dict[int, set[str]] = {}
+    keys_met(document, schema, schema, met)
+    missing = [set(item["properties"]) - met.get(id(item), set()) for item in objects(schema)]
+    assert [names for names in missing if names] == []
+
+
 def test_what_a_run_writes_is_valid(
     tmp_path: Folder, monkeypatch: pytest.MonkeyPatch, validator: jsonschema.Draft202012Validator
 ) -> None:
