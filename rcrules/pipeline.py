@@ -30,6 +30,8 @@ class Job:
     """Packs and rule files; empty = the project's, else the packs that need no facts."""
     with_rules: bool = True
     """False: only what was found."""
+    proposals: bool = False
+    """True: also what changes of parts would mend what fails."""
 
 
 def run_all(jobs: Sequence[Job], processes: int = 1) -> "list[Document]":
@@ -221,10 +223,15 @@ def _judged(
 
     asked = job.rules or project.rules
     checked = check(board, project, rules, also=also, sure_only=not asked)
+    findings = checked.findings
+    if job.proposals:
+        from rcrules.proposals import propose
+
+        findings = propose(board, project, rules, findings, sure_only=not asked)
     return replace(
         found,
         packs=packs(rules, checked.met),
-        findings=checked.findings,
+        findings=findings,
         assumptions=checked.assumptions,
         problems=[
             *found.problems,

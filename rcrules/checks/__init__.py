@@ -2,5 +2,6 @@
 
 from rcrules.checks._check import Checked, check
 from rcrules.checks._packs import astray, packs, unclear, unmet
+from rcrules.checks._subjects import Subject
 
-__all__ = ["Checked", "astray", "check", "packs", "unclear", "unmet"]
+__all__ = ["Checked", "Subject", "astray", "check", "packs", "unclear", "unmet"]

@@ -1,13 +1,13 @@
 """The whole check: subjects of every rule, posed, solved together, judged, told."""
 
 from collections import Counter
-from collections.abc import Iterable, Mapping, Sequence
+from collections.abc import Callable, Iterable, Mapping, Sequence
 from dataclasses import dataclass
 
 from rcrules.checks._finding import Judged, finding
 from rcrules.checks._resolve import Case, resolve
 from rcrules.checks._select import selected
-from rcrules.checks._subjects import Subjects
+from rcrules.checks._subjects import Subject, Subjects
 from rcrules.checks._verdict import Verdict, decide
 from rcrules.design import natural
 from rcrules.events import Unmeasurable, pose
@@ -39,14 +39,16 @@ def check(
     *,
     also: Iterable[Parameter] = (),
     sure_only: bool = False,
+    only: Callable[[Subject], bool] | None = None,
 ) -> Checked:
     """Hold every rule against every subject that it selects.
 
     also: parameters of other quantities of the document, whose assumptions are listed as well.
+    only: which subjects to look at; None = all.
     sure_only: leave out subjects of which it is not known whether a rule meets them, instead of calling them undecided.
     """
     subjects = Subjects(board)
-    found = [case for rule in rules for case in _cases(rule, subjects, board, project)]
+    found = [case for rule in rules for case in _cases(rule, subjects, board, project, only)]
     cases = [case for case in found if case.sure or not sure_only]
     judged = _judge(cases, board, project)
     posed = (item.problem.parameters for item in judged if item.problem)
@@ -57,9 +59,12 @@ def check(
     return Checked(findings=sorted(findings, key=_order), assumptions=listed, met=met, unclear=unclear)
 
 
-def _cases(rule: Rule, subjects: Subjects, board: Board, project: Project) -> list[Case]:
+def _cases(
+    rule: Rule, subjects: Subjects, board: Board, project: Project, only: Callable[[Subject], bool] | None
+) -> list[Case]:
     """A case per subject that the rule meets, or may meet."""
-    chosen = [(item, selected(rule.selection, item, board)) for item in subjects.of(rule.held_against)]
+    looked_at = [item for item in subjects.of(rule.held_against) if only is None or only(item)]
+    chosen = [(item, selected(rule.selection, item, board)) for item in looked_at]
     return [resolve(rule, item, board, project, sure=met is True) for item, met in chosen if met is not False]
 
 

@@ -16,6 +16,7 @@ _EXIT: Final = (
 _SUMMARIES: Final = {
     "check": "hold every RC network of a board against the rules, and report what fails",
     "networks": "show what was found on a board: held nets, RC networks, roles, time constants; no rules",
+    "propose": "check, and find standard values that would make what fails hold",
     "compare": "two saved findings documents: what broke, what mended, what moved and why",
     "render": "show a saved findings document again, as any report; needs no board",
     "rules": "list the packs and rules there are, or check rule files for mistakes",
@@ -30,6 +31,7 @@ def parser() -> argparse.ArgumentParser:
     commands = whole.add_subparsers(title="commands", required=True, metavar="COMMAND")
     _check(_command(commands, "check", _run.check))
     _networks(_command(commands, "networks", _run.networks))
+    _check(_command(commands, "propose", _run.check))
     _compare_documents(_command(commands, "compare", _compare.compare))
     _render(_command(commands, "render", _run.render))
     _rules(_command(commands, "rules", _run.rules))
@@ -44,11 +46,12 @@ def _command(
     made = commands.add_parser(
         name, help=summary, description=f"{summary[0].upper()}{summary[1:]}.", epilog=_EXIT, allow_abbrev=False
     )
-    made.set_defaults(run=run)
+    made.set_defaults(run=run, command=name)
     return made
 
 
 def _check(command: argparse.ArgumentParser) -> None:
+    """Of check and of propose, which does the same and more."""
     _board_options(command)
     command.add_argument(
         "--rules",

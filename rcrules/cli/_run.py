@@ -117,7 +117,14 @@ def jobs_of(chosen: argparse.Namespace, *, with_rules: bool) -> "list[Job]":
     if chosen.inputs.count("-") > 1:
         raise _usage("standard input is named twice", do="name - once; give the other inputs as files")
     return [
-        Job(inputs=tuple(chosen.inputs), project=project, rules=rules, with_rules=with_rules) for project in projects
+        Job(
+            inputs=tuple(chosen.inputs),
+            project=project,
+            rules=rules,
+            with_rules=with_rules,
+            proposals=chosen.command == "propose",
+        )
+        for project in projects
     ]
 
 

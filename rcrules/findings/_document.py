@@ -66,6 +66,9 @@ class Finding:
     compared."""
     waiver: int | None = None
     """Index into Document.waivers, of a waived finding."""
+    proposals: Json | None = None
+    """Of a failing finding, where asked: ``{found: [{changes, needs, findings}], reason}`` with the changes as ``{ref,
+    what, was, now, source}``, the network's findings as they would be, and why nothing was found."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

@@ -4,6 +4,7 @@ from rcrules.parts._apart import apart
 from rcrules.parts._diodes import DiodeModel, diode_model
 from rcrules.parts._kinds import kind_of
 from rcrules.parts._model import Known, RatedPart, Share, Unknown
+from rcrules.parts._preferred import series
 from rcrules.parts._rate import rate
 from rcrules.parts._shares import ASSUMED_TEMPERATURE
 from rcrules.parts._spread import at_bias
@@ -23,4 +24,5 @@ __all__ = [
     "kind_of",
     "rate",
     "read_value",
+    "series",
 ]

@@ -10,6 +10,7 @@ from typing import Final
 from rcrules.findings import Document, Finding
 from rcrules.reports._markdown_comparison import comparison_items
 from rcrules.reports._markdown_words import code, plain
+from rcrules.reports._proposals import proposal_texts
 from rcrules.reports._report import Report
 from rcrules.reports._text_findings import case_text, groups, is_news
 from rcrules.reports._text_summary import coverage_texts, found_text, share_text, totals
@@ -89,6 +90,8 @@ def _failing(document: Document, texts: Mapping[str, str]) -> Iterator[str]:
             below.append(plain(f"{extreme(first)} at {case_text(first.detail['worst'])}"))
         if len(group) > 1:
             below.append(plain(f"the same on {subjects_text(group[1:], texts, limit=12)}"))
+        word = "would hold with " if first.proposals and first.proposals["found"] else ""
+        below += [plain(word + text) for text in proposal_texts(first)]
         below.append(plain(first.why or first.title))
         yield "\n  - ".join([f"**{first.level}** {code(first.rule)} at {plain(_subject(first, texts))}", *below])
 
