@@ -56,7 +56,8 @@ class Trials:
     def broken(self, findings: Sequence[Finding], mended: Sequence[Finding]) -> list[str]:
         """In words, findings that are worse than before, or were to be mended and do not hold: ``settles too high``."""
         wanted = {(item.rule, item.fingerprint) for item in mended}
-        return [f"{item.rule} {_how(item)}" for item in findings if self._worse(item, (item.rule, item.fingerprint) in wanted)]
+        worse = (item for item in findings if self._worse(item, (item.rule, item.fingerprint) in wanted))
+        return [f"{item.rule} {_how(item)}" for item in worse]
 
     def _worse(self, item: Finding, wanted: bool) -> bool:
         before = self.before.get((item.rule, item.fingerprint))

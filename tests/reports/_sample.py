@@ -106,10 +106,29 @@ def _voltage(ref: str, **changed: object) -> Finding:
     return finding(**{**fields, **changed})
 
 
+PROPOSALS = {
+    "found": [
+        {
+            "changes": [{"ref": "R12", "what": "value", "was": "10 kΩ", "now": "15 kΩ", "source": "on the BOM as R31"}],
+            "needs": ["R12: ±1 %"],
+            "findings": [
+                {
+                    "rule": "reset-lifts-late-enough",
+                    "net": "NRST",
+                    "parts": ["R12", "C7"],
+                    "outcome": "holds",
+                    "measured": {"low": 0.0328, "nominal": 0.0535, "high": 0.0745, "unit": "s"},
+                    "margin": 0.0028,
+                }
+            ],
+        }
+    ],
+    "reason": None,
+}
 FINDINGS = [
     _asking("AIN0", "U5.AIN0"),
     _asking("AIN1", "U5.AIN1"),
-    finding(),
+    finding(proposals=PROPOSALS),
     finding(
         rule="reset-lifts-soon-enough",
         level="warning",
