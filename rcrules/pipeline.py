@@ -1,6 +1,6 @@
 """The whole flow on one page: inputs and project in, one findings document out."""
 
-from collections.abc import Sequence
+from collections.abc import Callable, Iterator, Sequence
 from dataclasses import dataclass, replace
 from pathlib import Path
 from typing import TYPE_CHECKING
@@ -16,6 +16,8 @@ if TYPE_CHECKING:
     from rcrules.readers import Export
     from rcrules.rulebook import Rule
     from rcrules.waivers import Waiver
+
+    _Outcome = tuple[Document | None, Sequence[Mistake]]
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -34,22 +36,31 @@ class Job:
     """True: also what changes of parts would mend what fails."""
 
 
-def run_all(jobs: Sequence[Job], processes: int = 1) -> "list[Document]":
-    """The documents of several boards, in order; mistakes of all of them at once."""
-    if processes == 1 or len(jobs) == 1:
-        outcomes = [_attempt(job) for job in jobs]
-    else:
-        from concurrent.futures import ProcessPoolExecutor
-
-        with ProcessPoolExecutor(min(processes, len(jobs))) as pool:
-            outcomes = list(pool.map(_attempt, jobs))
+def run_all(jobs: Sequence[Job], processes: int = 1, done: Callable[[], None] | None = None) -> "list[Document]":
+    """The documents of several boards, in order; mistakes of all of them at once. ``done`` is called after each."""
+    outcomes = []
+    for outcome in _outcomes(jobs, processes):
+        outcomes.append(outcome)
+        if done is not None:
+            done()
     mistakes = [mistake for _, wrong in outcomes for mistake in wrong]
     if mistakes:
         raise UserMistake(*mistakes)
     return [document for document, _ in outcomes if document is not None]
 
 
-def _attempt(job: Job) -> "tuple[Document | None, Sequence[Mistake]]":
+def _outcomes(jobs: Sequence[Job], processes: int) -> "Iterator[_Outcome]":
+    """One after the other, or several at a time; in the order of the jobs."""
+    if processes == 1 or len(jobs) == 1:
+        yield from map(_attempt, jobs)
+        return
+    from concurrent.futures import ProcessPoolExecutor
+
+    with ProcessPoolExecutor(min(processes, len(jobs))) as pool:
+        yield from pool.map(_attempt, jobs)
+
+
+def _attempt(job: Job) -> "_Outcome":
     """The document of one board, or what is wrong with its inputs."""
     try:
         return run(job), ()

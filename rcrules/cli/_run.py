@@ -100,8 +100,8 @@ def _documents(chosen: argparse.Namespace, *, with_rules: bool) -> "list[Documen
 
     jobs = jobs_of(chosen, with_rules=with_rules)
     boards = "1 board" if len(jobs) == 1 else f"{len(jobs)} boards"
-    with progress(f"working on {boards}", quiet=chosen.quiet):
-        return run_all(jobs, processes=chosen.jobs)
+    with progress(f"working on {boards}", quiet=chosen.quiet, total=len(jobs)) as done:
+        return run_all(jobs, processes=chosen.jobs, done=done)
 
 
 def jobs_of(chosen: argparse.Namespace, *, with_rules: bool) -> "list[Job]":
@@ -143,6 +143,11 @@ def write_all(documents: "list[Document]", asked: "list[Target]", chosen: argpar
     for document in documents:
         for target in asked:
             write(document, target, verbose=chosen.verbose, color=wants_color(chosen.color))
+    if len(documents) > 1 and any(target.path is None and target.report.name == "text" for target in asked):
+        from rcrules.cli._output import terminal_width, to_stdout
+        from rcrules.reports import boards_lines, laid_out
+
+        to_stdout(laid_out(boards_lines(documents), color=wants_color(chosen.color), width=terminal_width()))
 
 
 def counted_of(document: "Document", chosen: argparse.Namespace) -> "list[Finding]":

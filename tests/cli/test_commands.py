@@ -37,6 +37,8 @@ def test_several_projects_give_one_document_each(board: Path, capsys: pytest.Cap
     assert main(["check", *projects, "--report", "text", "--report", "json={board}.json"]) == 0
     out = capsys.readouterr().out
     assert out.index("board one") < out.index("board two")
+    assert "boards   2, none of them with findings that fail" in out
+    assert re.search(r"board two +nothing fails, 1 hold", out)
     assert loads((board / "board-two.json").read_text(encoding="utf-8")).inputs[0]["file"] == "two/board.xml"
     assert main(["check", *projects, "--jobs", "2"]) == 0
     assert capsys.readouterr().out == out

@@ -36,6 +36,15 @@ def test_long_work_shows_a_sign_of_life(monkeypatch: pytest.MonkeyPatch) -> None
         assert wait_for(terminal, "working on 1 board")
 
 
+def test_of_several_boards_the_bar_counts_those_done(monkeypatch: pytest.MonkeyPatch) -> None:
+    terminal = watched(monkeypatch)
+    with progress("working on 3 boards", quiet=False, total=3, after_s=0.0) as done:
+        assert wait_for(terminal, "0/3")
+        done()
+        done()
+        assert wait_for(terminal, "2/3")
+
+
 def test_short_work_shows_nothing(monkeypatch: pytest.MonkeyPatch) -> None:
     terminal = watched(monkeypatch)
     with progress("working on 1 board", quiet=False, after_s=3600.0):
