@@ -10,7 +10,7 @@ from typing import Any, Final
 import pytest
 from hypothesis import given
 from hypothesis import strategies as st
-from lxml import etree
+from lxml import etree, html
 from markdown_it import MarkdownIt
 
 from rcrules.findings import Document
@@ -132,7 +132,17 @@ def of_text(text: str) -> Any:
     return text.count("\n")
 
 
+def of_html(text: str) -> Any:
+    """Elements, attributes and where links lead; one script, ours; nothing from elsewhere."""
+    found = list(html.fromstring(text).iter("*"))
+    assert sum(item.tag == "script" for item in found) == 1
+    assert all(value.startswith("#") for item in found for name, value in item.attrib.items() if name == "href")
+    assert not [name for item in found for name in item.attrib if name == "src" or name.startswith("on")]
+    return [(item.tag, sorted(item.attrib)) for item in found]
+
+
 READ: Final[dict[str, Callable[[str], Any]]] = {
+    "html": of_html,
     "json": of_json,
     "junit": of_xml,
     "markdown": of_markdown,

@@ -1,0 +1,82 @@
+"""The document as the parts of the page, put into the template."""
+
+import base64
+import hashlib
+from functools import cache
+from importlib.resources import files
+from typing import Any
+
+from jinja2 import Environment, FunctionLoader, StrictUndefined
+from markupsafe import Markup
+
+from rcrules.findings import Document
+from rcrules.reports._lines import safe
+from rcrules.reports._page._findings import Shown, shown
+from rcrules.reports._page._lists import assumptions, comparison, coverage, held, inputs, parts, remarks, rules, waivers
+from rcrules.reports._page._networks import articles, elsewhere
+from rcrules.reports._page._summary import facts, tiles
+from rcrules.reports._page._undecided import missing_facts
+from rcrules.reports._text_whereabouts import CLASSES
+
+
+def page(document: Document) -> str:
+    """The page, ending in a newline."""
+    script, found = _file("script.js"), shown(document)
+    digest = base64.b64encode(hashlib.sha256(script.encode()).digest()).decode()
+    text = (
+        _environment()
+        .get_template("page.html")
+        .render(
+            board=str(document.board["name"]),
+            tool=document.tool,
+            style=Markup(_file("style.css")),
+            script=Markup(script),
+            digest=Markup(digest),
+            **_sections(document, found),
+        )
+    )
+    return text.rstrip() + "\n"
+
+
+def _sections(document: Document, found: list[Shown]) -> dict[str, Any]:
+    return {
+        "tiles": tiles(document),
+        "facts": facts(document),
+        "cautions": [pack for pack in document.packs if pack["caution"]],
+        "findings": found,
+        "networks": articles(document, found),
+        "elsewhere": elsewhere(document, found),
+        "undecided": missing_facts(document, found),
+        "parts": parts(document),
+        "held": held(document),
+        "assumptions": assumptions(document),
+        "coverage": coverage(document),
+        "classes": list(CLASSES.values()),
+        "rules": rules(document),
+        "waivers": waivers(document),
+        "comparison": comparison(document),
+        "inputs": inputs(document),
+        "remarks": remarks(document),
+    }
+
+
+@cache
+def _environment() -> Environment:
+    """Every text is escaped, with control and invisible characters shown as escapes; a missing name is our mistake."""
+    return Environment(
+        loader=FunctionLoader(_file),
+        autoescape=True,
+        undefined=StrictUndefined,
+        finalize=_seen,
+        trim_blocks=True,
+        lstrip_blocks=True,
+    )
+
+
+def _seen(value: Any) -> Any:
+    return value if hasattr(value, "__html__") else safe(str(value))
+
+
+@cache
+def _file(name: str) -> str:
+    return (files("rcrules.reports._page") / name).read_text(encoding="utf-8")

@@ -1,0 +1,94 @@
+"""How a number comes about, as kept with its finding: the circuit as used, the steps by hand, who makes the spread."""
+
+import math
+from dataclasses import dataclass
+
+from rcrules.findings import Finding, Json
+from rcrules.reports._words import bounds, number
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Bar:
+    """One parameter of the spread."""
+
+    name: str
+    range: str
+    share: str
+    """In per cent; '' where it is not known."""
+    width: float
+    """Of the bar, in per cent of the widest."""
+    given: bool
+    origin: str
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Case:
+    """One case worked out: nominal, lowest or highest."""
+
+    name: str
+    value: str
+    by_hand: bool
+    """False: some number of it comes from the engine."""
+    off: list[str]
+    """Parameters off nominal."""
+    steps: list[Json]
+    """``{symbol, formula, put_in, text, note}``."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Working:
+    """All of it."""
+
+    summary: str
+    sources: list[Json]
+    voltages: list[Json]
+    modes: list[Json]
+    cases: list[Case]
+    bars: list[Bar]
+
+
+def working(finding: Finding) -> Working | None:
+    """None where the document keeps nothing of it."""
+    kept: Json | None = getattr(finding, "derivation", None)
+    if not kept:
+        return None
+    unit = finding.measured.unit if finding.measured else ""
+    return Working(
+        summary=kept["summary"],
+        sources=[{**row, "range": _range(row, "V")} for row in kept["sources"]],
+        voltages=kept["voltages"],
+        modes=[{**row, "tau": number(row["tau"], "s")} for row in kept["modes"]],
+        cases=[_case(row, unit) for row in kept["cases"]],
+        bars=_bars(kept["parameters"]),
+    )
+
+
+def _case(row: Json, unit: str) -> Case:
+    return Case(
+        name=row["case"], value=number(row["value"], unit), by_hand=row["by_hand"], off=row["off"], steps=row["steps"]
+    )
+
+
+def _range(row: Json, unit: str) -> str:
+    if row["nominal"] is None:
+        return "not known"
+    low, nominal, high = (math.nan if row[key] is None else float(row[key]) for key in ("low", "nominal", "high"))
+    return bounds(low, nominal, high, unit)
+
+
+def _bars(rows: list[Json]) -> list[Bar]:
+    """The most influential first; those without influence are left out."""
+    shares = [row["share"] if isinstance(row["share"], int | float) else math.nan for row in rows]
+    widest = max((share for share in shares if share > 0), default=1.0)
+    return [
+        Bar(
+            name=row["parameter"],
+            range=_range(row, row["unit"]),
+            share=f"{100 * share:.3g} %" if math.isfinite(share) else "",
+            width=round(100 * share / widest, 1) if math.isfinite(share) else 0.0,
+            given=bool(row["given"]),
+            origin=row["from"],
+        )
+        for row, share in zip(rows, shares, strict=True)
+        if share != 0
+    ]

@@ -1,0 +1,65 @@
+"use strict";
+(() => {
+  const texts = new Intl.Collator("en", { numeric: true });
+  const key = (row, column) => {
+    const cell = row.cells[column];
+    return cell.dataset.sort === undefined ? cell.textContent.trim() : Number(cell.dataset.sort);
+  };
+  const order = (a, b) => (typeof a === "number" && typeof b === "number" ? a - b : texts.compare(a, b));
+
+  const sort = (table, head) => {
+    const descending = head.getAttribute("aria-sort") === "ascending";
+    const rows = [...table.tBodies[0].rows].map((row) => [key(row, head.cellIndex), row]);
+    rows.sort((a, b) => (descending ? order(b[0], a[0]) : order(a[0], b[0])));
+    table.tBodies[0].append(...rows.map((pair) => pair[1]));
+    for (const other of head.parentElement.cells) other.removeAttribute("aria-sort");
+    head.setAttribute("aria-sort", descending ? "descending" : "ascending");
+  };
+
+  for (const table of document.querySelectorAll("table.sortable")) {
+    for (const head of table.tHead.rows[0].cells) {
+      const button = document.createElement("button");
+      button.type = "button";
+      button.textContent = head.textContent;
+      button.addEventListener("click", () => sort(table, head));
+      head.replaceChildren(button);
+    }
+  }
+
+  for (const form of document.querySelectorAll("form.filter")) {
+    const rows = [...document.getElementById(form.dataset.table).tBodies[0].rows];
+    const found = rows.map((row) => row.textContent.toLowerCase());
+    const filter = () => {
+      const words = form.elements.text.value.toLowerCase().split(/\s+/).filter(Boolean);
+      const chosen = ["outcome", "level"].filter((name) => form.elements[name] && form.elements[name].value);
+      let shown = 0;
+      rows.forEach((row, index) => {
+        const fits = words.every((word) => found[index].includes(word)) && chosen.every((name) => row.dataset[name] === form.elements[name].value);
+        row.hidden = !fits;
+        shown += fits ? 1 : 0;
+      });
+      form.querySelector("output").textContent = `${shown} of ${rows.length} shown`;
+    };
+    form.addEventListener("input", filter);
+    form.addEventListener("submit", (event) => event.preventDefault());
+    form.hidden = false;
+    filter();
+  }
+
+  const open = () => {
+    const target = document.getElementById(location.hash.slice(1));
+    for (let at = target; at; at = at.parentElement) if (at.tagName === "DETAILS") at.open = true;
+    if (target) target.scrollIntoView();
+  };
+  addEventListener("hashchange", open);
+  if (location.hash) open();
+
+  let closed = [];
+  addEventListener("beforeprint", () => {
+    closed = [...document.querySelectorAll("details:not([open])")];
+    for (const item of closed) item.open = true;
+  });
+  addEventListener("afterprint", () => {
+    for (const item of closed) item.open = false;
+  });
+})();
