@@ -143,7 +143,7 @@ def _output_options(command: argparse.ArgumentParser) -> None:
         action="append",
         default=[],
         metavar="FORMAT[=PATH]",
-        help="text (default), json, junit, markdown or sarif, on standard output or to a file (repeatable); {board} in "
+        help="text (default), html, json, junit, markdown or sarif, on standard output or to a file (repeatable); {board} in "
         "PATH: the board's name",
     )
     command.add_argument("--verbose", action="store_true", help="also list assumptions, evidence and what holds")

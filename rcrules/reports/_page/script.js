@@ -28,8 +28,9 @@
 
   for (const form of document.querySelectorAll("form.filter")) {
     const rows = [...document.getElementById(form.dataset.table).tBodies[0].rows];
-    const found = rows.map((row) => row.textContent.toLowerCase());
+    let found = null;
     const filter = () => {
+      found ??= rows.map((row) => row.textContent.toLowerCase());
       const words = form.elements.text.value.toLowerCase().split(/\s+/).filter(Boolean);
       const chosen = ["outcome", "level"].filter((name) => form.elements[name] && form.elements[name].value);
       let shown = 0;
@@ -43,7 +44,8 @@
     form.addEventListener("input", filter);
     form.addEventListener("submit", (event) => event.preventDefault());
     form.hidden = false;
-    filter();
+    form.querySelector("output").textContent = `${rows.length} of ${rows.length} shown`;
+    if (form.elements.text.value || form.elements.outcome?.value || form.elements.level?.value) filter();
   }
 
   const open = () => {
