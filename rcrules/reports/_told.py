@@ -3,6 +3,7 @@
 from collections.abc import Iterator, Mapping
 
 from rcrules.findings import Document, Finding
+from rcrules.reports._proposals import proposal_texts
 from rcrules.reports._text_findings import case_text
 from rcrules.reports._words import asked, bounds, extreme, in_percent, limit_text, margin_text, parts_text
 
@@ -34,6 +35,8 @@ def paragraphs(finding: Finding) -> Iterator[str]:
             yield f"one of these lines in rcrules.toml would decide it: {'; '.join(finding.ask)}"
     elif finding.outcome != "holds" and finding.detail.get("worst"):
         yield f"{extreme(finding)} at {case_text(finding.detail['worst'])}"
+    word = "would hold with " if finding.proposals and finding.proposals["found"] else ""
+    yield from (word + text for text in proposal_texts(finding))
     yield f"why: {finding.why or finding.title}" + (f" (source: {finding.source})" if finding.source else "")
 
 

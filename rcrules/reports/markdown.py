@@ -125,9 +125,10 @@ def _undecided(document: Document, texts: Mapping[str, str], *, verbose: bool) -
         if not entry.asks[0]:
             yield f"{number} that no line of the project file would decide: {subjects}"
         elif len(entry.asks) == 1:
-            yield f"{code(entry.asks[0])} decides {number}: {subjects}"
+            yield f"{code(entry.asks[0])} in {code('rcrules.toml')} decides {number}: {subjects}"
         else:
-            yield f"{code(entry.asks[0])} and {len(entry.asks) - 1} like it decide {number}: {subjects}"
+            others = f"{len(entry.asks) - 1} like it in {code('rcrules.toml')}"
+            yield f"{code(entry.asks[0])} and {others} decide {number}: {subjects}"
     if len(found) > len(shown):
         yield f"{len(found) - len(shown)} more"
 

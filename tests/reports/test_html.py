@@ -157,6 +157,25 @@ def test_a_finding_about_a_part_in_no_network_is_told_apart() -> None:
     assert "reset-lifts-late-enough" in words(found)
 
 
+def test_what_changed_against_a_saved_document_is_told_only_where_something_was_compared(page: Any) -> None:
+    assert not page.xpath("//section[@id='changes']")
+    verdict = {"outcome": "fails", "level": "error", "measured": None, "limit": {"at_least": 0.03, "unit": "s"}}
+    row = {"change": "broke", "rule": "r", "net": "NRST", "parts": ["C7"], "was": None, "now": verdict}
+    compared = {
+        "board": "harbour gauge",
+        "tool": "0.1.0",
+        "share": 0.05,
+        "findings": [{**row, "causes": ["C7 22 µF → 10 µF"], "finding": 0}],
+        "networks": {"added": ["AIN2"], "removed": []},
+        "changes": [],
+    }
+    (section,) = tree(replace(DOCUMENT, comparison=compared)).xpath("//section[@id='changes']")
+    told = words(section)
+    assert "Against harbour gauge as saved: 1 broke." in told
+    assert "broke r NRST C7 10 µF not there fails at least 30 ms C7 22 µF → 10 µF" in told
+    assert "Networks added: AIN2" in told
+
+
 def luminance(color: str) -> float:
     """Relative luminance of ``#rrggbb`` (WCAG 2.1, definition of relative luminance)."""
     parts = [int(color[index : index + 2], 16) / 255 for index in (1, 3, 5)]

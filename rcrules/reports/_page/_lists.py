@@ -54,7 +54,7 @@ def _share(row: Json) -> str:
 
 
 def _signed(share: float) -> str:
-    return f"{100 * share:+.3g} %"
+    return f"{100 * share:+.3g} %" if share else "0 %"
 
 
 def _origin(origin: Json) -> str:
