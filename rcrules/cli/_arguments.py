@@ -4,7 +4,7 @@ import argparse
 from typing import Final
 
 from rcrules import __version__
-from rcrules.cli import _compare, _run
+from rcrules.cli import _compare, _run, _start
 
 _DESCRIPTION: Final = (
     "Finds the RC networks of a board, works out what each does in the worst case, and holds it against rules."
@@ -18,6 +18,7 @@ _SUMMARIES: Final = {
     "networks": "show what was found on a board: held nets, RC networks, roles, time constants; no rules",
     "propose": "check, and find standard values that would make what fails hold",
     "compare": "two saved findings documents: what broke, what mended, what moved and why",
+    "start": "write a first rcrules.toml for a board, with what was found and what to ask",
     "render": "show a saved findings document again, as any report; needs no board",
     "rules": "list the packs and rules there are, or check rule files for mistakes",
     "demo": "copy the demo board to a folder, check it, show the report",
@@ -33,6 +34,7 @@ def parser() -> argparse.ArgumentParser:
     _networks(_command(commands, "networks", _run.networks))
     _check(_command(commands, "propose", _run.check))
     _compare_documents(_command(commands, "compare", _compare.compare))
+    _start_options(_command(commands, "start", _start.start))
     _render(_command(commands, "render", _run.render))
     _rules(_command(commands, "rules", _run.rules))
     _demo(_command(commands, "demo", _run.demo))
@@ -87,6 +89,12 @@ def _compare_documents(command: argparse.ArgumentParser) -> None:
     _fail_options(command)
     _moved(command)
     _output_options(command)
+
+
+def _start_options(command: argparse.ArgumentParser) -> None:
+    command.add_argument("inputs", nargs="+", metavar="INPUT", help="netlists and BOMs of the board")
+    where = "where to write it, never over a file (default: rcrules.toml beside the first input)"
+    command.add_argument("--to", metavar="FILE", help=where)
 
 
 def _fail_options(command: argparse.ArgumentParser) -> None:

@@ -1,0 +1,69 @@
+"""A first project file for a strange board."""
+
+import argparse
+import os
+import sys
+from typing import TYPE_CHECKING
+
+if TYPE_CHECKING:
+    from pathlib import Path
+
+    from rcrules.findings import Document
+
+
+def start(chosen: argparse.Namespace) -> int:
+    """Write rcrules.toml beside the first input, never over another one; tell what it decides and what to do next."""
+    from pathlib import Path
+
+    from rcrules.pipeline import Job, run
+    from rcrules.rulebook import packs
+    from rcrules.starter import project_text, questions
+
+    if "-" in chosen.inputs:
+        raise _mistake("command line", "standard input cannot be named in a project file", "name the files")
+    target = Path(chosen.to) if chosen.to else Path(chosen.inputs[0]).parent / "rcrules.toml"
+    _free(target)
+    document = run(Job(inputs=tuple(chosen.inputs), project=os.devnull, rules=tuple(pack.name for pack in packs())))
+    folder = target.parent
+    inputs = [(row["kind"], _relative(row["file"], folder)) for row in document.inputs]
+    netlists, boms = ([name for kind, name in inputs if kind == wanted] for wanted in ("netlist", "bom"))
+    text = project_text(document, Path(chosen.inputs[0]).stem, netlists, boms)
+    _write(target, text)
+    print(_told(document, target, len(questions(document.findings))), file=sys.stderr)
+    return 0
+
+
+def _relative(name: str, folder: "Path") -> str:
+    """The input as the project file names it, relative to its folder."""
+    from pathlib import Path
+
+    return Path(os.path.relpath(name, folder)).as_posix()
+
+
+def _free(target: "Path") -> None:
+    if target.exists():
+        raise _mistake(str(target), "a project file stands here already", "edit it, or name another file: --to FILE")
+
+
+def _write(target: "Path", text: str) -> None:
+    try:
+        target.write_bytes(text.encode("utf-8"))
+    except OSError as error:
+        do = "name a file in a folder that is there and may be written: --to FILE"
+        raise _mistake(str(target), f"cannot write it: {error.strerror}", do) from error
+
+
+def _mistake(place: str, problem: str, do: str) -> Exception:
+    from rcrules.errors import Mistake, Place, UserMistake
+
+    return UserMistake(Mistake(place=Place(file=place), problem=problem, do=do))
+
+
+def _told(document: "Document", target: "Path", asked: int) -> str:
+    total = len(document.findings)
+    decided = sum(item.outcome != "undecided" for item in document.findings)
+    questions = {0: "nothing to ask", 1: "1 question"}.get(asked, f"{asked} questions")
+    return (
+        f"wrote {target}: {questions}, the most useful first\n"
+        f"without answers {decided} of {total} findings are decided; then run  rcrules check --project {target}"
+    )
