@@ -20,8 +20,10 @@ def build(exports: Iterable[Export]) -> Design:
     given = tuple(exports)
     ordered = sorted(given, key=lambda export: export.kind != "bom")
     pins, remarks = _pins(ordered)
-    said = _said(ordered, pins)
-    parts = {ref: merge(said[ref], tuple(pins.get(ref, ()))) for ref in sorted(said, key=natural)}
+    alone = _open_pins(ordered, pins)
+    said = _said(ordered, {**alone, **pins})
+    order = sorted(said, key=natural)
+    parts = {ref: merge(said[ref], tuple(pins.get(ref, ())), tuple(alone.get(ref, ()))) for ref in order}
     own = [remark for export in given for remark in export.remarks]
     return Design(
         parts=parts,
@@ -63,6 +65,17 @@ def _pins(exports: Sequence[Export]) -> tuple[dict[str, list[Pin]], list[Remark]
                 text = f"pin {pin.number} of {pin.ref} is on {pin.net!r}; {stands}"
                 remarks.append(Remark(place=pin.place, text=text))
     return {ref: sorted(own, key=_pin_order) for ref, own in found.items()}, remarks
+
+
+def _open_pins(exports: Sequence[Export], connected: Mapping[str, Sequence[Pin]]) -> dict[str, list[Pin]]:
+    """Pins on no net by reference in natural order, each once; one that any export connects is not open."""
+    known = {(pin.ref, pin.number) for own in connected.values() for pin in own}
+    found: dict[str, list[Pin]] = defaultdict(list)
+    for pin in (pin for export in exports for pin in export.open_pins):
+        if (pin.ref, pin.number) not in known:
+            known.add((pin.ref, pin.number))
+            found[pin.ref].append(_pin(pin))
+    return {ref: sorted(own, key=_pin_order) for ref, own in found.items()}
 
 
 def _pin(pin: ExportPin) -> Pin:

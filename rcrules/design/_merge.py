@@ -14,7 +14,7 @@ def word(export: Export) -> str:
     return "BOM" if export.kind == "bom" else "netlist"
 
 
-def merge(said: Sequence[Said], pins: tuple[Pin, ...]) -> Part:
+def merge(said: Sequence[Said], pins: tuple[Pin, ...], open_pins: tuple[Pin, ...] = ()) -> Part:
     """The part with every fact kept.
 
     said: at least one entry, BOMs first: their value wins. Names of symbol, footprint and sheet come from the
@@ -34,6 +34,7 @@ def merge(said: Sequence[Said], pins: tuple[Pin, ...]) -> Part:
         fitted=fitted,
         fitted_why=why,
         pins=pins,
+        open_pins=open_pins,
     )
 
 

@@ -27,6 +27,7 @@ class Pin:
     type: str
     """One of vocabulary.PIN_TYPES."""
     net: str
+    """Key of the net, '' for a pin in ``Part.open_pins``."""
     place: Place
 
     @property
@@ -52,6 +53,8 @@ class Part:
     fitted: bool
     fitted_why: str
     pins: tuple[Pin, ...]
+    open_pins: tuple[Pin, ...] = ()
+    """Pins that an export lists as on no net."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

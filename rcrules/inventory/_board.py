@@ -19,14 +19,14 @@ _SHOWN: Final = 12
 
 
 def board_counts(board: Board, name: str | None) -> Json:
-    """Name (of the project, a title, or the first input) and counts; pins are connections."""
+    """Name (of the project, a title, or the first input) and counts; pins are connections, and pins on no net."""
     rows = listed(board)
     capacitors = sum(is_capacitor(part) for part in rows)
     return {
         "name": name or _title(_ordered(board.design.exports)),
         "parts": len(board.design.parts),
         "nets": len(board.design.nets),
-        "pins": sum(len(net.pins) for net in board.design.nets.values()),
+        "pins": sum(len(part.pins) + len(part.open_pins) for part in board.design.parts.values()),
         "resistors": len(rows) - capacitors,
         "capacitors": capacitors,
     }

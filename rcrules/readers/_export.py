@@ -54,7 +54,7 @@ class ExportPin:
     type: str = ""
     """One of vocabulary.PIN_TYPES."""
     net: str
-    """Key of the net: its name, or ``#code`` for a net without a name."""
+    """Key of the net: its name, or ``#code`` for a net without a name; '' for a pin in ``Export.open_pins``."""
     place: Place
 
 
@@ -76,6 +76,8 @@ class Export:
     kind: Literal["netlist", "bom"]
     parts: tuple[ExportPart, ...]
     pins: tuple[ExportPin, ...] = ()
+    open_pins: tuple[ExportPin, ...] = ()
+    """Pins that the export lists as on no net."""
     nets: tuple[tuple[str, Place], ...] = ()
     """Every net of the file, also those with one pin or none, in file order, by key."""
     remarks: tuple[Remark, ...] = ()

@@ -32,7 +32,6 @@ _TEXTS: Final = tuple(
         (r"\A\s*\(\s*\w+_(?:sch|pcb)\b", "a schematic or board file, not a netlist"),
         (r"\A\s*\(NETLIST\)|^\$PACKAGES\b", "a netlist in dollar sections"),
         (r"^\*(?:PART|NET|SIGNAL)\*", "a netlist in star sections"),
-        (r"\A(?:[CP] [^\n]*\n)*(?:317|327|367)\S|^P  (?:JOB|CODE|UNITS|TITLE|VER)\b", "an IPC-D-356 test netlist"),
         (r"^\.(?:subckt|ends?|model|param|include|lib|tran|ac|dc|op|control|title)\b", "a SPICE deck"),
         (r"^[\[(][ \t\r]*$", "a netlist in bracket lists"),
         (r"\A\s*\(", "a parenthesised text, but no netlist known here"),

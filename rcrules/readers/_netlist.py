@@ -33,6 +33,7 @@ class Netlist:
         self._listed = 0
         self._pending: list[Node] = []
         self._nodes: list[tuple[str, Node]] = []
+        self._open: list[Node] = []
         self._places: dict[int, Place] = {}
 
     def place(self, line: int) -> Place:
@@ -66,11 +67,20 @@ class Netlist:
 
     def add_node(self, node: Node) -> None:
         """Keep a connection for the net that is added next."""
+        self._pending.append(node)
+        self._bounded(node)
+
+    def add_open(self, node: Node) -> None:
+        """Keep a pin that is said to be on no net."""
+        self._open.append(node)
+        self._bounded(node)
+
+    def _bounded(self, node: Node) -> None:
         ref, number, name, _, line = node
         for what, text in (("a reference", ref), ("a pin number", number), ("a pin name", name)):
             _bounds.named(self.source.name, line, what, text)
-        self._pending.append(node)
-        _bounds.bound(self.source.name, line, "connections", len(self._pending) + len(self._nodes), _bounds.MAX_PINS)
+        count = len(self._pending) + len(self._nodes) + len(self._open)
+        _bounds.bound(self.source.name, line, "connections", count, _bounds.MAX_PINS)
 
     def add_net(self, name: str, code: str, line: int) -> None:
         """Keep a net with the connections added before it; nets without a name are told apart by their code."""
@@ -88,7 +98,7 @@ class Netlist:
 
     def export(self) -> Export:
         """Everything collected, with pin names and types joined in from the library."""
-        pins = self._pins()
+        pins, open_pins = self._pins()
         parts = tuple(self._part(component) for component in self._components.values())
         return Export(
             reader=self.reader,
@@ -97,6 +107,7 @@ class Netlist:
             kind="netlist",
             parts=parts,
             pins=pins,
+            open_pins=open_pins,
             nets=tuple(self._nets.items()),
             remarks=(*self._assumed, *self._remarks.all()),
             title=self.title,
@@ -160,35 +171,39 @@ class Netlist:
         found = self._library.get((component.library, component.symbol))
         return found if found is not None else self._by_symbol.get(component.symbol)
 
-    def _pins(self) -> tuple[ExportPin, ...]:
+    def _pins(self) -> tuple[tuple[ExportPin, ...], tuple[ExportPin, ...]]:
+        """Connections in the order of the nets, and pins on no net."""
         libraries = {ref: self._library_part(component) for ref, component in self._components.items()}
         suffixed = self._names_end_with_number()
         unknown: dict[str, int] = {}
-        pins: list[ExportPin] = []
         seen: dict[tuple[str, str], str] = {}
-        for key, (ref, number, name, kind, line) in self._nodes:
+
+        def pin(key: str, node: Node) -> ExportPin:
+            ref, number, name, kind, line = node
             library = libraries.get(ref)
             library_name, library_kind = library.pins.get(number, ("", "")) if library else ("", "")
             normal = pin_type(kind or library_kind)
             if normal is None:
                 unknown.setdefault(kind or library_kind, line)
+            return ExportPin(
+                ref=ref,
+                number=number,
+                name=_pin_name(name, _said(library_name), number, suffixed),
+                type="unspecified" if normal is None else normal,
+                net=key,
+                place=self.place(line),
+            )
+
+        for key, (ref, number, _, _, line) in self._nodes:
             first = seen.setdefault((ref, number), key)
             if first != key:
                 self.remark(line, f"pin {number} of {ref} is on net {first!r} and on net {key!r}; both are kept")
-            pins.append(
-                ExportPin(
-                    ref=ref,
-                    number=number,
-                    name=_pin_name(name, _said(library_name), number, suffixed),
-                    type="unspecified" if normal is None else normal,
-                    net=key,
-                    place=self.place(line),
-                )
-            )
+        connected = tuple(pin(key, node) for key, node in self._nodes)
+        alone = tuple(pin("", node) for node in self._open if node[:2] not in seen)
         for kind, line in unknown.items():
             self.remark(line, f"pin type {kind!r} is not known; taken as unspecified")
         self._remark_strangers()
-        return tuple(pins)
+        return connected, alone
 
     def _names_end_with_number(self) -> bool:
         """True where the export writes every pin name as ``NAME_number``."""
@@ -197,7 +212,7 @@ class Netlist:
 
     def _remark_strangers(self) -> None:
         told = set(self._components)
-        for _, (ref, _, _, _, line) in self._nodes:
+        for ref, _, _, _, line in (*(node for _, node in self._nodes), *self._open):
             if ref not in told:
                 told.add(ref)
                 _bounds.bound(self.source.name, line, "parts", len(told), _bounds.MAX_PARTS)

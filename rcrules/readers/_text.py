@@ -3,6 +3,7 @@
 import codecs
 import re
 from bisect import bisect_right
+from collections.abc import Iterator
 from typing import Final
 
 from rcrules.errors import Place
@@ -55,6 +56,15 @@ def decode(source: Source) -> tuple[str, tuple[Remark, ...]]:
         remarks = (Remark(place=Place(file=source.name, line=line), text=said),)
     _refuse_nul(source, text)
     return text, remarks
+
+
+def numbered(text: str) -> Iterator[tuple[int, str]]:
+    """Every line without its end, with its number from 1; CR LF, LF and a lone CR end lines."""
+    line, start = 1, 0
+    for match in _LINE_END.finditer(text):
+        yield line, text[start : match.start()]
+        line, start = line + 1, match.end()
+    yield line, text[start:]
 
 
 class Lines:

@@ -36,7 +36,6 @@ FOREIGN = {
     "a parenthesised text, but no netlist known here": b"(netlist (R1))",
     "an IPC-2581 file": b'<?xml version="1.0"?><IPC-2581 revision="B"/>',
     "XML with the root <schematic>": b"<schematic><component/></schematic>",
-    "an IPC-D-356 test netlist": b"P  JOB   board\nP  CODE 00\n327GND              R1    -1\n",
     "a SPICE deck": b"* a filter\nR1 in out 10k\nC1 out 0 100n\n.tran 1u 1m\n.end\n",
     "a netlist in star sections": b"*BOARD*\n*PART*\nR1 R0603\n*NET*\n",
     "a netlist in dollar sections": b"$PACKAGES\nR0603 ! 10k ; R1\n$NETS\n",
