@@ -17,11 +17,13 @@ from rcrules.reports._lines import safe
 _WIDE: Final = 640
 _HIGH: Final = 260
 _LEFT: Final = 62
-_RIGHT: Final = 84
+_RIGHT: Final = 124
 _TOP: Final = 18
 _BOTTOM: Final = 34
 _TICKS: Final = 5
 _MOST_POINTS: Final = 60
+_LONGEST: Final = 18
+"""Letters of a level's name that fit beside the frame."""
 _NEAR: Final = 12.0
 """Labels closer than this are moved apart."""
 
@@ -90,7 +92,7 @@ def _body(finding: Finding, response: Json, frame: Frame) -> Iterator[str]:
     if low and high:
         there, back = _points(time, low, frame), reversed(_points(time, high, frame))
         yield f'<path class="spread" d="M{" ".join([*there, *back])}z"/>'
-    for look, values in (("case", low), ("case", high), ("nominal", response["nominal"] or ())):
+    for look, values in (("case", low if not high else high if not low else ()), ("nominal", response["nominal"])):
         if values:
             yield f'<path class="{look}" d="M{" ".join(_points(time, values, frame))}"/>'
     yield from _thresholds(response, frame)
@@ -161,7 +163,9 @@ def _thresholds(response: Json, frame: Frame) -> Iterator[str]:
         yield f'<path class="threshold" d="M{_LEFT} {y:.1f}H{right}"/>'
         named.append((y, str(row["name"])))
     for y, name in _apart(named):
-        yield _text(right + 6, y + 4, name if len(name) < 15 else f"{name[:13]}…", "start", "threshold-text")
+        yield _text(
+            right + 6, y + 4, name if len(name) <= _LONGEST else f"{name[: _LONGEST - 1]}…", "start", "threshold-text"
+        )
 
 
 def _apart(named: Iterable[tuple[float, str]]) -> Iterator[tuple[float, str]]:
