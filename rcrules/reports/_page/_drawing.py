@@ -2,6 +2,7 @@
 
 import re
 from collections.abc import Mapping, Sequence
+from functools import lru_cache
 from typing import Any, Final
 
 import schemdraw
@@ -10,7 +11,7 @@ from markupsafe import Markup, escape
 
 from rcrules.findings import Json
 from rcrules.reports._lines import safe
-from rcrules.reports._page._layout import Branch, Label, Plan, plan
+from rcrules.reports._page._layout import Branch, Label, Plan, Symbol, plan
 
 schemdraw.use("svg")
 
@@ -35,7 +36,7 @@ def drawing(network: Json, held: Sequence[Json], texts: Mapping[str, str]) -> Ma
     told = "; ".join(f"{item.ref} {item.value} between {' and '.join(item.nets)}" for item in branches)
     return Markup(
         f'<svg class="circuit" {_box(found)} role="img" aria-label="Circuit: {escape(safe(told))}">'
-        f"{_symbols(found)}{_labels(found)}</svg>"
+        f"{_symbols(tuple(found.symbols))}{_labels(found)}</svg>"
     )
 
 
@@ -66,10 +67,11 @@ def _reach(text: str, anchor: str) -> tuple[float, float]:
     return {"start": (0.0, wide), "middle": (-wide / 2, wide / 2), "end": (-wide, 0.0)}[anchor]
 
 
-def _symbols(found: Plan) -> str:
-    """What the library draws, without its styles: those are the page's."""
+@lru_cache(maxsize=2**10)
+def _symbols(symbols: tuple[Symbol, ...]) -> str:
+    """What the library draws, without its styles: those are the page's. Many networks of a board look the same."""
     whole = schemdraw.Drawing(show=False)
-    for symbol in found.symbols:
+    for symbol in symbols:
         whole.add(_element(symbol.kind, symbol.start, symbol.end))
     text: str = whole.get_imagedata("svg").decode()
     return "".join(_slim(tag, attributes) for tag, attributes in _TAG.findall(text))

@@ -170,7 +170,7 @@ def _node(
         found.mark("ground", branch.other(net), (column, -_ARM), "down")
     for branch, column in zip(far, columns[len(ups) :], strict=False):
         tracks.end(branch, column)
-    end = columns[-1] + (step if after is None or after not in {branch.other(net) for branch in own} else 0.8 * step)
+    end = columns[-1] + step
     found.wire((columns[0], 0.0), (end, 0.0))
     found.symbols += [Symbol(kind="dot", start=(column, 0.0)) for column in columns]
     found.labels.append(Label(at=(columns[0] + 0.15, 0.28), text=cut(net), look="net"))
