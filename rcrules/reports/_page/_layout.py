@@ -5,7 +5,7 @@ and ladder as it is drawn by hand; parts between nets that are no neighbours run
 of the drawing library, y upwards, the chain at y = 0.
 """
 
-from collections.abc import Iterable, Mapping, Sequence
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, field
 from typing import Final
 
@@ -106,18 +106,46 @@ def plan(branches: Sequence[Branch], held: Mapping[str, str], feeds: Mapping[str
     resistors, capacitors = (
         [branch.nets for branch in branches if branch.kind == kind] for kind in ("resistor", "capacitor")
     )
-    found, order = Plan(), chain(list(dict.fromkeys(free)), resistors, capacitors, held)
-    x, tracks = 0.0, Tracks()
+    order = chain(list(dict.fromkeys(free)), resistors, capacitors, held)
+    found, x, tracks = Plan(), 0.0, Tracks()
     for index, net in enumerate(order):
         own = [branch for branch in branches if net in branch.nets]
-        before = order[index - 1] if index else None
-        after = order[index + 1] if index + 1 < len(order) else None
-        x = _node(found, net, own, held, feeds.get(net, ()), before, after, x, tracks)
-        if after is not None:
-            x = _between(found, [branch for branch in own if after in branch.nets], x)
+        near = {*order[max(index - 1, 0) : index + 2]}
+        spot = Spot(net=net, own=own, held=held, near=near, first=index == 0)
+        x = _node(found, spot, feeds.get(net, ()), x, tracks)
+        if index + 1 < len(order):
+            x = _between(found, [branch for branch in own if order[index + 1] in branch.nets], x)
     tracks.draw(found)
     _bridges(found, [branch for branch in branches if set(branch.nets) <= set(held)], held, x)
     return found
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Spot:
+    """A free net and what is at it."""
+
+    net: str
+    own: Sequence[Branch]
+    held: Mapping[str, str]
+    near: set[str]
+    """Itself and its neighbours in the chain."""
+    first: bool
+    """Whether it stands at the left end."""
+
+    @property
+    def downs(self) -> list[Branch]:
+        """Parts to ground."""
+        return [branch for branch in self.own if self.held.get(branch.other(self.net)) == "ground"]
+
+    @property
+    def ups(self) -> list[Branch]:
+        """Parts to supplies and driven nets."""
+        return [branch for branch in self.own if self.held.get(branch.other(self.net)) in ("supply", "driven")]
+
+    @property
+    def far(self) -> list[Branch]:
+        """Parts to free nets that are no neighbours."""
+        return [branch for branch in self.own if branch.other(self.net) not in {*self.held, *self.near}]
 
 
 @dataclass(slots=True, kw_only=True)
@@ -139,44 +167,36 @@ class Tracks:
             found.part(branch, (left, y), (right, y))
 
 
-def _node(
-    found: Plan,
-    net: str,
-    own: Iterable[Branch],
-    held: Mapping[str, str],
-    feeds: Sequence[str],
-    before: str | None,
-    after: str | None,
-    x: float,
-    tracks: Tracks,
-) -> float:
+def _node(found: Plan, spot: Spot, feeds: Sequence[str], x: float, tracks: Tracks) -> float:
     """One net with all that stands on it; the column of its right end."""
-    downs = [branch for branch in own if held.get(branch.other(net)) == "ground"]
-    ups = [branch for branch in own if branch.other(net) in held and branch not in downs]
-    far = [branch for branch in own if branch.other(net) not in {*held, before, after, net}]
-    side = next((branch for branch in ups if held[branch.other(net)] == "driven"), None) if before is None else None
+    ups, downs, far = spot.ups, spot.downs, spot.far
+    side = next((branch for branch in ups if spot.first and spot.held[branch.other(spot.net)] == "driven"), None)
     if side is not None:
         ups.remove(side)
         found.part(side, (x, 0.0), (x + _BODY, 0.0))
-        found.mark("driven", side.other(net), (x, 0.0), "left")
+        found.mark("driven", side.other(spot.net), (x, 0.0), "left")
         x += _BODY
-    step = _step([*ups, *downs], [net, f"→ {', '.join(feeds)}"] if feeds else [net])
+    fed = f"→ {', '.join(feeds)}" if feeds else ""
+    step = _step([*ups, *downs], [spot.net, fed])
     columns = [x + index * step for index in range(max(len(ups) + len(far), len(downs), 1))]
-    for branch, column in zip(ups, columns, strict=False):
-        found.part(branch, (column, 0.0), (column, _ARM))
-        found.mark(held[branch.other(net)], branch.other(net), (column, _ARM), "up")
-    for branch, column in zip(downs, columns, strict=False):
-        found.part(branch, (column, 0.0), (column, -_ARM))
-        found.mark("ground", branch.other(net), (column, -_ARM), "down")
+    _upright(found, spot, ups, columns, _ARM)
+    _upright(found, spot, downs, columns, -_ARM)
     for branch, column in zip(far, columns[len(ups) :], strict=False):
         tracks.end(branch, column)
-    end = columns[-1] + step
-    found.wire((columns[0], 0.0), (end, 0.0))
+    found.wire((x, 0.0), (columns[-1] + step, 0.0))
     found.symbols += [Symbol(kind="dot", start=(column, 0.0)) for column in columns]
-    found.labels.append(Label(at=(columns[0] + 0.15, 0.28), text=cut(net), look="net"))
-    if feeds:
-        found.labels.append(Label(at=(columns[0] + 0.15, -0.28), text=cut(f"→ {', '.join(feeds)}"), look="pin"))
-    return end
+    found.labels.append(Label(at=(x + 0.15, 0.28), text=cut(spot.net), look="net"))
+    if fed:
+        found.labels.append(Label(at=(x + 0.15, -0.28), text=cut(fed), look="pin"))
+    return columns[-1] + step
+
+
+def _upright(found: Plan, spot: Spot, branches: Sequence[Branch], columns: Sequence[float], height: float) -> None:
+    """Parts from the net to held nets, one a column."""
+    for branch, column in zip(branches, columns, strict=False):
+        net = branch.other(spot.net)
+        found.part(branch, (column, 0.0), (column, height))
+        found.mark(spot.held[net], net, (column, height), "up" if height > 0 else "down")
 
 
 def _step(branches: Sequence[Branch], names: Sequence[str]) -> float:
