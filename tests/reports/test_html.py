@@ -16,6 +16,7 @@ from lxml import html
 from rcrules.errors import UserMistake
 from rcrules.findings import Document
 from rcrules.reports import reports
+from tests.reports._answer import answering
 from tests.reports._sample import DOCUMENT, FINDINGS, finding
 
 
@@ -174,6 +175,37 @@ def test_what_changed_against_a_saved_document_is_told_only_where_something_was_
     assert "Against harbour gauge as saved: 1 broke." in told
     assert "broke r NRST C7 10 µF not there fails at least 30 ms C7 22 µF → 10 µF" in told
     assert "Networks added: AIN2" in told
+
+
+def test_how_a_number_comes_about_is_told_in_full() -> None:
+    (block,) = tree(replace(DOCUMENT, findings=[answering()])).xpath("//details[@id='f0']")
+    told = words(block)
+    assert "Time from the event until the voltage reaches a level." in told
+    assert "+3V3 3.2 V .. 3.3 V .. 3.4 V 0 V before; 0 V at 0 s, 3.3 V at 1.25 ms" in told
+    assert "NRST 0 V 0 V 3.3 V" in told
+    assert "100 ms 100 %" in told
+    assert "lowest: 21.9 ms C7 6.188 µF, R12 9.9 kΩ, the rest nominal" in told
+    assert "t tau · ln(+3V3 / (+3V3 - v)) 100 ms · ln(3.3 V / (3.3 V - 0.99 V)) 35.7 ms" in told
+    assert len(block.xpath(".//*[@class='plot']")) == 1
+
+
+def test_the_largest_share_has_the_longest_bar_and_what_does_nothing_has_none() -> None:
+    (block,) = tree(replace(DOCUMENT, findings=[answering()])).xpath("//details[@id='f0']")
+    rows = block.xpath(".//table[@class='bars']/tbody/tr")
+    assert [words(row) for row in rows] == [
+        "C7 9 µF .. 10 µF .. 11 µF 75 % BOM field 'Tol'",
+        "R12 9 kΩ .. 10 kΩ .. 11 kΩ 25 % assumed: BOM field 'Tol'",
+    ]
+    assert block.xpath(".//td[@class='bar']/span/@style") == ["width:100.0%", "width:33.3%"]
+
+
+def test_a_board_with_very_many_findings_has_workings_only_of_what_does_not_hold() -> None:
+    """And says so, so that the page stays one that opens at once."""
+    many = [answering(outcome="holds", margin=0.1) for _ in range(600)]
+    assert len(tree(replace(DOCUMENT, findings=many)).xpath("//*[@class='plot']")) == 600
+    large = tree(replace(DOCUMENT, findings=[*many, answering()]))
+    assert len(large.xpath("//*[@class='plot']")) == 1
+    assert "of findings that hold they are in the JSON document" in words(large)
 
 
 def luminance(color: str) -> float:

@@ -3,49 +3,19 @@
 import itertools
 import math
 import re
-from dataclasses import dataclass
 
 import pytest
 from lxml import etree
 
-from rcrules.findings import Finding, Json
+from rcrules.findings import Json
 from rcrules.reports._page._plot import plot, ticks
-from tests.reports._sample import finding
+from tests.reports._answer import TIMES, answering, response
 
-TIMES = [0.002 * index for index in range(101)]
 LEFT, RIGHT, TOP, BOTTOM = 62, 640 - 124, 18, 260 - 34
 
 
-@dataclass(frozen=True, slots=True, kw_only=True)
-class Answering(Finding):
-    """A finding with a response."""
-
-    response: Json | None = None
-
-
-def curve(tau: float, volts: float) -> list[float]:
-    """v(t) = V (1 - exp(-t / tau)) (hand derivation)."""
-    return [volts * (1 - math.exp(-time / tau)) for time in TIMES]
-
-
-def response(**changed: object) -> Json:
-    return {
-        "unit": "V",
-        "time": TIMES,
-        "nominal": curve(0.1, 3.3),
-        "low_case": curve(0.06, 3.4),
-        "high_case": curve(0.14, 3.2),
-        "thresholds": [{"name": "may switch", "low": 0.96, "nominal": 0.99, "high": 1.02}],
-        "limit": {"at_least": 0.03, "at_most": None},
-        "crossing": {"low": 0.0219, "nominal": 0.0357, "high": 0.0497},
-        **changed,
-    }
-
-
 def drawn(found: Json | None, **changed: object) -> str:
-    plain = finding(**changed)
-    fields = {name: getattr(plain, name) for name in Finding.__dataclass_fields__}
-    return str(plot(Answering(**{**fields, "response": found})) or "")
+    return str(plot(answering(response=found, **changed)) or "")
 
 
 def paths(text: str, look: str) -> list[list[float]]:
@@ -80,16 +50,17 @@ def test_a_limit_in_time_stands_upright_with_the_forbidden_side_shaded() -> None
         text = drawn(response(limit={key: 0.03}), limit={key: 0.03, "unit": "s", "text": "", "from": ""})
         (line,) = paths(text, "limit")
         (shade,) = paths(text, "forbidden")
-        assert line[0] == pytest.approx(LEFT + (RIGHT - LEFT) * 0.03 / 0.2, abs=0.1)
+        assert line[0] == pytest.approx(LEFT + (RIGHT - LEFT) * (0.03 - TIMES[0]) / (TIMES[-1] - TIMES[0]), abs=0.1)
         assert (shade[0], shade[2]) == ((LEFT, line[0]) if left else (line[0], RIGHT))
         assert "limit 30 ms" in text
 
 
 def test_a_limit_in_volts_lies_across() -> None:
-    text = drawn(response(limit={"at_most": 3.0}), limit={"at_most": 3.0, "unit": "V", "text": "", "from": ""})
-    (line,) = paths(text, "limit")
-    assert (line[0], line[2]) == (LEFT, RIGHT)
-    assert TOP < line[1] < BOTTOM
+    for told in ({"at_most": 3.0}, None):
+        text = drawn(response(limit=told), limit={"at_most": 3.0, "unit": "V", "text": "", "from": ""})
+        (line,) = paths(text, "limit")
+        assert (line[0], line[2]) == (LEFT, RIGHT)
+        assert TOP < line[1] < BOTTOM
 
 
 def test_a_limit_after_the_end_widens_the_frame() -> None:
@@ -140,7 +111,7 @@ def test_ticks_are_round(low: float, high: float, expected: list[float]) -> None
 
 
 def test_a_flat_response_has_a_frame_too() -> None:
-    flat = [0.0] * 101
+    flat = [0.0] * len(TIMES)
     text = drawn(response(nominal=flat, low_case=flat, high_case=flat, thresholds=[], limit=None, crossing=None))
     (numbers,) = paths(text, "nominal")
     assert len(set(numbers[1::2])) == 1

@@ -3,7 +3,7 @@
 import math
 from collections.abc import Mapping
 from dataclasses import dataclass
-from typing import Any
+from typing import Any, Final
 
 from markupsafe import Markup
 
@@ -24,6 +24,9 @@ from rcrules.reports._words import (
     part_texts,
 )
 from rcrules.vocabulary import OUTCOMES, SEVERITIES
+
+_MOST_WHOLE: Final = 600
+"""Findings of a board from which those that hold are told without plot and workings."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -62,6 +65,11 @@ def shown(document: Document) -> list[Shown]:
     return [_shown(document, item, texts, index) for index, item in enumerate(ordered)]
 
 
+def shortened(document: Document) -> bool:
+    """Whether there are too many findings to tell all in full."""
+    return len(document.findings) > _MOST_WHOLE
+
+
 def _order(finding: Finding) -> tuple[Any, ...]:
     worst = -round(badness(finding), 9)
     subject = (finding.rule, finding.net or "", finding.parts)
@@ -75,6 +83,7 @@ def _shown(document: Document, finding: Finding, texts: Mapping[str, str], index
         percent = in_percent(finding)
         spread = bounds(measured.low, measured.nominal, measured.high, measured.unit, percent=percent)
     worst = finding.detail.get("worst")
+    whole = finding.outcome != "holds" or not shortened(document)
     return Shown(
         id=f"f{index}",
         finding=finding,
@@ -92,8 +101,8 @@ def _shown(document: Document, finding: Finding, texts: Mapping[str, str], index
         waiver=waiver_text(document, finding) if finding.outcome == "waived" else "",
         assumptions=[document.assumptions[number] for number in finding.assumptions],
         places=[_place(row) for row in finding.places],
-        plot=plot(finding),
-        working=working(finding),
+        plot=plot(finding) if whole else None,
+        working=working(finding) if whole else None,
     )
 
 

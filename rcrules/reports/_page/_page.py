@@ -11,7 +11,7 @@ from markupsafe import Markup
 
 from rcrules.findings import Document
 from rcrules.reports._lines import safe
-from rcrules.reports._page._findings import Shown, shown
+from rcrules.reports._page._findings import Shown, shortened, shown
 from rcrules.reports._page._lists import assumptions, comparison, coverage, held, inputs, parts, remarks, rules, waivers
 from rcrules.reports._page._networks import articles, elsewhere
 from rcrules.reports._page._summary import facts, tiles
@@ -44,6 +44,7 @@ def _sections(document: Document, found: list[Shown]) -> dict[str, Any]:
         "facts": facts(document),
         "cautions": [pack for pack in document.packs if pack["caution"]],
         "findings": found,
+        "shortened": shortened(document),
         "networks": articles(document, found),
         "elsewhere": elsewhere(document, found),
         "undecided": missing_facts(document, found),

@@ -77,9 +77,15 @@ def _known(value: object) -> bool:
     return isinstance(value, int | float) and math.isfinite(value)
 
 
+def _limit(finding: Finding, response: Json) -> Json:
+    """The limit as the response tells it; one on the axis of values as the finding does."""
+    own = finding.limit or {}
+    return response["limit"] or (own if own.get("unit") == response["unit"] else {})
+
+
 def _limits(finding: Finding, response: Json, *, across: bool) -> list[float]:
     """The limits that stand on the time axis, or on the axis of values."""
-    limit, unit = response["limit"] or {}, (finding.limit or {}).get("unit")
+    limit, unit = _limit(finding, response), (finding.limit or {}).get("unit")
     here = unit == ("s" if across else response["unit"])
     return [limit[key] for key in ("at_least", "at_most") if here and _known(limit.get(key))]
 
@@ -131,7 +137,7 @@ def ticks(low: float, high: float) -> list[float]:
 
 def _forbidden(finding: Finding, response: Json, frame: Frame) -> Iterator[str]:
     """The side of each limit on which the number must not lie, and the limit itself."""
-    limit, right, bottom = response["limit"] or {}, _WIDE - _RIGHT, _HIGH - _BOTTOM
+    limit, right, bottom = _limit(finding, response), _WIDE - _RIGHT, _HIGH - _BOTTOM
     for key in ("at_least", "at_most"):
         if not _known(limit.get(key)):
             continue

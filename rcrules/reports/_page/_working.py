@@ -40,9 +40,12 @@ class Working:
     """All of it."""
 
     summary: str
-    sources: list[Json]
-    voltages: list[Json]
-    modes: list[Json]
+    sources: list[tuple[str, str, str]]
+    """Held net, where it is in the end, and its way there at nominal."""
+    voltages: list[tuple[str, ...]]
+    """Free net; before the event, just after it, in the end, at nominal."""
+    modes: list[tuple[str, str]]
+    """Time constant, and its part in what is seen."""
     cases: list[Case]
     bars: list[Bar]
 
@@ -55,12 +58,20 @@ def working(finding: Finding) -> Working | None:
     unit = finding.measured.unit if finding.measured else ""
     return Working(
         summary=kept["summary"],
-        sources=[{**row, "range": _range(row, "V")} for row in kept["sources"]],
-        voltages=kept["voltages"],
-        modes=[{**row, "tau": number(row["tau"], "s")} for row in kept["modes"]],
+        sources=[(row["net"], _range(row, "V"), _way(row)) for row in kept["sources"]],
+        voltages=[
+            (row["net"], *(number(row[key], "V") for key in ("before", "start", "final"))) for row in kept["voltages"]
+        ],
+        modes=[(number(row["tau"], "s"), f"{100 * row['share']:.3g} %") for row in kept["modes"]],
         cases=[_case(row, unit) for row in kept["cases"]],
         bars=_bars(kept["parameters"]),
     )
+
+
+def _way(row: Json) -> str:
+    """``0 V before; 0 V at 0 s, 3.3 V at 1.25 ms``."""
+    points = ", ".join(f"{number(volts, 'V')} at {number(time, 's')}" for time, volts in row["way"])
+    return "; ".join(filter(None, (f"{number(row['before'], 'V')} before", points)))
 
 
 def _case(row: Json, unit: str) -> Case:
