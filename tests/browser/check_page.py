@@ -10,7 +10,7 @@ from dataclasses import replace
 from pathlib import Path
 
 import pytest
-from playwright.sync_api import Browser, Page, sync_playwright
+from playwright.sync_api import Browser, Locator, Page, sync_playwright
 
 from rcrules.findings import Document
 from rcrules.reports import reports
@@ -148,6 +148,14 @@ def test_a_hostile_name_runs_nothing(browser: Browser, tmp_path: Path) -> None:
     page.close()
 
 
+def lands(page: Page, link: Locator) -> bool:
+    """Whether a link leads to its block, however much of the page was not laid out before."""
+    link.click()
+    page.wait_for_timeout(500)
+    top = page.evaluate("document.querySelector(location.hash).getBoundingClientRect().top")
+    return -5 <= top < page.evaluate("innerHeight")
+
+
 def test_a_thousand_networks_make_a_page_that_opens_at_once(browser: Browser, tmp_path: Path) -> None:
     """Under 15 MB; under two seconds on a machine with nothing else to do, which a busy one gets three times over."""
     times = []
@@ -155,6 +163,7 @@ def test_a_thousand_networks_make_a_page_that_opens_at_once(browser: Browser, tm
         page, told = opened(browser, large(1000), tmp_path)
         times.append(page.evaluate("performance.getEntriesByType('navigation')[0].loadEventEnd"))
         assert page.locator(ROWS).count() == 3000
+        assert lands(page, page.locator(f"{ROWS} th a").nth(2900))
         assert told == []
         page.close()
     assert (tmp_path / "review.html").stat().st_size < 15e6

@@ -51,7 +51,12 @@
   const open = () => {
     const target = document.getElementById(location.hash.slice(1));
     for (let at = target; at; at = at.parentElement) if (at.tagName === "DETAILS") at.open = true;
-    if (target) target.scrollIntoView();
+    if (!target) return;
+    const show = (times) => {
+      target.scrollIntoView();
+      if (times) requestAnimationFrame(() => show(times - 1));
+    };
+    show(3);
   };
   addEventListener("hashchange", open);
   if (location.hash) open();
