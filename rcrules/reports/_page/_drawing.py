@@ -63,7 +63,7 @@ def _box(found: Plan) -> str:
 
 def _reach(text: str, anchor: str) -> tuple[float, float]:
     """How far a text reaches to the left and to the right of its point."""
-    wide = 0.2 * len(text)
+    wide = 0.23 * len(text)
     return {"start": (0.0, wide), "middle": (-wide / 2, wide / 2), "end": (-wide, 0.0)}[anchor]
 
 
