@@ -1,39 +1,24 @@
 """The whole flow on one page: inputs and project in, one findings document out."""
 
 from collections.abc import Callable, Iterator, Sequence
-from dataclasses import dataclass, replace
-from pathlib import Path
+from dataclasses import replace
 from typing import TYPE_CHECKING
 
 from rcrules import __version__
-from rcrules.errors import Mistake, Place, Problems, UserMistake
+from rcrules.errors import Mistake, Place, UserMistake
+from rcrules.job import Job, read_job
+
+__all__ = ["Job", "derive", "run", "run_all"]
 
 if TYPE_CHECKING:
-    from rcrules.findings import Document
+    from rcrules.findings import Derived, Document
     from rcrules.networks import Board
     from rcrules.problems import Parameter
     from rcrules.project import Project
-    from rcrules.readers import Export
     from rcrules.rulebook import Rule
     from rcrules.waivers import Waiver
 
     _Outcome = tuple[Document | None, Sequence[Mistake]]
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class Job:
-    """What one run is asked for: one board."""
-
-    inputs: tuple[str, ...] = ()
-    """Netlists and BOMs, ``-`` for standard input; empty = those of the project file."""
-    project: str | None = None
-    """Project file; None = looked for beside the first input and above."""
-    rules: tuple[str, ...] = ()
-    """Packs and rule files; empty = the project's, else the packs that need no facts."""
-    with_rules: bool = True
-    """False: only what was found."""
-    proposals: bool = False
-    """True: also what changes of parts would mend what fails."""
 
 
 def run_all(jobs: Sequence[Job], processes: int = 1, done: Callable[[], None] | None = None) -> "list[Document]":
@@ -75,7 +60,7 @@ def run(job: Job) -> "Document":
     from rcrules.networks import recognise
     from rcrules.parts import rate
 
-    project, exports, rules, waivers = _read(job)
+    project, exports, rules, waivers = read_job(job)
     design = build(exports)
     board = recognise(design, rate(design, project), project)
     try:
@@ -85,109 +70,26 @@ def run(job: Job) -> "Document":
     return _waived(found, waivers)
 
 
-def project_of(job: Job) -> "Project":
-    """The project file of a job alone. Raises UserMistake with all its mistakes."""
-    from rcrules.project import Project, read
+def derive(job: Job, at: str) -> "tuple[Document, list[Derived]]":
+    """How the numbers at a net, part or pin come about; the document has no findings. Raises UserMistake."""
+    from rcrules.checks import known, near, numbers_at
+    from rcrules.design import build
+    from rcrules.networks import recognise
+    from rcrules.parts import rate
 
-    path = _project_path(job)
-    return read(path, str(path)) if path else Project()
-
-
-def _read(job: Job) -> "tuple[Project, list[Export], list[Rule], list[Waiver]]":
-    """Project, exports, rules and waivers; what is wrong with any of them is told at once."""
-    from rcrules.project import Project, read
-
-    path, problems = _project_path(job), Problems()
-    project = read(path, str(path), problems) if path else Project()
-    exports: list[Export] = []
-    rules: list[Rule] = []
-    waivers: list[Waiver] = []
-    for name in job.inputs or _listed(project, problems):
-        with problems.collecting():
-            exports.append(_export(name, project, listed=not job.inputs))
-    problems.mistakes += _twice(exports)
-    if job.with_rules:
-        with problems.collecting():
-            rules = _rules(job, project)
-        with problems.collecting():
-            waivers = _waivers(project)
-    problems.stop_if_any()
-    return project, exports, rules, waivers
+    project, exports, rules, _ = read_job(job)
+    design = build(exports)
+    board = recognise(design, rate(design, project), project)
+    if not known(board, at):
+        expected, do = "a net, a part, or a pin such as U3.NRST", _like(near(board, at))
+        place = Place(file="--at")
+        raise UserMistake(Mistake(place=place, problem="nothing on this board", found=at, expected=expected, do=do))
+    document = _document(replace(job, with_rules=False), project, board, [])
+    return document, numbers_at(board, project, rules, at)
 
 
-def _project_path(job: Job) -> Path | None:
-    """The project file asked for, or the nearest one beside the first input or above it, relative where it can be."""
-    from rcrules.project import find
-
-    if job.project is not None:
-        return Path(job.project)
-    first = next((name for name in job.inputs if name != "-"), None)
-    found = find(Path(first).parent if first else Path())
-    if found is None:
-        return None
-    return found.relative_to(Path.cwd()) if found.is_relative_to(Path.cwd()) else found
-
-
-def _listed(project: "Project", problems: Problems) -> tuple[str, ...]:
-    """The inputs of the project file. Raises UserMistake where there are none, with what else is wrong in it."""
-    if project.netlists or project.boms:
-        return tuple(str(_folder(project) / name) for name in (*project.netlists, *project.boms))
-    problems.stop_if_any()
-    place = Place(file=project.file or "command line")
-    expected = "[board] netlist or bom" if project.file else None
-    do = "name a netlist or BOM: rcrules check board.xml bom.csv"
-    raise UserMistake(Mistake(place=place, problem="no inputs", expected=expected, do=do))
-
-
-def _twice(exports: "Sequence[Export]") -> list[Mistake]:
-    """Inputs with the same content as an earlier one: a slip, and each would agree with itself."""
-    first: dict[str, str] = {}
-    found = []
-    for export in exports:
-        other = first.get(export.sha256)
-        if other is not None:
-            found.append(
-                Mistake(
-                    place=Place(file=export.source), problem="the same content twice", found=other, do="name it once"
-                )
-            )
-        first.setdefault(export.sha256, export.source)
-    return found
-
-
-def _folder(project: "Project") -> Path:
-    """Where the paths of the project file start."""
-    return Path(project.file).parent if project.file else Path()
-
-
-def _export(path: str, project: "Project", *, listed: bool) -> "Export":
-    """One input, of the command line or as the project file lists it."""
-    from rcrules.inventory import shown
-    from rcrules.readers import load, read
-
-    source = load(path, named_in=f"[board] of {project.file}" if listed else None)
-    return read(replace(source, name=shown(source.name)), project.columns)
-
-
-def _rules(job: Job, project: "Project") -> "list[Rule]":
-    """The rules asked for, else the project's; else those that need no facts, at most as warnings."""
-    from rcrules.rulebook import load, packs
-
-    if job.rules or project.rules:
-        folder, asked_by = (Path(), "--rules") if job.rules else (_folder(project), f"{project.file}")
-        return load(job.rules or project.rules, folder, project, asked_by=asked_by)
-    ready = load([pack.name for pack in packs() if not pack.needs_facts], project=project)
-    return [replace(rule, level="warning") if rule.level == "error" else rule for rule in ready]
-
-
-def _waivers(project: "Project") -> "list[Waiver]":
-    """Those of the file that the project names."""
-    if project.waivers is None:
-        return []
-    from rcrules.waivers import read
-
-    path = _folder(project) / project.waivers
-    return read(path, str(path))
+def _like(names: Sequence[str]) -> str:
+    return f"did you mean {' or '.join(names)}?" if names else "look for it with: rcrules networks"
 
 
 def _waived(found: "Document", waivers: "list[Waiver]") -> "Document":
@@ -233,7 +135,7 @@ def _judged(
     from rcrules.checks import astray, check, packs, unclear, unmet
 
     asked = job.rules or project.rules
-    checked = check(board, project, rules, also=also, sure_only=not asked)
+    checked = check(board, project, rules, also=also, sure_only=not asked, derived=job.derived)
     findings = checked.findings
     if job.proposals:
         from rcrules.proposals import propose

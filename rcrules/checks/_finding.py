@@ -34,8 +34,10 @@ class Judged:
     verdict: Verdict
 
 
-def finding(judged: Judged, board: Board, project: Project, assumptions: list[int]) -> Finding:
-    """The finding, with its derivation."""
+def finding(
+    judged: Judged, board: Board, project: Project, assumptions: list[int], *, derived: bool = False
+) -> Finding:
+    """The finding; ``derived``: with how its number comes about."""
     case, verdict = judged.case, judged.verdict
     rule, subject, margin = case.rule, case.subject, verdict.solution and verdict.solution.margin
     measured = _measured(judged)
@@ -64,7 +66,29 @@ def finding(judged: Judged, board: Board, project: Project, assumptions: list[in
         assumptions=assumptions,
         cause=_cause(judged, measured, board),
         detail=_detail(judged, board, project),
+        derivation=_derivation(judged) if derived else None,
+        response=_response(judged) if derived else None,
     )
+
+
+def _derivation(judged: Judged) -> Json | None:
+    """How the number comes about, where there is one."""
+    from rcrules.derivation import derive
+
+    solution, problem = judged.verdict.solution, judged.problem
+    if solution is None or problem is None:
+        return None
+    return derive(problem, judged.case.rule.measure, solution.bounds)
+
+
+def _response(judged: Judged) -> Json | None:
+    """What is observed over time, where there is a number."""
+    from rcrules.derivation import response
+
+    solution, problem = judged.verdict.solution, judged.problem
+    if solution is None or problem is None:
+        return None
+    return response(problem, judged.case.rule.measure, solution.bounds, _limit(judged.case))
 
 
 def _measured(judged: Judged) -> Quantity | None:

@@ -4,7 +4,7 @@ import argparse
 from typing import Final
 
 from rcrules import __version__
-from rcrules.cli import _compare, _run, _start
+from rcrules.cli import _compare, _derive, _run, _start
 
 _DESCRIPTION: Final = (
     "Finds the RC networks of a board, works out what each does in the worst case, and holds it against rules."
@@ -17,6 +17,7 @@ _SUMMARIES: Final = {
     "check": "hold every RC network of a board against the rules, and report what fails",
     "networks": "show what was found on a board: held nets, RC networks, roles, time constants; no rules",
     "propose": "check, and find standard values that would make what fails hold",
+    "derive": "how the numbers at a net, part or pin come about, checkable by hand",
     "compare": "two saved findings documents: what broke, what mended, what moved and why",
     "start": "write a first rcrules.toml for a board, with what was found and what to ask",
     "render": "show a saved findings document again, as any report; needs no board",
@@ -33,6 +34,7 @@ def parser() -> argparse.ArgumentParser:
     _check(_command(commands, "check", _run.check))
     _networks(_command(commands, "networks", _run.networks))
     _check(_command(commands, "propose", _run.check))
+    _derive_options(_command(commands, "derive", _derive.derive))
     _compare_documents(_command(commands, "compare", _compare.compare))
     _start_options(_command(commands, "start", _start.start))
     _render(_command(commands, "render", _run.render))
@@ -55,13 +57,7 @@ def _command(
 def _check(command: argparse.ArgumentParser) -> None:
     """Of check and of propose, which does the same and more."""
     _board_options(command)
-    command.add_argument(
-        "--rules",
-        action="append",
-        default=[],
-        metavar="PACK|FILE",
-        help="rules to apply (repeatable; else the project's; else the packs that need no project facts, as warnings)",
-    )
+    _rules_option(command)
     _fail_options(command)
     command.add_argument(
         "--against",
@@ -83,6 +79,20 @@ def _networks(command: argparse.ArgumentParser) -> None:
     _output_options(command)
 
 
+def _derive_options(command: argparse.ArgumentParser) -> None:
+    _board_options(command)
+    command.add_argument(
+        "--at", required=True, metavar="NET|REF", help="a net, a part such as C7, or a pin such as U3.NRST"
+    )
+    command.add_argument("--rule", metavar="ID", help="only the number that this rule asks for")
+    _rules_option(command)
+    command.add_argument(
+        "--report", action="append", default=[], metavar="FORMAT[=PATH]", help="text (default) or json (repeatable)"
+    )
+    command.set_defaults(quiet=False, verbose=False)
+    _color(command)
+
+
 def _compare_documents(command: argparse.ArgumentParser) -> None:
     command.add_argument("old", metavar="OLD", help="what check wrote with --report json=OLD")
     command.add_argument("new", metavar="NEW", help="the same of the newer board; - reads standard input")
@@ -95,6 +105,16 @@ def _start_options(command: argparse.ArgumentParser) -> None:
     command.add_argument("inputs", nargs="+", metavar="INPUT", help="netlists and BOMs of the board")
     where = "where to write it, never over a file (default: rcrules.toml beside the first input)"
     command.add_argument("--to", metavar="FILE", help=where)
+
+
+def _rules_option(command: argparse.ArgumentParser) -> None:
+    command.add_argument(
+        "--rules",
+        action="append",
+        default=[],
+        metavar="PACK|FILE",
+        help="rules to apply (repeatable; else the project's; else the packs that need no project facts, as warnings)",
+    )
 
 
 def _fail_options(command: argparse.ArgumentParser) -> None:

@@ -55,14 +55,19 @@ def write(document: Document, target: Target, *, verbose: bool, color: bool) -> 
         document, verbose=verbose, color=color and shown, width=terminal_width() if shown else None
     )
     path = _path(document, target)
+    text_to(None if path is None else str(path), text)
+
+
+def text_to(path: str | None, text: str) -> None:
+    """A text to a file, or to standard output. Raises UserMistake."""
     if path is None:
-        to_stdout(text, as_is=target.report.for_programs)
+        to_stdout(text)
         return
     try:
-        path.write_bytes(text.encode("utf-8", "backslashreplace"))
+        Path(path).write_bytes(text.encode("utf-8", "backslashreplace"))
     except OSError as error:
         do = "name a file in a folder that is there and may be written"
-        raise _mistake(f"cannot write the report: {error.strerror}", place=str(path), do=do) from error
+        raise _mistake(f"cannot write the report: {error.strerror}", place=path, do=do) from error
 
 
 def check_paths(documents: Sequence[Document], asked: Sequence[Target], inputs: Sequence[str]) -> None:

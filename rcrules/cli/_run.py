@@ -13,7 +13,8 @@ if TYPE_CHECKING:
 def check(chosen: argparse.Namespace) -> int:
     """Findings of every board; 1 when one counts."""
     asked = targets_of(chosen.report, quiet=chosen.quiet, boards=len(chosen.project))
-    documents = _against(_documents(chosen, with_rules=True), chosen)
+    derived = any(target.report.derived for target in asked)
+    documents = _against(_documents(chosen, with_rules=True, derived=derived), chosen)
     write_all(documents, asked, chosen)
     if chosen.waive:
         from rcrules.cli._waive import waive
@@ -93,18 +94,18 @@ def demo(chosen: argparse.Namespace) -> int:
     return 0
 
 
-def _documents(chosen: argparse.Namespace, *, with_rules: bool) -> "list[Document]":
+def _documents(chosen: argparse.Namespace, *, with_rules: bool, derived: bool = False) -> "list[Document]":
     """One document per board, in the order given."""
     from rcrules.cli._progress import progress
     from rcrules.pipeline import run_all
 
-    jobs = jobs_of(chosen, with_rules=with_rules)
+    jobs = jobs_of(chosen, with_rules=with_rules, derived=derived)
     boards = "1 board" if len(jobs) == 1 else f"{len(jobs)} boards"
     with progress(f"working on {boards}", quiet=chosen.quiet, total=len(jobs)) as done:
         return run_all(jobs, processes=chosen.jobs, done=done)
 
 
-def jobs_of(chosen: argparse.Namespace, *, with_rules: bool) -> "list[Job]":
+def jobs_of(chosen: argparse.Namespace, *, with_rules: bool, derived: bool = False) -> "list[Job]":
     """One job per board. Raises UserMistake where inputs and boards do not go together."""
     from rcrules.pipeline import Job
 
@@ -123,6 +124,7 @@ def jobs_of(chosen: argparse.Namespace, *, with_rules: bool) -> "list[Job]":
             rules=rules,
             with_rules=with_rules,
             proposals=chosen.command == "propose",
+            derived=derived,
         )
         for project in projects
     ]

@@ -7,7 +7,7 @@ from typing import TYPE_CHECKING, Final
 
 if TYPE_CHECKING:
     from rcrules.findings import Document
-    from rcrules.pipeline import Job
+    from rcrules.job import Job
 
 _DEFAULT: Final = "waivers.toml"
 
@@ -25,7 +25,7 @@ def waive(documents: "list[Document]", chosen: argparse.Namespace) -> None:
 
 def _append(text: str, number: int, job: "Job") -> None:
     from rcrules.errors import Mistake, Place, UserMistake
-    from rcrules.pipeline import project_of
+    from rcrules.job import project_of
 
     project = project_of(job)
     path = (Path(project.file).parent if project.file else Path()) / (project.waivers or _DEFAULT)

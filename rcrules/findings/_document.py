@@ -66,6 +66,12 @@ class Finding:
     compared."""
     waiver: int | None = None
     """Index into Document.waivers, of a waived finding."""
+    derivation: Json | None = None
+    """Where asked, how the number comes about: ``{measure, summary, picture, sources, voltages, modes, cases,
+    parameters}``, see ``derivation.derive``."""
+    response: Json | None = None
+    """Where asked, the observed voltage over time: ``{unit, time, nominal, low_case, high_case, thresholds, limit,
+    crossing}``, see ``derivation.response``."""
     proposals: Json | None = None
     """Of a failing finding, where asked: ``{found: [{changes, needs, findings}], reason}`` with the changes as ``{ref,
     what, was, now, source}``, the network's findings as they would be, and why nothing was found."""

@@ -6,9 +6,10 @@ from rcrules.reports._columns import aligned
 from rcrules.reports._lines import Line, safe
 from rcrules.reports._report import Render, Report
 from rcrules.reports._text_boards import boards_lines
+from rcrules.reports._text_derivation import derivation_lines
 from rcrules.reports._wrap import laid_out
 
-__all__ = ["Line", "Render", "Report", "aligned", "boards_lines", "laid_out", "reports", "safe"]
+__all__ = ["Line", "Render", "Report", "aligned", "boards_lines", "derivation_lines", "laid_out", "reports", "safe"]
 
 
 @cache

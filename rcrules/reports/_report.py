@@ -29,3 +29,5 @@ class Report:
     render: Render | Callable[..., str]
     for_programs: bool = False
     """Always UTF-8, also on standard output, which holds one such text and no more."""
+    derived: bool = False
+    """Tells how numbers come about: findings need their derivation and response."""

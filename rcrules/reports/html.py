@@ -35,4 +35,5 @@ REPORT = Report(
     summary="One page for a design review: every network drawn, plotted, judged; every assumption listed.",
     render=render,
     for_programs=True,
+    derived=True,
 )

@@ -21,4 +21,5 @@ REPORT = Report(
     summary="The findings document, for other programs and for later.",
     render=render,
     for_programs=True,
+    derived=True,
 )

@@ -1,0 +1,103 @@
+"""Numbers at one place of the board, whatever the rules ask, and how they come about."""
+
+from collections.abc import Iterator, Sequence
+from dataclasses import replace
+from difflib import get_close_matches
+from typing import Final
+
+from rcrules.checks._check import check
+from rcrules.checks._subjects import Subject, Subjects
+from rcrules.derivation import derive
+from rcrules.events import Unmeasurable, pose
+from rcrules.findings import Derived, Finding
+from rcrules.inventory import as_quantity
+from rcrules.measures import Measure, registry
+from rcrules.networks import Board
+from rcrules.problems import Failure, Request, solve_bounds
+from rcrules.project import Project
+from rcrules.rulebook import Rule
+
+PLAIN: Final = {
+    "node": ("time_constant", "corner_frequency"),
+    "capacitor": ("applied_voltage", "stored_energy"),
+    "resistor": ("power",),
+    "supply": ("total_capacitance",),
+}
+"""What is told of each kind of subject without a rule."""
+
+
+def numbers_at(board: Board, project: Project, rules: Sequence[Rule], at: str) -> list[Derived]:
+    """What the rules ask of the net, part or pin, then plain numbers that none of them asked for.
+
+    at: a net, a reference, or a pin as ``U3.NRST``.
+    """
+    found = check(board, project, rules, only=lambda subject: stands_at(subject, at), derived=True).findings
+    told = [_of_finding(item, at) for item in found]
+    asked = {(item.subject, item.measure) for item in told}
+    subjects = Subjects(board)
+    plain = [
+        _plain(board, project, subject, registry()[name], at)
+        for kind, names in PLAIN.items()
+        for subject in subjects.of(kind)
+        if stands_at(subject, at)
+        for name in names
+        if (kind, name) not in asked
+    ]
+    return [*told, *plain]
+
+
+def stands_at(subject: Subject, at: str) -> bool:
+    """Whether a subject is the net, part or pin of that name."""
+    if subject.kind in ("capacitor", "resistor"):
+        return subject.refs == (at,)
+    if subject.kind == "pin":
+        return at in subject.feeds
+    return at == subject.net or at in subject.nets or at in subject.feeds
+
+
+def near(board: Board, at: str) -> list[str]:
+    """Names of nets, parts and pins like one that is not there."""
+    return get_close_matches(at, [*board.design.nets, *board.parts, *_pins(board)], n=3)
+
+
+def known(board: Board, at: str) -> bool:
+    """Whether the board has a net, part or pin of that name."""
+    nodes = (node.net for network in board.networks for node in network.nodes)
+    return at in board.design.nets or at in board.parts or at in nodes or at in _pins(board)
+
+
+def _pins(board: Board) -> Iterator[str]:
+    """Every pin by its name and by its number."""
+    for net in board.design.nets.values():
+        for pin in net.pins:
+            yield from (pin.key, f"{pin.ref}.{pin.number}")
+
+
+def _of_finding(item: Finding, at: str) -> Derived:
+    return Derived(
+        at=at,
+        subject=item.subject,
+        measure=item.measure,
+        finding=item,
+        measured=item.measured,
+        derivation=item.derivation,
+        reason=item.reason if item.measured is None else None,
+        ask=item.ask,
+    )
+
+
+def _plain(board: Board, project: Project, subject: Subject, measure: Measure, at: str) -> Derived:
+    """A measure with its own options, or why it cannot be told."""
+    nothing = Derived(
+        at=at, subject=subject.kind, measure=measure.name, finding=None, measured=None, derivation=None, reason=None,
+        ask=[],
+    )  # fmt: skip
+    try:
+        problem = pose(board, project, subject.target, measure)
+    except Unmeasurable as error:
+        return replace(nothing, reason=error.reason, ask=[error.ask] if error.ask else [])
+    (solved,) = solve_bounds([Request(problem, measure)])
+    if isinstance(solved, Failure):
+        return replace(nothing, reason=solved.reason)
+    measured = as_quantity(solved, problem, measure.unit)
+    return replace(nothing, measured=measured, derivation=derive(problem, measure, solved))

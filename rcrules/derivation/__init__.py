@@ -1,0 +1,6 @@
+"""Step 17: a problem and the bounds of a measure in, how the numbers come about out, checkable by hand."""
+
+from rcrules.derivation._derive import derive
+from rcrules.derivation._response import response
+
+__all__ = ["derive", "response"]

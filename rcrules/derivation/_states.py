@@ -1,0 +1,125 @@
+"""Measures of a network at rest by hand: voltages in DC states, time constants, corners."""
+
+import math
+
+import numpy as np
+
+from rcrules.derivation._reduce import parallel, source
+from rcrules.derivation._respond import pole, seen
+from rcrules.derivation._sheet import Number
+from rcrules.derivation._working import Working
+from rcrules.problems import evaluate, steady_states
+
+
+def time_constant(work: Working) -> Number | None:
+    """tau = R C where all capacitors lie at one node."""
+    at = pole(work.problem.structure)
+    return None if at is None else seen(work, at).tau
+
+
+def corner(work: Working) -> Number | None:
+    """1 / (2 pi tau) where all capacitors lie at one node."""
+    tau = time_constant(work)
+    if tau is None:
+        return None
+    pi = work.sheet.number("pi", math.pi, "1")
+    return work.sheet.work("f", "Hz", "1 / (2 · {} · {})", lambda p, t: 1 / (2 * p * t), pi, tau)
+
+
+def across(work: Working) -> Number | None:
+    """v in the DC state that counts."""
+    shown = _volts(work)
+    if shown is None:
+        return None
+    value = float(work.measure.compute(work.problem.structure, work.cases)[0])
+    signed = ("signed", 1.0) in work.problem.structure.options
+    return shown if signed or shown.value * value >= 0.0 else _size(work, shown)
+
+
+def ratio(work: Working) -> Number | None:
+    """|v| / rated."""
+    volts = _most(work)
+    if volts is None or work.problem.structure.rating is None:
+        return None
+    rated = work.form(work.problem.structure.rating, "rated", "V")
+    return work.sheet.work("ratio", "1", "{} / {}", lambda v, r: v / r, volts, rated)
+
+
+def charge(work: Working) -> Number | None:
+    """Q = C v."""
+    volts = _most(work)
+    return volts and work.sheet.work("Q", "C", "{} · {}", lambda c, v: c * v, _farads(work), volts)
+
+
+def energy(work: Working) -> Number | None:
+    """W = C v² / 2."""
+    volts = _most(work)
+    return volts and work.sheet.work("W", "J", "{} · {}^2 / 2", lambda c, v: c * v * v / 2, _farads(work), volts)
+
+
+def power(work: Working) -> Number | None:
+    """P = v² / R."""
+    volts = _most(work)
+    ohms = work.sheet.number(_element(work, work.names.resistors), float(work.solved.ohms[0, _index(work)]), "Ω")
+    return volts and work.sheet.work("P", "W", "{}^2 / {}", lambda v, r: v * v / r, volts, ohms)
+
+
+def _index(work: Working) -> int:
+    return work.problem.structure.element or 0
+
+
+def _element(work: Working, names: tuple[str, ...]) -> str:
+    return names[_index(work)]
+
+
+def _farads(work: Working) -> Number:
+    farads = float(work.solved.farads[0, _index(work)])
+    return work.sheet.number(_element(work, work.names.capacitors), farads, "F")
+
+
+def _size(work: Working, volts: Number) -> Number:
+    return work.sheet.work("|v|", "V", "-{}", lambda v: -v, volts)
+
+
+def _most(work: Working) -> Number | None:
+    volts = _volts(work, most=True)
+    return _size(work, volts) if volts is not None and volts.value < 0.0 else volts
+
+
+def _volts(work: Working, *, most: bool = False) -> Number | None:
+    """v across the part in the DC state that counts; None where the transient goes beyond it."""
+    structure = work.problem.structure
+    states = steady_states(structure, work.cases)[0]
+    ends = (structure.at, structure.against)
+    volts = states[:, structure.at] - (0.0 if structure.against is None else states[:, structure.against])
+    index = _which(work, volts, most=most)
+    sources = len(structure.states)
+    held = work.held([float(evaluate(form, work.cases)[0]) for form in structure.states[index % sources]])
+    a, b = (_end(work, end, held, earlier=index >= sources) for end in ends)
+    note = f"where {_told(held)}" if held else ""
+    return work.sheet.work("v", "V", "{} - {}", lambda x, y: x - y, a, b, note=note)
+
+
+def _which(work: Working, volts: "np.ndarray[tuple[int], np.dtype[np.float64]]", *, most: bool) -> int:
+    """The state in which the voltage counts."""
+    options = dict(work.problem.structure.options)
+    if most:
+        return int(np.argmax(np.abs(volts)))
+    signed, least = options.get("signed") == 1.0, options.get("extreme") == "least"
+    values = volts if signed else np.abs(volts)
+    return int(np.argmin(values) if least else np.argmax(values))
+
+
+def _end(work: Working, terminal: int | None, held: dict[int, Number], *, earlier: bool) -> Number:
+    if terminal is None:
+        return work.sheet.number("0 V", 0.0, "V")
+    if terminal in held:
+        return held[terminal]
+    mesh = work.mesh(earlier=earlier)
+    links = mesh.reduce(terminal)
+    ohms = parallel(work.sheet, f"R at {work.name(terminal)}", [link.ohms for link in links])
+    return source(work.sheet, f"v({work.name(terminal)})", ohms, links, terminal, held, mesh.draws.get(terminal, []))
+
+
+def _told(held: dict[int, Number]) -> str:
+    return ", ".join(f"{number.symbol} is at {number.text}" for number in held.values() if number.symbol != "0 V")

@@ -1,0 +1,182 @@
+"""Measures of an event by hand: times at which levels are passed, voltages at an instant."""
+
+import math
+
+import numpy as np
+
+from rcrules.derivation._pieces import Piece
+from rcrules.derivation._respond import respond
+from rcrules.derivation._sheet import Number
+from rcrules.derivation._working import Working, height
+from rcrules.measures import passed
+from rcrules.problems import LevelForm, constant
+
+
+def delay(work: Working) -> Number | None:
+    """t - t0."""
+    when = _when(work, work.problem.structure.level("to"), "t")
+    if when is None or work.problem.structure.reference is None or math.isinf(when.value):
+        return when
+    return work.sheet.work("delay", "s", "{} - {}", lambda t, r: t - r, when, _reference(work))
+
+
+def to_63(work: Working) -> Number | None:
+    """The time to 1 - 1/e of the step."""
+    return _when(work, LevelForm(kind="step", fraction=constant(1.0 - math.exp(-1.0))), "t")
+
+
+def discharge(work: Working) -> Number | None:
+    """The time down to a level."""
+    structure = work.problem.structure
+    if ("endless", 1.0) not in structure.options:
+        return _when(work, structure.level("to"), "t")
+    level = work.form(structure.level("to").offset, "level", "V")
+    start = work.sheet.given("v", abs(float(work.solved.start[0])), "V", "across it; nothing discharges it")
+    never = math.inf if start.value > level.value else 0.0
+    return work.sheet.given("t", never, "s", f"the level is {level.text}")
+
+
+def edge(work: Working) -> Number | None:
+    """From the lower level to the higher one."""
+    structure = work.problem.structure
+    low, high = (_when(work, structure.level(name), f"t {name}") for name in ("low", "high"))
+    if low is None or high is None:
+        return None
+    turned = not structure.rising and structure.level("low").kind != "step"
+    first, last = (high, low) if turned else (low, high)
+    return work.sheet.work("rise time", "s", "{} - {}", lambda b, a: b - a, last, first)
+
+
+def settled(work: Working) -> Number | None:
+    """From then on within the band: |v - V| = band · step."""
+    solved, sheet = work.solved, work.sheet
+    size = _step(work)
+    band = float(work.problem.structure.option("band"))
+    value = float(work.measure.compute(work.problem.structure, work.cases)[0])
+    if size is None or not 0.0 < value < math.inf:
+        return None
+    share = sheet.number("band", band, "1")
+    edge_ = sheet.work("b", "V", "{} · {}", lambda f, s: f * s, share, size, note="half width of the band")
+    piece, x, begins = _reached(work, value)
+    side = 1.0 if float(solved.signal.at(np.array([value]))[0]) >= float(solved.final[0]) else -1.0
+    sign = "+" if side > 0 else "-"
+    end = sheet.given("v(end)", float(solved.final[0]), "V", "where v ends")
+    level = sheet.work("L", "V", f"{{}} {sign} {{}}", lambda e, b: e + side * b, end, edge_, note="edge of the band")
+    return _arrive(work, piece, x, begins, level, "t")
+
+
+def voltage_later(work: Working) -> Number | None:
+    """v at an instant."""
+    time = float(work.problem.structure.option("time"))
+    piece, x, _ = _reached(work, time)
+    return piece.at(work.sheet, "v", x, note=f"at {work.sheet.number('', time, 's').text}")
+
+
+def left(work: Working) -> Number | None:
+    """|v - V| / step at an instant."""
+    size, later = _step(work), voltage_later(work)
+    if size is None or later is None:
+        return None
+    end = work.sheet.given("v(end)", float(work.solved.final[0]), "V", "where v ends")
+    return work.sheet.work("residual", "1", "abs({} - {}) / {}", lambda v, e, s: abs(v - e) / s, later, end, size)
+
+
+def first(work: Working) -> Number | None:
+    """v just after the event."""
+    return respond(work, 0.0)[0].start
+
+
+def last(work: Working) -> Number | None:
+    """v in the end."""
+    return respond(work, math.inf)[-1].rest
+
+
+def _step(work: Working) -> Number | None:
+    """The step that a band or a residual counts in."""
+    solved = work.solved
+    ends = [float(solved.start[0]), float(solved.signal.initial()[0])]
+    final = float(solved.final[0])
+    size = max(abs(final - start) for start in ends)
+    return work.sheet.given("step", size, "V", "from the voltage before to where v ends") if size > 0.0 else None
+
+
+def _reached(work: Working, time: float) -> tuple[Piece, Number, float]:
+    """The piece of an instant, how far in it that is, and when the piece starts."""
+    pieces = respond(work, time)
+    begins = work.starts[work.piece_of(time)]
+    return pieces[-1], work.sheet.number("x", time - begins, "s"), begins
+
+
+def _when(work: Working, level: LevelForm, symbol: str) -> Number | None:
+    """The instant at which v passes a level; None where that is not defined."""
+    time = float(passed(work.solved, level)[0])
+    if math.isnan(time):
+        return None
+    if math.isinf(time):
+        return _never(work, level, symbol)
+    piece, x, begins = _reached(work, time)
+    index = work.piece_of(time)
+    found = height(work, level, index)
+    if x.value <= 0.0:
+        return work.sheet.given(symbol, time, "s", f"v is at {piece.start.text}, beyond the level")
+    if found.slope == 0.0:
+        return _arrive(work, piece, x, begins, found.number, symbol)
+    return _meet(work, piece, x, begins, found.number, found.slope, symbol)
+
+
+def _never(work: Working, level: LevelForm, symbol: str) -> Number:
+    pieces = respond(work, math.inf)
+    found = height(work, level, len(work.starts) - 1)
+    note = f"v goes to {pieces[-1].rest.text} and never passes {found.number.text}"
+    return work.sheet.given(symbol, math.inf, "s", note)
+
+
+def _arrive(work: Working, piece: Piece, x: Number, begins: float, level: Number, symbol: str) -> Number:
+    """The instant at which v is at a level that stands still."""
+    own = symbol if begins == 0.0 else "x"
+    found = piece.when(work.sheet, own, level)
+    if found is None:
+        found = work.sheet.given(own, x.value, "s", "found between brackets; put in:")
+        work.checks.append((piece.at(work.sheet, "v(x)", found, note="the level"), level))
+    return _since_event(work, found, begins, symbol)
+
+
+def _meet(
+    work: Working, piece: Piece, x: Number, begins: float, level: Number, slope: float, symbol: str
+) -> Number:
+    """The instant at which v meets a level that moves."""
+    sheet = work.sheet
+    found = sheet.given(symbol if begins == 0.0 else "x", x.value, "s", "found between brackets; put in:")
+    value = piece.at(sheet, "v(x)", found)
+    rate = sheet.number("slope of L", slope, "V/s")
+    moved = sheet.work("L(x)", "V", "{} + {} · {}", lambda v, s, t: v + s * t, level, rate, found, note="meets v(x)")
+    work.checks.append((value, moved))
+    return _since_event(work, found, begins, symbol)
+
+
+def _since_event(work: Working, found: Number, begins: float, symbol: str) -> Number:
+    if begins == 0.0:
+        return found
+    start = work.sheet.number("start", begins, "s")
+    return work.sheet.work(symbol, "s", "{} + {}", lambda b, x: b + x, start, found, note="since the event")
+
+
+def _reference(work: Working) -> Number:
+    """When the supply counts as up: on its ramp from (ta, va) to (tb, vb), t0 = ta + (tb - ta) (L - va)/(vb - va)."""
+    structure, sheet = work.problem.structure, work.sheet
+    time = float(work.solved.reference[0])
+    terminal, level = structure.reference or (0, LevelForm(kind="voltage"))
+    name, index = work.name(terminal), work.piece_of(time)
+    valid = work.form(level.offset, f"{name} valid", "V")
+    slope = work.slopes(index).get(terminal)
+    note = f"when {name} is valid"
+    if slope is None or time <= work.starts[index]:
+        return sheet.given("t0", time, "s", note)
+    length = sheet.number(f"{name} rise", work.starts[index + 1] - work.starts[index], "s")
+    low, high = work.volts(index)[terminal], work.volts(index + 1)[terminal]
+    if low.value == 0.0 and work.starts[index] == 0.0:
+        return sheet.work("t0", "s", "{} · {} / {}", lambda t, v, h: t * v / h, length, valid, high, note=note)
+    start = sheet.number("start", work.starts[index], "s")
+    formula = "{} + {} · ({} - {}) / ({} - {})"
+    numbers = (start, length, valid, low, high, low)
+    return sheet.work("t0", "s", formula, lambda s, t, v, a, b, c: s + t * (v - a) / (b - c), *numbers, note=note)
