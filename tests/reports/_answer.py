@@ -1,7 +1,6 @@
 """A finding with all that a document can keep of how its number comes about."""
 
 import math
-from dataclasses import dataclass
 from typing import Final
 
 from rcrules.findings import Finding, Json
@@ -10,20 +9,9 @@ from tests.reports._sample import finding
 TIMES: Final = [0.002 * index for index in range(-4, 117)]
 
 
-@dataclass(frozen=True, slots=True, kw_only=True)
-class Answering(Finding):
-    """A finding with a response and a derivation."""
-
-    derivation: Json | None = None
-    response: Json | None = None
-
-
 def answering(**changed: object) -> Finding:
     """The failing reset of the sample with its response and derivation; changed fields by name."""
-    kept = {name: changed.pop(name) for name in ("derivation", "response") if name in changed}
-    plain = finding(**changed)
-    fields = {name: getattr(plain, name) for name in Finding.__dataclass_fields__}
-    return Answering(**{**fields, "derivation": DERIVATION, "response": response(), **kept})
+    return finding(**{"derivation": DERIVATION, "response": response(), **changed})
 
 
 def curve(tau: float, volts: float) -> list[float]:
@@ -40,7 +28,7 @@ def response(**changed: object) -> Json:
         "low_case": curve(0.06, 3.4),
         "high_case": curve(0.14, 3.2),
         "thresholds": [{"name": "may switch", "low": 0.96, "nominal": 0.99, "high": 1.02}],
-        "limit": {"at_least": 0.03},
+        "limit": {"at_least": 0.03, "at_most": 0.5},
         "crossing": {"low": 0.0219, "nominal": 0.0357, "high": 0.0497},
         **changed,
     }
@@ -67,10 +55,23 @@ def _parameter(name: str, nominal: float, unit: str, share: float | None, *, giv
     return {"parameter": name, **spread, **moves}
 
 
+def _arm(ref: str, kind: str, value: float, unit: str) -> Json:
+    return {"ref": ref, "kind": kind, "value": value, "unit": unit}
+
+
 DERIVATION: Final[Json] = {
     "measure": "delay",
     "summary": "Time from the event until the voltage reaches a level.",
-    "picture": [],
+    "picture": [
+        {"node": "+3V3", "seen": False, "branches": [], "down": [_arm("R12", "resistor", 1e4, "Ω")], "drawn": []},
+        {
+            "node": "NRST",
+            "seen": True,
+            "branches": [{**_arm("C7", "capacitor", 1e-05, "F"), "to": "0 V"}],
+            "down": [],
+            "drawn": ["U3.NRST leakage"],
+        },
+    ],
     "sources": [
         {"net": "+3V3", "low": 3.2, "nominal": 3.3, "high": 3.4, "before": 0.0, "way": [[0.0, 0.0], [0.00125, 3.3]]}
     ],
