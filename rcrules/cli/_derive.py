@@ -22,12 +22,13 @@ def derive(chosen: argparse.Namespace) -> int:
     shown = _chosen(found, chosen.rule)
     for target in asked:
         if target.report.name == "json":
-            text_to(target.path, derived_text(shown))
+            text_to(target.path, derived_text(shown), for_programs=True)
             continue
         on_screen = target.path is None
         lines = derivation_lines(document, shown)
         color = on_screen and wants_color(chosen.color)
-        text_to(target.path, laid_out(lines, color=color, width=terminal_width() if on_screen else None))
+        text = laid_out(lines, color=color, width=terminal_width() if on_screen else None)
+        text_to(target.path, text, for_programs=False)
     return 0
 
 

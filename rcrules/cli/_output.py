@@ -55,13 +55,13 @@ def write(document: Document, target: Target, *, verbose: bool, color: bool) -> 
         document, verbose=verbose, color=color and shown, width=terminal_width() if shown else None
     )
     path = _path(document, target)
-    text_to(None if path is None else str(path), text)
+    text_to(None if path is None else str(path), text, for_programs=target.report.for_programs)
 
 
-def text_to(path: str | None, text: str) -> None:
+def text_to(path: str | None, text: str, *, for_programs: bool) -> None:
     """A text to a file, or to standard output. Raises UserMistake."""
     if path is None:
-        to_stdout(text)
+        to_stdout(text, as_is=for_programs)
         return
     try:
         Path(path).write_bytes(text.encode("utf-8", "backslashreplace"))
