@@ -165,7 +165,7 @@ class PartList:
         return fields
 
     def _place(self, line: int, column: int | None = None) -> Place:
-        return Place(file=self._source.name, line=line, column=column)
+        return Place(file=self._source.name, line=line, column=column or None)
 
 
 def _adds(first: ExportPart, later: ExportPart) -> bool:

@@ -29,6 +29,8 @@ class Component:
     properties: list[Entry] = field(default_factory=list)
     """The same fields once more in some versions, then fields of the sheet, then flags."""
     variants: list[str] = field(default_factory=list)
+    omitted: str = ""
+    """Why the part is not fitted, where the format has its own way to say so."""
 
 
 @dataclass(slots=True, kw_only=True)

@@ -40,7 +40,7 @@ _TEXTS: Final = tuple(
 )
 _OURS: Final = re.compile(r"\s*\(\s*\"?export[\s()\"]")
 _ELEMENT_LINE: Final = re.compile(r"^[RCLVIDQMX]\w*(?: +[^\s,;|]+){3,}[ \r]*$", re.IGNORECASE | re.MULTILINE)
-_ROOTS: Final = {"ipc-2581": "an IPC-2581 file", "html": "an HTML page", "svg": "a picture"}
+_ROOTS: Final = {"html": "an HTML page", "svg": "a picture"}
 
 
 def refuse_foreign(source: Source) -> None:
@@ -53,9 +53,8 @@ def refuse_foreign(source: Source) -> None:
         if source.data.startswith(signature):
             raise _foreign(source, name, instead)
     root = root_name(source)
-    if root is not None and root != "export":
-        known = _ROOTS.get(root.lower(), f"XML with the root <{shorten(root)}>")
-        raise _foreign(source, known, _INSTEAD)
+    if root is not None and root.lower() in _ROOTS:
+        raise _foreign(source, _ROOTS[root.lower()], _INSTEAD)
     text = _text_format(head(source)) if root is None else None
     if text is not None:
         raise _foreign(source, text, _INSTEAD)
@@ -65,6 +64,9 @@ def unknown(source: Source) -> UserMistake:
     """The mistake of a source that no reader claims and that is nothing known."""
     first = next((line for line in head(source).splitlines() if line.strip()), "")
     broken = sum(not (character.isprintable() or character in "\t\r\n") for character in head(source))
+    root = root_name(source)
+    if root is not None:
+        return _foreign(source, f"XML with the root <{shorten(root)}>", _INSTEAD)
     what = "binary data" if broken > 3 else f"text that starts with {shorten(first)!r}"
     return _foreign(source, what, _INSTEAD)
 

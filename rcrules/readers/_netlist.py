@@ -2,7 +2,7 @@
 
 import hashlib
 from collections.abc import Mapping
-from typing import Final
+from typing import Final, Literal
 
 from rcrules.errors import Place
 from rcrules.readers import _bounds
@@ -96,7 +96,7 @@ class Netlist:
         self._nodes.extend((key, node) for node in self._pending)
         self._pending.clear()
 
-    def export(self) -> Export:
+    def export(self, kind: Literal["netlist", "bom"] = "netlist") -> Export:
         """Everything collected, with pin names and types joined in from the library."""
         pins, open_pins = self._pins()
         parts = tuple(self._part(component) for component in self._components.values())
@@ -104,7 +104,7 @@ class Netlist:
             reader=self.reader,
             source=self.source.name,
             sha256=hashlib.sha256(self.source.data).hexdigest(),
-            kind="netlist",
+            kind=kind,
             parts=parts,
             pins=pins,
             open_pins=open_pins,
@@ -115,6 +115,7 @@ class Netlist:
 
     def _part(self, component: Component) -> ExportPart:
         fields, flagged = self._fields(component)
+        flagged = component.omitted or flagged
         fitted, why = (False, flagged) if flagged else fitting(component.value, _texts(fields))
         if component.variants:
             named = ", ".join(component.variants)

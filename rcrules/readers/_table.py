@@ -31,7 +31,7 @@ class Row:
     line: int
     cells: tuple[str, ...]
     columns: tuple[int, ...]
-    """Column of the file at which each cell starts, from 1."""
+    """Column of the file at which each cell starts, from 1; 0 where it is not known."""
     delimiter: str
 
     def cell(self, index: int | None) -> str:

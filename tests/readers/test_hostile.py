@@ -34,7 +34,6 @@ FOREIGN = {
     "an EDIF netlist": b"(edif board (edifVersion 2 0 0))",
     "an older parenthesised list of parts": b"# an export of old\n(\n ( /513B6FE5 $noname  R27 10k {Lib=R}\n",
     "a parenthesised text, but no netlist known here": b"(netlist (R1))",
-    "an IPC-2581 file": b'<?xml version="1.0"?><IPC-2581 revision="B"/>',
     "XML with the root <schematic>": b"<schematic><component/></schematic>",
     "a SPICE deck": b"* a filter\nR1 in out 10k\nC1 out 0 100n\n.tran 1u 1m\n.end\n",
     "a netlist in star sections": b"*BOARD*\n*PART*\nR1 R0603\n*NET*\n",
