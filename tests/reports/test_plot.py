@@ -11,6 +11,9 @@ from rcrules.findings import Json
 from rcrules.reports._page._plot import plot, ticks
 from tests.reports._answer import TIMES, answering, response
 
+END = 3 * 0.0497
+"""The response is shown until three times as late as the level is met."""
+START = -0.05 * END
 LEFT, RIGHT, TOP, BOTTOM = 62, 640 - 124, 18, 260 - 34
 
 
@@ -50,7 +53,7 @@ def test_a_limit_in_time_stands_upright_with_the_forbidden_side_shaded() -> None
         text = drawn(response(limit={key: 0.03}), limit={key: 0.03, "unit": "s", "text": "", "from": ""})
         (line,) = paths(text, "limit")
         (shade,) = paths(text, "forbidden")
-        assert line[0] == pytest.approx(LEFT + (RIGHT - LEFT) * (0.03 - TIMES[0]) / (TIMES[-1] - TIMES[0]), abs=0.1)
+        assert line[0] == pytest.approx(LEFT + (RIGHT - LEFT) * (0.03 - START) / (END - START), abs=0.1)
         assert (shade[0], shade[2]) == ((LEFT, line[0]) if left else (line[0], RIGHT))
         assert "limit 30 ms" in text
 
@@ -63,10 +66,29 @@ def test_a_limit_in_volts_lies_across() -> None:
         assert TOP < line[1] < BOTTOM
 
 
-def test_a_limit_after_the_end_widens_the_frame() -> None:
-    text = drawn(response(limit={"at_most": 0.4}), limit={"at_most": 0.4, "unit": "s", "text": "", "from": ""})
-    (line,) = paths(text, "limit")
-    assert LEFT < line[0] < RIGHT
+def test_a_limit_a_little_later_widens_the_frame_and_one_far_off_is_told_at_its_edge() -> None:
+    for late, text in ((0.2, "limit 200 ms<"), (4.0, "limit 4 s →<")):
+        found = drawn(response(limit={"at_most": late}), limit={"at_most": late, "unit": "s", "text": "", "from": ""})
+        (line,) = paths(found, "limit")
+        assert text in found
+        assert (line[0] < RIGHT) == (late < 1.0)
+
+
+def test_a_curve_ends_at_the_frame_on_the_line_between_its_points() -> None:
+    """Straight line from (0, 0) to (1 s, 10 V): 1.5 V at 0.15 s (hand derivation)."""
+    line = {"time": [0.0, 1.0], "nominal": [0.0, 10.0], "low_case": None, "high_case": None, "thresholds": []}
+    text = drawn(response(**line, limit=None, crossing={"low": 0.01, "nominal": 0.02, "high": 0.05}))
+    (numbers,) = paths(text, "nominal")
+    (axis,) = paths(text, "axis")
+    assert len(numbers) == 4
+    assert numbers[2] == RIGHT
+    assert axis[2] == BOTTOM
+    assert (numbers[1] - numbers[3]) / (BOTTOM - TOP) == pytest.approx(1.5 / (10.0 * 1.12), abs=0.005)
+
+
+def test_a_level_is_called_as_the_rule_calls_it() -> None:
+    rows = [{"name": "to", "low": 0.96, "nominal": 0.99, "high": 1.02}]
+    assert ">may switch</text>" in drawn(response(thresholds=rows))
 
 
 def test_what_is_never_reached_has_no_mark() -> None:

@@ -6,6 +6,7 @@ Coordinates carry one decimal; colours are classes, so that light and dark are t
 import math
 from collections.abc import Iterable, Iterator, Sequence
 from dataclasses import dataclass
+from itertools import pairwise
 from typing import Final
 
 from markupsafe import Markup, escape
@@ -22,6 +23,11 @@ _TOP: Final = 18
 _BOTTOM: Final = 34
 _TICKS: Final = 5
 _MOST_POINTS: Final = 60
+_PAST: Final = 3.0
+"""So many times as far as the level is met the response is shown."""
+_FAR: Final = 2.5
+"""A limit more than so many times beyond that is told at the edge."""
+_ROOM: Final = 1.1
 _LONGEST: Final = 18
 """Letters of a level's name that fit beside the frame."""
 _NEAR: Final = 12.0
@@ -68,9 +74,17 @@ def _frame(finding: Finding, response: Json) -> Frame:
     finite = [value for value in heights if _known(value)] or [0.0]
     low, high = min(finite), max(finite)
     room = 0.06 * (high - low) or abs(high) or 1.0
-    times = [time for time in response["time"] if _known(time)]
-    last = max([times[-1], *(1.04 * time for time in _limits(finding, response, across=True))])
-    return Frame(times=(times[0], last if last > times[0] else times[0] + 1.0), values=(low - room, high + room))
+    return Frame(times=_span(finding, response), values=(low - room, high + room))
+
+
+def _span(finding: Finding, response: Json) -> tuple[float, float]:
+    """From the first time kept to some way past the crossing, and to the limit where that is not far off."""
+    start, end = response["time"][0], response["time"][-1]
+    met = [time for time in (response["crossing"] or {}).values() if _known(time) and time > 0.0]
+    end = min(end, _PAST * max(met)) if met else end
+    reached = [_ROOM * time for time in _limits(finding, response, across=True) if _ROOM * time <= _FAR * end]
+    start = max(start, -0.05 * end)
+    return start, max([end, *reached, start + 1e-15])
 
 
 def _known(value: object) -> bool:
@@ -101,16 +115,29 @@ def _body(finding: Finding, response: Json, frame: Frame) -> Iterator[str]:
     for look, values in (("case", low if not high else high if not low else ()), ("nominal", response["nominal"])):
         if values:
             yield f'<path class="{look}" d="M{" ".join(_points(time, values, frame))}"/>'
-    yield from _thresholds(response, frame)
+    yield from _thresholds(finding, response, frame)
     yield from _crossings(response, frame)
 
 
 def _points(time: Sequence[float], values: Sequence[float], frame: Frame) -> list[str]:
-    """The corners of a curve: not more than are seen."""
-    pairs = [(t, v) for t, v in zip(time, values, strict=True) if _known(t) and _known(v)]
+    """The corners of a curve inside the frame: not more than are seen."""
+    pairs = list(_inside([pair for pair in zip(time, values, strict=True) if all(map(_known, pair))], frame.times))
     step = math.ceil(len(pairs) / _MOST_POINTS) if pairs else 1
     kept = pairs[::step] + ([pairs[-1]] if (len(pairs) - 1) % step else [])
     return [f"{frame.x(t):.1f} {frame.y(v):.1f}" for t, v in kept]
+
+
+def _inside(pairs: Sequence[tuple[float, float]], span: tuple[float, float]) -> Iterator[tuple[float, float]]:
+    """The part of a curve between two times, its ends on straight lines between neighbours."""
+    start, end = span
+    if pairs and start <= pairs[0][0] <= end:
+        yield pairs[0]
+    for (t, v), (later, then) in pairwise(pairs):
+        for edge in (start, end):
+            if t < edge < later:
+                yield edge, v + (then - v) * (edge - t) / (later - t)
+        if start <= later <= end:
+            yield later, then
 
 
 def _axes(unit: str, frame: Frame) -> Iterator[str]:
@@ -146,6 +173,8 @@ def _forbidden(finding: Finding, response: Json, frame: Frame) -> Iterator[str]:
         if value in _limits(finding, response, across=True):
             x = frame.x(value)
             start, end = (_LEFT, x) if key == "at_least" else (x, right)
+            if value > frame.times[1]:
+                text += " →"
             yield f'<path class="forbidden" d="M{start:.1f} {_TOP}H{end:.1f}V{bottom}H{start:.1f}z"/>'
             yield f'<path class="limit" d="M{x:.1f} {_TOP}V{bottom}"/>'
             yield _text(min(x, right - 30), _TOP - 6, text, "middle", "limit-text")
@@ -157,8 +186,8 @@ def _forbidden(finding: Finding, response: Json, frame: Frame) -> Iterator[str]:
             yield _text(right - 4, y - 4, text, "end", "limit-text")
 
 
-def _thresholds(response: Json, frame: Frame) -> Iterator[str]:
-    """A band from lowest to highest with its line; names beside, moved apart."""
+def _thresholds(finding: Finding, response: Json, frame: Frame) -> Iterator[str]:
+    """A band from lowest to highest with its line; beside it what the rule calls it, moved apart."""
     right, named = _WIDE - _RIGHT, []
     for row in response["thresholds"]:
         if not _known(row["nominal"]):
@@ -167,7 +196,7 @@ def _thresholds(response: Json, frame: Frame) -> Iterator[str]:
         top, bottom, y = frame.y(high), frame.y(low), frame.y(row["nominal"])
         yield f'<path class="band" d="M{_LEFT} {top:.1f}H{right}V{bottom:.1f}H{_LEFT}z"/>'
         yield f'<path class="threshold" d="M{_LEFT} {y:.1f}H{right}"/>'
-        named.append((y, str(row["name"])))
+        named.append((y, str(finding.options.get(row["name"], row["name"]))))
     for y, name in _apart(named):
         yield _text(
             right + 6, y + 4, name if len(name) <= _LONGEST else f"{name[: _LONGEST - 1]}…", "start", "threshold-text"
