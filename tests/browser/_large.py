@@ -3,8 +3,7 @@
 from dataclasses import replace
 
 from rcrules.findings import Document
-from tests.reports._answer import answering
-from tests.reports._sample import DOCUMENT
+from tests.reports._sample import DOCUMENT, answering
 
 
 def large(count: int) -> Document:

@@ -12,8 +12,7 @@ from rcrules.errors import UserMistake
 from rcrules.findings import dumps, loads, schema_text
 from rcrules.pipeline import Job, run
 from tests.cli._board import NETLIST
-from tests.reports._answer import answering
-from tests.reports._sample import DOCUMENT
+from tests.reports._sample import DOCUMENT, answering
 
 SAVED: Any = json.loads(dumps(DOCUMENT))
 FREE = ("origins", "options", "low_case", "high_case", "margin_case", "quantities", "unmeasured", "detail", "deciding")

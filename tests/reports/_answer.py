@@ -1,22 +1,16 @@
-"""A finding with all that a document can keep of how its number comes about."""
+"""All that a document can keep of how the number of a finding comes about."""
 
 import math
 from typing import Final
 
-from rcrules.findings import Finding, Json
-from tests.reports._sample import finding
+from rcrules.findings import Json
 
-TIMES: Final = [0.002 * index for index in range(-4, 117)]
-
-
-def answering(**changed: object) -> Finding:
-    """The failing reset of the sample with its response and derivation; changed fields by name."""
-    return finding(**{"derivation": DERIVATION, "response": response(), **changed})
+TIMES: Final = [round(0.01 * index, 9) for index in range(-1, 24)]
 
 
 def curve(tau: float, volts: float) -> list[float]:
     """v(t) = V (1 - exp(-t / tau)) (hand derivation)."""
-    return [volts * (1 - math.exp(-max(time, 0.0) / tau)) for time in TIMES]
+    return [round(volts * (1 - math.exp(-max(time, 0.0) / tau)), 9) for time in TIMES]
 
 
 def response(**changed: object) -> Json:

@@ -3,6 +3,7 @@
 import math
 
 from rcrules.findings import Document, Finding, Quantity
+from tests.reports._answer import DERIVATION, response
 
 PLACE = {"file": "gauge.xml", "line": 812}
 
@@ -51,6 +52,11 @@ def finding(**changed: object) -> Finding:
         },
     }
     return Finding(**{**fields, **changed})
+
+
+def answering(**changed: object) -> Finding:
+    """The failing reset with its response and derivation; changed fields by name."""
+    return finding(**{"derivation": DERIVATION, "response": response(), **changed})
 
 
 def _moved(name: str, value: float, unit: str, relative: float | None, why: str) -> dict[str, object]:
@@ -128,7 +134,7 @@ PROPOSALS = {
 FINDINGS = [
     _asking("AIN0", "U5.AIN0"),
     _asking("AIN1", "U5.AIN1"),
-    finding(proposals=PROPOSALS),
+    answering(proposals=PROPOSALS),
     finding(
         rule="reset-lifts-soon-enough",
         level="warning",

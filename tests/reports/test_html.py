@@ -16,8 +16,7 @@ from lxml import html
 from rcrules.errors import UserMistake
 from rcrules.findings import Document
 from rcrules.reports import reports
-from tests.reports._answer import answering
-from tests.reports._sample import DOCUMENT, FINDINGS, finding
+from tests.reports._sample import DOCUMENT, FINDINGS, answering, finding
 
 
 def text_of(document: Document) -> str:

@@ -9,7 +9,8 @@ from lxml import etree
 
 from rcrules.findings import Json
 from rcrules.reports._page._plot import plot, ticks
-from tests.reports._answer import TIMES, answering, response
+from tests.reports._answer import TIMES, response
+from tests.reports._sample import answering
 
 END = 3 * 0.0497
 """The response is shown until three times as late as the level is met."""

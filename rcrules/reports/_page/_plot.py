@@ -56,7 +56,7 @@ class Frame:
 
 def plot(finding: Finding) -> Markup | None:
     """The drawing; None where no response was kept."""
-    response: Json | None = getattr(finding, "response", None)
+    response = finding.response
     if not response or len(response["time"]) < 2:
         return None
     frame = _frame(finding, response)

@@ -52,7 +52,7 @@ class Working:
 
 def working(finding: Finding) -> Working | None:
     """None where the document keeps nothing of it."""
-    kept: Json | None = getattr(finding, "derivation", None)
+    kept = finding.derivation
     if not kept:
         return None
     unit = finding.measured.unit if finding.measured else ""
