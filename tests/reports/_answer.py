@@ -44,7 +44,7 @@ def _case(name: str, value: float, off: list[str]) -> Json:
 
 
 def _parameter(name: str, nominal: float, unit: str, share: float | None, *, given: bool = True) -> Json:
-    spread = {"low": 0.9 * nominal, "nominal": nominal, "high": 1.1 * nominal, "unit": unit}
+    spread = {"low": 0.9 * nominal, "nominal": nominal, "high": float(f"{1.1 * nominal:.12g}"), "unit": unit}
     moves = {"to_low": -0.003, "to_high": 0.003, "share": share, "given": given, "from": "BOM field 'Tol'"}
     return {"parameter": name, **spread, **moves}
 
