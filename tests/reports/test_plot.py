@@ -15,7 +15,7 @@ from tests.reports._sample import answering
 END = 3 * 0.0497
 """The response is shown until three times as late as the level is met."""
 START = -0.05 * END
-LEFT, RIGHT, TOP, BOTTOM = 62, 640 - 124, 18, 260 - 34
+LEFT, RIGHT, TOP, BOTTOM = 62, 640 - 132, 18, 260 - 34
 
 
 def drawn(found: Json | None, **changed: object) -> str:

@@ -18,7 +18,7 @@ from rcrules.reports._lines import safe
 _WIDE: Final = 640
 _HIGH: Final = 260
 _LEFT: Final = 62
-_RIGHT: Final = 124
+_RIGHT: Final = 132
 _TOP: Final = 18
 _BOTTOM: Final = 34
 _TICKS: Final = 5
