@@ -30,6 +30,9 @@ class Job:
     """True: also what changes of parts would mend what fails."""
     derived: bool = False
     """True: also how the numbers of findings come about."""
+    samples: int = 0
+    """Random cases of each finding; 0 = no statistics."""
+    seed: int = 0
 
 
 def project_of(job: Job) -> "Project":

@@ -132,10 +132,11 @@ def _judged(
     job: Job, found: "Document", project: "Project", board: "Board", rules: "list[Rule]", also: "list[Parameter]"
 ) -> "Document":
     """The document with what the rules find."""
-    from rcrules.checks import astray, check, packs, unclear, unmet
+    from rcrules.checks import Asked, astray, check, packs, unclear, unmet
 
     asked = job.rules or project.rules
-    checked = check(board, project, rules, also=also, sure_only=not asked, derived=job.derived)
+    beside = Asked(derived=job.derived, samples=job.samples, seed=job.seed)
+    checked = check(board, project, rules, also=also, sure_only=not asked, asked=beside)
     findings = checked.findings
     if job.proposals:
         from rcrules.proposals import propose

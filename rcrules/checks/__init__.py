@@ -1,8 +1,9 @@
 """Step 9: rules and board in, findings with three-valued verdicts out."""
 
+from rcrules.checks._asked import Asked
 from rcrules.checks._check import Checked, check
 from rcrules.checks._numbers import known, near, numbers_at
 from rcrules.checks._packs import astray, packs, unclear, unmet
 from rcrules.checks._subjects import Subject
 
-__all__ = ["Checked", "Subject", "astray", "check", "known", "near", "numbers_at", "packs", "unclear", "unmet"]
+__all__ = ["Asked", "Checked", "Subject", "astray", "check", "known", "near", "numbers_at", "packs", "unclear", "unmet"]

@@ -4,6 +4,7 @@ from collections import Counter
 from collections.abc import Callable, Iterable, Mapping, Sequence
 from dataclasses import dataclass
 
+from rcrules.checks._asked import Asked
 from rcrules.checks._finding import Judged, finding
 from rcrules.checks._resolve import Case, resolve
 from rcrules.checks._select import selected
@@ -40,13 +41,13 @@ def check(
     also: Iterable[Parameter] = (),
     sure_only: bool = False,
     only: Callable[[Subject], bool] | None = None,
-    derived: bool = False,
+    asked: Asked = Asked(),  # noqa: B008 - it cannot change
 ) -> Checked:
     """Hold every rule against every subject that it selects.
 
     also: parameters of other quantities of the document, whose assumptions are listed as well.
     only: which subjects to look at; None = all.
-    derived: whether findings tell how their numbers come about.
+    asked: what findings tell besides their verdict.
     sure_only: leave out subjects of which it is not known whether a rule meets them, instead of calling them undecided.
     """
     subjects = Subjects(board)
@@ -55,7 +56,7 @@ def check(
     judged = _judge(cases, board, project)
     posed = (item.problem.parameters for item in judged if item.problem)
     listed, numbers = listed_assumptions(key for parameters in (also, *posed) for key in assumptions_of(parameters))
-    findings = [finding(item, board, project, _indexes(item, numbers), derived=derived) for item in judged]
+    findings = [finding(item, board, project, _indexes(item, numbers), asked=asked) for item in judged]
     met = Counter(case.rule.id for case in cases)
     unclear = Counter(case.rule.id for case in found if not case.sure) if sure_only else Counter[str]()
     return Checked(findings=sorted(findings, key=_order), assumptions=listed, met=met, unclear=unclear)

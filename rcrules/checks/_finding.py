@@ -5,6 +5,7 @@ from collections.abc import Iterable
 from dataclasses import dataclass
 from typing import Final
 
+from rcrules.checks._asked import Asked
 from rcrules.checks._identity import fingerprint
 from rcrules.checks._levels import level_text
 from rcrules.checks._resolve import Case
@@ -35,9 +36,9 @@ class Judged:
 
 
 def finding(
-    judged: Judged, board: Board, project: Project, assumptions: list[int], *, derived: bool = False
+    judged: Judged, board: Board, project: Project, assumptions: list[int], *, asked: Asked
 ) -> Finding:
-    """The finding; ``derived``: with how its number comes about."""
+    """The finding, with what is asked of it besides its verdict."""
     case, verdict = judged.case, judged.verdict
     rule, subject, margin = case.rule, case.subject, verdict.solution and verdict.solution.margin
     measured = _measured(judged)
@@ -66,8 +67,9 @@ def finding(
         assumptions=assumptions,
         cause=_cause(judged, measured, board),
         detail=_detail(judged, board, project),
-        derivation=_derivation(judged) if derived else None,
-        response=_response(judged) if derived else None,
+        derivation=_derivation(judged) if asked.derived else None,
+        response=_response(judged) if asked.derived else None,
+        statistics=_statistics(judged, board, project, asked) if asked.samples else None,
     )
 
 
@@ -89,6 +91,17 @@ def _response(judged: Judged) -> Json | None:
     if solution is None or problem is None:
         return None
     return response(problem, judged.case.rule.measure, solution.bounds, _limit(judged.case))
+
+
+def _statistics(judged: Judged, board: Board, project: Project, asked: Asked) -> Json | None:
+    """How often it would fail, where there is a number to fail."""
+    from rcrules.checks._statistics import statistics
+
+    solution, problem, case = judged.verdict.solution, judged.problem, judged.case
+    if solution is None or problem is None:
+        return None
+    name = fingerprint(case.rule.id, case.subject, board)
+    return statistics(asked, case, problem, solution.bounds, board, project, name)
 
 
 def _measured(judged: Judged) -> Quantity | None:

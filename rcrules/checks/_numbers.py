@@ -5,6 +5,7 @@ from dataclasses import replace
 from difflib import get_close_matches
 from typing import Final
 
+from rcrules.checks._asked import Asked
 from rcrules.checks._check import check
 from rcrules.checks._subjects import Subject, Subjects
 from rcrules.derivation import derive
@@ -31,8 +32,8 @@ def numbers_at(board: Board, project: Project, rules: Sequence[Rule], at: str) -
 
     at: a net, a reference, or a pin as ``U3.NRST``.
     """
-    found = check(board, project, rules, only=lambda subject: stands_at(subject, at), derived=True).findings
-    told = [_of_finding(item, at) for item in found]
+    checked = check(board, project, rules, only=lambda item: stands_at(item, at), asked=Asked(derived=True))
+    told = [_of_finding(item, at) for item in checked.findings]
     asked = {(item.subject, item.measure) for item in told}
     subjects = Subjects(board)
     plain = [

@@ -13,6 +13,7 @@ _EXIT: Final = (
     "exit code: 0 nothing at or above the fail level, 1 findings, 2 inputs, rules or usage wrong, 3 a bug of rcrules, "
     "130 interrupted"
 )
+_MOST_SAMPLES: Final = 1_000_000
 _SUMMARIES: Final = {
     "check": "hold every RC network of a board against the rules, and report what fails",
     "networks": "show what was found on a board: held nets, RC networks, roles, time constants; no rules",
@@ -66,6 +67,15 @@ def _check(command: argparse.ArgumentParser) -> None:
         "{board} in it: the board's name",
     )
     _moved(command)
+    command.add_argument(
+        "--samples",
+        type=_samples,
+        default=0,
+        metavar="N",
+        help="also draw N random cases of each finding: the share that fails, with its confidence interval",
+    )
+    again = "of the random cases; the same gives the same (default: 0)"
+    command.add_argument("--seed", type=_natural, default=0, metavar="S", help=again)
     command.add_argument(
         "--waive",
         action="store_true",
@@ -200,6 +210,18 @@ def _color(command: argparse.ArgumentParser) -> None:
     command.add_argument(
         "--color", choices=("auto", "always", "never"), default="auto", help="colours (default: on a terminal)"
     )
+
+
+def _samples(text: str) -> int:
+    if not text.isdecimal() or len(text) > 9 or not 1 <= int(text) <= _MOST_SAMPLES:
+        raise argparse.ArgumentTypeError(f"expected a whole number from 1 to {_MOST_SAMPLES}, found {text!r}")
+    return int(text)
+
+
+def _natural(text: str) -> int:
+    if not text.isdecimal() or len(text) > 9:
+        raise argparse.ArgumentTypeError(f"expected a whole number of 0 or more, found {text!r}")
+    return int(text)
 
 
 def _positive(text: str) -> int:

@@ -125,6 +125,8 @@ def jobs_of(chosen: argparse.Namespace, *, with_rules: bool, derived: bool = Fal
             with_rules=with_rules,
             proposals=chosen.command == "propose",
             derived=derived,
+            samples=getattr(chosen, "samples", 0),
+            seed=getattr(chosen, "seed", 0),
         )
         for project in projects
     ]

@@ -2,5 +2,6 @@
 
 from rcrules.derivation._derive import derive
 from rcrules.derivation._response import response
+from rcrules.derivation._sensitivity import Influence, sensitivity
 
-__all__ = ["derive", "response"]
+__all__ = ["Influence", "derive", "response", "sensitivity"]

@@ -72,6 +72,9 @@ class Finding:
     response: Json | None = None
     """Where asked, the observed voltage over time: ``{unit, time, nominal, low_case, high_case, thresholds, limit,
     crossing}``, see ``derivation.response``."""
+    statistics: Json | None = None
+    """Where asked: ``{samples, seed, failing, fraction, quantiles, root_sum_square, distributions}``; the fraction with
+    its 95 % confidence interval, quantiles of 0.135 %, 50 % and 99.865 %."""
     proposals: Json | None = None
     """Of a failing finding, where asked: ``{found: [{changes, needs, findings}], reason}`` with the changes as ``{ref,
     what, was, now, source}``, the network's findings as they would be, and why nothing was found."""

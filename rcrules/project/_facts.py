@@ -173,6 +173,7 @@ DEFAULTS: Final[Mapping[str, Reader]] = {
     "dielectric": _text,
     "tcr": _Amount("1/K"),
     "bias-curve": _bias_curve,
+    "distribution": _word("uniform", "normal"),
     "contact-resistance": _Amount("Ω", 0),
     "bounce": _Amount("s", 0),
     "forward": _Amount("V", 0),

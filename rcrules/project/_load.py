@@ -120,9 +120,13 @@ def _outside(board: Table) -> tuple[Notice, ...]:
 
 
 def _conditions(conditions: Table) -> dict[str, Any]:
-    conditions.only(("temperature", "life"))
+    conditions.only(("temperature", "life", "distribution"))
     temperature = conditions.quantity("temperature", "degC", least=-273.15)
-    return {"temperature": temperature, "life": conditions.quantity("life", "s", least=0)}
+    return {
+        "temperature": temperature,
+        "life": conditions.quantity("life", "s", least=0),
+        "distribution": conditions.word("distribution", ("uniform", "normal")),
+    }
 
 
 def _facts(

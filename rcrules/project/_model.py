@@ -78,6 +78,8 @@ class PartFacts:
     tcr: Spread | None = None
     bias_curve: tuple[tuple[float, float], ...] = ()
     """Points of [V] and remaining fraction."""
+    distribution: str | None = None
+    """How it spreads between its limits, for statistics: ``uniform`` or ``normal``."""
     fitted: bool | None = None
     contact: str | None = None
     """``normally open`` or ``normally closed``."""
@@ -119,6 +121,8 @@ class Project:
     """[degC]"""
     life: Spread | None = None
     """[s]"""
+    distribution: str | None = None
+    """Of every number of which the tables of its part and its kind say none."""
     supplies: Mapping[str, SupplyFacts] = field(default_factory=dict)
     grounds: tuple[str, ...] = ()
     nets: Mapping[str, NetFacts] = field(default_factory=dict)

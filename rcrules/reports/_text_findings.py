@@ -6,6 +6,7 @@ from typing import Final
 from rcrules.findings import Document, Finding, Json
 from rcrules.reports._lines import Line
 from rcrules.reports._proposals import proposal_texts
+from rcrules.reports._statistics import statistics_texts
 from rcrules.reports._text_holding import holding_lines
 from rcrules.reports._text_undecided import undecided_lines
 from rcrules.reports._words import (
@@ -67,6 +68,7 @@ def _block(group: list[Finding], texts: Mapping[str, str], *, limit: int) -> lis
         lines.append((_INDENT, f"{extreme(first)} at  ", case_text(first.detail["worst"])))
     if len(group) > 1:
         lines.append((_INDENT, f"the same on  {subjects_text(group[1:], texts, limit=limit)}"))
+    lines += [(_INDENT, "statistics  ", text) for text in statistics_texts(first)]
     word = "would hold  " if first.proposals and first.proposals["found"] else "no proposal  "
     lines += [(_INDENT, word, text) for text in proposal_texts(first)]
     return [*lines, _why(first)]

@@ -12,6 +12,7 @@ from rcrules.reports._markdown_comparison import comparison_items
 from rcrules.reports._markdown_words import code, plain
 from rcrules.reports._proposals import proposal_texts
 from rcrules.reports._report import Report
+from rcrules.reports._statistics import statistics_texts
 from rcrules.reports._text_findings import case_text, groups, is_news
 from rcrules.reports._text_summary import coverage_texts, found_text, share_text, totals
 from rcrules.reports._text_undecided import entries
@@ -90,6 +91,7 @@ def _failing(document: Document, texts: Mapping[str, str]) -> Iterator[str]:
             below.append(plain(f"{extreme(first)} at {case_text(first.detail['worst'])}"))
         if len(group) > 1:
             below.append(plain(f"the same on {subjects_text(group[1:], texts, limit=12)}"))
+        below += [plain(f"statistics: {text}") for text in statistics_texts(first)]
         word = "would hold with " if first.proposals and first.proposals["found"] else ""
         below += [plain(word + text) for text in proposal_texts(first)]
         below.append(plain(first.why or first.title))

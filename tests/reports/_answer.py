@@ -6,6 +6,18 @@ from typing import Final
 from rcrules.findings import Json
 
 TIMES: Final = [round(0.01 * index, 9) for index in range(-1, 24)]
+STATISTICS, **changed})
+
+
+STATISTICS: Final[Json] = {
+    "samples": 1000,
+    "seed": 1,
+    "failing": 31,
+    "fraction": {"low": 0.0219, "nominal": 0.031, "high": 0.0437},
+    "quantiles": {"low": 0.0225, "nominal": 0.0356, "high": 0.049},
+    "root_sum_square": {"low": 0.0227, "high": 0.0488},
+    "distributions": ["normal", "uniform"],
+}
 
 
 def curve(tau: float, volts: float) -> list[float]:

@@ -3,7 +3,7 @@
 import math
 
 from rcrules.findings import Document, Finding, Quantity
-from tests.reports._answer import DERIVATION, response
+from tests.reports._answer import DERIVATION, STATISTICS, response
 
 PLACE = {"file": "gauge.xml", "line": 812}
 
@@ -56,7 +56,7 @@ def finding(**changed: object) -> Finding:
 
 def answering(**changed: object) -> Finding:
     """The failing reset with its response and derivation; changed fields by name."""
-    return finding(**{"derivation": DERIVATION, "response": response(), **changed})
+    return finding(**{"derivation": DERIVATION, "response": response(), "statistics": STATISTICS, **changed})
 
 
 def _moved(name: str, value: float, unit: str, relative: float | None, why: str) -> dict[str, object]:

@@ -1,0 +1,55 @@
+"""Random cases against the distributions of a general-purpose library."""
+
+import numpy as np
+import pytest
+from scipy import stats
+
+from rcrules.problems import Parameter
+from rcrules.statistics import samples
+
+COUNT = 40_000
+
+
+def parameter(low: float, nominal: float, high: float) -> Parameter:
+    return Parameter(
+        name="R1", unit="Ω", low=low, nominal=nominal, high=high, given_low=low, given_high=high, origin="the test"
+    )
+
+
+def drawn(distribution: str, low: float = 90.0, nominal: float = 100.0, high: float = 120.0) -> np.ndarray:
+    return samples([parameter(low, nominal, high)], [distribution], COUNT, (7, 1))[:, 0]
+
+
+def test_uniform_samples_are_uniform_between_the_limits() -> None:
+    """Kolmogorov-Smirnov against scipy.stats.uniform; the seed is fixed, so the outcome is too."""
+    assert stats.kstest(drawn("uniform"), stats.uniform(loc=90.0, scale=30.0).cdf).pvalue > 0.01
+
+
+def test_normal_samples_are_normal_and_cut_off_at_the_limits() -> None:
+    """Kolmogorov-Smirnov against scipy.stats.truncnorm at plus and minus three standard deviations."""
+    found = drawn("normal")
+    assert stats.kstest(found, stats.truncnorm(-3.0, 3.0, loc=105.0, scale=5.0).cdf).pvalue > 0.01
+    assert found.min() >= 90.0
+    assert found.max() <= 120.0
+
+
+def test_the_two_are_told_apart() -> None:
+    """The checks above can fail: each kind fails the other's."""
+    assert stats.kstest(drawn("normal"), stats.uniform(loc=90.0, scale=30.0).cdf).pvalue < 1e-6
+    assert stats.kstest(drawn("uniform"), stats.truncnorm(-3.0, 3.0, loc=105.0, scale=5.0).cdf).pvalue < 1e-6
+
+
+def test_the_same_seed_gives_the_same_cases_and_another_others() -> None:
+    one = samples([parameter(1.0, 2.0, 3.0)] * 2, ["uniform", "normal"], 10, (1, 2))
+    assert (one == samples([parameter(1.0, 2.0, 3.0)] * 2, ["uniform", "normal"], 10, (1, 2))).all()
+    assert (one != samples([parameter(1.0, 2.0, 3.0)] * 2, ["uniform", "normal"], 10, (2, 2))).any()
+
+
+def test_parameters_are_independent() -> None:
+    found = samples([parameter(0.0, 1.0, 2.0)] * 2, ["uniform", "uniform"], COUNT, (3,))
+    assert abs(stats.pearsonr(found[:, 0], found[:, 1]).statistic) < 0.02
+
+
+@pytest.mark.parametrize("distribution", ["uniform", "normal"])
+def test_a_number_without_spread_stays(distribution: str) -> None:
+    assert (samples([parameter(5.0, 5.0, 5.0)], [distribution], 10, (1,)) == 5.0).all()
