@@ -6,7 +6,6 @@ from typing import Final
 from rcrules.findings import Json
 
 TIMES: Final = [round(0.01 * index, 9) for index in range(-1, 24)]
-STATISTICS, **changed})
 
 
 STATISTICS: Final[Json] = {
