@@ -27,7 +27,6 @@ _SIGNATURES: Final = (
 _TEXTS: Final = tuple(
     (re.compile(pattern, re.IGNORECASE | re.MULTILINE), name)
     for pattern, name in (
-        (r"\A\s*\(\s*edif\b", "an EDIF netlist"),
         (r"\A\s*(?:#[^\n]*\n\s*)*\(\s*(?:\{[^\n]*\n\s*)?\(\s*/?[0-9a-f]{6,}\s", "an older parenthesised list of parts"),
         (r"\A\s*\(\s*\w+_(?:sch|pcb)\b", "a schematic or board file, not a netlist"),
         (r"\A\s*\(NETLIST\)|^\$PACKAGES\b", "a netlist in dollar sections"),
@@ -38,7 +37,7 @@ _TEXTS: Final = tuple(
         (r"\A\s*[{\[]\s*[\"{\[\]}]", "a JSON text"),
     )
 )
-_OURS: Final = re.compile(r"\s*\(\s*\"?export[\s()\"]")
+_OURS: Final = re.compile(r"\s*\(\s*(?:\"?export[\s()\"]|edif\s)", re.IGNORECASE)
 _ELEMENT_LINE: Final = re.compile(r"^[RCLVIDQMX]\w*(?: +[^\s,;|]+){3,}[ \r]*$", re.IGNORECASE | re.MULTILINE)
 _ROOTS: Final = {"html": "an HTML page", "svg": "a picture"}
 

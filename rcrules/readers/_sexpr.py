@@ -14,6 +14,8 @@ MAX_KEPT: Final = 200_000
 MAX_ATOM: Final = 1_000_000
 """Characters of the longest text."""
 _TOKEN: Final = re.compile(r'[()]|"[^"\\]*+(?:\\.[^"\\]*+)*+"|[\r\n]\s*+|[^\s()"]++|[ \t]{99}[ \t]*+|"', re.DOTALL)
+PLAIN_TOKEN: Final = re.compile(r'[()]|"[^"]*+"|[\r\n]\s*+|[^\s()"]++|[ \t]{99}[ \t]*+|"')
+"""Tokens of a text whose quoted texts have no backslash escapes."""
 _BLANKS: Final = " \t\r\n"
 _ESCAPE: Final = re.compile(r"\\(.)", re.DOTALL)
 _ESCAPES: Final = {"n": "\n", "r": "\r", "t": "\t"}
@@ -44,16 +46,29 @@ class Form:
         return next((form for form in self.forms if form.head == head), None)
 
 
-def parse(file: str, text: str, take: Callable[[str | None, Form], bool], containers: frozenset[str]) -> None:
+def unescaped(text: str) -> str:
+    """A quoted text without its backslash escapes."""
+    return _ESCAPE.sub(lambda found: _ESCAPES.get(found[1], found[1]), text) if "\\" in text else text
+
+
+def parse(
+    file: str,
+    text: str,
+    take: Callable[[str | None, Form], bool],
+    containers: frozenset[str],
+    tokens: re.Pattern[str] = _TOKEN,
+    quoted: Callable[[str], str] = unescaped,
+) -> None:
     """Go through the one form that the text holds.
 
     take: called as each inner form ends, with the head of the form around it; where it returns True the form is
     understood and let go, so that a long file needs little memory. containers: heads of forms whose own forms are let
-    go in any case. Raises UserMistake with line and column.
+    go in any case. tokens, quoted: how the text is cut, and what a quoted text says. Raises UserMistake with line and
+    column.
     """
     stack: list[Form] = []
     line, kept, ended = 1, 0, False
-    for match in _TOKEN.finditer(text):
+    for match in tokens.finditer(text):
         token = match[0]
         if token == "(":
             if ended or len(stack) >= MAX_DEPTH:
@@ -77,7 +92,7 @@ def parse(file: str, text: str, take: Callable[[str | None, Form], bool], contai
             raise _misplaced(file, text, match, stack, kept)
         else:
             kept += 1
-            line += _add_atom(stack[-1], token)
+            line += _add_atom(stack[-1], token, quoted)
     if stack:
         raise _not_closed(file, stack)
 
@@ -87,14 +102,12 @@ def _line_ends(text: str) -> int:
     return text.count("\n") + (text.count("\r") - text.count("\r\n") if "\r" in text else 0)
 
 
-def _add_atom(form: Form, token: str) -> int:
+def _add_atom(form: Form, token: str, quoted: Callable[[str], str]) -> int:
     """Keep an atom as head or text; the number of line ends inside it."""
     breaks = 0
     if token[0] == '"':
-        token = token[1:-1]
         breaks = _line_ends(token)
-        if "\\" in token:
-            token = _ESCAPE.sub(lambda found: _ESCAPES.get(found[1], found[1]), token)
+        token = quoted(token[1:-1])
     if form.head is None and not form.forms:
         form.head = token
     else:
