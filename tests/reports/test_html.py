@@ -186,6 +186,7 @@ def test_how_a_number_comes_about_is_told_in_full() -> None:
     assert "lowest: 21.9 ms C7 6.188 µF, R12 9.9 kΩ, the rest nominal" in told
     assert "t tau · ln(+3V3 / (+3V3 - v)) 100 ms · ln(3.3 V / (3.3 V - 0.99 V)) 35.7 ms" in told
     assert len(block.xpath(".//*[@class='plot']")) == 1
+    assert "with 95 % confidence" in told
 
 
 def test_the_largest_share_has_the_longest_bar_and_what_does_nothing_has_none() -> None:

@@ -11,6 +11,7 @@ from rcrules.findings import Document, Finding, Json
 from rcrules.reports._page._plot import plot
 from rcrules.reports._page._working import Working, working
 from rcrules.reports._proposals import proposal_texts
+from rcrules.reports._statistics import statistics_texts
 from rcrules.reports._text_findings import case_text
 from rcrules.reports._told import subject_text, waiver_text
 from rcrules.reports._words import (
@@ -49,6 +50,8 @@ class Shown:
     badness: float
     worst: str
     """Where the worst case lies; '' where it is not kept."""
+    statistics: list[str]
+    """What random cases and the root-sum-square say, where asked for."""
     proposals: list[str]
     """Changes of parts that would make it hold, or why there are none."""
     waiver: str
@@ -97,6 +100,7 @@ def _shown(document: Document, finding: Finding, texts: Mapping[str, str], index
         nominal=_sortable(measured.nominal if measured else math.nan),
         badness=badness(finding) if finding.outcome in ("fails", "waived") else -1.0,
         worst=f"{extreme(finding)} at {case_text(worst)}" if worst else "",
+        statistics=list(statistics_texts(finding)),
         proposals=list(proposal_texts(finding)),
         waiver=waiver_text(document, finding) if finding.outcome == "waived" else "",
         assumptions=[document.assumptions[number] for number in finding.assumptions],
