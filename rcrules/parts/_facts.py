@@ -7,7 +7,7 @@ from typing import Final, Generic, TypeVar
 from rcrules.design import Fact, Part
 from rcrules.errors import Place
 from rcrules.parts._fields import holds, read_field
-from rcrules.parts._texts import ValueKind, ValueText, read_value
+from rcrules.parts._texts import TIGHT, ValueKind, ValueText, read_value
 from rcrules.project import PartFacts, Project, ranked
 from rcrules.quantities import show
 
@@ -65,8 +65,9 @@ def tables_for(part: Part, project: Project) -> tuple[tuple[str, PartFacts], ...
 def gather(part: Part, kind: ValueKind, tables: Sequence[tuple[str, PartFacts]], project: Project) -> Facts:
     """Read every text about a resistor or capacitor."""
     fields, descriptions = _fields(part, kind)
-    given = any(source.read.tolerance for source in (*fields, *descriptions)) or any(t.tolerance for _, t in tables)
-    values = tuple(_source(fact, read_value(fact.text, kind, tolerance_given=given)) for fact in part.values)
+    given = (*(source.read.tolerance for source in (*fields, *descriptions)), *(table.tolerance for _, table in tables))
+    tight = any(tolerance is not None and tolerance[1] <= TIGHT for tolerance in given)
+    values = tuple(_source(fact, read_value(fact.text, kind, tolerance_given=tight)) for fact in part.values)
     believed = tuple(source for source in descriptions if not _stale(source, values))
     defaults = project.defaults.get(kind)
     return Facts(

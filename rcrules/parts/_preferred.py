@@ -21,8 +21,12 @@ _UNEVEN_LETTERS: Final = {"Q": (-0.10, 0.30), "T": (-0.10, 0.50), "S": (-0.20, 0
 _PICOFARAD_LETTERS: Final = {"B": 0.1e-12, "C": 0.25e-12, "D": 0.5e-12}
 _SMALL: Final = 10e-12
 """Below this capacitance [F] the letters B, C, D are absolute."""
+_FACTORS: Final = {
+    "Z": -3, "Y": -2, "R": -2, "X": -1, "S": -1, "A": 0, "B": 1, "H": 1, "C": 2, "D": 3, "E": 4, "F": 5,
+}  # fmt: skip
+"""Letter of a three-character resistor marking -> power of ten."""
 _HIGHEST_CODE: Final = 6
-"""Most zeros that a three-digit code has in practice: 10 MΩ, 10 µF."""
+"""Most zeros that a code has on a resistor, 10 MΩ; on a capacitor one more, 100 µF."""
 
 
 @lru_cache(maxsize=16)
@@ -46,14 +50,28 @@ def preferred(value: float, counts: tuple[int, ...] = (24, 192)) -> bool:
     return False
 
 
-def digit_code(text: str) -> float | None:
-    """What digits mean as a marking code: ``104`` 100000, ``4992`` 49900 (Ω or pF); None when they are no code."""
+def digit_code(text: str, *, fractions: bool = False) -> float | None:
+    """What digits mean as a marking code: ``104`` 100000, ``4992`` 49900 (Ω or pF); None when they are no code.
+
+    fractions: as on capacitors, where a third digit 8 or 9 is a factor 0.01 or 0.1: ``479`` 4.7.
+    """
     if not text.isascii() or not text.isdigit() or len(text) not in (3, 4) or text[0] == "0":
         return None
     zeros = int(text[-1])
-    if zeros > _HIGHEST_CODE or not preferred(float(text[:-1]), (24,) if len(text) == 3 else (24, 192)):
+    if not preferred(float(text[:-1]), (24,) if len(text) == 3 else (24, 192)):
+        return None
+    if fractions and zeros in (8, 9):
+        return float(text[:-1]) / (100.0 if zeros == 8 else 10.0)
+    if zeros > _HIGHEST_CODE + fractions:
         return None
     return float(text[:-1]) * 10.0**zeros
+
+
+def letter_code(text: str) -> float | None:
+    """Ohms of a three-character marking (IEC 60062, Annex A): ``68X`` is the 68th value of E96, 499, times 0.1."""
+    if len(text) != 3 or not text[:2].isdigit() or text[2] not in _FACTORS or not 1 <= int(text[:2]) <= 96:
+        return None
+    return float(f"{series(96)[int(text[:2]) - 1]}e{_FACTORS[text[2]]}")
 
 
 def letter_tolerance(letter: str, farads: float | None = None) -> tuple[float, float] | None:

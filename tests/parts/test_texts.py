@@ -1,6 +1,5 @@
 """Value texts as they stand on real schematics and BOMs."""
 
-
 import pytest
 from hypothesis import given
 from hypothesis import strategies as st
