@@ -1,5 +1,6 @@
 """The case that makes the worst margin, in parts and their shares, the most influential first."""
 
+import math
 from collections.abc import Sequence
 from typing import Final
 
@@ -24,6 +25,8 @@ def worst_case(problem: Problem, case: Sequence[float], measure: Measure, board:
 
 
 def _off(item: Parameter, value: float) -> bool:
+    if math.isinf(item.nominal):
+        return value != item.nominal
     return abs(value - item.nominal) > _TINY * max(abs(item.nominal), abs(item.high - item.low))
 
 
@@ -39,7 +42,7 @@ def _influence(problem: Problem, case: Sequence[float], measure: Measure, column
 
 
 def _row(item: Parameter, value: float, board: Board) -> Json:
-    relative = value / item.nominal - 1 if item.nominal else None
+    relative = value / item.nominal - 1 if item.nominal and math.isfinite(item.nominal) else None
     part = board.parts.get(item.name)
     return {
         "parameter": item.name,

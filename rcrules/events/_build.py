@@ -25,6 +25,7 @@ class Wire:
     a: str
     b: str
     value: Callable[[], Form]
+    leaks: bool = False
 
 
 def build(bench: Bench, network: Network, table: Table, first: Sequence[str], *, currents: bool = True) -> Circuit:
@@ -48,14 +49,15 @@ def _built(bench: Bench, network: Network, table: Table, first: Sequence[str], *
     circuit = Circuit(free=list(network.free))
     circuit.hold(ZERO)
     most = cache(lambda: _most(bench, circuit, table, network))
-    wires = [_of_part(bench, circuit, table, item, most) for item in network.branches]
+    wires = [wire for item in network.branches for wire in _of_part(bench, circuit, table, item, most)]
     for joint in network.held:
         wires += _source_resistance(bench, circuit, table, joint)
     for joint in network.free:
         wires += _loads(bench, circuit, table, joint)
     circuit.free = _ordered(circuit.free, wires, first)
     for wire in sorted(wires, key=lambda wire: _rank(circuit, wire)):
-        circuit.arms.append(Arm(ref=wire.ref, kind=wire.kind, a=wire.a, b=wire.b, value=wire.value()))
+        made = Arm(ref=wire.ref, kind=wire.kind, a=wire.a, b=wire.b, value=wire.value(), leaks=wire.leaks)
+        circuit.arms.append(made)
     if currents:
         circuit.draws = [item for joint in circuit.free for item in _leakages(bench, table, joint)]
     return circuit
@@ -79,10 +81,17 @@ def _most(bench: Bench, circuit: Circuit, table: Table, network: Network) -> flo
     return most_across(sources, network.branches, network.free, [*circuit.joints.values(), *known])
 
 
-def _of_part(bench: Bench, circuit: Circuit, table: Table, branch: Branch, most: Callable[[], float | None]) -> Wire:
+def _of_part(
+    bench: Bench, circuit: Circuit, table: Table, branch: Branch, most: Callable[[], float | None]
+) -> list[Wire]:
+    """A part, and what its dielectric leaks where something is said of that."""
     part = bench.board.parts[branch.ref]
-    ends = terminal_of(bench, circuit, branch.a), terminal_of(bench, circuit, branch.b)
-    return Wire(ref=branch.ref, kind=branch.kind, a=ends[0], b=ends[1], value=lambda: table.part(part, most()))
+    a, b = terminal_of(bench, circuit, branch.a), terminal_of(bench, circuit, branch.b)
+    found = [Wire(ref=branch.ref, kind=branch.kind, a=a, b=b, value=lambda: table.part(part, most()))]
+    leak = table.insulation(part) if branch.kind == "capacitor" else None
+    if leak is not None:
+        found.append(Wire(ref=f"{branch.ref} insulation", kind="resistor", a=a, b=b, value=lambda: leak, leaks=True))
+    return found
 
 
 def _source_resistance(bench: Bench, circuit: Circuit, table: Table, joint: str) -> list[Wire]:

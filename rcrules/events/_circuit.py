@@ -23,6 +23,8 @@ class Arm:
     a: str
     b: str
     value: Form
+    leaks: bool = False
+    """True: the dielectric of a capacitor, which may conduct, but is no path that anything may rely on."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -110,6 +112,10 @@ class Circuit:
         """Their values."""
         return tuple(arm.value for arm in self.of(kind))
 
+    def leaks(self) -> tuple[int, ...]:
+        """Numbers of the resistors that are dielectrics."""
+        return tuple(index for index, arm in enumerate(self.of("resistor")) if arm.leaks)
+
     def shape(self, further: Iterable[Arm] = ()) -> Shape:
         """The topology, with further resistors after the circuit's own. Raises Unmeasurable where it is too large."""
         if len(self.free) > LARGEST:
@@ -138,7 +144,7 @@ class Circuit:
         """Free terminals that resistors join to a source, through free terminals -> number of resistors between."""
         free = set(self.free)
         next_to: dict[str, list[str]] = {}
-        for arm in (*self.of("resistor"), *further):
+        for arm in (*(arm for arm in self.of("resistor") if not arm.leaks), *further):
             next_to.setdefault(arm.a, []).append(arm.b)
             next_to.setdefault(arm.b, []).append(arm.a)
         reached: dict[str, int] = {}

@@ -81,6 +81,7 @@ def _falling(case: _Case, circuit: Circuit) -> Structure:
         Arm(ref=item.ref, kind=item.kind, a=item.a, b=item.b, value=case.table.part(parts[item.ref], volts))
         for item in case.wires.branches
     ]
+    circuit.arms += [leak for item in case.wires.branches if (leak := _leak(case, item)) is not None]
     pinned = [name for name in circuit.free if case.sources.kind(name) == "supply"]
     floating = [name for name in circuit.floating() if name not in circuit.driven([*circuit.held, *pinned])]
     if floating:
@@ -92,11 +93,20 @@ def _falling(case: _Case, circuit: Circuit) -> Structure:
         ohms=circuit.values("resistor"),
         farads=farads,
         waveforms=tuple(still(()) for _ in circuit.held),
+        leaks=circuit.leaks(),
         pinned=tuple((circuit.terminal(name), case.sources.supply(name)) for name in pinned),
         at=circuit.terminal(case.ends[0]),
         against=None if case.ends[1] == ZERO else circuit.terminal(case.ends[1]),
         rising=False,
     )
+
+
+def _leak(case: _Case, branch: Branch) -> Arm | None:
+    """What the dielectric of a capacitor lets through; it shortens what bleeds, and is never the only way."""
+    form = case.table.insulation(case.bench.board.parts[branch.ref]) if branch.kind == "capacitor" else None
+    if form is None:
+        return None
+    return Arm(ref=f"{branch.ref} insulation", kind="resistor", a=branch.a, b=branch.b, value=form, leaks=True)
 
 
 def _endless(case: _Case) -> Structure:

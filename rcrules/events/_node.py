@@ -18,7 +18,8 @@ from rcrules.events._transients import Scene, Transient
 from rcrules.events._unmeasurable import Unmeasurable
 from rcrules.levels import Level
 from rcrules.measures import Measure
-from rcrules.networks import Node
+from rcrules.networks import Network, Node
+from rcrules.quantities import Spread
 from rcrules.problems import LevelForm, Problem, Structure, Unsettled, solved
 
 STEPS = ("step-up", "step-down")
@@ -30,10 +31,10 @@ def pose_node(bench: Bench, node: Node, measure: Measure, options: Mapping[str, 
         raise Unmeasurable(f"active network: {node.active}")
     if measure.poses == "sample" and node.across is None:
         return pose_sample(bench, node, measure, options)
-    if measure.poses != "event" or node.across is not None:
+    if measure.poses not in ("event", "dip") or node.across is not None:
         return at_rest(bench, node, measure, options)
     levels = levels_of(measure, options)
-    event = str(options["event"])
+    event = str(options.get("event", measure.poses))
     parts_of_step = all(level.of == "step" for level in levels.values())
     table = Table()
     network = widened(bench, bench.network(node))
@@ -44,19 +45,40 @@ def pose_node(bench: Bench, node: Node, measure: Measure, options: Mapping[str, 
     sources = Sources(bench=bench, table=table)
     leveller = Leveller(bench=bench, circuit=circuit, table=table, node=node)
     _hold_followed(bench, circuit, leveller, levels)
-    scene = Scene(bench=bench, network=network, circuit=circuit, sources=sources, joint=node.joint, unit=relative)
+    length = options.get("length", 0.0)
+    scene = Scene(
+        bench=bench,
+        network=network,
+        circuit=circuit,
+        sources=sources,
+        joint=node.joint,
+        unit=relative,
+        length=length.nominal if isinstance(length, Spread) else float(str(length)),
+    )
     found = with_diodes(scene, event)
     structure = replace(
         structure_of(circuit, found), at=circuit.terminal(node.joint), options=plain_of(measure, options)
     )
     structure = replace(structure, rising=_rises(scene, found, structure, table))
-    forms = tuple((name, leveller.form(name, level, rising=structure.rising)) for name, level in levels.items())
+    forms = tuple(
+        (name, leveller.form(name, level, rising=structure.rising != (name == "armed")))
+        for name, level in levels.items()
+    )
     reference = _reference(scene, found, str(options.get("from", "event")))
     return Problem(
         structure=replace(structure, levels=forms, reference=reference),
         parameters=tuple(table.parameters),
         names=circuit.names(found.after, found.before),
     )
+
+
+def pose_network(bench: Bench, network: Network, measure: Measure, options: Mapping[str, OptionValue]) -> Problem:
+    """The problem of a measure at the node of a network that delays a reset. Raises Unmeasurable."""
+    nodes = [node for node in network.nodes if node.role == "power-on-delay"] or list(network.nodes)
+    if len(nodes) != 1:
+        told = ", ".join(node.net for node in nodes) or "none"
+        raise Unmeasurable(f"not one node of the network delays a reset but {told}")
+    return pose_node(bench, nodes[0], measure, options)
 
 
 def _hold_followed(bench: Bench, circuit: Circuit, leveller: Leveller, levels: Mapping[str, Level]) -> None:
@@ -78,6 +100,8 @@ class _Start:
 
 def _rises(scene: Scene, event: Transient, structure: Structure, table: Table) -> bool:
     """Direction of the change: from just after the event to the end; for a pulse that returns, that of the return."""
+    if scene.length > 0.0:  # it comes back to where it was: a reset that rests high has risen
+        return _nominal(structure, table).before > 0.0
     joints = [scene.circuit.joints[name] for name in event.movers]
     spreads = [scene.sources.volts(joint) for joint in joints]
     plain = bool(joints) and all(spread is None or spread.low >= 0.0 for spread in spreads)
@@ -110,7 +134,7 @@ def _reference(scene: Scene, event: Transient, origin: str) -> tuple[int, LevelF
     """Where time counts from. Raises Unmeasurable where it is a supply of which rise or valid level are not known."""
     if origin == "event":
         return None
-    if not event.empty or not event.movers:
+    if not (event.empty or scene.length > 0.0) or not event.movers:
         raise Unmeasurable(f"no supply becomes valid at {scene.joint} in this event")
     name = min(event.movers, key=lambda mover: (mover not in _fed(scene), mover))
     joint = scene.circuit.joints[name]

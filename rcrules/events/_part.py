@@ -10,6 +10,7 @@ from rcrules.events._circuit import ZERO, Circuit
 from rcrules.events._contacts import arm
 from rcrules.events._diodes import add_all, widened, with_diodes
 from rcrules.events._options import OptionValue, plain_of
+from rcrules.events._series import alone_between, between
 from rcrules.events._sources import Sources, moved
 from rcrules.events._structure import check_paths, structure_of
 from rcrules.events._table import Table
@@ -38,6 +39,8 @@ def place_of(bench: Bench, part: RatedPart) -> Place:
         network, branch = bench.network_of_part[part.ref]
         return Place(branch=branch, network=widened(bench, network))
     found = bench.branch(part)
+    if found is not None and (string := alone_between(bench, part)) is not None:
+        found = between(found, string)  # it may take the whole voltage of the string
     if found is None or found.a == found.b:
         raise Unmeasurable(f"{part.ref} does not lie between two nets")
     if bench.board.reasons.get(part.ref) == OPEN_END:

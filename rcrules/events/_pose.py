@@ -5,10 +5,11 @@ from collections.abc import Mapping
 from rcrules.design import Pin
 from rcrules.events._bench import bench
 from rcrules.events._discharge import pose_part_discharge
-from rcrules.events._node import pose_node
+from rcrules.events._node import pose_network, pose_node
 from rcrules.events._options import OptionValue, chosen
 from rcrules.events._part import pose_part_event, pose_states
 from rcrules.events._pin import pose_pin
+from rcrules.events._string import pose_string, pose_value
 from rcrules.events._supply import pose_supply
 from rcrules.events._unmeasurable import Unmeasurable
 from rcrules.measures import Measure
@@ -43,8 +44,13 @@ def pose(
     if isinstance(subject, Held):
         return pose_supply(at, subject, measure, values)
     if isinstance(subject, Network):
-        raise Unmeasurable(f"{measure.name} is not measured at a {kind}")
-    by_kind = {"states": pose_states, "discharge": pose_part_discharge}
+        return pose_network(at, subject, measure, values)
+    by_kind = {
+        "states": pose_states,
+        "discharge": pose_part_discharge,
+        "value": pose_value,
+        "string": pose_string,
+    }
     return by_kind.get(measure.poses, pose_part_event)(at, subject, measure, values)
 
 

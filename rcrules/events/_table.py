@@ -1,5 +1,6 @@
 """The parameter table while a problem is being posed: the only home of uncertainty."""
 
+import math
 from dataclasses import dataclass, field
 
 from rcrules.events._unmeasurable import Unmeasurable
@@ -50,6 +51,34 @@ class Table:
                 assumed=tuple(share.origin for share in assumed),
                 ask=next((share.ask for share in assumed if share.ask), ""),
                 asks=tuple(share.ask for share in assumed),
+            )
+        )
+
+    def insulation(self, part: RatedPart) -> Form | None:
+        """The column of what a capacitor's dielectric lets through, a resistance from its least to infinity.
+
+        None where nothing is said of it. Raises Unmeasurable where what is said cannot be used.
+        """
+        said = part.insulation
+        if said is None:
+            return None
+        if isinstance(said, Unknown):
+            raise Unmeasurable(f"leakage of {part.ref}: {said.why}", f'[part."{part.ref}"] rated-voltage = "…"')
+        name = f"{part.ref} insulation"
+        if name in self.forms:
+            return self.forms[name]
+        return self.add(
+            Parameter(
+                name=name,
+                unit="Ω",
+                low=said.least,
+                nominal=math.inf,
+                high=math.inf,
+                given_low=said.least if said.given else math.inf,
+                given_high=math.inf,
+                origin=said.origin,
+                assumed=() if said.given else (said.origin,),
+                ask=said.ask,
             )
         )
 

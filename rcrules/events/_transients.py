@@ -35,6 +35,8 @@ class Scene:
     joint: str
     unit: bool
     """True: the measure counts in parts of the step: the moved source goes from 0 to 1 V, the others rest at 0 V."""
+    length: float = 0.0
+    """How long a dip lasts [s]."""
 
 
 def transient(scene: Scene, event: str) -> Transient:
@@ -44,6 +46,8 @@ def transient(scene: Scene, event: str) -> Transient:
         return _power_up(scene, contacts)
     if event == "power-down":
         return _power_down(scene, contacts)
+    if event == "dip":
+        return _dip(scene, contacts)
     if event in ("press", "release"):
         waves = {name: still(_rest(scene, name)) for name in scene.circuit.held}
         return Transient(waves=waves, before=contacts.before, after=contacts.after)
@@ -76,6 +80,24 @@ def _power_down(scene: Scene, contacts: Switched) -> Transient:
         volts = _supply(scene, joint, "" if fall else f"{joint} falls at once")
         waves[name] = moved(volts, (), (), fall)
         movers.append(name)
+    return Transient(waves=waves, before=contacts.before, after=contacts.after, movers=tuple(movers))
+
+
+def _dip(scene: Scene, contacts: Switched) -> Transient:
+    """All supplies fall at once to 0 V, stay there, and return along their ramps."""
+    waves, movers = {}, []
+    for name in scene.circuit.held:
+        joint = scene.circuit.joints.get(name)
+        if joint is None or scene.sources.kind(joint) != "supply":
+            waves[name] = still(_rest(scene, name))
+            continue
+        rise = scene.sources.rise(joint)
+        volts = _supply(scene, joint, "" if rise else f"{joint} rises at once")
+        back = constant(scene.length)
+        waves[name] = Waveform(before=volts, points=(((), ()), (back, ()), (back + (rise or ()), volts)))
+        movers.append(name)
+    if not movers:
+        raise Unmeasurable(f"no supply feeds {scene.joint}")
     return Transient(waves=waves, before=contacts.before, after=contacts.after, movers=tuple(movers))
 
 

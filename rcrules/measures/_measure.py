@@ -19,11 +19,12 @@ Poses = Literal[
     "supply",
     "dip",
     "string",
+    "value",
 ]
 """A transient; the network at rest (for all its nodes, or at one with its temperature); a node with a converter's
 sampling capacitor; a transfer; all DC states of a part or pin; supplies left open; the DC state in which an input is
 lowest or highest; a pin or contact that shorts what is charged; a supply with its capacitors and load; a supply that
-dips; capacitors in series."""
+dips; capacitors in series; the value of a part."""
 
 OptionKind = Literal["event", "level", "quantity", "choice", "names"]
 

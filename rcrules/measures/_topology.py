@@ -87,9 +87,10 @@ def left_open(structure: Structure, low: Array) -> bool:
 
 
 def discharges(structure: Structure) -> bool:
-    """Whether resistors lead from the observed terminals to held ones."""
+    """Whether resistors lead from the observed terminals to held ones; dielectrics do not count."""
     free = structure.shape.free
-    groups = _components(range(free), structure.shape.resistors)
+    pairs = [pair for index, pair in enumerate(structure.shape.resistors) if index not in structure.leaks]
+    groups = _components(range(free), pairs)
     ends = [end for end in (structure.at, structure.against) if end is not None and end < free]
     return all(any(end in group and max(group) >= free for group in groups) for end in ends)
 

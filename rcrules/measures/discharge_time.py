@@ -25,7 +25,7 @@ def compute(structure: Structure, cases: Array) -> Array:
     """Time until the voltage has fallen to the level [s] (case,); cases: (case, column), SI."""
     found = _time(structure, cases)
     if OPEN in structure.options:
-        for index in range(len(structure.ohms)):
+        for index in _bleeders(structure):
             found = np.maximum(found, _time(_opened(structure, index), cases))
     return found
 
@@ -37,7 +37,7 @@ def theory(structure: Structure, low: Array, high: Array) -> Theory:
     """
     found = [_theory(structure, low, high)]
     if OPEN in structure.options:
-        found += [_theory(_opened(structure, index), low, high) for index in range(len(structure.ohms))]
+        found += [_theory(_opened(structure, index), low, high) for index in _bleeders(structure)]
     if len(found) == 1:
         return found[0]
     slopes = Slopes([0] * len(low))
@@ -62,7 +62,14 @@ def _opened(structure: Structure, index: int) -> Structure:
     """The structure without one of its resistors."""
     pairs = structure.shape.resistors
     shape = replace(structure.shape, resistors=(*pairs[:index], *pairs[index + 1 :]))
-    return replace(structure, shape=shape, ohms=(*structure.ohms[:index], *structure.ohms[index + 1 :]))
+    ohms = (*structure.ohms[:index], *structure.ohms[index + 1 :])
+    leaks = tuple(leak - (leak > index) for leak in structure.leaks)
+    return replace(structure, shape=shape, ohms=ohms, leaks=leaks)
+
+
+def _bleeders(structure: Structure) -> list[int]:
+    """The resistors of which one may be open; a dielectric is none."""
+    return [index for index in range(len(structure.ohms)) if index not in structure.leaks]
 
 
 def _theory(structure: Structure, low: Array, high: Array) -> Theory:

@@ -3,7 +3,7 @@
 from rcrules.parts._apart import apart
 from rcrules.parts._diodes import DiodeModel, diode_model
 from rcrules.parts._kinds import kind_of
-from rcrules.parts._model import Known, RatedPart, Share, Unknown
+from rcrules.parts._model import Insulation, Known, RatedPart, Share, Unknown
 from rcrules.parts._preferred import series
 from rcrules.parts._rate import rate
 from rcrules.parts._shares import ASSUMED_TEMPERATURE
@@ -13,6 +13,7 @@ from rcrules.parts._texts import ValueText, read_value
 __all__ = [
     "ASSUMED_TEMPERATURE",
     "DiodeModel",
+    "Insulation",
     "Known",
     "RatedPart",
     "Share",

@@ -42,6 +42,34 @@ class Share:
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
+class Insulation:
+    """What a capacitor's dielectric leaks: a resistance that may be anything from a least value on, never a proof."""
+
+    least: float
+    """[Ω]"""
+    given: bool
+    """False = an assumption, listed as such."""
+    origin: str
+    """``at most 3 µA at 16 V from project [part."C7"]``."""
+    ask: str = ""
+    """The project line that would replace an assumption."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Absorption:
+    """Dielectric absorption of a capacitor: from 0 to a share of its voltage that moves late."""
+
+    share: float
+    """Greatest [1]"""
+    given: bool
+    """False = an assumption, listed as such."""
+    origin: str
+    """``X7R, whose dielectric absorbs up to 2.5 %``."""
+    ask: str = ""
+    """The project line that would replace an assumption."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
 class RatedPart:
     """A part with kind, value, spread and ratings."""
 
@@ -62,6 +90,10 @@ class RatedPart:
     """``X7R``, ``C0G``, ``tantalum``, ``aluminium``, ``film`` …; None = not given."""
     bias_curve: tuple[tuple[float, float], ...] = ()
     """Points of voltage [V] and remaining fraction of capacitance, from the project file; () = none given."""
+    insulation: Insulation | Unknown | None = None
+    """Of a capacitor; None = nothing is said, Unknown = something is, but another fact is missing to use it."""
+    absorption: Absorption | None = None
+    """Of a resistor or capacitor with a value; it says nothing about a resistor."""
     polarised: bool = False
     size: str = ""
     """EIA size code such as ``0603``, '' = not known."""

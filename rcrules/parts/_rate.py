@@ -8,9 +8,11 @@ from itertools import chain
 from typing import Final
 
 from rcrules.design import Design, Part
+from rcrules.parts._absorption import absorption
 from rcrules.parts._alike import asks, moved, written
 from rcrules.parts._dielectrics import ELECTROLYTIC, code_of
 from rcrules.parts._facts import Facts, Said, disagreements, gather, tables_for, tables_say, texts_say
+from rcrules.parts._insulation import insulation
 from rcrules.parts._kinds import kind_of
 from rcrules.parts._model import Known, RatedPart, Unknown
 from rcrules.parts._shares import Conditions, conditions
@@ -109,6 +111,8 @@ def _valued(part: Part, told: _Told, reads: ValueKind, facts: Facts, around: Con
         rated_power=_known(named["rated_power"]) or _NOT_GIVEN,
         dielectric=depends.dielectric,
         bias_curve=depends.curve,
+        insulation=insulation(facts.tables, _known(named["rated_voltage"]) or _NOT_GIVEN),
+        absorption=absorption(facts.tables, depends.dielectric, ask, polarised=depends.polarised),
         polarised=depends.polarised,
         size=_size(part.footprint) or next((s.read.size for s in facts.sources if s.read.size), ""),
         fitted=told.fitted,

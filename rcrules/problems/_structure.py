@@ -116,6 +116,8 @@ class Structure:
     """(free terminal, current drawn out of it [A])."""
     diodes: tuple[Junction, ...] = ()
     """Diodes that may conduct, each between a free terminal and any other."""
+    leaks: tuple[int, ...] = ()
+    """Resistors of the shape that are dielectrics of capacitors: they may conduct, but nothing may rely on it."""
     earlier: tuple[Shape, tuple[Form, ...]] | None = None
     """Shape and ohms in the steady state before the event, where a contact changes it; None = the same."""
     pinned: tuple[tuple[int, Form], ...] = ()

@@ -80,6 +80,12 @@ class PartFacts:
     """Points of [V] and remaining fraction."""
     distribution: str | None = None
     """How it spreads between its limits, for statistics: ``uniform`` or ``normal``."""
+    absorption: Spread | None = None
+    """Share of its voltage that a capacitor's dielectric gives back, or takes, late [1]."""
+    leakage: Spread | None = None
+    """Most that a capacitor leaks at its rated voltage [A]."""
+    insulation_resistance: Spread | None = None
+    """Least resistance of a capacitor's dielectric [Ω]."""
     fitted: bool | None = None
     contact: str | None = None
     """``normally open`` or ``normally closed``."""
