@@ -123,7 +123,7 @@ def _cases(problem: Problem, names: Names, measure: Measure, bounds: Bounds) -> 
 def _off(parameters: Sequence[Parameter], case: Sequence[float], nominal: Array) -> Iterator[str]:
     """``C7 6.19 µF``: what is off nominal."""
     for item, value, plain in zip(parameters, case, nominal, strict=True):
-        if abs(value - plain) > 1e-12 * abs(plain):
+        if value != plain if math.isinf(plain) else abs(value - plain) > 1e-12 * abs(plain):
             yield f"{item.name} {show(value, item.unit, 4)}"
 
 

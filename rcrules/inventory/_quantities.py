@@ -1,5 +1,6 @@
 """Bounds of quantities as the document holds them."""
 
+import math
 from collections.abc import Mapping, Sequence
 
 from rcrules.events import Measured, quantities
@@ -42,5 +43,9 @@ def as_quantity(bounds: Bounds, problem: Problem, unit: str) -> Quantity:
 def case_json(case: Sequence[float], problem: Problem) -> dict[str, float]:
     """Parameter name -> value, by name; parameters at nominal left out."""
     pairs = zip(problem.parameters, case, strict=True)
-    off = {item.name: value for item, value in pairs if abs(value - item.nominal) > 1e-12 * abs(item.nominal)}
+    off = {item.name: value for item, value in pairs if _off(value, item.nominal)}
     return dict(sorted(off.items()))
+
+
+def _off(value: float, nominal: float) -> bool:
+    return value != nominal if math.isinf(nominal) else abs(value - nominal) > 1e-12 * abs(nominal)

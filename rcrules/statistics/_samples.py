@@ -24,11 +24,18 @@ def samples(parameters: Sequence[Parameter], distributions: Sequence[str], count
     generator = np.random.default_rng(list(seed))
     drawn = np.empty((count, len(parameters)))
     for column, (item, distribution) in enumerate(zip(parameters, distributions, strict=True)):
-        if distribution == "normal":
-            drawn[:, column] = _normal(generator, item.low, item.high, count)
+        if np.isinf(item.high):  # a resistance without upper limit: its conductance is drawn
+            with np.errstate(divide="ignore"):
+                drawn[:, column] = 1.0 / _drawn(generator, distribution, 0.0, 1.0 / item.low, count)
         else:
-            drawn[:, column] = generator.uniform(item.low, item.high, count)
+            drawn[:, column] = _drawn(generator, distribution, item.low, item.high, count)
     return drawn
+
+
+def _drawn(generator: np.random.Generator, distribution: str, low: float, high: float, count: int) -> Array:
+    if distribution == "normal":
+        return _normal(generator, low, high, count)
+    return generator.uniform(low, high, count)
 
 
 def _normal(generator: np.random.Generator, low: float, high: float, count: int) -> Array:
