@@ -85,7 +85,7 @@ class _Open:
 def decide(posed: Sequence[tuple[Case, Problem]]) -> list[Verdict]:
     """The verdict on every posed case, in order."""
     solutions = solve(posed)
-    verdicts = [_first(solution) for solution in solutions]
+    verdicts = [_first(solution, problem) for solution, (_, problem) in zip(solutions, posed, strict=True)]
     found = [_opened(index, *posed[index], solutions[index]) for index in range(len(posed))]
     waiting = [item for item in found if item is not None]
     _try(waiting, lambda item: [{}, *({column: end} for column in item.columns for end in ("low", "high"))])
@@ -96,13 +96,18 @@ def decide(posed: Sequence[tuple[Case, Problem]]) -> list[Verdict]:
     return verdicts
 
 
-def _first(solution: Solution | Failure) -> Verdict:
+def _first(solution: Solution | Failure, problem: Problem) -> Verdict:
     """The verdict where no assumption could turn it."""
     if isinstance(solution, Failure):
         return Verdict(outcome="undecided", solution=None, reason=solution.reason)
     if math.isnan(solution.margin.value):
         return Verdict(outcome="undecided", solution=solution, reason="the quantity is not defined in every case")
-    return Verdict(outcome="holds" if solution.margin.value >= 0 else "fails", solution=solution)
+    if solution.margin.value < 0:
+        return Verdict(outcome="fails", solution=solution)
+    if problem.doubt:
+        ask = (problem.doubt_ask,) if problem.doubt_ask else ()
+        return Verdict(outcome="undecided", solution=solution, reason=problem.doubt, ask=ask)
+    return Verdict(outcome="holds", solution=solution)
 
 
 def _opened(index: int, case: Case, problem: Problem, solution: Solution | Failure) -> _Open | None:

@@ -78,7 +78,11 @@ def left(work: Working) -> Number | None:
     if size is None or later is None:
         return None
     end = work.sheet.given("v(end)", float(work.solved.final[0]), "V", "where v ends")
-    return work.sheet.work("residual", "1", "abs({} - {}) / {}", lambda v, e, s: abs(v - e) / s, later, end, size)
+    found = work.sheet.work("residual", "1", "abs({} - {}) / {}", lambda v, e, s: abs(v - e) / s, later, end, size)
+    late = float(work.solved.form(work.problem.structure.absorbed)[0])
+    if late <= found.value:
+        return found
+    return work.sheet.given("residual", late, "1", "what the dielectric absorbs comes later than that")
 
 
 def first(work: Working) -> Number | None:

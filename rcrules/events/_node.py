@@ -1,5 +1,6 @@
 """A question about a node: its network, its event and its levels in numbers."""
 
+import math
 from collections.abc import Mapping
 from dataclasses import dataclass, replace
 
@@ -19,8 +20,9 @@ from rcrules.events._unmeasurable import Unmeasurable
 from rcrules.levels import Level
 from rcrules.measures import Measure
 from rcrules.networks import Network, Node
-from rcrules.quantities import Spread
+from rcrules.parts import RatedPart
 from rcrules.problems import LevelForm, Problem, Structure, Unsettled, solved
+from rcrules.quantities import Spread, show
 
 STEPS = ("step-up", "step-down")
 
@@ -45,7 +47,6 @@ def pose_node(bench: Bench, node: Node, measure: Measure, options: Mapping[str, 
     sources = Sources(bench=bench, table=table)
     leveller = Leveller(bench=bench, circuit=circuit, table=table, node=node)
     _hold_followed(bench, circuit, leveller, levels)
-    length = options.get("length", 0.0)
     scene = Scene(
         bench=bench,
         network=network,
@@ -53,22 +54,28 @@ def pose_node(bench: Bench, node: Node, measure: Measure, options: Mapping[str, 
         sources=sources,
         joint=node.joint,
         unit=relative,
-        length=length.nominal if isinstance(length, Spread) else float(str(length)),
+        length=_plain(options.get("length", 0.0)),
     )
     found = with_diodes(scene, event)
     structure = replace(
         structure_of(circuit, found), at=circuit.terminal(node.joint), options=plain_of(measure, options)
     )
+    absorbing = _most_absorbing(bench, network) if measure.settles else None
+    if absorbing is not None and measure.settles == "by a share":
+        structure = replace(structure, absorbed=table.absorption(absorbing))
     structure = replace(structure, rising=_rises(scene, found, structure, table))
     forms = tuple(
         (name, leveller.form(name, level, rising=structure.rising != (name == "armed")))
         for name, level in levels.items()
     )
     reference = _reference(scene, found, str(options.get("from", "event")))
+    doubt, ask = _doubt(absorbing, options)
     return Problem(
         structure=replace(structure, levels=forms, reference=reference),
         parameters=tuple(table.parameters),
         names=circuit.names(found.after, found.before),
+        doubt=doubt,
+        doubt_ask=ask,
     )
 
 
@@ -79,6 +86,24 @@ def pose_network(bench: Bench, network: Network, measure: Measure, options: Mapp
         told = ", ".join(node.net for node in nodes) or "none"
         raise Unmeasurable(f"not one node of the network delays a reset but {told}")
     return pose_node(bench, nodes[0], measure, options)
+
+
+def _most_absorbing(bench: Bench, network: Network) -> RatedPart | None:
+    """The capacitor of a network that takes the largest share of its voltage late."""
+    parts = [bench.board.parts[item.ref] for item in network.branches if item.kind == "capacitor"]
+    return max(parts, key=lambda part: part.absorption.share if part.absorption else 0.0, default=None)
+
+
+def _doubt(part: RatedPart | None, options: Mapping[str, OptionValue]) -> tuple[str, str]:
+    """Why settling within a band cannot be promised, and the line that would tell."""
+    said, band = part.absorption if part else None, _plain(options.get("band", math.inf))
+    if part is None or said is None or said.share <= band:
+        return "", ""
+    return f"{part.ref}: {said.origin}; a band of {show(band, '%', digits=3)} cannot be promised", said.ask
+
+
+def _plain(value: OptionValue) -> float:
+    return value.nominal if isinstance(value, Spread) else float(str(value))
 
 
 def _hold_followed(bench: Bench, circuit: Circuit, leveller: Leveller, levels: Mapping[str, Level]) -> None:

@@ -78,9 +78,7 @@ def pose_string(bench: Bench, part: RatedPart, measure: Measure, options: Mappin
     return Problem(structure=structure, parameters=tuple(table.parameters), names=circuit.names())
 
 
-def _loose(
-    part: RatedPart, ends: tuple[str, str], measure: Measure, options: Mapping[str, OptionValue]
-) -> Problem:
+def _loose(part: RatedPart, ends: tuple[str, str], measure: Measure, options: Mapping[str, OptionValue]) -> Problem:
     """A capacitor of which no resistor holds an end: between these joints it may take everything."""
     structure = Structure(
         shape=FLAT,

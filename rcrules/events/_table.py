@@ -82,6 +82,28 @@ class Table:
             )
         )
 
+    def absorption(self, part: RatedPart) -> Form:
+        """The column of the share of its voltage that a capacitor's dielectric takes late [1], from nothing on."""
+        said, name = part.absorption, f"{part.ref} absorption"
+        if said is None or said.share <= 0.0:
+            return ()
+        if name in self.forms:
+            return self.forms[name]
+        return self.add(
+            Parameter(
+                name=name,
+                unit="1",
+                low=0.0,
+                nominal=0.0,
+                high=said.share,
+                given_low=0.0,
+                given_high=said.share if said.given else 0.0,
+                origin=said.origin,
+                assumed=() if said.given else (said.origin,),
+                ask=said.ask,
+            )
+        )
+
     def given(
         self, name: str, spread: Spread, origin: str, *, least: float | None = None, always: bool = False
     ) -> Form:

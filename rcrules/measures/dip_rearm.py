@@ -1,9 +1,9 @@
-"""Dip re-arm: how long a reset lasts after its supply has dipped to 0 V for a while; 0 where the dip leaves it as it is.
+"""Dip re-arm: how long a reset lasts after its supply has dipped to 0 V for a while; 0 where the dip starts none.
 
 From steady state all supplies fall at once to 0 V, stay there for ``length`` and return along their ramps. Where the
-node does not get beyond ``armed`` in that time, no reset follows and the value is 0. Else it is the time from the return
-(or from the supply valid) until the node passes ``to`` for good. For R to the supply and C to ground the node is at
-V e^(-length/RC) at the return, and a level v is passed RC ln((V - V e^(-length/RC))/(V - v)) later: less than from
+node does not get beyond ``armed`` in that time, no reset follows and the value is 0. Else it is the time from the
+return (or from the supply valid) until the node passes ``to`` for good. For R to the supply and C to ground the node is
+at V e^(-length/RC) at the return, and a level v is passed RC ln((V - V e^(-length/RC))/(V - v)) later: less than from
 empty. Infinite where it never gets out of reset. Source: first-order charging and discharging law.
 """
 

@@ -1,7 +1,9 @@
 """Settling time: after it the node stays within a band around its final value.
 
 The last time at which |v(t) - v(∞)| > band * step, with step the larger of |v(∞) - v(before)| and |v(∞) - v(0+)|. For
-one resistor and one capacitor t = RC ln(1/band). Source: IEC 60050-351-45-37, settling time (from memory).
+one resistor and one capacitor t = RC ln(1/band). A dielectric that absorbs more than the band may move the node out of
+it again, within seconds to minutes: then no settling is promised. Source: IEC 60050-351-45-37, settling time (from
+memory); dielectric absorption by makers' comparisons of dielectrics.
 """
 
 import numpy as np
@@ -35,5 +37,6 @@ MEASURE = Measure(
             kind="quantity", default=0.01, unit="1", summary="half width of the band, as a part of the step"
         ),
     },
+    settles="by a band",
     scale_free=True,
 )

@@ -134,6 +134,8 @@ class Structure:
     """Index of the observed resistor or capacitor in the shape, for measures of parts."""
     rating: Form | None = None
     """Rated voltage [V] or power [W] of the observed part."""
+    absorbed: Form = ()
+    """Share of the step that the dielectrics around the observed node take or give back late [1], where it counts."""
     load: Form = ()
     """What is drawn from the observed supply: a current [A], or a power [W] where option ``draws`` says so."""
     reference: tuple[int, LevelForm] | None = None
@@ -178,6 +180,10 @@ class Problem:
     parameters: tuple[Parameter, ...]
     names: Names | None = None
     """None where nobody asks how a number comes about."""
+    doubt: str = ""
+    """Why nothing can be promised although the numbers keep a limit, in words; '' = no doubt."""
+    doubt_ask: str = ""
+    """The project line that would remove the doubt."""
 
     def given_box(self) -> tuple[Array, Array, Array]:
         """The same over what the inputs give alone; assumed effects left out."""

@@ -26,7 +26,8 @@ def test_leakage_shortens_a_discharge_as_a_conductance():
 
 
 def test_insulation_resistance_says_the_same():
-    found = bulk(facts='insulation-resistance = "100 kohm"\n').measure("C1", "discharge_time", to="5 V", given_only=True)
+    board = bulk(facts='insulation-resistance = "100 kohm"\n')
+    found = board.measure("C1", "discharge_time", to="5 V", given_only=True)
     assert found.low == pytest.approx(1000e-6 * 1e5 * 1e4 / 1.1e5 * log(10))
 
 

@@ -14,7 +14,7 @@ from rcrules.findings import Finding
 from rcrules.pipeline import Job, run
 from tests.events.boards import xml
 
-EXACT = '[defaults.resistor]\ntolerance = "0 %"\n[defaults.capacitor]\ntolerance = "0 %"\n'
+EXACT = '[defaults.resistor]\ntolerance = "0 %"\n[defaults.capacitor]\ntolerance = "0 %"\nabsorption = "0 %"\n'
 GND = "GND: U2.2/GND/power_in U1.2/GND/power_in"
 
 
