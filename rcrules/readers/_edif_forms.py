@@ -33,8 +33,8 @@ class Taker:
 
     def take(self, around: str | None, form: Form) -> bool:
         """Whether the form is understood and can be let go."""
-        taker = self._TAKE.get((form.head or "").casefold())
-        return taker is not None and taker(self, (around or "").casefold(), form)
+        taker = self._TAKE.get(form.head or "")
+        return taker is not None and taker(self, around or "", form)
 
     def _version(self, around: str, form: Form) -> bool:
         if around == "edif":

@@ -42,12 +42,12 @@ def said(item: Form, scales: Mapping[str, float]) -> str:
     unit = child(item, "unit")
     kind = unit.first().casefold() if unit is not None else ""
     for form in item.forms:
-        match (form.head or "").casefold():
+        match form.head:
             case "string":
                 shown = child(form, "stringdisplay")
                 return (shown if shown is not None else form).first()
             case "boolean":
-                return (form.forms[0].head or "").casefold() if form.forms else form.first().casefold()
+                return form.forms[0].head or "" if form.forms else form.first().casefold()
             case "integer" | "number":
                 return _quantity(number_form(form), kind, scales)
             case "minomax":
@@ -62,13 +62,16 @@ def _quantity(number: float | None, kind: str, scales: Mapping[str, float]) -> s
 
 
 def children(form: Form, head: str) -> Iterator[Form]:
-    """Forms of that name, whatever its case."""
-    return (item for item in form.forms if (item.head or "").casefold() == head)
+    """Forms of that name."""
+    return (item for item in form.forms if item.head == head)
 
 
 def child(form: Form, head: str) -> Form | None:
-    """First form of that name, whatever its case; None without one."""
-    return next(children(form, head), None)
+    """First form of that name; None without one."""
+    for item in form.forms:
+        if item.head == head:
+            return item
+    return None
 
 
 def named(form: Form) -> tuple[str, str]:
@@ -106,7 +109,7 @@ def number_form(form: Form) -> float | None:
     """The number of ``(number 5)``, ``(number (e 47 -1))`` or ``(e 47 -1)``."""
     inner = child(form, "e")
     atoms = (inner if inner is not None else form).atoms
-    if (inner is not None or (form.head or "").casefold() == "e") and len(atoms) == 2:
+    if (inner is not None or form.head == "e") and len(atoms) == 2:
         mantissa, exponent = map(number, atoms)
         if mantissa is None or exponent is None or abs(exponent) > _FAR:
             return None

@@ -32,6 +32,18 @@ class Form:
         self.atoms: list[str] = []
         self.forms: list[Form] = []
 
+    def add(self, token: str, quoted: Callable[[str], str], folded: bool) -> int:
+        """Keep a further atom, as the head where nothing stands before it; the number of line ends inside it."""
+        breaks = 0
+        if token[0] == '"':
+            breaks = _line_ends(token)
+            token = quoted(token[1:-1])
+        if self.head is None and not self.forms:
+            self.head = token.casefold() if folded else token
+        else:
+            self.atoms.append(token)
+        return breaks
+
     def text(self, head: str) -> str:
         """First atom of the first form of that name, '' without one."""
         found = self.find(head)
@@ -58,13 +70,15 @@ def parse(
     containers: frozenset[str],
     tokens: re.Pattern[str] = _TOKEN,
     quoted: Callable[[str], str] = unescaped,
+    *,
+    folded: bool = False,
 ) -> None:
     """Go through the one form that the text holds.
 
     take: called as each inner form ends, with the head of the form around it; where it returns True the form is
     understood and let go, so that a long file needs little memory. containers: heads of forms whose own forms are let
-    go in any case. tokens, quoted: how the text is cut, and what a quoted text says. Raises UserMistake with line and
-    column.
+    go in any case. tokens, quoted: how the text is cut, and what a quoted text says. folded: whether case does not
+    count in heads. Raises UserMistake with line and column.
     """
     stack: list[Form] = []
     line, kept, ended = 1, 0, False
@@ -92,7 +106,7 @@ def parse(
             raise _misplaced(file, text, match, stack, kept)
         else:
             kept += 1
-            line += _add_atom(stack[-1], token, quoted)
+            line += stack[-1].add(token, quoted, folded)
     if stack:
         raise _not_closed(file, stack)
 
@@ -100,19 +114,6 @@ def parse(
 def _line_ends(text: str) -> int:
     """Number of line ends: CR LF, LF, and a lone CR."""
     return text.count("\n") + (text.count("\r") - text.count("\r\n") if "\r" in text else 0)
-
-
-def _add_atom(form: Form, token: str, quoted: Callable[[str], str]) -> int:
-    """Keep an atom as head or text; the number of line ends inside it."""
-    breaks = 0
-    if token[0] == '"':
-        breaks = _line_ends(token)
-        token = quoted(token[1:-1])
-    if form.head is None and not form.forms:
-        form.head = token
-    else:
-        form.atoms.append(token)
-    return breaks
 
 
 def _not_closed(file: str, stack: list[Form]) -> UserMistake:

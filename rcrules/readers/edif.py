@@ -26,7 +26,7 @@ def read(source: Source, columns: Mapping[str, str]) -> Export:
     del columns  # a netlist has none
     text, remarks = decode(source)
     taker = Taker(source.name)
-    parse(source.name, text, taker.take, CONTAINERS, PLAIN_TOKEN, text_of)
+    parse(source.name, text, taker.take, CONTAINERS, PLAIN_TOKEN, text_of, folded=True)
     if taker.version is None:
         raise refusal(
             source.name,
