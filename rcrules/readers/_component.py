@@ -44,8 +44,9 @@ class LibraryPart:
 def refuse_long(file: str, component: Component) -> None:
     """Raise UserMistake where the component has longer texts, or more of them, than any."""
     _bounds.named(file, component.line, "a reference", component.ref)
-    texts = component.value, component.footprint, component.description, component.symbol, component.sheet
     entries = (*component.fields, *component.properties)
     _bounds.bound(file, component.line, "fields of one part", len(entries), _bounds.MAX_FIELDS)
-    for text in (*texts, *(text for name, said, _ in entries for text in (name, said or ""))):
-        _bounds.named(file, component.line, "a text", text, _bounds.MAX_TEXT)
+    texts = [component.value, component.footprint, component.description, component.symbol, component.sheet]
+    for name, said, _ in entries:
+        texts += name, said or ""
+    _bounds.named(file, component.line, "a text", max(texts, key=len), _bounds.MAX_TEXT)

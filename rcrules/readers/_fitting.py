@@ -2,6 +2,7 @@
 
 import re
 from collections.abc import Iterable
+from functools import lru_cache
 from typing import Final
 
 _WHOLE: Final = frozenset({"opt", "option", "optional", "tbd", "nf", "np", "nc", "none", "not used", "unused"})
@@ -70,5 +71,6 @@ def _field_says(name: str, text: str) -> bool | None:
     return None
 
 
+@lru_cache(maxsize=1024)
 def _plain_name(name: str) -> str:
     return " ".join(re.sub(r"[^\w]+|_", " ", name.lower()).split())

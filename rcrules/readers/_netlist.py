@@ -30,18 +30,17 @@ class Netlist:
         self._library: dict[tuple[str, str], LibraryPart] = {}
         self._by_symbol: dict[str, LibraryPart] = {}
         self._nets: dict[str, Place] = {}
-        self._listed = 0
+        self._listed = self._ended = 0
         self._pending: list[Node] = []
         self._nodes: list[tuple[str, Node]] = []
         self._open: list[Node] = []
-        self._places: dict[int, Place] = {}
+        self._last = Place(file=source.name)
 
     def place(self, line: int) -> Place:
-        """The place of a line, shared by all that stands there."""
-        found = self._places.get(line)
-        if found is None:
-            found = self._places[line] = Place(file=self.source.name, line=line)
-        return found
+        """The place of a line, shared by what is asked for in a row."""
+        if self._last.line != line:
+            self._last = Place(file=self.source.name, line=line)
+        return self._last
 
     def remark(self, line: int, text: str) -> None:
         """Keep something odd that does not stop the run."""
@@ -77,10 +76,11 @@ class Netlist:
 
     def _bounded(self, node: Node) -> None:
         ref, number, name, _, line = node
-        for what, text in (("a reference", ref), ("a pin number", number), ("a pin name", name)):
-            _bounds.named(self.source.name, line, what, text)
-        count = len(self._pending) + len(self._nodes) + len(self._open)
-        _bounds.bound(self.source.name, line, "connections", count, _bounds.MAX_PINS)
+        if len(ref) + len(number) + len(name) > _bounds.MAX_NAME:
+            for what, text in (("a reference", ref), ("a pin number", number), ("a pin name", name)):
+                _bounds.named(self.source.name, line, what, text)
+        self._ended += 1
+        _bounds.bound(self.source.name, line, "connections", self._ended, _bounds.MAX_PINS)
 
     def add_net(self, name: str, code: str, line: int) -> None:
         """Keep a net with the connections added before it; nets without a name are told apart by their code."""
@@ -189,7 +189,7 @@ class Netlist:
             return ExportPin(
                 ref=ref,
                 number=number,
-                name=_pin_name(name, _said(library_name), number, suffixed),
+                name=_pin_name(name, _said(library_name), number, suffixed) if name or library_name else "",
                 type="unspecified" if normal is None else normal,
                 net=key,
                 place=self.place(line),
@@ -221,7 +221,7 @@ class Netlist:
 
 
 def _pin_name(given: str, library: str, number: str, suffixed: bool) -> str:
-    name = _said(given)
+    name = _said(given) if given else ""
     if not name:
         return library
     ending = f"_{number}"

@@ -2,21 +2,21 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Mapping
-from io import BytesIO
-from typing import TYPE_CHECKING, Final, cast
+from collections.abc import Callable, Mapping
+from typing import TYPE_CHECKING, Final
 
 from rcrules.readers._component import Component, Entry, LibraryPart
 from rcrules.readers._export import Export, Reader, Source
-from rcrules.readers._mistakes import refusal, shorten
 from rcrules.readers._netlist import Netlist
-from rcrules.readers._xml import BoundedStream, doctype_refusal, refuse_doctype, root_name
+from rcrules.readers._xml import root_name
+from rcrules.readers._xml_stream import Elements, local
 
 if TYPE_CHECKING:
     from lxml.etree import _Element
 
 NAME: Final = "xml-netlist"
-_TAGS: Final = ("{*}title_block", "{*}comp", "{*}libpart", "{*}net")
+_TAGS: Final = ("title_block", "comp", "libpart", "net")
+Line = Callable[["_Element"], int]
 
 
 def claims(source: Source, _: Mapping[str, str]) -> bool:
@@ -27,89 +27,38 @@ def claims(source: Source, _: Mapping[str, str]) -> bool:
 def read(source: Source, columns: Mapping[str, str]) -> Export:
     """Read the netlist element by element, each let go once it is understood. Raises UserMistake."""
     del columns  # a netlist has none
-    refuse_doctype(source)
+    elements = Elements(source, _TAGS)
     netlist = Netlist(source, NAME)
-    blanks = source.data[: len(source.data) - len(source.data.lstrip(b" \t\r\n"))]
-    skipped = blanks.count(b"\n")
-    for element in _elements(source, source.data[len(blanks) :], skipped):
-        _TAKE[_local(element)](netlist, element, skipped)
+    for tag, element in elements:
+        _TAKE[tag](netlist, element, elements.line)
     return netlist.export()
 
 
-def _elements(source: Source, data: bytes, skipped: int) -> Iterator[_Element]:
-    """Each element of interest when it is complete; cleared after use, with all that stood before it."""
-    from lxml import etree
-
-    stream = BoundedStream(source, BytesIO(data), skipped + 1)
-    context = etree.iterparse(
-        stream,
-        events=("end",),
-        tag=_TAGS,
-        resolve_entities="internal",
-        no_network=True,
-        load_dtd=False,
-        attribute_defaults=False,
-        huge_tree=False,
-        remove_comments=True,
-        remove_pis=True,
-    )
-    try:
-        for _, element in context:
-            yield element
-            _let_go(element)
-            stream.marks = 0
-        root = context.root
-    except etree.XMLSyntaxError as error:
-        raise _broken(source, error, skipped) from error
-    if root is not None and root.getroottree().docinfo.doctype:
-        raise doctype_refusal(source, None)
-
-
-def _let_go(element: _Element) -> None:
-    element.clear()
-    parent = element.getparent()
-    while parent is not None and element.getprevious() is not None:
-        del parent[0]
-
-
-def _broken(source: Source, error: Exception, skipped: int) -> Exception:
-    line, column = getattr(error, "position", (0, 0))
-    return refusal(
-        source.name,
-        "the XML breaks off or is damaged",
-        line=line + skipped if line else None,
-        column=column or None,
-        found=shorten(str(getattr(error, "msg", error)).partition(", use XML_")[0], 160),
-        expected="one whole, well-formed XML document",
-        do="export the netlist again",
-    )
-
-
-def _take_title(netlist: Netlist, element: _Element, skipped: int) -> None:
-    del skipped
+def _take_title(netlist: Netlist, element: _Element, line: Line) -> None:
+    del line
     if not netlist.title:
         netlist.title = _text(element, "title").strip()
 
 
-def _take_component(netlist: Netlist, element: _Element, skipped: int) -> None:
-    component = Component(ref=element.get("ref", "").strip(), line=_line(element, skipped))
+def _take_component(netlist: Netlist, element: _Element, line: Line) -> None:
+    component = Component(ref=element.get("ref", "").strip(), line=line(element))
     for child in element:
-        _fill(component, child, _local(child), skipped)
+        _fill(component, child, local(child), line)
     netlist.add_component(component)
 
 
-def _fill(component: Component, child: _Element, tag: str, skipped: int) -> None:
+def _fill(component: Component, child: _Element, tag: str, line: Line) -> None:
     match tag:
         case "value":
-            component.value, component.value_line = child.text or "", _line(child, skipped)
+            component.value, component.value_line = child.text or "", line(child)
         case "footprint":
             component.footprint = child.text or ""
         case "description":
             component.description = child.text or ""
         case "fields":
-            component.fields.extend(_entry(item, item.text, skipped) for item in child)
+            component.fields.extend(_entry(item, item.text, line) for item in child)
         case "property":
-            component.properties.append(_entry(child, child.get("value"), skipped))
+            component.properties.append(_entry(child, child.get("value"), line))
         case "libsource":
             component.library, component.symbol = child.get("lib", ""), child.get("part", "")
             component.description = component.description or child.get("description", "")
@@ -119,15 +68,15 @@ def _fill(component: Component, child: _Element, tag: str, skipped: int) -> None
             component.variants.extend(item.get("name", "") for item in child)
 
 
-def _entry(item: _Element, text: str | None, skipped: int) -> Entry:
-    return item.get("name", ""), text, _line(item, skipped)
+def _entry(item: _Element, text: str | None, line: Line) -> Entry:
+    return item.get("name", ""), text, line(item)
 
 
-def _take_library_part(netlist: Netlist, element: _Element, skipped: int) -> None:
-    del skipped
+def _take_library_part(netlist: Netlist, element: _Element, line: Line) -> None:
+    del line
     names, pins = [element.get("part", "")], {}
     for child in element:
-        match _local(child):
+        match local(child):
             case "aliases":
                 names.extend(alias.text or "" for alias in child)
             case "pins":
@@ -136,13 +85,13 @@ def _take_library_part(netlist: Netlist, element: _Element, skipped: int) -> Non
     netlist.add_library_part(element.get("lib", ""), names, part)
 
 
-def _take_net(netlist: Netlist, element: _Element, skipped: int) -> None:
+def _take_net(netlist: Netlist, element: _Element, line: Line) -> None:
     for child in element:
-        if _local(child) == "node":
+        if local(child) == "node":
             get = child.get
             names = get("pinfunction", ""), get("pintype", "")
-            netlist.add_node((get("ref", "").strip(), get("pin", "").strip(), *names, _line(child, skipped)))
-    netlist.add_net(element.get("name", ""), element.get("code", ""), _line(element, skipped))
+            netlist.add_node((get("ref", "").strip(), get("pin", "").strip(), *names, line(child)))
+    netlist.add_net(element.get("name", ""), element.get("code", ""), line(element))
 
 
 _TAKE: Final = {
@@ -154,15 +103,7 @@ _TAKE: Final = {
 
 
 def _text(element: _Element, tag: str) -> str:
-    return next((child.text or "" for child in element if _local(child) == tag), "")
-
-
-def _local(element: _Element) -> str:
-    return str(element.tag).rpartition("}")[2]
-
-
-def _line(element: _Element, skipped: int) -> int:
-    return skipped + (cast("int | None", element.sourceline) or 1)
+    return next((child.text or "" for child in element if local(child) == tag), "")
 
 
 READER = Reader(name=NAME, order=10, claims=claims, read=read)
