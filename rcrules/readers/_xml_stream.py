@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 from io import BytesIO
-from typing import TYPE_CHECKING, cast
+from typing import TYPE_CHECKING, Final, cast
 
 from rcrules.readers._mistakes import refusal, shorten
 from rcrules.readers._xml import BoundedStream, doctype_refusal, refuse_doctype
@@ -14,17 +14,24 @@ if TYPE_CHECKING:
 
     from rcrules.readers._export import Source
 
+_TOGETHER: Final = 16
+"""Elements after which all that is no longer needed is taken away."""
+
 
 class Elements:
     """The elements of some local names, or all without names, each with its name, when it is complete.
 
-    An element is cleared after use, with all that stood before it in the element around it; attributes of the
-    elements around it can be read. Raises UserMistake where the XML is damaged, hostile or beyond bounds.
+    An element is cleared after use, and what stood before it is taken away; attributes of the elements around it can be
+    read. Elements of idle names are let go, but not given. Raises UserMistake where the XML is damaged, hostile or
+    beyond bounds.
     """
 
-    def __init__(self, source: Source, names: tuple[str, ...] | None, what: str = "netlist") -> None:
+    def __init__(
+        self, source: Source, names: tuple[str, ...] | None, what: str = "netlist", *, idle: tuple[str, ...] = ()
+    ) -> None:
         refuse_doctype(source)
         self._source, self._names, self._what = source, names, what
+        self._idle = frozenset(idle)
         self._kept = False
         blanks = len(source.data) - len(source.data.lstrip(b" \t\r\n"))
         self._data = source.data[blanks:] if blanks else source.data
@@ -45,7 +52,7 @@ class Elements:
         context = etree.iterparse(
             stream,
             events=("end",),
-            tag=None if self._names is None else tuple(f"{{*}}{name}" for name in self._names),
+            tag=None if self._names is None else tuple(f"{{*}}{name}" for name in (*self._names, *self._idle)),
             resolve_entities="internal",
             no_network=True,
             load_dtd=False,
@@ -54,17 +61,20 @@ class Elements:
             remove_comments=True,
             remove_pis=True,
         )
+        count = 0
         try:
             for _, element in context:
-                self._kept = False
-                yield local(element), element
-                if self._kept:
-                    continue
+                name = local(element)
+                if name not in self._idle:
+                    self._kept = False
+                    yield name, element
+                    if self._kept:
+                        continue
                 element.clear()
-                parent = element.getparent()
-                while parent is not None and element.getprevious() is not None:
-                    del parent[0]
-                stream.marks = 0
+                count += 1
+                if count % _TOGETHER == 0:
+                    _let_go(element)
+                    stream.marks = 0
             root = context.root
         except etree.XMLSyntaxError as error:
             raise self._broken(error) from error
@@ -82,6 +92,15 @@ class Elements:
             expected="one whole, well-formed XML document",
             do=f"export the {self._what} again",
         )
+
+
+def _let_go(element: _Element) -> None:
+    """Take away all that stands before an element and before the elements around it."""
+    inner, around = element, element.getparent()
+    while around is not None:
+        if around[0] is not inner:
+            del around[: around.index(inner)]
+        inner, around = around, around.getparent()
 
 
 def local(element: _Element) -> str:

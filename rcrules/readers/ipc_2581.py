@@ -18,8 +18,8 @@ if TYPE_CHECKING:
     from lxml.etree import _Element
 
 NAME: Final = "ipc-2581"
-_GEOMETRY: Final = ("Features", "Pad", "PadStack", "Set", "LayerFeature", "PhyNetPoint", "Profile", "Layer")
-"""Let go one by one; of these only the pins and nets are of use."""
+_GEOMETRY: Final = ("PadStack", "Set", "LayerFeature", "PhyNet", "Profile", "Layer")
+"""Of these only the pins in them are of use."""
 
 
 def claims(source: Source, _: Mapping[str, str]) -> bool:
@@ -30,12 +30,10 @@ def claims(source: Source, _: Mapping[str, str]) -> bool:
 def read(source: Source, columns: Mapping[str, str]) -> Export:
     """Read element by element. Raises UserMistake, also where the file holds neither parts nor nets."""
     del columns  # the names are those of the standard
-    elements = Elements(source, (*_Board.TAKEN, *_GEOMETRY), "board")
+    elements = Elements(source, tuple(_Board.TAKEN), "board", idle=_GEOMETRY)
     board = _Board(source, elements)
     for tag, element in elements:
-        take = _Board.TAKEN.get(tag)
-        if take is not None:
-            take(board, element)
+        _Board.TAKEN[tag](board, element)
     return join(source, NAME, board.contents)
 
 
