@@ -6,8 +6,8 @@ from typing import Final
 from rcrules.errors import UserMistake
 from rcrules.readers._export import Source
 from rcrules.readers._mistakes import refusal, shorten
-from rcrules.readers._sheets import is_workbook
 from rcrules.readers._text import head
+from rcrules.readers._workbooks import is_workbook
 from rcrules.readers._xml import root_name
 
 _INSTEAD: Final = "export the netlist from the schematic editor as XML, or the BOM as CSV"

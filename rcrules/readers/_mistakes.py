@@ -2,7 +2,7 @@
 
 from rcrules.errors import Mistake, Place, UserMistake
 
-NETLIST_WANTED = "an XML netlist, its S-expression twin, a delimited pin list or a BOM as CSV"
+NETLIST_WANTED = "a netlist or BOM in one of the formats that the README lists, such as XML or CSV"
 
 
 def refusal(

@@ -73,7 +73,7 @@ class Elements:
                 element.clear()
                 count += 1
                 if count % _TOGETHER == 0:
-                    _let_go(element)
+                    let_go(element)
                     stream.marks = 0
             root = context.root
         except etree.XMLSyntaxError as error:
@@ -94,7 +94,7 @@ class Elements:
         )
 
 
-def _let_go(element: _Element) -> None:
+def let_go(element: _Element) -> None:
     """Take away all that stands before an element and before the elements around it."""
     inner, around = element, element.getparent()
     while around is not None:

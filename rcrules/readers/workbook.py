@@ -1,4 +1,4 @@
-"""The bill of materials as a workbook (XLSX): the sheets that hold a table of references."""
+"""The bill of materials as a workbook (XLSX, ODS): the sheets that hold a table of references."""
 
 import hashlib
 from collections.abc import Mapping, Sequence
@@ -6,11 +6,12 @@ from dataclasses import replace
 from typing import Final
 
 from rcrules.errors import Place
+from rcrules.readers._archive import Sheet
 from rcrules.readers._bom_parts import PartList
 from rcrules.readers._bom_tables import Table, tables
 from rcrules.readers._export import Export, Reader, Remark, Source
 from rcrules.readers._mistakes import refusal
-from rcrules.readers._sheets import Sheet, is_workbook, sheets
+from rcrules.readers._workbooks import is_workbook, sheets
 
 NAME: Final = "bom-workbook"
 _SHOWN: Final = 8
