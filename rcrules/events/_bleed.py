@@ -39,7 +39,7 @@ def bleeders(bench: Bench, sources: Sources, branch: Branch) -> Wires:
     branches = _reached(bench, sources, branch)
     ends = {branch.a, branch.b}
     while True:
-        kept = _without_dead_ends(branches, ends)
+        kept = without_dead_ends(branches, ends)
         live = _joined([ZERO], [item for item in kept if item.kind == "resistor"]) - {ZERO}
         lasting = [item for item in kept if {item.a, item.b} <= live | {ZERO}]
         if len(lasting) == len(branches):
@@ -67,7 +67,7 @@ def _reached(bench: Bench, sources: Sources, branch: Branch) -> list[Branch]:
     return list(found.values())
 
 
-def _without_dead_ends(branches: list[Branch], ends: set[str]) -> list[Branch]:
+def without_dead_ends(branches: list[Branch], ends: set[str]) -> list[Branch]:
     """Branches without those that lead only to one another or to nothing."""
     while True:
         count: dict[str, int] = {}

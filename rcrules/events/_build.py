@@ -31,11 +31,12 @@ class Wire:
 def build(bench: Bench, network: Network, table: Table, first: Sequence[str], *, currents: bool = True) -> Circuit:
     """The circuit of a network, built once for all questions about it that number its joints alike.
 
-    table: empty, filled here. first: joints to be numbered first. currents: whether leakage of pins is drawn. Raises
-    Unmeasurable.
+    table: empty, filled here. first: joints to be numbered first. currents: whether leakage of pins is drawn; it
+    is not where a supply is free, which it might seem to discharge. Raises Unmeasurable.
     """
     joints = tuple(joint for joint in first if (held := bench.held(joint)) is None or held.kind != "ground")
-    drawn = currents and bool(bench.project.pins)
+    open_supply = any((held := bench.held(joint)) is not None and held.kind == "supply" for joint in network.free)
+    drawn = currents and bool(bench.project.pins) and not open_supply
     key = tuple(item.ref for item in network.branches), network.free, joints, drawn
     if key not in bench.built:
         own = Table()
@@ -77,6 +78,7 @@ def _most(bench: Bench, circuit: Circuit, table: Table, network: Network) -> flo
     """The most that a capacitor of the network sees [V], nets that pins pull to and known ones at diodes included."""
     sources = Sources(bench=bench, table=table)
     ends = {joint for diode in network.diodes for joint in (diode.anode, diode.cathode)} - set(network.free)
+    ends |= {joint for joint in network.free if sources.kind(joint) == "supply"}
     known = [joint for joint in ends if sources.kind(joint) == "ground" or sources.most(joint) is not None]
     return most_across(sources, network.branches, network.free, [*circuit.joints.values(), *known])
 

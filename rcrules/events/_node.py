@@ -9,6 +9,7 @@ from rcrules.events._build import build, terminal_of
 from rcrules.events._circuit import Circuit
 from rcrules.events._diodes import widened, with_diodes
 from rcrules.events._levels import Leveller
+from rcrules.events._opened import opened
 from rcrules.events._options import OptionValue, levels_of, plain_of
 from rcrules.events._rest import at_rest
 from rcrules.events._sample import pose_sample
@@ -35,32 +36,15 @@ def pose_node(bench: Bench, node: Node, measure: Measure, options: Mapping[str, 
         return pose_sample(bench, node, measure, options)
     if measure.poses not in ("event", "dip") or node.across is not None:
         return at_rest(bench, node, measure, options)
-    levels = levels_of(measure, options)
-    event = str(options.get("event", measure.poses))
-    parts_of_step = all(level.of == "step" for level in levels.values())
-    table = Table()
-    network = widened(bench, bench.network(node))
-    linear = not network.diodes  # a forward drop is no part of a step
-    relative = linear and measure.scale_free and parts_of_step and options.get("from", "event") == "event"
-    unit = relative and event in STEPS
-    circuit = build(bench, network, table, [node.joint], currents=not unit)
-    sources = Sources(bench=bench, table=table)
+    scene, table = _scene(bench, node, measure, options)
+    circuit, levels = scene.circuit, levels_of(measure, options)
     leveller = Leveller(bench=bench, circuit=circuit, table=table, node=node)
     _hold_followed(bench, circuit, leveller, levels)
-    scene = Scene(
-        bench=bench,
-        network=network,
-        circuit=circuit,
-        sources=sources,
-        joint=node.joint,
-        unit=relative,
-        length=_plain(options.get("length", 0.0)),
-    )
-    found = with_diodes(scene, event)
+    found = with_diodes(scene, _event(measure, options))
     structure = replace(
         structure_of(circuit, found), at=circuit.terminal(node.joint), options=plain_of(measure, options)
     )
-    absorbing = _most_absorbing(bench, network) if measure.settles else None
+    absorbing = _most_absorbing(bench, scene.network) if measure.settles else None
     if absorbing is not None and measure.settles == "by a share":
         structure = replace(structure, absorbed=table.absorption(absorbing))
     structure = replace(structure, rising=_rises(scene, found, structure, table))
@@ -77,6 +61,32 @@ def pose_node(bench: Bench, node: Node, measure: Measure, options: Mapping[str, 
         doubt=doubt,
         doubt_ask=ask,
     )
+
+
+def _scene(bench: Bench, node: Node, measure: Measure, options: Mapping[str, OptionValue]) -> tuple[Scene, Table]:
+    """The circuit around a node for an event, and its columns."""
+    event, table = _event(measure, options), Table()
+    network = widened(bench, bench.network(node))
+    if event == "power-down":
+        network = opened(bench, network)
+    parts_of_step = all(level.of == "step" for level in levels_of(measure, options).values())
+    linear = not network.diodes  # a forward drop is no part of a step
+    relative = linear and measure.scale_free and parts_of_step and options.get("from", "event") == "event"
+    circuit = build(bench, network, table, [node.joint], currents=not (relative and event in STEPS))
+    scene = Scene(
+        bench=bench,
+        network=network,
+        circuit=circuit,
+        sources=Sources(bench=bench, table=table),
+        joint=node.joint,
+        unit=relative,
+        length=_plain(options.get("length", 0.0)),
+    )
+    return scene, table
+
+
+def _event(measure: Measure, options: Mapping[str, OptionValue]) -> str:
+    return str(options.get("event", measure.poses))
 
 
 def pose_network(bench: Bench, network: Network, measure: Measure, options: Mapping[str, OptionValue]) -> Problem:

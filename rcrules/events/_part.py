@@ -9,6 +9,7 @@ from rcrules.events._build import build, terminal_of
 from rcrules.events._circuit import ZERO, Circuit
 from rcrules.events._contacts import arm
 from rcrules.events._diodes import add_all, widened, with_diodes
+from rcrules.events._opened import opened
 from rcrules.events._options import OptionValue, plain_of
 from rcrules.events._series import alone_between, between
 from rcrules.events._sources import Sources, moved
@@ -96,6 +97,8 @@ def pose_states(bench: Bench, part: RatedPart, measure: Measure, options: Mappin
 def pose_part_event(bench: Bench, part: RatedPart, measure: Measure, options: Mapping[str, OptionValue]) -> Problem:
     """A part through an event. Raises Unmeasurable."""
     place, table = place_of(bench, part), Table()
+    if options["event"] == "power-down":
+        place = replace(place, network=opened(bench, place.network))
     circuit, sources, ends = _circuit(bench, place, table)
     watched = next((end for end in ends if end in circuit.free), ends[0])
     scene = Scene(bench=bench, network=place.network, circuit=circuit, sources=sources, joint=watched, unit=False)

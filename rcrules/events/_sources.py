@@ -87,8 +87,22 @@ class Sources:
 
     def fall(self, joint: str) -> Form | None:
         """Time of the supply's fall to 0 [s]; None = not given."""
-        spread = self.bench.supply_fact(joint, lambda facts: facts.fall)
-        return None if spread is None else self.table.given(f"{joint} fall", spread, PROJECT, least=0.0)
+        said = self.bench.supply_fact(joint, lambda facts: facts.fall)
+        return self.table.given(f"{joint} fall", said, PROJECT, least=0.0) if isinstance(said, Spread) else None
+
+    def goes(self, joint: str) -> str:
+        """What becomes of a supply at power-down: ``open``, ``never`` (it stays up), or '' = it falls to 0 V."""
+        said = self.bench.supply_fact(joint, lambda facts: facts.fall)
+        return said if isinstance(said, str) else ""
+
+    def opens(self, joint: str) -> bool:
+        """Whether nothing feeds a joint any more once the board is switched off."""
+        return self.kind(joint) == "supply" and self.goes(joint) == "open"
+
+    def edge(self, joint: str) -> Form | None:
+        """Time that a driver takes from one level to the other [s]; None = not given."""
+        spread = self.bench.net_fact(joint, lambda facts: facts.edge)
+        return None if spread is None else self.table.given(f"{joint} edge", spread, PROJECT, least=0.0)
 
     def begins(self, joint: str, depth: int = 8) -> Form:
         """When a supply starts to rise: at once, or when the supply it comes ``after`` is valid [s]."""

@@ -13,6 +13,7 @@ LEAK = 1e12
 
 def structure_of(circuit: Circuit, event: Transient) -> Structure:
     """Circuit and event in numbers. Raises Unmeasurable where a free terminal floats before or after the event."""
+    _check_opened(circuit, event)
     check_paths(circuit, event.after)
     earlier = None
     if event.before != event.after and not event.empty:
@@ -26,9 +27,18 @@ def structure_of(circuit: Circuit, event: Transient) -> Structure:
         waveforms=tuple(event.waves[name] for name in circuit.held),
         amps=circuit.amps(),
         diodes=circuit.diodes(),
+        pinned=tuple((circuit.terminal(name), volts) for name, volts in event.pinned),
         earlier=earlier,
         empty=event.empty,
     )
+
+
+def _check_opened(circuit: Circuit, event: Transient) -> None:
+    """Raises Unmeasurable where nothing is known to discharge a supply that is left open."""
+    floating = circuit.floating(event.after)
+    for name, _ in event.pinned:
+        if name in floating:
+            raise Unmeasurable(f"nothing that is known discharges {name} once it is open: it never falls")
 
 
 def check_paths(circuit: Circuit, contacts: Sequence[Arm]) -> None:

@@ -22,6 +22,8 @@ class Transient:
     empty: bool = False
     movers: tuple[str, ...] = ()
     """Held terminals that move."""
+    pinned: tuple[tuple[str, Form], ...] = ()
+    """Free terminals that a supply held until the event, and its voltage [V]."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -76,11 +78,15 @@ def _power_down(scene: Scene, contacts: Switched) -> Transient:
         if joint is None or scene.sources.kind(joint) != "supply":
             waves[name] = still(_rest(scene, name))
             continue
+        if scene.sources.goes(joint) == "never":
+            waves[name] = still(scene.sources.supply(joint))
+            continue
         fall = scene.sources.fall(joint)
         volts = _supply(scene, joint, "" if fall else f"{joint} falls at once")
         waves[name] = moved(volts, (), (), fall)
         movers.append(name)
-    return Transient(waves=waves, before=contacts.before, after=contacts.after, movers=tuple(movers))
+    pinned = tuple((name, scene.sources.supply(name)) for name in scene.circuit.free if scene.sources.opens(name))
+    return Transient(waves=waves, before=contacts.before, after=contacts.after, movers=tuple(movers), pinned=pinned)
 
 
 def _dip(scene: Scene, contacts: Switched) -> Transient:
@@ -106,7 +112,7 @@ def _step(scene: Scene, contacts: Switched, *, up: bool) -> Transient:
     low, high = _levels(scene, source)
     ends = (low, high) if up else (high, low)
     waves = {name: still(() if scene.unit else _rest(scene, name)) for name in scene.circuit.held if name != source}
-    waves[source] = moved(*ends)
+    waves[source] = moved(*ends, (), scene.sources.edge(scene.circuit.joints[source]))
     return Transient(waves=waves, before=contacts.before, after=contacts.after, movers=(source,))
 
 

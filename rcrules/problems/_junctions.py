@@ -39,6 +39,11 @@ class Passive:
     amps: Array
     """Currents drawn out of the free terminals [A] (case, free)"""
 
+    def steady(self, held: Array) -> Array:
+        """DC voltages of the free terminals [V] (case, free); held: of the others [V] (case, held)."""
+        modes = solve(replace(self.shape, capacitors=()), self.ohms, np.zeros((len(held), 0)))
+        return modes.steady(held, self.amps)
+
     def take(self, cases: Indices | Flags) -> "Passive":
         """Some of the cases."""
         return replace(self, ohms=self.ohms[cases], farads=self.farads[cases], amps=self.amps[cases])

@@ -67,7 +67,7 @@ class Solved:
         if structure.empty or not structure.shape.free:
             return np.concatenate([np.zeros((len(self.cases), structure.shape.free)), held], axis=1), none
         if structure.pinned:
-            return pinned_state(structure, self.cases, held, self.ohms, self.amps), none
+            return pinned_state(structure, self.cases, held, self.passive)
         if structure.diodes:
             return self.rest(held, earlier=True)
         return np.concatenate([self.earlier.steady(held, self.amps), held], axis=1), none

@@ -74,6 +74,20 @@ def _load(table: Table, key: str) -> Spread | None:
     return None
 
 
+def _fall(table: Table, key: str) -> Spread | str | None:
+    """A time, or what else becomes of a supply that is switched off."""
+    return table.parsed(key, _time_or_word, "a time such as '5 ms .. 50 ms', 'open' or 'never'")
+
+
+def _time_or_word(text: str) -> Spread | str:
+    if text.strip() in ("open", "never"):
+        return text.strip()
+    spread = parse_quantity(text, "s")
+    if spread.low < 0:
+        raise QuantityError("a time must not be below 0", length=len(text))
+    return spread
+
+
 def _drive(table: Table, key: str) -> tuple[Spread, Spread] | None:
     return table.parsed(key, _voltage_at_current, "a voltage and a current, such as '0.4 V at 3 mA'")
 
@@ -139,13 +153,14 @@ SUPPLY: Final[Mapping[str, Reader]] = {
     "valid": _Amount("V"),
     "rise": _Amount("s", 0),
     "after": _text,
-    "fall": _Amount("s", 0),
+    "fall": _fall,
     "load": _load,
 }
 NET: Final[Mapping[str, Reader]] = {
     "swing": _Amount("V"),
     "source-resistance": _Amount("Ω", 0),
     "wiring-capacitance": _Amount("F", 0),
+    "edge": _Amount("s", 0),
     "role": _word(*ROLES),
     "held": _word(*HELD_KINDS, "free"),
 }

@@ -17,7 +17,8 @@ class SupplyFacts:
     valid: Spread | None = None
     rise: Spread | None = None
     after: str | None = None
-    fall: Spread | None = None
+    fall: Spread | str | None = None
+    """Time from 100 % to 0 at power-down [s]; ``open`` = nothing feeds it any more; ``never`` = it stays up."""
     load: Spread | None = None
     """A constant current [A], or a constant power [W]."""
 
@@ -30,6 +31,8 @@ class NetFacts:
     swing: Spread | None = None
     source_resistance: Spread | None = None
     wiring_capacitance: Spread | None = None
+    edge: Spread | None = None
+    """Time that its driver takes from one level to the other [s]."""
     role: str | None = None
     held: str | None = None
     set: Mapping[str, str | float] = field(default_factory=dict)
