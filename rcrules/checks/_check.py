@@ -5,11 +5,14 @@ from collections.abc import Callable, Iterable, Mapping, Sequence
 from dataclasses import dataclass
 
 from rcrules.checks._asked import Asked
+from rcrules.checks._ends import at_nominal
 from rcrules.checks._finding import Judged, finding
-from rcrules.checks._resolve import Case, resolve
+from rcrules.checks._resolve import Case, is_joint, resolve
 from rcrules.checks._select import selected
 from rcrules.checks._subjects import Subject, Subjects
+from rcrules.checks._value import pose_value
 from rcrules.checks._verdict import Verdict, decide
+from rcrules.checks._words import worded
 from rcrules.design import natural
 from rcrules.events import Unmeasurable, pose
 from rcrules.findings import Finding, Json
@@ -53,7 +56,7 @@ def check(
     subjects = Subjects(board)
     found = [case for rule in rules for case in _cases(rule, subjects, board, project, only)]
     cases = [case for case in found if case.sure or not sure_only]
-    judged = _judge(cases, board, project)
+    judged = _judge(cases, subjects, board, project)
     posed = (item.problem.parameters for item in judged if item.problem)
     listed, numbers = listed_assumptions(key for parameters in (also, *posed) for key in assumptions_of(parameters))
     findings = [finding(item, board, project, _indexes(item, numbers), asked=asked) for item in judged]
@@ -71,15 +74,18 @@ def _cases(
     return [resolve(rule, item, board, project, sure=met is True) for item, met in chosen if met is not False]
 
 
-def _judge(cases: Iterable[Case], board: Board, project: Project) -> list[Judged]:
+def _judge(cases: Iterable[Case], subjects: Subjects, board: Board, project: Project) -> list[Judged]:
     """Pose what can be posed, decide all of it in one go."""
     judged: list[Judged] = []
     posed: list[tuple[Case, Problem]] = []
     known: dict[object, Problem | Unmeasurable] = {}
     for case in cases:
-        question = None if case.missing else _posed(case, board, project, known)
-        if isinstance(question, Problem):
-            posed.append((case, question))
+        if case.rule.fact and not case.missing:
+            judged.append(Judged(case=case, problem=None, verdict=worded(case, board)))
+            continue
+        question = None if case.missing else _asked(case, subjects, board, project, known)
+        if isinstance(question, tuple):
+            posed.append(question)
         else:
             judged.append(Judged(case=case, problem=None, verdict=_open(case, question)))
     verdicts = decide(posed)
@@ -88,6 +94,23 @@ def _judge(cases: Iterable[Case], board: Board, project: Project) -> list[Judged
         for (case, problem), verdict in zip(posed, verdicts, strict=True)
     ]
     return judged
+
+
+def _asked(
+    case: Case, subjects: Subjects, board: Board, project: Project, known: dict[object, Problem | Unmeasurable]
+) -> tuple[Case, Problem] | Unmeasurable:
+    """The case and its problem; of a rule about nominal values with nothing spread."""
+    if case.rule.value is not None or any(is_joint(limit) for limit in case.rule.limits):
+        try:
+            case, problem = pose_value(case, subjects, board, project)
+        except Unmeasurable as error:
+            return error.with_traceback(None)
+    else:
+        found = _posed(case, board, project, known)
+        if isinstance(found, Unmeasurable):
+            return found
+        problem = found
+    return case, at_nominal(problem) if case.rule.nominal else problem
 
 
 def _posed(

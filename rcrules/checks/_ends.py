@@ -11,6 +11,18 @@ End = Literal["low", "nominal", "high", "full"]
 """Where the assumed slack of a parameter stands; ``full`` = anywhere."""
 
 
+def at_nominal(problem: Problem) -> Problem:
+    """The problem with every number at its nominal value, and nothing assumed."""
+    fixed = (
+        replace(
+            item, low=item.nominal, high=item.nominal, given_low=item.nominal, given_high=item.nominal, assumed=(),
+            asks=(),
+        )
+        for item in problem.parameters
+    )  # fmt: skip
+    return replace(problem, parameters=tuple(fixed))
+
+
 def assumed(problem: Problem) -> tuple[int, ...]:
     """Columns whose bounds rest on an assumption."""
     return tuple(index for index, item in enumerate(problem.parameters) if _is_assumed(item))

@@ -2,7 +2,7 @@
 
 from collections.abc import Iterable
 
-from rcrules.checks._subjects import View
+from rcrules.checks._views import View
 from rcrules.networks import Board, Held
 from rcrules.parts import Known
 from rcrules.quantities import Spread

@@ -7,6 +7,7 @@ from typing import Final
 
 from rcrules.checks._asked import Asked
 from rcrules.checks._check import check
+from rcrules.checks._place import stands_at
 from rcrules.checks._subjects import Subject, Subjects
 from rcrules.derivation import derive
 from rcrules.events import Unmeasurable, pose
@@ -45,15 +46,6 @@ def numbers_at(board: Board, project: Project, rules: Sequence[Rule], at: str) -
         if (kind, name) not in asked
     ]
     return [*told, *plain]
-
-
-def stands_at(subject: Subject, at: str) -> bool:
-    """Whether a subject is the net, part or pin of that name."""
-    if subject.kind in ("capacitor", "resistor"):
-        return subject.refs == (at,)
-    if subject.kind == "pin":
-        return at in subject.feeds
-    return at == subject.net or at in subject.nets or at in subject.feeds
 
 
 def near(board: Board, at: str) -> list[str]:

@@ -2,17 +2,25 @@
 
 from collections.abc import Mapping
 from dataclasses import dataclass
+from itertools import product
+from typing import Final
+
+import numpy as np
 
 from rcrules.checks._conditions import condition
 from rcrules.checks._lookup import Missing, look_up
+from rcrules.checks._named import named_number
 from rcrules.checks._subjects import Subject
+from rcrules.expressions import Call, Values, calls, names, value_of
 from rcrules.levels import Level
 from rcrules.networks import Board
 from rcrules.project import Project
 from rcrules.quantities import Spread
-from rcrules.rulebook import Limit, Rule
+from rcrules.rulebook import COUNTS, Limit, Rule
 
 OptionValue = str | float | Level
+_MOST_NAMES: Final = 8
+"""Names of one limit, of which every combination of ends is tried."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -75,6 +83,8 @@ def _bound(limit: Limit, rule: Rule, subject: Subject, board: Board, project: Pr
     """A limit in numbers: written, looked up, or chosen by a word that is looked up."""
     if limit.value is not None:
         return _strict(limit.kind, limit.value, limit.text, f"rule {rule.id}")
+    if limit.expression is not None:
+        return _of_expression(limit, rule, subject, board, project)
     name = limit.table[0] if limit.table else limit.name
     found = look_up(name or "", rule, subject, board, project)
     if isinstance(found, Missing):
@@ -93,3 +103,33 @@ def _bound(limit: Limit, rule: Rule, subject: Subject, board: Board, project: Pr
 def _strict(kind: str, value: Spread, text: str, origin: str) -> Bound:
     strict = value.high if kind == "at-least" else value.low
     return Bound(kind=kind, strict=strict, unit=value.unit, text=text, origin=origin)
+
+
+def is_count(call: Call) -> bool:
+    """Whether a call is read off the network itself."""
+    return call.name in COUNTS
+
+
+def is_joint(limit: Limit) -> bool:
+    """Whether a limit depends on measures, and so on the same numbers as what it limits."""
+    return limit.expression is not None and (
+        bool(limit.terms) or any(is_count(call) for call in calls(limit.expression))
+    )
+
+
+def _of_expression(limit: Limit, rule: Rule, subject: Subject, board: Board, project: Project) -> Bound | Missing:
+    """A limit worked out from names: the end that is hardest to keep, over all ends of theirs; 0 where it is joint."""
+    if limit.expression is None or is_joint(limit):
+        return Bound(kind=limit.kind, strict=0.0, unit=rule.measure.unit, text=limit.text, origin=f"rule {rule.id}")
+    own = list(dict.fromkeys(item.name for item in names(limit.expression)))[:_MOST_NAMES]
+    found = [named_number(name, rule, subject, board, project) for name in own]
+    missing = next((item for item in found if isinstance(item, Missing)), None)
+    if missing is not None:
+        return missing
+    ends = [dict.fromkeys((item.low, item.high)) for item in found if not isinstance(item, Missing)]
+    values = [
+        float(np.asarray(value_of(limit.expression, Values(names=dict(zip(own, corner, strict=True)), calls={}))))
+        for corner in product(*ends)
+    ]
+    strict = max(values) if limit.kind == "at-least" else min(values)
+    return Bound(kind=limit.kind, strict=strict, unit=rule.measure.unit, text=limit.text, origin=f"rule {rule.id}")

@@ -5,7 +5,8 @@ from fnmatch import fnmatchcase
 from typing import Final
 
 from rcrules.checks._facts import facts
-from rcrules.checks._subjects import Subject, View
+from rcrules.checks._subjects import Subject
+from rcrules.checks._views import View
 from rcrules.names import has_token
 from rcrules.networks import Board
 from rcrules.parts import Known, RatedPart

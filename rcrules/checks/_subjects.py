@@ -1,10 +1,11 @@
 """What a rule may be held against: nodes, parts, pins, supplies and networks, each with the facts of selections."""
 
 from collections import defaultdict
-from collections.abc import Iterable, Mapping
+from collections.abc import Mapping
 from dataclasses import dataclass, replace
 from functools import cached_property
 
+from rcrules.checks._views import View, view_apart, view_around, view_at
 from rcrules.design import Pin
 from rcrules.networks import Board, Held, Network, Node
 from rcrules.parts import Known, RatedPart
@@ -14,26 +15,11 @@ PIN_KINDS = ("ic", "transistor", "contact", "connector")
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
-class View:
-    """The facts of one subject at one node; a part at several nodes has several views."""
-
-    roles: tuple[str, ...]
-    certainty: str
-    nets: tuple[str, ...]
-    around: tuple[str, ...]
-    """Held nets around the network; of a part between held nets those two."""
-    fed_from: tuple[str, ...]
-    feeds: tuple[str, ...]
-    kinds_fed: tuple[str, ...]
-    parts: tuple[RatedPart, ...]
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
 class Subject:
     """A node, a capacitor or resistor, a pin, a supply, or a network."""
 
     kind: str
-    """``node``, ``capacitor``, ``resistor``, ``pin``, ``supply``, ``network``."""
+    """``node``, ``capacitor``, ``resistor``, ``pin``, ``supply``, ``network``, ``board``."""
     target: Node | RatedPart | Pin | Held | Network
     network: Network | None
     """Where it stands; None for a part between held nets."""
@@ -58,7 +44,14 @@ class Subjects:
         if kind == "node":
             return self._node_subjects
         if kind not in self._parts:
-            further = {"pin": self._pin_subjects, "supply": self._supply_subjects, "network": self._network_subjects}
+            further = {
+                "pin": self._pin_subjects,
+                "any pin": self._ic_pins,
+                "supply pin": lambda: tuple(pin for pin in self._ic_pins() if self._is_supplied(pin)),
+                "supply": self._supply_subjects,
+                "network": self._network_subjects,
+                "board": self._whole_board,
+            }
             self._parts[kind] = further[kind]() if kind in further else self._part_subjects(kind)
         return self._parts[kind]
 
@@ -77,7 +70,7 @@ class Subjects:
     def _node_subject(self, node: Node, network: Network) -> Subject:
         parts = tuple(self._board.parts[ref] for ref in node.parts)
         nets = self._nets(node)
-        view = _view(node, network, nets, parts)
+        view = view_at(node, network, nets, parts)
         return Subject(
             kind="node",
             target=node,
@@ -93,8 +86,8 @@ class Subjects:
         nets = tuple(dict.fromkeys(pin.net for pin in part.part.pins))
         network = self._network_of.get(part.ref)
         nodes = self._nodes_of.get(part.ref, ()) if network else ()
-        views = tuple(_view(node, network, nets, (part,)) for node in nodes if network)
-        apart = _apart(part, nets, self._board.coverage.get(part.ref, ""))
+        views = tuple(view_at(node, network, nets, (part,)) for node in nodes if network)
+        apart = view_apart(part, nets, self._board.coverage.get(part.ref, ""))
         return Subject(
             kind=part.kind,
             target=part,
@@ -124,10 +117,12 @@ class Subjects:
         pins = [pin for net in nets if net in self._board.design.nets for pin in self._board.design.nets[net].pins]
         return [pin for pin in pins if pin.ref in self._board.parts and self._board.parts[pin.ref].fitted]
 
-    def _pin_subject(self, pin: Pin, joint: str, network: Network, node: Node | None) -> Subject:
+    def _pin_subject(self, pin: Pin, joint: str, network: Network | None, node: Node | None) -> Subject:
         nets, parts = tuple(dict.fromkeys((joint, *self._members.get(joint, ())))), (self._board.parts[pin.ref],)
-        apart = _around(nets, network.held, parts, feeds=(pin.key,))
-        view = apart if node is None else replace(_view(node, network, nets, parts), feeds=(pin.key,))
+        apart = view_around(nets, network.held if network else nets[:1], parts, feeds=(pin.key,))
+        view = apart
+        if node is not None and network is not None:
+            view = replace(view_at(node, network, nets, parts), feeds=(pin.key,))
         return Subject(
             kind="pin",
             target=pin,
@@ -139,6 +134,41 @@ class Subjects:
             views=(view,),
         )
 
+    def _ic_pins(self) -> tuple[Subject, ...]:
+        """Every connected pin of every fitted IC."""
+        found = []
+        for part in self._board.parts.values():
+            for pin in part.part.pins if part.kind == "ic" and part.fitted else ():
+                if pin.net:
+                    joint = self._board.joints.get(pin.net, pin.net)
+                    found.append(self._pin_subject(pin, joint, self._network_at(joint), self._node_at.get(joint)))
+        return tuple(found)
+
+    def _is_supplied(self, pin: Subject) -> bool:
+        held = self._board.held.get(pin.net or "")
+        return held is not None and held.kind == "supply"
+
+    def _network_at(self, joint: str) -> Network | None:
+        return self._network_of_joint.get(joint)
+
+    @cached_property
+    def _network_of_joint(self) -> Mapping[str, Network]:
+        return {joint: network for network in self._board.networks for joint in network.free}
+
+    @cached_property
+    def _node_at(self) -> Mapping[str, Node]:
+        return {
+            node.joint: node for network in self._board.networks for node in network.nodes if node.across is None
+        }
+
+    def _whole_board(self) -> tuple[Subject, ...]:
+        nets = tuple(self._board.design.nets)
+        view, all_of_it = view_around(nets[:1], (), ()), Network(id="", branches=(), free=(), held=(), nodes=())
+        whole = Subject(
+            kind="board", target=all_of_it, network=None, net=None, refs=(), feeds=(), nets=nets, views=(view,)
+        )
+        return (whole,)
+
     def _supply_subjects(self) -> tuple[Subject, ...]:
         """Every supply, once for all nets that are joined to it at DC."""
         held = (self._board.held[net] for net in self._board.held if self._board.joints.get(net, net) == net)
@@ -146,7 +176,7 @@ class Subjects:
 
     def _supply_subject(self, held: Held) -> Subject:
         nets = tuple(dict.fromkeys((held.net, *self._members.get(held.net, ()))))
-        view = _around(nets, nets[:1], (), certainty="sure" if held.sure else "unsure")
+        view = view_around(nets, nets[:1], (), certainty="sure" if held.sure else "unsure")
         return Subject(
             kind="supply", target=held, network=None, net=held.net, refs=(), feeds=(), nets=nets, views=(view,)
         )
@@ -164,7 +194,7 @@ class Subjects:
             refs=tuple(part.ref for part in parts),
             feeds=tuple(dict.fromkeys(pin for node in network.nodes for pin in node.feeds)),
             nets=tuple(dict.fromkeys((*network.free, *(node.net for node in network.nodes)))),
-            views=tuple(_view(node, network, self._nets(node), parts) for node in network.nodes),
+            views=tuple(view_at(node, network, self._nets(node), parts) for node in network.nodes),
         )
 
     def _nets(self, node: Node) -> tuple[str, ...]:
@@ -196,46 +226,3 @@ class Subjects:
             for branch in network.branches:
                 touched[branch.ref] += [joints[end] for end in (branch.a, branch.b) if end in joints]
         return {**touched, **named}
-
-
-def _view(node: Node, network: Network, nets: Iterable[str], parts: tuple[RatedPart, ...]) -> View:
-    """The facts at a node, for the node itself or for a part at it."""
-    return View(
-        roles=(node.role,),
-        certainty=node.certainty,
-        nets=tuple(dict.fromkeys((node.net, *nets))),
-        around=network.held,
-        fed_from=node.fed_from,
-        feeds=node.feeds,
-        kinds_fed=node.kinds_fed,
-        parts=parts,
-    )
-
-
-def _around(
-    nets: tuple[str, ...],
-    around: tuple[str, ...],
-    parts: tuple[RatedPart, ...],
-    *,
-    feeds: tuple[str, ...] = (),
-    certainty: str = "sure",
-) -> View:
-    """The facts of a pin that is at no node, or of a supply."""
-    return View(
-        roles=(),
-        certainty=certainty,
-        nets=nets,
-        around=around,
-        fed_from=around,
-        feeds=feeds,
-        kinds_fed=(),
-        parts=parts,
-    )
-
-
-def _apart(part: RatedPart, nets: tuple[str, ...], coverage: str) -> View:
-    """The facts of a part that hangs on no node."""
-    roles = ("decoupling",) if coverage == "decoupling" else ()
-    return View(
-        roles=roles, certainty="sure", nets=nets, around=nets, fed_from=nets, feeds=(), kinds_fed=(), parts=(part,)
-    )

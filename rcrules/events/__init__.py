@@ -8,6 +8,7 @@ from rcrules.events._bench import let_go
 from rcrules.events._options import OptionValue
 from rcrules.events._pose import pose
 from rcrules.events._quantities import Measured, quantities
+from rcrules.events._table import part_parameter
 from rcrules.events._unmeasurable import Unmeasurable
 
-__all__ = ["Measured", "OptionValue", "Unmeasurable", "let_go", "pose", "quantities"]
+__all__ = ["Measured", "OptionValue", "Unmeasurable", "let_go", "part_parameter", "pose", "quantities"]

@@ -154,6 +154,13 @@ class Table:
         return self.forms[parameter.name]
 
 
+def part_parameter(part: RatedPart) -> Parameter:
+    """A resistor or capacitor as a column of its own, its bias loss at its worst. Raises Unmeasurable."""
+    table = Table()
+    table.part(part)
+    return table.parameters[0]
+
+
 def _at_least(value: float, least: float | None) -> float:
     return value if least is None else max(value, least)
 

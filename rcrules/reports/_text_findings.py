@@ -86,7 +86,7 @@ def _numbers(finding: Finding) -> Line:
     """What was measured, its bounds, the limit, by how much, how sure."""
     measured = finding.measured
     if measured is None:
-        return (_INDENT, asked(finding))
+        return (_INDENT, asked(finding), f"   {finding.reason}" if finding.reason else "")
     percent = in_percent(finding)
     spread = bounds(measured.low, measured.nominal, measured.high, measured.unit, percent=percent)
     return (

@@ -1,13 +1,28 @@
 """Step 8: rule packs in TOML in, compiled rules out."""
 
 from rcrules.rulebook._condition import FACTS, facts_of, holds
-from rcrules.rulebook._model import Comparison, Condition, Example, Junction, Limit, OptionValue, Pack, Rule, Selection
+from rcrules.rulebook._model import (
+    Comparison,
+    Condition,
+    Example,
+    Junction,
+    Limit,
+    OptionValue,
+    Pack,
+    Rule,
+    Selection,
+    Term,
+)
 from rcrules.rulebook._packs import compile_pack, load, packs, packs_folder, shipped
 from rcrules.rulebook._sentence import sentence
 from rcrules.rulebook._settings import check_settings, strange_settings
+from rcrules.rulebook._value import COUNTS, NUMBER_FACTS, WORD_FACTS, dict_of
 
 __all__ = [
+    "COUNTS",
     "FACTS",
+    "NUMBER_FACTS",
+    "WORD_FACTS",
     "Comparison",
     "Condition",
     "Example",
@@ -17,8 +32,10 @@ __all__ = [
     "Pack",
     "Rule",
     "Selection",
+    "Term",
     "check_settings",
     "compile_pack",
+    "dict_of",
     "facts_of",
     "holds",
     "load",

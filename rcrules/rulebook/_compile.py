@@ -2,21 +2,25 @@
 
 import re
 from collections.abc import Mapping
+from dataclasses import replace
 from typing import Final, Literal
 
+from rcrules.expressions import Call
 from rcrules.measures import Measure
-from rcrules.rulebook._model import Example, Pack, Rule
-from rcrules.rulebook._numbers import Names, given, limits, options
+from rcrules.rulebook._judged import Judged, judged
+from rcrules.rulebook._limits import limits
+from rcrules.rulebook._model import Example, Pack, Rule, Term
+from rcrules.rulebook._numbers import Names, given
 from rcrules.rulebook._selection import KEYS, selection
-from rcrules.tomlfile import Table, cut, guess, listed
+from rcrules.tomlfile import Table, cut
 from rcrules.vocabulary import OUTCOMES, SEVERITIES
 
 MAX_RULES: Final = 500
 _ID: Final = re.compile(r"[a-z][a-z0-9]*(?:-[a-z0-9]+)*")
 _PACK: Final = ("name", "title", "needs-facts", "caution")
 _RULE: Final = (
-    "id", "title", "level", *KEYS, "measure", "subject", "with", "at-least", "at-most", "given", "never", "why",
-    "source", "must-meet", "example",
+    "id", "title", "level", *KEYS, "measure", "subject", "with", "value", "every", "at-least", "at-most", "equals",
+    "one-of", "bounds", "given", "never", "why", "source", "must-meet", "example",
 )  # fmt: skip
 _NEVER: Final[Mapping[str, Literal["fails", "holds"]]] = {"fails": "fails", "holds": "holds"}
 
@@ -61,25 +65,27 @@ def _kebab(table: Table, key: str) -> str | None:
 def _rule(table: Table, pack: Pack | None, measures: Mapping[str, Measure], seen: dict[str, Table]) -> Rule | None:
     before = len(table.problems.mistakes)
     table.only(_RULE)
-    table.needs("id", "level", "measure")
+    table.needs("id", "level")
     own_id = _kebab(table, "id")
     if own_id is not None and own_id in seen:
         table.wrong("id", f"the id '{own_id}' is taken", found=f"first at {seen[own_id].place_of('id')}")
     if own_id is not None:
         seen.setdefault(own_id, table)
-    measure = _measure(table, measures)
-    if measure is None:
+    inner = table.data.get("given")
+    names = Names(own=frozenset(inner if isinstance(inner, Mapping) else ()))
+    what = judged(table, measures, names)
+    if what is None:
         selection(table)  # what is wrong there is told in the same run
         return None
-    rule = _body(table, pack, measure, own_id or "")
+    rule = _body(table, pack, what, names, measures, own_id or "")
     return rule if len(table.problems.mistakes) == before else None
 
 
-def _body(table: Table, pack: Pack | None, measure: Measure, own_id: str) -> Rule:
-    inner = table.data.get("given")
-    names = Names(own=frozenset(inner if isinstance(inner, Mapping) else ()))
-    settings = options(table, measure, names)
-    bounds = limits(table, measure, names)
+def _body(
+    table: Table, pack: Pack | None, what: Judged, names: Names, measures: Mapping[str, Measure], own_id: str
+) -> Rule:
+    bounds = limits(table, what.measure, names, measures) if not what.fact else ()
+    what = _with_call(what) if any(limit.terms for limit in bounds) else what
     never = table.word("never", tuple(_NEVER))
     return Rule(
         id=own_id,
@@ -88,27 +94,32 @@ def _body(table: Table, pack: Pack | None, measure: Measure, own_id: str) -> Rul
         title=table.text("title") or own_id.replace("-", " "),
         level=table.word("level", SEVERITIES) or "",
         selection=selection(table),
-        measure=measure,
-        options=settings,
+        measure=what.measure,
+        options=what.options,
         limits=bounds,
         given=given(table, names),
         given_units=dict(names.units),
         never=_NEVER[never or "fails"],
         why=table.text("why") or "",
         source=table.text("source") or "",
-        subject=table.word("subject", (measure.subject, *measure.also)) or "",
+        subject=what.subject,
+        value=what.value,
+        terms=what.terms,
+        fact=what.fact,
+        one_of=what.one_of,
+        nominal=table.word("bounds", ("worst", "nominal")) == "nominal",
         must_meet=table.count("must-meet") or 0,
         examples=tuple(_example(item) for item in table.tables("example")),
     )
 
 
-def _measure(table: Table, measures: Mapping[str, Measure]) -> Measure | None:
-    name = table.text("measure")
-    if name is None or name in measures:
-        return measures[name] if name else None
-    problem = f"no measure is called '{cut(name)}'{guess(name, measures)}"
-    table.wrong("measure", problem, at=0, length=len(name), expected=listed(measures))
-    return None
+def _with_call(what: Judged) -> Judged:
+    """A plain measure as a value that calls it: its limit depends on measures too."""
+    if what.value is not None:
+        return what
+    call = Call(name=what.measure.name, arguments=(), options=(), at=-1)
+    term = Term(call=call, measure=what.measure, options=what.options, at=None)
+    return replace(what, value=call, terms=(term,), subject=what.subject or what.measure.subject)
 
 
 def _example(table: Table) -> Example:

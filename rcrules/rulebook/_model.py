@@ -5,6 +5,7 @@ from dataclasses import dataclass, field
 from typing import Literal
 
 from rcrules.errors import Place
+from rcrules.expressions import Call, Expression
 from rcrules.levels import Level
 from rcrules.measures import Measure
 from rcrules.quantities import Spread
@@ -62,8 +63,19 @@ class Selection:
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
+class Term:
+    """A measure that a value calls."""
+
+    call: Call
+    measure: Measure
+    options: Mapping[str, OptionValue]
+    at: str | None
+    """Another net, part or pin at which it is measured; None = the rule's own subject."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
 class Limit:
-    """A bound of a rule: a number, or a name that is looked up at pin, net, part, settings, given."""
+    """A bound of a rule: a number, a name that is looked up at pin, net, part, settings, given, or an expression."""
 
     kind: Literal["at-least", "at-most"]
     text: str
@@ -71,6 +83,9 @@ class Limit:
     name: str | None = None
     table: tuple[str, Mapping[str, Spread]] | None = None
     """``{ by = "mode", standard = …, fast = … }``: the word looked up, and the limit by word."""
+    expression: Expression | None = None
+    terms: tuple[Term, ...] = ()
+    """Measures that the expression calls."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -118,11 +133,24 @@ class Rule:
     source: str = ""
     subject: str = ""
     """What it is held against; '' = what its measure is first of all a quantity of."""
+    value: Expression | None = None
+    """What is judged, where that is more than the measure alone; then ``measure`` only names subject and unit."""
+    terms: tuple[Term, ...] = ()
+    """Measures that the value calls."""
+    fact: str = ""
+    """A fact that is a word, which must be one of ``one_of``."""
+    one_of: tuple[str, ...] = ()
+    nominal: bool = False
+    """True: judged at nominal values (``bounds = "nominal"``), not over the worst case."""
     must_meet: int = 0
     """Subjects that the rule must at least meet."""
     examples: tuple[Example, ...] = ()
 
     @property
     def held_against(self) -> str:
-        """``node``, ``capacitor``, ``resistor``, ``pin``, ``supply`` or ``network``."""
-        return self.subject or self.measure.subject
+        """``node``, ``capacitor``, ``resistor``, ``pin``, ``supply``, ``network``, ``supply pin`` or ``board``.
+
+        ``any pin`` where pins are counted at, not measured.
+        """
+        counted = self.subject == "pin" and not self.terms and (self.value is not None or self.fact)
+        return "any pin" if counted else self.subject or self.measure.subject

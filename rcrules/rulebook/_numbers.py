@@ -1,15 +1,14 @@
 """The numbers of a rule: options of its measure, limits, and the names that are looked up on the board."""
 
 import re
-from collections.abc import Mapping
-from dataclasses import dataclass, field, replace
+from dataclasses import dataclass, field
 from typing import Final, Literal
 
 from rcrules.levels import Level, parse_level
 from rcrules.measures import Measure, Option
 from rcrules.project import NUMBERS
 from rcrules.quantities import Spread
-from rcrules.rulebook._model import Limit, OptionValue
+from rcrules.rulebook._model import OptionValue
 from rcrules.tomlfile import Table, cut, guess, listed, quantity_name
 from rcrules.vocabulary import EVENTS
 
@@ -91,7 +90,7 @@ def _option(given: Table, key: str, option: Option, measure: Measure, names: Nam
     if option.kind == "names":
         return ", ".join(given.texts(key)) or None
     if isinstance(value, str) and (value in names.own or (option.kind == "quantity" and NAME.fullmatch(value))):
-        return _looked_up(given, key, value, option.unit, names)
+        return looked_up(given, key, value, option.unit, names)
     if option.kind == "level":
         return _level(given, key, measure)
     spread = given.quantity(key, option.unit)
@@ -101,7 +100,7 @@ def _option(given: Table, key: str, option: Option, measure: Measure, names: Nam
     return spread.nominal if spread else None
 
 
-def _looked_up(table: Table, key: str, name: str, unit: str, names: Names) -> str | None:
+def looked_up(table: Table, key: str, name: str, unit: str, names: Names) -> str | None:
     """A name as ``?name``; one that nobody gives is a mistake."""
     if not names.known(name):
         known = sorted({*names.own, *NUMBERS})
@@ -123,66 +122,6 @@ def _level(given: Table, key: str, measure: Measure) -> Level | None:
         given.wrong(key, f"a {measure.subject} feeds no pin that could switch", found=given.found(key))
         return None
     return level
-
-
-def limits(table: Table, measure: Measure, names: Names) -> tuple[Limit, ...]:
-    """``at-least`` and ``at-most``; one of them must be there."""
-    kinds: tuple[Literal["at-least", "at-most"], ...] = ("at-least", "at-most")
-    there = [kind for kind in kinds if kind in table.data]
-    if not there:
-        table.wrong("measure", "the rule has no limit", expected="at-least or at-most")
-    found = [limit for kind in there if (limit := _limit(table, kind, measure, names)) is not None]
-    numbers = {limit.kind: limit.value for limit in found if limit.value is not None}
-    low, high = numbers.get("at-least"), numbers.get("at-most")
-    if low is not None and high is not None and low.nominal > high.nominal:
-        table.wrong("at-most", "'at-most' lies below 'at-least': nothing can hold", found=table.found("at-most"))
-    return tuple(found)
-
-
-def _limit(table: Table, kind: Literal["at-least", "at-most"], measure: Measure, names: Names) -> Limit | None:
-    value = table.data[kind]
-    if isinstance(value, Mapping):
-        return _by_word(table, kind, measure, names)
-    if isinstance(value, str) and NAME.fullmatch(value):
-        name = _looked_up(table, kind, value, measure.unit, names)
-        return Limit(kind=kind, text=value, name=value) if name else None
-    spread = _amount(table, kind, measure, kind)
-    return Limit(kind=kind, text=str(value), value=spread) if spread else None
-
-
-def _amount(table: Table, key: str, measure: Measure, kind: str) -> Spread | None:
-    """A quantity of the measure's dimension."""
-    earlier = len(table.problems.mistakes)
-    spread = table.quantity(key, measure.unit)
-    if spread is None and len(table.problems.mistakes) > earlier:
-        _name_measure(table, key, measure)
-    if spread is not None and spread.low != spread.high:
-        table.wrong(key, f"'{kind}' must be one number, not a range", found=table.found(key))
-        return None
-    return spread
-
-
-def _name_measure(table: Table, key: str, measure: Measure) -> None:
-    """Tell a wrong dimension by the measure: ``'delay' is a time, '3 V' is a voltage``."""
-    mistake = table.problems.mistakes.pop()
-    problem = mistake.problem.replace(f"'{key}' is a", f"'{measure.name}' is a", 1)
-    mistake = replace(mistake, problem=problem)
-    table.problems.mistakes.append(mistake)
-
-
-def _by_word(table: Table, kind: Literal["at-least", "at-most"], measure: Measure, names: Names) -> Limit | None:
-    """``{ by = "mode", standard = "1000 ns", fast = "300 ns" }``"""
-    inner = table.table(kind)
-    word = inner.text("by") if inner else None
-    if inner is None or word is None or not NAME.fullmatch(word):
-        table.wrong(kind, f"'{kind}' as a table needs by = the name of a word", found=table.found(kind))
-        return None
-    names.use(inner, "by", word, WORD)
-    amounts = {key: _amount(inner, key, measure, key) for key in inner.data if key != "by"}
-    found = {key: spread for key, spread in amounts.items() if spread is not None}
-    if not amounts:
-        table.wrong(kind, f"'{kind}' has no limit for any word", expected=f'{{ by = "{word}", standard = "…" }}')
-    return Limit(kind=kind, text=f"by {word}", table=(word, found)) if found else None
 
 
 def given(table: Table, names: Names) -> dict[str, Spread | Literal["ask"]]:

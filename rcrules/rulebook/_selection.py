@@ -21,13 +21,14 @@ _BOUND: Final = re.compile(r"\s*(>=|<=)\s*")
 def selection(table: Table, depth: int = 0) -> Selection:
     """The selection keys of a rule, or of a table in its ``any-of`` or ``not``."""
     found: dict[str, Any] = {}
+    judged = depth == 0 and "measure" not in table.data and "every" not in table.data
     for key, read in _KEYS.items():
-        if key in table.data:
+        if key in table.data and not (judged and key == "value"):  # there it is what the rule judges
             found.update(read(table, key))
-    nested = {"any-of": "any_of", "not": "exclude"}
+    nested = {"any-of": "any_of", "not": "exclude", "except": "exclude"}
     for key, name in nested.items():
         if key in table.data:
-            found[name] = _nested(table, key, depth)
+            found[name] = (*found.get(name, ()), *_nested(table, key, depth))
     return Selection(**found)
 
 
@@ -128,4 +129,4 @@ _KEYS: Final[Mapping[str, Reader]] = {
     "polarised": _flag,
     "when": _when,
 }
-KEYS: Final = (*_KEYS, "any-of", "not")
+KEYS: Final = (*_KEYS, "any-of", "not", "except")

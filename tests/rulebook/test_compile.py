@@ -177,7 +177,6 @@ def test_a_wrong_dimension_is_told_by_the_measure():
         ('at-most = { by = "mode" }', "has no limit for any word"),
         ('at-most = { by = "mode", a = "1 s" }\ngiven = { mode = "a" }', "'mode' is a word, which a rule cannot bring"),
         ("at-most = 3", "'at-most' must be a time such as '1.2 ms' in quotes"),
-        ('equals = "1 s"', "unknown key 'equals'"),
         ("net = [" + '"A",' * 201 + ']\nat-most = "1 s"', "'net' must hold 1 to 200 texts"),
         (f"net = '{'a' * 201}'\nat-most = '1 s'", "a glob that is too long"),
     ],

@@ -1,0 +1,238 @@
+"""A value that is more than one measure, for one subject: every measure posed, one column wherever a number acts."""
+
+from collections.abc import Mapping, Sequence
+from dataclasses import dataclass, field, replace
+from typing import Final
+
+import numpy as np
+
+from rcrules.checks._count import count, least_path
+from rcrules.checks._lookup import Missing, look_up
+from rcrules.checks._named import named_number
+from rcrules.checks._place import stands_at
+from rcrules.checks._resolve import Bound, Case, is_count, is_joint
+from rcrules.checks._subjects import Subject, Subjects
+from rcrules.engine import Shape
+from rcrules.events import OptionValue, Unmeasurable, part_parameter, pose
+from rcrules.expressions import Binary, Call, Expression, Values, calls, names, value_of
+from rcrules.measures import Measure, Theory
+from rcrules.networks import Board
+from rcrules.problems import Array, Parameter, Problem, Structure
+from rcrules.project import Project
+from rcrules.quantities import Spread
+from rcrules.rulebook import Limit, Rule, Term, dict_of
+
+_EMPTY: Final = Structure(
+    shape=Shape(free=0, held=0, resistors=(), capacitors=()), ohms=(), farads=(), waveforms=()
+)
+"""Where nothing is posed."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class _Posed:
+    """One measure of the value."""
+
+    call: Call
+    structure: Structure
+    measure: Measure
+    columns: tuple[int, ...]
+    """Its columns among those of the value."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class _Composite:
+    """The value as a function of its columns."""
+
+    expression: Expression
+    posed: tuple[_Posed, ...]
+    constants: tuple[tuple[str, float], ...]
+    columns: tuple[tuple[str, int], ...]
+    """Names that are columns."""
+    counts: tuple[tuple[Call, float, tuple[int, ...]], ...]
+    """Calls that are a number, or a sum of columns."""
+
+    def compute(self, structure: Structure, cases: Array) -> Array:  # noqa: ARG002 - it has those of its measures
+        """Values (case,); cases (case, column)."""
+        found = {item.call: item.measure.compute(item.structure, cases[:, list(item.columns)]) for item in self.posed}
+        found |= {call: start + cases[:, list(own)].sum(axis=1) for call, start, own in self.counts}
+        values = Values(
+            names={**dict(self.constants), **{name: cases[:, index] for name, index in self.columns}}, calls=found
+        )
+        return np.broadcast_to(np.asarray(value_of(self.expression, values), dtype=float), (len(cases),)).copy()
+
+    def theory(self, structure: Structure, low: Array, high: Array) -> Theory:  # noqa: ARG002
+        """Signs where every measure that is added or taken off says so and none says the other; else not known."""
+        signs = _signs(self.expression, self, low, high)
+        return Theory(signs=tuple(signs) if signs is not None else (None,) * len(low))
+
+
+def _signs(of: Expression, composite: _Composite, low: Array, high: Array) -> list[int | None] | None:
+    """Sign of the slope by column; None where the shape of the expression says nothing."""
+    nothing: list[int | None] = [0] * len(low)
+    if isinstance(of, Binary) and of.sign in "+-":
+        sides = [_signs(side, composite, low, high) for side in (of.left, of.right)]
+        if sides[0] is None or sides[1] is None:
+            return None
+        other = sides[1] if of.sign == "+" else [None if sign is None else -sign for sign in sides[1]]
+        return [_agreed(one, two) for one, two in zip(sides[0], other, strict=True)]
+    if isinstance(of, Call):
+        return _of_call(of, composite, low, high)
+    own = [item.name for item in names(of)]
+    columns = dict(composite.columns)
+    if not calls(of) and not any(name in columns for name in own):
+        return nothing
+    if len(own) == 1 and of == names(of)[0]:
+        nothing[columns[own[0]]] = 1
+        return nothing
+    return None
+
+
+def _of_call(of: Call, composite: _Composite, low: Array, high: Array) -> list[int | None] | None:
+    found: list[int | None] = [0] * len(low)
+    for item in composite.posed:
+        if item.call == of and item.structure.diodes:
+            return None
+        if item.call == of:
+            own = item.measure.theory(item.structure, low[list(item.columns)], high[list(item.columns)])
+            for column, sign in zip(item.columns, own.signs, strict=True):
+                found[column] = sign
+            return found
+    for call, _, columns in composite.counts:
+        if call == of:
+            for column in columns:
+                found[column] = 1
+            return found
+    return None
+
+
+def _agreed(one: int | None, two: int | None) -> int | None:
+    if one is None or two is None:
+        return None
+    return one or two if 0 in (one, two) or one == two else None
+
+
+@dataclass(slots=True, kw_only=True)
+class _Columns:
+    """Parameters by name, each once: one number wherever it acts."""
+
+    parameters: list[Parameter] = field(default_factory=list)
+    by_name: dict[str, int] = field(default_factory=dict)
+
+    def add(self, item: Parameter) -> int:
+        """Its column. Of two spreads of one number (such as two bias ranges) the wider counts."""
+        if item.name not in self.by_name:
+            self.by_name[item.name] = len(self.parameters)
+            self.parameters.append(item)
+            return self.by_name[item.name]
+        index = self.by_name[item.name]
+        other = self.parameters[index]
+        self.parameters[index] = replace(
+            other,
+            low=min(other.low, item.low),
+            high=max(other.high, item.high),
+            given_low=min(other.given_low, item.given_low),
+            given_high=max(other.given_high, item.given_high),
+        )
+        return index
+
+
+def pose_value(case: Case, subjects: Subjects, board: Board, project: Project) -> tuple[Case, Problem]:
+    """The case with the measure that its value is here, and its problem.
+
+    Raises Unmeasurable where a measure cannot be posed, or a name or place is missing.
+    """
+    rule = case.rule
+    columns = _Columns()
+    joint = [limit for limit in rule.limits if is_joint(limit)]
+    expression = _with_limit(rule, joint)
+    terms = (*rule.terms, *(term for limit in joint for term in limit.terms))
+    posed = tuple(_posed(term, rule, case.subject, subjects, board, project, columns) for term in terms)
+    constants, own = _named(expression, rule, case.subject, board, project, columns)
+    counts = tuple(_counted(call, case.subject, board, columns) for call in calls(expression) if is_count(call))
+    whole = _Composite(expression=expression, posed=posed, constants=constants, columns=own, counts=counts)
+    measure = replace(rule.measure, compute=whole.compute, theory=whole.theory, options={})
+    bounds = tuple(_shifted(bound, joint) for bound in case.bounds)
+    posed_case = replace(case, rule=replace(rule, measure=measure, options={}), bounds=bounds, options={})
+    structure = posed[0].structure if len(posed) == 1 and expression == posed[0].call else _EMPTY
+    return posed_case, Problem(structure=structure, parameters=tuple(columns.parameters))
+
+
+def _with_limit(rule: Rule, joint: Sequence[Limit]) -> Expression:
+    """The value, less a limit that depends on the same numbers. Raises Unmeasurable where there are two such limits."""
+    value = rule.value
+    if value is None:
+        raise ValueError("a rule with a plain measure has no value to pose")
+    if not joint:
+        return value
+    if len(rule.limits) > 1:
+        raise Unmeasurable("two limits, one of which depends on measures", "")
+    limit = joint[0].expression
+    assert limit is not None  # those of joint have one
+    return Binary(sign="-", left=value, right=limit, at=0)
+
+
+def _shifted(bound: Bound, joint: Sequence[Limit]) -> Bound:
+    """A limit that went into the value is a limit of 0."""
+    return replace(bound, strict=0.0) if joint else bound
+
+
+def _posed(
+    term: Term, rule: Rule, subject: Subject, subjects: Subjects, board: Board, project: Project, columns: _Columns
+) -> _Posed:
+    place = subject if term.at is None else _place(term, subjects)
+    options = {name: _option(value, rule, subject, board, project) for name, value in term.options.items()}
+    problem = pose(board, project, place.target, term.measure, options)
+    own = tuple(columns.add(item) for item in problem.parameters)
+    return _Posed(call=term.call, structure=problem.structure, measure=term.measure, columns=own)
+
+
+def _place(term: Term, subjects: Subjects) -> Subject:
+    """The subject at another net, part or pin."""
+    at = term.at or ""
+    found = [item for item in subjects.of(term.measure.subject) if stands_at(item, at)]
+    if len(found) != 1:
+        many = "no" if not found else "more than one"
+        raise Unmeasurable(f"{many} {term.measure.subject} at {at}, for {term.measure.name}", "")
+    return found[0]
+
+
+def _option(value: OptionValue, rule: Rule, subject: Subject, board: Board, project: Project) -> OptionValue:
+    """An option; a text that starts with ``?`` is a name to look up."""
+    if not (isinstance(value, str) and value.startswith("?")):
+        return value
+    found = look_up(value[1:], rule, subject, board, project)
+    if isinstance(found, Missing):
+        raise Unmeasurable(found.reason, found.ask[0] if found.ask else "")
+    return found.value.nominal if isinstance(found.value, Spread) else found.value
+
+
+def _named(
+    of: Expression, rule: Rule, subject: Subject, board: Board, project: Project, columns: _Columns
+) -> tuple[tuple[tuple[str, float], ...], tuple[tuple[str, int], ...]]:
+    """Names that are one number, and names that are columns. Raises Unmeasurable where one is not known."""
+    constants: list[tuple[str, float]] = []
+    own: list[tuple[str, int]] = []
+    for name in dict.fromkeys(item.name for item in names(of)):
+        found = named_number(name, rule, subject, board, project)
+        if isinstance(found, Missing):
+            raise Unmeasurable(found.reason, found.ask[0] if found.ask else "")
+        if found.low == found.high:
+            constants.append((name, found.nominal))
+        else:
+            own.append((name, columns.add(found)))
+    return tuple(constants), tuple(own)
+
+
+def _counted(
+    call: Call, subject: Subject, board: Board, columns: _Columns
+) -> tuple[Call, float, tuple[int, ...]]:
+    """A count, or the resistors of a path as columns. Raises Unmeasurable where there is no path."""
+    options: Mapping[str, str] = dict_of(call)
+    if call.name == "count":
+        return call, float(count(options, subject, board)), ()
+    path = least_path(options, subject, board)
+    if path is None:
+        raise Unmeasurable(f"no resistors lead from {options['from']} to {options['to']}", "")
+    return call, 0.0, tuple(columns.add(part_parameter(board.parts[ref])) for ref in path)
+
+

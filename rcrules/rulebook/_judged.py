@@ -1,0 +1,168 @@
+"""What a rule judges: a measure, an expression, a word, or how many there are of something."""
+
+from collections.abc import Mapping
+from dataclasses import dataclass
+from typing import Final
+
+import numpy as np
+
+from rcrules.expressions import Call, Expression, Text, names, text_of, unit_of
+from rcrules.measures import Measure, Theory
+from rcrules.problems import Array, Structure
+from rcrules.rulebook._model import OptionValue, Term
+from rcrules.rulebook._numbers import Names, options
+from rcrules.rulebook._value import WORD_FACTS, Compiled, compiled
+from rcrules.tomlfile import Table, cut, guess, listed
+from rcrules.vocabulary import HELD_KINDS, PART_KINDS, ROLES
+
+SUBJECTS: Final = ("node", "capacitor", "resistor", "pin", "supply", "network", "supply pin", "board")
+_HAS: Final[Mapping[str, tuple[str, ...]]] = {
+    "kind": PART_KINDS,
+    "role": ROLES,
+    "within": ("the net", "the network"),
+    "to": HELD_KINDS,
+}
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Judged:
+    """The quantity of a rule, and what it is held against."""
+
+    measure: Measure
+    options: Mapping[str, OptionValue]
+    subject: str
+    value: Expression | None = None
+    terms: tuple[Term, ...] = ()
+    fact: str = ""
+    one_of: tuple[str, ...] = ()
+
+
+def judged(table: Table, measures: Mapping[str, Measure], own: Names) -> Judged | None:
+    """Of the keys ``measure``, ``every`` and ``value``; None with the mistakes noted.
+
+    Beside ``measure`` or ``every`` a ``value`` selects parts by their own value.
+    """
+    there = [key for key in ("measure", "every") if key in table.data]
+    there = there or [key for key in ("value",) if key in table.data]
+    if not there:
+        table.needs("measure")
+        return None
+    if len(there) > 1:
+        table.wrong("every", "'measure' and 'every' in one rule", on="key", expected="one of measure, value and every")
+        return None
+    if there[0] == "measure":
+        return _measured(table, measures, own)
+    if "with" in table.data:
+        do = 'write options in the brackets: delay(to = "1.2 V")'
+        table.wrong("with", "'with' goes with 'measure'", on="key", do=do)
+    return _every(table) if there[0] == "every" else _valued(table, measures, own)
+
+
+def _measured(table: Table, measures: Mapping[str, Measure], own: Names) -> Judged | None:
+    name = table.text("measure")
+    if name is None:
+        return None
+    if name not in measures:
+        problem = f"no measure is called '{cut(name)}'{guess(name, measures)}"
+        table.wrong("measure", problem, at=0, length=len(name), expected=listed(measures))
+        return None
+    measure = measures[name]
+    subject = table.word("subject", (measure.subject, *measure.also)) or ""
+    return Judged(measure=measure, options=options(table, measure, own), subject=subject)
+
+
+def _valued(table: Table, measures: Mapping[str, Measure], own: Names) -> Judged | None:
+    """``value``: a word that must be one of some, else an expression."""
+    subject = table.word("subject", SUBJECTS)
+    if "one-of" in table.data:
+        return _worded(table, subject)
+    found = compiled(table, "value", measures, own)
+    if found is None:
+        return None
+    about = subject or _subject(found)
+    if about is None:
+        table.wrong("value", "of what it is the value cannot be told", do=f"subject = one of {listed(SUBJECTS)}")
+        return None
+    wrong = _foreign(found, about)
+    if wrong is not None:
+        table.wrong("value", wrong)
+        return None
+    return _of(found, about)
+
+
+def _of(found: Compiled, subject: str) -> Judged:
+    measure = composite(text_of(found.expression), subject, unit_of(found.dimension))
+    return Judged(measure=measure, options={}, subject=subject, value=found.expression, terms=found.terms)
+
+
+def composite(name: str, subject: str, unit: str) -> Measure:
+    """A measure that stands for an expression until the board is there."""
+    kind = subject if subject in ("node", "capacitor", "resistor", "pin", "supply", "network") else "pin"
+    return Measure(
+        name=name,
+        subject=kind,  # type: ignore[arg-type]  # one of the six, tested above
+        unit=unit,
+        summary=f"{name[:1].upper()}{name[1:]}.",
+        compute=_unposed,
+        theory=_nothing,
+    )
+
+
+def _unposed(structure: Structure, cases: Array) -> Array:  # noqa: ARG001 - never met by a case
+    raise RuntimeError("an expression is worked out on a board only")
+
+
+def _nothing(structure: Structure, low: Array, high: Array) -> Theory:  # noqa: ARG001
+    return Theory(signs=(None,) * len(np.atleast_1d(low)))
+
+
+def _subject(found: Compiled) -> str | None:
+    """What the first measure that names no other place is a quantity of."""
+    own = [term.measure.subject for term in found.terms if term.at is None]
+    if own:
+        return own[0]
+    used = {item.name for item in names(found.expression)}
+    return "resistor" if "resistance" in used else "capacitor" if "capacitance" in used else None
+
+
+def _foreign(found: Compiled, subject: str) -> str | None:
+    """A measure that is none of the subject."""
+    for term in found.terms:
+        fits = (term.measure.subject, *term.measure.also)
+        if term.at is None and subject not in fits:
+            return f"'{term.measure.name}' is measured at a {listed(fits)}, and the rule is about a {subject}"
+    return None
+
+
+def _worded(table: Table, subject: str | None) -> Judged | None:
+    fact = table.word("value", WORD_FACTS)
+    words = table.texts("one-of")
+    table.needs(*(() if subject else ("subject",)))
+    if fact is None or subject is None:
+        return None
+    if not words:
+        table.wrong("one-of", "'one-of' holds no words")
+    for key in ("at-least", "at-most", "equals"):
+        if key in table.data:
+            table.wrong(key, f"'{key}' beside 'one-of'", on="key", do="a word is one of some, a number has limits")
+    measure = composite(fact, subject, "1")
+    return Judged(measure=measure, options={}, subject=subject, fact=fact, one_of=words)
+
+
+def _every(table: Table) -> Judged | None:
+    """``every = { subject = "supply pin", has = { kind = "capacitor" } }``: at least 1, if no limit is there."""
+    inner = table.table("every")
+    if inner is None:
+        return None
+    inner.only(("subject", "has"))
+    inner.needs("subject", "has")
+    subject, has = inner.word("subject", SUBJECTS), inner.table("has")
+    if has is None or subject is None:
+        return None
+    has.only(tuple(_HAS))
+    words = {key: has.word(key, choices) for key, choices in _HAS.items() if key in has.data}
+    if not any(key in words for key in ("kind", "role")):
+        has.wrong((), "'has' says neither kind nor role", expected='{ kind = "capacitor" } or { role = "bleeder" }')
+    told = tuple((key, Text(value=word, at=0), 0) for key, word in words.items() if word is not None)
+    call = Call(name="count", arguments=(), options=told, at=0)
+    return Judged(measure=composite(text_of(call), subject, "1"), options={}, subject=subject, value=call)

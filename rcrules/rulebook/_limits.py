@@ -1,0 +1,114 @@
+"""What a rule holds its quantity against: numbers, names, tables by word, expressions."""
+
+import re
+from collections.abc import Mapping
+from dataclasses import replace
+from typing import Final, Literal
+
+from rcrules.expressions import dimension_of
+from rcrules.measures import Measure
+from rcrules.quantities import QuantityError, Spread, parse_quantity
+from rcrules.rulebook._model import Limit
+from rcrules.rulebook._numbers import NAME, WORD, Names, looked_up
+from rcrules.rulebook._value import compiled
+from rcrules.tomlfile import Table
+
+Kind = Literal["at-least", "at-most"]
+_LIKE_EXPRESSION: Final = re.compile(r"[()*]|\s[+-]\s|[A-Za-z_]\w*\s*/|/\s*[a-z_]\w*_")
+_EQUAL: Final = 1e-9
+"""Part by which a number may differ from the one that it must equal."""
+
+
+def limits(table: Table, measure: Measure, names: Names, measures: Mapping[str, Measure]) -> tuple[Limit, ...]:
+    """``at-least``, ``at-most`` and ``equals``; one of them must be there."""
+    kinds: tuple[Kind, ...] = ("at-least", "at-most")
+    there = [kind for kind in kinds if kind in table.data]
+    if "equals" in table.data:
+        if there:
+            table.wrong(there[0], f"'{there[0]}' beside 'equals'", on="key", do="give one of the two")
+        return _equal(table, measure)
+    if not there and "every" in table.data:
+        one = Spread(low=1.0, nominal=1.0, high=1.0, unit="1")
+        return (Limit(kind="at-least", text="1", value=one),)
+    if not there:
+        table.wrong("measure" if "measure" in table.data else "value", "the rule has no limit", expected=_EXPECTED)
+    found = [limit for kind in there if (limit := _limit(table, kind, measure, names, measures)) is not None]
+    numbers = {limit.kind: limit.value for limit in found if limit.value is not None}
+    low, high = numbers.get("at-least"), numbers.get("at-most")
+    if low is not None and high is not None and low.nominal > high.nominal:
+        table.wrong("at-most", "'at-most' lies below 'at-least': nothing can hold", found=table.found("at-most"))
+    return tuple(found)
+
+
+_EXPECTED: Final = "at-least, at-most or equals"
+
+
+def _equal(table: Table, measure: Measure) -> tuple[Limit, ...]:
+    """Both limits, so close that only rounding lies between."""
+    spread = _amount(table, "equals", measure, "equals")
+    if spread is None:
+        return ()
+    slack = _EQUAL * abs(spread.nominal)
+    text = str(table.data["equals"])
+    least, most = (replace(spread, low=end, nominal=end, high=end) for end in (spread.low - slack, spread.low + slack))
+    return Limit(kind="at-least", text=text, value=least), Limit(kind="at-most", text=text, value=most)
+
+
+def _is_expression(text: str) -> bool:
+    """Whether a text is more than one quantity or name."""
+    try:
+        parse_quantity(text)
+    except QuantityError:
+        return _LIKE_EXPRESSION.search(text) is not None and not NAME.fullmatch(text)
+    return False
+
+
+def _limit(
+    table: Table, kind: Kind, measure: Measure, names: Names, measures: Mapping[str, Measure]
+) -> Limit | None:
+    value = table.data[kind]
+    if isinstance(value, Mapping):
+        return _by_word(table, kind, measure, names)
+    if isinstance(value, str) and _is_expression(value):
+        found = compiled(table, kind, measures, names, dimension_of(measure.unit))
+        return Limit(kind=kind, text=value, expression=found.expression, terms=found.terms) if found else None
+    if isinstance(value, str) and NAME.fullmatch(value):
+        name = looked_up(table, kind, value, measure.unit, names)
+        return Limit(kind=kind, text=value, name=value) if name else None
+    spread = _amount(table, kind, measure, kind)
+    return Limit(kind=kind, text=str(value), value=spread) if spread else None
+
+
+def _amount(table: Table, key: str, measure: Measure, kind: str) -> Spread | None:
+    """A quantity of the measure's dimension."""
+    earlier = len(table.problems.mistakes)
+    spread = table.quantity(key, measure.unit)
+    if spread is None and len(table.problems.mistakes) > earlier:
+        _name_measure(table, key, measure)
+    if spread is not None and spread.low != spread.high:
+        table.wrong(key, f"'{kind}' must be one number, not a range", found=table.found(key))
+        return None
+    return spread
+
+
+def _name_measure(table: Table, key: str, measure: Measure) -> None:
+    """Tell a wrong dimension by the measure: ``'delay' is a time, '3 V' is a voltage``."""
+    mistake = table.problems.mistakes.pop()
+    problem = mistake.problem.replace(f"'{key}' is a", f"'{measure.name}' is a", 1)
+    mistake = replace(mistake, problem=problem)
+    table.problems.mistakes.append(mistake)
+
+
+def _by_word(table: Table, kind: Kind, measure: Measure, names: Names) -> Limit | None:
+    """``{ by = "mode", standard = "1000 ns", fast = "300 ns" }``"""
+    inner = table.table(kind)
+    word = inner.text("by") if inner else None
+    if inner is None or word is None or not NAME.fullmatch(word):
+        table.wrong(kind, f"'{kind}' as a table needs by = the name of a word", found=table.found(kind))
+        return None
+    names.use(inner, "by", word, WORD)
+    amounts = {key: _amount(inner, key, measure, key) for key in inner.data if key != "by"}
+    found = {key: spread for key, spread in amounts.items() if spread is not None}
+    if not amounts:
+        table.wrong(kind, f"'{kind}' has no limit for any word", expected=f'{{ by = "{word}", standard = "…" }}')
+    return Limit(kind=kind, text=f"by {word}", table=(word, found)) if found else None
