@@ -48,6 +48,7 @@ class Subjects:
                 "pin": self._pin_subjects,
                 "any pin": self._ic_pins,
                 "supply pin": lambda: tuple(pin for pin in self._ic_pins() if self._is_supplied(pin)),
+                "open-drain net": self._open_drains,
                 "supply": self._supply_subjects,
                 "network": self._network_subjects,
                 "board": self._whole_board,
@@ -143,6 +144,14 @@ class Subjects:
                     joint = self._board.joints.get(pin.net, pin.net)
                     found.append(self._pin_subject(pin, joint, self._network_at(joint), self._node_at.get(joint)))
         return tuple(found)
+
+    def _open_drains(self) -> tuple[Subject, ...]:
+        """Every net with an open-drain pin of an IC, once."""
+        found: dict[str | None, Subject] = {}
+        for pin in self._ic_pins():
+            if isinstance(pin.target, Pin) and pin.target.type == "open-collector":
+                found.setdefault(pin.net, pin)
+        return tuple(found.values())
 
     def _is_supplied(self, pin: Subject) -> bool:
         held = self._board.held.get(pin.net or "")

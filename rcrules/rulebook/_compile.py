@@ -123,8 +123,9 @@ def _with_call(what: Judged) -> Judged:
 
 
 def _example(table: Table) -> Example:
-    """``[[rule.example]]``: kept as written."""
-    table.only(("circuit", "outcome"))
+    """``[[rule.example]]``: kept as written, read when it is tried."""
+    table.only(("circuit", "project", "outcome"))
     table.needs("circuit", "outcome")
     outcome = table.word("outcome", OUTCOMES)
-    return Example(place=table.place, circuit=table.text("circuit") or "", outcome=outcome or "")
+    circuit, project = table.text("circuit") or "", table.text("project") or ""
+    return Example(place=table.place, circuit=circuit, project=project, outcome=outcome or "")

@@ -6,16 +6,16 @@ from typing import Final
 
 import numpy as np
 
-from rcrules.expressions import Call, Expression, Text, names, text_of, unit_of
+from rcrules.expressions import Call, Expression, Text, calls, names, text_of, unit_of
 from rcrules.measures import Measure, Theory
 from rcrules.problems import Array, Structure
 from rcrules.rulebook._model import OptionValue, Term
 from rcrules.rulebook._numbers import Names, options
-from rcrules.rulebook._value import WORD_FACTS, Compiled, compiled
+from rcrules.rulebook._value import COUNTS, WORD_FACTS, Compiled, compiled
 from rcrules.tomlfile import Table, cut, guess, listed
 from rcrules.vocabulary import HELD_KINDS, PART_KINDS, ROLES
 
-SUBJECTS: Final = ("node", "capacitor", "resistor", "pin", "supply", "network", "supply pin", "board")
+SUBJECTS: Final = ("node", "capacitor", "resistor", "pin", "supply", "network", "supply pin", "open-drain net", "board")
 _HAS: Final[Mapping[str, tuple[str, ...]]] = {
     "kind": PART_KINDS,
     "role": ROLES,
@@ -117,10 +117,12 @@ def _nothing(structure: Structure, low: Array, high: Array) -> Theory:  # noqa: 
 
 
 def _subject(found: Compiled) -> str | None:
-    """What the first measure that names no other place is a quantity of."""
+    """What the first measure that names no other place is a quantity of; counts are taken at nodes."""
     own = [term.measure.subject for term in found.terms if term.at is None]
     if own:
         return own[0]
+    if any(call.name in COUNTS for call in calls(found.expression)):
+        return "node"
     used = {item.name for item in names(found.expression)}
     return "resistor" if "resistance" in used else "capacitor" if "capacitance" in used else None
 

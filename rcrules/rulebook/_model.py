@@ -105,6 +105,9 @@ class Example:
 
     place: Place
     circuit: str
+    """One part a line: ``R1 10k 1% : +3V3, NRST``."""
+    project: str
+    """Text of a project file for it; '' = none."""
     outcome: str
     """One of vocabulary.OUTCOMES."""
 

@@ -3,6 +3,7 @@
 from collections.abc import Iterator
 from typing import Final
 
+from rcrules.expressions import text_of
 from rcrules.levels import Level
 from rcrules.quantities import show
 from rcrules.rulebook._model import Limit, OptionValue, Rule, Selection
@@ -28,9 +29,10 @@ def sentence(rule: Rule) -> str:
     selection = "".join(f" {phrase}," for phrase in [_selected(rule.selection, rule.held_against)] if phrase)
     subject = f"for every {rule.held_against}{selection or ','}"
     what = " ".join([f"the {rule.measure.name.replace('_', ' ')}", *_options(rule)])
-    bounds = " and ".join(_limit(rule, limit) for limit in rule.limits)
+    bounds = " and ".join(dict.fromkeys(_limit(rule, limit) for limit in rule.limits)) or listed(rule.one_of)
+    judged = " at nominal values" if rule.nominal else ""
     never = "; never reaching the level is fine" if rule.never == "holds" else ""
-    return f"{subject} {what} must be {bounds}{never}"
+    return f"{subject} {what}{judged} must be {bounds}{never}"
 
 
 def _selected(selection: Selection, subject: str) -> str:
@@ -78,6 +80,8 @@ def _shown(rule: Rule, key: str, value: OptionValue) -> str:
 
 def _limit(rule: Rule, limit: Limit) -> str:
     words = limit.kind.replace("-", " ")
+    if limit.expression is not None:
+        return f"{words} {text_of(limit.expression)}"
     if limit.value is not None:
         return f"{words} {limit.text}"
     if limit.table is not None:
