@@ -28,11 +28,20 @@ def sentence(rule: Rule) -> str:
     """``for every node with role debounce, the delay after release to 'may switch' must be at least 10 ms``"""
     selection = "".join(f" {phrase}," for phrase in [_selected(rule.selection, rule.held_against)] if phrase)
     subject = f"for every {rule.held_against}{selection or ','}"
-    what = " ".join([f"the {rule.measure.name.replace('_', ' ')}", *_options(rule)])
-    bounds = " and ".join(dict.fromkeys(_limit(rule, limit) for limit in rule.limits)) or listed(rule.one_of)
+    name = rule.measure.name if rule.value is not None else rule.measure.name.replace("_", " ")
+    what = " ".join([f"the {name}", *_options(rule)])
+    bounds = _bounds(rule) or listed(rule.one_of)
     judged = " at nominal values" if rule.nominal else ""
     never = "; never reaching the level is fine" if rule.never == "holds" else ""
     return f"{subject} {what}{judged} must be {bounds}{never}"
+
+
+def _bounds(rule: Rule) -> str:
+    """``at least 10 ms and at most 1 s``; two limits of one text are an equality."""
+    texts = {limit.text for limit in rule.limits}
+    if len(rule.limits) == 2 and len(texts) == 1:
+        return texts.pop()
+    return " and ".join(_limit(rule, limit) for limit in rule.limits)
 
 
 def _selected(selection: Selection, subject: str) -> str:

@@ -49,7 +49,7 @@ def test_without_a_project_only_packs_without_facts_apply_as_warnings(
 ) -> None:
     monkeypatch.chdir(tmp_path)
     monkeypatch.setattr("rcrules.project.find", lambda _: None)
-    (tmp_path / "board.xml").write_text(NETLIST.replace("16V", "1V"))
+    (tmp_path / "board.xml").write_text(NETLIST.replace("16V", "2.5V"))
     assert main(["check", "board.xml", "--report", "json"]) == 0
     document = loads(capsys.readouterr().out)
     assert all(not pack["needs_facts"] for pack in document.packs)
