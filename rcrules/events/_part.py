@@ -74,6 +74,10 @@ def pose_states(bench: Bench, part: RatedPart, measure: Measure, options: Mappin
     signed = part.polarised and measure.name == "applied_voltage"
     states = states_of(circuit, sources, ends, least=wants == "least", signed=signed)
     waves, transient_matters = switched_on(circuit, sources)
+    curves: tuple[tuple[int, tuple[tuple[float, float], ...]], ...] = ()
+    if measure.incremental and part.bias_curve and not transient_matters:
+        table.without_bias(part)
+        curves = ((_element(circuit, part), part.bias_curve),)
     ohms = circuit.values("resistor")
     structure = Structure(
         shape=circuit.shape(),
@@ -88,6 +92,7 @@ def pose_states(bench: Bench, part: RatedPart, measure: Measure, options: Mappin
         against=circuit.terminal(ends[1]),
         element=_element(circuit, part),
         rating=_rating(part, measure),
+        curves=curves,
         states=states,
         options=(*plain_of(measure, options), ("transient", float(transient_matters)), ("signed", float(signed))),
     )

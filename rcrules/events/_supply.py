@@ -1,6 +1,6 @@
 """A question about a supply: the capacitors, bleeders and load that hang right on it."""
 
-from collections.abc import Mapping
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 
 from rcrules.engine import Shape
@@ -57,10 +57,12 @@ def _posed(supply: _Supply, measure: Measure, options: Mapping[str, OptionValue]
     resistors = supply.of("resistor") if measure.name == "hold_up_time" else ()
     capacitors = supply.of("capacitor")
     load, draws = _load(supply) if measure.name == "hold_up_time" else ((), "")
+    farads = tuple(_value(supply, item) for item in capacitors)
     structure = Structure(
         shape=Shape(0, 2, ((0, 1),) * len(resistors), ((0, 1),) * len(capacitors)),
         ohms=tuple(_value(supply, item) for item in resistors),
-        farads=tuple(_value(supply, item) for item in capacitors),
+        farads=farads,
+        curves=_curves(supply, capacitors) if measure.incremental else (),
         waveforms=(_wave(supply, measure, volts), still(())),
         at=0,
         against=1,
@@ -76,6 +78,17 @@ def _posed(supply: _Supply, measure: Measure, options: Mapping[str, OptionValue]
         capacitors=tuple(item.ref for item in capacitors),
     )
     return Problem(structure=structure, parameters=tuple(supply.table.parameters), names=names)
+
+
+def _curves(supply: _Supply, capacitors: Sequence[Branch]) -> tuple[tuple[int, tuple[tuple[float, float], ...]], ...]:
+    """The bias curves of those that have one, whose columns then hold at 0 V."""
+    found = []
+    for index, item in enumerate(capacitors):
+        part = supply.bench.board.parts[item.ref]
+        if part.bias_curve:
+            supply.table.without_bias(part)
+            found.append((index, part.bias_curve))
+    return tuple(found)
 
 
 def _value(supply: _Supply, branch: Branch) -> Form:

@@ -1,7 +1,7 @@
 """The parameter table while a problem is being posed: the only home of uncertainty."""
 
 import math
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 
 from rcrules.events._unmeasurable import Unmeasurable
 from rcrules.parts import RatedPart, Unknown, at_bias
@@ -32,27 +32,15 @@ class Table:
             return self.forms[part.ref]
         if isinstance(part.value, Unknown):
             raise _unvalued(part, part.value)
-        origin = part.value.origin
-        if volts is not None:
-            part = at_bias(part, volts)
-        (low, nominal, high), (given_low, _, given_high) = part.bounds(), part.bounds(given_only=True)
-        least = LEAST_OHMS if part.kind == "resistor" else 0.0
-        assumed = [share for share in part.shares if not share.given]
-        return self.add(
-            Parameter(
-                name=part.ref,
-                unit="Ω" if part.kind == "resistor" else "F",
-                low=max(low, least),
-                nominal=max(nominal, least),
-                high=max(high, least),
-                given_low=max(given_low, least),
-                given_high=max(given_high, least),
-                origin=", ".join(share.origin for share in part.shares) or origin,
-                assumed=tuple(share.origin for share in assumed),
-                ask=next((share.ask for share in assumed if share.ask), ""),
-                asks=tuple(share.ask for share in assumed),
-            )
-        )
+        return self.add(_parameter(part if volts is None else at_bias(part, volts), part.value.origin))
+
+    def without_bias(self, part: RatedPart) -> None:
+        """Let the column of a capacitor hold at 0 V; what takes it up has its curve."""
+        if isinstance(part.value, Unknown):
+            raise _unvalued(part, part.value)
+        bare = replace(part, shares=tuple(share for share in part.shares if share.name != "bias"))
+        index = next(index for index, item in enumerate(self.parameters) if item.name == part.ref)
+        self.parameters[index] = _parameter(bare, part.value.origin)
 
     def insulation(self, part: RatedPart) -> Form | None:
         """The column of what a capacitor's dielectric lets through, a resistance from its least to infinity.
@@ -159,6 +147,26 @@ def part_parameter(part: RatedPart) -> Parameter:
     table = Table()
     table.part(part)
     return table.parameters[0]
+
+
+def _parameter(part: RatedPart, origin: str) -> Parameter:
+    """The column of a part's value over all its shares."""
+    (low, nominal, high), (given_low, _, given_high) = part.bounds(), part.bounds(given_only=True)
+    least = LEAST_OHMS if part.kind == "resistor" else 0.0
+    assumed = [share for share in part.shares if not share.given]
+    return Parameter(
+        name=part.ref,
+        unit="Ω" if part.kind == "resistor" else "F",
+        low=max(low, least),
+        nominal=max(nominal, least),
+        high=max(high, least),
+        given_low=max(given_low, least),
+        given_high=max(given_high, least),
+        origin=", ".join(share.origin for share in part.shares) or origin,
+        assumed=tuple(share.origin for share in assumed),
+        ask=next((share.ask for share in assumed if share.ask), ""),
+        asks=tuple(share.ask for share in assumed),
+    )
 
 
 def _at_least(value: float, least: float | None) -> float:

@@ -71,6 +71,8 @@ class Measure:
     """What the structure is."""
     rating: Literal["voltage", "power"] | None = None
     """The rating of the part that it counts in; None = it counts in none."""
+    incremental: bool = False
+    """True: it follows the bias curve of a capacitor from 0 V on; else the curve's range makes up the capacitance."""
     lasting: bool = False
     """True: it is a time that should be long, and infinite is as good as it gets."""
     settles: Literal["", "by a band", "by a share"] = ""

@@ -1,16 +1,18 @@
 """Stored charge of a capacitor at the greatest voltage that lies across it.
 
-Q = C V. Source: definition of capacitance, e.g. OpenStax University Physics 2, section 8.1.
+Q = C V; along a bias curve, which is incremental, Q = ∫ C dv. Source: definition of capacitance, e.g. OpenStax
+University Physics 2, section 8.1.
 """
 
+from rcrules.measures._bias import charge
 from rcrules.measures._measure import Measure
 from rcrules.measures._stress import most, with_capacitance
-from rcrules.problems import Array, Structure, evaluate
+from rcrules.problems import Array, Structure
 
 
 def compute(structure: Structure, cases: Array) -> Array:
     """Charge [C] (case,); cases: (case, column), SI. Needs structure.element."""
-    return most(structure, cases) * evaluate(structure.farads[structure.element or 0], cases)
+    return charge(structure, structure.element or 0, most(structure, cases), cases)
 
 
 MEASURE = Measure(
@@ -21,4 +23,5 @@ MEASURE = Measure(
     compute=compute,
     theory=with_capacitance,
     poses="states",
+    incremental=True,
 )

@@ -134,6 +134,8 @@ class Structure:
     """Index of the observed resistor or capacitor in the shape, for measures of parts."""
     rating: Form | None = None
     """Rated voltage [V] or power [W] of the observed part."""
+    curves: tuple[tuple[int, tuple[tuple[float, float], ...]], ...] = ()
+    """Capacitors whose farads hold at 0 V, and their bias curves: points of voltage [V] and remaining fraction."""
     absorbed: Form = ()
     """Share of the step that the dielectrics around the observed node take or give back late [1], where it counts."""
     load: Form = ()
