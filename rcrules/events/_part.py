@@ -20,7 +20,7 @@ from rcrules.events._unmeasurable import Unmeasurable
 from rcrules.measures import Measure
 from rcrules.networks import OPEN_END, Branch, Network
 from rcrules.parts import Known, RatedPart
-from rcrules.problems import Form, Problem, Structure, Waveform, constant
+from rcrules.problems import Form, Problem, Structure, Swing, Waveform, constant
 
 MOST_SOURCES = 8
 """Sources of which every combination is tried."""
@@ -72,8 +72,9 @@ def pose_states(bench: Bench, part: RatedPart, measure: Measure, options: Mappin
         check_paths(circuit, contacts)
     wants = str(options.get("extreme", "most"))
     signed = part.polarised and measure.name == "applied_voltage"
-    states = states_of(circuit, sources, ends, least=wants == "least", signed=signed)
     waves, transient_matters = switched_on(circuit, sources)
+    extremes = Extremes(least=wants == "least", signed=signed, every=transient_matters)
+    states = states_of(circuit, sources, ends, extremes)
     curves: tuple[tuple[int, tuple[tuple[float, float], ...]], ...] = ()
     if measure.incremental and part.bias_curve and not transient_matters:
         table.without_bias(part)
@@ -94,6 +95,7 @@ def pose_states(bench: Bench, part: RatedPart, measure: Measure, options: Mappin
         rating=_rating(part, measure),
         curves=curves,
         states=states,
+        swings=swings_of(circuit, sources) if transient_matters else (),
         options=(*plain_of(measure, options), ("transient", float(transient_matters)), ("signed", float(signed))),
     )
     return Problem(structure=structure, parameters=tuple(table.parameters), names=circuit.names(before=closed))
@@ -156,28 +158,72 @@ def ends_of(circuit: Circuit, sources: Sources, name: str) -> tuple[Form, Form]:
     return (volts, ()) if spread is not None and spread.nominal < 0.0 else ((), volts)
 
 
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Extremes:
+    """Which states of the sources matter."""
+
+    least: bool
+    """True: the lowest voltage is asked for."""
+    signed: bool
+    every: bool
+    """True: all of them, because transients start from each."""
+
+
 def states_of(
-    circuit: Circuit, sources: Sources, ends: tuple[str, str], *, least: bool, signed: bool
+    circuit: Circuit, sources: Sources, ends: tuple[str, str], extremes: Extremes
 ) -> tuple[tuple[Form, ...], ...]:
     """Every combination of lowest and highest; one where the other end is at 0 V and nothing is ever negative."""
     levels = [ends_of(circuit, sources, name) for name in circuit.held]
     spreads = [sources.volts(joint) for joint in circuit.joints.values()]
     positive = all(spread is not None and spread.low >= 0.0 for spread in spreads) and not circuit.draws
-    if ZERO in ends and positive and (ends[1] == ZERO or not signed):
-        return (tuple(low if least else high for low, high in levels),)
-    if sum(low != high for low, high in levels) > MOST_SOURCES:
+    many = sum(low != high for low, high in levels) > MOST_SOURCES
+    plain = ZERO in ends and positive and (ends[1] == ZERO or not extremes.signed)
+    if plain and (many or not extremes.every):
+        return (tuple(low if extremes.least else high for low, high in levels),)
+    if many:
         raise Unmeasurable(f"more than {MOST_SOURCES} sources act on it")
     return tuple(dict.fromkeys(product(*levels)))
 
 
 def switched_on(circuit: Circuit, sources: Sources) -> tuple[tuple[Waveform, ...], bool]:
-    """All sources from 0 V to their highest at once, and whether a capacitor lets a voltage go beyond its DC states."""
+    """All sources from 0 V to their highest, and whether a capacitor lets a voltage go beyond its DC states."""
     waves, bridging = [], False
     for name in circuit.held:
         _, high = ends_of(circuit, sources, name)
-        waves.append(moved((), high))
+        waves.append(moved((), high, *_ramp(circuit, sources, name)))
     for item in circuit.of("capacitor"):
         held = [end for end in (item.a, item.b) if end != ZERO and end in circuit.held]
         free = [end for end in (item.a, item.b) if end in circuit.free]
         bridging = bridging or len(free) == 2 or (len(free) == 1 and bool(held))
     return tuple(waves), bridging and bool(circuit.free)
+
+
+def swings_of(circuit: Circuit, sources: Sources) -> tuple[Swing, ...]:
+    """The sources that may switch by themselves."""
+    found = []
+    for number, name in enumerate(circuit.held):
+        low, high = ends_of(circuit, sources, name)
+        if low != high:
+            up, down = _times(circuit, sources, name)
+            found.append(Swing(held=number, low=low, high=high, up=up, down=down))
+    return tuple(found)
+
+
+def _ramp(circuit: Circuit, sources: Sources, name: str) -> tuple[Form, Form]:
+    """When a source begins to rise, and how long it takes; at once where nothing is said."""
+    joint = circuit.joints.get(name)
+    if joint is None or sources.kind(joint) != "supply":
+        return (), ()
+    return sources.begins(joint), sources.rise(joint) or ()
+
+
+def _times(circuit: Circuit, sources: Sources, name: str) -> tuple[Form, Form]:
+    """How long a source takes from its low to its high level, and back; at once where nothing is said."""
+    joint = circuit.joints.get(name)
+    if joint is None:
+        return (), ()
+    if sources.kind(joint) == "supply":
+        spread = sources.volts(joint)
+        times = sources.rise(joint) or (), sources.fall(joint) or ()
+        return times[::-1] if spread is not None and spread.nominal < 0.0 else times
+    return sources.edge(joint) or (), sources.edge(joint) or ()

@@ -11,7 +11,7 @@ from rcrules.events._contacts import arm, nearest, normally
 from rcrules.events._diodes import add_all, widened
 from rcrules.events._levels import Leveller
 from rcrules.events._options import OptionValue, plain_of
-from rcrules.events._part import ends_of, states_of, switched_on
+from rcrules.events._part import Extremes, ends_of, states_of, swings_of, switched_on
 from rcrules.events._sources import PROJECT, Sources, still
 from rcrules.events._structure import check_paths
 from rcrules.events._table import LEAST_OHMS, Table
@@ -68,8 +68,9 @@ def _states(spot: _Spot, measure: Measure, options: Mapping[str, OptionValue]) -
         check_paths(circuit, closed)
     ends = (spot.joint, spot.joint if levels else ZERO)
     least = options.get("extreme") == "least"
-    states = states_of(circuit, spot.sources, ends, least=least, signed=False)
     waves, transient = switched_on(circuit, spot.sources)
+    extremes = Extremes(least=least, signed=False, every=transient)
+    states = states_of(circuit, spot.sources, ends, extremes)
     ohms = circuit.values("resistor")
     structure = Structure(
         shape=circuit.shape(),
@@ -82,6 +83,7 @@ def _states(spot: _Spot, measure: Measure, options: Mapping[str, OptionValue]) -
         empty=True,
         at=circuit.terminal(spot.joint),
         states=states,
+        swings=swings_of(circuit, spot.sources) if transient else (),
         levels=levels,
         options=(*plain_of(measure, options), ("transient", float(transient))),
     )

@@ -1,34 +1,23 @@
 """Pin voltage: the most, or the least, that a pin meets over every subset of supplies that may be on.
 
-Both levels of every driver, both positions of contacts, and the transient where a bridging capacitor lets it go
-further. With ``above = "limit"`` it counts from the pin's own ``max-voltage``, which may follow a supply that is off
-while another still drives the pin: above 0 V the pin is over its limit. A supply that is off counts as 0 V.
+Both levels of every driver, both positions of contacts, and where a bridging capacitor lets it go further the
+transients: from empty to all sources on, back to all off, one source alone in any state, and contacts that move. With
+``above = "limit"`` it counts from the pin's own ``max-voltage``, which may follow a supply that is off while another
+still drives the pin: above 0 V the pin is over its limit. A supply that is off counts as 0 V.
 Source: nodal analysis; absolute maximum ratings of data sheets state such limits.
 """
 
-import numpy as np
-
 from rcrules.measures._measure import Measure, Option, Theory
-from rcrules.measures._stress import of_states
+from rcrules.measures._stress import ACROSS, across, of_states
 from rcrules.measures._theory import unproved
-from rcrules.problems import Array, LevelForm, Structure, evaluate, solved, steady_states
-
-ZERO = LevelForm(kind="voltage")
+from rcrules.problems import Array, Structure
 
 
 def compute(structure: Structure, cases: Array) -> Array:
     """Voltage [V] (case,); cases: (case, column), SI."""
-    level = dict(structure.levels).get("limit", ZERO)
-    states = steady_states(structure, cases)
-    volts = states[:, :, structure.at] - evaluate(level.offset, cases)[:, None]
-    for terminal, fraction in level.follows:
-        volts = volts - states[:, :, terminal] * evaluate(fraction, cases)[:, None]
-    low, high = volts.min(axis=1), volts.max(axis=1)
-    if ("transient", 1.0) in structure.options:
-        least, most = solved(structure, cases).above(level)[0].extremes()
-        low, high = np.minimum(low, least), np.maximum(high, most)
-    found: Array = high if structure.option("extreme") == "most" else low
-    return found
+    level = dict(structure.levels).get("limit", ACROSS)
+    low, high = across(structure, cases, level)
+    return high if structure.option("extreme") == "most" else low
 
 
 def theory(structure: Structure, low: Array, high: Array) -> Theory:

@@ -101,6 +101,22 @@ class Junction:
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
+class Swing:
+    """A held terminal that may go from one level to the other while the others rest."""
+
+    held: int
+    """Number among the held terminals."""
+    low: Form
+    """[V]"""
+    high: Form
+    """[V]"""
+    up: Form = ()
+    """Time from the low level to the high one [s]."""
+    down: Form = ()
+    """And back [s]."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
 class Structure:
     """Everything about a problem but the numbers in its columns."""
 
@@ -146,6 +162,8 @@ class Structure:
     """Levels by option name."""
     states: tuple[tuple[Form, ...], ...] = ()
     """DC source vectors, one form per held terminal, over supply subsets and driver states."""
+    swings: tuple[Swing, ...] = ()
+    """Sources that may switch by themselves in any of the states, where a transient may go beyond these."""
     rising: bool = True
     """Direction of the observed change."""
     options: tuple[tuple[str, float | str], ...] = ()
