@@ -13,6 +13,8 @@ from rcrules.design import Pin
 from rcrules.networks import _held_claims as say
 from rcrules.networks._held_driven import driven
 from rcrules.networks._held_ground import ground, only_ground
+from rcrules.networks._held_names import leaf
+from rcrules.networks._held_regulator import divided
 from rcrules.networks._held_verdict import Verdict, Verdicts, keys
 from rcrules.networks._held_voltage import volts_here
 from rcrules.networks._passing import passed
@@ -174,14 +176,17 @@ def _is_smoothed(scene: Scene, joint: str, verdicts: Verdicts) -> bool:
 
 def only_fed_by_resistors(scene: Scene, joint: str) -> bool:
     """Whether a resistor from a supply feeds the joint and nothing else does, as far as pins and names tell."""
-    if scene.says(joint, say.SOURCE) or scene.of_kind(joint, "battery", "transformer") or _brings_power(scene, joint):
+    if scene.says(joint, say.SOURCE) or scene.of_kind(joint, "battery", "transformer"):
         return False
-    feeding = [item for item, far in scene.far_ends(joint, "resistor") if _rank(scene, far) > _rank(scene, joint)]
+    feeding = [(item, far) for item, far in scene.far_ends(joint, "resistor") if _is_above(scene, far, joint)]
+    filtered = any(_is_small(scene, item.ref) and scene.says(far, say.SOURCE) for item, far in feeding)
+    if _brings_power(scene, joint) and not filtered:
+        return False
     if not feeding or len({pin.ref for pin in scene.says(joint, say.SUPPLY)}) >= MANY_PARTS:
         return False
     blocked = any(item.cathode == joint for item in scene.diodes.get(joint, ()))
     active = blocked or bool(scene.coils.get(joint)) or bool(scene.of_kind(joint, "transistor"))
-    return not active or any(_is_small(scene, item.ref) for item in feeding)
+    return not active or any(_is_small(scene, item.ref) for item, _ in feeding)
 
 
 def _brings_power(scene: Scene, joint: str) -> bool:
@@ -190,8 +195,20 @@ def _brings_power(scene: Scene, joint: str) -> bool:
     return any(pin not in takers for pin in scene.of_kind(joint, "connector"))
 
 
+def _is_above(scene: Scene, far: str, joint: str) -> bool:
+    """Whether a joint looks like the source of another: by what feeds it, or as ``+3V3`` is above ``+3V3_A``."""
+    one, other = _rank(scene, far), _rank(scene, joint)
+    if one[:2] == other[:2] and one[0]:
+        names = [leaf(name) or "" for name in (far, joint)]
+        if names[0] and names[0] != names[1] and all(names):
+            longer, shorter = names[1].startswith(names[0]), names[0].startswith(names[1])
+            if longer or shorter:
+                return longer
+    return one > other
+
+
 def _rank(scene: Scene, joint: str) -> tuple[bool, bool, bool, int]:
-    """How much a joint looks like the source of another: it makes a supply, has its voltage in its name, is larger."""
+    """How much a joint looks like a source: it makes a supply, has its voltage in its name, is larger."""
     named = [named for named in scene.hints(joint) if named.kind == "supply" and named.strong]
     like = bool(named) or bool(scene.says(joint, say.SUPPLY, say.SOURCE, say.NEGATIVE))
     told = any(item.volts is not None for item in named)
@@ -200,6 +217,7 @@ def _rank(scene: Scene, joint: str) -> tuple[bool, bool, bool, int]:
 
 def _supply(scene: Scene, joint: str, evidence: tuple[str, ...], *, sure: bool) -> Verdict:
     volts, why = volts_here(scene, joint)
+    why = divided(scene, joint) if why is None else why
     return Verdict(kind="supply", spread=volts, evidence=(*evidence, *_given(why)), sure=sure)
 
 

@@ -26,6 +26,7 @@ def driven(scene: Scene, joint: str, verdicts: Verdicts) -> Verdict | None:
         _output(scene, joint)
         or _between_chips(scene, joint)
         or _open_drain(scene, joint)
+        or _through_diode(scene, joint)
         or _connector(scene, joint, verdicts)
     )
 
@@ -60,6 +61,17 @@ def _open_drain(scene: Scene, joint: str) -> Verdict | None:
     if not pins or bus or scene.far_ends(joint, "capacitor") or _asked(scene, joint):
         return None
     return Verdict(kind="driven", evidence=(f"open-drain {keys(pins)[0]}",), sure=False)
+
+
+def _through_diode(scene: Scene, joint: str) -> Verdict | None:
+    """A pin of either direction with nothing but a diode: it pulls what is behind the diode."""
+    pins = scene.of_kind(joint, "ic")
+    alone = {scene.kind(pin.ref) for pin in scene.pins[joint]} == {"ic", "diode"}
+    if not alone or len(pins) != 1 or pins[0].type not in ("bidirectional", "tri-state", "unspecified"):
+        return None
+    if scene.says(joint, say.NEVER) or len(scene.diodes.get(joint, ())) != 1:
+        return None
+    return Verdict(kind="driven", evidence=(f"{keys(pins)[0]} drives through a diode",), sure=False)
 
 
 def _connector(scene: Scene, joint: str, verdicts: Verdicts) -> Verdict | None:

@@ -26,6 +26,10 @@ _VOLTAGES: Final = tuple(
         r"(?<![A-Z0-9])(?P<sign>[AD]?V(?:CC|DD)?_?)(?P<whole>\d{1,2})P(?P<tail>\d{1,2})V?(?!\d)",
         # P3P3V 3P3V
         r"(?<![A-Z0-9])(?P<sign>[-+PN])?(?P<whole>\d{1,2})P(?P<tail>\d{1,2})V(?!\d)",
+        # PP3V3 D3V3 A5V
+        r"(?<![A-Z0-9])(?P<sign>PP|A|D)(?P<whole>\d{1,2})V(?P<tail>\d{1,2})?(?![A-Z0-9])",
+        # +5 -12 +3.3 alone, with a letter or a word behind: +24A +5_LOGIC
+        r"^(?P<sign>[-+])(?P<whole>\d{1,3})(?:\.(?P<part>\d{1,2}))?(?:[A-Z]|_[A-Z]\w*)?$",
         # VDD33 VCC18 VDDIO25
         r"(?<![A-Z0-9])(?P<sign>[AD]?V(?:CC|DD)(?:IO|A|D)?_?)"
         r"(?P<whole>[1235])(?P<tail>(?<=3)3|(?<=1)8|(?<=2)5|(?<=2)8|(?<=1)5|(?<=5)0)(?!\d)",

@@ -1,6 +1,7 @@
 """What a pin says about the net it is on: ground, supply, source of a supply, switching node, output."""
 
 import re
+from collections.abc import Mapping
 from functools import lru_cache
 from typing import Final
 
@@ -42,6 +43,13 @@ _POSITIONS: Final = {
     ("3", "12"): frozenset(("1", "2", "13", "14")),
 }
 """Supply pins, positive and negative -> outputs: single in 5 and 8 pins, dual, quad amplifier, quad comparator."""
+_PINOUTS: Final = (
+    (re.compile(r"(?<!\d)(?:393|2903)(?!\d)"), 8, frozenset("17"), OPEN),
+    (re.compile(r"(?<!\d)(?:339|2901)(?!\d)"), 14, frozenset(("1", "2", "13", "14")), OPEN),
+    (re.compile(r"(?<!\d)(?:358|2904|0[678]2|4558|5532|833|1458)(?!\d)"), 8, frozenset("17"), OUTPUT),
+    (re.compile(r"(?<!\d)(?:324|2902|0[678]4)(?!\d)"), 14, frozenset(("1", "7", "8", "14")), OUTPUT),
+)
+"""Type numbers of the trade, number of pins, their outputs and what these are: dual and quad comparator, amplifier."""
 _POWERED: Final = ("power-in", "power-out")
 _CONNECTOR_NAMES: Final = frozenset((GROUND, SUPPLY))
 _MODULE_PINS: Final = 4
@@ -114,15 +122,26 @@ def _of_chip(pin: Pin, *, regulator: bool) -> str:
     return _typed(pin, name, named)
 
 
-def outputs_by_position(part: RatedPart) -> frozenset[str]:
-    """Pin numbers of the outputs of an amplifier or comparator without pin names, by where its supply pins are."""
+def outputs_by_position(part: RatedPart) -> Mapping[str, str]:
+    """Number -> claim of the outputs of an amplifier or comparator without pin names.
+
+    By the type number, else by where the supply pins are.
+    """
     pins = {pin.number: pin.name.upper() for pin in part.part.pins}
+    nameless = {number for number, name in pins.items() if name.strip("~") in ("", number)}
+    known = next(((out, claim) for name, count, out, claim in _PINOUTS if _fits(part, name, count)), None)
+    if known is not None:
+        return dict.fromkeys(known[0] & nameless, known[1])
     plus = [number for number, name in pins.items() if name in ("V+", "VCC", "VDD", "VS+", "+VS", "VCC+", "V")]
     minus = [number for number, name in pins.items() if name in ("V-", "GND", "VSS", "VS-", "-VS", "VCC-", "VEE")]
-    nameless = {number for number, name in pins.items() if name.strip("~") in ("", number)}
     if len(plus) != 1 or len(minus) != 1 or len(nameless) < 3:
-        return frozenset()
-    return _POSITIONS.get((plus[0], minus[0]), frozenset()) & nameless
+        return {}
+    return dict.fromkeys(_POSITIONS.get((plus[0], minus[0]), frozenset()) & nameless, OUTPUT)
+
+
+def _fits(part: RatedPart, name: re.Pattern[str], count: int) -> bool:
+    """Whether a part has a type number and as many pins, or fewer where the export leaves open ones out."""
+    return len(part.part.pins) <= count and name.search(part.text) is not None
 
 
 def _unless_typed(pin: Pin, named: str) -> str:

@@ -8,6 +8,7 @@ from rcrules.design import Pin
 from rcrules.networks import _held_claims as say
 from rcrules.networks._held_names import volts_in
 from rcrules.networks._held_regulator import adjusted, regulated
+from rcrules.networks._held_tracking import CELL_VOLTS, SEVERAL, Reading, followed
 from rcrules.networks._links import words
 from rcrules.networks._scene import Scene
 from rcrules.parts import RatedPart
@@ -21,19 +22,12 @@ _COIN_VOLTS: Final = 3.0
 _RECHARGEABLE: Final = re.compile(
     r"\bLI[-_ ]?(?:ION|PO(?:LY)?)\b|\bLITHIUM[-_ ]?(?:ION|POLYMER)|(?<!\d)(?:18650|14500|16340)(?!\d)", re.IGNORECASE
 )
-_SEVERAL: Final = re.compile(r"\b[2-9]\s?[SX]|[SX]\s?[2-9]\b", re.IGNORECASE)
-"""Words of several cells in series or side by side."""
-_RECHARGEABLE_VOLTS: Final = (3.0, 3.7, 4.2)
-"""A lithium-ion cell: empty, nominal, full [V] (from memory)."""
 _USB: Final = re.compile(r"(?<![A-Z])USB", re.IGNORECASE)
 _USB_VOLTS: Final = 5.0
 _PIN_VOLTS: Final = re.compile(
     r"(?<![A-Z0-9.])V?(?:OUT|LDO|REG|REGOUT|CAP)?_?(?P<pair>33|18|25|12|15)(?:_?OUT)?$|(?P<whole>\d)(?:\.|V|P)(?P<part>\d)"
 )
 _MOST_PLAUSIBLE: Final = 1000.0
-
-Reading = tuple[float | tuple[float, float, float] | None, str]
-"""[V], or least, nominal and most [V], and where it was read."""
 
 
 def volts_here(scene: Scene, joint: str) -> tuple[Spread | None, str | None]:
@@ -56,6 +50,7 @@ def _readings(scene: Scene, joint: str) -> Iterator[Reading]:
             usb = _USB.search(f"{words(scene.parts[pin.ref])} {scene.parts[pin.ref].part.footprint}")
             yield volts_in(pin.name), f"pin {pin.key}"
             yield _USB_VOLTS if usb else None, f"pin {pin.key} of a USB connector"
+    yield from followed(scene, joint)
     for pin in scene.of_kind(joint, "battery"):
         yield _cell(scene.parts[pin.ref]), f"the value of {pin.ref}"
     yield from _of_consumers(scene.says(joint, say.SUPPLY))
@@ -98,6 +93,6 @@ def _cell(part: RatedPart) -> float | tuple[float, float, float] | None:
     written = volts_in(part.text)
     if written is not None:
         return written
-    if _RECHARGEABLE.search(text) and not _SEVERAL.search(part.text):
-        return _RECHARGEABLE_VOLTS
+    if _RECHARGEABLE.search(text) and not SEVERAL.search(part.text):
+        return CELL_VOLTS
     return _COIN_VOLTS if _COIN.search(text) else None

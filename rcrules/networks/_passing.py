@@ -16,6 +16,8 @@ from rcrules.parts import Known, RatedPart
 DIODE_DROP: Final = (0.0, 0.3, 0.9)
 """Least, nominal and most voltage across a conducting diode [V]; no load to full load, Schottky to silicon."""
 _DIVIDER_OHMS: Final = 10e3
+_SHUNT_OHMS: Final = 0.2
+"""Up to here a resistor in a supply's way measures its current."""
 _ENTRY: Final = re.compile(
     r"\bDC[-_ ]?(IN|POWER|JACK|INPUT)|BARREL|JACK[-_]?DC|POWER[-_ ]?(IN|JACK|INPUT|SUPPLY)"
     r"|\bBATT?(ERY)?\b|ALIMENTA|NETZTEIL|ПИТАНИ",
@@ -65,8 +67,29 @@ def _onward(scene: Scene, joint: str, verdicts: Verdicts) -> Iterator[tuple[str,
         if _takes_supply(scene, far, verdicts) or _is_power_output(scene, far, verdicts):
             passed_on = here.passed(f"power switch {ref} from {joint}", sure=False)
             yield far, replace(passed_on, spread=None, given=False) if _is_bipolar(scene, ref) else passed_on
+    for ref, far in _linked(scene, joint, verdicts):
+        yield far, here.passed(f"link {ref} from {joint}")
+    for item, far in scene.far_ends(joint, "resistor"):
+        if far not in verdicts and _is_shunt(scene, item.ref) and scene.of_kind(far, "connector"):
+            yield far, here.passed(f"shunt {item.ref} from {joint}", sure=False)
     for source in scene.coils.get(joint, ()):
         yield from _rectified(scene, source, verdicts)
+
+
+def _linked(scene: Scene, joint: str, verdicts: Verdicts) -> Iterator[tuple[str, str]]:
+    """Supplies of unknown voltage and source behind a header of two pins: a link for a current meter."""
+    for pin in scene.of_kind(joint, "connector", "jumper"):
+        pins = scene.parts[pin.ref].part.pins
+        far = next((scene.joints[other.net] for other in pins if scene.joints[other.net] != joint), None)
+        if len(pins) != 2 or far is None or not _is_supply(verdicts, far) or scene.says(far, say.SOURCE):
+            continue
+        if len(scene.of_kind(far, "connector", "jumper", "battery")) == 1:
+            yield pin.ref, far
+
+
+def _is_shunt(scene: Scene, ref: str) -> bool:
+    value = scene.parts[ref].value
+    return isinstance(value, Known) and 0 < value.si <= _SHUNT_OHMS
 
 
 def _inputs(scene: Scene, verdicts: Verdicts) -> Iterator[tuple[str, Verdict]]:

@@ -11,6 +11,7 @@ from rcrules.networks import _held_claims as say
 from rcrules.networks._connected import connected
 from rcrules.networks._held_names import NameHint, hint
 from rcrules.networks._held_pins import claim, is_regulator, outputs_by_position
+from rcrules.networks._held_reference import cathode
 from rcrules.networks._joints import Rail
 from rcrules.networks._joints import joints as join_nets
 from rcrules.networks._links import branch, branches, contact, diodes, is_thermistor, joined
@@ -77,7 +78,7 @@ class Scene:
 def scene(design: Design, parts: Mapping[str, RatedPart], facts: Facts) -> Scene:
     """Look at the fitted parts once."""
     fitted = [part for part in parts.values() if part.fitted and part.part.pins]
-    by_net = _claims(fitted)
+    by_net = _claims(fitted, design, parts)
     switching = _switching(design, parts, by_net)
     pairs = [pair for part in fitted for pair in joined(part, facts.project) if not _coil(part, switching)]
     pairs += [fuse for part in fitted if (fuse := _series_thermistor(design, parts, by_net, part))]
@@ -107,14 +108,16 @@ def _is_fitted(parts: Mapping[str, RatedPart], pin: Pin) -> bool:
     return pin.ref not in parts or parts[pin.ref].fitted
 
 
-def _claims(fitted: list[RatedPart]) -> dict[str, dict[str, list[Pin]]]:
+def _claims(fitted: list[RatedPart], design: Design, parts: Mapping[str, RatedPart]) -> dict[str, dict[str, list[Pin]]]:
     """Net -> claim -> pins."""
     found: dict[str, dict[str, list[Pin]]] = defaultdict(lambda: defaultdict(list))
     for part in fitted:
         regulator = part.kind in _MAKERS and is_regulator(part)
-        outputs = outputs_by_position(part) if part.kind == "ic" else frozenset()
-        for pin in part.part.pins:
-            said = say.OUTPUT if pin.number in outputs else claim(pin, part, regulator=regulator)
+        outputs = outputs_by_position(part) if part.kind == "ic" else {}
+        shunt = cathode(part, design, parts)
+        for pin in part.part.pins if shunt is None else (shunt,):
+            said = outputs.get(pin.number) or claim(pin, part, regulator=regulator)
+            said = said if shunt is None else say.SOURCE
             if said:
                 found[pin.net][said].append(pin)
     return found

@@ -243,3 +243,22 @@ def test_a_voltage_read_from_a_name_is_an_assumption() -> None:
     found: Held = held(LOAD)["+3V3"]
     assert (found.given, found.sure) == (False, True)
     assert "3.3 V from the net name" in found.evidence
+
+
+def test_outputs_of_a_known_type_number_are_told_without_pin_names() -> None:
+    text = "U1 [QX393] =N1 =A =B =GND =C =D =N2 =+5V\nR1 4.7k +5V N1\nU2 PD0=N1\nR2 4.7k +5V N2\nU3 PD0=N2"
+    assert kinds(text)["N1"] == "driven"
+
+
+def test_a_pin_that_pulls_through_a_diode_drives_its_net() -> None:
+    text = "U1 PA1:bidirectional=N1\nD1 A=N2 K=N1\nR1 10k +5V N2\nC1 1u N2 GND"
+    assert kinds(text)["N1"] == "driven"
+
+
+def test_a_supply_behind_a_small_resistor_is_local_although_its_name_is_as_strong() -> None:
+    text = (
+        "U1 VDD:power-in=+3V3 VSS=GND VDDA:power-in=+3V3A\nR1 10 +3V3 +3V3A\nC1 1u +3V3A GND\nJ1 1=+3V3 2=GND\n"
+        "C2 1u +3V3 GND"
+    )
+    nodes = [node for network in board(text).networks for node in network.nodes]
+    assert [(node.net, node.role, node.parts) for node in nodes] == [("+3V3A", "supply-filter", ("R1", "C1"))]
