@@ -5,6 +5,7 @@ from typing import Final
 from rcrules.names import tokens
 from rcrules.networks import _held_claims as say
 from rcrules.networks._held_verdict import Verdict, Verdicts, keys
+from rcrules.networks._held_ways import drives_filter, is_led_out
 from rcrules.networks._scene import Scene
 from rcrules.parts import Known
 
@@ -28,6 +29,7 @@ def driven(scene: Scene, joint: str, verdicts: Verdicts) -> Verdict | None:
         or _open_drain(scene, joint)
         or _through_diode(scene, joint)
         or _connector(scene, joint, verdicts)
+        or _into_filter(scene, joint, verdicts)
     )
 
 
@@ -74,6 +76,14 @@ def _through_diode(scene: Scene, joint: str) -> Verdict | None:
     return Verdict(kind="driven", evidence=(f"{keys(pins)[0]} drives through a diode",), sure=False)
 
 
+def _into_filter(scene: Scene, joint: str, verdicts: Verdicts) -> Verdict | None:
+    """A chip's pin of either direction is the source of a filter or gate that nothing else can drive."""
+    if drives_filter(scene, joint, verdicts):
+        pins = scene.of_kind(joint, "ic")
+        return Verdict(kind="driven", evidence=(f"{keys(pins)[0]}, the one source there is",), sure=False)
+    return None
+
+
 def _connector(scene: Scene, joint: str, verdicts: Verdicts) -> Verdict | None:
     """A connector drives its net, unless a contact, a bus, or only a pull and a capacitor say otherwise."""
     pins = scene.of_kind(joint, "connector")
@@ -88,7 +98,7 @@ def _connector(scene: Scene, joint: str, verdicts: Verdicts) -> Verdict | None:
     capacitors = scene.far_ends(joint, "capacitor")
     sources = [far for _, far in scene.far_ends(joint, "resistor") if _feeds(scene, far, verdicts)]
     coupled = [far for _, far in capacitors if _feeds(scene, far, verdicts) and not _is_supply(verdicts, far)]
-    if (capacitors and sources) or coupled:
+    if (capacitors and sources) or coupled or is_led_out(scene, joint, verdicts):
         return None
     return Verdict(kind="driven", evidence=(f"connector {pins[0].key}",), sure=False)
 

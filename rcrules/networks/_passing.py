@@ -204,7 +204,7 @@ def _is_supply(verdicts: Verdicts, joint: str) -> bool:
 def _switched(scene: Scene, joint: str) -> Iterator[tuple[str, str]]:
     """The other ends of the channels of transistors at the joint, by pin names or the usual order of three pins."""
     for pin in scene.of_kind(joint, "transistor"):
-        control = _control(scene, pin.ref)
+        control = control_pins(scene, pin.ref)
         for other in scene.parts[pin.ref].part.pins:
             far = scene.joints[other.net]
             if (
@@ -223,7 +223,7 @@ def _is_bipolar(scene: Scene, ref: str) -> bool:
     return {"B", "C", "E"} <= pins or _BIPOLAR.search(words(part)) is not None
 
 
-def _control(scene: Scene, ref: str) -> frozenset[str]:
+def control_pins(scene: Scene, ref: str) -> frozenset[str]:
     """Numbers of the gates or bases: by name, else pin 1 of three."""
     pins = scene.parts[ref].part.pins
     named = frozenset(pin.number for pin in pins if pin.name.upper()[:1] in ("G", "B"))

@@ -5,7 +5,8 @@ from rcrules.names import tokens
 from rcrules.networks._fed import family_of, is_control, whole
 from rcrules.networks._fed_words import BOOT, SHORT_TIMING, SWITCH, TIMING
 from rcrules.networks._role import Judged
-from rcrules.networks._spot import Spot, View
+from rcrules.networks._role_parts import LIGHT
+from rcrules.networks._spot import Arm, Spot, View, least
 
 WINDINGS = ("inductor", "transformer")
 
@@ -56,7 +57,33 @@ def gate_drive(view: View, here: Spot) -> Judged | None:
     if control is None or view.has_kind(here, "ic", "connector") or not here.resistors:
         return None
     sure = tokens(control.name)[:1] in (("G",), ("GATE",))
-    return Judged(role="gate-drive", sure=sure, why=(f"drives {control.key}",))
+    drives, switches = _drivers(view, here), _switches(view, here)
+    limit = LIGHT * least(drives) if drives else float("inf")
+    light = [arm for arm in here.resistors if arm not in drives and not switches and (arm.value or 0.0) >= limit]
+    only = tuple(arm for arm in here.resistors + here.capacitors if arm not in light)
+    return Judged(
+        role="gate-drive", sure=sure, why=(f"drives {control.key}",), also=(*drives, *switches),
+        only=only if light else None,
+    )  # fmt: skip
+
+
+def _drivers(view: View, here: Spot) -> tuple[Arm, ...]:
+    """Resistors from a driven net or from an IC's pin."""
+    return tuple(
+        arm
+        for arm in here.resistors
+        if arm.to == "driven" or (arm.held is None and view.has_kind(view.at(arm.far), "ic", "connector"))
+    )
+
+
+def _switches(view: View, here: Spot) -> tuple[Arm, ...]:
+    """Resistors to the channel of another transistor."""
+    return tuple(
+        arm
+        for arm in here.resistors
+        if not arm.fixed
+        and any(view.kind(pin) == "transistor" and not is_control(view, pin) for pin in view.at(arm.far).pins)
+    )
 
 
 def _supplied(view: View, ref: str) -> bool:

@@ -7,6 +7,7 @@ from rcrules.networks._family import inverting
 from rcrules.networks._fed import family_of, is_control, whole
 from rcrules.networks._fed_words import FEEDBACK
 from rcrules.networks._role import Judged
+from rcrules.networks._role_parts import signal_above
 from rcrules.networks._spot import Arm, Spot, View
 
 
@@ -51,8 +52,7 @@ def _is_lifted(view: View, here: Spot, pin: Pin) -> bool:
 
 def _amplifier(view: View, here: Spot) -> Judged | None:
     for arm in here.resistors + here.capacitors:
-        outputs = _outputs(view, arm)
-        for pin in outputs:
+        for pin in outputs(view, arm):
             if _closes(view, here, pin):
                 return _loop(arm, pin)
             if arm in here.capacitors and _returns(here, pin):
@@ -68,11 +68,11 @@ def _loop(arm: Arm, output: Pin, *, sure: bool = True) -> Judged:
 def _returns(here: Spot, output: Pin) -> bool:
     """Whether an input of the same amplifier, of either sign, is at the joint itself."""
     return any(
-        pin.ref == output.ref and inverting(pin.name) is not None and _unit(pin) == _unit(output) for pin in here.pins
+        pin.ref == output.ref and inverting(pin.name) is not None and unit(pin) == unit(output) for pin in here.pins
     )
 
 
-def _outputs(view: View, arm: Arm) -> tuple[Pin, ...]:
+def outputs(view: View, arm: Arm) -> tuple[Pin, ...]:
     """IC pins that may drive the far joint of an arm."""
     if arm.to != "driven":
         return ()
@@ -90,12 +90,12 @@ def _closes(view: View, here: Spot, output: Pin) -> bool:
     """Whether an amplifier's inverting input is at the joint, one arm away, or behind a follower transistor."""
     near = {here.joint} | {arm.far for arm in here.resistors + here.capacitors if arm.held is None}
     inputs = [pin for pin in view.pins_of(output.ref) if _inverts(view, pin)]
-    if near & {view.joint(pin) for pin in inputs if len(inputs) < 2 or _unit(pin) == _unit(output)}:
+    if near & {view.joint(pin) for pin in inputs if len(inputs) < 2 or unit(pin) == unit(output)}:
         return True
     return any(_follows(view, pin, output.ref) for pin in view.pins_near(here) if is_control(view, pin))
 
 
-def _unit(pin: Pin) -> int:
+def unit(pin: Pin) -> int:
     """Which amplifier of a dual or quad package a pin belongs to, in the usual pinout: 1-3, 5-7, 8-10, 12-14."""
     number = int(pin.number) if pin.number.isdigit() else 0
     return next((unit for unit, last in enumerate((3, 7, 10, 14)) if number <= last), 4)
@@ -133,17 +133,22 @@ def _leg(view: View, here: Spot) -> Judged | None:
     if not here.bare or len({arm.far for arm in here.resistors}) != 1 or len({arm.far for arm in here.capacitors}) != 1:
         return None
     for arm in here.resistors + here.capacitors:
-        if arm.held is None:
-            for pin in view.at(arm.far).pins:
-                if inverting(pin.name) and _looped(view, pin):
-                    return Judged(
-                        role="feedback",
-                        why=(f"{arm.ref} leads to inverting input {pin.key}",),
-                        active=f"amplifier {pin.ref} inside the loop",
-                    )
+        for pin in view.at(arm.far).pins if arm.held is None else ():
+            if inverting(pin.name) and _looped(view, pin):
+                return _into(view, here, arm, pin)
     return None
+
+
+def _into(view: View, here: Spot, arm: Arm, pin: Pin) -> Judged:
+    """A series R-C into an inverting input: from a signal it couples into a virtual ground, from a rail it is a leg."""
+    active = f"amplifier {pin.ref} inside the loop"
+    other = next(leg for leg in here.resistors + here.capacitors if leg.far != arm.far)
+    if other.to == "driven" or (other.held is None and signal_above(view, other.far, here.joint)):
+        why = f"{other.ref} and {arm.ref} couple {other.far} into the virtual ground at {pin.key}"
+        return Judged(role="high-pass", why=(why,), active=active, alone=True)
+    return Judged(role="feedback", why=(f"{arm.ref} leads to inverting input {pin.key}",), active=active)
 
 
 def _looped(view: View, pin: Pin) -> bool:
     here = view.at(view.joint(pin))
-    return any(far.ref == pin.ref for arm in here.resistors + here.capacitors for far in _outputs(view, arm))
+    return any(far.ref == pin.ref for arm in here.resistors + here.capacitors for far in outputs(view, arm))

@@ -1,6 +1,8 @@
 """Filters: high-pass, divider with capacitor, low-pass."""
 
-from rcrules.networks._fed import feeding, kinds
+from rcrules.networks._family import inverting
+from rcrules.networks._fed import feeding, kind_fed, kinds, words_of
+from rcrules.networks._fed_words import CURRENT
 from rcrules.networks._role import Judged
 from rcrules.networks._role_parts import LIGHT, ends, kinds_at, signal_above, strong_ends
 from rcrules.networks._spot import SMALL, Arm, Spot, View, greatest, least
@@ -23,7 +25,9 @@ def high_pass(view: View, here: Spot) -> Judged | None:
     if greatest(shunt) > greatest(series) > 0 or any(_is_driven(view, here, arm) for arm in here.resistors):
         return None
     why = f"{series[0].ref} couples {series[0].far} to a fixed bias"
-    return Judged(role="high-pass", why=(why,))
+    helped = next((arm.ref for arm in here.resistors if bootstrapped(view, here, arm)), None)
+    active = f"an amplifier drives {helped}" if helped else None
+    return Judged(role="high-pass", why=(why,), active=active)
 
 
 def divider(view: View, here: Spot) -> Judged | None:
@@ -55,13 +59,21 @@ def low_pass(view: View, here: Spot) -> Judged | None:
 
 
 def _differential(view: View, here: Spot, driven: list[Arm]) -> Judged | None:
-    """A capacitor across two lines that both come from signals through resistors of a size."""
-    for arm in here.capacitors if driven else ():
-        others = [far for far in view.at(arm.far).resistors if far.to == "driven"]
-        if others and least(driven) <= ALIKE * least(others) and least(others) <= ALIKE * least(driven):
-            why = f"{driven[0].ref} in series from {_source(view, here, driven[0])}, {arm.ref} across to {arm.far}"
+    """A capacitor across two lines that both come from signals, or from the ends of a shunt, through like resistors."""
+    mine = driven or _sensed(view, here)
+    for arm in here.capacitors if mine else ():
+        far = view.at(arm.far)
+        others = [leg for leg in far.resistors if leg.to == "driven"] or _sensed(view, far)
+        if others and least(mine) <= ALIKE * least(others) and least(others) <= ALIKE * least(mine):
+            why = f"{mine[0].ref} in series from {_source(view, here, mine[0])}, {arm.ref} across to {arm.far}"
             return Judged(role="low-pass", why=(why,))
     return None
+
+
+def _sensed(view: View, here: Spot) -> list[Arm]:
+    """Resistors from supplies into a pin that measures."""
+    measures = any(kind_fed(view, pin) in ("adc", "amplifier") or words_of(pin) & CURRENT for pin in here.pins)
+    return [arm for arm in here.resistors if arm.to == "supply"] if measures else []
 
 
 def _from_supply(view: View, here: Spot) -> Judged | None:
@@ -91,13 +103,26 @@ def _is_signal(view: View, here: Spot, arm: Arm) -> bool:
 def _is_driven(view: View, here: Spot, arm: Arm) -> bool:
     """Whether a resistor leads to a driven net, directly or through one that is small beside it."""
     if arm.held is not None:
-        return arm.to == "driven"
+        return arm.to == "driven" and not bootstrapped(view, here, arm)
     beyond = (far for far in view.at(arm.far).resistors if far.far != here.joint)
     return any(far.to == "driven" and (far.value or 0.0) <= SMALL * (arm.value or 0.0) for far in beyond)
 
 
 def _is_bias(view: View, here: Spot, arm: Arm) -> bool:
-    return arm.fixed or (arm.held is None and bool(ends(view, arm.far, here.joint)))
+    if arm.held is not None:
+        return arm.fixed or bootstrapped(view, here, arm)
+    return bool(ends(view, arm.far, here.joint))
+
+
+def bootstrapped(view: View, here: Spot, arm: Arm) -> bool:
+    """Whether a resistor leads back from the output of an amplifier whose input is here or one capacitor away."""
+    if arm.to != "driven":
+        return False
+    inputs = {pin.ref for pin in here.pins if inverting(pin.name) is not None}
+    for other in here.capacitors:
+        if other.held is None:
+            inputs |= {pin.ref for pin in view.at(other.far).pins if inverting(pin.name) is not None}
+    return any(pin.ref in inputs and inverting(pin.name) is None for pin in view.at(arm.far).pins)
 
 
 def _source(view: View, here: Spot, arm: Arm) -> str:

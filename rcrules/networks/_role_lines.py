@@ -1,5 +1,6 @@
 """Roles at lines and currents: termination, sense shunt, pull-up of a bus, bias resistor with its capacitor."""
 
+from rcrules.design import Pin
 from rcrules.networks._fed import words_of
 from rcrules.networks._fed_words import BUS, CENTRE, CURRENT
 from rcrules.networks._role import Judged
@@ -63,17 +64,24 @@ def bias(_view: View, here: Spot) -> Judged | None:
     return Judged(role="other", sure=False, why=(f"resistor and capacitor side by side to {far}, no source seen",))
 
 
-def bus_pull_up(_view: View, here: Spot) -> Judged | None:
+def bus_pull_up(view: View, here: Spot) -> Judged | None:
     """A pull-up on a line that several open-drain pins share."""
     pulls = [arm for arm in here.resistors if arm.to == "supply"]
     if not pulls or any(arm.to != "ground" for arm in here.capacitors):
         return None
-    named = [pin for pin in here.pins if words_of(pin) & BUS]
+    named = on_bus(view, here)
     opens = [pin for pin in here.pins if pin.type == "open-collector"]
-    if len({pin.ref for pin in here.pins}) >= 2 and (named or len(opens) >= 2):
+    if named or (len(opens) >= 2 and len({pin.ref for pin in here.pins}) >= 2):
         keys = ", ".join(pin.key for pin in (named or opens)[:3])
         return Judged(role="bus-pull-up", why=(f"open-drain line of {keys}",))
     return None
+
+
+def on_bus(view: View, here: Spot) -> list[Pin]:
+    """Pins of a shared open-drain line at the joint and behind stoppers, where two parts share it."""
+    pins = view.pins_near(here)
+    named = [pin for pin in pins if words_of(pin) & BUS and view.kind(pin) in ("ic", "connector")]
+    return named if len({pin.ref for pin in pins}) >= 2 else []
 
 
 _CURRENT = "a current feeds it, not a voltage"

@@ -7,7 +7,7 @@ from heapq import heappop, heappush
 from typing import Final
 
 from rcrules.networks._role import Judged
-from rcrules.networks._spot import Arm, Spot, View
+from rcrules.networks._spot import SMALL, Arm, Spot, View, greatest, least
 
 FAR: Final = 64
 """Joints looked at on the way to a source; a way that is longer counts as one that arrives."""
@@ -44,7 +44,8 @@ def ways(view: View, here: Spot, judged: Judged) -> Ways:
         arm for arm in here.resistors if (chosen is None and _acts(view, here, arm)) or (chosen and arm.ref in chosen)
     ]
     for arm in own or here.resistors:
-        _take(view, found, here, arm)
+        stiff = judged.role == "high-pass" and _is_stiff(view, here, arm)
+        _take(view, found, here, arm, onward=not stiff)
     found.resistors.update((arm.ref, arm) for arm in judged.also)
     _take_capacitors(view, found, here, [arm for arm in here.capacitors if chosen is None or arm.ref in chosen])
     return found
@@ -155,6 +156,11 @@ def cr_leg(view: View, arm: Arm, but: str) -> tuple[Arm, ...]:
     return far.resistors if all(other.held is not None for other in far.resistors) else ()
 
 
+def _kind(view: View, joint: str) -> str:
+    held = view.draft.held_joint(joint)
+    return held.kind if held is not None else "free"
+
+
 def _acts(view: View, here: Spot, arm: Arm) -> bool:
     if arm.held is not None:
         return not (here.local and _is_load(here, arm))
@@ -173,10 +179,28 @@ def _is_heavy(view: View, here: Spot, arm: Arm) -> bool:
     return bool(feeding) and way(view, arm, here.joint) >= LIGHT * min(feeding)
 
 
-def _take(view: View, found: Ways, here: Spot, arm: Arm) -> None:
+def _is_stiff(view: View, here: Spot, arm: Arm) -> bool:
+    """Whether a capacitor to a fixed net much larger than the coupling one keeps the bias behind a resistor."""
+    if arm.held is not None:
+        return False
+    return least(leg for leg in view.at(arm.far).capacitors if leg.fixed) >= LIGHT * greatest(here.capacitors) and any(
+        leg.fixed for leg in view.at(arm.far).capacitors
+    )
+
+
+def _is_negligible(view: View, arm: Arm, below: Arm) -> bool:
+    """Whether a resistor to a held net is a shunt in a transistor's lead, far below the one that taps it."""
+    small = arm.value is not None and below.value is not None and arm.value <= SMALL * below.value
+    return small and arm.held is not None and view.has_kind(view.at(below.far), "transistor")
+
+
+def _take(view: View, found: Ways, here: Spot, arm: Arm, *, onward: bool) -> None:
     found.resistors.setdefault(arm.ref, arm)
     if arm.held is not None:
         found.sources.setdefault(arm.far, arm.to)
+        return
+    if any(_is_negligible(view, leg, arm) for leg in view.at(arm.far).resistors) or not onward:
+        found.sources.update((joint, _kind(view, joint)) for joint in strong_ends(view, arm.far, here.joint))
         return
     for leg in rc_leg(view, arm, here.joint):
         found.capacitors.setdefault(leg.ref, leg)

@@ -1,10 +1,14 @@
 """Roles of a resistor to a supply and a capacitor to the other rail: power-on delay and supply filter."""
 
 from rcrules.design import Pin
+from rcrules.networks._family import inverting
 from rcrules.networks._fed import family_of, feeding, kind_fed, kinds, words_of
 from rcrules.networks._fed_words import BUTTON
+from rcrules.networks._held_names import hint
 from rcrules.networks._role import Judged
-from rcrules.networks._role_parts import LIGHT, kinds_at, least_way
+from rcrules.networks._role_feedback import unit
+from rcrules.networks._role_lines import on_bus
+from rcrules.networks._role_parts import LIGHT, ends, kinds_at, least_way
 from rcrules.networks._role_switching import LINE
 from rcrules.networks._spot import Arm, Spot, View, least
 
@@ -45,6 +49,8 @@ def power_on_delay(view: View, here: Spot) -> Judged | None:
         return None
     fed = [kind for kind in kinds(view, feeding(view, here)) if kind in DELAYED]
     if not fed:
+        return _compared(view, here)
+    if on_bus(view, here):
         return None
     if _is_button_connector(view, here):
         return Judged(role="debounce", sure=False, why=("a connector that may carry a contact",))
@@ -56,12 +62,25 @@ def power_on_delay(view: View, here: Spot) -> Judged | None:
     return Judged(role="power-on-delay", sure=driver is None and fed != ["other"], why=_waits(fed, driver))
 
 
+def _compared(view: View, here: Spot) -> Judged | None:
+    """An input compared with a share of the same supply: nothing but time moves one against the other."""
+    rails = {arm.far for arm in here.resistors if arm.to == "supply"}
+    for pin in feeding(view, here):
+        others = [other for other in view.pins_of(pin.ref) if inverting(other.name) is (not inverting(pin.name))]
+        for other in others if inverting(pin.name) is not None else ():
+            joint = view.joint(other)
+            if unit(other) == unit(pin) and joint != here.joint and len(rails & set(ends(view, joint, here.joint))) > 0:
+                return Judged(role="power-on-delay", why=(f"{pin.key} is compared with a share of the same supply",))
+    return None
+
+
 def _is_divided(view: View, here: Spot, source: float) -> bool:
     """Whether a resistor to ground, also through others, or to a signal takes a share of the supply worth telling."""
     if here.local:
         return False
     downs = [arm for arm in here.resistors if kinds_at(view, arm, here.joint) == {"ground"}]
-    signals = [arm for arm in here.resistors if arm.to == "driven"]
+    told = bool(here.pins)
+    signals = [arm for arm in here.resistors if arm.held is not None and arm.to == "driven" and (told or arm.held.sure)]
     return least_way(view, downs, here.joint) < SHARE * source or least(signals) < LIGHT * source
 
 
@@ -82,6 +101,8 @@ def _filter_without_pin(view: View, here: Spot, sources: tuple[Arm, ...], pins: 
     onward = [arm for arm in here.resistors if arm not in sources and arm.to != "ground" and _leads_on(view, here, arm)]
     if not here.pins and not here.diodes and onward:
         return Judged(role="supply-filter", why=("filters what feeds further resistors",), only=sources + fixed)
+    if _is_called_supply(here, sources, kinds(view, pins)):
+        return Judged(role="supply-filter", sure=False, why=("its name is a supply's",), only=sources + fixed)
     if least(sources) > FILTER or len(fixed) != len(here.capacitors):
         return None
     unknown = all(kind_fed(view, pin) == "other" for pin in pins)
@@ -90,6 +111,13 @@ def _filter_without_pin(view: View, here: Spot, sources: tuple[Arm, ...], pins: 
             role="supply-filter", sure=bool(here.pins), why=("small enough to supply a part",), only=sources + fixed
         )
     return None
+
+
+def _is_called_supply(here: Spot, sources: tuple[Arm, ...], fed: tuple[str, ...]) -> bool:
+    """Whether a strong name of a supply is on a joint behind a small resistor, or one of unknown value."""
+    named = hint(here.joint)
+    small = all(arm.value is None or arm.value <= FILTER for arm in sources)
+    return small and named is not None and named.kind == "supply" and named.strong and set(fed) <= {"other", "logic"}
 
 
 def _leads_on(view: View, here: Spot, arm: Arm) -> bool:

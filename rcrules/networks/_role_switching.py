@@ -22,7 +22,7 @@ def debounce(view: View, here: Spot) -> Judged | None:
     reached = contacts + [contact for arm in behind for contact in _contacts_behind(view, arm.far, here.joint)]
     if not contacts:
         reached += [contact for joint in _across_diodes(view, here) for contact in view.at(joint).contacts]
-    if not reached or not here.capacitors:
+    if not reached or not here.capacitors or _across_contact(view, here) or _differentiates(view, here):
         return None
     pulled = any(arm.fixed for at in (here, *(view.at(arm.far) for arm in behind)) for arm in at.resistors)
     names = ", ".join(sorted({contact.ref for contact in reached}))
@@ -38,7 +38,32 @@ def snubber(view: View, here: Spot) -> Judged | None:
     ends = {arm.far for arm in here.resistors}, {arm.far for arm in here.capacitors}
     if any(len(end) != 1 for end in ends) or ends[0] == ends[1]:
         return None
+    contact = _across_contact(view, here)
+    if contact is not None:
+        return Judged(role="snubber", why=(f"in series across contact {contact}",), alone=True)
     return _series(view, here.resistors[0], here.capacitors[0], greatest(here.resistors))
+
+
+def _differentiates(view: View, here: Spot) -> bool:
+    """Whether all capacitors come from outputs of other parts: they pass edges on, contact or not."""
+    own = {pin.ref for pin in view.pins_near(here)}
+    return all(
+        arm.held is not None
+        and arm.held.kind == "driven"
+        and arm.held.sure
+        and own.isdisjoint(pin.ref for pin in view.at(arm.far).pins)
+        for arm in here.capacitors
+    )
+
+
+def _across_contact(view: View, here: Spot) -> str | None:
+    """The contact across a series R-C whose joint holds nothing else."""
+    ends = {arm.far for arm in here.resistors}, {arm.far for arm in here.capacitors}
+    if not here.bare or len(ends[0]) != 1 or len(ends[1]) != 1:
+        return None
+    both = ends[0] | ends[1]
+    across = (contact for contact in view.at(min(ends[0])).contacts if {contact.a, contact.b} == both)
+    return next((contact.ref for contact in across), None)
 
 
 def _series(view: View, resistor: Arm, capacitor: Arm, ohms: float) -> Judged | None:

@@ -10,11 +10,11 @@ from rcrules.networks._fed import feeding, kind_fed, kinds
 from rcrules.networks._model import Node
 from rcrules.networks._role import SURE, UNSURE, Judged
 from rcrules.networks._role_active import bootstrap, gate_drive, oscillator, timing
-from rcrules.networks._role_feedback import feedback
+from rcrules.networks._role_feedback import feedback, outputs
 from rcrules.networks._role_filters import divider, high_pass, low_pass
 from rcrules.networks._role_lines import bias, bus_pull_up, sense_shunt, termination
 from rcrules.networks._role_pairs import bridged
-from rcrules.networks._role_parts import Ways, ways
+from rcrules.networks._role_parts import FAR, Ways, ways
 from rcrules.networks._role_resets import power_on_delay, supply_filter
 from rcrules.networks._role_switching import debounce, snubber
 from rcrules.networks._role_words import arms_text, fed_text
@@ -87,7 +87,7 @@ def _node(view: View, here: Spot) -> Node:
     judged = next((found for judge in ORDER if (found := judge(view, here)) is not None), _OTHER)
     met = ways(view, here, judged)
     pins = feeding(view, here)
-    fed_from = _fed_from(here, met, judged)
+    fed_from = _fed_from(view, here, met, judged)
     doubts = _doubts(view, fed_from)
     node = Node(
         net=here.joint,
@@ -115,10 +115,7 @@ def _helped(view: View, met: Ways, judged: Judged) -> str | None:
     """A capacitor on the way that returns to a driven net: an amplifier, not a fixed level, moves its far end."""
     if judged.role not in ("low-pass", "divider-low-pass"):
         return None
-    driven = next(
-        (ref for ref, arm in met.capacitors.items() if arm.to == "driven" and view.has_kind(view.at(arm.far), "ic")),
-        None,
-    )
+    driven = next((ref for ref, arm in met.capacitors.items() if any(True for _ in outputs(view, arm))), None)
     return f"an amplifier drives {driven}" if driven else None
 
 
@@ -127,12 +124,25 @@ def _kinds_fed(view: View, here: Spot) -> tuple[str, ...]:
     return tuple(sorted({*kinds(view, feeding(view, here)), *connectors}))
 
 
-def _fed_from(here: Spot, met: Ways, judged: Judged) -> tuple[str, ...]:
+def _coupled_from(view: View, here: Spot) -> tuple[str, ...]:
+    """Driven joints that capacitors alone reach, the nearest first."""
+    seen, todo = {here.joint: None}, [here]
+    while todo and len(seen) < FAR:
+        arms = todo.pop(0).capacitors
+        driven = tuple(arm.far for arm in arms if arm.to == "driven")
+        if driven:
+            return driven
+        onward = [arm.far for arm in arms if arm.held is None and arm.far not in seen]
+        seen.update(dict.fromkeys(onward))
+        todo += [view.at(joint) for joint in onward]
+    return ()
+
+
+def _fed_from(view: View, here: Spot, met: Ways, judged: Judged) -> tuple[str, ...]:
     """Held joints behind the resistors; a ground only at a divider or where there is nothing else."""
     sources = [joint for joint, kind in met.sources.items() if kind != "ground"]
     if judged.role == "high-pass":
-        driving = [arm.far for arm in here.capacitors if arm.to == "driven"]
-        return tuple(driving) or tuple(sources)
+        return _coupled_from(view, here) or tuple(sources)
     if judged.role in ("divider-low-pass", "feedback") or not sources:
         return tuple(met.sources)
     return tuple(sources)
