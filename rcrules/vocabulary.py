@@ -1,5 +1,7 @@
 """The closed word lists of the trade that rules, project file and recognition share."""
 
+import re
+from collections.abc import Mapping
 from typing import Final
 
 ROLES: Final = (
@@ -70,5 +72,33 @@ PIN_TYPES: Final = (
 """Pin types as the readers normalise them; '' = the export names none."""
 PIN_KINDS: Final = ("input", "output", "open-drain", "supply", "passive")
 """What a project file may call a pin."""
+DIELECTRICS: Final = (
+    "aluminium",
+    "tantalum",
+    "niobium",
+    "polymer",
+    "film",
+    "PET film",
+    "PP film",
+    "PEN film",
+    "PPS film",
+    "PS film",
+    "mica",
+    "ceramic",
+)
+"""Technologies of capacitors that have no letter code."""
+DIELECTRIC_CODE: Final = re.compile(
+    r"[XYZ][2456789][A-FLPRSTUV]|[CBLAMPRSTVU][0-3678][GHJKLMN]|2[BCDEFRX][12346]|NP[0O]|C[0O]G|CG[0O]|C[GHJ]|UJ|SL"
+)
+"""Letter codes of ceramics: EIA-198 (classes 2 and 1), IEC 60384, and their common spellings, in capitals."""
+NUMBER_CODES: Final[Mapping[str, tuple[str, ...]]] = {
+    "value": ("digits", "letters", "three characters", "text"),
+    "tolerance": ("letter", "text"),
+    "rated-voltage": ("digit and letter", "text"),
+    "rated-power": ("text",),
+    "tcr": ("text",),
+    "dielectric": ("letters",),
+}
+"""Fact in a part number -> the codes of open standards in which it may be written, the usual one first."""
 FED_KINDS: Final = ("reset", "adc", "amplifier", "logic", "supply", "regulator", "timer", "connector", "other")
 """What a fed pin is, as a rule's ``kind-fed`` names it."""

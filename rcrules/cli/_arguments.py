@@ -181,8 +181,8 @@ def _output_options(command: argparse.ArgumentParser) -> None:
         action="append",
         default=[],
         metavar="FORMAT[=PATH]",
-        help="text (default), html, json, junit, markdown or sarif, on standard output or to a file (repeatable); "
-        "{board} in PATH: the board's name",
+        help="text (default), html, json, junit, markdown, parts or sarif, on standard output or to a file "
+        "(repeatable); {board} in PATH: the board's name",
     )
     command.add_argument("--verbose", action="store_true", help="also list assumptions, evidence and what holds")
     command.add_argument("--quiet", action="store_true", help="no report but those asked for by --report")

@@ -141,7 +141,7 @@ def _rating(part: RatedPart, measure: Measure) -> Form | None:
         return None
     rating = part.rated_voltage if measure.rating == "voltage" else part.rated_power
     if not isinstance(rating, Known):
-        ask = f'[part."{part.ref}"] rated-{measure.rating} = "…"'
+        ask = rating.ask or f'[part."{part.ref}"] rated-{measure.rating} = "…"'
         raise Unmeasurable(f"rated {measure.rating} of {part.ref}: {rating.why}", ask)
     return constant(rating.si)
 

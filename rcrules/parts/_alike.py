@@ -9,6 +9,7 @@ from rcrules.design import Part
 from rcrules.errors import Place
 from rcrules.parts._kinds import prefix
 from rcrules.parts._model import Known, RatedPart, Unknown
+from rcrules.parts._part_numbers import BY_PATTERN
 
 _MOST: Final = 12
 """References in one table name; beyond it the line gives the default of the kind."""
@@ -48,6 +49,21 @@ def _head(refs: list[str]) -> str:
     return f'[part."{", ".join(refs)}"]'
 
 
+def asked_at_once(rated: Mapping[str, RatedPart]) -> Mapping[str, RatedPart]:
+    """The parts; where many of a kind lack a rating, one line for all of that kind is asked for it."""
+    parts = [part for part in rated.values() if part.fitted and isinstance(part.value, Known)]
+    volts = [part for part in parts if part.kind == "capacitor" and isinstance(part.rated_voltage, Unknown)]
+    watts = [part for part in parts if part.kind == "resistor" and isinstance(part.rated_power, Unknown)]
+    asked = dict(rated)
+    if len(volts) > _MOST:
+        unknown = Unknown(why="not given", ask='[defaults.capacitor] rated-voltage = "…"')
+        asked.update((part.ref, replace(part, rated_voltage=unknown)) for part in volts)
+    if len(watts) > _MOST:
+        unknown = Unknown(why="not given", ask='[defaults.resistor] rated-power = "…"')
+        asked.update((part.ref, replace(part, rated_power=unknown)) for part in watts)
+    return asked
+
+
 def moved(model: RatedPart, part: Part) -> RatedPart:
     """The rating of a part written like ``model``, with its own reference and places."""
     facts = [*part.values, *chain(*part.fields.values())]
@@ -58,11 +74,16 @@ def moved(model: RatedPart, part: Part) -> RatedPart:
         value=_known_at(model.value, places),
         rated_voltage=_known_at(model.rated_voltage, places),
         rated_power=_known_at(model.rated_power, places),
-        origins={name: (origin, places.get(origin, at)) for name, (origin, at) in (model.origins or {}).items()},
+        origins={name: (origin, _at(places, origin, at)) for name, (origin, at) in (model.origins or {}).items()},
     )
+
+
+def _at(places: Mapping[str, Place], origin: str, place: Place | None) -> Place | None:
+    """The part's own place of an origin; what a pattern reads stands where its part number stands."""
+    return places.get(origin.partition(BY_PATTERN)[0], place)
 
 
 def _known_at(fact: Known | Unknown, places: Mapping[str, Place]) -> Known | Unknown:
     if isinstance(fact, Unknown):
         return fact
-    return Known(si=fact.si, origin=fact.origin, place=places.get(fact.origin, fact.place))
+    return Known(si=fact.si, origin=fact.origin, place=_at(places, fact.origin, fact.place))

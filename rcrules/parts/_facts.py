@@ -7,6 +7,7 @@ from typing import Final, Generic, TypeVar
 from rcrules.design import Fact, Part
 from rcrules.errors import Place
 from rcrules.parts._fields import holds, read_field
+from rcrules.parts._part_numbers import BY_PATTERN, Numbers, numbers
 from rcrules.parts._texts import TIGHT, ValueKind, ValueText, read_value
 from rcrules.project import PartFacts, Project, ranked
 from rcrules.quantities import show
@@ -45,11 +46,13 @@ class Facts:
     values: tuple[Source, ...]
     """Value texts, of the BOM first."""
     valued: tuple[Source, ...]
-    """The texts that may give the value: value texts and descriptions."""
+    """The texts that may give the value: value texts, part numbers and descriptions."""
     sources: tuple[Source, ...]
     """All texts in order of precedence."""
     defaults: tuple[tuple[str, PartFacts], ...]
     """``project [defaults.capacitor]``."""
+    stops: tuple[str, ...] = ()
+    """Part numbers that nearly fit a pattern, in words."""
 
     @property
     def tables(self) -> tuple[tuple[str, PartFacts], ...]:
@@ -68,15 +71,21 @@ def gather(part: Part, kind: ValueKind, tables: Sequence[tuple[str, PartFacts]],
     given = (*(source.read.tolerance for source in (*fields, *descriptions)), *(table.tolerance for _, table in tables))
     tight = any(tolerance is not None and tolerance[1] <= TIGHT for tolerance in given)
     values = tuple(_source(fact, read_value(fact.text, kind, tolerance_given=tight)) for fact in part.values)
+    read = numbers(part, kind, project.part_numbers) if project.part_numbers else Numbers()
+    numbered = tuple(
+        Source(read=facts, text=fact.text, origin=f"{fact.origin}{BY_PATTERN}'{name}'", place=fact.place)
+        for facts, fact, name in read.read
+    )
     believed = tuple(source for source in descriptions if not _stale(source, values))
     defaults = project.defaults.get(kind)
     return Facts(
         project=tuple(tables),
         fields=fields,
         values=values,
-        valued=(*values, *believed),
-        sources=(*fields, *values, *believed),
+        valued=(*values, *numbered, *believed),
+        sources=(*fields, *values, *numbered, *believed),
         defaults=((f"{_DEFAULT}{kind}]", defaults),) if defaults is not None else (),
+        stops=read.stops,
     )
 
 

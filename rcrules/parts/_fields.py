@@ -22,6 +22,12 @@ _FIELDS: Final = {
     "description": "description desc descripcion descripción beschreibung designation bezeichnung details componente",
 }
 """What a field holds -> its names without blanks and signs, lower case."""
+_NUMBERS: Final = re.compile(
+    r"mpn\d?|mypn|pn|part(?:number|num|no|nr)?|(?:mfg|mfr|manf|man|manufacturers?|producer|vendor)(?:pn|num|part(?:number|no)?)"
+    r"|mfgmfg|mfg|mfr|manf|order(?:ing)?(?:code|number)|n(?:ro|umerode|úmerode)(?:de)?parte"
+    r"|(?:code|r[eé]f[eé]rence)fabricant|(?:hersteller(?:teile)?|bestell|artikel|teile)nummer|артикул|партномер"
+)
+"""Names of fields that hold part numbers, without blanks and signs, lower case."""
 _BARE: Final = re.compile(r"[<>=]*\s*(\d{1,6}(?:[.,]\d{1,4})?)")
 
 
@@ -30,6 +36,12 @@ def holds(name: str) -> frozenset[str]:
     """What a field of this name holds: ``tolerance``, ``voltage`` …; empty for a field without ratings."""
     plain = re.sub(r"[\W_]+", "", name.lower())
     return frozenset(what for what, names in _FIELDS.items() if plain in names.split())
+
+
+@lru_cache(maxsize=4096)
+def holds_number(name: str) -> bool:
+    """Whether a field of this name holds a part number: ``MPN``, ``manf#``, ``Nro. parte``."""
+    return _NUMBERS.fullmatch(re.sub(r"[\W_]+", "", name.lower())) is not None
 
 
 @lru_cache(maxsize=65536)

@@ -22,6 +22,8 @@ class Unknown:
     """No number, and why."""
 
     why: str
+    ask: str = ""
+    """The project line that would give it: ``[defaults.capacitor] rated-voltage = "…"``; '' = that of the part."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

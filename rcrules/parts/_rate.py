@@ -9,7 +9,7 @@ from typing import Final
 
 from rcrules.design import Design, Part
 from rcrules.parts._absorption import absorption
-from rcrules.parts._alike import asks, moved, written
+from rcrules.parts._alike import asked_at_once, asks, moved, written
 from rcrules.parts._dielectrics import ELECTROLYTIC, code_of
 from rcrules.parts._facts import Facts, Said, disagreements, gather, tables_for, tables_say, texts_say
 from rcrules.parts._insulation import insulation
@@ -69,7 +69,7 @@ def rate(design: Design, project: Project) -> Mapping[str, RatedPart]:
         if model is None:
             known[alike] = model = _rated(part, tables, project, around, asked[writing])
         rated[part.ref] = model if model.part is part else moved(model, part)
-    return rated
+    return asked_at_once(rated)
 
 
 def _rated(part: Part, tables: Tables, project: Project, around: Conditions, ask: str) -> RatedPart:
@@ -118,7 +118,7 @@ def _valued(part: Part, told: _Told, reads: ValueKind, facts: Facts, around: Con
         fitted=told.fitted,
         fitted_why=told.fitted_why,
         origins={name: (said[0].origin, said[0].place) for name, said in named.items() if said},
-        disagreements=_lost(named, "Ω" if reads == "resistor" else "F"),
+        disagreements=(*_lost(named, "Ω" if reads == "resistor" else "F"), *facts.stops),
     )
 
 

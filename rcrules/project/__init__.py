@@ -3,13 +3,24 @@
 from rcrules.project._facts import NUMBERS, line_for
 from rcrules.project._load import FILE_NAME, find, load, read
 from rcrules.project._match import is_ground, match, net_facts, part_facts, pin_facts, ranked, supply_for, unmatched
-from rcrules.project._model import NetFacts, Notice, PartFacts, PinFacts, Project, SupplyFacts
+from rcrules.project._model import (
+    NetFacts,
+    Notice,
+    NumberField,
+    NumberPattern,
+    PartFacts,
+    PinFacts,
+    Project,
+    SupplyFacts,
+)
 
 __all__ = [
     "FILE_NAME",
     "NUMBERS",
     "NetFacts",
     "Notice",
+    "NumberField",
+    "NumberPattern",
     "PartFacts",
     "PinFacts",
     "Project",

@@ -8,12 +8,14 @@ from typing import Any, Final, Literal
 from rcrules.levels import Level, parse_level
 from rcrules.project._model import NetFacts, PartFacts, PinFacts, SupplyFacts
 from rcrules.quantities import QuantityError, Spread, parse_quantity
-from rcrules.tomlfile import Table
-from rcrules.vocabulary import HELD_KINDS, PART_KINDS, PIN_KINDS, ROLES
+from rcrules.tomlfile import Table, cut, guess, listed
+from rcrules.vocabulary import DIELECTRIC_CODE, DIELECTRICS, HELD_KINDS, PART_KINDS, PIN_KINDS, ROLES
 
 Reader = Callable[[Table, str], Any]
 
 MAX_TEXT: Final = 200
+_USUAL: Final = ("X7R", "X5R", "X6S", "X7S", "X7T", "X8R", "Y5V", "Z5U", "C0G", "NP0")
+"""Letter codes that a slip is likely to mean."""
 _LIKE_QUANTITY: Final = re.compile(r"\s*[+−-]?[0-9.]+\s*[A-Za-zµμΩ°%/]{0,6}\s*")
 
 
@@ -125,6 +127,16 @@ def relative(text: str) -> tuple[float, float]:
     return low, high
 
 
+def dielectric(table: Table, key: str) -> str | None:
+    """A letter code or a technology; an unknown word is a mistake, with a guess."""
+    word = table.text(key)
+    if word is None or word in DIELECTRICS or DIELECTRIC_CODE.fullmatch(word.upper()):
+        return word
+    problem = f"'{key}': no dielectric '{cut(word)}'{guess(word, (*DIELECTRICS, *_USUAL))}"
+    table.wrong(key, problem, expected=f"a letter code such as X7R, C0G or 2C1, or {listed(DIELECTRICS)}")
+    return None
+
+
 def _bias_curve(table: Table, key: str) -> tuple[tuple[float, float], ...]:
     """``[["0 V", "100 %"], ["5 V", "62 %"]]``, voltages rising."""
     rows, expected = table.data[key], 'a list of pairs such as ["5 V", "62 %"]'
@@ -185,7 +197,7 @@ DEFAULTS: Final[Mapping[str, Reader]] = {
     "tolerance": _tolerance,
     "rated-voltage": _Amount("V", 0),
     "rated-power": _Amount("W", 0),
-    "dielectric": _text,
+    "dielectric": dielectric,
     "tcr": _Amount("1/K"),
     "bias-curve": _bias_curve,
     "distribution": _word("uniform", "normal"),

@@ -10,6 +10,7 @@ from rcrules.errors import Mistake, Place, Problems
 from rcrules.project._contradictions import check_pin, check_supply
 from rcrules.project._facts import DEFAULTS, free_words, net_facts, part_facts, pin_facts, supply_facts
 from rcrules.project._model import Notice, Project, SupplyFacts
+from rcrules.project._part_numbers import patterns
 from rcrules.quantities import Spread
 from rcrules.tomlfile import Table, cut, root
 from rcrules.tomlfile import load as load_toml
@@ -23,8 +24,9 @@ MAX_GLOB: Final = 200
 """Characters of a name or glob."""
 _TABLES: Final = (
     "board", "conditions", "supply", "ground", "net", "pin", "part", "defaults", "columns", "settings",
+    "part-number", "codes",
 )  # fmt: skip
-_BOARD: Final = ("name", "netlist", "bom", "rules", "waivers")
+_BOARD: Final = ("name", "netlist", "bom", "rules", "waivers", "part-numbers")
 
 
 def find(start_folder: Path) -> Path | None:
@@ -41,8 +43,8 @@ def read(path: Path, name: str | None = None, problems: Problems | None = None) 
     """
     top = root(read_toml(path, name or str(path)), Problems())
     if problems is None:
-        return _load(top)
-    project = _project(top)
+        return _load(top, path.parent)
+    project = _project(top, path.parent)
     with problems.collecting():
         top.stop_if_wrong()
     return project
@@ -50,17 +52,18 @@ def read(path: Path, name: str | None = None, problems: Problems | None = None) 
 
 def load(file: str, text: str | None = None) -> Project:
     """The project file called ``file``, with this text or read from there. Raises UserMistake with all mistakes."""
-    return read(Path(file), file) if text is None else _load(root(load_toml(file, text), Problems()))
+    path = Path(file)
+    return read(path, file) if text is None else _load(root(load_toml(file, text), Problems()), path.parent)
 
 
-def _load(top: Table) -> Project:
-    project = _project(top)
+def _load(top: Table, folder: Path) -> Project:
+    project = _project(top, folder)
     top.stop_if_wrong()
     return project
 
 
-def _project(top: Table) -> Project:
-    """What is right in the file; the mistakes are noted."""
+def _project(top: Table, folder: Path) -> Project:
+    """What is right in the file and in those beside it that it names; the mistakes are noted."""
     top.only(_TABLES)
     board, conditions = top.table("board"), top.table("conditions")
     project = Project(
@@ -74,6 +77,7 @@ def _project(top: Table) -> Project:
         parts=_facts(top, "part", part_facts),
         defaults=_defaults(top),
         columns=_columns(top),
+        part_numbers=patterns(top, board, folder),
         places=_places(top),
         **_settings(top),
     )
@@ -84,6 +88,7 @@ def _project(top: Table) -> Project:
 def _board(board: Table) -> dict[str, Any]:
     board.only(_BOARD)
     waivers = _paths(board, "waivers")
+    _paths(board, "part-numbers")
     return {
         "name": board.text("name"),
         "netlists": _paths(board, "netlist"),
@@ -113,7 +118,7 @@ def _outside(board: Table) -> tuple[Notice, ...]:
     """Paths that leave the folder of the file: allowed, but said."""
     return tuple(
         Notice(place=board.place_of(key), text=f"{key} lies outside the project file's folder: {cut(path)}")
-        for key in ("netlist", "bom", "rules", "waivers")
+        for key in ("netlist", "bom", "rules", "waivers", "part-numbers")
         for path in board.texts(key)
         if posixpath.normpath(path).split("/")[0] == ".."
     )

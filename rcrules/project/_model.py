@@ -107,6 +107,37 @@ class PartFacts:
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
+class NumberField:
+    """One field of a part-number pattern."""
+
+    what: str
+    """``text`` that must stand there, ``skip``, or the fact it holds: ``value``, ``rated-voltage`` …"""
+    text: str = ""
+    """The text that must stand there."""
+    width: int | None = None
+    """Characters; None = up to ``until``."""
+    until: str = ""
+    """Separator that ends the field and is passed over; '' = the rest."""
+    code: str = ""
+    """The standard code it is written in, one of vocabulary.NUMBER_CODES."""
+    codes: Mapping[str, object] | None = None
+    """What each code means: SI number, relative (low, high), dielectric or size; None = the standard code holds."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class NumberPattern:
+    """[[part-number]]"""
+
+    name: str
+    kind: str
+    """``resistor`` or ``capacitor``."""
+    columns: tuple[str, ...]
+    """Fields to read, lower case; () = those that hold part numbers, and the value."""
+    fields: tuple[NumberField, ...]
+    place: Place
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
 class Notice:
     """Something about the project file that does not stop the run."""
 
@@ -140,6 +171,8 @@ class Project:
     parts: Mapping[str, PartFacts] = field(default_factory=dict)
     defaults: Mapping[str, PartFacts] = field(default_factory=dict)
     columns: Mapping[str, str] = field(default_factory=dict)
+    part_numbers: tuple[NumberPattern, ...] = ()
+    """Of the file, then of the files that ``[board] part-numbers`` names; the first that fits a text is taken."""
     settings: Mapping[str, Mapping[str, str | float]] = field(default_factory=dict)
     """Rule id -> given numbers and words, SI."""
     setting_units: Mapping[str, Mapping[str, str]] = field(default_factory=dict)

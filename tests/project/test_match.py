@@ -15,10 +15,10 @@ def test_an_exact_name_comes_before_a_glob_and_keys_add_up():
 
 def test_a_glob_with_more_letters_comes_before_one_with_fewer():
     found = project.load(
-        "p", '[part."C1?"]\ndielectric = "a"\n[part."C*"]\ndielectric = "b"\n[part."C12"]\nfitted = true'
+        "p", '[part."C1?"]\ndielectric = "X7R"\n[part."C*"]\ndielectric = "X5R"\n[part."C12"]\nfitted = true'
     )
-    assert project.part_facts(found, "C12").dielectric == "a"
-    assert project.part_facts(found, "C2").dielectric == "b"
+    assert project.part_facts(found, "C12").dielectric == "X7R"
+    assert project.part_facts(found, "C2").dielectric == "X5R"
 
 
 def test_of_equal_globs_the_later_wins():

@@ -146,6 +146,7 @@ READ: Final[dict[str, Callable[[str], Any]]] = {
     "json": of_json,
     "junit": of_xml,
     "markdown": of_markdown,
+    "parts": of_text,
     "sarif": of_sarif,
     "text": of_text,
 }

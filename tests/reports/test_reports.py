@@ -31,4 +31,4 @@ def test_the_document_is_enough(name: str, verbose: bool) -> None:
 
 
 def test_every_report_is_known_by_name() -> None:
-    assert set(reports()) == {"html", "json", "junit", "markdown", "sarif", "text"}
+    assert set(reports()) == {"html", "json", "junit", "markdown", "parts", "sarif", "text"}
