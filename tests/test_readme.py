@@ -30,7 +30,7 @@ def reader_folder(tmp_path: Path, monkeypatch: pytest.MonkeyPatch) -> Path:
     """What a reader has who follows the README: a board, a BOM, and the two files that it shows."""
     (tmp_path / "board.xml").write_bytes((DEMO / "tide-gauge.xml").read_bytes())
     (tmp_path / "bom.csv").write_bytes((DEMO / "tide-gauge-bom.csv").read_bytes())
-    project, rules = blocks("toml")
+    project, _, rules = blocks("toml")
     (tmp_path / "rcrules.toml").write_text(project, encoding="utf-8")
     (tmp_path / "our-rules.toml").write_text(rules, encoding="utf-8")
     monkeypatch.chdir(tmp_path)
@@ -75,6 +75,17 @@ def test_each_command_runs(command: str, reader_folder: Path, capfd: pytest.Capt
     out, err = capfd.readouterr()
     assert status in (0, 1), err
     assert out or any(reader_folder.glob("*.json")) or "wrote rcrules.toml" in err
+
+
+@pytest.mark.usefixtures("reader_folder")
+def test_the_part_number_shown_is_read_by_the_pattern_shown(tmp_path: Path, capsys: pytest.CaptureFixture[str]) -> None:
+    (tmp_path / "patterns.toml").write_text(blocks("toml")[1], encoding="utf-8")
+    (tmp_path / "parts.csv").write_text("Reference,MPN\nC1,QXC0603B104K5AT\n", encoding="utf-8")
+    assert main(["networks", "--project", "patterns.toml", "parts.csv", "--report", "parts"]) == 0
+    out = capsys.readouterr().out
+    assert re.search(
+        r"C1 .* 100 nF +±10 % +50 V +X7R +value, tolerance, rated voltage, dielectric: BOM field 'MPN'", out
+    )
 
 
 @pytest.mark.usefixtures("reader_folder")
