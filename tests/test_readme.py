@@ -80,11 +80,11 @@ def test_each_command_runs(command: str, reader_folder: Path, capfd: pytest.Capt
 @pytest.mark.usefixtures("reader_folder")
 def test_the_part_number_shown_is_read_by_the_pattern_shown(tmp_path: Path, capsys: pytest.CaptureFixture[str]) -> None:
     (tmp_path / "patterns.toml").write_text(blocks("toml")[1], encoding="utf-8")
-    (tmp_path / "parts.csv").write_text("Reference,MPN\nC1,QXC0603B104K5AT\n", encoding="utf-8")
+    (tmp_path / "parts.csv").write_text("Reference,Value,MPN\nC1,100n,QXC0603B104K5AT\n", encoding="utf-8")
     assert main(["networks", "--project", "patterns.toml", "parts.csv", "--report", "parts"]) == 0
     out = capsys.readouterr().out
     assert re.search(
-        r"C1 .* 100 nF +±10 % +50 V +X7R +value, tolerance, rated voltage, dielectric: BOM field 'MPN'", out
+        r"C1 .* 100 nF +±10 % +50 V +X7R +value: BOM value; tolerance, rated voltage, dielectric: BOM field 'MPN'", out
     )
 
 
