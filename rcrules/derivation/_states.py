@@ -9,6 +9,7 @@ from rcrules.derivation._respond import pole, seen
 from rcrules.derivation._sheet import Number
 from rcrules.derivation._working import Working
 from rcrules.problems import evaluate, steady_states
+from rcrules.quantities import show
 
 
 def time_constant(work: Working) -> Number | None:
@@ -48,12 +49,16 @@ def ratio(work: Working) -> Number | None:
 def charge(work: Working) -> Number | None:
     """Q = C v."""
     volts = _most(work)
+    if work.problem.structure.curves:
+        return volts and _along(work, "Q", "C", "∫ C dv")
     return volts and work.sheet.work("Q", "C", "{} · {}", lambda c, v: c * v, _farads(work), volts)
 
 
 def energy(work: Working) -> Number | None:
     """W = C v² / 2."""
     volts = _most(work)
+    if work.problem.structure.curves:
+        return volts and _along(work, "W", "J", "∫ v C dv")
     return volts and work.sheet.work("W", "J", "{} · {}^2 / 2", lambda c, v: c * v * v / 2, _farads(work), volts)
 
 
@@ -75,6 +80,15 @@ def _element(work: Working, names: tuple[str, ...]) -> str:
 def _farads(work: Working) -> Number:
     farads = float(work.solved.farads[0, _index(work)])
     return work.sheet.number(_element(work, work.names.capacitors), farads, "F")
+
+
+def _along(work: Working, symbol: str, unit: str, integral: str) -> Number:
+    """An integral along the bias curve, whose points are told."""
+    farads = _farads(work)
+    _, curve = work.problem.structure.curves[0]
+    points = ", ".join(f"{show(share, '%')} at {show(volts, 'V')}" for volts, share in curve)
+    value = float(work.measure.compute(work.problem.structure, work.cases)[0])
+    return work.sheet.given(symbol, value, unit, f"{integral} from 0 V, C = {farads.text} times {points}")
 
 
 def _size(work: Working, volts: Number) -> Number:
@@ -118,7 +132,20 @@ def _end(work: Working, terminal: int | None, held: dict[int, Number], *, earlie
     mesh = work.mesh(earlier=earlier)
     links = mesh.reduce(terminal)
     ohms = parallel(work.sheet, f"R at {work.name(terminal)}", [link.ohms for link in links])
-    return source(work.sheet, f"v({work.name(terminal)})", ohms, links, terminal, held, mesh.draws.get(terminal, []))
+    name = f"v({work.name(terminal)})"
+    found = source(work.sheet, name, ohms, links, terminal, held, mesh.draws.get(terminal, []))
+    return _within(work, name, found, held) if work.problem.structure.amps else found
+
+
+def _within(work: Working, name: str, found: Number, held: dict[int, Number]) -> Number:
+    """What pins leak goes no further than the outermost sources."""
+    if not held:
+        return found
+    ordered = sorted(held.values(), key=lambda number: number.value)
+    for rail, beyond in ((ordered[0], found.value < ordered[0].value), (ordered[-1], found.value > ordered[-1].value)):
+        if beyond:
+            return work.sheet.given(name, rail.value, "V", f"leakage goes no further than {rail.text}")
+    return found
 
 
 def _told(held: dict[int, Number]) -> str:

@@ -91,8 +91,12 @@ def first(work: Working) -> Number | None:
 
 
 def last(work: Working) -> Number | None:
-    """v in the end."""
-    return respond(work, math.inf)[-1].rest
+    """v in the end; where a pin leaks towards a rail, no further than that."""
+    rest, final = respond(work, math.inf)[-1].rest, float(work.solved.final[0])
+    if not work.problem.structure.diodes or abs(rest.value - final) <= 1e-6 * abs(final):
+        return rest
+    rails = [volts for volts in work.volts(len(work.starts) - 1).values() if abs(volts.value - final) <= 1e-6]
+    return work.sheet.given("v(end)", final, "V", f"leakage goes no further than {rails[0].text}") if rails else None
 
 
 def _step(work: Working) -> Number | None:

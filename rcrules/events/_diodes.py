@@ -5,6 +5,7 @@ from dataclasses import replace
 from rcrules.events._bench import Bench
 from rcrules.events._build import terminal_of
 from rcrules.events._circuit import ZERO, Circuit
+from rcrules.events._clamps import clamp
 from rcrules.events._sources import Sources
 from rcrules.events._transients import Scene, Transient, transient
 from rcrules.events._unmeasurable import Unmeasurable
@@ -50,6 +51,12 @@ def with_diodes(scene: Scene, event: str) -> Transient:
         add(scene.bench, scene.circuit, scene.sources, added)
         found = transient(scene, event)
     return found
+
+
+def with_clamps(scene: Scene, event: str, found: Transient, *, slight: bool) -> Transient:
+    """The event, with what pins leak held within their rails."""
+    added = clamp(scene.bench, scene.circuit, scene.sources, slight=slight)
+    return transient(scene, event) if added else found
 
 
 def _alone(scene: Scene, event: str) -> Transient | None:

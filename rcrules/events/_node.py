@@ -7,7 +7,7 @@ from dataclasses import dataclass, replace
 from rcrules.events._bench import Bench
 from rcrules.events._build import build, terminal_of
 from rcrules.events._circuit import Circuit
-from rcrules.events._diodes import widened, with_diodes
+from rcrules.events._diodes import widened, with_clamps, with_diodes
 from rcrules.events._levels import Leveller
 from rcrules.events._opened import opened
 from rcrules.events._options import OptionValue, levels_of, plain_of
@@ -40,7 +40,8 @@ def pose_node(bench: Bench, node: Node, measure: Measure, options: Mapping[str, 
     circuit, levels = scene.circuit, levels_of(measure, options)
     leveller = Leveller(bench=bench, circuit=circuit, table=table, node=node)
     _hold_followed(bench, circuit, leveller, levels)
-    found = with_diodes(scene, _event(measure, options))
+    event = _event(measure, options)
+    found = with_clamps(scene, event, with_diodes(scene, event), slight=measure.unit == "s")
     structure = replace(
         structure_of(circuit, found), at=circuit.terminal(node.joint), options=plain_of(measure, options)
     )

@@ -8,7 +8,7 @@ from rcrules.events._bench import Bench
 from rcrules.events._build import build, terminal_of
 from rcrules.events._circuit import ZERO, Circuit
 from rcrules.events._contacts import arm
-from rcrules.events._diodes import add_all, widened, with_diodes
+from rcrules.events._diodes import add_all, widened, with_clamps, with_diodes
 from rcrules.events._opened import opened
 from rcrules.events._options import OptionValue, plain_of
 from rcrules.events._series import alone_between, between
@@ -109,7 +109,8 @@ def pose_part_event(bench: Bench, part: RatedPart, measure: Measure, options: Ma
     circuit, sources, ends = _circuit(bench, place, table)
     watched = next((end for end in ends if end in circuit.free), ends[0])
     scene = Scene(bench=bench, network=place.network, circuit=circuit, sources=sources, joint=watched, unit=False)
-    event = with_diodes(scene, str(options["event"]))
+    named = str(options["event"])
+    event = with_clamps(scene, named, with_diodes(scene, named), slight=False)
     structure = replace(
         structure_of(circuit, event),
         at=circuit.terminal(ends[0]),

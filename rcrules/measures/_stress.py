@@ -90,17 +90,6 @@ def _switching(
             yield begun.min(axis=1) + np.minimum(least, most), begun.max(axis=1) + np.maximum(least, most)
 
 
-def clamped(structure: Structure, cases: Array) -> Array:
-    """Steady voltage of the observed terminal [V] (case, state), within the outermost sources of each state.
-
-    What a pin leaks comes from a rail, so that it cannot push the terminal beyond.
-    """
-    states = steady_states(structure, cases)
-    held = states[:, :, structure.shape.free :]
-    found: Array = np.clip(states[:, :, structure.at], held.min(axis=2), held.max(axis=2))
-    return found
-
-
 def most(structure: Structure, cases: Array) -> Array:
     """Greatest magnitude of the voltage across the part [V] (case,)."""
     low, high = across(structure, cases)
@@ -109,7 +98,8 @@ def most(structure: Structure, cases: Array) -> Array:
 
 def of_states(structure: Structure, low: Array, high: Array) -> Theory:
     """T1 where a single DC state decides; capacitances matter in a transient only."""
-    if ("transient", 1.0) in structure.options:
+    both_leak = structure.amps and structure.against is not None and structure.against < structure.shape.free
+    if ("transient", 1.0) in structure.options or both_leak:
         return unproved(structure, low, high)
     slopes = Slopes([0] * len(low))
     forms = [*structure.ohms, *(form for _, form in structure.amps), *(structure.earlier or ((), ()))[1]]

@@ -7,13 +7,13 @@ Source: nodal analysis; UM10204 (2012), section 7.1 for pull-ups.
 """
 
 from rcrules.measures._measure import Measure
-from rcrules.measures._stress import clamped, of_states
-from rcrules.problems import Array, Structure
+from rcrules.measures._stress import of_states
+from rcrules.problems import Array, Structure, steady_states
 
 
 def compute(structure: Structure, cases: Array) -> Array:
     """Voltage [V] (case,); cases: (case, column), SI."""
-    found: Array = clamped(structure, cases).max(axis=1)
+    found: Array = steady_states(structure, cases)[:, :, structure.at].max(axis=1)
     return found
 
 

@@ -1,7 +1,7 @@
 """Questions about nodes, posed on small boards."""
 
 from dataclasses import replace
-from math import log
+from math import exp, inf, log
 
 import pytest
 
@@ -150,3 +150,47 @@ def test_supplies_rise_in_their_order():
     board = bench("R1 10k, C1 100n, U1 QX7301, U2 QX3300", nets, facts + later + EXACT)
     found = board.measure("NRST", "delay", event="power-up", to="1 V")
     assert found.nominal == pytest.approx(5e-3 + 1e-3 * log(3.3 / 2.3))
+
+
+def leaking(leakage: str, ohms: str = "1M", supply: str = "") -> Bench:
+    """Circuit 7: 1 MΩ, 1 µF, and a pin that leaks into or out of the node."""
+    nets = """
+        +3V3: U2.1/VO/power_out R1.1 U1.3/VDD/power_in
+        NRST: R1.2 C1.1 U1.7/NRST/input
+        GND: U2.2/GND/power_in C1.2 U1.2/GND/power_in
+    """
+    facts = f'[supply."+3V3"]\nvoltage = "3.3 V"\n{supply}\n[pin."U1.7"]\nleakage = "{leakage}"\n'
+    exact = '[defaults.resistor]\ntolerance = "0 %"\n[defaults.capacitor]\ntolerance = "0 %"\n'
+    return bench(f"R1 {ohms}, C1 1u, U1 QX7301, U2 QX3300", nets, facts + exact)
+
+
+def test_leakage_pushes_no_node_beyond_its_rails():
+    """1 µA through 1 MΩ would end at 4.3 V, or stay at 2.3 V; the upper rail takes it at 3.3 V."""
+    found = leaking("-1 uA .. 1 uA").measure("NRST", "final_voltage", given_only=True)
+    assert (found.low, found.high) == (pytest.approx(2.3), pytest.approx(3.3, rel=1e-8))
+    assert leaking("4 uA .. 5 uA").measure("NRST", "final_voltage").nominal == pytest.approx(0.0, abs=1e-7)
+
+
+def test_a_level_beyond_the_rail_is_never_reached():
+    found = leaking("-1 uA .. 1 uA").measure("NRST", "delay", event="power-up", to="3.5 V", given_only=True)
+    assert (found.low, found.high) == (inf, inf)
+
+
+def test_a_level_within_the_rails_is_reached_as_with_a_current():
+    """Circuit 7: 0.770480 s with 1 µA into the node, never with 1 µA out of it (worked out apart)."""
+    found = leaking("-1 uA .. 1 uA").measure("NRST", "delay", event="power-up", to="2.31 V", given_only=True)
+    assert (found.low, found.high) == (pytest.approx(0.770480, rel=2e-6), inf)
+
+
+def test_a_node_waits_at_ground_for_its_supply():
+    """0.5 µA through 1 MΩ hold it at 0 V until the ramp has passed 0.5 V; then it charges as from rest (by hand)."""
+    slow = leaking("0.5 uA", supply='rise = "20 s"').measure("NRST", "voltage_at", time=12.0).nominal
+    begins = 0.5 / (3.3 / 20)
+    since = 12.0 - begins
+    assert slow == pytest.approx(3.3 / 20 * (since - 1.0 * (1 - exp(-since))), rel=1e-6)
+
+
+def test_what_leakage_hardly_moves_stays_a_linear_circuit():
+    assert leaking("-1 uA .. 1 uA", "10k").pose("NRST", "delay", event="power-up", to="2.31 V").structure.diodes == ()
+    high = leaking("-1 uA .. 1 uA", "10k").measure("NRST", "final_voltage", given_only=True).high
+    assert high == pytest.approx(3.3, rel=1e-8)
