@@ -20,7 +20,41 @@ SEXPR = b"""(export (version "E")
  (nets (net (code "1") (name "NRST") (node (ref "R1") (pin "1") (pintype "input")) (node (ref "C1") (pin "1")))))
 """
 PINS = b'net,part,pin,pin name,value\n+3V3,R1,1,,10k\nNRST,R1,2,,\nNRST,"C1",1,,"1u, 10%"\nGND,U1,3,GND,QX7301\n'
-TEXTS = {"xml": XML, "sexpr": SEXPR, "pins": PINS, "bom": BOM, "utf-16": BOM.decode().encode("utf-16")}
+EDIF = b"""(edif T (edifVersion 2 0 0) (edifLevel 0) (keywordMap (keywordLevel 0))
+ (library P (edifLevel 0) (technology (numberDefinition (scale 1 (E 1 -12) (unit CAPACITANCE))))
+  (cell R (cellType GENERIC) (view N (viewType NETLIST) (interface (port &1) (port (array (rename B "B[1:0]") 2)))))
+  (cell F (cellType GENERIC) (view N (viewType NETLIST) (interface (port A)) (contents
+   (instance R1 (viewRef N (cellRef R)) (property VALUE (string "4k7 1%37%")))
+   (net A (joined (portRef A) (portRef &1 (instanceRef R1))))))))
+ (library D (edifLevel 0) (technology (numberDefinition))
+  (cell TOP (cellType GENERIC) (view N (viewType NETLIST) (interface) (contents (page P1
+   (instance F1 (viewRef N (cellRef F (libraryRef P))))
+   (instance (array C 2) (viewRef N (cellRef R (libraryRef P))) (property Value (number (e 1 2)) (unit CAPACITANCE)))
+   (net (rename V "+3V3") (joined (portRef A (instanceRef F1)) (portRef (member B 1) (instanceRef (member C 0)))))
+   (net (array (rename N "N[1:0]") 2) (joined (portRef B (instanceRef (member C 1))))))))))
+ (design T (cellRef TOP (libraryRef D))))
+"""
+TESTED = b"""P  JOB   T
+P  NNAME1 /a/LONG_NAME
+317NNAME1           R1    -1    D0400PA00X+001000Y+005000X0700Y0000R000 S0
+327GND              R1    -2          A01X+005000Y+005000X0200Y0200R000 S0
+327N/C              U1    -2
+999
+"""
+BOARD = b"""<IPC-2581 revision="B"><Content><StepRef name="t"/></Content>
+ <Bom name="B"><BomHeader><StepRef name="t"/></BomHeader><BomItem OEMDesignNumberRef="X" quantity="1">
+  <RefDes name="R1" populate="false"/><Characteristics><Measured measuredCharacteristicName="RESISTANCE"
+   measuredCharacteristicValue="47" engineeringUnitOfMeasure="OHM" engineeringNegativeTolerance="1"
+   engineeringPositiveTolerance="2"/></Characteristics></BomItem></Bom>
+ <Ecad><CadData><Step name="t"><Package name="P"><Pin number="1" name="A"/></Package>
+  <Component refDes="R1" packageRef="P"/><LogicalNet name="N"><PinRef componentRef="R1" pin="1"/></LogicalNet>
+  <LayerFeature><Set net="M"><Pad><PinRef componentRef="R1" pin="2"/></Pad></Set></LayerFeature></Step></CadData></Ecad>
+ <Avl><AvlItem OEMDesignNumber="X"><AvlVmpn><AvlMpn name="Q"/></AvlVmpn></AvlItem></Avl></IPC-2581>
+"""
+LISTED = b"""<bom><part ref="R1"><value>4k7</value><f name="Tol">1%</f></part><part ref="C1" value="1u"/></bom>"""
+NETLISTS = {"xml": XML, "sexpr": SEXPR, "edif": EDIF, "ipc-d-356": TESTED, "ipc-2581": BOARD, "bom-xml": LISTED}
+TABLES = {"pins": PINS, "bom": BOM, "utf-16": BOM.decode().encode("utf-16")}
+TEXTS = {**NETLISTS, **TABLES}
 PIECES = (
     b"\0",
     b'"',
@@ -51,7 +85,7 @@ def outcome(data: bytes) -> Export | None:
     return None
 
 
-@pytest.mark.parametrize("name", ["xml", "sexpr"])
+@pytest.mark.parametrize("name", NETLISTS)
 def test_a_netlist_cut_anywhere_is_refused(name: str) -> None:
     whole = TEXTS[name].rstrip()
     assert outcome(whole) is not None
@@ -59,7 +93,7 @@ def test_a_netlist_cut_anywhere_is_refused(name: str) -> None:
     assert [end for end in range(0, len(whole), stride) if outcome(whole[:end]) is not None] == []
 
 
-@pytest.mark.parametrize("name", ["pins", "bom", "utf-16"])
+@pytest.mark.parametrize("name", TABLES)
 def test_a_table_cut_anywhere_gives_no_part_that_the_whole_has_not(name: str) -> None:
     """A table has no end mark: rows before the cut are read as they are."""
     whole = outcome(TEXTS[name])
