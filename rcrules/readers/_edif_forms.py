@@ -10,6 +10,8 @@ from rcrules.readers._edif_words import child, children, designator, named, numb
 from rcrules.readers._mistakes import refusal, shorten
 from rcrules.readers._sexpr import Form
 
+_LEVELS: Final = 2
+"""Nets and connections of all levels of a hierarchy for each one that a board may have."""
 CONTAINERS: Final = frozenset({"edif", "library", "external", "contents", "page", "listofnets"})
 
 
@@ -28,7 +30,7 @@ class Taker:
         self._views: list[View] = []
         self._cells: list[Cell] = []
         self._scales: dict[str, float] = {}
-        self._parts = self._pins = self._net_count = 0
+        self._parts = self._pins = self._net_count = self._port_count = 0
         self.version: tuple[str, ...] | None = None
 
     def take(self, around: str | None, form: Form) -> bool:
@@ -67,7 +69,7 @@ class Taker:
         key, index = (None, None) if instance is None else self._reference(instance)
         self._ends.append(End(port, port_index, key, index, form.line))
         self._pins += 1
-        _bounds.bound(self._file, form.line, "connections", self._pins, 4 * _bounds.MAX_PINS)
+        _bounds.bound(self._file, form.line, "connections", self._pins, _LEVELS * _bounds.MAX_PINS)
         return True
 
     def _global(self, _: str, form: Form) -> bool:
@@ -81,7 +83,7 @@ class Taker:
         self._nets.append(net)
         self._ends, self._everywhere = [], []
         self._net_count += net.name.width or 1
-        _bounds.bound(self._file, form.line, "nets", self._net_count, 4 * _bounds.MAX_NETS)
+        _bounds.bound(self._file, form.line, "nets", self._net_count, _LEVELS * _bounds.MAX_NETS)
         return True
 
     def _instance(self, around: str, form: Form) -> bool:
@@ -128,6 +130,8 @@ class Taker:
             return False
         direction = child(form, "direction")
         name = self._name(form)
+        self._port_count += 1
+        _bounds.bound(self._file, form.line, "ports", self._port_count, _bounds.MAX_PINS)
         self._ports[name.key] = Port(
             name=name,
             direction=direction.first().casefold() if direction is not None else "",
@@ -185,6 +189,8 @@ class Taker:
 
     def _reference(self, form: Form) -> tuple[str, int | None]:
         """Identifier and member that a form refers to."""
+        if not form.forms and form.atoms and len(form.atoms[0]) <= _bounds.MAX_NAME:
+            return key_of(form.atoms[0]), None
         member = child(form, "member")
         if member is not None:
             key, _ = self._reference_name(member)

@@ -28,7 +28,9 @@ def _sheets(source: Source, found: "Iterator[etree._Element]") -> list[Sheet]:
     failed: dict[str, list[tuple[int, int]]] = {}
     lines: dict[str, int] = {}
     count = 0
-    for element in found:
+    for index, element in enumerate(found):
+        if index > 2 * MAX_ROWS:
+            raise broken(source, f"more than {2 * MAX_ROWS} rows, empty ones among them")
         table = next(element.iterancestors("{*}table"), None)
         name = "" if table is None else _said(table, "name")
         cells, bad = _cells(source, element)

@@ -6,6 +6,7 @@ from collections.abc import Iterator
 from io import BytesIO
 from typing import TYPE_CHECKING, Final, cast
 
+from rcrules.readers import _bounds
 from rcrules.readers._mistakes import refusal, shorten
 from rcrules.readers._xml import BoundedStream, doctype_refusal, refuse_doctype
 
@@ -14,6 +15,8 @@ if TYPE_CHECKING:
 
     from rcrules.readers._export import Source
 
+MAX_ELEMENTS: Final = 1_000_000
+"""Elements that are looked at in one file."""
 _TOGETHER: Final = 16
 """Elements after which all that is no longer needed is taken away."""
 
@@ -72,6 +75,8 @@ class Elements:
                         continue
                 element.clear()
                 count += 1
+                if count > MAX_ELEMENTS:
+                    _bounds.bound(self._source.name, self.line(element), "elements", count, MAX_ELEMENTS)
                 if count % _TOGETHER == 0:
                     let_go(element)
                     stream.marks = 0

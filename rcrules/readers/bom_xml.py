@@ -14,7 +14,7 @@ from rcrules.readers._columns import REFERENCE, plain
 from rcrules.readers._export import Export, Reader, Source
 from rcrules.readers._foreign import unknown
 from rcrules.readers._table import MAX_CELLS, MAX_COLUMNS, Row
-from rcrules.readers._xml import root_name
+from rcrules.readers._xml import MAX_MARKS, root_name
 from rcrules.readers._xml_stream import Elements, local
 
 if TYPE_CHECKING:
@@ -59,6 +59,8 @@ def read(source: Source, columns: Mapping[str, str]) -> Export:
 
 def _items(source: Source, reference: set[str]) -> Iterator[Item]:
     """Every innermost element with a reference and at least one cell of another name."""
+    marks = source.data.count(b"<")
+    _bounds.bound(source.name, 1, "elements", marks, MAX_MARKS)
     elements = Elements(source, None, "BOM")
     count = 0
     for _, element in elements:

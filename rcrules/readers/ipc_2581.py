@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections import Counter
 from collections.abc import Mapping
 from typing import TYPE_CHECKING, Final
 
@@ -18,6 +19,9 @@ if TYPE_CHECKING:
     from lxml.etree import _Element
 
 NAME: Final = "ipc-2581"
+Home = tuple[str, dict[tuple[str, str, str], int], bool]
+_PINS: Final = frozenset({"PinRef", "LogicalNetPin"})
+_COUNTED: Final = {"Component": "parts", "LogicalNet": "nets"}
 _GEOMETRY: Final = ("PadStack", "Set", "LayerFeature", "PhyNet", "Profile", "Layer")
 """Of these only the pins in them are of use."""
 
@@ -32,7 +36,17 @@ def read(source: Source, columns: Mapping[str, str]) -> Export:
     del columns  # the names are those of the standard
     elements = Elements(source, tuple(_Board.TAKEN), "board", idle=_GEOMETRY)
     board = _Board(source, elements)
+    counts: Counter[str] = Counter()
     for tag, element in elements:
+        counts[tag] += 1
+        if tag not in _PINS:
+            _bounds.bound(
+                source.name,
+                elements.line(element),
+                _COUNTED.get(tag, f"elements <{tag}>"),
+                counts[tag],
+                _bounds.MAX_PARTS,
+            )
         _Board.TAKEN[tag](board, element)
     return join(source, NAME, board.contents)
 
@@ -44,6 +58,8 @@ class _Board:
         self._source, self._line = source, elements.line
         self.contents = Contents()
         self._listed = 0
+        self._around: _Element | None = None
+        self._home: Home | None = None
 
     def _step(self, element: _Element) -> Step | None:
         found = next(element.iterancestors("{*}Step"), None)
@@ -90,21 +106,28 @@ class _Board:
 
     def _take_pin(self, element: _Element) -> None:
         """A pin of a logical net, or of a pad in a set of features on a net."""
-        ref, pin = element.get("componentRef", "").strip(), element.get("pin", "").strip()
-        around = [(item, local(item)) for item in element.iterancestors("{*}LogicalNet", "{*}Set", "{*}PadStack")]
-        named = (
-            (item, tag == "LogicalNet", item.get("name" if tag == "LogicalNet" else "net")) for item, tag in around
-        )
-        item, logical, net = next((found for found in named if found[2] is not None), (element, False, None))
-        step = self._step(item)
-        if net is None or step is None:
+        parent = element.getparent()
+        if parent is not self._around:
+            self._around, self._home = parent, self._home_of(element)
+        if self._home is None:
             return
+        net, ends, logical = self._home
+        ref, pin = element.get("componentRef", "").strip(), element.get("pin", "").strip()
         if not ref or not pin:
             self.contents.nameless += logical
             return
-        ends, line = step.logical if logical else step.pads, self._line(element)
-        ends.setdefault((net.strip(), ref, pin), line)
+        line = self._line(element)
+        ends.setdefault((net, ref, pin), line)
         _bounds.bound(self._source.name, line, "connections", len(ends), _bounds.MAX_PINS)
+
+    def _home_of(self, element: _Element) -> Home | None:
+        """Net, connections to add to, and whether they are those of logical nets; None for a pin on no named net."""
+        for around in element.iterancestors("{*}LogicalNet", "{*}Set", "{*}PadStack"):
+            logical = local(around) == "LogicalNet"
+            net, step = around.get("name" if logical else "net"), self._step(around)
+            if net is not None and step is not None:
+                return net.strip(), step.logical if logical else step.pads, logical
+        return None
 
     def _take_net(self, element: _Element) -> None:
         step = self._step(element)

@@ -14,7 +14,7 @@ from rcrules.readers._text import decode, head, numbered
 
 NAME: Final = "ipc-d-356"
 _HEAD: Final = 65_536
-MAX_LINES: Final = 2_000_000
+MAX_LINES: Final = 1_000_000
 _COMMENT: Final = re.compile(r"\A(?:[CP](?: [^\r\n]*)?[\r\n]+|[\r\n]+)*+")
 _RECORD: Final = re.compile(r"3[0-46]7[^\r\n]{14}   [^\r\n]{6}(?:[- ]|[\r\n]|\Z)")
 _JOB: Final = re.compile(r"^P {1,3}(?:JOB|CODE|UNITS|TITLE|VER|IMAGE)\b", re.MULTILINE)

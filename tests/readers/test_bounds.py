@@ -7,6 +7,12 @@ from rcrules.readers import Source, _bounds, _table, read
 from tests.readers.test_hostile import refused
 
 XML = "<export><components>{parts}</components><nets>{nets}</nets></export>"
+TESTED = "P  JOB A\n{}999\n"
+BOARD = '<IPC-2581><Step name="a">\n{}</Step></IPC-2581>'
+PINS = "".join(f'<PinRef componentRef="R{number}" pin="1"/>\n' for number in range(4)).replace("/>\n", "/>", 1)
+EDIF = """(edif A (edifVersion 2 0 0) (library L (cell C (view N
+(interface {1}) (contents
+{0})))) (design A (cellRef C (libraryRef L))))"""
 LONG = "R" * 1_000_000 + "1"
 
 
@@ -34,6 +40,14 @@ def nets(count: int) -> str:
         ("(export (nets (net (name A)\n" + "(node (ref R1) (pin 1))\n" * 4 + ")))", "connections", 5),
         ("net,pins\nA,R1.1 R1.2 R1.3 R1.4\n", "connections", 2),
         ("net,part,pin\nA,R1,1\nB,R1,2\nC,R2,1\nD,R2,2\nE,R2,3\n", "connections", 5),
+        (TESTED.format("".join(f"327A                R1    -{n}\n" for n in range(4))), "connections", 5),
+        (TESTED.format("".join(f"327A{n}               VIA\n" for n in range(4))), "nets", 5),
+        (BOARD.format("".join(f'<Component refDes="R{n}"/>\n' for n in range(4))), "parts", 5),
+        (BOARD.format("".join(f'<LogicalNet name="N{n}"/>\n' for n in range(4))), "nets", 5),
+        (BOARD.format(f'<LogicalNet name="N">{PINS}</LogicalNet>'), "connections", 4),
+        (BOARD.format('<Package name="P"/>\n' * 4), "elements <Package>", 5),
+        (EDIF.format("(instance R (viewRef N (cellRef X)))\n" * 4, ""), "parts", 6),
+        (EDIF.format("", "(port A)\n" * 4), "ports", 5),
     ],
 )
 def test_more_than_a_board_holds_is_refused(monkeypatch: pytest.MonkeyPatch, data: str, what: str, line: int) -> None:
