@@ -44,7 +44,7 @@ def _power(prefix: str, kind: str) -> int:
 def doubtful(token: Token, kind: str) -> str:
     """Why a value token with a unit may mean something else, '' when it cannot.
 
-    ``104pF`` and ``104N`` may be the code for 100 nF; ``1m`` on a resistor may be a careless M.
+    ``104pF`` and ``104N`` without a blank may be the code for 100 nF; ``1m`` on a resistor may be a careless M.
     """
     digits = token.parts.get("n") or ""
     if token.kind == "milli":
@@ -56,7 +56,8 @@ def doubtful(token: Token, kind: str) -> str:
     ):
         return ""
     code = digit_code(digits)
-    if code is None or len(digits) != 3 or digits.endswith("0") or preferred(float(digits), (len(E24),)):
+    glued = digits + (token.parts.get("prefix") or "F") in token.text
+    if code is None or not glued or len(digits) != 3 or digits.endswith("0") or preferred(float(digits), (len(E24),)):
         return ""
     return f"'{token.text}' may be the code for {code / 1000:g} nF"
 

@@ -3,7 +3,8 @@
 import pytest
 
 from rcrules.parts import read_value
-from rcrules.parts._preferred import digit_code, letter_tolerance, preferred, series
+from rcrules.parts._preferred import digit_code, letter_code, letter_tolerance, preferred, series
+from rcrules.parts._voltage_codes import volts
 
 E24 = [10, 11, 12, 13, 15, 16, 18, 20, 22, 24, 27, 30, 33, 36, 39, 43, 47, 51, 56, 62, 68, 75, 82, 91]
 """IEC 60063:2015, E24; also the table of standard resistor values at utilitiesbunker.com."""
@@ -122,3 +123,103 @@ def test_below_ten_picofarads_the_letters_are_absolute():
     """B, C, D are ±0.1, 0.25, 0.5 pF (dummies.com); Z is −20/+80 % (dummies.com)."""
     assert letter_tolerance("C", 5e-12) == pytest.approx((-0.05, 0.05))
     assert letter_tolerance("Z", 1e-9) == (-0.20, 0.80)
+
+
+@pytest.mark.parametrize("misprint", [90.0, 26.0, 29.0])
+def test_a_misprinted_or_merely_rounded_value_is_in_no_coarse_series(misprint):
+    """A published E24 table ends with 90 in place of 91 (news.eeany.cn); 26 and 29 are what the formula rounds to."""
+    assert not preferred(misprint, (24,))
+
+
+@pytest.mark.parametrize(
+    ("value", "counts"), [(4990.0, (96, 192)), (4870.0, (48, 96, 192)), (9.2, (192,)), (0.68, (6, 12, 24))]
+)
+def test_membership_in_every_series(value, counts):
+    """Derived from IEC 60063: 4.99 is in E96 and E192 alone, 4.87 in E48 too, 9.20 in E192 alone."""
+    assert [count for count in (3, 6, 12, 24, 48, 96, 192) if preferred(value, (count,))] == list(counts)
+
+
+@pytest.mark.parametrize(
+    ("code", "ohms"),
+    [
+        ("01A", 100.0),
+        ("01C", 10e3),
+        ("01Y", 1.0),
+        ("29B", 1.96e3),
+        ("66B", 4.75e3),
+        ("68X", 49.9),
+        ("76X", 60.4),
+        ("01F", 10e6),
+        ("01Z", 0.1),
+        ("01R", 1.0),
+        ("01S", 10.0),
+        ("01H", 1e3),
+        ("96D", 976e3),
+        ("25E", 1.78e6),
+    ],
+)
+def test_three_character_markings_of_resistors(code, ohms):
+    """Annex A of IEC 60062:2016: developer.wildernesslabs.co and xdevs.com/guide/rescode (first seven); the others from
+    the multiplier letters that both print."""
+    assert letter_code(code) == pytest.approx(ohms, rel=1e-12)
+
+
+@pytest.mark.parametrize("code", ["00A", "97A", "68G", "6X8", "068", "68XA"])
+def test_other_characters_are_no_marking(code):
+    assert letter_code(code) is None
+
+
+@pytest.mark.parametrize(("code", "farads"), [("479C", 4.7e-12), ("108B", 0.1e-12), ("109B", 1e-12), ("107M", 100e-6)])
+def test_a_third_digit_of_8_or_9_divides(code, farads):
+    """8 is ×0.01, 9 is ×0.1 (from memory of IEC 60062)."""
+    if code[2] == "8":
+        assert digit_code(code[:3], fractions=True) == pytest.approx(farads * 1e12)
+    else:
+        assert read_value(code, "capacitor").value == pytest.approx(farads, rel=1e-12)
+
+
+def test_codes_with_the_zero_count_first_are_not_what_four_digits_mean_here():
+    """One film maker prints 1274 for 2740 pF (a film data sheet); four digits on a capacitor are not read."""
+    assert read_value("1274", "capacitor").value is None
+
+
+@pytest.mark.parametrize(
+    ("text", "reason"), [("220", "220 Ω"), ("471", None), ("102", None), ("3R3", "3.3"), ("12R0", "12")]
+)
+def test_what_is_a_value_in_a_bom_and_a_code_on_the_body(text, reason):
+    """The trap at xdevs.com/guide/rescode and in an instrument manual: 220 is 22 Ω on the body, 220 Ω in a BOM;
+    471 and 102 could be either."""
+    assert (read_value(text, "resistor").value is None) == (reason is None)
+
+
+@pytest.mark.parametrize(
+    ("letter", "low", "high"), [("Q", -0.10, 0.30), ("T", -0.10, 0.50), ("S", -0.20, 0.50), ("Z", -0.20, 0.80)]
+)
+def test_uneven_tolerance_letters_of_capacitors(letter, low, high):
+    """Z: dummies.com; T: a service manual; Q and S from memory of IEC 60062:2016."""
+    assert letter_tolerance(letter, 1e-9) == (low, high)
+    assert letter_tolerance(letter) is None, "none of them is used on resistors"
+
+
+@pytest.mark.parametrize(("letter", "picofarads"), [("B", 0.1), ("C", 0.25), ("D", 0.5)])
+def test_absolute_letters(letter, picofarads):
+    """dummies.com."""
+    assert letter_tolerance(letter, 2e-12) == pytest.approx((-picofarads / 2, picofarads / 2))
+
+
+@pytest.mark.parametrize("letter", "EHNPAI")
+def test_a_letter_with_two_meanings_leaves_the_value_and_gives_no_tolerance(letter):
+    """E is 0.5 % at w9jz.org and 0.25 % at electro-tech-online, N 0.05 % and 30 %, H 3 % and 2.5 %."""
+    assert letter_tolerance(letter, 1e-9) is None
+
+
+VOLTS = {
+    "0G": 4.0, "0J": 6.3, "1A": 10.0, "1C": 16.0, "1E": 25.0, "1V": 35.0, "1H": 50.0, "1J": 63.0,
+    "2A": 100.0, "2D": 200.0, "2E": 250.0, "2G": 400.0, "2W": 450.0, "2J": 630.0, "3A": 1000.0,
+}  # fmt: skip
+
+
+@pytest.mark.parametrize(("code", "rated"), VOLTS.items())
+def test_voltage_codes(code, rated):
+    """R10 letters after a power of ten, JIS C 5101-1 (from memory)."""
+    assert volts(code) == pytest.approx(rated)
