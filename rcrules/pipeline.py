@@ -8,9 +8,10 @@ from rcrules import __version__
 from rcrules.errors import Mistake, Place, UserMistake
 from rcrules.job import Job, read_job
 
-__all__ = ["Job", "derive", "run", "run_all"]
+__all__ = ["Job", "derive", "run", "run_all", "try_on"]
 
 if TYPE_CHECKING:
+    from rcrules.checks import Trial
     from rcrules.findings import Derived, Document
     from rcrules.networks import Board
     from rcrules.problems import Parameter
@@ -86,6 +87,18 @@ def derive(job: Job, at: str) -> "tuple[Document, list[Derived]]":
         raise UserMistake(Mistake(place=place, problem="nothing on this board", found=at, expected=expected, do=do))
     document = _document(replace(job, with_rules=False), project, board, [])
     return document, numbers_at(board, project, rules, at)
+
+
+def try_on(job: Job) -> "list[Trial]":
+    """What each rule meets on a board, nearly meets, and at which limit it would turn. Raises UserMistake."""
+    from rcrules.checks import trials
+    from rcrules.design import build
+    from rcrules.networks import recognise
+    from rcrules.parts import rate
+
+    project, exports, rules, _ = read_job(job)
+    design = build(exports)
+    return trials(recognise(design, rate(design, project), project), project, rules)
 
 
 def _like(names: Sequence[str]) -> str:

@@ -5,5 +5,21 @@ from rcrules.checks._check import Checked, check
 from rcrules.checks._numbers import known, near, numbers_at
 from rcrules.checks._packs import astray, packs, unclear, unmet
 from rcrules.checks._subjects import Subject
+from rcrules.checks._trial import Trial, trials, turning
 
-__all__ = ["Asked", "Checked", "Subject", "astray", "check", "known", "near", "numbers_at", "packs", "unclear", "unmet"]
+__all__ = [
+    "Asked",
+    "Checked",
+    "Subject",
+    "Trial",
+    "astray",
+    "check",
+    "known",
+    "near",
+    "numbers_at",
+    "packs",
+    "trials",
+    "turning",
+    "unclear",
+    "unmet",
+]

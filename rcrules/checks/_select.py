@@ -24,8 +24,8 @@ def selected(selection: Selection, subject: Subject, board: Board) -> bool | Non
 
 def matches(selection: Selection, view: View, board: Board) -> bool | None:
     """Whether all given keys match, one of ``any-of`` does, and none of ``not``."""
-    asked = ((wanted, test) for key, test in _TESTS.items() if (wanted := getattr(selection, key)))
-    if not (all(test(wanted, view) for wanted, test in asked) and _valued(selection, view)):
+    asked = ((wanted, test) for key, test in TESTS.items() if (wanted := getattr(selection, key)))
+    if not (all(test(wanted, view) for wanted, test in asked) and valued(selection, view)):
         return False
     any_of = [matches(item, view, board) for item in selection.any_of] or [True]
     excluded = [matches(item, view, board) for item in selection.exclude]
@@ -51,7 +51,7 @@ def _named(wanted: tuple[str, ...], view: View) -> bool:
     return not wanted or any(has_token(name, word) for name in names for word in wanted)
 
 
-def _valued(selection: Selection, view: View) -> bool:
+def valued(selection: Selection, view: View) -> bool:
     """Whether a part of the unit asked for has a marked value within both bounds, and one the polarity asked for."""
     low, high, polarised = selection.value_at_least, selection.value_at_most, selection.polarised
     within = (low is None and high is None) or any(_between(part, low, high) for part in view.parts)
@@ -65,7 +65,7 @@ def _between(part: RatedPart, low: Spread | None, high: Spread | None) -> bool:
 
 
 _Test = Callable[[tuple[str, ...], View], bool]
-_TESTS: Final[Mapping[str, _Test]] = {
+TESTS: Final[Mapping[str, _Test]] = {
     "role": lambda wanted, view: _within(wanted, view.roles),
     "name": lambda wanted, view: _named(wanted, view),
     "net": lambda wanted, view: globbed(wanted, view.nets),

@@ -22,7 +22,7 @@ _SUMMARIES: Final = {
     "compare": "two saved findings documents: what broke, what mended, what moved and why",
     "start": "write a first rcrules.toml for a board, with what was found and what to ask",
     "render": "show a saved findings document again, as any report; needs no board",
-    "rules": "list the packs and rules there are, or check rule files for mistakes",
+    "rules": "list packs and rules, check rule files for mistakes, try rules on examples or a board",
     "demo": "copy the demo board to a folder, check it, show the report",
 }
 
@@ -196,6 +196,15 @@ def _rules(command: argparse.ArgumentParser) -> None:
     command.add_argument(
         "--measures", action="store_true", help="list the measures that rules may use, with their options"
     )
+    command.add_argument("--try", action="store_true", dest="tried", help="hold rules against their own examples")
+    command.add_argument(
+        "--on",
+        nargs="+",
+        default=[],
+        metavar="INPUT",
+        help="show what each rule meets on a board, what it nearly meets, and at which limit its verdict turns",
+    )
+    command.add_argument("--project", metavar="FILE", help="project file of that board (default: found as check does)")
     _color(command)
 
 

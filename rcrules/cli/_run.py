@@ -62,11 +62,20 @@ def render(chosen: argparse.Namespace) -> int:
 
 
 def rules(chosen: argparse.Namespace) -> int:
-    """Packs and rules, or measures, in words."""
+    """Packs and rules, measures, or rules tried, in words; 1 when an example does not come out as its rule says."""
     from rcrules.cli._output import terminal_width, to_stdout, wants_color
     from rcrules.reports import laid_out
 
-    if chosen.measures:
+    wrong = False
+    if chosen.tried:
+        from rcrules.cli._tried import tried_lines
+
+        lines, wrong = tried_lines(tuple(chosen.packs))
+    elif chosen.on:
+        from rcrules.cli._on import on_lines
+
+        lines = on_lines(tuple(chosen.packs), tuple(chosen.on), chosen.project)
+    elif chosen.measures:
         from rcrules.cli._measures import measures_lines
 
         lines = measures_lines()
@@ -75,7 +84,7 @@ def rules(chosen: argparse.Namespace) -> int:
 
         lines = rules_lines(tuple(chosen.packs))
     to_stdout(laid_out(lines, color=wants_color(chosen.color), width=terminal_width()))
-    return 0
+    return int(wrong)
 
 
 def demo(chosen: argparse.Namespace) -> int:

@@ -3,13 +3,27 @@
 from functools import cache
 
 from rcrules.reports._columns import aligned
-from rcrules.reports._lines import Line, safe
+from rcrules.reports._lines import Line, Span, safe
 from rcrules.reports._report import Render, Report
 from rcrules.reports._text_boards import boards_lines
 from rcrules.reports._text_derivation import derivation_lines
+from rcrules.reports._words import limit_text, measured_text
 from rcrules.reports._wrap import laid_out
 
-__all__ = ["Line", "Render", "Report", "aligned", "boards_lines", "derivation_lines", "laid_out", "reports", "safe"]
+__all__ = [
+    "Line",
+    "Render",
+    "Report",
+    "Span",
+    "aligned",
+    "boards_lines",
+    "derivation_lines",
+    "laid_out",
+    "limit_text",
+    "measured_text",
+    "reports",
+    "safe",
+]
 
 
 @cache

@@ -55,6 +55,12 @@ def asked(finding: Finding) -> str:
     return told + (f" ({level})" if level else "")
 
 
+def measured_text(finding: Finding) -> str:
+    """``21.9 ms .. 35.7 ms .. 49.7 ms``; '' where nothing was measured."""
+    found = finding.measured
+    return bounds(found.low, found.nominal, found.high, found.unit, percent=in_percent(finding)) if found else ""
+
+
 def in_percent(finding: Finding) -> bool:
     """True where the limit of a plain ratio is written in per cent."""
     return finding.limit is not None and "%" in str(finding.limit.get("text", ""))

@@ -24,6 +24,11 @@ _PHRASES: Final = (
 """Words, and the field of the selection that they tell."""
 
 
+def plural(subject: str) -> str:
+    """``supplies``."""
+    return f"{subject[:-1]}ies" if subject.endswith("y") else f"{subject}s"
+
+
 def sentence(rule: Rule) -> str:
     """``for every node with role debounce, the delay after release to 'may switch' must be at least 10 ms``"""
     selection = "".join(f" {phrase}," for phrase in [_selected(rule.selection, rule.held_against)] if phrase)
