@@ -42,7 +42,7 @@ def branches(part: RatedPart) -> Iterator[tuple[str, Pin, Pin]]:
     if part.kind == "potentiometer":
         yield from (("resistor", first, second) for first, second in _track(pins))
     elif part.kind in ("resistor-array", "capacitor-array"):
-        yield from ((part.kind.removesuffix("-array"), first, second) for first, second in _elements(pins))
+        yield from ((part.kind.removesuffix("-array"), first, second) for first, second in _elements(part))
     elif len(pins) >= 2 and (part.kind in ("resistor", "capacitor") or is_thermistor(part)) and not _is_link(part):
         ends = _two_ends(pins)
         if ends:
@@ -141,19 +141,12 @@ def _track(pins: tuple[Pin, ...]) -> Iterator[tuple[Pin, Pin]]:
         yield from ((end, wipers[0]) for end in ends if end.net != wipers[0].net)
 
 
-def _elements(pins: tuple[Pin, ...]) -> Iterator[tuple[Pin, Pin]]:
-    """Elements of an array: by pin names ``R1.1 R1.2``, a common pin, else pins facing each other."""
-    by_name: dict[str, list[Pin]] = {}
-    for pin in pins:
-        by_name.setdefault(pin.name.rpartition(".")[0], []).append(pin)
-    common = [pin for pin in pins if pin.name.upper() in ("COM", "COMMON", "C")]
-    if common:
-        yield from ((common[0], pin) for pin in pins if pin is not common[0])
-    elif "" not in by_name and all(len(pair) == 2 for pair in by_name.values()):
-        yield from ((pair[0], pair[1]) for pair in by_name.values())
-    elif len(pins) % 2 == 0 and all(pin.number.isdecimal() for pin in pins):
-        ordered = sorted(pins, key=lambda pin: int(pin.number))
-        yield from zip(ordered[: len(pins) // 2], reversed(ordered[len(pins) // 2 :]), strict=True)
+def _elements(part: RatedPart) -> Iterator[tuple[Pin, Pin]]:
+    """The elements of an array that have both ends on nets."""
+    by_number = {pin.number: pin for pin in part.part.pins}
+    for first, second in part.elements:
+        if first in by_number and second in by_number:
+            yield by_number[first], by_number[second]
 
 
 def _named(pins: tuple[Pin, ...], pattern: re.Pattern[str]) -> list[Pin]:

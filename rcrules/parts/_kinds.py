@@ -110,6 +110,8 @@ def _array(part: _Written, usual: str, *, reads: bool) -> str:
     texts = (part.symbol.rpartition(":")[2], part.footprint, *part.values)
     if any(_words(text) & ARRAY_WORDS for text in texts[:1] + texts[2:]) or any(map(_FOR_ARRAYS.search, texts)):
         return "named an array"
+    if part.pins != 2 and any(read_value(text, _as(usual)).count for text in part.values):
+        return "value of several elements"
     if part.pins > 4 or (part.pins == 4 and usual == "resistor" and reads and not _shunt(part)):
         return f"{part.pins} pins"
     return ""

@@ -99,6 +99,8 @@ class RatedPart:
     polarised: bool = False
     size: str = ""
     """EIA size code such as ``0603``, '' = not known."""
+    elements: tuple[tuple[str, str], ...] = ()
+    """Pin numbers of each element of an array."""
     fitted: bool = True
     fitted_why: str = ""
     origins: Mapping[str, tuple[str, Place | None]] | None = None

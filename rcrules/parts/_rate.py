@@ -11,6 +11,7 @@ from rcrules.design import Design, Part
 from rcrules.parts._absorption import absorption
 from rcrules.parts._alike import asked_at_once, asks, moved, written
 from rcrules.parts._dielectrics import ELECTROLYTIC, code_of
+from rcrules.parts._elements import Elements, elements
 from rcrules.parts._facts import Facts, Said, disagreements, gather, tables_for, tables_say, texts_say
 from rcrules.parts._insulation import insulation
 from rcrules.parts._kinds import kind_of
@@ -99,6 +100,10 @@ def _valued(part: Part, told: _Told, reads: ValueKind, facts: Facts, around: Con
     """A resistor or capacitor with value, ratings and spread, their origins, and what lost."""
     named = _named(facts)
     value = _known(named["value"]) or _unread(facts)
+    count = next((source.read.count for source in facts.valued if source.read.count), None)
+    if told.kind == reads and count and isinstance(value, Known) and "project" not in value.origin:
+        value = Unknown(why=f"'{_text(facts)}' may be one part or {count}")
+    array = elements(part, (table for _, table in facts.tables), count) if told.kind != reads else Elements()
     depends = _depends(part, reads, value, named, facts, ask)
     return RatedPart(
         part=part,
@@ -115,10 +120,11 @@ def _valued(part: Part, told: _Told, reads: ValueKind, facts: Facts, around: Con
         absorption=absorption(facts.tables, depends.dielectric, ask, polarised=depends.polarised),
         polarised=depends.polarised,
         size=_size(part.footprint) or next((s.read.size for s in facts.sources if s.read.size), ""),
+        elements=array.pairs,
         fitted=told.fitted,
         fitted_why=told.fitted_why,
         origins={name: (said[0].origin, said[0].place) for name, said in named.items() if said},
-        disagreements=(*_lost(named, "Ω" if reads == "resistor" else "F"), *facts.stops),
+        disagreements=(*_lost(named, "Ω" if reads == "resistor" else "F"), *facts.stops, *array.notes),
     )
 
 

@@ -14,6 +14,8 @@ from rcrules.vocabulary import DIELECTRIC_CODE, DIELECTRICS, HELD_KINDS, PART_KI
 Reader = Callable[[Table, str], Any]
 
 MAX_TEXT: Final = 200
+_PAIR: Final = re.compile(r"([A-Za-z0-9]{1,8})-([A-Za-z0-9]{1,8})")
+_MOST_ELEMENTS: Final = 64
 _USUAL: Final = ("X7R", "X5R", "X6S", "X7S", "X7T", "X8R", "Y5V", "Z5U", "C0G", "NP0")
 """Letter codes that a slip is likely to mean."""
 _LIKE_QUANTITY: Final = re.compile(r"\s*[+−-]?[0-9.]+\s*[A-Za-zµμΩ°%/]{0,6}\s*")
@@ -156,6 +158,19 @@ def _bias_curve(table: Table, key: str) -> tuple[tuple[float, float], ...]:
     return tuple(points)
 
 
+def _elements(table: Table, key: str) -> tuple[tuple[str, str], ...]:
+    """``1-8 2-7 3-6 4-5``, pin numbers of each element of an array."""
+    return table.parsed(key, _pairs, "pairs of pins such as '1-8 2-7 3-6 4-5'") or ()
+
+
+def _pairs(text: str) -> tuple[tuple[str, str], ...]:
+    found = [_PAIR.fullmatch(word) for word in text.replace(",", " ").split()]
+    pairs = tuple((pair[1], pair[2]) for pair in found if pair is not None and pair[1] != pair[2])
+    if not pairs or len(pairs) < len(found) or len(pairs) > _MOST_ELEMENTS:
+        raise QuantityError("no pairs of pins", length=len(text), expected="pairs such as '1-8 2-7 3-6 4-5'")
+    return pairs
+
+
 def _flag(table: Table, key: str) -> bool | None:
     return table.flag(key)
 
@@ -215,6 +230,7 @@ PART: Final[Mapping[str, Reader]] = {
     "kind": _word(*PART_KINDS),
     "value": _Amount(None, 0),
     "fitted": _flag,
+    "elements": _elements,
     "contact": _word("normally open", "normally closed"),
 }
 

@@ -90,6 +90,8 @@ class PartFacts:
     insulation_resistance: Spread | None = None
     """Least resistance of a capacitor's dielectric [Ω]."""
     fitted: bool | None = None
+    elements: tuple[tuple[str, str], ...] = ()
+    """Pin numbers of each element of an array."""
     contact: str | None = None
     """``normally open`` or ``normally closed``."""
     contact_resistance: Spread | None = None
