@@ -33,6 +33,8 @@ class Job:
     samples: int = 0
     """Random cases of each finding; 0 = no statistics."""
     seed: int = 0
+    limits: tuple[tuple[str, int], ...] = ()
+    """What is read of one input, by names of vocabulary.LIMITS; before those of the project file."""
 
 
 def project_of(job: Job) -> "Project":
@@ -54,7 +56,7 @@ def read_job(job: Job) -> "tuple[Project, list[Export], list[Rule], list[Waiver]
     waivers: list[Waiver] = []
     for name in job.inputs or _listed(project, problems):
         with problems.collecting():
-            exports.append(_export(name, project, listed=not job.inputs))
+            exports.append(_export(name, project, job))
     problems.mistakes += _twice(exports)
     if job.with_rules:
         with problems.collecting():
@@ -110,12 +112,14 @@ def _folder(project: "Project") -> Path:
     return Path(project.file).parent if project.file else Path()
 
 
-def _export(path: str, project: "Project", *, listed: bool) -> "Export":
+def _export(path: str, project: "Project", job: Job) -> "Export":
     """One input, of the command line or as the project file lists it."""
     from rcrules.inventory import shown
-    from rcrules.readers import load, read
+    from rcrules.readers import Limits, load, read
 
-    source = load(path, named_in=f"[board] of {project.file}" if listed else None)
+    said = {**project.limits, **dict(job.limits)}
+    limits = Limits(**{name.replace("-", "_"): most for name, most in said.items()})
+    source = load(path, limits, named_in=None if job.inputs else f"[board] of {project.file}")
     return read(replace(source, name=shown(source.name)), project.columns)
 
 

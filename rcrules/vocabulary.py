@@ -91,6 +91,8 @@ DIELECTRIC_CODE: Final = re.compile(
     r"[XYZ][2456789][A-FLPRSTUV]|[CBLAMPRSTVU][0-3678][GHJKLMN]|2[BCDEFRX][12346]|NP[0O]|C[0O]G|CG[0O]|C[GHJ]|UJ|SL"
 )
 """Letter codes of ceramics: EIA-198 (classes 2 and 1), IEC 60384, and their common spellings, in capitals."""
+LIMITS: Final = ("file-size", "parts", "connections", "nets")
+"""What of one input is limited: its size in MiB, and what it lists."""
 NUMBER_CODES: Final[Mapping[str, tuple[str, ...]]] = {
     "value": ("digits", "letters", "three characters", "text"),
     "tolerance": ("letter", "text"),

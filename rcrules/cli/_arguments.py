@@ -5,6 +5,7 @@ from typing import Final
 
 from rcrules import __version__
 from rcrules.cli import _compare, _derive, _run, _start
+from rcrules.vocabulary import LIMITS
 
 _DESCRIPTION: Final = (
     "Finds the RC networks of a board, works out what each does in the worst case, and holds it against rules."
@@ -173,6 +174,14 @@ def _board_options(command: argparse.ArgumentParser) -> None:
     command.add_argument(
         "--jobs", type=_positive, default=1, metavar="N", help="boards worked on at a time (default: 1)"
     )
+    command.add_argument(
+        "--limit",
+        action="append",
+        type=_limit,
+        default=[],
+        metavar="NAME=N",
+        help=f"how much one input may hold, of {', '.join(LIMITS)} (file-size in MiB); repeatable; before [limits]",
+    )
 
 
 def _output_options(command: argparse.ArgumentParser) -> None:
@@ -231,6 +240,13 @@ def _natural(text: str) -> int:
     if not text.isdecimal() or len(text) > 9:
         raise argparse.ArgumentTypeError(f"expected a whole number of 0 or more, found {text!r}")
     return int(text)
+
+
+def _limit(text: str) -> tuple[str, int]:
+    name, _, number = text.partition("=")
+    if name not in LIMITS:
+        raise argparse.ArgumentTypeError(f"expected one of {', '.join(LIMITS)}, then = and a number, found {text!r}")
+    return name, _positive(number)
 
 
 def _positive(text: str) -> int:

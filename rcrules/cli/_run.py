@@ -136,6 +136,7 @@ def jobs_of(chosen: argparse.Namespace, *, with_rules: bool, derived: bool = Fal
             derived=derived,
             samples=getattr(chosen, "samples", 0),
             seed=getattr(chosen, "seed", 0),
+            limits=tuple(chosen.limit),
         )
         for project in projects
     ]

@@ -15,7 +15,7 @@ from rcrules.quantities import Spread
 from rcrules.tomlfile import Table, cut, root
 from rcrules.tomlfile import load as load_toml
 from rcrules.tomlfile import read as read_toml
-from rcrules.vocabulary import PART_KINDS
+from rcrules.vocabulary import LIMITS, PART_KINDS
 
 Facts = TypeVar("Facts")
 
@@ -23,7 +23,7 @@ FILE_NAME: Final = "rcrules.toml"
 MAX_GLOB: Final = 200
 """Characters of a name or glob."""
 _TABLES: Final = (
-    "board", "conditions", "supply", "ground", "net", "pin", "part", "defaults", "columns", "settings",
+    "board", "conditions", "supply", "ground", "net", "pin", "part", "defaults", "columns", "settings", "limits",
     "part-number", "codes",
 )  # fmt: skip
 _BOARD: Final = ("name", "netlist", "bom", "rules", "waivers", "part-numbers")
@@ -77,6 +77,7 @@ def _project(top: Table, folder: Path) -> Project:
         parts=_facts(top, "part", part_facts),
         defaults=_defaults(top),
         columns=_columns(top),
+        limits=_limits(top),
         part_numbers=patterns(top, board, folder),
         places=_places(top),
         **_settings(top),
@@ -192,6 +193,16 @@ def _columns(top: Table) -> dict[str, str]:
     columns = top.table("columns")
     texts = {key: columns.text(key) for key in columns.data} if columns else {}
     return {key: text for key, text in texts.items() if text is not None}
+
+
+def _limits(top: Table) -> dict[str, int]:
+    """What is read of one input, by name."""
+    limits = top.table("limits")
+    if limits is None:
+        return {}
+    limits.only(LIMITS)
+    counts = {key: limits.count(key) for key in LIMITS}
+    return {key: count for key, count in counts.items() if count is not None}
 
 
 def _settings(top: Table) -> dict[str, Any]:

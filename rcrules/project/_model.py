@@ -173,6 +173,8 @@ class Project:
     parts: Mapping[str, PartFacts] = field(default_factory=dict)
     defaults: Mapping[str, PartFacts] = field(default_factory=dict)
     columns: Mapping[str, str] = field(default_factory=dict)
+    limits: Mapping[str, int] = field(default_factory=dict)
+    """What is read of one input, by names of vocabulary.LIMITS."""
     part_numbers: tuple[NumberPattern, ...] = ()
     """Of the file, then of the files that ``[board] part-numbers`` names; the first that fits a text is taken."""
     settings: Mapping[str, Mapping[str, str | float]] = field(default_factory=dict)

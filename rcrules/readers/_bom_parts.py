@@ -7,7 +7,7 @@ from typing import Final
 
 from rcrules.errors import Place, UserMistake
 from rcrules.readers._bom_tables import Table
-from rcrules.readers._bounds import MAX_PARTS, named
+from rcrules.readers._bounds import named
 from rcrules.readers._export import Cell, ExportPart, Remark, Source
 from rcrules.readers._fitting import fitting
 from rcrules.readers._mistakes import refusal, shorten
@@ -88,8 +88,8 @@ class PartList:
             return
         self._check_quantity(table, row, refs, wanted)
         self._listed += len(refs)
-        if self._listed > MAX_PARTS:
-            raise self._too_many(row, f"more than {MAX_PARTS} references in all")
+        if self._listed > self._source.limits.parts:
+            raise self._too_many(row, f"more than {self._source.limits.parts} references in all")
         entry = self._part(table, row, refs[0])
         for ref in refs:
             named(self._source.name, row.line, "a reference", ref)
@@ -107,8 +107,8 @@ class PartList:
             "the rows stand for too many parts",
             line=row.line,
             found=found,
-            expected=f"at most {MAX_REFERENCES} references in a cell and {MAX_PARTS} in a file",
-            do="correct the ranges of references",
+            expected=f"at most {MAX_REFERENCES} references in a cell and {self._source.limits.parts} in a file",
+            do="correct the ranges of references; --limit parts=N allows more",
         )
 
     def _check_quantity(self, table: Table, row: Row, refs: tuple[str, ...], wanted: int | None) -> None:

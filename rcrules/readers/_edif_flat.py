@@ -60,7 +60,7 @@ class _Flat:
     def __init__(self, netlist: Netlist, libraries: Libraries) -> None:
         self._netlist, self._libraries = netlist, libraries
         self._file = netlist.source.name
-        self._joints = Joints(self._file)
+        self._joints = Joints(netlist.source)
         self._everywhere: dict[str, int] = {}
         self._parts: dict[str, Component] = {}
         self._pins: dict[tuple[int, str, str], tuple[str, str, int]] = {}
@@ -126,7 +126,13 @@ class _Flat:
         for index, member, net in slots:
             block.joins.setdefault((end.instance, index), []).append((end.port, member, net, end.line))
             self._ended += 1
-        _bounds.bound(self._file, end.line, "connections of all levels", self._ended, _WORK * _bounds.MAX_PINS)
+        _bounds.bound(
+            self._file,
+            end.line,
+            "connections of all levels",
+            self._ended,
+            _WORK * self._netlist.source.limits.connections,
+        )
 
     def _bits(self, end: End, nets: list[int], view: View | None) -> list[tuple[int, int]]:
         """Members of a port, each with its net; a whole array is joined member by member."""
@@ -140,7 +146,7 @@ class _Flat:
         instance, cell, view = placed
         for index in range(instance.name.width or 1):
             self._count += 1
-            _bounds.bound(self._file, instance.line, "parts", self._count, _bounds.MAX_PARTS)
+            _bounds.bound(self._file, instance.line, "parts", self._count, self._netlist.source.limits.parts)
             joins = block.joins.get((instance.name.key, index), [])
             own = instance.designator.strip()
             text = instance.name.member(index) if not own or "?" in own or instance.name.width else own

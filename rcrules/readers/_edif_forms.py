@@ -7,6 +7,7 @@ from rcrules.readers import _bounds
 from rcrules.readers._component import Entry
 from rcrules.readers._edif_model import MAX_WIDTH, Cell, End, Instance, Libraries, Name, Net, Port, View, key_of
 from rcrules.readers._edif_words import child, children, designator, named, number, number_form, said
+from rcrules.readers._export import Source
 from rcrules.readers._mistakes import refusal, shorten
 from rcrules.readers._sexpr import Form
 
@@ -18,8 +19,8 @@ CONTAINERS: Final = frozenset({"edif", "library", "external", "contents", "page"
 class Taker:
     """Takes each form as it ends: what stands in a cell waits for the cell, and a cell for its library."""
 
-    def __init__(self, file: str) -> None:
-        self._file = file
+    def __init__(self, source: Source) -> None:
+        self._source, self._file = source, source.name
         self.libraries = Libraries()
         self._ends: list[End] = []
         self._everywhere: list[str] = []
@@ -69,7 +70,7 @@ class Taker:
         key, index = (None, None) if instance is None else self._reference(instance)
         self._ends.append(End(port, port_index, key, index, form.line))
         self._pins += 1
-        _bounds.bound(self._file, form.line, "connections", self._pins, _LEVELS * _bounds.MAX_PINS)
+        _bounds.bound(self._file, form.line, "connections", self._pins, _LEVELS * self._source.limits.connections)
         return True
 
     def _global(self, _: str, form: Form) -> bool:
@@ -83,7 +84,7 @@ class Taker:
         self._nets.append(net)
         self._ends, self._everywhere = [], []
         self._net_count += net.name.width or 1
-        _bounds.bound(self._file, form.line, "nets", self._net_count, _LEVELS * _bounds.MAX_NETS)
+        _bounds.bound(self._file, form.line, "nets", self._net_count, _LEVELS * self._source.limits.nets)
         return True
 
     def _instance(self, around: str, form: Form) -> bool:
@@ -92,7 +93,7 @@ class Taker:
         view, cell, library = self._placed(form)
         name = self._name(form)
         self._parts += name.width or 1
-        _bounds.bound(self._file, form.line, "parts", self._parts, _bounds.MAX_PARTS)
+        _bounds.bound(self._file, form.line, "parts", self._parts, self._source.limits.parts)
         self._instances.append(
             Instance(
                 name=name,
@@ -131,7 +132,7 @@ class Taker:
         direction = child(form, "direction")
         name = self._name(form)
         self._port_count += 1
-        _bounds.bound(self._file, form.line, "ports", self._port_count, _bounds.MAX_PINS)
+        _bounds.bound(self._file, form.line, "ports", self._port_count, self._source.limits.connections)
         self._ports[name.key] = Port(
             name=name,
             direction=direction.first().casefold() if direction is not None else "",
@@ -165,7 +166,9 @@ class Taker:
         cell = Cell(name=self._name(form), line=form.line, views=self._views, entries=self._entries(form))
         self._cells.append(cell)
         self._views = []
-        _bounds.bound(self._file, form.line, "cells", len(self.libraries.cells) + len(self._cells), _bounds.MAX_PARTS)
+        _bounds.bound(
+            self._file, form.line, "cells", len(self.libraries.cells) + len(self._cells), self._source.limits.parts
+        )
         return True
 
     def _library(self, _: str, form: Form) -> bool:

@@ -4,6 +4,7 @@ from dataclasses import dataclass
 from typing import Final
 
 from rcrules.readers import _bounds
+from rcrules.readers._export import Source
 
 _WORK: Final = 4
 """Nets, before they are joined, for each one that a board may have."""
@@ -20,8 +21,8 @@ class _Seen:
 class Joints:
     """A set of nets that are joined two by two; the outermost name of joined nets stands."""
 
-    def __init__(self, file: str) -> None:
-        self._file = file
+    def __init__(self, source: Source) -> None:
+        self._source, self._file = source, source.name
         self._over: list[int] = []
         self._seen: list[_Seen] = []
 
@@ -29,7 +30,7 @@ class Joints:
         """A further net, with its level, the path of its block, its name and line. Raises UserMistake."""
         self._seen.append(_Seen(depth, path, text, line))
         self._over.append(len(self._over))
-        _bounds.bound(self._file, line, "nets of all levels", len(self._over), _WORK * _bounds.MAX_NETS)
+        _bounds.bound(self._file, line, "nets of all levels", len(self._over), _WORK * self._source.limits.nets)
         return len(self._over) - 1
 
     def find(self, net: int) -> int:

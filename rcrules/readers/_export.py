@@ -5,6 +5,7 @@ from dataclasses import dataclass, field
 from typing import Literal
 
 from rcrules.errors import Place
+from rcrules.readers._bounds import USUAL, Limits
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -14,6 +15,7 @@ class Source:
     name: str
     """Path as given (relative), or '<stdin>'."""
     data: bytes
+    limits: Limits = USUAL
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

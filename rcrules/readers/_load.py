@@ -2,25 +2,23 @@
 
 import sys
 from pathlib import Path
-from typing import Final
 
+from rcrules.readers._bounds import USUAL, Limits
 from rcrules.readers._export import Source
 from rcrules.readers._mistakes import refusal
 
-SIZE_LIMIT: Final = 64 * 2**20
-"""Bytes of the largest input that is read, unless the caller says otherwise."""
 
-
-def load(path: str, size_limit: int = SIZE_LIMIT, named_in: str | None = None) -> Source:
+def load(path: str, limits: Limits = USUAL, named_in: str | None = None) -> Source:
     """The bytes of a file, or of standard input for ``-``. Raises UserMistake, which says where the path is named."""
+    most = limits.file_size * 2**20
     do = f"check the path in {named_in}" if named_in else "check the path"
     if path == "-":
-        return _whole("<stdin>", sys.stdin.buffer.read(size_limit + 1), size_limit)
+        return _whole("<stdin>", sys.stdin.buffer.read(most + 1), limits)
     if not path:
         raise refusal("command line", "an input without a name", expected="a file, or -", do="check the quotes")
     try:
         with Path(path).open("rb") as file:
-            return _whole(path, file.read(size_limit + 1), size_limit)
+            return _whole(path, file.read(most + 1), limits)
     except FileNotFoundError as error:
         raise refusal(path, "no such file", expected=None, do=do) from error
     except (OSError, ValueError) as error:
@@ -28,13 +26,13 @@ def load(path: str, size_limit: int = SIZE_LIMIT, named_in: str | None = None) -
         raise refusal(path, "the file cannot be read", found=reason, expected=None, do=do) from error
 
 
-def _whole(name: str, data: bytes, size_limit: int) -> Source:
-    if len(data) > size_limit:
+def _whole(name: str, data: bytes, limits: Limits) -> Source:
+    if len(data) > limits.file_size * 2**20:
         raise refusal(
             name,
             "the file is too large",
-            found=f"more than {size_limit / 2**20:.3g} MiB",
+            found=f"more than {limits.file_size} MiB",
             expected="a netlist or BOM of one board",
-            do="check that this is the file you mean",
+            do="check that this is the file you mean; --limit file-size=N allows more MiB",
         )
-    return Source(name=name, data=data)
+    return Source(name=name, data=data, limits=limits)

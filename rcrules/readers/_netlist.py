@@ -49,7 +49,7 @@ class Netlist:
     def add_component(self, component: Component) -> None:
         """Keep a component; of two with the same reference the first stands."""
         self._listed += 1
-        _bounds.bound(self.source.name, component.line, "parts", self._listed, _bounds.MAX_PARTS)
+        _bounds.bound(self.source.name, component.line, "parts", self._listed, self.source.limits.parts)
         refuse_long(self.source.name, component)
         first = self._components.setdefault(component.ref, component)
         if first is component:
@@ -80,12 +80,12 @@ class Netlist:
             for what, text in (("a reference", ref), ("a pin number", number), ("a pin name", name)):
                 _bounds.named(self.source.name, line, what, text)
         self._ended += 1
-        _bounds.bound(self.source.name, line, "connections", self._ended, _bounds.MAX_PINS)
+        _bounds.bound(self.source.name, line, "connections", self._ended, self.source.limits.connections)
 
     def add_net(self, name: str, code: str, line: int) -> None:
         """Keep a net with the connections added before it; nets without a name are told apart by their code."""
         _bounds.named(self.source.name, line, "a net name", name or code)
-        _bounds.bound(self.source.name, line, "nets", len(self._nets) + 1, _bounds.MAX_NETS)
+        _bounds.bound(self.source.name, line, "nets", len(self._nets) + 1, self.source.limits.nets)
         key = name or f"#{code or len(self._nets) + 1}"
         if key in self._nets:
             if name:
@@ -216,7 +216,7 @@ class Netlist:
         for ref, _, _, _, line in (*(node for _, node in self._nodes), *self._open):
             if ref not in told:
                 told.add(ref)
-                _bounds.bound(self.source.name, line, "parts", len(told), _bounds.MAX_PARTS)
+                _bounds.bound(self.source.name, line, "parts", len(told), self.source.limits.parts)
                 self.remark(line, f"{ref} stands in the nets but not in the list of components")
 
 

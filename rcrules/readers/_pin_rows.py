@@ -86,9 +86,9 @@ class PinRows:
         """Raise UserMistake where a name is endless or there is more of everything than on any board."""
         file = self._source.name
         _bounds.named(file, row.line, what, text)
-        _bounds.bound(file, row.line, "connections", self._ended, _bounds.MAX_PINS)
-        _bounds.bound(file, row.line, "parts", len(self._parts), _bounds.MAX_PARTS)
-        _bounds.bound(file, row.line, "nets", len(self._nets), _bounds.MAX_NETS)
+        _bounds.bound(file, row.line, "connections", self._ended, self._source.limits.connections)
+        _bounds.bound(file, row.line, "parts", len(self._parts), self._source.limits.parts)
+        _bounds.bound(file, row.line, "nets", len(self._nets), self._source.limits.nets)
 
     def _ends(self, row: Row) -> list[tuple[str, str]]:
         """Part and pin of each connection of a row."""

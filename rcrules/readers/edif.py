@@ -25,7 +25,7 @@ def read(source: Source, columns: Mapping[str, str]) -> Export:
     """Read the libraries form by form, then walk from the design's cell down. Raises UserMistake."""
     del columns  # a netlist has none
     text, remarks = decode(source)
-    taker = Taker(source.name)
+    taker = Taker(source)
     parse(source.name, text, taker.take, CONTAINERS, PLAIN_TOKEN, text_of, folded=True)
     if taker.version is None:
         raise refusal(

@@ -45,7 +45,7 @@ def read(source: Source, columns: Mapping[str, str]) -> Export:
                 elements.line(element),
                 _COUNTED.get(tag, f"elements <{tag}>"),
                 counts[tag],
-                _bounds.MAX_PARTS,
+                source.limits.parts,
             )
         _Board.TAKEN[tag](board, element)
     return join(source, NAME, board.contents)
@@ -90,7 +90,7 @@ class _Board:
         if bom is not None:
             bom.items.append(item_of(element, self._line))
             self._listed += len(bom.items[-1].places)
-            _bounds.bound(self._source.name, bom.items[-1].line, "parts", self._listed, _bounds.MAX_PARTS)
+            _bounds.bound(self._source.name, bom.items[-1].line, "parts", self._listed, self._source.limits.parts)
 
     def _take_component(self, element: _Element) -> None:
         ref, step = element.get("refDes", "").strip(), self._step(element)
@@ -102,7 +102,7 @@ class _Board:
             if local(child) in ("NonstandardAttribute", "Attribute"):
                 component.fields.append((child.get("name", ""), child.get("value", ""), self._line(child)))
         step.components.setdefault(ref, component)
-        _bounds.bound(self._source.name, component.line, "parts", len(step.components), _bounds.MAX_PARTS)
+        _bounds.bound(self._source.name, component.line, "parts", len(step.components), self._source.limits.parts)
 
     def _take_pin(self, element: _Element) -> None:
         """A pin of a logical net, or of a pad in a set of features on a net."""
@@ -118,7 +118,7 @@ class _Board:
             return
         line = self._line(element)
         ends.setdefault((net, ref, pin), line)
-        _bounds.bound(self._source.name, line, "connections", len(ends), _bounds.MAX_PINS)
+        _bounds.bound(self._source.name, line, "connections", len(ends), self._source.limits.connections)
 
     def _home_of(self, element: _Element) -> Home | None:
         """Net, connections to add to, and whether they are those of logical nets; None for a pin on no named net."""
@@ -133,7 +133,7 @@ class _Board:
         step = self._step(element)
         if step is not None:
             step.nets.setdefault(element.get("name", "").strip(), self._line(element))
-            _bounds.bound(self._source.name, self._line(element), "nets", len(step.nets), _bounds.MAX_NETS)
+            _bounds.bound(self._source.name, self._line(element), "nets", len(step.nets), self._source.limits.nets)
 
     def _take_package(self, element: _Element) -> None:
         pins = ((child.get("number", ""), child.get("name", "")) for child in element if local(child) == "Pin")

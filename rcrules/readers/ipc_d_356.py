@@ -94,10 +94,10 @@ class _Points:
                 return
             self._refs.setdefault(ref, line)
             self._ends.setdefault((net, ref, pin), line)
-            _bounds.bound(self._source.name, line, "connections", len(self._ends), _bounds.MAX_PINS)
+            _bounds.bound(self._source.name, line, "connections", len(self._ends), self._source.limits.connections)
         if net:
             self._nets.setdefault(net, line)
-            _bounds.bound(self._source.name, line, "nets", len(self._nets), _bounds.MAX_NETS)
+            _bounds.bound(self._source.name, line, "nets", len(self._nets), self._source.limits.nets)
 
     def export(self, assumed: tuple[Remark, ...]) -> Export:
         """Everything as an export. Raises UserMistake where no record names a part."""

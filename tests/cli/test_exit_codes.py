@@ -179,3 +179,16 @@ def test_settings_of_a_rule_that_is_not_applied_are_remarked(board: Path, capsys
     assert "is of no rule applied here; did you mean 'reset-slow-enough'?" in capsys.readouterr().out
     assert main(["check", "--rules", "debounce"]) == 0
     assert "of no rule applied here" not in capsys.readouterr().out
+
+
+def test_limits_come_from_the_command_line_before_those_of_the_project(
+    board: Path, capsys: pytest.CaptureFixture[str]
+) -> None:
+    file = board / "rcrules.toml"
+    file.write_text(file.read_text() + "\n[limits]\nparts = 2\n")
+    assert main(["check"]) == 2
+    assert "too many parts" in capsys.readouterr().err
+    assert main(["check", "--limit", "parts=5", "--limit", "nets=9"]) == 0
+    with pytest.raises(SystemExit):
+        main(["check", "--limit", "pins=5"])
+    assert "expected one of file-size, parts, connections, nets" in capsys.readouterr().err

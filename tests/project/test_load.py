@@ -141,3 +141,7 @@ def test_a_diode_has_a_forward_drop_a_resistance_and_a_breakdown():
     assert found.parts["D1"].forward == spread(0.3, 0.8, "V")
     assert found.parts["D1"].on_resistance == spread(0.1, 10.0, "Ω")
     assert found.defaults["diode"].breakdown == spread(5.6, 5.6, "V")
+
+
+def test_limits_of_inputs_are_whole_numbers_by_name():
+    assert load("[limits]\nparts = 200000\nfile-size = 100").limits == {"parts": 200_000, "file-size": 100}

@@ -3,7 +3,7 @@
 import pytest
 
 from rcrules.errors import Mistake
-from rcrules.readers import Source, _bounds, _table, read
+from rcrules.readers import Limits, Source, _table, read
 from tests.readers.test_hostile import refused
 
 XML = "<export><components>{parts}</components><nets>{nets}</nets></export>"
@@ -16,10 +16,8 @@ EDIF = """(edif A (edifVersion 2 0 0) (library L (cell C (view N
 LONG = "R" * 1_000_000 + "1"
 
 
-def few(monkeypatch: pytest.MonkeyPatch) -> None:
-    """Bounds that a short file passes."""
-    for name in ("MAX_PARTS", "MAX_PINS", "MAX_NETS"):
-        monkeypatch.setattr(_bounds, name, 3)
+FEW = Limits(parts=3, connections=3, nets=3)
+"""Limits that a short file passes."""
 
 
 def nodes(count: int) -> str:
@@ -50,16 +48,21 @@ def nets(count: int) -> str:
         (EDIF.format("", "(port A)\n" * 4), "ports", 5),
     ],
 )
-def test_more_than_a_board_holds_is_refused(monkeypatch: pytest.MonkeyPatch, data: str, what: str, line: int) -> None:
-    few(monkeypatch)
-    mistake = refused(data)
+def test_more_than_a_board_holds_is_refused(data: str, what: str, line: int) -> None:
+    mistake = refused(data, limits=FEW)
     assert (mistake.problem, mistake.place.line) == (f"the file holds too many {what}", line)
     assert mistake.expected == f"at most 3 {what}"
 
 
-def test_parts_that_only_stand_in_nets_count_too(monkeypatch: pytest.MonkeyPatch) -> None:
-    monkeypatch.setattr(_bounds, "MAX_PARTS", 3)
-    assert refused(XML.format(parts="", nets=f'<net name="A">{nodes(4)}</net>')).problem.endswith("parts")
+def test_parts_that_only_stand_in_nets_count_too() -> None:
+    whole = XML.format(parts="", nets=f'<net name="A">{nodes(4)}</net>')
+    assert refused(whole, limits=Limits(parts=3)).problem.endswith("parts")
+
+
+def test_a_limit_that_is_raised_lets_more_pass_and_the_message_says_how() -> None:
+    parts = XML.format(parts='<comp ref="R1"/>' * 4, nets="")
+    assert (refused(parts, limits=FEW).do or "").endswith("--limit parts=N allows more")
+    assert len(read(Source(name="a", data=parts.encode(), limits=Limits(parts=4))).parts) == 1
 
 
 def test_a_part_with_fields_without_end_is_refused() -> None:

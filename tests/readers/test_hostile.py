@@ -6,16 +6,17 @@ import pytest
 
 from rcrules import readers
 from rcrules.errors import Mistake, UserMistake
-from rcrules.readers import Source
+from rcrules.readers import Limits, Source
 from tests.work import Work
 
+DEFAULTS = Limits()
 MOST_CALLS = 10_000_000
 """About five seconds' work."""
 
 
-def refused(data: bytes | str, name: str = "board.net") -> Mistake:
+def refused(data: bytes | str, name: str = "board.net", limits: Limits = DEFAULTS) -> Mistake:
     """The one mistake of a source, found with bounded work."""
-    source = Source(name=name, data=data.encode() if isinstance(data, str) else data)
+    source = Source(name=name, data=data.encode() if isinstance(data, str) else data, limits=limits)
     with Work() as work, pytest.raises(UserMistake) as caught:
         readers.read(source)
     assert work.calls < MOST_CALLS
@@ -172,9 +173,9 @@ def test_remarks_without_end_are_counted() -> None:
 
 def test_a_file_over_the_limit_is_refused_unread(tmp_path: Path) -> None:
     path = tmp_path / "large.xml"
-    path.write_bytes(b"x" * 101)
+    path.write_bytes(b"x" * (2**20 + 1))
     with pytest.raises(UserMistake, match="the file is too large"):
-        readers.load(str(path), size_limit=100)
+        readers.load(str(path), Limits(file_size=1))
 
 
 def test_a_file_that_cannot_be_opened_is_a_mistake_of_the_user(tmp_path: Path) -> None:
