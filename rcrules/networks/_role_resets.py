@@ -5,6 +5,7 @@ from rcrules.networks._family import inverting
 from rcrules.networks._fed import family_of, feeding, kind_fed, kinds, words_of
 from rcrules.networks._fed_words import BUTTON
 from rcrules.networks._held_names import hint
+from rcrules.networks._named import Facts
 from rcrules.networks._role import Judged
 from rcrules.networks._role_feedback import unit
 from rcrules.networks._role_lines import on_bus
@@ -43,7 +44,7 @@ def supply_filter(view: View, here: Spot) -> Judged | None:
 
 def power_on_delay(view: View, here: Spot) -> Judged | None:
     """A resistor to one rail, a capacitor to the other, and inputs that wait for it."""
-    rails = {arm.to for arm in here.resistors if arm.fixed}
+    rails = {arm.to for arm in here.resistors if arm.fixed} | pulled(view, here)
     others = {arm.to for arm in here.capacitors if arm.fixed}
     if len(rails) != 1 or not others - rails or any(arm.to == "driven" for arm in here.resistors):
         return None
@@ -60,6 +61,15 @@ def power_on_delay(view: View, here: Spot) -> Judged | None:
     if driver is not None and "reset" not in fed:
         return Judged(role="low-pass", sure=False, why=(f"{driver} pulls the net, the resistor is its pull-up",))
     return Judged(role="power-on-delay", sure=driver is None and fed != ["other"], why=_waits(fed, driver))
+
+
+def pulled(view: View, here: Spot) -> set[str]:
+    """Kinds of the rails to which pulls inside pins lead, as the project file gives them."""
+    facts = Facts(project=view.draft.project)
+    found = [said for pin in here.pins if view.draft.project.pins and (said := facts.pin(pin)) is not None]
+    nets = [pull[1] for said in found for pull in (said.pull_up, said.pull_down) if pull is not None]
+    held = [view.draft.held_joint(view.draft.joints.get(net, net)) for net in nets]
+    return {item.kind for item in held if item is not None and item.kind != "driven"}
 
 
 def _compared(view: View, here: Spot) -> Judged | None:

@@ -15,7 +15,7 @@ from rcrules.networks._role_filters import divider, high_pass, low_pass
 from rcrules.networks._role_lines import bias, bus_pull_up, sense_shunt, termination
 from rcrules.networks._role_pairs import bridged
 from rcrules.networks._role_parts import FAR, Ways, ways
-from rcrules.networks._role_resets import power_on_delay, supply_filter
+from rcrules.networks._role_resets import power_on_delay, pulled, supply_filter
 from rcrules.networks._role_switching import debounce, snubber
 from rcrules.networks._role_words import arms_text, fed_text
 from rcrules.networks._spot import Spot, View
@@ -65,11 +65,11 @@ def bridged_nodes(draft: Draft) -> tuple[Node, ...]:
 
 
 def _is_node(view: View, here: Spot) -> bool:
-    """A resistor and a capacitor (or wiring of a capacitance that the project gives) at the joint.
+    """A resistor (or a pull inside a pin, given) and a capacitor (or wiring of a capacitance, given) at the joint.
 
     Or a feedback resistor with its capacitor behind a small one.
     """
-    if not here.resistors:
+    if not here.resistors and not pulled(view, here):
         return False
     if here.capacitors or _wired(view.draft, here.joint):
         return True

@@ -1,3 +1,4 @@
+from tests.events.boards import bench
 from tests.networks.drafts import nodes
 
 
@@ -82,3 +83,17 @@ def test_filter_of_a_bias_that_feeds_further_resistors_is_a_supply_filter():
 def test_milliohms_in_a_supply_are_a_shunt():
     node = nodes("R1 10m +5V N\nC1 10u N GND\nU1 VDD:power-in=N", hold={"N": "supply"}, local=["N"])["N"]
     assert (node.role, node.certainty) == ("sense-shunt", "unsure")
+
+
+def test_a_pull_up_inside_the_pin_delays_with_a_capacitor_alone():
+    """A controller's reset with the recommended capacitor and no resistor of its own; the project tells the pull-up."""
+    nets = """
+        VCC: U2.1/VO/power_out U1.1/VCC/power_in
+        NRST: C1.1 U1.7/NRST/input
+        GND: U2.2/GND/power_in C1.2 U1.2/GND/power_in
+    """
+    parts = "C1 100n, U1 QX7301, U2 QX5000"
+    pull = '[pin."U1.NRST"]\npull-up = "30 kohm .. 60 kohm to VCC"\n'
+    (node,) = [node for network in bench(parts, nets, pull).board.networks for node in network.nodes]
+    assert (node.net, node.role, node.parts, node.feeds) == ("NRST", "power-on-delay", ("C1",), ("U1.NRST",))
+    assert not [node for network in bench(parts, nets).board.networks for node in network.nodes]
