@@ -59,7 +59,7 @@ def sense_shunt(view: View, here: Spot) -> Judged | None:
 def bias(_view: View, here: Spot) -> Judged | None:
     """Resistor and capacitor side by side at a pin that says nothing: no time can be told."""
     far = _side_by_side(here)
-    if far is None:
+    if far is None or not here.resistors:
         return None
     return Judged(role="other", sure=False, why=(f"resistor and capacitor side by side to {far}, no source seen",))
 
