@@ -6,6 +6,8 @@ from typing import TypeVar
 from rcrules.design import natural
 from rcrules.networks._draft import Draft, RawNetwork
 from rcrules.networks._model import Branch, Contact, Diode
+from rcrules.networks._series import follow
+from rcrules.networks._spot import is_plain
 
 Item = TypeVar("Item", Contact, Diode)
 
@@ -39,12 +41,19 @@ def _network(draft: Draft, free: list[str]) -> RawNetwork:
 
 def _local(draft: Draft, joint: str) -> RawNetwork:
     """A local supply as its source sees it: the resistors that feed it and its capacitors to held nets."""
-    feeding = [item for item in draft.branches_at(joint) if _belongs(draft, joint, item)]
-    return _assembled(draft, [joint], feeding)
+    chains = [_chain(draft, item, joint) for item in draft.branches_at(joint)]
+    feeding = [chain for chain, far in chains if _belongs(draft, chain[0], far)]
+    between = {end for chain in feeding for item in chain for end in (item.a, item.b) if not draft.held_joint(end)}
+    return _assembled(draft, [joint, *sorted(between, key=natural)], [item for chain in feeding for item in chain])
 
 
-def _belongs(draft: Draft, joint: str, item: Branch) -> bool:
-    far = draft.held_joint(item.b if item.a == joint else item.a)
+def _chain(draft: Draft, item: Branch, joint: str) -> tuple[tuple[Branch, ...], str]:
+    """A branch, or resistors in series, from a joint on, and the joint where they end."""
+    return follow(item, joint, draft.branches_at, lambda at: is_plain(draft, at))
+
+
+def _belongs(draft: Draft, item: Branch, end: str) -> bool:
+    far = draft.held_joint(end)
     return far is not None and (item.kind == "capacitor" or far.kind == "supply")
 
 

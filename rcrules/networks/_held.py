@@ -18,7 +18,7 @@ from rcrules.networks._held_regulator import divided
 from rcrules.networks._held_verdict import Verdict, Verdicts, keys
 from rcrules.networks._held_voltage import volts_here
 from rcrules.networks._passing import passed
-from rcrules.networks._scene import Scene
+from rcrules.networks._scene import Resistance, Scene
 from rcrules.parts import Known
 
 FILTER_OHMS: Final = 100.0
@@ -92,7 +92,7 @@ def _own_supply(scene: Scene, joint: str, verdicts: Verdicts) -> tuple[Pin, ...]
     pins = [pin for pin in scene.pins[joint] if scene.kind(pin.ref) not in ("capacitor", "test-point")]
     if len(pins) != 1 or scene.kind(pins[0].ref) not in ("ic", "other") or scene.says(joint, say.NEVER, say.SWITCH):
         return ()
-    to_ground = any(_is(verdicts, far, "ground") for _, far in scene.far_ends(joint, "capacitor"))
+    to_ground = any(_is(verdicts, far, "ground") for _, far in scene.capacitors(joint))
     return tuple(pins) if to_ground and _INTERNAL.fullmatch(pins[0].name.upper()) else ()
 
 
@@ -103,7 +103,7 @@ def _named_supply(scene: Scene, joint: str, _: Verdicts) -> Verdict | None:
     backed = scene.says(joint, say.SUPPLY) or scene.says(joint, say.NEGATIVE)
     outside = scene.of_kind(joint, "connector", "diode", "transistor", "transformer", "battery", "other")
     quiet = scene.of_kind(joint, "ic") and (
-        not scene.far_ends(joint, "resistor") or len(scene.far_ends(joint, "capacitor")) >= MANY_CAPACITORS
+        not scene.resistors(joint) or len(scene.capacitors(joint)) >= MANY_CAPACITORS
     )
     if not (hints[0].strong or backed or outside or quiet):
         return None
@@ -127,12 +127,8 @@ def _local(scene: Scene, joint: str, verdicts: Verdicts) -> Verdict | None:
     """A supply pin or a name of a supply with a capacitor to ground, fed through one small resistor."""
     pins = scene.says(joint, say.SUPPLY, say.NEGATIVE)
     named = any(named.kind == "supply" and named.strong for named in scene.hints(joint))
-    feeds = [
-        far
-        for item, far in scene.far_ends(joint, "resistor")
-        if _is_small(scene, item.ref) and _is(verdicts, far, "supply")
-    ]
-    to_ground = any(_is(verdicts, far, "ground") for _, far in scene.far_ends(joint, "capacitor"))
+    feeds = [item.far for item in scene.resistors(joint) if _is_small(item) and _is(verdicts, item.far, "supply")]
+    to_ground = any(_is(verdicts, far, "ground") for _, far in scene.capacitors(joint))
     if not (pins or named) or len(set(feeds)) != 1 or not to_ground:
         return None
     source = verdicts[feeds[0]]
@@ -154,7 +150,7 @@ def _left_over(scene: Scene, joint: str, verdicts: Verdicts) -> Verdict | None:
     if _is_smoothed(scene, joint, verdicts):
         return _supply(scene, joint, ("a chip's net with many capacitors to ground",), sure=False)
     pins = scene.says(joint, say.SUPPLY)
-    resistors = scene.far_ends(joint, "resistor")
+    resistors = scene.resistors(joint)
     return (
         _supply(scene, joint, keys(pins), sure=False)
         if pins and not resistors and joint not in scene.switching
@@ -165,11 +161,9 @@ def _left_over(scene: Scene, joint: str, verdicts: Verdicts) -> Verdict | None:
 def _is_smoothed(scene: Scene, joint: str, verdicts: Verdicts) -> bool:
     """Many capacitors to ground at a chip whose pins say nothing, one of them large, and no resistor from a supply."""
     chips = scene.of_kind(joint, "ic")
-    values = [
-        scene.parts[item.ref].value for item, far in scene.far_ends(joint, "capacitor") if _is(verdicts, far, "ground")
-    ]
+    values = [scene.parts[item.ref].value for item, far in scene.capacitors(joint) if _is(verdicts, far, "ground")]
     bulk = any(isinstance(value, Known) and value.si >= BULK_FARADS for value in values)
-    fed = any(_is(verdicts, far, "supply") for _, far in scene.far_ends(joint, "resistor"))
+    fed = any(_is(verdicts, item.far, "supply") for item in scene.resistors(joint))
     silent = bool(chips) and not any(pin.name for pin in chips)
     return silent and bulk and len(values) >= MANY_CAPACITORS and not fed and joint not in scene.switching
 
@@ -178,15 +172,15 @@ def only_fed_by_resistors(scene: Scene, joint: str) -> bool:
     """Whether a resistor from a supply feeds the joint and nothing else does, as far as pins and names tell."""
     if scene.says(joint, say.SOURCE) or scene.of_kind(joint, "battery", "transformer"):
         return False
-    feeding = [(item, far) for item, far in scene.far_ends(joint, "resistor") if _is_above(scene, far, joint)]
-    filtered = any(_is_small(scene, item.ref) and scene.says(far, say.SOURCE) for item, far in feeding)
+    feeding = [item for item in scene.resistors(joint) if _is_above(scene, item.far, joint)]
+    filtered = any(_is_small(item) and scene.says(item.far, say.SOURCE) for item in feeding)
     if _brings_power(scene, joint) and not filtered:
         return False
     if not feeding or len({pin.ref for pin in scene.says(joint, say.SUPPLY)}) >= MANY_PARTS:
         return False
     blocked = any(item.cathode == joint for item in scene.diodes.get(joint, ()))
     active = blocked or bool(scene.coils.get(joint)) or bool(scene.of_kind(joint, "transistor"))
-    return not active or any(_is_small(scene, item.ref) for item, _ in feeding)
+    return not active or any(map(_is_small, feeding))
 
 
 def _brings_power(scene: Scene, joint: str) -> bool:
@@ -221,9 +215,8 @@ def _supply(scene: Scene, joint: str, evidence: tuple[str, ...], *, sure: bool) 
     return Verdict(kind="supply", spread=volts, evidence=(*evidence, *_given(why)), sure=sure)
 
 
-def _is_small(scene: Scene, ref: str) -> bool:
-    value = scene.parts[ref].value
-    return isinstance(value, Known) and value.si <= FILTER_OHMS
+def _is_small(item: Resistance) -> bool:
+    return item.ohms is not None and item.ohms <= FILTER_OHMS
 
 
 def _is(verdicts: Verdicts, joint: str, kind: str) -> bool:

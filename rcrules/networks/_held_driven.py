@@ -7,7 +7,6 @@ from rcrules.networks import _held_claims as say
 from rcrules.networks._held_verdict import Verdict, Verdicts, keys
 from rcrules.networks._held_ways import drives_filter, is_led_out
 from rcrules.networks._scene import Scene
-from rcrules.parts import Known
 
 _BUS_LINES: Final = frozenset(("SDA", "SCL", "SMBDAT", "SMBCLK", "ALERT", "ONEWIRE"))
 """Shared open-drain lines: free, their rise is the pull-up's."""
@@ -38,7 +37,7 @@ def _output(scene: Scene, joint: str) -> Verdict | None:
     outputs = (*switch, *scene.says(joint, say.OUTPUT))
     if not outputs:
         return None
-    waits = bool(scene.far_ends(joint, "capacitor")) and bool(scene.far_ends(joint, "resistor"))
+    waits = bool(scene.capacitors(joint)) and bool(scene.resistors(joint))
     if waits and (scene.contacts.get(joint) or all(_is_controller(scene, pin.ref) for pin in outputs)):
         return None
     return Verdict(
@@ -49,9 +48,9 @@ def _output(scene: Scene, joint: str) -> Verdict | None:
 def _between_chips(scene: Scene, joint: str) -> Verdict | None:
     """A net between chips whose pins have no types, with small resistors alone: one of the chips drives the line."""
     pins = [pin for pin in scene.of_kind(joint, "ic") if pin.type == ""]
-    resistors = [scene.parts[item.ref].value for item, _ in scene.far_ends(joint, "resistor")]
-    lines = bool(resistors) and all(isinstance(value, Known) and value.si <= _LINE_OHMS for value in resistors)
-    if len({pin.ref for pin in pins}) < 2 or not lines or scene.far_ends(joint, "capacitor"):
+    resistors = scene.resistors(joint)
+    lines = bool(resistors) and all(item.ohms is not None and item.ohms <= _LINE_OHMS for item in resistors)
+    if len({pin.ref for pin in pins}) < 2 or not lines or scene.capacitors(joint):
         return None
     return Verdict(kind="driven", evidence=("line between chips", *keys(pins)), sure=False)
 
@@ -60,7 +59,7 @@ def _open_drain(scene: Scene, joint: str) -> Verdict | None:
     """An open-drain output holds a net that no capacitor slows and that is no shared bus."""
     pins = scene.says(joint, say.OPEN)
     bus = _is_bus(scene, joint)
-    if not pins or bus or scene.far_ends(joint, "capacitor") or _asked(scene, joint):
+    if not pins or bus or scene.capacitors(joint) or _asked(scene, joint):
         return None
     return Verdict(kind="driven", evidence=(f"open-drain {keys(pins)[0]}",), sure=False)
 
@@ -95,8 +94,8 @@ def _connector(scene: Scene, joint: str, verdicts: Verdicts) -> Verdict | None:
         or _asked(scene, joint)
     ):
         return None
-    capacitors = scene.far_ends(joint, "capacitor")
-    sources = [far for _, far in scene.far_ends(joint, "resistor") if _feeds(scene, far, verdicts)]
+    capacitors = scene.capacitors(joint)
+    sources = [item.far for item in scene.resistors(joint) if _feeds(scene, item.far, verdicts)]
     coupled = [far for _, far in capacitors if _feeds(scene, far, verdicts) and not _is_supply(verdicts, far)]
     if (capacitors and sources) or coupled or is_led_out(scene, joint, verdicts):
         return None

@@ -5,7 +5,6 @@ from typing import Final
 from rcrules.networks import _held_claims as say
 from rcrules.networks._held_verdict import Verdict, Verdicts, keys
 from rcrules.networks._scene import Scene
-from rcrules.parts import Known
 
 SHUNT_OHMS: Final = 10.0
 """Below, a resistor in a ground lead measures its current."""
@@ -37,8 +36,7 @@ def ground(scene: Scene, joint: str, _: Verdicts) -> Verdict | None:
 
 def _is_lifted(scene: Scene, joint: str) -> bool:
     """A single ground pin on resistors that are no shunts: an adjustable regulator's, lifted by a divider."""
-    values = [scene.parts[item.ref].value for item, _ in scene.far_ends(joint, "resistor")]
-    return any(isinstance(value, Known) and value.si >= SHUNT_OHMS for value in values)
+    return any(item.ohms is not None and item.ohms >= SHUNT_OHMS for item in scene.resistors(joint))
 
 
 def _bonded(scene: Scene, joint: str) -> bool:
@@ -51,7 +49,7 @@ def only_ground(scene: Scene, verdicts: Verdicts) -> Verdicts:
     """On a board without any ground so far, the net that most capacitors share, if it is far ahead of all others."""
     if any(verdict.kind == "ground" for verdict in verdicts.values()):
         return {}
-    counts = sorted(((len(scene.far_ends(joint, "capacitor")), joint) for joint in scene.members), reverse=True)
+    counts = sorted(((len(scene.capacitors(joint)), joint) for joint in scene.members), reverse=True)
     ahead = len(counts) > 1 and counts[0][0] >= max(_LEAST_CAPACITORS, 2 * counts[1][0])
     if not ahead or counts[0][1] in verdicts:
         return {}

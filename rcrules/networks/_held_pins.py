@@ -6,6 +6,7 @@ from functools import lru_cache
 from typing import Final
 
 from rcrules.design import Pin
+from rcrules.networks._family import inverting
 from rcrules.networks._held_claims import GROUND, NEGATIVE, NEVER, NOTHING, OPEN, OUTPUT, SOURCE, SUPPLY, SWITCH
 from rcrules.networks._held_pin_words import NAMES
 from rcrules.networks._links import words
@@ -13,7 +14,7 @@ from rcrules.parts import RatedPart
 
 _MARKS: Final = re.compile(r"[~{}\\\s#*]|_?\d+$")
 _OPEN_NAMES: Final = re.compile(r"N?INT|IRQ|ALERT|P?GOOD|PG|FAULT|FLA?G|FLT|SDA|SCL|OD|OC|ALARM|RDY|BUSY")
-_LOGIC_OUT: Final = re.compile(r"[A-D1-8]?(OUT|Y|Q)[A-D1-8]?|V?O|OUT[+\-PNAB]?|[A-Z]?DOUT|[TR]OUT|RO|TXOUT")
+_LOGIC_OUT: Final = re.compile(r"[A-D1-8]?(OUT|Y|Q)[A-D1-8]?|V?O|OUT[+\-PNAB]?|[A-Z]?DOUT|[TR]OUT|RO|TXOUT|DTR|RTS")
 _CONVERTER_OUT: Final = re.compile(r"[AI]OUT[A-Z]{0,2}\d{0,2}[PNLR+\-]?")
 """Outputs of digital-to-analog converters, by channel, side and sign; no pin of such a name takes a voltage in."""
 _ANALOG_OUT: Final = re.compile(r"VOUT[+\-A-D]?|VOUT_?[A-D1-8]")
@@ -50,6 +51,7 @@ _PINOUTS: Final = (
     (re.compile(r"(?<!\d)(?:324|2902|0[678]4)(?!\d)"), 14, frozenset(("1", "7", "8", "14")), OUTPUT),
 )
 """Type numbers of the trade, number of pins, their outputs and what these are: dual and quad comparator, amplifier."""
+_SEVERAL_OUTPUTS: Final = frozenset(("1", "7", "8", "14"))
 _POWERED: Final = ("power-in", "power-out")
 _CONNECTOR_NAMES: Final = frozenset((GROUND, SUPPLY))
 _MODULE_PINS: Final = 4
@@ -123,9 +125,9 @@ def _of_chip(pin: Pin, *, regulator: bool) -> str:
 
 
 def outputs_by_position(part: RatedPart) -> Mapping[str, str]:
-    """Number -> claim of the outputs of an amplifier or comparator without pin names.
+    """Number -> claim of the outputs of an amplifier or comparator whose outputs have no pin names.
 
-    By the type number, else by where the supply pins are.
+    By the type number, else what is left beside named inputs, else by where the supply pins are.
     """
     pins = {pin.number: pin.name.upper() for pin in part.part.pins}
     nameless = {number for number, name in pins.items() if name.strip("~") in ("", number)}
@@ -134,6 +136,8 @@ def outputs_by_position(part: RatedPart) -> Mapping[str, str]:
         return dict.fromkeys(known[0] & nameless, known[1])
     plus = [number for number, name in pins.items() if name in ("V+", "VCC", "VDD", "VS+", "+VS", "VCC+", "V")]
     minus = [number for number, name in pins.items() if name in ("V-", "GND", "VSS", "VS-", "-VS", "VCC-", "VEE")]
+    if {True, False} <= {inverting(name) for name in pins.values()} and (plus or minus):
+        return dict.fromkeys(nameless if len(nameless) == 1 else nameless & _SEVERAL_OUTPUTS, OUTPUT)
     if len(plus) != 1 or len(minus) != 1 or len(nameless) < 3:
         return {}
     return dict.fromkeys(_POSITIONS.get((plus[0], minus[0]), frozenset()) & nameless, OUTPUT)

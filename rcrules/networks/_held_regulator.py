@@ -9,7 +9,7 @@ from rcrules.networks import _held_claims as say
 from rcrules.networks._held_pins import is_regulator
 from rcrules.networks._held_reference import cathode, reference_volts, sense_pin
 from rcrules.networks._scene import Scene
-from rcrules.parts import Known, RatedPart
+from rcrules.parts import RatedPart
 
 _SERIES: Final = re.compile(
     r"(?<!\d)(?P<sign>78|79)(?:[LMTS]|HC)?(?P<whole>05|06|08|09|10|12|15|18|24|33)(?!\d)", re.IGNORECASE
@@ -95,9 +95,11 @@ def adjusted(scene: Scene, joint: str, output: Pin) -> tuple[float, str] | None:
 
 def divided(scene: Scene, joint: str) -> str | None:
     """How many times an unknown reference two resistors at a regulator's feedback pin set the joint to."""
-    for _, far in scene.far_ends(joint, "resistor"):
-        fed = next((pin for pin in scene.of_kind(far, "ic") if pin.name.upper().rstrip("0123456789") in _DIVIDED), None)
-        found = _divider(scene, joint, far) if fed is not None else None
+    for item in scene.resistors(joint):
+        fed = next(
+            (pin for pin in scene.of_kind(item.far, "ic") if pin.name.upper().rstrip("0123456789") in _DIVIDED), None
+        )
+        found = _divider(scene, joint, item.far) if fed is not None else None
         if fed is not None and found is not None:
             upper, lower = found
             times = 1.0 + upper[1] / lower[1]
@@ -120,10 +122,9 @@ def _pin_called(part: RatedPart, names: frozenset[str]) -> Pin | None:
 
 def _ohms(scene: Scene, joint: str, far: str) -> Iterator[tuple[str, float]]:
     """Resistors of known value between two joints [Ω]."""
-    for item, other in scene.far_ends(joint, "resistor"):
-        value = scene.parts[item.ref].value
-        if other == far and isinstance(value, Known):
-            yield item.ref, value.si
+    for item in scene.resistors(joint):
+        if item.far == far and item.ohms is not None:
+            yield item.ref, item.ohms
 
 
 def _grounds(scene: Scene) -> Iterator[str]:

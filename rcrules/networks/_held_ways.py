@@ -35,7 +35,7 @@ def is_led_out(scene: Scene, joint: str, verdicts: Verdicts) -> bool:
         seen.add(here)
         if _is_coupled_out(scene, here, joint, verdicts) or (smoothed and _is_driven(scene, here, verdicts)):
             return True
-        if smoothed and scene.far_ends(here, "capacitor") and not scene.of_kind(here, *_ACTIVE, "connector"):
+        if smoothed and scene.capacitors(here) and not scene.of_kind(here, *_ACTIVE, "connector"):
             before += [far for far in _free(scene, here, verdicts) if far not in seen]
     return False
 
@@ -57,7 +57,8 @@ def _reached(scene: Scene, joint: str, verdicts: Verdicts) -> Iterator[str]:
     """Free joints and sources that resistors reach from a joint, grounds left out."""
     todo, seen = [joint], {joint}
     while todo and len(seen) < _FAR:
-        for _, far in scene.far_ends(todo.pop(), "resistor"):
+        for item in scene.resistors(todo.pop()):
+            far = item.far
             if far in seen or (far in verdicts and verdicts[far].kind == "ground"):
                 continue
             seen.add(far)
@@ -84,26 +85,26 @@ def _may_drive(pin: Pin) -> bool:
 
 def _is_coupled_out(scene: Scene, joint: str, towards: str, verdicts: Verdicts) -> bool:
     """Whether a capacitor couples an output to a joint that holds nothing else but resistors to rails."""
-    coupled = any(_is_output(scene, far, verdicts) for _, far in scene.far_ends(joint, "capacitor"))
-    others = [far for _, far in scene.far_ends(joint, "resistor") if far != towards]
+    coupled = any(_is_output(scene, far, verdicts) for _, far in scene.capacitors(joint))
+    others = [item.far for item in scene.resistors(joint) if item.far != towards]
     return coupled and not scene.of_kind(joint, *_ACTIVE) and all(far in verdicts for far in others)
 
 
 def _is_driven(scene: Scene, joint: str, verdicts: Verdicts) -> bool:
     """Whether an output feeds a joint through a resistor, or the joint is one chip's pin without a capacitor."""
-    if any(_is_output(scene, far, verdicts) for _, far in scene.far_ends(joint, "resistor")):
+    if any(_is_output(scene, item.far, verdicts) for item in scene.resistors(joint)):
         return True
-    bare = not scene.far_ends(joint, "capacitor") and not scene.of_kind(joint, "connector")
+    bare = not scene.capacitors(joint) and not scene.of_kind(joint, "connector")
     pins = scene.of_kind(joint, "ic")
     return bare and len(pins) == 1 and _may_drive(pins[0])
 
 
 def _is_smoothed(scene: Scene, joint: str, verdicts: Verdicts) -> bool:
-    return any(far in verdicts and verdicts[far].kind != "driven" for _, far in scene.far_ends(joint, "capacitor"))
+    return any(far in verdicts and verdicts[far].kind != "driven" for _, far in scene.capacitors(joint))
 
 
 def _free(scene: Scene, joint: str, verdicts: Verdicts) -> list[str]:
-    return [far for _, far in scene.far_ends(joint, "resistor") if far not in verdicts]
+    return [item.far for item in scene.resistors(joint) if item.far not in verdicts]
 
 
 def _is_output(scene: Scene, joint: str, verdicts: Verdicts) -> bool:

@@ -10,8 +10,8 @@ from rcrules.networks import _held_claims as say
 from rcrules.networks._held_verdict import Verdict, Verdicts
 from rcrules.networks._held_voltage import volts_here
 from rcrules.networks._links import words
-from rcrules.networks._scene import Scene
-from rcrules.parts import Known, RatedPart
+from rcrules.networks._scene import Resistance, Scene
+from rcrules.parts import RatedPart
 
 DIODE_DROP: Final = (0.0, 0.3, 0.9)
 """Least, nominal and most voltage across a conducting diode [V]; no load to full load, Schottky to silicon."""
@@ -69,9 +69,9 @@ def _onward(scene: Scene, joint: str, verdicts: Verdicts) -> Iterator[tuple[str,
             yield far, replace(passed_on, spread=None, given=False) if _is_bipolar(scene, ref) else passed_on
     for ref, far in _linked(scene, joint, verdicts):
         yield far, here.passed(f"link {ref} from {joint}")
-    for item, far in scene.far_ends(joint, "resistor"):
-        if far not in verdicts and _is_shunt(scene, item.ref) and scene.of_kind(far, "connector"):
-            yield far, here.passed(f"shunt {item.ref} from {joint}", sure=False)
+    for item in scene.resistors(joint):
+        if item.far not in verdicts and _is_shunt(item) and scene.of_kind(item.far, "connector"):
+            yield item.far, here.passed(f"shunt {item.ref} from {joint}", sure=False)
     for source in scene.coils.get(joint, ()):
         yield from _rectified(scene, source, verdicts)
 
@@ -87,9 +87,8 @@ def _linked(scene: Scene, joint: str, verdicts: Verdicts) -> Iterator[tuple[str,
             yield pin.ref, far
 
 
-def _is_shunt(scene: Scene, ref: str) -> bool:
-    value = scene.parts[ref].value
-    return isinstance(value, Known) and 0 < value.si <= _SHUNT_OHMS
+def _is_shunt(item: Resistance) -> bool:
+    return item.ohms is not None and 0 < item.ohms <= _SHUNT_OHMS
 
 
 def _inputs(scene: Scene, verdicts: Verdicts) -> Iterator[tuple[str, Verdict]]:
@@ -119,9 +118,7 @@ def _inputs(scene: Scene, verdicts: Verdicts) -> Iterator[tuple[str, Verdict]]:
 
 def _is_filtered(scene: Scene, joint: str, verdicts: Verdicts) -> bool:
     """Whether a resistor from a supply feeds the joint: the input of a switched inductor, not its output."""
-    return any(
-        _is_supply(verdicts, far) and not _is_large(scene, item.ref) for item, far in scene.far_ends(joint, "resistor")
-    )
+    return any(_is_supply(verdicts, item.far) and not _is_large(item) for item in scene.resistors(joint))
 
 
 def _rectified(scene: Scene, joint: str, verdicts: Verdicts) -> Iterator[tuple[str, Verdict]]:
@@ -140,7 +137,7 @@ def _is_rectified(scene: Scene, joint: str, verdicts: Verdicts) -> bool:
 
 def _is_fed_by_diode(scene: Scene, joint: str, cathode: str, verdicts: Verdicts) -> bool:
     """Whether a diode feeds a supply; beside a resistor between the same joints it speeds a node up or down."""
-    if cathode not in verdicts and any(far == joint for _, far in scene.far_ends(cathode, "resistor")):
+    if cathode not in verdicts and any(item.far == joint for item in scene.resistors(cathode)):
         return False
     return cathode not in scene.switching and _takes_supply(scene, cathode, verdicts)
 
@@ -179,22 +176,19 @@ def _is_ground(verdicts: Verdicts, joint: str) -> bool:
 
 
 def _carries_signal(scene: Scene, joint: str) -> bool:
-    small = [item for item, _ in scene.far_ends(joint, "resistor") if not _is_large(scene, item.ref)]
+    small = [item for item in scene.resistors(joint) if not _is_large(item)]
     fused = bool(scene.of_kind(joint, "fuse"))
     up = [diode.ref for diode in scene.diodes.get(joint, ()) if diode.anode == joint]
     clamped = any(diode.cathode == joint and diode.ref in up for diode in scene.diodes.get(joint, ()))
     return bool(scene.of_kind(joint, *_SIGNALS)) or (bool(small) and not fused) or clamped
 
 
-def _is_large(scene: Scene, ref: str) -> bool:
-    value = scene.parts[ref].value
-    return isinstance(value, Known) and value.si >= _DIVIDER_OHMS
+def _is_large(item: Resistance) -> bool:
+    return item.ohms is not None and item.ohms >= _DIVIDER_OHMS
 
 
 def _has_bulk(scene: Scene, joint: str, verdicts: Verdicts) -> bool:
-    return any(
-        far in verdicts and verdicts[far].kind in ("ground", "supply") for _, far in scene.far_ends(joint, "capacitor")
-    )
+    return any(far in verdicts and verdicts[far].kind in ("ground", "supply") for _, far in scene.capacitors(joint))
 
 
 def _is_supply(verdicts: Verdicts, joint: str) -> bool:

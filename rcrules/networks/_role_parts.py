@@ -28,7 +28,8 @@ class Ways:
     @property
     def parts(self) -> tuple[str, ...]:
         """References, resistors first."""
-        return (*self.resistors, *self.capacitors)
+        series = [ref for arm in self.resistors.values() for ref in (arm.ref, *arm.behind)]
+        return (*dict.fromkeys(series), *self.capacitors)
 
 
 def ways(view: View, here: Spot, judged: Judged) -> Ways:

@@ -10,6 +10,8 @@ from rcrules.quantities import show
 def arm_text(view: View, arm: Arm) -> str:
     """``R12 10 kΩ to +3V3``; where the value is not known its text, if any."""
     part = view.draft.parts.get(arm.ref)
+    if arm.behind and arm.value is not None:
+        return f"{' + '.join((arm.ref, *arm.behind))} {show(arm.value, 'Ω')} to {arm.far}"
     if part is not None and isinstance(part.value, Known):
         unit = "F" if part.kind in ("capacitor", "capacitor-array") else "Ω"
         return f"{arm.ref} {show(part.value.si, unit)} to {arm.far}"

@@ -17,12 +17,25 @@ from rcrules.networks._joints import joints as join_nets
 from rcrules.networks._links import branch, branches, contact, diodes, is_thermistor, joined
 from rcrules.networks._model import Branch, Contact, Diode
 from rcrules.networks._named import Facts
-from rcrules.parts import RatedPart
+from rcrules.networks._series import PLAIN, follow, other_end
+from rcrules.parts import Known, RatedPart
 
 Ends = TypeVar("Ends", Branch, Contact)
 _MOST_SWITCHED: Final = 8
 """Pins on a switching node that its pin names do not tell; larger nets are rails."""
 _MAKERS: Final = frozenset(("ic", "other"))
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Resistance:
+    """A resistor, or several in series, seen from a joint."""
+
+    ref: str
+    """References, joined by ``+``."""
+    far: str
+    """The joint at the other end."""
+    ohms: float | None
+    """[Ω]; None = not known."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -68,11 +81,25 @@ class Scene:
         found = [named for net in self.members[joint] if (named := hint(net))]
         return tuple(sorted(found, key=lambda named: (not named.strong, named.volts is None)))
 
-    def far_ends(self, joint: str, kind: str) -> tuple[tuple[Branch, str], ...]:
-        """Branches of a kind at the joint, each with its other end."""
-        return tuple(
-            (item, item.b if item.a == joint else item.a) for item in self.branches.get(joint, ()) if item.kind == kind
-        )
+    def capacitors(self, joint: str) -> tuple[tuple[Branch, str], ...]:
+        """Capacitors at the joint, each with its other end."""
+        items = self.branches.get(joint, ())
+        return tuple((item, other_end(item, joint)) for item in items if item.kind == "capacitor")
+
+    def resistors(self, joint: str) -> tuple[Resistance, ...]:
+        """Resistors at the joint; those in series with nothing between them are one."""
+        return tuple(self._resistance(item, joint) for item in self.branches.get(joint, ()) if item.kind == "resistor")
+
+    def _resistance(self, branch: Branch, joint: str) -> Resistance:
+        items, far = follow(branch, joint, lambda at: self.branches.get(at, ()), self._is_plain)
+        values = [self.parts[item.ref].value for item in items]
+        known = [value.si for value in values if isinstance(value, Known)]
+        refs = " + ".join(item.ref for item in items)
+        return Resistance(ref=refs, far=far, ohms=sum(known) if len(known) == len(values) else None)
+
+    def _is_plain(self, joint: str) -> bool:
+        told = any(hint(net) or self.facts.net(net) or self.facts.held(net) for net in self.members[joint])
+        return not told and self.kinds[joint] <= PLAIN
 
 
 def scene(design: Design, parts: Mapping[str, RatedPart], facts: Facts) -> Scene:

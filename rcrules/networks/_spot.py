@@ -7,7 +7,9 @@ from typing import Final
 from rcrules.design import Pin
 from rcrules.networks._draft import Draft
 from rcrules.networks._model import Branch, Contact, Diode, Held
+from rcrules.networks._series import PLAIN, follow
 from rcrules.parts import Known
+from rcrules.project import match
 
 SILENT: Final = frozenset(
     {
@@ -24,15 +26,18 @@ SMALL: Final = 0.02
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Arm:
-    """A resistor or capacitor seen from one of its ends."""
+    """A resistor or capacitor seen from one of its ends; resistors in series with nothing between them are one."""
 
     ref: str
+    """The reference nearest to the joint."""
     far: str
     """The joint at the other end."""
     value: float | None
     """[Ω] or [F], None = not known."""
     held: Held | None
     """What holds the far joint, None = it is free."""
+    behind: tuple[str, ...] = ()
+    """References of the resistors in series behind the first."""
 
     @property
     def to(self) -> str:
@@ -152,7 +157,29 @@ def _spot(draft: Draft, joint: str) -> Spot:
 
 
 def _arm(draft: Draft, branch: Branch, joint: str) -> Arm:
-    part = draft.parts.get(branch.ref)
-    far = branch.b if branch.a == joint else branch.a
-    value = part.value.si if part is not None and isinstance(part.value, Known) else None
-    return Arm(ref=branch.ref, far=far, value=value, held=draft.held_joint(far))
+    items, far = follow(branch, joint, draft.branches_at, lambda at: is_plain(draft, at))
+    values = [_value(draft, item.ref) for item in items]
+    known = [value for value in values if value is not None]
+    return Arm(
+        ref=branch.ref,
+        far=far,
+        value=sum(known) if len(known) == len(values) else None,
+        held=draft.held_joint(far),
+        behind=tuple(item.ref for item in items[1:]),
+    )
+
+
+def is_plain(draft: Draft, joint: str) -> bool:
+    """Whether a free joint holds nothing but resistors and is not named by the project."""
+    if draft.held_joint(joint) is not None or joint in draft.local:
+        return False
+    if draft.contacts_at(joint) or draft.diodes_at(joint):
+        return False
+    nets = draft.project.nets
+    named = bool(nets) and any(match(key, net) for key in nets for net in draft.members.get(joint, (joint,)))
+    return not named and all(draft.kind_of(pin.ref) in PLAIN for pin in draft.pins_at(joint))
+
+
+def _value(draft: Draft, ref: str) -> float | None:
+    part = draft.parts.get(ref)
+    return part.value.si if part is not None and isinstance(part.value, Known) else None
