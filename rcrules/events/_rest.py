@@ -85,9 +85,10 @@ def _passes(circuit: Circuit, node: Node) -> str:
 
 
 def _freed(network: Network, node: Node) -> Network:
-    """Of a bridged pair the first joint is let go and the second held."""
+    """Of a bridged pair the first joint is let go, as is what lies between resistors in series, and the second held."""
     if node.across is None:
         return network
-    pair = {node.joint, node.across}
-    branches = tuple(item for item in network.branches if {item.a, item.b} == pair)
-    return replace(network, branches=branches, free=(node.joint,), held=(node.across,), contacts=(), diodes=())
+    inside = {node.joint, node.across, *network.free}
+    branches = tuple(item for item in network.branches if {item.a, item.b} <= inside)
+    free = (node.joint, *network.free)
+    return replace(network, branches=branches, free=free, held=(node.across,), contacts=(), diodes=())

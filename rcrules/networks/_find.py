@@ -6,8 +6,7 @@ from typing import TypeVar
 from rcrules.design import natural
 from rcrules.networks._draft import Draft, RawNetwork
 from rcrules.networks._model import Branch, Contact, Diode
-from rcrules.networks._series import follow
-from rcrules.networks._spot import is_plain
+from rcrules.networks._spot import chain
 
 Item = TypeVar("Item", Contact, Diode)
 
@@ -41,15 +40,11 @@ def _network(draft: Draft, free: list[str]) -> RawNetwork:
 
 def _local(draft: Draft, joint: str) -> RawNetwork:
     """A local supply as its source sees it: the resistors that feed it and its capacitors to held nets."""
-    chains = [_chain(draft, item, joint) for item in draft.branches_at(joint)]
-    feeding = [chain for chain, far in chains if _belongs(draft, chain[0], far)]
-    between = {end for chain in feeding for item in chain for end in (item.a, item.b) if not draft.held_joint(end)}
-    return _assembled(draft, [joint, *sorted(between, key=natural)], [item for chain in feeding for item in chain])
-
-
-def _chain(draft: Draft, item: Branch, joint: str) -> tuple[tuple[Branch, ...], str]:
-    """A branch, or resistors in series, from a joint on, and the joint where they end."""
-    return follow(item, joint, draft.branches_at, lambda at: is_plain(draft, at))
+    chains = [chain(draft, item, joint) for item in draft.branches_at(joint)]
+    feeding = [items for items, far in chains if _belongs(draft, items[0], far)]
+    items = [item for several in feeding for item in several]
+    between = {end for item in items for end in (item.a, item.b) if not draft.held_joint(end)}
+    return _assembled(draft, [joint, *sorted(between, key=natural)], items)
 
 
 def _belongs(draft: Draft, item: Branch, end: str) -> bool:

@@ -1,6 +1,6 @@
 """The door of the room: from parts on nets to held nets, networks and nodes."""
 
-from collections.abc import Iterator, Mapping
+from collections.abc import Iterable, Iterator, Mapping
 from dataclasses import replace
 
 from rcrules.design import Design, natural
@@ -14,6 +14,7 @@ from rcrules.networks._model import Board, Branch, Held, Network, Node
 from rcrules.networks._named import Facts
 from rcrules.networks._roles import bridged_nodes, nodes_of
 from rcrules.networks._scene import Scene, scene
+from rcrules.networks._spot import chain
 from rcrules.parts import RatedPart
 from rcrules.project import Project
 
@@ -89,18 +90,20 @@ def _network(raw: RawNetwork, nodes: tuple[Node, ...]) -> Network:
 
 
 def _bridged(draft: Draft) -> Iterator[Network]:
-    """Networks without a free joint: resistors and capacitors side by side between two held joints."""
+    """Networks without a node at a free joint: resistors and capacitors side by side between two held joints."""
     for node in bridged_nodes(draft):
         ends = {node.joint, node.across}
-        between = (item for item in draft.branches_at(node.joint) if {item.a, item.b} == ends)
+        chains = (chain(draft, item, node.joint) for item in draft.branches_at(node.joint))
+        between = [item for items, far in chains if far == node.across for item in items]
+        inside = {end for item in between for end in (item.a, item.b)} - ends
         yield Network(
             id=node.net,
             branches=_ordered(between),
-            free=(),
+            free=tuple(sorted(inside, key=natural)),
             held=tuple(sorted(filter(None, ends), key=natural)),
             nodes=(node,),
         )
 
 
-def _ordered(branches: Iterator[Branch]) -> tuple[Branch, ...]:
+def _ordered(branches: Iterable[Branch]) -> tuple[Branch, ...]:
     return tuple(sorted(branches, key=lambda item: (natural(item.ref), item.a, item.b)))

@@ -1,39 +1,40 @@
 """Two held nets bridged by resistors and capacitors: chassis bond, bleeder, sense shunt."""
 
-from collections.abc import Iterable, Iterator
+from collections.abc import Iterator
 
 from rcrules.names import tokens
 from rcrules.networks._draft import Draft
 from rcrules.networks._fed_words import CHASSIS
-from rcrules.networks._model import Branch, Node
+from rcrules.networks._model import Node
 from rcrules.networks._role import SURE, UNSURE
 from rcrules.networks._role_lines import SHUNT
 from rcrules.networks._role_words import arm_text
-from rcrules.networks._spot import Arm, View, least
-from rcrules.parts import Known
+from rcrules.networks._spot import Arm, View, chain, least
 
 
 def bridged(draft: Draft) -> tuple[Node, ...]:
     """One node for each two held joints with both resistors and capacitors between them, in order of name."""
     view = View(draft)
-    nodes = (_node(view, *pair, branches) for pair, branches in sorted(_pairs(draft).items()))
+    nodes = (_node(view, *pair) for pair in sorted(_pairs(draft)))
     return tuple(node for node in nodes if node is not None)
 
 
-def _pairs(draft: Draft) -> dict[tuple[str, str], list[Branch]]:
-    """Branches by the two held joints they lie between; each branch once."""
-    pairs: dict[tuple[str, str], list[Branch]] = {}
+def _pairs(draft: Draft) -> Iterator[tuple[str, str]]:
+    """Two held joints with resistors, also several in series, and capacitors between them."""
+    kinds: dict[tuple[str, str], set[str]] = {}
     for joint, branches in draft.branches.items():
-        for branch in branches:
-            if branch.a == joint and all(draft.held_joint(end) for end in (branch.a, branch.b)):
-                pairs.setdefault((min(branch.a, branch.b), max(branch.a, branch.b)), []).append(branch)
-    return {pair: branches for pair, branches in pairs.items() if len({branch.kind for branch in branches}) == 2}
+        for branch in branches if draft.held_joint(joint) else ():
+            _, far = chain(draft, branch, joint)
+            if joint < far and draft.held_joint(far):
+                kinds.setdefault((joint, far), set()).add(branch.kind)
+    return (pair for pair, found in kinds.items() if len(found) == 2)
 
 
-def _node(view: View, one: str, other: str, branches: Iterable[Branch]) -> Node | None:
+def _node(view: View, one: str, other: str) -> Node | None:
     high, low = _in_order(view, one, other)
-    arms = tuple(sorted(_arms(view, low, branches), key=lambda pair: pair[1] != "resistor"))
-    role = _role(view, high, low, [arm for arm, kind in arms if kind == "resistor"])
+    here = view.at(high)
+    resistors, capacitors = ([arm for arm in arms if arm.far == low] for arms in (here.resistors, here.capacitors))
+    role = _role(view, high, low, resistors)
     if role is None:
         return None
     name, certainty, why, active = role
@@ -43,19 +44,12 @@ def _node(view: View, one: str, other: str, branches: Iterable[Branch]) -> Node 
         across=low,
         role=name,
         certainty=certainty,
-        evidence=(*(arm_text(view, arm) for arm, _ in arms), *why),
-        parts=tuple(arm.ref for arm, _ in arms),
+        evidence=(*(arm_text(view, arm) for arm in resistors + capacitors), *why),
+        parts=tuple(ref for arm in resistors + capacitors for ref in (arm.ref, *arm.behind)),
         fed_from=(high,),
         feeds=(),
         active=active,
     )
-
-
-def _arms(view: View, low: str, branches: Iterable[Branch]) -> Iterator[tuple[Arm, str]]:
-    for branch in branches:
-        part = view.draft.parts.get(branch.ref)
-        value = part.value.si if part is not None and isinstance(part.value, Known) else None
-        yield Arm(ref=branch.ref, far=low, value=value, held=view.draft.held_joint(low)), branch.kind
 
 
 def _in_order(view: View, one: str, other: str) -> tuple[str, str]:

@@ -157,7 +157,7 @@ def _spot(draft: Draft, joint: str) -> Spot:
 
 
 def _arm(draft: Draft, branch: Branch, joint: str) -> Arm:
-    items, far = follow(branch, joint, draft.branches_at, lambda at: is_plain(draft, at))
+    items, far = chain(draft, branch, joint)
     values = [_value(draft, item.ref) for item in items]
     known = [value for value in values if value is not None]
     return Arm(
@@ -167,6 +167,11 @@ def _arm(draft: Draft, branch: Branch, joint: str) -> Arm:
         held=draft.held_joint(far),
         behind=tuple(item.ref for item in items[1:]),
     )
+
+
+def chain(draft: Draft, branch: Branch, joint: str) -> tuple[tuple[Branch, ...], str]:
+    """A branch, or resistors in series, from a joint on, and the joint where they end."""
+    return follow(branch, joint, draft.branches_at, lambda at: is_plain(draft, at))
 
 
 def is_plain(draft: Draft, joint: str) -> bool:
