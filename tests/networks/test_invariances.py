@@ -137,7 +137,7 @@ def test_a_part_split_in_two_changes_nothing(text: str, share: float, data: st.D
 @pytest.mark.parametrize("text", [text for text in CIRCUITS if "C1 100n DTR RST" not in text])
 @pytest.mark.parametrize("type_", ["", ":passive"])
 def test_without_pin_types_names_and_structure_show_the_same_roles(text: str, type_: str) -> None:
-    """Left out: a capacitor from a handshake line at a contact, which only the type of the line tells from one across."""
+    """Left out: a capacitor from a handshake line at a contact, which only the type of the line tells."""
     bare = re.sub(r"(?<=\S):(passive|power-in|power-out|input|output|bidirectional|open-collector)", type_, text)
     told = [{net: kind[0] for net, kind in seen(board(drawn)).items()} for drawn in (text, bare)]
     assert told[1] == told[0]
