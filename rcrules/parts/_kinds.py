@@ -16,7 +16,11 @@ from rcrules.parts._texts import read_value
 _LETTERS: Final = re.compile(r"[^\W\d_]+")
 _VALUED: Final = ("resistor", "capacitor")
 _FOR_ARRAYS: Final = re.compile(r"(?<![\d.])[248]\s?x\s?0[2-8]0[1-5]|(?:^|_)ARRAY_", re.IGNORECASE)
-_IMPEDANCE: Final = re.compile(r"\d\s?(?:R|ohms?|Ω)?\s?[@/]\s?100\s?MHz", re.IGNORECASE)
+_IMPEDANCE: Final = re.compile(r"\d\s?(?:R|ohms?|Ω)?\s?(?:[@/]|(?<=[RMSΩ])\s)\s?100\s?MHz", re.IGNORECASE)
+_VARISTOR: Final = re.compile(r"\d{1,2}D\d{3}[JKL]?", re.IGNORECASE)
+"""Trade type numbers: diameter, and the voltage as a digit code."""
+_LEAST_IMPEDANCE: Final = 10.0
+"""[Ω] of a ferrite bead at 100 MHz."""
 _MANY_PINS: Final = 5
 """A diode or an unnamed part with this many pins is an integrated circuit."""
 _PLAIN: Final = frozenset(("resistor", "capacitor", "inductor"))
@@ -72,6 +76,9 @@ def _usual(part: _Written, usual: str) -> tuple[str, str]:
         return "fuse", f"called a resettable fuse, {why}"
     if usual == "resistor-array" and pins == 2:
         return "resistor", f"{why} with 2 pins"
+    told = _told_by_value(part, usual)
+    if told:
+        return told, f"value '{part.values[0][:40]}', {why}"
     others = EITHER[usual] - ({"connector"} if usual == "mechanical" and pins < 2 else set())
     for place, words in _evidence(part):
         if usual == "connector" and place.startswith("value") and not words & WORDS["crystal"]:
@@ -79,11 +86,37 @@ def _usual(part: _Written, usual: str) -> tuple[str, str]:
         if place.startswith("library"):
             continue
         kind = _kind_of_words(words, (others - {"ic"} if place == "description" else others) | {usual})
-        if kind == usual:
+        if kind == usual and place != "footprint":
             break
-        if kind is not None:
-            return kind, f"{place}, {why}"
+        if kind not in (None, usual):
+            return kind or usual, f"{place}, {why}"
     return usual, why
+
+
+def _told_by_value(part: _Written, usual: str) -> str | None:
+    """What the value alone tells: an impedance is a ferrite's, a diameter with a voltage code a varistor's."""
+    if usual == "inductor" and any(map(_impedance, part.values)):
+        return "ferrite"
+    if usual in ("potentiometer", "varistor", "resistor") and any(map(_VARISTOR.fullmatch, part.values)):
+        return "varistor"
+    symbol = _listed(part.symbol.rpartition(":")[2])
+    if usual == "connector" and symbol[:1] in (("R",), ("C",)) and ARRAY_WORDS.intersection(symbol):
+        return "resistor-array" if symbol[0] == "R" else "capacitor-array"
+    return None
+
+
+def _impedance(text: str) -> bool:
+    """``600R@100MHz``, ``220R``; but 2R2 and 4R7 are microhenries."""
+    return (
+        _IMPEDANCE.search(text) is not None
+        or (read_value(text, "resistor", bare=False).value or 0.0) >= _LEAST_IMPEDANCE
+    )
+
+
+def _reads(text: str, kind: str) -> bool:
+    """Whether a text with a unit is a value of a kind, or may be one."""
+    read = read_value(text, _as(kind), bare=False)
+    return read.value is not None or "may be" in read.why_unknown
 
 
 def _valued(part: _Written, usual: str) -> tuple[str, str]:
@@ -97,9 +130,11 @@ def _valued(part: _Written, usual: str) -> tuple[str, str]:
     for place, words in _evidence(part):
         if place == "footprint" or (place == "description" and words & WORDS[usual]):
             continue
-        kind = _kind_of_words(words, telling)
+        kind = _kind_of_words(words, EITHER[usual] if place.startswith("symbol") else telling)
         if kind is not None:
             return kind, f"{place}, {why}"
+    if _told_by_value(part, usual):
+        return "varistor", f"value '{part.values[0][:40]}', {why}"
     if usual == "resistor" and any(_IMPEDANCE.search(text) for text in part.values):
         return "ferrite", f"value with impedance at 100 MHz, {why}"
     return usual, why
@@ -126,6 +161,8 @@ def _shunt(part: _Written) -> bool:
 def _unusual(part: _Written) -> tuple[str, str]:
     """References whose letters say nothing: the words decide, then the value, then the number of pins."""
     many = part.pins > _MANY_PINS
+    if any(map(_IMPEDANCE.search, part.values)):
+        return "ferrite", "value with impedance at 100 MHz"
     for place, words in _evidence(part):
         general = place == "description" or place.startswith("library")
         untold = _PLAIN if place == "footprint" else frozenset()
@@ -136,8 +173,10 @@ def _unusual(part: _Written) -> tuple[str, str]:
         if kind is not None:
             return kind, place
     for kind in _VALUED:
-        if part.letters.startswith(kind[0].upper()) and any(read_value(text, _as(kind)).value for text in part.values):
-            return kind, f"value, reference {part.letters}"
+        if kind[0].upper() in part.letters and any(_reads(text, kind) for text in part.values):
+            variable = part.letters == "VR" and part.pins == 3
+            told = "potentiometer" if variable else f"{kind}-array" if many else kind
+            return told, f"value, reference {part.letters}"
     if many:
         return "ic", f"{part.pins} pins"
     return "other", "nothing tells its kind"
