@@ -213,6 +213,9 @@ def _rules(command: argparse.ArgumentParser) -> None:
         metavar="INPUT",
         help="show what each rule meets on a board, what it nearly meets, and at which limit its verdict turns",
     )
+    command.add_argument(
+        "--schema", action="store_true", help="print the JSON schema of rule files, for completion in editors"
+    )
     command.add_argument("--project", metavar="FILE", help="project file of that board (default: found as check does)")
     _color(command)
 

@@ -66,6 +66,14 @@ def rules(chosen: argparse.Namespace) -> int:
     from rcrules.cli._output import terminal_width, to_stdout, wants_color
     from rcrules.reports import laid_out
 
+    if chosen.schema:
+        import json
+
+        from rcrules.measures import registry
+        from rcrules.rulebook import schema
+
+        to_stdout(json.dumps(schema(registry()), indent=2, ensure_ascii=False) + "\n")
+        return 0
     wrong = False
     if chosen.tried:
         from rcrules.cli._tried import tried_lines

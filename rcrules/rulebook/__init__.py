@@ -14,6 +14,7 @@ from rcrules.rulebook._model import (
     Term,
 )
 from rcrules.rulebook._packs import compile_pack, load, packs, packs_folder, shipped
+from rcrules.rulebook._schema import schema
 from rcrules.rulebook._sentence import plural, sentence
 from rcrules.rulebook._settings import check_settings, strange_settings
 from rcrules.rulebook._value import COUNTS, NUMBER_FACTS, WORD_FACTS, dict_of
@@ -42,6 +43,7 @@ __all__ = [
     "packs",
     "packs_folder",
     "plural",
+    "schema",
     "sentence",
     "shipped",
     "strange_settings",

@@ -2,12 +2,16 @@
 
 import re
 from collections.abc import Mapping
-from dataclasses import replace
+from dataclasses import dataclass, replace
 from typing import Final, Literal
 
 from rcrules.expressions import Call
 from rcrules.measures import Measure
+from rcrules.rulebook._extend import KEY, OFF, Bases, explained, extended, replaced
 from rcrules.rulebook._judged import Judged, judged
+from rcrules.rulebook._keys import EXAMPLE as EXAMPLE_KEYS
+from rcrules.rulebook._keys import PACK as PACK_KEYS
+from rcrules.rulebook._keys import RULE as RULE_KEYS
 from rcrules.rulebook._limits import limits
 from rcrules.rulebook._model import Example, Pack, Rule, Term
 from rcrules.rulebook._numbers import Names, given
@@ -17,12 +21,17 @@ from rcrules.vocabulary import OUTCOMES, SEVERITIES
 
 MAX_RULES: Final = 500
 _ID: Final = re.compile(r"[a-z][a-z0-9]*(?:-[a-z0-9]+)*")
-_PACK: Final = ("name", "title", "needs-facts", "caution")
-_RULE: Final = (
-    "id", "title", "level", *KEYS, "measure", "subject", "with", "value", "every", "at-least", "at-most", "equals",
-    "one-of", "bounds", "given", "never", "why", "source", "must-meet", "example",
-)  # fmt: skip
+_RULE: Final = (*RULE_KEYS, *KEYS, "example")
 _NEVER: Final[Mapping[str, Literal["fails", "holds"]]] = {"fails": "fails", "holds": "holds"}
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Rules:
+    """The rules of a file."""
+
+    rules: list[Rule]
+    replaced: frozenset[str]
+    """Ids of rules of other files in whose place they stand."""
 
 
 def pack_of(top: Table) -> Pack | None:
@@ -32,7 +41,7 @@ def pack_of(top: Table) -> Pack | None:
         if "pack" not in top.data:
             top.wrong((), "the file has no [pack]", do='[pack] name = "our-rules" at the top')
         return None
-    table.only(_PACK)
+    table.only(tuple(PACK_KEYS))
     table.needs("name")
     name = _kebab(table, "name")
     facts = table.flag("needs-facts")
@@ -41,16 +50,34 @@ def pack_of(top: Table) -> Pack | None:
     return Pack(name=name, title=title, needs_facts=needs, caution=caution, file=top.file.name) if name else None
 
 
-def rules_of(top: Table, pack: Pack | None, measures: Mapping[str, Measure]) -> list[Rule]:
-    """Every ``[[rule]]`` that is right; mistakes are noted, also without a pack."""
+def rules_of(top: Table, pack: Pack | None, measures: Mapping[str, Measure], bases: Bases) -> Rules:
+    """Every ``[[rule]]`` that is right; mistakes are noted, also without a pack. bases: rules that may be extended."""
     top.only(("pack", "rule"))
     tables = top.tables("rule")
     if len(tables) > MAX_RULES:
         top.wrong("rule", "the file has too many rules", found=f"{len(tables)}", expected=f"at most {MAX_RULES}")
-        return []
+        return Rules(rules=[], replaced=frozenset())
     seen: dict[str, Table] = {}
-    found = [_rule(table, pack, measures, seen) for table in tables]
-    return [rule for rule in found if rule is not None]
+    found = [_extending(table, pack, measures, seen, bases) for table in tables]
+    instead = frozenset(name for table in tables if (name := replaced(table)) is not None)
+    return Rules(rules=[rule for rule in found if rule is not None], replaced=instead)
+
+
+def _extending(
+    table: Table, pack: Pack | None, measures: Mapping[str, Measure], seen: dict[str, Table], bases: Bases
+) -> Rule | None:
+    """A rule, with what it takes from another; None where it is wrong, or only takes the other away."""
+    before = len(table.problems.mistakes)
+    whole = extended(table, bases)
+    if whole is None:
+        return None
+    if KEY in table.data and table.data.get("level") == OFF:
+        return None
+    rule = _rule(whole, pack, measures, seen)
+    if whole is not table:
+        told = table.problems.mistakes[before:]
+        table.problems.mistakes[before:] = [explained(mistake, table) for mistake in told]
+    return rule
 
 
 def _kebab(table: Table, key: str) -> str | None:
@@ -124,7 +151,7 @@ def _with_call(what: Judged) -> Judged:
 
 def _example(table: Table) -> Example:
     """``[[rule.example]]``: kept as written, read when it is tried."""
-    table.only(("circuit", "project", "outcome"))
+    table.only(tuple(EXAMPLE_KEYS))
     table.needs("circuit", "outcome")
     outcome = table.word("outcome", OUTCOMES)
     circuit, project = table.text("circuit") or "", table.text("project") or ""

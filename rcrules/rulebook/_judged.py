@@ -16,7 +16,7 @@ from rcrules.tomlfile import Table, cut, guess, listed
 from rcrules.vocabulary import HELD_KINDS, PART_KINDS, ROLES
 
 SUBJECTS: Final = ("node", "capacitor", "resistor", "pin", "supply", "network", "supply pin", "open-drain net", "board")
-_HAS: Final[Mapping[str, tuple[str, ...]]] = {
+HAS: Final[Mapping[str, tuple[str, ...]]] = {
     "kind": PART_KINDS,
     "role": ROLES,
     "within": ("the net", "the network"),
@@ -161,8 +161,8 @@ def _every(table: Table) -> Judged | None:
     subject, has = inner.word("subject", SUBJECTS), inner.table("has")
     if has is None or subject is None:
         return None
-    has.only(tuple(_HAS))
-    words = {key: has.word(key, choices) for key, choices in _HAS.items() if key in has.data}
+    has.only(tuple(HAS))
+    words = {key: has.word(key, choices) for key, choices in HAS.items() if key in has.data}
     if not any(key in words for key in ("kind", "role")):
         has.wrong((), "'has' says neither kind nor role", expected='{ kind = "capacitor" } or { role = "bleeder" }')
     told = tuple((key, Text(value=word, at=0), 0) for key, word in words.items() if word is not None)

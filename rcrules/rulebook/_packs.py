@@ -1,6 +1,6 @@
 """Where rules come from: packs that ship with the tool, and files of the team."""
 
-from collections.abc import Iterable, Mapping
+from collections.abc import Iterable, Mapping, Sequence
 from functools import cache
 from importlib.resources import files
 from importlib.resources.abc import Traversable
@@ -11,10 +11,11 @@ import rcrules
 from rcrules.errors import Mistake, Place, Problems, UserMistake
 from rcrules.measures import Measure, registry
 from rcrules.project import Project
-from rcrules.rulebook._compile import pack_of, rules_of
+from rcrules.rulebook._compile import Rules, pack_of, rules_of
+from rcrules.rulebook._extend import Bases
 from rcrules.rulebook._model import Pack, Rule
 from rcrules.rulebook._settings import check_settings
-from rcrules.tomlfile import TomlFile, cut, guess, listed, root
+from rcrules.tomlfile import Table, TomlFile, cut, guess, listed, root
 from rcrules.tomlfile import load as load_toml
 from rcrules.tomlfile import read as read_toml
 
@@ -63,10 +64,7 @@ def load(
     wanted = list(dict.fromkeys(names))
     if len(wanted) > MAX_FILES:
         raise UserMistake(Mistake(place=Place(file=asked_by), problem=f"more than {MAX_FILES} packs and files"))
-    rules: list[Rule] = []
-    for name in wanted:
-        with problems.collecting():
-            rules += compile_pack(_file(name, folder, asked_by), known)
+    rules = _compiled([_read(name, folder, asked_by) for name in wanted], known, problems)
     _distinct(rules, problems)
     if project is not None:
         problems.mistakes.extend(check_settings(project, rules))
@@ -74,11 +72,45 @@ def load(
     return rules
 
 
+def _read(name: str, folder: Path | None, asked_by: str) -> Table | UserMistake:
+    """A pack or file as a table, or what is wrong with it."""
+    try:
+        return root(_file(name, folder, asked_by), Problems())
+    except UserMistake as error:
+        return error
+
+
+def _compiled(
+    tops: Sequence[Table | UserMistake], measures: Mapping[str, Measure], problems: Problems
+) -> list[Rule]:
+    """The rules of several files, without those in whose place another stands; mistakes in the order of the files."""
+    bases = Bases([top for top in tops if isinstance(top, Table)], _shipped_tops)
+    found: list[Rules] = []
+    for top in tops:
+        if isinstance(top, UserMistake):
+            problems.mistakes.extend(top.mistakes)
+            continue
+        found.append(rules_of(top, pack_of(top), measures, bases))
+        with problems.collecting():
+            top.stop_if_wrong()
+    instead = [(place, name) for place, item in enumerate(found) for name in item.replaced]
+    return [
+        rule
+        for place, item in enumerate(found)
+        for rule in item.rules
+        if rule.id in item.replaced or all(name != rule.id or other == place for other, name in instead)
+    ]
+
+
+def _shipped_tops() -> list[Table]:
+    return [root(_file(name, None), Problems()) for name in shipped()]
+
+
 def compile_pack(file: TomlFile, measures: Mapping[str, Measure]) -> list[Rule]:
     """The rules of one file. Raises UserMistake with all its mistakes."""
-    top = root(file, Problems())
-    rules = rules_of(top, pack_of(top), measures)
-    top.stop_if_wrong()
+    problems = Problems()
+    rules = _compiled([root(file, Problems())], measures, problems)
+    problems.stop_if_any()
     return rules
 
 

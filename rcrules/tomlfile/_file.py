@@ -58,11 +58,15 @@ class TomlFile:
     ) -> Mistake:
         """A mistake at a key or value with the marker under it; ``at`` and ``length`` point inside a string."""
         spans = self.key_spans if on == "key" else self.spans
-        span = spans.get(path) or self.spans.get(path) or (0, 1)
+        span = spans.get(path) or self._nearest(path)
         if at is not None:
             span = _inside(self.text, span, at, length)
         place, shown, marker = _marked(self.name, self.text, span)
         return Mistake(place=place, problem=problem, found=found, expected=expected, do=do, shown=shown, span=marker)
+
+    def _nearest(self, path: Path) -> Span:
+        """Where a value stands, or else the innermost table or list around it that stands somewhere."""
+        return next((self.spans[path[:size]] for size in range(len(path), 0, -1) if path[:size] in self.spans), (0, 1))
 
 
 def read(path: pathlib.Path, name: str) -> TomlFile:
