@@ -36,11 +36,12 @@ def _nodes(board: Board, nets: set[str], subject: Subject) -> Iterator[str]:
 
 
 def _parts(board: Board, nets: set[str], subject: Subject) -> Iterator[RatedPart]:
-    """Fitted parts with a pin on one of the nets, or on a net joined to it; the subject's own part left out."""
+    """Fitted parts with a pin on one of the nets, or on a net joined to it; a part is not counted at itself."""
     joints = {board.joints.get(net, net) for net in nets}
+    own = subject.refs if subject.kind in ("capacitor", "resistor", "pin") else ()
     for part in board.parts.values():
         ends = (board.joints.get(pin.net, pin.net) for pin in part.part.pins if pin.net)
-        if part.fitted and part.ref not in subject.refs and any(end in joints for end in ends):
+        if part.fitted and part.ref not in own and any(end in joints for end in ends):
             yield part
 
 

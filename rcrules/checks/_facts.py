@@ -35,6 +35,8 @@ def _hull(held: list[Held]) -> Spread | None:
 def _across(view: View, board: Board) -> Spread | None:
     """Voltage between two held nets; at free nodes from nothing to the widest that resistors alone could pass on."""
     held = _held(view.around, board)
+    if any(net not in board.held for net in view.around):
+        return None  # an end that nothing holds may be anywhere
     if len(held) == 2 and set(view.nets) == {item.net for item in held}:
         lower, upper = sorted(held, key=lambda item: item.voltage.nominal if item.voltage else 0.0)
         return _between(lower.voltage, upper.voltage)

@@ -35,8 +35,9 @@ def fact_numbers(subject: Subject, board: Board, project: Project) -> dict[str, 
     views = [facts(view, board) for view in subject.views]
     same = {name: value for name, value in views[0].items() if all(view.get(name) == value for view in views)}
     part = subject.target if isinstance(subject.target, RatedPart) else None
-    if part is not None and isinstance(part.rated_power, Known):
-        same["rated_power"] = part.rated_power.si
+    if part is not None:
+        ratings = {"rated_voltage": part.rated_voltage, "rated_power": part.rated_power}
+        same |= {name: rating.si for name, rating in ratings.items() if isinstance(rating, Known)}
     if project.temperature is not None:
         same |= {"temperature_low": project.temperature.low, "temperature_high": project.temperature.high}
     return same

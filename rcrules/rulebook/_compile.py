@@ -14,7 +14,7 @@ from rcrules.rulebook._keys import PACK as PACK_KEYS
 from rcrules.rulebook._keys import RULE as RULE_KEYS
 from rcrules.rulebook._limits import limits
 from rcrules.rulebook._model import Example, Pack, Rule, Term
-from rcrules.rulebook._numbers import Names, given
+from rcrules.rulebook._numbers import Names, declared, given
 from rcrules.rulebook._selection import KEYS, selection
 from rcrules.tomlfile import Table, cut
 from rcrules.vocabulary import OUTCOMES, SEVERITIES
@@ -99,7 +99,7 @@ def _rule(table: Table, pack: Pack | None, measures: Mapping[str, Measure], seen
     if own_id is not None:
         seen.setdefault(own_id, table)
     inner = table.data.get("given")
-    names = Names(own=frozenset(inner if isinstance(inner, Mapping) else ()))
+    names = Names(own=frozenset(inner if isinstance(inner, Mapping) else ()), declared=declared(inner))
     what = judged(table, measures, names)
     if what is None:
         selection(table)  # what is wrong there is told in the same run

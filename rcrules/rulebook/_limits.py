@@ -10,7 +10,7 @@ from rcrules.measures import Measure
 from rcrules.quantities import QuantityError, Spread, parse_quantity
 from rcrules.rulebook._model import Limit
 from rcrules.rulebook._numbers import NAME, WORD, Names, looked_up
-from rcrules.rulebook._value import compiled
+from rcrules.rulebook._value import NUMBER_FACTS, compiled
 from rcrules.tomlfile import Table
 
 Kind = Literal["at-least", "at-most"]
@@ -69,7 +69,7 @@ def _limit(
     value = table.data[kind]
     if isinstance(value, Mapping):
         return _by_word(table, kind, measure, names)
-    if isinstance(value, str) and _is_expression(value):
+    if isinstance(value, str) and (value in NUMBER_FACTS or _is_expression(value)):
         found = compiled(table, kind, measures, names, dimension_of(measure.unit))
         return Limit(kind=kind, text=value, expression=found.expression, terms=found.terms) if found else None
     if isinstance(value, str) and NAME.fullmatch(value):

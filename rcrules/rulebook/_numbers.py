@@ -1,19 +1,21 @@
 """The numbers of a rule: options of its measure, limits, and the names that are looked up on the board."""
 
 import re
+from collections.abc import Mapping
 from dataclasses import dataclass, field
 from typing import Final, Literal
 
 from rcrules.levels import Level, parse_level
 from rcrules.measures import Measure, Option
 from rcrules.project import NUMBERS
-from rcrules.quantities import Spread
+from rcrules.quantities import QuantityError, Spread, parse_quantity, parse_unit
 from rcrules.rulebook._model import OptionValue
 from rcrules.tomlfile import Table, cut, guess, listed, quantity_name
 from rcrules.vocabulary import EVENTS
 
 WORD: Final = "word"
 """Stands for a unit where a name means a word."""
+_ASK_IN: Final = "ask in "
 NAME: Final = re.compile(r"[a-z][a-z0-9_]{0,59}")
 
 
@@ -24,6 +26,8 @@ class Names:
     own: frozenset[str]
     """Those that the rule itself lists under ``given``."""
     units: dict[str, str] = field(default_factory=dict)
+    declared: dict[str, str] = field(default_factory=dict)
+    """Units of those that the rule brings, or asks for by unit."""
     tried: set[str] = field(default_factory=set)
     """Names used, rightly or not."""
     first: dict[str, str] = field(default_factory=dict)
@@ -132,13 +136,42 @@ def given(table: Table, names: Names) -> dict[str, Spread | Literal["ask"]]:
         if inner is None or not _is_used(inner, name, names):
             continue
         unit = names.units[name]
-        if inner.data[name] == "ask":
+        if inner.data[name] == "ask" or _ask_unit(inner.data[name]) is not None:
             found[name] = "ask"
         elif unit == WORD:
             inner.wrong(name, f"'{name}' is a word, which a rule cannot bring", expected='"ask"')
         elif (spread := inner.quantity(name, unit)) is not None:
             found[name] = spread
     return found
+
+
+def declared(data: object) -> dict[str, str]:
+    """Units that ``given`` tells by itself: of numbers, and of what is asked for as ``"ask in Hz"``."""
+    found: dict[str, str] = {}
+    for name, value in data.items() if isinstance(data, Mapping) else ():
+        unit = _ask_unit(value)
+        if unit is None and isinstance(value, str):
+            unit = _quantity_unit(value)
+        if unit is not None:
+            found[str(name)] = unit
+    return found
+
+
+def _ask_unit(value: object) -> str | None:
+    """``Hz`` of ``ask in Hz``; None for anything else."""
+    if not isinstance(value, str) or not value.startswith(_ASK_IN):
+        return None
+    try:
+        return parse_unit(value.removeprefix(_ASK_IN).strip())[0]
+    except QuantityError:
+        return None
+
+
+def _quantity_unit(text: str) -> str | None:
+    try:
+        return parse_quantity(text).unit
+    except QuantityError:
+        return None
 
 
 def _is_used(inner: Table, name: str, names: Names) -> bool:

@@ -36,6 +36,7 @@ from rcrules.vocabulary import EVENTS, HELD_KINDS, PART_KINDS, ROLES
 
 NUMBER_FACTS: Final[Mapping[str, str]] = {
     **FACTS,
+    "rated_voltage": "V",
     "rated_power": "W",
     "temperature_low": "degC",
     "temperature_high": "degC",
@@ -108,7 +109,7 @@ def _called(of: Expression, measures: Mapping[str, Measure]) -> Expression:
 
 def _known(measures: Mapping[str, Measure], own: Names, check: "object") -> Known:
     units = {name: measure.unit for name, measure in measures.items()}
-    given = {name: own.units[name] for name in own.own if name in own.units}
+    given = {name: unit for name, unit in {**own.declared, **own.units}.items() if name in own.own}
     return Known(
         names={**NUMBERS, **NUMBER_FACTS, **given},
         calls={**units, **COUNTS},
@@ -122,7 +123,7 @@ def _note(table: Table, key: str, expression: Expression, known: Known, own: Nam
     for item in names(expression):
         if item.name in known.learned:
             own.use(table, key, item.name, unit_of(known.learned[item.name]))
-        elif item.name not in NUMBER_FACTS and item.name in known.names:
+        elif item.name in own.own or (item.name not in NUMBER_FACTS and item.name in known.names):
             own.use(table, key, item.name, known.names[item.name])
 
 
