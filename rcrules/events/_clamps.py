@@ -40,6 +40,23 @@ def clamp(bench: Bench, circuit: Circuit, sources: Sources, *, slight: bool) -> 
     return True
 
 
+def hold_rails(bench: Bench, circuit: Circuit, sources: Sources) -> bool:
+    """Hold the supplies of every part whose pins leak into the circuit; whether each has one that is known.
+
+    Only then do the outermost sources of a state bound what leakage does: a driver at 0 V is no rail of the pin.
+    """
+    railed = True
+    for joint in dict.fromkeys(joint for joint, _ in circuit.draws):
+        for pin in bench.pins(joint):
+            if bench.pin_fact(pin, lambda facts: facts.leakage) is None:
+                continue
+            own = _supplies(bench, sources, pin)
+            railed = railed and bool(own)
+            for _, rail in own:
+                terminal_of(bench, circuit, rail)
+    return railed
+
+
 def _rails(bench: Bench, circuit: Circuit, sources: Sources) -> Iterator[tuple[str, str, float]]:
     """Joint, upper rail and its voltage [V] of every pin that leaks; none where no supply is known."""
     floating = circuit.floating()

@@ -54,9 +54,22 @@ def with_diodes(scene: Scene, event: str) -> Transient:
 
 
 def with_clamps(scene: Scene, event: str, found: Transient, *, slight: bool) -> Transient:
-    """The event, with what pins leak held within their rails."""
+    """The event, with what pins leak held within their rails; without, where more than leakage could go beyond them."""
+    if _beyond_rails(scene, event):
+        return found
     added = clamp(scene.bench, scene.circuit, scene.sources, slight=slight)
     return transient(scene, event) if added else found
+
+
+def _beyond_rails(scene: Scene, event: str) -> bool:
+    """Whether a net could be beyond the rails of its pins by other means: a falling rail, one of several, a capacitor.
+
+    There the diodes that stand for the end of leakage would carry what a pin need not carry.
+    """
+    circuit = scene.circuit
+    supplies = [joint for joint in circuit.joints.values() if scene.sources.kind(joint) == "supply"]
+    bridged = any(ZERO not in (arm.a, arm.b) for arm in circuit.of("capacitor"))
+    return event == "power-down" or bridged or (event == "power-up" and len(supplies) > 1)
 
 
 def _alone(scene: Scene, event: str) -> Transient | None:

@@ -7,6 +7,7 @@ from itertools import product
 from rcrules.events._bench import Bench
 from rcrules.events._build import build, terminal_of
 from rcrules.events._circuit import ZERO, Circuit
+from rcrules.events._clamps import hold_rails
 from rcrules.events._contacts import arm
 from rcrules.events._diodes import add_all, widened, with_clamps, with_diodes
 from rcrules.events._opened import opened
@@ -72,6 +73,7 @@ def pose_states(bench: Bench, part: RatedPart, measure: Measure, options: Mappin
         check_paths(circuit, contacts)
     wants = str(options.get("extreme", "most"))
     signed = part.polarised and measure.name == "applied_voltage"
+    railed = hold_rails(bench, circuit, sources)
     waves, transient_matters = switched_on(circuit, sources)
     extremes = Extremes(least=wants == "least", signed=signed, every=transient_matters)
     states = states_of(circuit, sources, ends, extremes)
@@ -96,7 +98,12 @@ def pose_states(bench: Bench, part: RatedPart, measure: Measure, options: Mappin
         curves=curves,
         states=states,
         swings=swings_of(circuit, sources) if transient_matters else (),
-        options=(*plain_of(measure, options), ("transient", float(transient_matters)), ("signed", float(signed))),
+        options=(
+            *plain_of(measure, options),
+            ("transient", float(transient_matters)),
+            ("signed", float(signed)),
+            ("railed", float(railed)),
+        ),
     )
     return Problem(structure=structure, parameters=tuple(table.parameters), names=circuit.names(before=closed))
 

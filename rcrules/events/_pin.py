@@ -7,6 +7,7 @@ from rcrules.design import Pin
 from rcrules.events._bench import Bench
 from rcrules.events._build import build, terminal_of
 from rcrules.events._circuit import ZERO, Arm, Circuit
+from rcrules.events._clamps import hold_rails
 from rcrules.events._contacts import arm, nearest, normally
 from rcrules.events._diodes import add_all, widened
 from rcrules.events._levels import Leveller
@@ -68,6 +69,7 @@ def _states(spot: _Spot, measure: Measure, options: Mapping[str, OptionValue]) -
         check_paths(circuit, closed)
     ends = (spot.joint, spot.joint if levels else ZERO)
     least = options.get("extreme") == "least"
+    railed = hold_rails(bench, circuit, spot.sources)
     waves, transient = switched_on(circuit, spot.sources)
     extremes = Extremes(least=least, signed=False, every=transient)
     states = states_of(circuit, spot.sources, ends, extremes)
@@ -85,7 +87,7 @@ def _states(spot: _Spot, measure: Measure, options: Mapping[str, OptionValue]) -
         states=states,
         swings=swings_of(circuit, spot.sources) if transient else (),
         levels=levels,
-        options=(*plain_of(measure, options), ("transient", float(transient))),
+        options=(*plain_of(measure, options), ("transient", float(transient)), ("railed", float(railed))),
     )
     return Problem(structure=structure, parameters=tuple(spot.table.parameters), names=circuit.names(before=contacts))
 
@@ -107,6 +109,7 @@ def _level(spot: _Spot, measure: Measure, options: Mapping[str, OptionValue]) ->
     """The state in which the input is lowest, or highest: supplies on, one driver, pin or contact acting on it."""
     low, circuit = measure.name == "input_voltage_low", spot.circuit
     open_, closed = _positions(spot, low=low)
+    railed = hold_rails(spot.bench, circuit, spot.sources)
     sources = tuple(_on(spot, name, high=not low) for name in circuit.held)
     positions = [closed if low else open_] if _to_ground(spot, closed) else [open_, closed]
     for position in positions:
@@ -123,7 +126,7 @@ def _level(spot: _Spot, measure: Measure, options: Mapping[str, OptionValue]) ->
         earlier=shapes[1] if len(shapes) > 1 else None,
         at=circuit.terminal(spot.joint),
         states=(sources,),
-        options=(*plain_of(measure, options), ("transient", 0.0)),
+        options=(*plain_of(measure, options), ("transient", 0.0), ("railed", float(railed))),
     )
     return Problem(
         structure=structure, parameters=tuple(spot.table.parameters), names=circuit.names(positions[0], positions[-1])

@@ -183,8 +183,8 @@ def steady_states(structure: Structure, cases: Array) -> Array:
     """DC voltages of all terminals in each of the structure's states [V] (case, state, terminal).
 
     States are those of ``structure.states``; where there is an ``earlier`` shape (another position of a contact), those
-    of that shape follow. What pins leak comes from their rails: where currents are drawn, free terminals stay within
-    the outermost sources. Raises FloatingNode, Unsettled.
+    of that shape follow. What pins leak comes from their rails: where currents are drawn and the option ``railed`` says
+    that all rails are among the sources, free terminals stay within the outermost. Raises FloatingNode, Unsettled.
     """
     case = Solved(structure=structure, cases=cases)
     found = []
@@ -197,7 +197,7 @@ def steady_states(structure: Structure, cases: Array) -> Array:
             free = np.zeros((len(cases), 0))
             if structure.shape.free:
                 free = (case.earlier if earlier else case.modes).steady(held, case.amps)
-            if structure.amps and structure.shape.held:
+            if structure.amps and structure.shape.held and ("railed", 1.0) in structure.options:
                 free = np.clip(free, held.min(axis=1, keepdims=True), held.max(axis=1, keepdims=True))
             found.append(np.concatenate([free, held], axis=1))
     return np.stack(found, axis=1)
