@@ -16,14 +16,13 @@ def start(chosen: argparse.Namespace) -> int:
     from pathlib import Path
 
     from rcrules.pipeline import Job, run
-    from rcrules.rulebook import packs
-    from rcrules.starter import project_text, questions
+    from rcrules.starter import FIRST_PACKS, project_text, questions
 
     if "-" in chosen.inputs:
         raise _mistake("command line", "standard input cannot be named in a project file", "name the files")
     target = Path(chosen.to) if chosen.to else Path(chosen.inputs[0]).parent / "rcrules.toml"
     _free(target)
-    document = run(Job(inputs=tuple(chosen.inputs), project=os.devnull, rules=tuple(pack.name for pack in packs())))
+    document = run(Job(inputs=tuple(chosen.inputs), project=os.devnull, rules=FIRST_PACKS))
     folder = target.parent
     inputs = [(row["kind"], _relative(row["file"], folder)) for row in document.inputs]
     netlists, boms = ([name for kind, name in inputs if kind == wanted] for wanted in ("netlist", "bom"))

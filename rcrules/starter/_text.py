@@ -10,6 +10,8 @@ from rcrules.findings import Document, Json
 from rcrules.quantities import show
 from rcrules.starter._questions import Question, questions
 
+FIRST_PACKS: Final = ("power-on-reset", "debounce", "analog-inputs", "capacitor-voltage", "stored-energy")
+"""Packs that most boards want; the others are for a team to choose."""
 _SHOWN_LINES: Final = 12
 """Lines of one question; the rest is counted."""
 _SHOWN_REFS: Final = 8
