@@ -1,33 +1,38 @@
 """The observed voltage over time, at nominal and in the two worst cases, for a drawing."""
 
 import math
+from collections.abc import Mapping, Sequence
 from typing import Final
 
 import numpy as np
 
+from rcrules.derivation._curve import along
 from rcrules.engine import FloatingNode
 from rcrules.findings import Json
 from rcrules.measures import Measure
-from rcrules.problems import Array, Bounds, LevelForm, Problem, Unsettled, evaluate, solved
+from rcrules.problems import Array, Bounds, LevelForm, Problem, Solved, Unsettled, constant, evaluate, solved
 
-POINTS: Final = 121
-_SPAN: Final = 6.0
-"""Slowest time constants that are shown after the last change of a source."""
-_BEFORE: Final = 0.04
-"""Part of the span that is shown before the event."""
+_OVER_TIME: Final = ("event", "sample", "discharge", "dip")
+"""What is posed as something that happens over time."""
+_INSTANTS: Final = ("delay", "dip_rearm", "discharge_time", "settling_time", "time_to_63")
+"""Measures that are the instant of something that a drawing shows, counted from its zero."""
+_REST: Final = 0.005
+"""Part of all it moves within which the voltage has come to rest, for a drawing."""
+_ROOM: Final = 1.2
+"""How far beyond the last instant that matters is shown."""
+_63: Final = LevelForm(kind="step", fraction=constant(1.0 - math.exp(-1.0)))
 
 
 def response(problem: Problem, measure: Measure, bounds: Bounds, limit: Json | None) -> Json | None:
-    """Curves, thresholds, limit and crossing; None where the measure is not one of an event, or nothing moves.
+    """Curves, thresholds, limit and crossing; None where nothing happens over time, or nothing moves.
 
-    ``{unit, time, nominal, low_case, high_case, thresholds: [{name, low, nominal, high}], limit, crossing}``; times in
-    seconds since the event.
+    ``{unit, time, nominal, low_case, high_case, thresholds: [{name, low, nominal, high}], limit, crossing}``. Times in
+    seconds, all from where the measure counts: the event, or in each case the instant at which its supply is valid.
     """
-    if measure.poses != "event" or not problem.structure.shape.free:
+    if measure.poses not in _OVER_TIME or not problem.structure.shape.free:
         return None
-    _, nominal, _ = problem.box()
-    cases = np.array([nominal, bounds.low_at, bounds.high_at], dtype=float)
-    if not np.isfinite(cases).all():
+    cases = np.array([problem.box()[1], bounds.low_at, bounds.high_at], dtype=float)
+    if np.isnan(cases).any():
         return None
     try:
         return _drawn(problem, measure, bounds, cases, limit)
@@ -37,62 +42,71 @@ def response(problem: Problem, measure: Measure, bounds: Bounds, limit: Json | N
 
 def _drawn(problem: Problem, measure: Measure, bounds: Bounds, cases: Array, limit: Json | None) -> Json | None:
     found = solved(problem.structure, cases)
-    span = _span(problem, measure, cases, bounds)
+    zero = _zero(found, measure)
+    timed = measure.name in _INSTANTS
+    crossing = {"low": bounds.low, "nominal": bounds.nominal, "high": bounds.high} if timed else {}
+    span = _span(found, zero, [float(value) for value in crossing.values()])
     if not 0.0 < span < math.inf:
         return None
-    time = np.linspace(-_BEFORE * span, span, POINTS)
-    curves = _curves(problem, cases, time)
-    timed = measure.unit == "s"
-    crossing = {"low": bounds.low, "nominal": bounds.nominal, "high": bounds.high} if timed else None
+    time, curves = along(found, zero, span, _marked(found, zero, crossing))
     return {
         "unit": "V",
         "time": [float(value) for value in time],
         "nominal": curves[0],
         "low_case": curves[1],
         "high_case": curves[2],
-        "thresholds": _thresholds(problem, cases, found.final, found.start),
+        "thresholds": [_row(name, values) for name, values in _thresholds(found, measure)],
         "limit": {key: limit[key] for key in ("at_least", "at_most") if key in limit} if limit and timed else None,
-        "crossing": crossing,
+        "crossing": crossing or None,
     }
 
 
-def _span(problem: Problem, measure: Measure, cases: Array, bounds: Bounds) -> float:
-    """[s] From the event to where everything of interest has happened."""
-    found = solved(problem.structure, cases)
-    slowest, starts = float(found.modes.taus.max(initial=0.0)), found.sources[0]
-    last = float(starts[np.isfinite(starts)].max(initial=0.0))
-    ends = [float(value) for value in (bounds.low, bounds.high) if measure.unit == "s" and math.isfinite(value)]
-    return max([last + _SPAN * slowest, *(1.2 * abs(end) for end in ends)])
+def _zero(found: Solved, measure: Measure) -> Array:
+    """Where each case counts from, since the event [s] (case,)."""
+    if measure.poses == "dip" and found.structure.reference is None:
+        return np.full(len(found.cases), float(found.structure.option("length")))
+    return np.where(np.isfinite(found.reference), found.reference, 0.0)
 
 
-def _curves(problem: Problem, cases: Array, time: Array) -> list[list[float]]:
-    """Observed voltages [V] of every case; before the event the one at which it rests."""
-    every = solved(problem.structure, np.repeat(cases, len(time), axis=0))
-    times = np.tile(time, len(cases))
-    values = np.where(times < 0.0, every.start, every.signal.at(np.maximum(times, 0.0)))
-    return [[float(value) for value in row] for row in values.reshape(len(cases), len(time))]
+def _span(found: Solved, zero: Array, instants: Sequence[float]) -> float:
+    """[s] To where all cases rest and everything of interest has happened; 0 where nothing moves."""
+    low, high = found.watch(found.weights(), found.final).extremes()
+    room = _REST * np.maximum(high, -low)
+    rest = found.watch(found.weights(), found.final).last_exit(-room, room) - zero
+    known = [value for value in instants if math.isfinite(value)]
+    return _ROOM * max(0.0, *(float(value) for value in rest[np.isfinite(rest)]), *known)
 
 
-def _thresholds(problem: Problem, cases: Array, final: Array, start: Array) -> list[Json]:
-    """Every level of the measure that stands still, at nominal and in the two cases."""
-    rows = []
-    for name, level in problem.structure.levels:
-        if level.kind == "voltage" and not level.follows:
-            values = evaluate(level.offset, cases)
-        elif level.kind == "voltage":
-            values = _following(problem, level, cases)
-        else:
-            part = evaluate(level.fraction, cases)
-            values = part * final if level.kind == "final" else start + part * (final - start)
-        low, high = float(values.min()), float(values.max())
-        rows.append({"name": name, "low": low, "nominal": float(values[0]), "high": high})
+def _marked(found: Solved, zero: Array, crossing: Mapping[str, float]) -> list[float]:
+    """Instants that a curve must not cut short: where sources turn, and where what is measured happens."""
+    turns = (found.sources[0] - zero[:, None]).ravel()
+    every = [*turns, *(-zero), *crossing.values()]
+    return sorted({float(value) for value in every if math.isfinite(value)})
+
+
+def _row(name: str, values: Array) -> Json:
+    return {"name": name, "low": float(values.min()), "nominal": float(values[0]), "high": float(values.max())}
+
+
+def _thresholds(found: Solved, measure: Measure) -> list[tuple[str, Array]]:
+    """Every level of the measure, at nominal and in the two cases; the edges of its band."""
+    rows = [(name, _level(found, level)) for name, level in found.structure.levels]
+    if measure.name == "time_to_63":
+        rows.append(("63.2 % of step", _level(found, _63)))
+    if measure.name == "settling_time":
+        size = np.maximum(np.abs(found.final - found.start), np.abs(found.final - found.signal.initial()))
+        band = float(found.structure.option("band")) * size
+        rows += [("band, upper edge", found.final + band), ("band, lower edge", found.final - band)]
     return rows
 
 
-def _following(problem: Problem, level: LevelForm, cases: Array) -> Array:
-    """A level that follows held terminals, where those end."""
-    values = evaluate(level.offset, cases)
+def _level(found: Solved, level: LevelForm) -> Array:
+    """A level [V] (case,); one that follows held terminals, where those end."""
+    if level.kind != "voltage":
+        part = found.form(level.fraction)
+        return part * found.final if level.kind == "final" else found.start + part * (found.final - found.start)
+    values = found.form(level.offset)
     for terminal, fraction in level.follows:
-        wave = problem.structure.waveforms[terminal - problem.structure.shape.free]
-        values = values + evaluate(fraction, cases) * evaluate(wave.points[-1][1], cases)
+        wave = found.structure.waveforms[terminal - found.structure.shape.free]
+        values = values + found.form(fraction) * evaluate(wave.points[-1][1], found.cases)
     return values

@@ -7,7 +7,7 @@ import numpy as np
 
 from rcrules.engine._energy import squared
 from rcrules.engine._exponential import ExponentialSum
-from rcrules.engine._shape import Array
+from rcrules.engine._shape import Array, Indices
 from rcrules.engine._zeros import zeros
 
 
@@ -21,6 +21,17 @@ class Signal:
     """f in each piece, over the time since its start."""
     lengths: tuple[Array, ...]
     """[s], (case,) for each piece; inf in the last"""
+
+    def take(self, cases: Indices) -> "Signal":
+        """The same in some of the cases, each as often as it is named.
+
+        cases: (n,)
+        """
+        return Signal(
+            starts=self.starts[:, cases],
+            sums=tuple(found.take(cases) for found in self.sums),
+            lengths=tuple(length[cases] for length in self.lengths),
+        )
 
     def initial(self) -> Array:
         """Value just after t = 0. [V], (case,)"""

@@ -277,3 +277,14 @@ def test_widths_of_cases_with_different_numbers_of_crossings():
     )
     both = Signal(starts=np.zeros((1, 2)), sums=(found,), lengths=(np.full(2, np.inf),))
     assert both.width() == approx([np.log(0.5 / 0.3), np.inf])
+
+
+def test_cases_are_taken_as_often_as_they_are_named() -> None:
+    """1 kΩ and 2 kΩ at 1 mF from 1 V, each at its own instants."""
+    modes = solve(CHARGING, np.array([[1e3], [2e3]]), np.array([[1e-3], [1e-3]]))
+    drive = step(CHARGING, [1.0, 0.0])
+    twice = {name: np.repeat(getattr(drive, name), 2, axis=0) for name in ("starts", "levels", "slopes", "amps")}
+    drive = Drive(**twice)
+    whole = modes.respond(drive, np.zeros((2, 1))).observe(at_node(CHARGING, 0), 0.0)
+    found = whole.take(np.array([1, 0, 1])).at(np.array([1.0, 1.0, 2.0]))
+    assert found == approx([1 - np.exp(-0.5), 1 - np.exp(-1.0), 1 - np.exp(-1.0)])
