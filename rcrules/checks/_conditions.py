@@ -7,6 +7,7 @@ from rcrules.checks._facts import facts, unknown
 from rcrules.checks._lookup import Missing
 from rcrules.checks._subjects import Subject
 from rcrules.networks import Board
+from rcrules.parts import RatedPart, Unknown
 from rcrules.rulebook import Rule, Selection, facts_of
 
 FACT_WORDS: Final = {
@@ -34,10 +35,16 @@ def condition(rule: Rule, subject: Subject, board: Board) -> Missing:
 
 def _lines(name: str, subject: Subject, board: Board) -> Iterator[str]:
     if name == "rated_voltage":
-        yield from (f'[part."{ref}"] rated-voltage = "…"' for ref in subject.refs)
+        yield from (_rating(board.parts[ref]) for ref in subject.refs)
         return
     for held in (held for view in subject.views for held in unknown(view, board)):
         yield f'[supply."{held.net}"] voltage = "…"' if held.kind == "supply" else f'[net."{held.net}"] swing = "…"'
+
+
+def _rating(part: RatedPart) -> str:
+    """The line that gives a rated voltage: of all capacitors, where many lack one."""
+    own = f'[part."{part.ref}"] rated-voltage = "…"'
+    return part.rated_voltage.ask or own if isinstance(part.rated_voltage, Unknown) else own
 
 
 def _named(selection: Selection) -> Iterator[str]:

@@ -124,7 +124,7 @@ def _valued(part: Part, told: _Told, reads: ValueKind, facts: Facts, around: Con
         fitted=told.fitted,
         fitted_why=told.fitted_why,
         origins={name: (said[0].origin, said[0].place) for name, said in named.items() if said},
-        disagreements=(*_lost(named, "Ω" if reads == "resistor" else "F"), *facts.stops, *array.notes),
+        disagreements=(*_lost(named, "Ω" if reads == "resistor" else "F"), *_unheard(facts, named), *array.notes),
     )
 
 
@@ -222,6 +222,14 @@ def _lost(named: _Named, unit: str) -> tuple[str, ...]:
     several = ((name, said) for name, said in named.items() if len(said) > 1)
     words = (disagreements(name.replace("_", " "), said, _UNITS.get(name, "1") or unit) for name, said in several)
     return tuple(chain(*words))
+
+
+def _unheard(facts: Facts, named: _Named) -> Iterator[str]:
+    """What sources say that is not taken: part numbers that nearly fit, a tolerance letter with several meanings."""
+    yield from facts.stops
+    why = next((source.read.tolerance_why for source in facts.sources if source.read.tolerance_why), "")
+    if why and not named["tolerance"]:
+        yield f'{why}, so none is taken; its [part] can tell it: tolerance = "…"'
 
 
 def _polar(part: Part) -> bool:

@@ -11,6 +11,8 @@ from rcrules.reports._words import count, names_text, number
 from rcrules.reports._wrap import laid_out
 
 _SHOWN: Final = 4
+_ASKED: Final = 12
+"""References in the name of one table."""
 _FACTS: Final = ("value", "tolerance", "rated_voltage", "rated_power", "dielectric")
 
 
@@ -59,8 +61,15 @@ def _cells(rows: list[Json], *, verbose: bool) -> list[Span]:
         "" if row["rated_power"] is None else number(row["rated_power"], "W"),
         row["dielectric"] or "",
         "" if row["fitted"] else "not fitted",
-        (row["why_unknown"] or "; ".join(_sources(row["origins"], verbose=verbose)), "dim"),
+        (_unread(row, refs) or "; ".join(_sources(row["origins"], verbose=verbose)), "dim"),
     ]
+
+
+def _unread(row: Json, refs: list[str]) -> str:
+    """Why there is no value, with the line of the project file that gives it; '' where there is one."""
+    why, named = row["why_unknown"], ", ".join(refs[:_ASKED])
+    asks = bool(why) and row["fitted"] and row["unit"] is not None
+    return f'{why}   [part."{named}"] value = "…"' if asks else str(why or "")
 
 
 def _tolerance(row: Json) -> str:

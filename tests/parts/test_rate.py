@@ -278,3 +278,19 @@ def test_the_size_comes_from_the_footprint_or_the_texts():
 
 def test_every_part_is_rated_in_the_order_of_the_design():
     assert list(rate(design(part("U1", "QX1"), part("R2", "1k"), part("C1", "1n")), Project())) == ["U1", "R2", "C1"]
+
+
+def test_a_tolerance_letter_with_several_meanings_is_told_with_the_line_to_add():
+    read = rate(design(part("R1", "4K7H")), Project())["R1"]
+    assert read.value.si == 4700.0
+    assert read.disagreements == (
+        "the tolerance letter 'H' is used in several meanings, so none is taken; "
+        'its [part] can tell it: tolerance = "…"',
+    )
+
+
+def test_where_many_capacitors_lack_a_rating_one_line_is_asked_for_all():
+    many = rate(design(*(part(f"C{n}", f"{n}n") for n in range(1, 14))), Project())
+    assert many["C3"].rated_voltage == Unknown(why="not given", ask='[defaults.capacitor] rated-voltage = "…"')
+    few = rate(design(*(part(f"C{n}", f"{n}n") for n in range(1, 4))), Project())
+    assert few["C3"].rated_voltage == Unknown(why="not given")

@@ -28,7 +28,7 @@ def test_what_was_not_understood_comes_first_with_the_reason():
     lines = told({"ref": "C1"}, unread).splitlines()
     assert lines[0].endswith("value not understood: 1")
     assert lines[2].startswith("C9")
-    assert "'4.7' has no unit: pF or µF" in lines[2]
+    assert """'4.7' has no unit: pF or µF   [part."C9"] value = "…\"""" in lines[2]
 
 
 def test_every_fact_has_its_source_and_on_request_its_line():
