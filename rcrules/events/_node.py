@@ -48,7 +48,8 @@ def pose_node(bench: Bench, node: Node, measure: Measure, options: Mapping[str, 
     absorbing = _most_absorbing(bench, scene.network) if measure.settles else None
     if absorbing is not None and measure.settles == "by a share":
         structure = replace(structure, absorbed=table.absorption(absorbing))
-    structure = replace(structure, rising=_rises(scene, found, structure, table))
+    upwards = event in ("power-up", "step-up")
+    structure = replace(structure, rising=_rises(scene, found, structure, table, upwards=upwards))
     forms = tuple(
         (name, leveller.form(name, level, rising=structure.rising != (name == "armed")))
         for name, level in levels.items()
@@ -134,8 +135,11 @@ class _Start:
     final: float
 
 
-def _rises(scene: Scene, event: Transient, structure: Structure, table: Table) -> bool:
-    """Direction of the change: from just after the event to the end; for a pulse that returns, that of the return."""
+def _rises(scene: Scene, event: Transient, structure: Structure, table: Table, *, upwards: bool) -> bool:
+    """Direction of the change: from just after the event to the end; for a pulse that returns, that of the return.
+
+    upwards: the direction where nothing moves at nominal.
+    """
     if scene.length > 0.0:  # it comes back to where it was: a reset that rests high has risen
         return _nominal(structure, table).before > 0.0
     joints = [scene.circuit.joints[name] for name in event.movers]
@@ -149,12 +153,14 @@ def _rises(scene: Scene, event: Transient, structure: Structure, table: Table) -
         and scene.joint in scene.circuit.driven(event.movers, event.after)
     ):
         wave = structure.waveforms[scene.circuit.held.index(event.movers[0])]
-        return wave.before == () and wave.points[-1][1] != ()
+        moves = wave.before != wave.points[-1][1]
+        return wave.before == () if moves else upwards
     start = _nominal(structure, table)
     least = 1e-9 * max(abs(start.before), abs(start.initial), abs(start.final), 1e-9)
     if abs(start.final - start.initial) > least:
         return start.final > start.initial
-    return start.final > start.before + least
+    at_rest = abs(start.final - start.before) <= least and not pushing
+    return upwards if at_rest else start.final > start.before + least
 
 
 def _nominal(structure: Structure, table: Table) -> _Start:

@@ -97,6 +97,9 @@ def _dip(scene: Scene, contacts: Switched) -> Transient:
         if joint is None or scene.sources.kind(joint) != "supply":
             waves[name] = still(_rest(scene, name))
             continue
+        if scene.sources.goes(joint) == "never":
+            waves[name] = still(scene.sources.supply(joint))
+            continue
         rise = scene.sources.rise(joint)
         volts = _supply(scene, joint, "" if rise else f"{joint} rises at once")
         back = constant(scene.length)

@@ -2,7 +2,9 @@
 
 from math import inf, log
 
+import numpy as np
 import pytest
+from scipy.integrate import solve_ivp
 
 from rcrules.events import Unmeasurable, pose
 from rcrules.measures import registry
@@ -112,3 +114,25 @@ def test_one_open_resistor_leaves_the_other():
     one = board("C1 100u", 'voltage = "48 V"', "R1 100k")
     assert measured(one, "discharge_time", to="5 V", fault="any one resistor open").nominal == inf
     assert measured(one, "discharge_time", to="60 V", fault="any one resistor open").nominal == 0.0
+
+
+@pytest.mark.parametrize("seed", range(6))
+def test_hold_up_agrees_with_integrating_the_load(seed: int):
+    """C v' = -(I + v/R), or -(P/v + v/R), stepped until the level is passed (scipy, LSODA)."""
+    rng = np.random.default_rng(seed)
+    farads, ohms, volts = 10 ** rng.uniform(-6, -3), 10 ** rng.uniform(2, 5), rng.uniform(5, 60)
+    low, load, power = volts * rng.uniform(0.3, 0.9), 10 ** rng.uniform(-4, -1), seed % 2 == 1
+    unit = "W" if power else "A"
+    facts = f'voltage = "{volts!r} V"\nload = "{load!r} {unit}"'
+    at = board(f"C1 {farads * 1e6:.12f}u", facts, f"R1 {ohms:.9f}")
+    found = measured(at, "hold_up_time", to=f"{low!r} V").nominal
+
+    def falls(_: float, v: np.ndarray) -> np.ndarray:
+        return -((load / v if power else load) + v / ohms) / farads
+
+    def passed(_: float, v: np.ndarray) -> float:
+        return float(v[0] - low)
+
+    passed.terminal = True  # type: ignore[attr-defined]  # the way of solve_ivp
+    stepped = solve_ivp(falls, (0, 3 * found), [volts], events=passed, rtol=1e-11, atol=1e-12, method="LSODA")
+    assert found == pytest.approx(float(stepped.t_events[0][0]), rel=1e-7)
