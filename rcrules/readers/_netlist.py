@@ -51,6 +51,9 @@ class Netlist:
         self._listed += 1
         _bounds.bound(self.source.name, component.line, "parts", self._listed, self.source.limits.parts)
         refuse_long(self.source.name, component)
+        if not component.ref:
+            self.remark(component.line, "a component without a reference is left out")
+            return
         first = self._components.setdefault(component.ref, component)
         if first is component:
             return
@@ -65,7 +68,10 @@ class Netlist:
             self._by_symbol.setdefault(name, part)
 
     def add_node(self, node: Node) -> None:
-        """Keep a connection for the net that is added next."""
+        """Keep a connection for the net that is added next; one that names no part or no pin is told."""
+        if not node[0] or not node[1]:
+            self.remark(node[4], "a connection that names no part or no pin is left out")
+            return
         self._pending.append(node)
         self._bounded(node)
 

@@ -176,3 +176,15 @@ def test_utf_16_is_read() -> None:
 
 def test_a_namespace_is_looked_through() -> None:
     assert len(read(VERSION_E.replace("<export ", '<export xmlns="urn:any" ')).parts) == 4
+
+
+def test_connections_and_components_that_name_no_part_are_left_out_and_told() -> None:
+    nodes = '<node ref="" pin="1"/><node ref="R1"/><node ref="R1" pin="2"/>'
+    text = f'<export><components><comp/><comp ref="R1"/></components><nets><net name="A">{nodes}</net></nets></export>'
+    export = readers.read(Source(name="a.xml", data=text.encode()))
+    assert ([part.ref for part in export.parts], len(export.pins)) == (["R1"], 1)
+    assert [remark.text for remark in export.remarks] == [
+        "a component without a reference is left out",
+        "a connection that names no part or no pin is left out",
+        "a connection that names no part or no pin is left out",
+    ]
