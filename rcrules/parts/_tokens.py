@@ -49,7 +49,7 @@ _COMMON: Final = (
 )
 _TO: Final = r"\s?(?:-|\.{2,3}|…|~)\s?"
 _RESISTOR: Final = (
-    ("count", r"[xX*]\s?(?P<count>[2-9]|1[0-6])(?![A-Za-z0-9.])"),
+    ("count", r"[xX*]\s?(?P<count>[2-9]|1[0-6])(?![A-Za-z0-9.]|\s?[Vv%])"),
     ("range", rf"{_N}[kKMRΩ]?{_TO}{_N}\s?(?:[kKM]{_OHM}?|{_OHM}){_END}"),
     ("unclear", rf"\d{{1,6}}E\d{_END}"),
     ("coefficient", rf"(?:TCR?|TK)\s?=?\s?(?P<n>\d{{1,4}}){_STOP}"),
@@ -70,7 +70,7 @@ _CODED: Final = r"(?P<code>\d{3})"
 _CAPACITOR: Final = (
     ("range", rf"{_N}(?:[pnuµ]F?)?{_TO}{_N}\s?[pnuµ][Ff]?{_END}"),
     ("tantalum", r"T(?=\d{1,4}(?:\.\d{1,2})?\s?[uµU])"),
-    ("count", r"(?:[xX*]\s?(?P<count>[3-9]|1[0-6])|[x*]\s?2)(?![A-Za-z0-9.])"),
+    ("count", r"(?:[xX*]\s?(?P<count>[3-9]|1[0-6])|[x*]\s?2)(?![A-Za-z0-9.]|\s?[Vv%])"),
     ("group", rf"G[HMP]\d{{2,4}}{_STOP}"),
     ("code", rf"(?P<volts>[0-3][{LETTERS}]){_CODED}(?P<letter>[BCDFGJKMZ]){_END}"),
     ("rkm", rf"(?P<whole>\d{{0,9}})(?P<mark>[pnuµPNU])(?P<part>\d{{1,6}}){_MARK}[Ff]?(?P<letter>[BCDGJKMZ])?{_END}"),
