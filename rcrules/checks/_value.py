@@ -4,8 +4,7 @@ from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, field, replace
 from typing import Final
 
-import numpy as np
-
+from rcrules.checks._composite import Composite, Posed
 from rcrules.checks._count import count, least_path
 from rcrules.checks._lookup import Missing, look_up
 from rcrules.checks._named import named_number
@@ -14,10 +13,9 @@ from rcrules.checks._resolve import Bound, Case, is_count, is_joint
 from rcrules.checks._subjects import Subject, Subjects
 from rcrules.engine import Shape
 from rcrules.events import OptionValue, Unmeasurable, part_parameter, pose
-from rcrules.expressions import Binary, Call, Expression, Values, calls, names, value_of
-from rcrules.measures import Measure, Theory
+from rcrules.expressions import Binary, Call, Expression, calls, names
 from rcrules.networks import Board
-from rcrules.problems import Array, Parameter, Problem, Structure
+from rcrules.problems import Parameter, Problem, Structure
 from rcrules.project import Project
 from rcrules.quantities import Spread
 from rcrules.rulebook import Limit, Rule, Term, dict_of
@@ -26,89 +24,6 @@ _EMPTY: Final = Structure(
     shape=Shape(free=0, held=0, resistors=(), capacitors=()), ohms=(), farads=(), waveforms=()
 )
 """Where nothing is posed."""
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class _Posed:
-    """One measure of the value."""
-
-    call: Call
-    structure: Structure
-    measure: Measure
-    columns: tuple[int, ...]
-    """Its columns among those of the value."""
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class _Composite:
-    """The value as a function of its columns."""
-
-    expression: Expression
-    posed: tuple[_Posed, ...]
-    constants: tuple[tuple[str, float], ...]
-    columns: tuple[tuple[str, int], ...]
-    """Names that are columns."""
-    counts: tuple[tuple[Call, float, tuple[int, ...]], ...]
-    """Calls that are a number, or a sum of columns."""
-
-    def compute(self, structure: Structure, cases: Array) -> Array:  # noqa: ARG002 - it has those of its measures
-        """Values (case,); cases (case, column)."""
-        found = {item.call: item.measure.compute(item.structure, cases[:, list(item.columns)]) for item in self.posed}
-        found |= {call: start + cases[:, list(own)].sum(axis=1) for call, start, own in self.counts}
-        values = Values(
-            names={**dict(self.constants), **{name: cases[:, index] for name, index in self.columns}}, calls=found
-        )
-        return np.broadcast_to(np.asarray(value_of(self.expression, values), dtype=float), (len(cases),)).copy()
-
-    def theory(self, structure: Structure, low: Array, high: Array) -> Theory:  # noqa: ARG002
-        """Signs where every measure that is added or taken off says so and none says the other; else not known."""
-        signs = _signs(self.expression, self, low, high)
-        return Theory(signs=tuple(signs) if signs is not None else (None,) * len(low))
-
-
-def _signs(of: Expression, composite: _Composite, low: Array, high: Array) -> list[int | None] | None:
-    """Sign of the slope by column; None where the shape of the expression says nothing."""
-    nothing: list[int | None] = [0] * len(low)
-    if isinstance(of, Binary) and of.sign in "+-":
-        sides = [_signs(side, composite, low, high) for side in (of.left, of.right)]
-        if sides[0] is None or sides[1] is None:
-            return None
-        other = sides[1] if of.sign == "+" else [None if sign is None else -sign for sign in sides[1]]
-        return [_agreed(one, two) for one, two in zip(sides[0], other, strict=True)]
-    if isinstance(of, Call):
-        return _of_call(of, composite, low, high)
-    own = [item.name for item in names(of)]
-    columns = dict(composite.columns)
-    if not calls(of) and not any(name in columns for name in own):
-        return nothing
-    if len(own) == 1 and of == names(of)[0]:
-        nothing[columns[own[0]]] = 1
-        return nothing
-    return None
-
-
-def _of_call(of: Call, composite: _Composite, low: Array, high: Array) -> list[int | None] | None:
-    found: list[int | None] = [0] * len(low)
-    for item in composite.posed:
-        if item.call == of and item.structure.diodes:
-            return None
-        if item.call == of:
-            own = item.measure.theory(item.structure, low[list(item.columns)], high[list(item.columns)])
-            for column, sign in zip(item.columns, own.signs, strict=True):
-                found[column] = sign
-            return found
-    for call, _, columns in composite.counts:
-        if call == of:
-            for column in columns:
-                found[column] = 1
-            return found
-    return None
-
-
-def _agreed(one: int | None, two: int | None) -> int | None:
-    if one is None or two is None:
-        return None
-    return one or two if 0 in (one, two) or one == two else None
 
 
 @dataclass(slots=True, kw_only=True)
@@ -149,7 +64,7 @@ def pose_value(case: Case, subjects: Subjects, board: Board, project: Project) -
     posed = tuple(_posed(term, rule, case.subject, subjects, board, project, columns) for term in terms)
     constants, own = _named(expression, rule, case.subject, board, project, columns)
     counts = tuple(_counted(call, case.subject, board, columns) for call in calls(expression) if is_count(call))
-    whole = _Composite(expression=expression, posed=posed, constants=constants, columns=own, counts=counts)
+    whole = Composite(expression=expression, posed=posed, constants=constants, columns=own, counts=counts)
     measure = replace(rule.measure, compute=whole.compute, theory=whole.theory, options={})
     bounds = tuple(_shifted(bound, joint) for bound in case.bounds)
     posed_case = replace(case, rule=replace(rule, measure=measure, options={}), bounds=bounds, options={})
@@ -178,12 +93,12 @@ def _shifted(bound: Bound, joint: Sequence[Limit]) -> Bound:
 
 def _posed(
     term: Term, rule: Rule, subject: Subject, subjects: Subjects, board: Board, project: Project, columns: _Columns
-) -> _Posed:
+) -> Posed:
     place = subject if term.at is None else _place(term, subjects)
     options = {name: _option(value, rule, subject, board, project) for name, value in term.options.items()}
     problem = pose(board, project, place.target, term.measure, options)
     own = tuple(columns.add(item) for item in problem.parameters)
-    return _Posed(call=term.call, structure=problem.structure, measure=term.measure, columns=own)
+    return Posed(call=term.call, structure=problem.structure, measure=term.measure, columns=own)
 
 
 def _place(term: Term, subjects: Subjects) -> Subject:

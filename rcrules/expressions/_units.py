@@ -65,7 +65,8 @@ def _name(of: Name, known: Known, wanted: Dimension | None) -> Dimension:
         return dimension_of(known.calls[of.name])
     everything = [*known.names, *known.free, *known.calls, *FUNCTIONS]
     problem = f"no fact, number or measure is called '{of.name}'{_guess(of.name, everything)}"
-    raise QuantityError(problem, at=of.at, length=len(of.name))
+    expected = f'a measure, a fact such as supply_high, or given = {{ {of.name[:40]} = "ask" }}'
+    raise QuantityError(problem, at=of.at, length=len(of.name), expected=expected)
 
 
 def _guess(name: str, everything: list[str]) -> str:
@@ -89,7 +90,7 @@ def _binary(of: Binary, known: Known, wanted: Dimension | None) -> Dimension:
         first, second = (of.left, left), (of.right, right)
         (one, unit), (other, beside) = (second, first) if of.sign == "-" else (first, second)
         problem = f"'{text_of(one)}' is {named(unit)}, which cannot be {word} '{text_of(other)}', {named(beside)}"
-        raise QuantityError(problem, at=of.at)
+        raise QuantityError(problem, at=of.at, expected="two quantities of one kind")
     return left
 
 
@@ -109,7 +110,8 @@ def _call(of: Call, known: Known, wanted: Dimension | None) -> Dimension:
         return _function(of, known, wanted)
     if of.name not in known.calls:
         problem = f"no function or measure is called '{of.name}'{_guess(of.name, [*known.calls, *FUNCTIONS])}"
-        raise QuantityError(problem, at=of.at, length=of.length)
+        expected = f"a measure (rcrules rules --measures lists them), or {', '.join(FUNCTIONS)}"
+        raise QuantityError(problem, at=of.at, length=of.length, expected=expected)
     if of.arguments:
         expected = "options only, such as delay(to = \"1.2 V\")"
         raise QuantityError(f"'{of.name}' takes no plain arguments", at=of.at, length=of.length, expected=expected)

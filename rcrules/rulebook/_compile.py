@@ -10,6 +10,7 @@ from rcrules.measures import Measure
 from rcrules.rulebook._extend import KEY, OFF, Bases, explained, extended, replaced
 from rcrules.rulebook._judged import Judged, judged
 from rcrules.rulebook._keys import EXAMPLE as EXAMPLE_KEYS
+from rcrules.rulebook._keys import LINES
 from rcrules.rulebook._keys import PACK as PACK_KEYS
 from rcrules.rulebook._keys import RULE as RULE_KEYS
 from rcrules.rulebook._limits import limits
@@ -42,7 +43,7 @@ def pack_of(top: Table) -> Pack | None:
             top.wrong((), "the file has no [pack]", do='[pack] name = "our-rules" at the top')
         return None
     table.only(tuple(PACK_KEYS))
-    table.needs("name")
+    table.needs("name", known=tuple(PACK_KEYS), do=LINES)
     name = _kebab(table, "name")
     facts = table.flag("needs-facts")
     title, caution = table.text("title") or name or "", table.text("caution") or ""
@@ -92,10 +93,11 @@ def _kebab(table: Table, key: str) -> str | None:
 def _rule(table: Table, pack: Pack | None, measures: Mapping[str, Measure], seen: dict[str, Table]) -> Rule | None:
     before = len(table.problems.mistakes)
     table.only(_RULE)
-    table.needs("id", "level")
+    table.needs("id", "level", known=_RULE, do=LINES)
     own_id = _kebab(table, "id")
     if own_id is not None and own_id in seen:
-        table.wrong("id", f"the id '{own_id}' is taken", found=f"first at {seen[own_id].place_of('id')}")
+        first = f"first at {seen[own_id].place_of('id')}"
+        table.wrong("id", f"the id '{own_id}' is taken", found=first, do="give it a name of its own")
     if own_id is not None:
         seen.setdefault(own_id, table)
     inner = table.data.get("given")
@@ -112,6 +114,10 @@ def _body(
     table: Table, pack: Pack | None, what: Judged, names: Names, measures: Mapping[str, Measure], own_id: str
 ) -> Rule:
     bounds = limits(table, what.measure, names, measures) if not what.fact else ()
+    if len(bounds) > 1 and any(limit.terms for limit in bounds):
+        key = next(limit.kind for limit in bounds if limit.terms)
+        problem = f"'{key}' depends on measures, and stands beside another limit"
+        table.wrong(key, problem, do="write one rule for each limit")
     what = _with_call(what) if any(limit.terms for limit in bounds) else what
     never = table.word("never", tuple(_NEVER))
     return Rule(
@@ -152,7 +158,7 @@ def _with_call(what: Judged) -> Judged:
 def _example(table: Table) -> Example:
     """``[[rule.example]]``: kept as written, read when it is tried."""
     table.only(tuple(EXAMPLE_KEYS))
-    table.needs("circuit", "outcome")
+    table.needs("circuit", "outcome", known=tuple(EXAMPLE_KEYS), do=LINES)
     outcome = table.word("outcome", OUTCOMES)
     circuit, project = table.text("circuit") or "", table.text("project") or ""
     return Example(place=table.place, circuit=circuit, project=project, outcome=outcome or "")

@@ -9,12 +9,16 @@ import numpy as np
 from rcrules.expressions import Call, Expression, Text, calls, names, text_of, unit_of
 from rcrules.measures import Measure, Theory
 from rcrules.problems import Array, Structure
+from rcrules.rulebook._keys import LINES
+from rcrules.rulebook._keys import RULE as RULE_KEYS
 from rcrules.rulebook._model import OptionValue, Term
 from rcrules.rulebook._numbers import Names, options
+from rcrules.rulebook._selection import KEYS
 from rcrules.rulebook._value import COUNTS, WORD_FACTS, Compiled, compiled
 from rcrules.tomlfile import Table, cut, guess, listed
 from rcrules.vocabulary import HELD_KINDS, PART_KINDS, ROLES
 
+_KNOWN: Final = (*RULE_KEYS, *KEYS)
 SUBJECTS: Final = ("node", "capacitor", "resistor", "pin", "supply", "network", "supply pin", "open-drain net", "board")
 HAS: Final[Mapping[str, tuple[str, ...]]] = {
     "kind": PART_KINDS,
@@ -45,10 +49,12 @@ def judged(table: Table, measures: Mapping[str, Measure], own: Names) -> Judged 
     there = [key for key in ("measure", "every") if key in table.data]
     there = there or [key for key in ("value",) if key in table.data]
     if not there:
-        table.needs("measure")
+        if not table.misspelt(("measure", "every", "value"), _KNOWN):
+            expected = "'measure', 'value' or 'every'"
+            table.wrong((), "the rule says nothing to judge", expected=expected, do='measure = "time_constant"')
         return None
     if len(there) > 1:
-        table.wrong("every", "'measure' and 'every' in one rule", on="key", expected="one of measure, value and every")
+        table.wrong("every", "'measure' and 'every' in one rule", on="key", do="write two rules")
         return None
     if there[0] == "measure":
         return _measured(table, measures, own)
@@ -141,7 +147,7 @@ def _foreign(found: Compiled, subject: str) -> str | None:
 def _worded(table: Table, subject: str | None) -> Judged | None:
     fact = table.word("value", WORD_FACTS)
     words = table.texts("one-of")
-    table.needs(*(() if subject else ("subject",)))
+    table.needs(*(() if subject else ("subject",)), do={"subject": 'subject = "capacitor"'})
     if fact is None or subject is None:
         return None
     if not words:
@@ -159,7 +165,7 @@ def _every(table: Table) -> Judged | None:
     if inner is None:
         return None
     inner.only(("subject", "has"))
-    inner.needs("subject", "has")
+    inner.needs("subject", "has", known=("subject", "has"), do=LINES)
     subject, has = inner.word("subject", SUBJECTS), inner.table("has")
     if has is None or subject is None:
         return None

@@ -64,6 +64,16 @@ EXAMPLE: Final[Mapping[str, tuple[str, Shape]]] = {
     "project": ("What a project file would say about it.", TEXT),
     "outcome": ("What the rule must find there.", one_of(OUTCOMES)),
 }
+LINES: Final[Mapping[str, str]] = {
+    "id": 'id = "reset-lifts-late-enough"',
+    "level": 'level = "warning"',
+    "name": 'name = "our-rules"',
+    "subject": 'subject = "supply pin"',
+    "has": 'has = { kind = "capacitor", within = "the net" }',
+    "circuit": 'circuit = "R1 10k 1% : +3V3, NRST"',
+    "outcome": 'outcome = "holds"',
+}
+"""What a key that is missing could be."""
 LIMIT: Final[Shape] = {
     "anyOf": [
         NUMBER,

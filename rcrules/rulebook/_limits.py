@@ -7,9 +7,11 @@ from typing import Final, Literal
 
 from rcrules.expressions import dimension_of
 from rcrules.measures import Measure
-from rcrules.quantities import QuantityError, Spread, parse_quantity
+from rcrules.quantities import SAMPLES, QuantityError, Spread, parse_quantity
+from rcrules.rulebook._keys import RULE as RULE_KEYS
 from rcrules.rulebook._model import Limit
 from rcrules.rulebook._numbers import NAME, WORD, Names, looked_up
+from rcrules.rulebook._selection import KEYS
 from rcrules.rulebook._value import NUMBER_FACTS, compiled
 from rcrules.tomlfile import Table
 
@@ -30,16 +32,21 @@ def limits(table: Table, measure: Measure, names: Names, measures: Mapping[str, 
     if not there and "every" in table.data:
         one = Spread(low=1.0, nominal=1.0, high=1.0, unit="1")
         return (Limit(kind="at-least", text="1", value=one),)
-    if not there:
-        table.wrong("measure" if "measure" in table.data else "value", "the rule has no limit", expected=_EXPECTED)
+    if not there and not table.misspelt(LIMITS, _KNOWN):
+        where, sample = "measure" if "measure" in table.data else "value", SAMPLES.get(measure.unit, "5")
+        table.wrong(where, "the rule has no limit", expected=_EXPECTED, do=f'at-most = "{sample}"')
     found = [limit for kind in there if (limit := _limit(table, kind, measure, names, measures)) is not None]
     numbers = {limit.kind: limit.value for limit in found if limit.value is not None}
     low, high = numbers.get("at-least"), numbers.get("at-most")
     if low is not None and high is not None and low.nominal > high.nominal:
-        table.wrong("at-most", "'at-most' lies below 'at-least': nothing can hold", found=table.found("at-most"))
+        problem = "'at-most' lies below 'at-least': nothing can hold"
+        table.wrong("at-most", problem, found=table.found("at-most"), do="exchange them")
     return tuple(found)
 
 
+_BY: Final = 'at-most = { by = "mode", standard = "…", fast = "…" } looks the word up on the board'
+LIMITS: Final = ("at-least", "at-most", "equals", "one-of")
+_KNOWN: Final = (*RULE_KEYS, *KEYS)
 _EXPECTED: Final = "at-least, at-most or equals"
 
 
@@ -86,7 +93,7 @@ def _amount(table: Table, key: str, measure: Measure, kind: str) -> Spread | Non
     if spread is None and len(table.problems.mistakes) > earlier:
         _name_measure(table, key, measure)
     if spread is not None and spread.low != spread.high:
-        table.wrong(key, f"'{kind}' must be one number, not a range", found=table.found(key))
+        table.wrong(key, f"'{kind}' must be one number, not a range", found=table.found(key), do="take one end")
         return None
     return spread
 
@@ -104,7 +111,7 @@ def _by_word(table: Table, kind: Kind, measure: Measure, names: Names) -> Limit 
     inner = table.table(kind)
     word = inner.text("by") if inner else None
     if inner is None or word is None or not NAME.fullmatch(word):
-        table.wrong(kind, f"'{kind}' as a table needs by = the name of a word", found=table.found(kind))
+        table.wrong(kind, f"'{kind}' as a table needs by = the name of a word", found=table.found(kind), do=_BY)
         return None
     names.use(inner, "by", word, WORD)
     amounts = {key: _amount(inner, key, measure, key) for key in inner.data if key != "by"}

@@ -16,6 +16,7 @@ from rcrules.vocabulary import EVENTS
 WORD: Final = "word"
 """Stands for a unit where a name means a word."""
 _ASK_IN: Final = "ask in "
+_UNUSED: Final = "use it as a limit, an option or in an expression, or leave it out"
 NAME: Final = re.compile(r"[a-z][a-z0-9_]{0,59}")
 
 
@@ -44,7 +45,7 @@ class Names:
         if earlier is not None and earlier != unit:
             where = f"'{self.first[name]}'" if name in self.first else "the project file"
             problem = f"'{name}' cannot be {_named(unit)} as '{key}': it is {_named(earlier)} in {where}"
-            table.wrong(key, problem, at=0, length=len(name))
+            table.wrong(key, problem, at=0, length=len(name), do="give the two numbers two names")
             return
         self.units[name] = unit
         self.first.setdefault(name, key)
@@ -58,13 +59,15 @@ def options(table: Table, measure: Measure, names: Names) -> dict[str, OptionVal
     """``with``: every option of the measure, defaults filled in."""
     given = table.table("with")
     if given is not None and not measure.options:
-        table.wrong("with", f"measure '{measure.name}' has no options", on="key")
+        table.wrong("with", f"measure '{measure.name}' has no options", on="key", do="leave 'with' out")
     elif given is not None:
         given.only(tuple(measure.options), do=f"these are the options of '{measure.name}'")
     found: dict[str, OptionValue] = {}
     for key, option in measure.options.items():
         if given is not None and key in given.data:
             value = _option(given, key, option, measure, names)
+        elif given is not None and option.default is None and given.misspelt((key,), tuple(measure.options)):
+            continue  # that is told
         else:
             value = _default(table, key, option, measure)
         if value is not None:
@@ -181,6 +184,6 @@ def _is_used(inner: Table, name: str, names: Names) -> bool:
         return False
     if name not in names.units:
         if name not in names.tried:
-            inner.wrong(name, f"'{name}' is given but never used{guess(name, names.units)}", on="key")
+            inner.wrong(name, f"'{name}' is given but never used{guess(name, names.units)}", on="key", do=_UNUSED)
         return False
     return True

@@ -60,6 +60,9 @@ def _rule(measures: Mapping[str, Measure]) -> dict[str, Any]:
     properties = {**_described(RULE), **_described(SELECTION), **_nested()}
     properties["measure"] = {**properties["measure"], **one_of(tuple(measures))}
     properties["subject"] = {**properties["subject"], **one_of(_subjects(measures))}
+    every_option = {name: option.summary for measure in measures.values() for name, option in measure.options.items()}
+    told = {name: {"description": summary} for name, summary in every_option.items()}
+    properties["with"] = {**properties["with"], "properties": told, "additionalProperties": False}
     properties["every"] = {**properties["every"], **_every()}
     examples = _table(EXAMPLE, ("circuit", "outcome"))
     properties["example"] = {"type": "array", "items": examples, "description": "Circuits to try the rule on."}

@@ -48,6 +48,7 @@ WORD_FACTS: Final = ("dielectric", "kind", "role", "certainty", "size")
 """Facts that are words, for ``one-of``."""
 COUNTS: Final[Mapping[str, str]] = {"count": "1", "path_resistance": "Ω"}
 """What is read off the network itself, with its unit."""
+_PLAIN: Final = "what comes out as a time, a voltage, a plain number …"
 ENDS: Final = ("contact", "capacitor", "pin", "supply", "ground", "connector")
 """Between what ``path_resistance`` counts."""
 _COUNTED: Final[Mapping[str, tuple[str, ...]]] = {
@@ -87,12 +88,20 @@ def compiled(
         if wanted is not None and dimension != wanted:
             raise QuantityError(f"is {named(dimension)}, and {named(wanted)} goes there", length=len(text))
         if unit_of(dimension) not in QUANTITY_NAMES:
-            raise QuantityError(f"is {named(dimension)}, in which no limit can be told", length=len(text))
+            problem = f"is {named(dimension)}, in which no limit can be told"
+            raise QuantityError(problem, length=len(text), expected=_PLAIN)
         _note(table, key, expression, known, own)
         called = tuple(terms[call] for call in calls(expression) if call in terms)
         return Compiled(expression=expression, terms=called, dimension=dimension)
 
-    return table.parsed(key, parse, "an expression such as 'final_voltage() - 0.3 V'")
+    text = table.text(key, "an expression in quotes, such as 'final_voltage() - 0.3 V'")
+    try:
+        return parse(text) if text is not None else None
+    except QuantityError as error:
+        joint = "" if error.problem.startswith("is ") else ":"
+        problem, expected = f"'{key}'{joint} {error.problem}", error.expected or None
+        table.wrong(key, problem, at=error.at, length=error.length, expected=expected)
+        return None
 
 
 def _called(of: Expression, measures: Mapping[str, Measure]) -> Expression:
@@ -162,7 +171,8 @@ def _term(call: Call, measure: Measure, own: Names) -> Term:
             raise QuantityError(problem, at=place, length=len(name), expected=listed((*measure.options, "at")))
     for name, option in measure.options.items():
         if name not in options and option.default is None:
-            raise QuantityError(f"'{call.name}' needs '{name}': {option.summary}", at=call.at, length=call.length)
+            problem, expected = f"'{call.name}' needs '{name}': {option.summary}", f"{call.name}({name} = …)"
+            raise QuantityError(problem, at=call.at, length=call.length, expected=expected)
         if name not in options and option.default is not None:
             options[name] = _default(option)
     return Term(call=call, measure=measure, options=options, at=at)

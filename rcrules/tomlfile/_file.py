@@ -25,6 +25,13 @@ _GUARD: Final = re.compile(
     re.DOTALL,
 )
 """Strings (also unterminated ones, so that each character is looked at once), comments, and the marks that nest."""
+_ADVICE: Final = {
+    "invalid value": 'put texts in quotes: key = "text"',
+    "illegal character '\\n'": "close the quote on the same line, or write \'\'\' around texts of several lines",
+    "cannot overwrite a value": "say each key once",
+    "cannot declare": "give each table its heading once; a list of tables has double brackets: [[rule]]",
+}
+"""What the TOML reader says, and what to do about it."""
 _POSITION: Final = re.compile(r" \(at (?:line (\d+), column (\d+)|end of document)\)$")
 
 
@@ -146,7 +153,7 @@ def _syntax(name: str, text: str, message: str) -> Mistake:
         at = _line_starts(text)[int(match[1]) - 1] + int(match[2]) - 1
     place, shown, marker = _marked(name, text, (at, at + 1))
     problem = f"not valid TOML: {message[: match.start()].lower()}"
-    do = 'put texts in quotes: key = "text"' if "invalid value" in problem else None
+    do = next((advice for words, advice in _ADVICE.items() if words in problem), None)
     return Mistake(place=place, problem=problem, do=do, shown=shown, span=marker)
 
 

@@ -80,11 +80,21 @@ class Table:
                 problem = f"unknown key '{cut(key)}'{guess(key, known)}"
                 self.wrong(key, problem, on="key", expected=listed(known), do=do)
 
-    def needs(self, *keys: str) -> None:
-        """Note each key that must be there and is not."""
+    def needs(self, *keys: str, known: Sequence[str] = (), do: Mapping[str, str] | None = None) -> None:
+        """Note each key that must be there and is not.
+
+        known: all keys of the table, where ``only`` tells of others: one that is misspelt is not missing too. do: a
+        line that would give a key.
+        """
         for key in keys:
-            if key not in self.data:
-                self.problems.mistakes.append(self.file.mistake(self.path, f"'{key}' is missing"))
+            if key not in self.data and not self.misspelt((key,), known):
+                line = (do or {}).get(key)
+                self.problems.mistakes.append(self.file.mistake(self.path, f"'{key}' is missing", do=line))
+
+    def misspelt(self, keys: Sequence[str], known: Sequence[str]) -> bool:
+        """Whether a key that is not known is most likely one of some."""
+        strange = (key for key in self.data if known and key not in known)
+        return any(not set(get_close_matches(key, known, n=1)).isdisjoint(keys) for key in strange)
 
     def found(self, key: str | int | Path) -> str:
         """The value as the file writes it."""
