@@ -11,7 +11,7 @@ from dataclasses import replace
 from typing import Any, Final
 
 from rcrules.errors import Mistake
-from rcrules.tomlfile import Table, cut, guess, listed
+from rcrules.tomlfile import Table, cut, guess
 
 KEY: Final = "extends"
 OFF: Final = "off"
@@ -71,7 +71,8 @@ def extended(table: Table, bases: Bases) -> Table | None:
         base = bases.find(name) if isinstance(name, str) else None
         if base is None and isinstance(name, str):
             names = bases.names()
-            problem, expected = f"no rule is called '{cut(name)}'{guess(name, names)}", listed(sorted(names))
+            problem = f"no rule is called '{cut(name)}'{guess(name, names)}"
+            expected = "the id of a rule of these files, or of a shipped pack (rcrules rules lists them)"
             table.wrong(KEY, problem, at=0, length=len(name), expected=expected)
         if base is None:
             return None
