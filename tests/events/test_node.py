@@ -3,7 +3,9 @@
 from dataclasses import replace
 from math import exp, inf, log
 
+import numpy as np
 import pytest
+from scipy.integrate import solve_ivp
 
 from rcrules.events import Unmeasurable, pose
 from rcrules.measures import registry
@@ -194,3 +196,34 @@ def test_what_leakage_hardly_moves_stays_a_linear_circuit():
     assert leaking("-1 uA .. 1 uA", "10k").pose("NRST", "delay", event="power-up", to="2.31 V").structure.diodes == ()
     high = leaking("-1 uA .. 1 uA", "10k").measure("NRST", "final_voltage", given_only=True).high
     assert high == pytest.approx(3.3, rel=1e-8)
+
+
+def test_two_supplies_in_sequence_against_stepping_the_circuit():
+    """+5V ramps first, +3V3 from its valid level on; a node between both follows (scipy)."""
+    nets = """
+        +5V: U2.1/VO/power_out R1.1
+        +3V3: U3.1/VO/power_out R2.1 U1.3/VDD/power_in
+        N: R1.2 R2.2 C1.1 U1.7/IN/input
+        GND: U2.2/GND/power_in U3.2/GND/power_in C1.2 U1.2/GND/power_in
+    """
+    facts = """
+        [supply."+5V"]
+        voltage = "5 V"
+        valid = "4 V"
+        rise = "2 ms"
+        [supply."+3V3"]
+        voltage = "3.3 V"
+        rise = "3 ms"
+        after = "+5V"
+    """
+    board = bench("R1 22k, R2 10k, C1 100n, U1 QX7301, U2 QX5000, U3 QX3300", nets, facts + EXACT)
+    begins = 2e-3 * 4 / 5
+
+    def rises(t: float, v: np.ndarray) -> np.ndarray:
+        five, three = 5 * min(t / 2e-3, 1.0), 3.3 * min(max(t - begins, 0.0) / 3e-3, 1.0)
+        return ((five - v) / 22e3 + (three - v) / 10e3) / 100e-9
+
+    stepped = solve_ivp(rises, (0, 10e-3), [0.0], rtol=1e-10, atol=1e-12, max_step=2e-5, dense_output=True)
+    for instant in (0.5e-3, 1.8e-3, 3e-3, 6e-3):
+        found = board.measure("N", "voltage_at", event="power-up", time=instant).nominal
+        assert found == pytest.approx(float(stepped.sol(instant)[0]), abs=1e-7)
