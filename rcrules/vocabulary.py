@@ -104,3 +104,5 @@ NUMBER_CODES: Final[Mapping[str, tuple[str, ...]]] = {
 """Fact in a part number -> the codes of open standards in which it may be written, the usual one first."""
 FED_KINDS: Final = ("reset", "adc", "amplifier", "logic", "supply", "regulator", "timer", "connector", "other")
 """What a fed pin is, as a rule's ``kind-fed`` names it."""
+BOUNDS: Final = ("worst", "nominal", "yield")
+"""Over which cases a rule judges."""

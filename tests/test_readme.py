@@ -102,5 +102,16 @@ def test_shown_finding_is_what_the_demo_prints(capfd: pytest.CaptureFixture[str]
     """The finding explained in the README stands word for word in the demo's report."""
     assert main(["demo", str(tmp_path / "demo")]) == 0
     out, _ = capfd.readouterr()
-    (finding,) = blocks("text")
+    finding, _ = blocks("text")
     assert finding.strip() in out
+
+
+def test_the_rule_that_is_tried_on_a_board_reads_as_shown(capfd: pytest.CaptureFixture[str], tmp_path: Path) -> None:
+    """What the README shows of ``rules --on`` is what it prints for the demo board."""
+    folder = tmp_path / "demo"
+    assert main(["demo", str(folder)]) == 0
+    capfd.readouterr()
+    exports = [str(folder / name) for name in ("tide-gauge.xml", "tide-gauge-bom.csv")]
+    assert main(["rules", str(folder / "gauge-rules.toml"), "--on", *exports]) == 0
+    _, tried = blocks("text")
+    assert tried.strip() in capfd.readouterr().out

@@ -13,6 +13,7 @@ from rcrules.checks._subjects import Subject, Subjects
 from rcrules.checks._value import pose_value
 from rcrules.checks._verdict import Verdict, decide
 from rcrules.checks._words import worded
+from rcrules.checks._yield import by_yield
 from rcrules.design import natural
 from rcrules.events import Unmeasurable, pose
 from rcrules.findings import Finding, Json
@@ -56,7 +57,7 @@ def check(
     subjects = Subjects(board)
     found = [case for rule in rules for case in _cases(rule, subjects, board, project, only)]
     cases = [case for case in found if case.sure or not sure_only]
-    judged = _judge(cases, subjects, board, project)
+    judged = _judge(cases, subjects, board, project, asked)
     posed = (item.problem.parameters for item in judged if item.problem)
     listed, numbers = listed_assumptions(key for parameters in (also, *posed) for key in assumptions_of(parameters))
     findings = [finding(item, board, project, _indexes(item, numbers), asked=asked) for item in judged]
@@ -74,7 +75,9 @@ def _cases(
     return [resolve(rule, item, board, project, sure=met is True) for item, met in chosen if met is not False]
 
 
-def _judge(cases: Iterable[Case], subjects: Subjects, board: Board, project: Project) -> list[Judged]:
+def _judge(
+    cases: Iterable[Case], subjects: Subjects, board: Board, project: Project, asked: Asked
+) -> list[Judged]:
     """Pose what can be posed, decide all of it in one go."""
     judged: list[Judged] = []
     posed: list[tuple[Case, Problem]] = []
@@ -88,7 +91,7 @@ def _judge(cases: Iterable[Case], subjects: Subjects, board: Board, project: Pro
             posed.append(question)
         else:
             judged.append(Judged(case=case, problem=None, verdict=_open(case, question)))
-    verdicts = decide(posed)
+    verdicts = by_yield(posed, decide(posed), board, project, asked)
     judged += [
         Judged(case=case, problem=problem, verdict=verdict)
         for (case, problem), verdict in zip(posed, verdicts, strict=True)

@@ -56,7 +56,7 @@ def finding(
         options=_options(case),
         measured=measured,
         limit=_limit(case),
-        margin=margin.value if margin and not math.isnan(margin.value) else None,
+        margin=margin.value if margin and rule.passing is None and not math.isnan(margin.value) else None,
         margin_case=case_json(margin.case, judged.problem) if margin and judged.problem else {},
         reason=_reason(judged),
         ask=list(_ask(judged)),

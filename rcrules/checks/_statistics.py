@@ -30,25 +30,40 @@ def statistics(
     None where one of the cases has no solution. name: of the finding; each draws cases of its own from the seed,
     whatever else is judged.
     """
-    distributions = [_distribution(item.name, board, project) for item in problem.parameters]
+    distributions = _distributions(problem, board, project)
     drawn = samples(problem.parameters, distributions, asked.samples, (asked.seed, crc32(name.encode())))
     try:
         values = case.rule.measure.compute(problem.structure, drawn)
     except (FloatingNode, Unsettled):
         return None  # the bounds beside it have their own word on that
-    failing = int(_fails(values, case).sum())
-    found = wilson(failing, asked.samples)
+    broken = int(_fails(values, case).sum())
+    found = wilson(broken, asked.samples)
     low, middle, high = (float(value) for value in np.quantile(values, _QUANTILES, method="inverted_cdf"))
     below, above = _root_sum_square(problem, case, bounds)
     return {
         "samples": asked.samples,
         "seed": asked.seed,
-        "failing": failing,
+        "failing": broken,
         "fraction": {"low": found.low, "nominal": found.fraction, "high": found.high},
         "quantiles": {"low": low, "nominal": middle, "high": high},
         "root_sum_square": {"low": below, "high": above},
         "distributions": sorted(set(distributions)),
     }
+
+
+def failing(
+    case: Case, problem: Problem, board: Board, project: Project, count: int, seed: Sequence[int]
+) -> int | None:
+    """How many of so many random cases break a limit; None where one of them has no solution."""
+    drawn = samples(problem.parameters, _distributions(problem, board, project), count, seed)
+    try:
+        return int(_fails(case.rule.measure.compute(problem.structure, drawn), case).sum())
+    except (FloatingNode, Unsettled):
+        return None
+
+
+def _distributions(problem: Problem, board: Board, project: Project) -> list[str]:
+    return [_distribution(item.name, board, project) for item in problem.parameters]
 
 
 def _distribution(name: str, board: Board, project: Project) -> str:

@@ -18,8 +18,10 @@ from rcrules.rulebook._model import Example, Pack, Rule, Term
 from rcrules.rulebook._numbers import Names, declared, given
 from rcrules.rulebook._selection import KEYS, selection
 from rcrules.tomlfile import Table, cut
-from rcrules.vocabulary import OUTCOMES, SEVERITIES
+from rcrules.vocabulary import BOUNDS, OUTCOMES, SEVERITIES
 
+MOST_PASSING: Final = 0.99999
+"""More would take more random cases than are drawn."""
 MAX_RULES: Final = 500
 _ID: Final = re.compile(r"[a-z][a-z0-9]*(?:-[a-z0-9]+)*")
 _RULE: Final = (*RULE_KEYS, *KEYS, "example")
@@ -140,10 +142,25 @@ def _body(
         terms=what.terms,
         fact=what.fact,
         one_of=what.one_of,
-        nominal=table.word("bounds", ("worst", "nominal")) == "nominal",
+        nominal=table.word("bounds", BOUNDS) == "nominal",
+        passing=_passing(table),
         must_meet=table.count("must-meet") or 0,
         examples=tuple(_example(item) for item in table.tables("example")),
     )
+
+
+def _passing(table: Table) -> float | None:
+    """The share of boards that must pass; None unless the rule is about yield."""
+    yields = table.data.get("bounds") == "yield"
+    if yields and not table.misspelt(("passing",), _RULE):
+        table.needs("passing", do={"passing": 'passing = "99.9 %"'})
+    if not yields and "passing" in table.data:
+        table.wrong("passing", "'passing' goes with bounds = \"yield\"", on="key", do='bounds = "yield"')
+    spread = table.quantity("passing", "1", least=0.5) if yields and "passing" in table.data else None
+    if spread is not None and spread.high > MOST_PASSING:
+        found, do = table.found("passing"), 'bounds = "worst" is for what must always hold'
+        table.wrong("passing", "random cases cannot show so much", found=found, expected="50 % to 99.999 %", do=do)
+    return spread.nominal if spread is not None else None
 
 
 def _with_call(what: Judged) -> Judged:

@@ -6,7 +6,7 @@ The compiler refuses what is not in these tables, and the schema for editors is 
 from collections.abc import Mapping
 from typing import Any, Final
 
-from rcrules.vocabulary import CERTAINTIES, FED_KINDS, OUTCOMES, PART_KINDS, ROLES, SEVERITIES
+from rcrules.vocabulary import BOUNDS, CERTAINTIES, FED_KINDS, OUTCOMES, PART_KINDS, ROLES, SEVERITIES
 
 Shape = Mapping[str, Any]
 """A JSON schema without its description."""
@@ -95,7 +95,8 @@ RULE: Final[Mapping[str, tuple[str, Shape]]] = {
     "at-most": ("Upper limit: a quantity, a name that is looked up, an expression, or a table by a word.", LIMIT),
     "equals": ("The number that it must be.", NUMBER),
     "one-of": ("Words, one of which it must be.", TEXTS),
-    "bounds": ("worst (default): over all cases; nominal: as marked.", one_of(("worst", "nominal"))),
+    "bounds": ("worst (default): over all cases; nominal: as marked; yield: on a share of the boards.", one_of(BOUNDS)),
+    "passing": ("With bounds = yield: the share of boards that must pass, such as '99.9 %'.", NUMBER),
     "given": ("Numbers that the rule brings, or asks the project for: { hold_time = \"ask\" }.",
               {"type": "object", "additionalProperties": NUMBER}),
     "never": ("Whether a level that is never reached fails the rule (default) or holds.", one_of(("fails", "holds"))),

@@ -145,6 +145,8 @@ class Rule:
     one_of: tuple[str, ...] = ()
     nominal: bool = False
     """True: judged at nominal values (``bounds = "nominal"``), not over the worst case."""
+    passing: float | None = None
+    """The share of boards that must pass (``bounds = "yield"``); None = the worst case, or nominal values, count."""
     must_meet: int = 0
     """Subjects that the rule must at least meet."""
     examples: tuple[Example, ...] = ()

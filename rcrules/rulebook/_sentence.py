@@ -38,7 +38,8 @@ def sentence(rule: Rule) -> str:
     bounds = _bounds(rule) or listed(rule.one_of)
     judged = " at nominal values" if rule.nominal else ""
     never = "; never reaching the level is fine" if rule.never == "holds" else ""
-    return f"{subject} {what}{judged} must be {bounds}{never}"
+    share = "" if rule.passing is None else f" on {100 * rule.passing:.6g} % of the boards"
+    return f"{subject} {what}{judged} must be {bounds}{share}{never}"
 
 
 def _bounds(rule: Rule) -> str:
