@@ -54,7 +54,7 @@ def check(
     asked: what findings tell besides their verdict.
     sure_only: leave out subjects of which it is not known whether a rule meets them, instead of calling them undecided.
     """
-    subjects = Subjects(board)
+    subjects = Subjects(board, project)
     found = [case for rule in rules for case in _cases(rule, subjects, board, project, only)]
     cases = [case for case in found if case.sure or not sure_only]
     judged = _judge(cases, subjects, board, project, asked)

@@ -36,7 +36,7 @@ def numbers_at(board: Board, project: Project, rules: Sequence[Rule], at: str) -
     checked = check(board, project, rules, only=lambda item: stands_at(item, at), asked=Asked(derived=True))
     told = [_of_finding(item, at) for item in checked.findings]
     asked = {(item.subject, item.measure) for item in told}
-    subjects = Subjects(board)
+    subjects = Subjects(board, project)
     plain = [
         _plain(board, project, subject, registry()[name], at)
         for kind, names in PLAIN.items()

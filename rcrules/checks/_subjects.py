@@ -9,6 +9,7 @@ from rcrules.checks._views import View, view_apart, view_around, view_at
 from rcrules.design import Pin
 from rcrules.networks import Board, Held, Network, Node
 from rcrules.parts import Known, RatedPart
+from rcrules.project import Project, pin_facts
 
 PIN_KINDS = ("ic", "transistor", "contact", "connector")
 """Kinds of parts whose pins are subjects."""
@@ -35,8 +36,9 @@ class Subject:
 class Subjects:
     """All subjects of a board, each kind worked out once, when it is asked for."""
 
-    def __init__(self, board: Board) -> None:
-        self._board = board
+    def __init__(self, board: Board, project: Project | None = None) -> None:
+        """project: what it calls pins."""
+        self._board, self._project = board, project or Project()
         self._parts: dict[str, tuple[Subject, ...]] = {}
 
     def of(self, kind: str) -> tuple[Subject, ...]:
@@ -149,13 +151,22 @@ class Subjects:
         """Every net with an open-drain pin of an IC, once."""
         found: dict[str | None, Subject] = {}
         for pin in self._ic_pins():
-            if isinstance(pin.target, Pin) and pin.target.type == "open-collector":
+            if isinstance(pin.target, Pin) and self._kind(pin.target) == "open-drain":
                 found.setdefault(pin.net, pin)
         return tuple(found.values())
 
+    def _kind(self, pin: Pin) -> str:
+        """What the project file calls a pin, or else its export."""
+        facts = pin_facts(self._project, (pin.key, f"{pin.ref}.{pin.number}"))
+        given = facts.kind if facts is not None else None
+        return given or {"open-collector": "open-drain", "power-in": "supply"}.get(pin.type, pin.type)
+
     def _is_supplied(self, pin: Subject) -> bool:
+        """Whether a pin is on a supply, or takes power from a net that is no ground, such as one behind a filter."""
         held = self._board.held.get(pin.net or "")
-        return held is not None and held.kind == "supply"
+        if held is not None:
+            return held.kind == "supply"
+        return isinstance(pin.target, Pin) and self._kind(pin.target) == "supply"
 
     def _network_at(self, joint: str) -> Network | None:
         return self._network_of_joint.get(joint)

@@ -42,7 +42,7 @@ class Trial:
 def trials(board: Board, project: Project, rules: Sequence[Rule]) -> list[Trial]:
     """Every rule tried, in order."""
     findings = check(board, project, rules).findings
-    subjects = Subjects(board)
+    subjects = Subjects(board, project)
     return [_trial(rule, board, subjects, [item for item in findings if item.rule == rule.id]) for rule in rules]
 
 

@@ -31,7 +31,7 @@ def worth(name: str) -> tuple[float, str] | None:
     registry = _registry()
     try:
         one = registry.Quantity(1.0, registry.parse_units(name))
-    except UndefinedUnitError:
+    except (UndefinedUnitError, ValueError):  # a ValueError for words that it takes for numbers, such as nan
         return None
     for ours, theirs in _SI.items():
         if one.is_compatible_with(theirs):

@@ -1,12 +1,13 @@
-"""The key ``when``: comparisons of facts with quantities, joined by ``and`` and ``or``.
+"""The key ``when``: comparisons of facts with quantities, joined by ``and`` and ``or``, turned by ``not``.
 
 condition  = both { "or" both }          both = term { "and" term }
-term       = "(" condition ")" | operand sign operand
+term       = "not" term | "(" condition ")" | operand sign operand
 sign       = ">=" | "<=" | ">" | "<"     operand = name of a fact | quantity
 """
 
 import re
 from collections.abc import Iterator, Mapping
+from dataclasses import replace
 from typing import Final, Literal
 
 from rcrules.quantities import QuantityError, parse_quantity
@@ -20,7 +21,7 @@ FACTS: Final[Mapping[str, str]] = {
 
 _LONGEST: Final = 400
 _DEEPEST: Final = 8
-_MARK: Final = re.compile(r"(\band\b|\bor\b|>=|<=|>|<|\(|\))")
+_MARK: Final = re.compile(r"(\band\b|\bor\b|\bnot\b|>=|<=|>|<|\(|\))")
 _NAME: Final = re.compile(r"[A-Za-z_][A-Za-z0-9_]*")
 
 
@@ -72,6 +73,17 @@ def _compare(condition: Comparison, facts: Mapping[str, float]) -> bool | None:
     return left < right
 
 
+_OPPOSITES: Final[Mapping[str, Literal["<", "<=", ">", ">="]]] = {">=": "<", "<": ">=", "<=": ">", ">": "<="}
+
+
+def _turned(condition: Condition) -> Condition:
+    """What holds where the condition does not; a fact that is not known leaves both open."""
+    if isinstance(condition, Comparison):
+        return replace(condition, sign=_OPPOSITES[condition.sign])
+    word: Literal["and", "or"] = "or" if condition.word == "and" else "and"
+    return Junction(word=word, terms=tuple(map(_turned, condition.terms)))
+
+
 class _Reader:
     """Splits the text at its marks and reads them one by one."""
 
@@ -106,6 +118,11 @@ class _Reader:
         return self._joined("and", depth) if word == "or" else self._term(depth)
 
     def _term(self, depth: int) -> Condition:
+        if self.mark == "not" and not self._words.strip():
+            if depth >= _DEEPEST:
+                raise QuantityError("too many 'not'", at=self.at, expected=f"at most {_DEEPEST}")
+            self._next()
+            return _turned(self._term(depth + 1))
         if self.mark == "(" and not self._words.strip():
             if depth >= _DEEPEST:
                 raise QuantityError("too many brackets", at=self.at, expected=f"at most {_DEEPEST}")

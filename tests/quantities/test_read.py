@@ -180,3 +180,9 @@ def test_a_unit_that_is_not_known_is_guessed_among_those_that_fit(text, unit, ex
 
 def test_one_sign_for_degrees_is_read_like_two():
     assert parse_quantity("-20 ℃ .. 60℃") == parse_quantity("-20 °C .. 60 degC")
+
+
+@pytest.mark.parametrize("word", ["nan", "inf", "infinity"])
+def test_a_word_that_reads_as_a_number_elsewhere_is_no_unit(word: str) -> None:
+    with pytest.raises(QuantityError, match=f"unit '{word}' is not known"):
+        parse_quantity(f"1 {word}", "s")

@@ -36,6 +36,11 @@ def test_and_binds_closer_than_or():
         ("voltage_high > 60 V or supply_low > 3 V", None),
         ("voltage_high > 60 V and supply_low > 3 V", False),
         ("voltage_high > 60 V and supply_low >= 3 V", None),
+        ("not supply_low > 3 V", True),
+        ("not (supply_low >= 3 V and supply_high > 4 V)", True),
+        ("not (supply_low >= 3 V or supply_high > 4 V)", False),
+        ("not voltage_high > 60 V", None),
+        ("not not supply_low >= 3 V and supply_high < 4 V", True),
         ("(supply_low > 3 V or supply_high > 3 V) and supply_low < supply_high", True),
     ],
 )

@@ -1,0 +1,48 @@
+"""Rules for what must be there: nodes at pins, capacitors near supply pins, bleeders, pull-ups."""
+
+from tests.checks.test_day_one_rules import outcomes
+
+HEAD = 'id = "tried"\nlevel = "error"\n'
+FED = '[supply."+3V3"]\nvoltage = "3.3 V"\n'
+
+
+def test_a_node_of_a_role_at_every_reset_pin() -> None:
+    rule = HEAD + 'every = { subject = "pin", has = { role = "power-on-delay" } }\nname = ["RST", "RESET"]'
+    circuit = """
+    U1 q : VDD power-in +3V3, GND power-in GND, NRST input NRST
+    U2 q : VDD power-in +3V3, GND power-in GND, NRST input BARE
+    R1 10k : +3V3, NRST
+    C1 100nF : NRST, GND
+    R2 10k : +3V3, BARE
+    """
+    assert outcomes(rule, circuit, FED) == {"NRST": "holds", "BARE": "fails"}
+
+
+def test_a_bleeder_on_every_supply_above_a_voltage() -> None:
+    rule = HEAD + 'every = { subject = "supply", has = { role = "bleeder" } }\nwhen = "supply_high > 60 V"'
+    circuit = "C1 1uF 200V : +100V, GND\nR1 100k : +100V, GND\nC2 1uF 200V : +80V, GND\nC3 1uF : +12V, GND"
+    project = "".join(f'[supply."+{volts}V"]\nvoltage = "{volts} V"\n' for volts in (100, 80, 12))
+    assert outcomes(rule, circuit, project) == {"+100V": "holds", "+80V": "fails"}
+
+
+SUPPLIED = HEAD + 'every = { subject = "supply pin", has = { kind = "capacitor", within = "the net", to = "ground" } }'
+
+
+def test_a_supply_pin_behind_a_filter_is_one_too() -> None:
+    circuit = (
+        "U1 q : VDDA power-in VDDA, GND power-in GND, A output A\nR1 10 : +3V3, VDDA\nR2 1k : A, +3V3\nC2 1uF : A, GND"
+    )
+    assert outcomes(SUPPLIED, circuit, FED) == {"VDDA": "fails"}
+    assert outcomes(SUPPLIED, f"{circuit}\nC1 100nF : VDDA, GND", FED) == {"VDDA": "holds"}
+
+
+def test_a_ground_pin_that_takes_power_is_no_supply_pin() -> None:
+    circuit = "U1 q : VDD power-in +3V3, VSS power-in GND\nC1 100nF : +3V3, GND"
+    assert outcomes(SUPPLIED, circuit, FED) == {"+3V3": "holds"}
+
+
+def test_an_open_drain_pin_may_be_told_by_the_project() -> None:
+    rule = HEAD + "subject = \"open-drain net\"\nvalue = \"count(kind = 'resistor', to = 'supply')\"\nequals = 1"
+    circuit = "U1 q : VDD power-in +3V3, ALERT bidirectional ALERT\nU2 q : IN input ALERT\nR1 10k : +3V3, ALERT"
+    assert outcomes(rule, circuit, FED) == {}
+    assert outcomes(rule, circuit, f'{FED}[pin."U1.ALERT"]\nkind = "open-drain"\n') == {"ALERT": "holds"}
