@@ -29,7 +29,8 @@ def derive(problem: Problem, measure: Measure, bounds: Bounds) -> Json | None:
     names = problem.names
     if names is None:
         return None
-    event = measure.poses == "event" and problem.structure.shape.free > 0
+    plain = problem.structure.shape.free > 0 and not problem.structure.amplifiers
+    event = measure.poses == "event" and plain
     return {
         "measure": measure.name,
         "summary": measure.summary,

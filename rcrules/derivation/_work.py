@@ -61,7 +61,7 @@ def work_out(problem: Problem, names: Names, measure: Measure, case: tuple[float
 
 
 def _tried(work: Working) -> Number | None:
-    hand = _BY_HAND.get(work.measure.name)
+    hand = None if work.problem.structure.amplifiers else _BY_HAND.get(work.measure.name)
     try:
         return hand(work) if hand else None
     except TooLarge:
@@ -80,7 +80,7 @@ def _told(problem: Problem, names: Names, measure: Measure, case: tuple[float, .
     """The response where there is one, and the number that the tool reads from it."""
     work = working(problem, names, measure, case, DIGITS[0])
     value = float(measure.compute(problem.structure, work.cases)[0])
-    if measure.poses == "event":
+    if measure.poses == "event" and not problem.structure.amplifiers:
         respond(work, math.inf)
     note = f"by the tool: {measure.summary[0].lower()}{measure.summary[1:].rstrip('.')}"
     work.sheet.given(measure.name.replace("_", " "), value, measure.unit, note)

@@ -21,24 +21,30 @@ Contract (arrays are float64, first axis = case):
     .slope_initial(); .energy() integral of f² over t >= 0; made of one ``ExponentialSum`` for each piece.
 ``transfer(shape, ohms, farads, source, omega) -> complex (case, free)``, ``source`` the number of a held terminal.
 ``corner(shape, ohms, farads, source, at, passes) -> (case,)``  angular frequency [rad/s] 3 dB below the pass band.
+``Amplified(shape, amplifiers, ohms, farads)``  the same with ideal amplifiers (plus, minus, output): ``.taus`` complex,
+    ``.settles``, ``.steady``, ``.transfer``, ``.corner``, ``.step(weights, before, after) -> Oscillation``.
 ``bounds(evaluate, low, nominal, high, signs, vertices_prove) -> Bounds`` and the coroutine form ``search(...)``.
 """
 
+from rcrules.engine._amplified import Amplified
 from rcrules.engine._bounds import Bounds, bounds, search
 from rcrules.engine._exponential import ExponentialSum
 from rcrules.engine._frequency import corner, transfer
 from rcrules.engine._modes import Modes, solve
+from rcrules.engine._oscillation import Oscillation
 from rcrules.engine._response import Drive, Response
 from rcrules.engine._shape import Array, FloatingNode, Shape
 from rcrules.engine._signal import Signal
 
 __all__ = [
+    "Amplified",
     "Array",
     "Bounds",
     "Drive",
     "ExponentialSum",
     "FloatingNode",
     "Modes",
+    "Oscillation",
     "Response",
     "Shape",
     "Signal",

@@ -52,6 +52,8 @@ class Circuit:
     joints: dict[str, str] = field(default_factory=dict)
     """Held terminal -> the joint whose voltage it has; the common 0 V has none."""
     valves: list[Valve] = field(default_factory=list)
+    amplifier: tuple[str, str, str] | None = None
+    """Terminals of an ideal amplifier's plus and minus input and of its output, which is free."""
 
     def terminal(self, name: str) -> int:
         """Number of a terminal. Raises ValueError."""
@@ -76,7 +78,23 @@ class Circuit:
             draws=list(self.draws),
             joints=dict(self.joints),
             valves=list(self.valves),
+            amplifier=self.amplifier,
         )
+
+    def amplifiers(self) -> tuple[tuple[int, int, int], ...]:
+        """The amplifier by terminal number, if there is one."""
+        if self.amplifier is None:
+            return ()
+        plus, minus, output = map(self.terminal, self.amplifier)
+        return ((plus, minus, output),)
+
+    def followed(self) -> list[Arm]:
+        """What an amplifier joins besides branches: its inputs, and the output that follows them."""
+        if self.amplifier is None:
+            return []
+        plus, minus, output = self.amplifier
+        ends = ((plus, minus), (plus, output), (minus, output))
+        return [Arm(ref="", kind="resistor", a=a, b=b, value=()) for a, b in ends if a != b]
 
     def amps(self) -> tuple[tuple[int, Form], ...]:
         """Currents drawn, by terminal number."""
@@ -137,7 +155,8 @@ class Circuit:
 
     def floating(self, further: Iterable[Arm] = ()) -> list[str]:
         """Free terminals without a resistive path to a held one."""
-        reached = self.driven(self.held, further)
+        outputs = [self.amplifier[2]] if self.amplifier else []
+        reached = {*self.driven([*self.held, *outputs], further), *outputs}
         return [name for name in self.free if name not in reached]
 
     def driven(self, sources: Iterable[str], further: Iterable[Arm] = ()) -> dict[str, int]:

@@ -4,6 +4,7 @@ import math
 from collections.abc import Mapping
 from dataclasses import dataclass, replace
 
+from rcrules.events._amplified import amplify, observed, with_output
 from rcrules.events._bench import Bench
 from rcrules.events._build import build, terminal_of
 from rcrules.events._circuit import Circuit
@@ -43,7 +44,7 @@ def pose_node(bench: Bench, node: Node, measure: Measure, options: Mapping[str, 
     event = _event(measure, options)
     found = with_clamps(scene, event, with_diodes(scene, event), slight=measure.unit == "s")
     structure = replace(
-        structure_of(circuit, found), at=circuit.terminal(node.joint), options=plain_of(measure, options)
+        structure_of(circuit, found), at=circuit.terminal(scene.joint), options=plain_of(measure, options)
     )
     absorbing = _most_absorbing(bench, scene.network) if measure.settles else None
     if absorbing is not None and measure.settles == "by a share":
@@ -68,19 +69,20 @@ def pose_node(bench: Bench, node: Node, measure: Measure, options: Mapping[str, 
 def _scene(bench: Bench, node: Node, measure: Measure, options: Mapping[str, OptionValue]) -> tuple[Scene, Table]:
     """The circuit around a node for an event, and its columns."""
     event, table = _event(measure, options), Table()
-    network = widened(bench, bench.network(node))
+    network = with_output(widened(bench, bench.network(node)), node, measure)
     if event == "power-down":
         network = opened(bench, network)
     parts_of_step = all(level.of == "step" for level in levels_of(measure, options).values())
     linear = not network.diodes  # a forward drop is no part of a step
     relative = linear and measure.scale_free and parts_of_step and options.get("from", "event") == "event"
     circuit = build(bench, network, table, [node.joint], currents=not (relative and event in STEPS))
+    amplify(bench, circuit, table, network, node)
     scene = Scene(
         bench=bench,
         network=network,
         circuit=circuit,
         sources=Sources(bench=bench, table=table),
-        joint=node.joint,
+        joint=observed(network, node),
         unit=relative,
         length=_plain(options.get("length", 0.0)),
     )

@@ -45,6 +45,8 @@ def quantities(board: Board, project: Project) -> Mapping[tuple[str, str], Mappi
 def _names(node: Node) -> tuple[str, ...]:
     if node.active is not None:
         return ()
+    if node.amplifier is not None:
+        return ("corner_frequency",)
     return ("time_constant", "corner_frequency") if node.role in FILTERS else ("time_constant",)
 
 

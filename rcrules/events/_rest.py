@@ -3,6 +3,7 @@
 from collections.abc import Mapping
 from dataclasses import replace
 
+from rcrules.events._amplified import amplify, observed, with_output
 from rcrules.events._bench import Bench
 from rcrules.events._build import build
 from rcrules.events._circuit import ZERO, Circuit
@@ -29,9 +30,10 @@ def at_rest(bench: Bench, node: Node, measure: Measure, options: Mapping[str, Op
     if measure.poses == "event":
         raise Unmeasurable(f"both ends of {node.net} are held: nothing moves there")
     table = Table()
-    network = _freed(bench.network(node), node)
+    network = with_output(_freed(bench.network(node), node), node, measure)
     alike = measure.poses == "network"  # the same problem for every node of the network
     circuit = build(bench, network, table, network.free[:1] if alike else [node.joint], currents=False)
+    amplify(bench, circuit, table, network, node)
     contacts = switched(bench, network, circuit, table, node.joint, "none").after
     floating = circuit.floating(contacts)
     if floating:
@@ -43,7 +45,8 @@ def at_rest(bench: Bench, node: Node, measure: Measure, options: Mapping[str, Op
         ohms=(*circuit.values("resistor"), *(arm.value for arm in contacts)),
         farads=circuit.values("capacitor"),
         waveforms=tuple(still(()) for _ in circuit.held),
-        at=0 if alike else circuit.terminal(node.joint),
+        at=0 if alike else circuit.terminal(observed(network, node)),
+        amplifiers=circuit.amplifiers(),
         options=plain_of(measure, options),
     )
     if measure.poses == "noise":
@@ -54,7 +57,7 @@ def at_rest(bench: Bench, node: Node, measure: Measure, options: Mapping[str, Op
             network=network,
             circuit=circuit,
             sources=Sources(bench=bench, table=table),
-            joint=node.joint,
+            joint=observed(network, node),
             unit=True,
         )
         source = float(circuit.terminal(mover(scene)))
@@ -81,7 +84,7 @@ def _kelvin(bench: Bench, table: Table) -> float:
 def _passes(circuit: Circuit, node: Node) -> str:
     """``low`` where resistors lead to a source other than 0 V, else ``high``."""
     sources = [name for name in circuit.held if name != ZERO]
-    return "low" if node.joint in circuit.driven(sources) and node.role != "high-pass" else "high"
+    return "low" if node.joint in circuit.driven(sources, circuit.followed()) and node.role != "high-pass" else "high"
 
 
 def _freed(network: Network, node: Node) -> Network:

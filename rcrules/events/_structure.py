@@ -28,6 +28,7 @@ def structure_of(circuit: Circuit, event: Transient) -> Structure:
         amps=circuit.amps(),
         diodes=circuit.diodes(),
         pinned=tuple((circuit.terminal(name), volts) for name, volts in event.pinned),
+        amplifiers=circuit.amplifiers(),
         earlier=earlier,
         empty=event.empty,
     )

@@ -124,7 +124,9 @@ def mover(scene: Scene) -> str:
 
     Where all that feeds it is behind diodes, the nearest one there.
     """
-    for ways in ((scene.circuit.of("resistor"), scene.circuit.arms), (scene.circuit.links(),)):
+    circuit = scene.circuit
+    followed = [*circuit.arms, *circuit.followed()] if circuit.amplifier else []
+    for ways in ((circuit.of("resistor"), circuit.arms, followed), (circuit.links(),)):
         for kind in ("driven", "supply"):
             names = [name for name in scene.circuit.held if _kind(scene, name) == kind]
             for arms in ways:

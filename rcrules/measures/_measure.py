@@ -77,5 +77,7 @@ class Measure:
     """True: it is a time that should be long, and infinite is as good as it gets."""
     settles: Literal["", "by a band", "by a share"] = ""
     """What a dielectric absorbs comes late: no band, or no share of the step left, below that can be promised."""
+    amplified: bool = False
+    """True: it is worked out around an ideal amplifier too."""
     scale_free: bool = False
     """True: a single source of unknown voltage does not matter, because the measure counts in parts of its own step."""

@@ -27,6 +27,6 @@ def passed(case: Solved, level: LevelForm) -> Array:
 
 def step(case: Solved) -> Array:
     """Size of the step [V] (case,): the end against the voltage before or just after the event; nan where none."""
-    size = np.maximum(np.abs(case.final - case.start), np.abs(case.final - case.signal.initial()))
+    size = np.maximum(np.abs(case.final - case.start), np.abs(case.final - case.initial))
     greatest = np.maximum(np.abs(case.volts_before).max(axis=1), np.abs(case.sources[1]).max(axis=(1, 2), initial=0.0))
     return np.where(size > LEAST_STEP * greatest, size, np.nan)

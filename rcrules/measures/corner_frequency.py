@@ -25,4 +25,5 @@ MEASURE = Measure(
     theory=corner,
     poses="transfer",
     scale_free=True,
+    amplified=True,
 )

@@ -23,4 +23,5 @@ MEASURE = Measure(
     compute=compute,
     theory=steady,
     options={"event": event("power-up")},
+    amplified=True,
 )

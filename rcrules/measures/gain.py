@@ -26,4 +26,5 @@ MEASURE = Measure(
     options={"frequency": Option(kind="quantity", default=None, unit="Hz", summary="frequency of the sine")},
     poses="transfer",
     scale_free=True,
+    amplified=True,
 )

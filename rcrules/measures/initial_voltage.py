@@ -11,7 +11,7 @@ from rcrules.problems import Array, Structure, solved
 
 def compute(structure: Structure, cases: Array) -> Array:
     """Voltage just after the event [V] (case,); cases: (case, column), SI."""
-    return solved(structure, cases).signal.initial()
+    return solved(structure, cases).initial
 
 
 MEASURE = Measure(
@@ -22,4 +22,5 @@ MEASURE = Measure(
     compute=compute,
     theory=unproved,
     options={"event": event("power-up")},
+    amplified=True,
 )

@@ -20,7 +20,7 @@ def compute(structure: Structure, cases: Array) -> Array:
     case = solved(structure, cases)
     size = step(case)
     band = np.abs(float(structure.option("band"))) * np.nan_to_num(size)
-    settled = case.watch(case.weights(), case.final).last_exit(-band, band)
+    settled = case.settled(band)
     return np.where(np.isnan(size), np.nan, settled)
 
 
@@ -39,4 +39,5 @@ MEASURE = Measure(
     },
     settles="by a band",
     scale_free=True,
+    amplified=True,
 )

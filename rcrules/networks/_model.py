@@ -79,6 +79,19 @@ class Node:
     """What the fed pins are, from vocabulary.FED_KINDS."""
     active: str | None = None
     """Why the passive model is not true here (an amplifier inside the loop …), else None."""
+    amplifier: str | None = None
+    """The amplifier that acts here, by reference. Where ``active`` is None its network is solved with it as ideal."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Amplifier:
+    """An amplifier taken as ideal, by the joints of its pins."""
+
+    ref: str
+    plus: str
+    """The input that does not invert."""
+    minus: str
+    output: str
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -92,6 +105,8 @@ class Network:
     nodes: tuple[Node, ...]
     contacts: tuple[Contact, ...] = ()
     diodes: tuple[Diode, ...] = ()
+    amplifier: Amplifier | None = None
+    """The one amplifier inside, where all of the network is linear around it."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

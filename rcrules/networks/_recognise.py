@@ -12,7 +12,7 @@ from rcrules.networks._held_names import hint
 from rcrules.networks._held_verdict import Verdict
 from rcrules.networks._model import Board, Branch, Held, Network, Node
 from rcrules.networks._named import Facts
-from rcrules.networks._roles import bridged_nodes, nodes_of
+from rcrules.networks._roles import bridged_nodes, nodes_of, solved_with
 from rcrules.networks._scene import Scene, scene
 from rcrules.networks._spot import chain
 from rcrules.parts import RatedPart
@@ -22,7 +22,7 @@ from rcrules.project import Project
 def recognise(design: Design, parts: Mapping[str, RatedPart], project: Project) -> Board:
     """Find the held nets, the networks and their nodes of a board, and what became of each resistor and capacitor."""
     draft = draft_of(design, parts, project)
-    found = [_network(raw, nodes) for raw in draft.networks if (nodes := nodes_of(draft, raw))]
+    found = [_network(draft, raw, nodes) for raw in draft.networks if (nodes := nodes_of(draft, raw))]
     found += _bridged(draft)
     found.sort(key=lambda network: natural(network.id))
     classes, reasons = coverage(draft, found)
@@ -77,7 +77,8 @@ def _held(net: str, joint: str, verdict: Verdict) -> Held:
     )
 
 
-def _network(raw: RawNetwork, nodes: tuple[Node, ...]) -> Network:
+def _network(draft: Draft, raw: RawNetwork, nodes: tuple[Node, ...]) -> Network:
+    amplifier, nodes = solved_with(draft, raw, nodes)
     return Network(
         id=raw.id,
         branches=raw.branches,
@@ -86,6 +87,7 @@ def _network(raw: RawNetwork, nodes: tuple[Node, ...]) -> Network:
         nodes=nodes,
         contacts=raw.contacts,
         diodes=raw.diodes,
+        amplifier=amplifier,
     )
 
 

@@ -20,6 +20,8 @@ class Judged:
     """Short plain sentences beyond the list of parts."""
     active: str | None = None
     """Why the passive model is not true here, else None."""
+    amplifier: str | None = None
+    """The amplifier that is the reason, by reference."""
     also: tuple[Arm, ...] = ()
     """Resistors that belong to the role although they lead only to pins or contacts."""
     alone: bool = False

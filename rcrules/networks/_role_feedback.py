@@ -62,7 +62,9 @@ def _amplifier(view: View, here: Spot) -> Judged | None:
 
 def _loop(arm: Arm, output: Pin, *, sure: bool = True) -> Judged:
     why = f"{arm.ref} from output {output.key} back to its {'inverting ' if sure else ''}input"
-    return Judged(role="feedback", sure=sure, why=(why,), active=f"amplifier {output.ref} inside the loop")
+    return Judged(
+        role="feedback", sure=sure, why=(why,), active=f"amplifier {output.ref} inside the loop", amplifier=output.ref
+    )
 
 
 def _returns(here: Spot, output: Pin) -> bool:
@@ -145,8 +147,10 @@ def _into(view: View, here: Spot, arm: Arm, pin: Pin) -> Judged:
     other = next(leg for leg in here.resistors + here.capacitors if leg.far != arm.far)
     if other.to == "driven" or (other.held is None and signal_above(view, other.far, here.joint)):
         why = f"{other.ref} and {arm.ref} couple {other.far} into the virtual ground at {pin.key}"
-        return Judged(role="high-pass", why=(why,), active=active, alone=True)
-    return Judged(role="feedback", why=(f"{arm.ref} leads to inverting input {pin.key}",), active=active)
+        return Judged(role="high-pass", why=(why,), active=active, amplifier=pin.ref, alone=True)
+    return Judged(
+        role="feedback", why=(f"{arm.ref} leads to inverting input {pin.key}",), active=active, amplifier=pin.ref
+    )
 
 
 def _looped(view: View, pin: Pin) -> bool:

@@ -25,9 +25,12 @@ def high_pass(view: View, here: Spot) -> Judged | None:
     if greatest(shunt) > greatest(series) > 0 or any(_is_driven(view, here, arm) for arm in here.resistors):
         return None
     why = f"{series[0].ref} couples {series[0].far} to a fixed bias"
-    helped = next((arm.ref for arm in here.resistors if bootstrapped(view, here, arm)), None)
-    active = f"an amplifier drives {helped}" if helped else None
-    return Judged(role="high-pass", why=(why,), active=active)
+    for arm in here.resistors:
+        helping = bootstrapped(view, here, arm)
+        if helping is not None:
+            active = f"an amplifier drives {arm.ref}"
+            return Judged(role="high-pass", why=(why,), active=active, amplifier=helping)
+    return Judged(role="high-pass", why=(why,))
 
 
 def divider(view: View, here: Spot) -> Judged | None:
@@ -103,26 +106,27 @@ def _is_signal(view: View, here: Spot, arm: Arm) -> bool:
 def _is_driven(view: View, here: Spot, arm: Arm) -> bool:
     """Whether a resistor leads to a driven net, directly or through one that is small beside it."""
     if arm.held is not None:
-        return arm.to == "driven" and not bootstrapped(view, here, arm)
+        return arm.to == "driven" and bootstrapped(view, here, arm) is None
     beyond = (far for far in view.at(arm.far).resistors if far.far != here.joint)
     return any(far.to == "driven" and (far.value or 0.0) <= SMALL * (arm.value or 0.0) for far in beyond)
 
 
 def _is_bias(view: View, here: Spot, arm: Arm) -> bool:
     if arm.held is not None:
-        return arm.fixed or bootstrapped(view, here, arm)
+        return arm.fixed or bootstrapped(view, here, arm) is not None
     return bool(ends(view, arm.far, here.joint))
 
 
-def bootstrapped(view: View, here: Spot, arm: Arm) -> bool:
-    """Whether a resistor leads back from the output of an amplifier whose input is here or one capacitor away."""
+def bootstrapped(view: View, here: Spot, arm: Arm) -> str | None:
+    """The amplifier whose output a resistor leads back from, where an input of it is here or one capacitor away."""
     if arm.to != "driven":
-        return False
+        return None
     inputs = {pin.ref for pin in here.pins if inverting(pin.name) is not None}
     for other in here.capacitors:
         if other.held is None:
             inputs |= {pin.ref for pin in view.at(other.far).pins if inverting(pin.name) is not None}
-    return any(pin.ref in inputs and inverting(pin.name) is None for pin in view.at(arm.far).pins)
+    outputs = (pin.ref for pin in view.at(arm.far).pins if inverting(pin.name) is None)
+    return next((ref for ref in outputs if ref in inputs), None)
 
 
 def _source(view: View, here: Spot, arm: Arm) -> str:

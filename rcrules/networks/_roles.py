@@ -5,9 +5,10 @@ from dataclasses import replace
 from fnmatch import fnmatchcase
 from typing import Final
 
+from rcrules.networks._amplifiers import ideal
 from rcrules.networks._draft import Draft, RawNetwork
 from rcrules.networks._fed import feeding, kind_fed, kinds
-from rcrules.networks._model import Node
+from rcrules.networks._model import Amplifier, Node
 from rcrules.networks._role import SURE, UNSURE, Judged
 from rcrules.networks._role_active import bootstrap, gate_drive, oscillator, timing
 from rcrules.networks._role_feedback import feedback, outputs
@@ -52,11 +53,33 @@ def nodes_of(draft: Draft, network: RawNetwork) -> tuple[Node, ...]:
     return _beside_loops(view, network, nodes) if nodes else ()
 
 
+def solved_with(
+    draft: Draft, network: RawNetwork, nodes: tuple[Node, ...]
+) -> tuple[Amplifier | None, tuple[Node, ...]]:
+    """The one amplifier with which all of a network is linear, and the nodes, which are then no longer active."""
+    refs = {node.amplifier for node in nodes if node.active}
+    ref = next(iter(refs)) if len(refs) == 1 else None
+    found = ideal(View(draft), network, ref) if ref is not None else None
+    if found is None:
+        return None, nodes
+    said = f"{found.ref} taken as an ideal amplifier"
+    return found, tuple(
+        replace(node, active=None, amplifier=found.ref, evidence=(*node.evidence, said)) for node in nodes
+    )
+
+
 def _beside_loops(view: View, network: RawNetwork, nodes: tuple[Node, ...]) -> tuple[Node, ...]:
     """The nodes; those that lead to a control loop of their network are active as the loop is."""
     found = (feedback(view, view.at(joint)) for joint in network.free if view.at(joint).pins)
-    loop = next((judged.active for judged in found if judged is not None), None)
-    return tuple(node if node.active or loop is None else replace(node, active=loop) for node in nodes)
+    loops = [judged for judged in found if judged is not None]
+    helped = next((node for node in nodes if node.active and node.amplifier), None)
+    if loops:
+        active, amplifier = loops[0].active, loops[0].amplifier
+    elif helped is not None:
+        active, amplifier = helped.active, helped.amplifier
+    else:
+        return nodes
+    return tuple(node if node.active else replace(node, active=active, amplifier=amplifier) for node in nodes)
 
 
 def bridged_nodes(draft: Draft) -> tuple[Node, ...]:
@@ -88,7 +111,7 @@ def _node(view: View, here: Spot) -> Node:
     met = ways(view, here, judged)
     pins = feeding(view, here)
     fed_from = _fed_from(view, here, met, judged)
-    doubts = _doubts(view, fed_from)
+    doubts, helped = _doubts(view, fed_from), _helped(view, met, judged)
     node = Node(
         net=here.joint,
         joint=here.joint,
@@ -100,7 +123,8 @@ def _node(view: View, here: Spot) -> Node:
         fed_from=fed_from,
         feeds=tuple(pin.key for pin in pins),
         kinds_fed=_kinds_fed(view, here),
-        active=judged.active or _helped(view, met, judged),
+        active=judged.active or (f"an amplifier drives {helped[0]}" if helped else None),
+        amplifier=judged.amplifier or (helped[1] if helped else None),
     )
     return _corrected(view.draft, node)
 
@@ -111,12 +135,12 @@ def _doubts(view: View, sources: tuple[str, ...]) -> tuple[str, ...]:
     return tuple(f"what holds {one.net} is not sure" for one in held if one is not None and not one.sure)
 
 
-def _helped(view: View, met: Ways, judged: Judged) -> str | None:
-    """A capacitor on the way that returns to a driven net: an amplifier, not a fixed level, moves its far end."""
+def _helped(view: View, met: Ways, judged: Judged) -> tuple[str, str] | None:
+    """A capacitor on the way that returns to the output of an amplifier, which moves its far end, and the amplifier."""
     if judged.role not in ("low-pass", "divider-low-pass"):
         return None
-    driven = next((ref for ref, arm in met.capacitors.items() if any(True for _ in outputs(view, arm))), None)
-    return f"an amplifier drives {driven}" if driven else None
+    found = ((ref, pin.ref) for ref, arm in met.capacitors.items() for pin in outputs(view, arm))
+    return next(found, None)
 
 
 def _kinds_fed(view: View, here: Spot) -> tuple[str, ...]:

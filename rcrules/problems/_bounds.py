@@ -109,11 +109,11 @@ def _ask(request: Request, numbers: dict[Structure, int], started: dict[tuple[ob
 
 
 def _proved(structure: Structure, quantity: Quantity, low: Array, high: Array) -> tuple[tuple[int | None, ...], bool]:
-    """What is known of the slopes; with diodes nothing is.
+    """What is known of the slopes; with diodes or amplifiers nothing is.
 
     A diode keeps the system cooperative, so that the signs of T3 should survive, but that is argued, not proved.
     """
-    if structure.diodes:
+    if structure.diodes or structure.amplifiers:
         return (None,) * len(low), False
     theory = quantity.theory(structure, low, high)
     return theory.signs, theory.vertices

@@ -19,6 +19,8 @@ def gain_at(structure: Structure, cases: Array, omega: float) -> Array:
     """
     case = Solved(structure=structure, cases=cases)
     source = int(structure.option("source"))
+    if structure.amplifiers:
+        return np.abs(case.amplified.transfer(source, omega)[:, structure.at])
     found = transfer(structure.shape, case.ohms, case.farads, source, omega)
     gains: Array = np.abs(found[:, structure.at])
     return gains

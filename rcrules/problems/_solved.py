@@ -7,8 +7,8 @@ from typing import Literal
 
 import numpy as np
 
-from rcrules.engine import Modes, Response, Signal, corner, solve
-from rcrules.problems._junctions import Flags, Passive, at_rest, junctions
+from rcrules.engine import Amplified, Modes, Oscillation, Response, Signal, corner, solve
+from rcrules.problems._junctions import Flags, Passive, Unsettled, at_rest, junctions
 from rcrules.problems._pinned import pinned_state
 from rcrules.problems._structure import Array, Form, LevelForm, Structure, evaluate
 from rcrules.problems._switching import Switching, follow
@@ -66,11 +66,30 @@ class Solved:
         none = np.zeros((len(self.cases), len(structure.diodes)), dtype=bool)
         if structure.empty or not structure.shape.free:
             return np.concatenate([np.zeros((len(self.cases), structure.shape.free)), held], axis=1), none
+        if structure.amplifiers:
+            return np.concatenate([self.amplified.steady(held), held], axis=1), none
         if structure.pinned:
             return pinned_state(structure, self.cases, held, self.passive)
         if structure.diodes:
             return self.rest(held, earlier=True)
         return np.concatenate([self.earlier.steady(held, self.amps), held], axis=1), none
+
+    @cached_property
+    def amplified(self) -> Amplified:
+        """The network with its ideal amplifiers. Raises FloatingNode, Unsettled where one does not settle."""
+        shape, amplifiers = self.structure.shape, self.structure.amplifiers
+        found = Amplified(shape=shape, amplifiers=amplifiers, ohms=self.ohms, farads=self.farads)
+        if not found.settles.all():
+            raise Unsettled("an amplifier does not settle with this feedback")
+        return found
+
+    def _swing(self, weights: Array, offset: Array) -> Oscillation:
+        """What an amplified network does after sources that jump at once. Raises FloatingNode, Unsettled."""
+        starts, levels, slopes = self.sources
+        if starts.shape[1] > 1 or slopes.any() or self.structure.amps:
+            raise Unsettled("around an amplifier only steps are worked out, without ramps and leakage")
+        found = self.amplified.step(weights, before(self.structure, self.cases), levels[:, 0])
+        return replace(found, constant=found.constant - offset)
 
     def rest(self, held: Array, *, earlier: bool = False) -> tuple[Array, Flags]:
         """DC voltages of all terminals [V] (case, terminal), and which diodes conduct (case, diode).
@@ -125,7 +144,22 @@ class Solved:
     @cached_property
     def final(self) -> Array:
         """The observed voltage at the end [V] (case,)"""
-        return self.signal.final()
+        return self._observed.final()
+
+    @cached_property
+    def initial(self) -> Array:
+        """The observed voltage just after the event [V] (case,)"""
+        return self._observed.initial()
+
+    @cached_property
+    def _observed(self) -> Signal | Oscillation:
+        return self._swing(self.weights(), np.zeros(len(self.cases))) if self.structure.amplifiers else self.signal
+
+    def settled(self, band: Array) -> Array:
+        """When the observed voltage is within a band around its end for good [s] (case,)"""
+        if self.structure.amplifiers:
+            return self._swing(self.weights(), self.final).last_exit(-band, band)
+        return self.watch(self.weights(), self.final).last_exit(-band, band)
 
     @cached_property
     def reference(self) -> Array:
@@ -211,4 +245,6 @@ def corner_omega(structure: Structure, cases: Array) -> Array:
     case = Solved(structure=structure, cases=cases)
     passes: Literal["low", "high"] = "low" if structure.option("passes") == "low" else "high"
     source = int(structure.option("source"))
+    if structure.amplifiers:
+        return case.amplified.corner(source, structure.at, passes)
     return corner(structure.shape, case.ohms, case.farads, source, structure.at, passes)

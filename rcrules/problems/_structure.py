@@ -132,6 +132,8 @@ class Structure:
     """(free terminal, current drawn out of it [A])."""
     diodes: tuple[Junction, ...] = ()
     """Diodes that may conduct, each between a free terminal and any other."""
+    amplifiers: tuple[tuple[int, int, int], ...] = ()
+    """Ideal amplifiers: terminals of the input that does not invert, of the one that does, and of the output (free)."""
     leaks: tuple[int, ...] = ()
     """Resistors of the shape that are dielectrics of capacitors: they may conduct, but nothing may rely on it."""
     earlier: tuple[Shape, tuple[Form, ...]] | None = None
