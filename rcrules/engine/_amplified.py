@@ -59,38 +59,51 @@ class Amplified:
         return rows[:, :, :free], stored[:, :, :free], -rows[:, :, free:], -stored[:, :, free:]
 
     @cached_property
-    def _modes(self) -> tuple[Complex, Complex, Complex]:
-        """Time constants [s] (case, free), vectors (case, free, mode), and their inverse times that of A.
+    def _modes(self) -> tuple[Complex, Complex, Complex, Array]:
+        """Time constants [s] (case, mode), vectors (case, free, mode), their duals (case, mode, free), inverse of A.
 
-        Raises FloatingNode where the network has no DC state.
+        As many modes as capacitors store independently: what E leaves alone follows at once, and is split off by the
+        range of A⁻¹E, so that no eigenvalue is a multiple zero. Raises FloatingNode where there is no DC state.
         """
         rows, stored, _, _ = self._matrices
-        inverse = _inverse(rows)
-        taus, vectors = np.linalg.eig(inverse @ stored)
+        inverse = np.asarray(_inverse(rows), float)
+        full = inverse @ stored
+        basis = np.linalg.svd(full)[0][:, :, : self._rank]
+        across = np.swapaxes(basis, 1, 2) @ full
+        taus, vectors = np.linalg.eig(across @ basis)
         largest = np.abs(taus).max(axis=1, keepdims=True, initial=0.0)
-        taus = np.where(np.abs(taus) <= INSTANT * largest, 0.0, taus)
-        left: Complex = np.asarray(_inverse(vectors.astype(complex)) @ inverse, np.complex128)
-        return taus.astype(np.complex128), vectors.astype(np.complex128), left
+        taus = np.where(np.abs(taus) <= INSTANT * largest, 0.0, taus).astype(np.complex128)
+        duals = np.asarray(_inverse(vectors.astype(np.complex128)) @ across, np.complex128)
+        return taus, np.asarray(basis @ vectors, np.complex128), duals, inverse
+
+    @cached_property
+    def _rank(self) -> int:
+        """Number of independent capacitor voltages that the balances of currents hold."""
+        stored = _stamped(self.shape, self.shape.capacitors, np.ones((1, len(self.shape.capacitors))))[0]
+        stored[[output for _, _, output in self.amplifiers]] = 0.0
+        free = self.shape.free
+        return int(np.linalg.matrix_rank(stored[:free, :free])) if free else 0
 
     @property
     def taus(self) -> Complex:
-        """Time constants, complex where a mode oscillates. [s], (case, free)"""
+        """Time constants, complex where a mode oscillates. [s], (case, mode)"""
         return self._modes[0]
 
     @cached_property
     def settles(self) -> NDArray[np.bool_]:
         """Whether all modes die away and the feedback is negative: also with an amplifier of finite speed. (case,)"""
         rows, stored, _, _ = self._matrices
-        taus = self.taus
-        known = np.where(np.abs(taus) > 0.0, np.abs(taus), np.inf).min(axis=1)
-        fastest = np.where(np.isfinite(known), known, 1.0)
-        slow = stored.astype(float).copy()
+        size = np.abs(self.taus)
+        fastest = np.where(size > 0.0, size, np.inf).min(axis=1, initial=np.inf)
+        fastest = np.where(np.isfinite(fastest), fastest, 1.0)
+        slow = stored.copy()
         for _, _, output in self.amplifiers:
-            size = np.abs(rows[:, output]).max(axis=1)
-            slow[:, output, output] -= size * fastest / FAST
-        real = np.linalg.eigvals(_inverse(rows) @ slow).real
-        alive = np.abs(real) > 1e-14 * np.abs(real).max(axis=1, keepdims=True)
-        decays: NDArray[np.bool_] = np.all((taus.real > 0.0) | (taus == 0.0), axis=1)
+            slow[:, output, output] -= np.abs(rows[:, output]).max(axis=1) * fastest / FAST
+        full = np.asarray(_inverse(rows), float) @ slow
+        basis = np.linalg.svd(full)[0][:, :, : self._rank + len(self.amplifiers)]
+        real = np.linalg.eigvals(np.swapaxes(basis, 1, 2) @ full @ basis).real
+        alive = np.abs(real) > 1e-14 * np.abs(real).max(axis=1, keepdims=True, initial=0.0)
+        decays: NDArray[np.bool_] = np.all((self.taus.real > 0.0) | (size == 0.0), axis=1)
         found: NDArray[np.bool_] = decays & np.all((real > 0.0) | ~alive, axis=1)
         return found
 
@@ -121,16 +134,16 @@ class Amplified:
         constant, rising = self._terms(at, self._unit(source))
         scanned = self._scanned()
         scanned = scanned if passes == "low" else scanned[::-1]
-        gains = np.stack([_gain(constant, rising, self.taus, omega) for omega in scanned])
+        gains = np.stack([_gain(constant, rising, self._every, omega) for omega in scanned])
         edge = 0.0 * scanned[0] if passes == "low" else scanned[0] * BEYOND
-        level = _gain(constant, rising, self.taus, edge) / np.sqrt(2.0)
+        level = _gain(constant, rising, self._every, edge) / np.sqrt(2.0)
         below = gains < level
         first = below.argmax(axis=0)
         case = np.arange(len(level))
         inside, outside = scanned[np.maximum(first - 1, 0), case], scanned[first, case]
         for _ in range(STEPS):
             middle = np.sqrt(inside * outside)
-            above = _gain(constant, rising, self.taus, middle) >= level
+            above = _gain(constant, rising, self._every, middle) >= level
             inside, outside = np.where(above, middle, inside), np.where(above, outside, middle)
         found = np.where(below.any(axis=0), inside, np.inf if passes == "low" else 0.0)
         return np.where(level > NOTHING * gains.max(axis=0), found, np.nan)
@@ -146,12 +159,18 @@ class Amplified:
         found = [self._terms(node, jump) for node in range(free)]
         constant = sum(weights[:, [node]] * terms[0] for node, terms in enumerate(found))
         rising = sum(weights[:, [node]] * terms[1] for node, terms in enumerate(found))
-        lasting = np.abs(self.taus) > 0.0
-        size = np.where(lasting, np.abs(self.taus), np.inf).min(axis=1, keepdims=True)
-        taus: Complex = np.where(lasting, self.taus, np.where(np.isfinite(size), size, 1.0)).astype(np.complex128)
+        every = self._every
+        lasting = np.abs(every) > 0.0
+        size = np.where(lasting, np.abs(every), np.inf).min(axis=1, keepdims=True)
+        taus: Complex = np.where(lasting, every, np.where(np.isfinite(size), size, 1.0)).astype(np.complex128)
         sizes = np.where(lasting, rising / taus - constant, 0.0)
         final = start + np.asarray(constant).sum(axis=1).real
         return Oscillation(constant=final, sizes=sizes, rates=np.asarray(-1.0 / taus, np.complex128))
+
+    @property
+    def _every(self) -> Complex:
+        """The time constants, that of what follows at once first. [s], (case, 1 + mode)"""
+        return np.concatenate([np.zeros((len(self.ohms), 1)), self.taus], axis=1)
 
     def _unit(self, source: int) -> Array:
         volts = np.zeros((len(self.ohms), self.shape.held))
@@ -159,13 +178,23 @@ class Amplified:
         return volts
 
     def _terms(self, at: int, volts: Array) -> tuple[Complex, Complex]:
-        """Constant [V] and rising [V s]: node voltage = sum of (constant + s rising)/(1 + s tau). (case, n)"""
+        """Constant [V] and rising [V s]: node voltage = sum of (constant + s rising)/(1 + s tau). (case, 1 + mode)
+
+        The first is what follows at once, tau = 0. From (1 + sM)⁻¹ = 1 - sM (1 + sM)⁻¹ with M = A⁻¹E.
+        """
         _, _, conducted, pushed = self._matrices
-        _, vectors, left = self._modes
-        share = vectors[:, at]
-        constant = share * np.einsum("cij,cj->ci", left @ conducted, volts)
-        rising = share * np.einsum("cij,cj->ci", left @ pushed, volts)
-        return constant, rising
+        taus, vectors, duals, inverse = self._modes
+        still = np.einsum("cij,cj->ci", inverse @ conducted, volts)
+        swept = np.einsum("cij,cj->ci", inverse @ pushed, volts)
+        lasting = np.abs(taus) > 0.0
+        share = np.where(lasting, vectors[:, at] / np.where(lasting, taus, 1.0), 0.0)
+        later = share * np.einsum("cki,ci->ck", duals, swept)
+        rising = later - share * taus * np.einsum("cki,ci->ck", duals, still)
+        constant = np.concatenate([still[:, [at]], np.zeros_like(rising)], axis=1)
+        first = swept[:, [at]] - later.sum(axis=1, keepdims=True)
+        size = np.abs(swept).max(axis=1, keepdims=True) + np.abs(rising).sum(axis=1, keepdims=True)
+        first = np.where(np.abs(first) > NOTHING * size, first, 0.0)  # the rest is rounding
+        return constant, np.concatenate([first, rising], axis=1)
 
     def _scanned(self) -> Array:
         """Angular frequencies from well below to well above all modes, rising. [rad/s], (k, case)"""
