@@ -135,7 +135,7 @@ class _Points:
         )
 
     def _remarks(self) -> list[Remark]:
-        said = [(next(iter(self._refs.values())), "a test netlist holds no values: give the BOM together with it")]
+        said = [(next(iter(self._refs.values())), "a test netlist holds no values: they must come from a BOM")]
         cut = [name for name in self._cut() if name]
         if cut:
             first = next(iter(self._refs.values()))

@@ -125,7 +125,7 @@ def test_names_as_long_as_their_columns_are_told() -> None:
 
 
 def test_without_values_the_bom_is_asked_for() -> None:
-    assert read(FILTER).remarks[0].text == "a test netlist holds no values: give the BOM together with it"
+    assert read(FILTER).remarks[0].text == "a test netlist holds no values: they must come from a BOM"
 
 
 def test_a_netlist_cut_short_is_refused() -> None:
