@@ -73,7 +73,7 @@ def run(job: Job) -> "Document":
 
 def derive(job: Job, at: str) -> "tuple[Document, list[Derived]]":
     """How the numbers at a net, part or pin come about; the document has no findings. Raises UserMistake."""
-    from rcrules.checks import known, near, numbers_at
+    from rcrules.checks import Asked, known, near, numbers_at
     from rcrules.design import build
     from rcrules.networks import recognise
     from rcrules.parts import rate
@@ -86,7 +86,8 @@ def derive(job: Job, at: str) -> "tuple[Document, list[Derived]]":
         place = Place(file="--at")
         raise UserMistake(Mistake(place=place, problem="nothing on this board", found=at, expected=expected, do=do))
     document = _document(replace(job, with_rules=False), project, board, [])
-    return document, numbers_at(board, project, rules, at)
+    asked = Asked(derived=True, samples=job.samples, seed=job.seed)
+    return document, numbers_at(board, project, rules, at, asked=asked)
 
 
 def try_on(job: Job) -> "list[Trial]":

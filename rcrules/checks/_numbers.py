@@ -1,12 +1,13 @@
 """Numbers at one place of the board, whatever the rules ask, and how they come about."""
 
-from collections.abc import Iterator, Sequence
+from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import replace
 from difflib import get_close_matches
 from typing import Final
 
 from rcrules.checks._asked import Asked
 from rcrules.checks._check import check
+from rcrules.checks._nowhere import why_nothing
 from rcrules.checks._place import stands_at
 from rcrules.checks._subjects import Subject, Subjects
 from rcrules.derivation import derive
@@ -19,33 +20,43 @@ from rcrules.problems import Failure, Request, solve_bounds
 from rcrules.project import Project
 from rcrules.rulebook import Rule
 
-PLAIN: Final = {
-    "node": ("time_constant", "corner_frequency"),
-    "capacitor": ("applied_voltage", "stored_energy"),
-    "resistor": ("power",),
-    "supply": ("total_capacitance",),
+_Options = Mapping[str, str]
+
+PLAIN: Final[Mapping[str, Mapping[str, tuple[_Options, ...]]]] = {
+    "node": {
+        "time_constant": ({},),
+        "corner_frequency": ({},),
+        "time_to_63": ({"event": "power-up"}, {"event": "step-up"}),
+        "final_voltage": ({"event": "power-up"}, {"event": "step-up"}),
+    },
+    "capacitor": {"applied_voltage": ({},), "stored_energy": ({},)},
+    "resistor": {"applied_voltage": ({},), "power": ({},)},
+    "pin": {"pin_voltage": ({},)},
+    "supply": {"total_capacitance": ({},), "stored_energy": ({},)},
 }
-"""What is told of each kind of subject without a rule."""
+"""What is told of each kind of subject without a rule: of each measure the first options with which it has a number."""
 
 
-def numbers_at(board: Board, project: Project, rules: Sequence[Rule], at: str) -> list[Derived]:
-    """What the rules ask of the net, part or pin, then plain numbers that none of them asked for.
+def numbers_at(
+    board: Board, project: Project, rules: Sequence[Rule], at: str, *, asked: Asked = Asked(derived=True)  # noqa: B008
+) -> list[Derived]:
+    """What the rules ask of the net, part or pin, then plain numbers that none of them asked for; else why none.
 
     at: a net, a reference, or a pin as ``U3.NRST``.
     """
-    checked = check(board, project, rules, only=lambda item: stands_at(item, at), asked=Asked(derived=True))
+    checked = check(board, project, rules, only=lambda item: stands_at(item, at), asked=asked)
     told = [_of_finding(item, at) for item in checked.findings]
-    asked = {(item.subject, item.measure) for item in told}
+    known_already = {(item.subject, item.measure) for item in told}
     subjects = Subjects(board, project)
     plain = [
-        _plain(board, project, subject, registry()[name], at)
-        for kind, names in PLAIN.items()
+        _plain(board, project, subject, registry()[name], at, options)
+        for kind, measures in PLAIN.items()
         for subject in subjects.of(kind)
         if stands_at(subject, at)
-        for name in names
-        if (kind, name) not in asked
+        for name, options in measures.items()
+        if (kind, name) not in known_already
     ]
-    return [*told, *plain]
+    return [*told, *plain] or [_nothing(board, at)]
 
 
 def near(board: Board, at: str) -> list[str]:
@@ -69,8 +80,10 @@ def _pins(board: Board) -> Iterator[str]:
 def _of_finding(item: Finding, at: str) -> Derived:
     return Derived(
         at=at,
+        of=item.net or ", ".join(item.parts),
         subject=item.subject,
         measure=item.measure,
+        options=dict(item.options),
         finding=item,
         measured=item.measured,
         derivation=item.derivation,
@@ -79,14 +92,39 @@ def _of_finding(item: Finding, at: str) -> Derived:
     )
 
 
-def _plain(board: Board, project: Project, subject: Subject, measure: Measure, at: str) -> Derived:
-    """A measure with its own options, or why it cannot be told."""
+def _nothing(board: Board, at: str) -> Derived:
+    """That there is no number, and why."""
+    reason, ask = why_nothing(board, at)
+    return Derived(
+        at=at, of=at, subject="place", measure="", finding=None, measured=None, derivation=None, reason=reason, ask=ask
+    )
+
+
+def _plain(
+    board: Board, project: Project, subject: Subject, measure: Measure, at: str, tried: Sequence[_Options]
+) -> Derived:
+    """A measure with the first of some options that fit, or why it cannot be told with them."""
+    found = [_with(board, project, subject, measure, at, options) for options in tried]
+    return next((item for item in found if item.measured is not None), found[0])
+
+
+def _with(
+    board: Board, project: Project, subject: Subject, measure: Measure, at: str, options: _Options
+) -> Derived:
     nothing = Derived(
-        at=at, subject=subject.kind, measure=measure.name, finding=None, measured=None, derivation=None, reason=None,
+        at=at,
+        of=subject.net or ", ".join(subject.refs),
+        subject=subject.kind,
+        measure=measure.name,
+        options=dict(options),
+        finding=None,
+        measured=None,
+        derivation=None,
+        reason=None,
         ask=[],
-    )  # fmt: skip
+    )
     try:
-        problem = pose(board, project, subject.target, measure)
+        problem = pose(board, project, subject.target, measure, options)
     except Unmeasurable as error:
         return replace(nothing, reason=error.reason, ask=[error.ask] if error.ask else [])
     (solved,) = solve_bounds([Request(problem, measure)])
@@ -94,3 +132,4 @@ def _plain(board: Board, project: Project, subject: Subject, measure: Measure, a
         return replace(nothing, reason=solved.reason)
     measured = as_quantity(solved, problem, measure.unit)
     return replace(nothing, measured=measured, derivation=derive(problem, measure, solved))
+

@@ -68,6 +68,16 @@ def _check(command: argparse.ArgumentParser) -> None:
         "{board} in it: the board's name",
     )
     _moved(command)
+    _statistics(command)
+    command.add_argument(
+        "--waive",
+        action="store_true",
+        help="write an entry for each finding that counts to the waivers file, to be completed with reason and name",
+    )
+    _output_options(command)
+
+
+def _statistics(command: argparse.ArgumentParser) -> None:
     command.add_argument(
         "--samples",
         type=_samples,
@@ -77,12 +87,6 @@ def _check(command: argparse.ArgumentParser) -> None:
     )
     again = "of the random cases; the same gives the same (default: 0)"
     command.add_argument("--seed", type=_natural, default=0, metavar="S", help=again)
-    command.add_argument(
-        "--waive",
-        action="store_true",
-        help="write an entry for each finding that counts to the waivers file, to be completed with reason and name",
-    )
-    _output_options(command)
 
 
 def _networks(command: argparse.ArgumentParser) -> None:
@@ -97,6 +101,7 @@ def _derive_options(command: argparse.ArgumentParser) -> None:
     )
     command.add_argument("--rule", metavar="ID", help="only the number that this rule asks for")
     _rules_option(command)
+    _statistics(command)
     command.add_argument(
         "--report", action="append", default=[], metavar="FORMAT[=PATH]", help="text (default) or json (repeatable)"
     )

@@ -13,9 +13,11 @@ from rcrules.derivation._work import work_out
 from rcrules.engine import FloatingNode
 from rcrules.findings import Json
 from rcrules.measures import Measure
-from rcrules.problems import Array, Bounds, Form, Names, Parameter, Problem, Solved, Unsettled, evaluate, solved
+from rcrules.problems import Array, Bounds, Form, Names, Problem, Solved, Unsettled, evaluate, solved
 from rcrules.quantities import show
 
+_SOURCELESS: Final = ("network", "noise", "string", "transfer", "value")
+"""What is posed whatever the sources are at."""
 LEAST_SHARE: Final = 1e-6
 """A mode whose part in what is observed is smaller is not told."""
 
@@ -35,7 +37,7 @@ def derive(problem: Problem, measure: Measure, bounds: Bounds) -> Json | None:
         "measure": measure.name,
         "summary": measure.summary,
         "picture": picture(problem, names),
-        "sources": list(_sources(problem, names)),
+        "sources": list(_sources(problem, names)) if measure.poses not in _SOURCELESS else [],
         "voltages": _voltages(problem, names) if event else [],
         "modes": _modes(problem) if event else [],
         "cases": list(_cases(problem, names, measure, bounds)),
@@ -103,29 +105,51 @@ def _modes(problem: Problem) -> list[Json]:
 
 
 def _cases(problem: Problem, names: Names, measure: Measure, bounds: Bounds) -> Iterator[Json]:
-    """Nominal, then each end that is another number."""
-    _, nominal, _ = problem.box()
-    rows = (("nominal", tuple(nominal)), ("lowest", tuple(bounds.low_at)), ("highest", tuple(bounds.high_at)))
-    told: set[tuple[float, ...]] = set()
-    for name, case in rows:
-        if case in told or any(math.isnan(value) for value in case):
-            continue
-        told.add(case)
+    """Nominal, lowest, highest, equal ones as one; what does not matter to an end stays nominal in it."""
+    nominal = tuple(problem.box()[1])
+    rows = (("nominal", nominal), ("lowest", tuple(bounds.low_at)), ("highest", tuple(bounds.high_at)))
+    told: dict[tuple[float, ...], list[str]] = {}
+    for name, found in rows:
+        if not any(math.isnan(value) for value in found):
+            told.setdefault(tuple(float(value) for value in _plainest(problem, measure, found)), []).append(name)
+    for case, called in told.items():
         worked = work_out(problem, names, measure, case)
         yield {
-            "case": name,
+            "case": ", ".join(called),
             "value": worked.value,
             "by_hand": worked.by_hand,
-            "off": list(_off(problem.parameters, case, nominal)),
+            "off": list(_off(problem, case)),
             "steps": [_step(step) for step in worked.steps],
         }
 
 
-def _off(parameters: Sequence[Parameter], case: Sequence[float], nominal: Array) -> Iterator[str]:
+def _off(problem: Problem, case: Sequence[float]) -> Iterator[str]:
     """``C7 6.19 µF``: what is off nominal."""
-    for item, value, plain in zip(parameters, case, nominal, strict=True):
-        if value != plain if math.isinf(plain) else abs(value - plain) > 1e-12 * abs(plain):
+    for item, value in zip(problem.parameters, case, strict=True):
+        if _differs(value, item.nominal):
             yield f"{item.name} {show(value, item.unit, 4)}"
+
+
+def _plainest(problem: Problem, measure: Measure, case: Sequence[float]) -> Array:
+    """The case with everything at nominal that leaves the value as it is."""
+    nominal, found = problem.box()[1], np.asarray(case, dtype=float)
+    off = [index for index, value in enumerate(case) if _differs(value, nominal[index])]
+    cases = np.tile(found, (len(off) + 1, 1))
+    for row, index in enumerate(off):
+        cases[row, index] = nominal[index]
+    values = measure.compute(problem.structure, cases)
+    plainer = found.copy()
+    for index, value in zip(off, values, strict=False):
+        plainer[index] = nominal[index] if _same(value, values[-1]) else found[index]
+    return plainer if _same(float(measure.compute(problem.structure, plainer[None, :])[0]), values[-1]) else found
+
+
+def _differs(value: float, plain: float) -> bool:
+    return value != plain if math.isinf(plain) else abs(value - plain) > 1e-12 * abs(plain)
+
+
+def _same(one: float, other: float) -> bool:
+    return bool(one == other or abs(one - other) <= 1e-9 * abs(other))
 
 
 def _step(step: Step) -> Json:

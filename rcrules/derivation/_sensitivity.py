@@ -2,10 +2,14 @@
 
 import math
 from dataclasses import dataclass
+from typing import Final
 
 import numpy as np
 
 from rcrules.problems import Array, Bounds, Problem, Quantity
+
+_LEAST: Final = 1e-6
+"""Part of the largest change below which a parameter has none: the search leaves some parameters a little off."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -52,6 +56,7 @@ def _moves(problem: Problem, measure: Quantity, bounds: Bounds) -> Array:
     moved = np.full(2 * len(nominal), math.nan)
     with np.errstate(invalid="ignore"):
         np.subtract(values[:-1], values[-1], out=moved)
-    same = values[:-1] == values[-1]
+    sizes = np.abs(moved[np.isfinite(moved)])
+    same = (values[:-1] == values[-1]) | (np.abs(moved) <= _LEAST * sizes.max(initial=0.0))
     found: Array = np.where(same, 0.0, moved).reshape(-1, 2)
     return found

@@ -1,6 +1,7 @@
 """Measures of a network at rest by hand: voltages in DC states, time constants, corners."""
 
 import math
+from collections.abc import Callable
 
 import numpy as np
 
@@ -8,8 +9,11 @@ from rcrules.derivation._reduce import parallel, source
 from rcrules.derivation._respond import pole, seen
 from rcrules.derivation._sheet import Number
 from rcrules.derivation._working import Working
-from rcrules.problems import evaluate, steady_states
+from rcrules.problems import Array, evaluate, steady_states
 from rcrules.quantities import show
+
+Choose = Callable[[Array], np.intp]
+"""Voltages of all states -> the number of the one that counts."""
 
 
 def time_constant(work: Working) -> Number | None:
@@ -29,12 +33,29 @@ def corner(work: Working) -> Number | None:
 
 def across(work: Working) -> Number | None:
     """v in the DC state that counts."""
-    shown = _volts(work)
+    shown = _volts(work, _counting(work))
     if shown is None:
         return None
     value = float(work.measure.compute(work.problem.structure, work.cases)[0])
     signed = ("signed", 1.0) in work.problem.structure.options
     return shown if signed or shown.value * value >= 0.0 else _size(work, shown)
+
+
+def lowest(work: Working) -> Number | None:
+    """v in the state in which it is lowest."""
+    return _volts(work, np.argmin)
+
+
+def highest(work: Working) -> Number | None:
+    """v in the state in which it is highest."""
+    return _volts(work, np.argmax)
+
+
+def at_pin(work: Working) -> Number | None:
+    """v of a pin in the state that counts; not where it counts from a level."""
+    if work.problem.structure.levels:
+        return None
+    return lowest(work) if work.problem.structure.option("extreme") == "least" else highest(work)
 
 
 def ratio(work: Working) -> Number | None:
@@ -96,17 +117,17 @@ def _size(work: Working, volts: Number) -> Number:
 
 
 def _most(work: Working) -> Number | None:
-    volts = _volts(work, most=True)
+    volts = _volts(work, lambda values: np.argmax(np.abs(values)))
     return _size(work, volts) if volts is not None and volts.value < 0.0 else volts
 
 
-def _volts(work: Working, *, most: bool = False) -> Number | None:
-    """v across the part in the DC state that counts; None where the transient goes beyond it."""
+def _volts(work: Working, choose: Choose) -> Number | None:
+    """v across the part in the DC state that counts."""
     structure = work.problem.structure
     states = steady_states(structure, work.cases)[0]
     ends = (structure.at, structure.against)
     volts = states[:, structure.at] - (0.0 if structure.against is None else states[:, structure.against])
-    index = _which(work, volts, most=most)
+    index = int(choose(volts))
     sources = len(structure.states)
     held = work.held([float(evaluate(form, work.cases)[0]) for form in structure.states[index % sources]])
     a, b = (_end(work, end, held, earlier=index >= sources) for end in ends)
@@ -114,14 +135,12 @@ def _volts(work: Working, *, most: bool = False) -> Number | None:
     return work.sheet.work("v", "V", "{} - {}", lambda x, y: x - y, a, b, note=note)
 
 
-def _which(work: Working, volts: "np.ndarray[tuple[int], np.dtype[np.float64]]", *, most: bool) -> int:
-    """The state in which the voltage counts."""
+def _counting(work: Working) -> Choose:
+    """The state in which the voltage of the measure counts."""
     options = dict(work.problem.structure.options)
-    if most:
-        return int(np.argmax(np.abs(volts)))
     signed, least = options.get("signed") == 1.0, options.get("extreme") == "least"
-    values = volts if signed else np.abs(volts)
-    return int(np.argmin(values) if least else np.argmax(values))
+    choose = np.argmin if least else np.argmax
+    return choose if signed else lambda volts: choose(np.abs(volts))
 
 
 def _end(work: Working, terminal: int | None, held: dict[int, Number], *, earlier: bool) -> Number:

@@ -5,6 +5,7 @@ import math
 import numpy as np
 
 from rcrules.derivation._pieces import Piece
+from rcrules.derivation._reduce import parallel, source
 from rcrules.derivation._respond import respond
 from rcrules.derivation._sheet import Number
 from rcrules.derivation._working import Working, height
@@ -91,11 +92,17 @@ def first(work: Working) -> Number | None:
 
 
 def last(work: Working) -> Number | None:
-    """v in the end; where a pin leaks towards a rail, no further than that."""
-    rest, final = respond(work, math.inf)[-1].rest, float(work.solved.final[0])
+    """v in the end, from the resistors alone; where a pin leaks towards a rail, no further than that."""
+    final = float(work.solved.final[0])
+    mesh, volts = work.mesh(), work.volts(len(work.starts) - 1)
+    links = mesh.reduce(work.at)
+    if work.problem.structure.against is not None or not links:
+        return None
+    ohms = parallel(work.sheet, "R", [link.ohms for link in links])
+    rest = source(work.sheet, "V", ohms, links, work.at, volts, mesh.draws.get(work.at, []))
     if not work.problem.structure.diodes or abs(rest.value - final) <= 1e-6 * abs(final):
         return rest
-    rails = [volts for volts in work.volts(len(work.starts) - 1).values() if abs(volts.value - final) <= 1e-6]
+    rails = [number for number in volts.values() if abs(number.value - final) <= 1e-6]
     return work.sheet.given("v(end)", final, "V", f"leakage goes no further than {rails[0].text}") if rails else None
 
 

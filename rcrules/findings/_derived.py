@@ -2,7 +2,7 @@
 
 import json
 from collections.abc import Iterable
-from dataclasses import dataclass, fields
+from dataclasses import dataclass, field, fields
 
 from rcrules.findings._document import Finding, Json, Quantity
 from rcrules.findings._encode import SCHEMA, plain
@@ -13,10 +13,13 @@ class Derived:
     """One measure of one subject."""
 
     at: str
+    """The net, part or pin that was asked for."""
+    of: str
     """Net of the node, the pin or the supply; reference of the part."""
     subject: str
-    """``node``, ``capacitor``, ``resistor``, ``pin``, ``supply``."""
+    """``node``, ``capacitor``, ``resistor``, ``pin``, ``supply``; ``place`` where nothing is measured."""
     measure: str
+    """'' where nothing is measured."""
     finding: Finding | None
     """The finding that asks for it; None = asked by no rule."""
     measured: Quantity | None
@@ -26,6 +29,8 @@ class Derived:
     """Why there is no number."""
     ask: list[str]
     """Project lines that would give one."""
+    options: Json = field(default_factory=dict)
+    """Options of the measure, as texts; those of the event, and those that a rule sets."""
 
 
 def derived_text(found: Iterable[Derived]) -> str:

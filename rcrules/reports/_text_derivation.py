@@ -6,7 +6,8 @@ from typing import Final
 from rcrules.findings import Derived, Document, Json
 from rcrules.reports._columns import aligned
 from rcrules.reports._lines import Line, Span
-from rcrules.reports._words import asked, bounds, limit_text, margin_text, number, part_texts, parts_text
+from rcrules.reports._statistics import statistics_texts
+from rcrules.reports._words import asked, bounds, in_percent, limit_text, margin_text, number, part_texts, parts_text
 
 _INDENT: Final = " " * 4
 _BY_TOOL: Final = "   (its last number is the tool's own: no closed formula gives it)"
@@ -24,22 +25,29 @@ def derivation_lines(document: Document, found: Sequence[Derived]) -> list[Line]
         if (same := [item.derivation["picture"], item.derivation["sources"]]) != drawn:
             lines += [(), *_picture(item.derivation["picture"])]
             drawn = same
-        lines += [(), *_circumstances(item.derivation), *_cases(item), *_spread(item)]
-    return lines or [("nothing to derive there: no rule and no plain number is about it",)]
+        lines += [*_circumstances(item.derivation), *_cases(item), *_spread(item), *_statistics(item)]
+    return lines
 
 
 def _heading(item: Derived, document: Document) -> Iterator[Line]:
     """What is measured, and what the rule says of it."""
     finding = item.finding
     if finding is None:
-        yield ((item.at, "name"), f"   {item.measure.replace('_', ' ')}")
+        event = f" at {item.options['event']}" if "event" in item.options else ""
+        told = f"   {item.measure.replace('_', ' ')}{event}{_of(item)}" if item.measure else ""
+        yield ((item.at, "name"), told)
         return
     texts = part_texts(document)
     fed = f" -> {', '.join(finding.feeds)}" if finding.feeds else ""
-    yield ((item.at, "name"), f"   {asked(finding)}   {parts_text(finding.parts, texts)}{fed}")
+    yield ((item.at, "name"), f"   {asked(finding)}{_of(item)}   {parts_text(finding.parts, texts)}{fed}")
     words = [finding.outcome, limit_text(finding), margin_text(finding) if item.measured else ""]
     style = f"fails {finding.level}" if finding.outcome == "fails" else "good" if finding.outcome == "holds" else "open"
     yield (_INDENT, (finding.rule, "name"), "   ", (words[0], style), *(f"   {word}" for word in words[1:] if word))
+
+
+def _of(item: Derived) -> str:
+    """The node or part where it is another than what was asked for."""
+    return f" of {item.of}" if item.of != item.at else ""
 
 
 def _missing(item: Derived) -> Iterator[Line]:
@@ -66,7 +74,9 @@ def _part(arm: Json) -> str:
 
 
 def _circumstances(derivation: Json) -> Iterator[Line]:
-    """Sources, voltages at rest, time constants."""
+    """Sources, voltages at rest, time constants; after an empty line where there are any."""
+    if any(derivation[key] for key in ("sources", "voltages", "modes")):
+        yield ()
     for row in derivation["sources"]:
         text = bounds(row["low"], row["nominal"], row["high"], "V")
         yield (_INDENT, "source  ", (row["net"], "name"), f"   {text}{_way(row)}")
@@ -93,10 +103,11 @@ def _way(row: Json) -> str:
 def _cases(item: Derived) -> Iterator[Line]:
     """Nominal, lowest, highest, each with what is off nominal and the steps by hand."""
     derivation, unit = item.derivation or {}, item.measured.unit if item.measured else "1"
+    percent = _in_percent(item)
     for case in derivation["cases"]:
         off = f"   with {', '.join(case['off'])}" if case["off"] else ""
         yield ()
-        yield (_INDENT, (case["case"], "name"), f"   {number(case['value'], unit)}{off}")
+        yield (_INDENT, (case["case"], "name"), f"   {number(case['value'], unit, percent=percent)}{off}")
         steps: list[list[Span]] = [[step["symbol"], *_step(step)] for step in case["steps"]]
         yield from aligned(steps, _INDENT * 2)
         if not case["by_hand"]:
@@ -116,9 +127,21 @@ def _spread(item: Derived) -> Iterator[Line]:
     if measured is None or not rows:
         return
     yield ()
-    found = bounds(measured.low, measured.nominal, measured.high, measured.unit)
+    found = bounds(measured.low, measured.nominal, measured.high, measured.unit, percent=_in_percent(item))
     yield (_INDENT, ("spread", "name"), f"   {found}   {measured.method}   (each parameter alone at its worst ends)")
     yield from aligned((_parameter(row, measured.unit) for row in rows), _INDENT * 2)
+
+
+def _in_percent(item: Derived) -> bool:
+    return item.finding is not None and in_percent(item.finding)
+
+
+def _statistics(item: Derived) -> Iterator[Line]:
+    """How random cases do, where that was asked for."""
+    texts = list(statistics_texts(item.finding)) if item.finding else []
+    if texts:
+        yield ()
+    yield from ((_INDENT, ("statistics", "name"), "   ", text) for text in texts)
 
 
 def _parameter(row: Json, unit: str) -> list[Span]:
