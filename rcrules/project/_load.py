@@ -10,6 +10,7 @@ from rcrules.errors import Mistake, Place, Problems
 from rcrules.project._contradictions import check_pin, check_supply
 from rcrules.project._facts import DEFAULTS, free_words, net_facts, part_facts, pin_facts, supply_facts
 from rcrules.project._model import Notice, Project, SupplyFacts
+from rcrules.project._outside import refuse_outside
 from rcrules.project._part_numbers import patterns
 from rcrules.quantities import Spread
 from rcrules.tomlfile import Table, cut, root
@@ -39,9 +40,11 @@ def read(path: Path, name: str | None = None, problems: Problems | None = None) 
     """The project file at a path; ``name`` is the path as messages show it. Raises UserMistake.
 
     With ``problems`` the mistakes are kept there, and what is right is read all the same, so that the run can go on to
-    what else is wrong; only a file that is no TOML raises.
+    what else is wrong; only a file that is no TOML raises, or one that names files outside its repository.
     """
     top = root(read_toml(path, name or str(path)), Problems())
+    refuse_outside(top, path)
+    top.stop_if_wrong()  # before any of the files is looked at
     if problems is None:
         return _load(top, path.parent)
     project = _project(top, path.parent)

@@ -59,3 +59,11 @@ def test_files_with_a_value_exchanged_end_in_mistakes(text, which, piece):
     at = settable[which % len(settable)]
     lines[at] = lines[at].partition("=")[0] + "= " + piece
     read_both("\n".join(lines))
+
+
+def test_globs_that_could_blow_up_do_not():
+    """Stars that fail late are tried in bounded steps; a matcher that backtracks would never come back."""
+    from rcrules.checks._select import globbed
+
+    assert not globbed(("*a" * 99 + "b",), ["a" * 4000])
+    assert globbed(("*a" * 99 + "*",), ["a" * 4000])
