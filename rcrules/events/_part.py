@@ -132,7 +132,7 @@ def pose_part_event(bench: Bench, part: RatedPart, measure: Measure, options: Ma
 def _circuit(bench: Bench, place: Place, table: Table) -> tuple[Circuit, Sources, tuple[str, str]]:
     branch = place.branch
     for node in place.network.nodes:
-        if node.active is not None and node.joint in (branch.a, branch.b):
+        if node.active is not None and node.amplifier is None and node.joint in (branch.a, branch.b):
             raise Unmeasurable(f"active network: {node.active}")
     circuit = build(bench, place.network, table, [branch.a, branch.b])
     ends = terminal_of(bench, circuit, branch.a), terminal_of(bench, circuit, branch.b)
@@ -160,6 +160,9 @@ def ends_of(circuit: Circuit, sources: Sources, name: str) -> tuple[Form, Form]:
     if joint is None:
         return (), ()
     if sources.kind(joint) != "supply":
+        rails = sources.rails(joint)
+        if rails is not None:
+            return rails
         swing = sources.swing(joint)
         return constant(swing.low) if swing.low else (), constant(swing.high) if swing.high else ()
     volts, spread = sources.supply(joint), sources.volts(joint)
@@ -182,7 +185,7 @@ def states_of(
 ) -> tuple[tuple[Form, ...], ...]:
     """Every combination of lowest and highest; one where the other end is at 0 V and nothing is ever negative."""
     levels = [ends_of(circuit, sources, name) for name in circuit.held]
-    spreads = [sources.volts(joint) for joint in circuit.joints.values()]
+    spreads = [sources.most(joint) for joint in circuit.joints.values()]
     positive = all(spread is not None and spread.low >= 0.0 for spread in spreads) and not circuit.draws
     many = sum(low != high for low, high in levels) > MOST_SOURCES
     plain = ZERO in ends and positive and (ends[1] == ZERO or not extremes.signed)

@@ -37,8 +37,27 @@ class Sources:
     def most(self, joint: str) -> Spread | None:
         """Everything that a supply or driven net may be at, what is assumed included; None = not known."""
         found = self.volts(joint)
+        held = self.bench.held(joint)
+        if found is None and held is not None and held.within is not None:
+            return self._between(*held.within)
         known = self.kind(joint) != "supply" or self.bench.supply_fact(joint, lambda facts: facts.voltage) is not None
         return found if found is None or known else _widened(found)
+
+    def rails(self, joint: str) -> tuple[Form, Form] | None:
+        """Lowest and highest voltage of an output that stays within its part's rails, as far as it may go.
+
+        None where the swing is known, or a rail is not. How far it goes is an assumption: from not at all to the rail.
+        """
+        held = self.bench.held(joint)
+        if held is None or held.within is None or self.volts(joint) is not None:
+            return None
+        if any(self.kind(rail) != "ground" and self.most(rail) is None for rail in held.within):
+            return None
+        text = f"{joint} stays within {held.within[0]} and {held.within[1]}, the rails of the part that drives it"
+        reach = Spread(low=0.0, nominal=1.0, high=1.0, unit="1")
+        share = self.table.assumed(f"{joint} reach", reach, text, f'[net."{joint}"] swing = "…"')
+        low, high = (() if self.kind(rail) == "ground" else self.supply(rail) for rail in held.within)
+        return _times(share, low), _times(share, high)
 
     def supply(self, joint: str, note: str = "") -> Form:
         """The column of a supply's voltage. Raises Unmeasurable where it is not known.
@@ -125,6 +144,15 @@ class Sources:
             unit="1",
         )
         return self.table.given(f"{joint} valid share", share, PROJECT)
+
+    def _between(self, lower: str, upper: str) -> Spread | None:
+        """Everything from one rail to another; None = one of them is not known."""
+        zero = Spread(low=0.0, nominal=0.0, high=0.0, unit="V")
+        ends = [zero if self.kind(rail) == "ground" else self.most(rail) for rail in (lower, upper)]
+        known = [end for end in ends if end is not None]
+        if len(known) < 2:
+            return None
+        return Spread(low=known[0].low, nominal=known[1].nominal, high=known[1].high, unit="V")
 
     def _given(self, joint: str, spread: Spread) -> Form:
         return self.table.given(joint, spread, PROJECT)

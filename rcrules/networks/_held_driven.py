@@ -1,17 +1,24 @@
 """Driven joints: switching nodes, outputs, and nets that come from a connector."""
 
+from collections.abc import Sequence
 from typing import Final
 
+from rcrules.design import Pin
 from rcrules.names import tokens
 from rcrules.networks import _held_claims as say
+from rcrules.networks._family import family
 from rcrules.networks._held_verdict import Verdict, Verdicts, keys
 from rcrules.networks._held_ways import drives_filter, is_led_out
+from rcrules.networks._links import words
 from rcrules.networks._scene import Scene
 
 _BUS_LINES: Final = frozenset(("SDA", "SCL", "SMBDAT", "SMBCLK", "ALERT", "ONEWIRE"))
 """Shared open-drain lines: free, their rise is the pull-up's."""
 _LINE_OHMS: Final = 200.0
 """Up to here a resistor matches a line; above, it pulls."""
+_WITHIN_RAILS: Final = ("amplifier", "logic")
+"""What keeps its outputs between its supply pins."""
+_RAILS: Final = (say.SUPPLY, say.GROUND, say.NEGATIVE)
 _CONTROLLER_PINS: Final = 12
 """A chip with at least so many bidirectional pins is a controller, whose pins marked as outputs may be inputs."""
 
@@ -40,9 +47,21 @@ def _output(scene: Scene, joint: str) -> Verdict | None:
     waits = bool(scene.capacitors(joint)) and bool(scene.resistors(joint))
     if waits and (scene.contacts.get(joint) or all(_is_controller(scene, pin.ref) for pin in outputs)):
         return None
-    return Verdict(
-        kind="driven", evidence=keys(outputs), sure=any(pin.type in ("output", "power-out") for pin in outputs)
-    )
+    sure = any(pin.type in ("output", "power-out") for pin in outputs)
+    return Verdict(kind="driven", evidence=keys(outputs), sure=sure, within=_rails(scene, outputs))
+
+
+def _rails(scene: Scene, outputs: Sequence[Pin]) -> tuple[str, str] | None:
+    """The lower and upper rail of the one amplifier or gate that drives a net, where it has one of each."""
+    if len({pin.ref for pin in outputs}) != 1:
+        return None
+    part = scene.parts[outputs[0].ref]
+    if part.kind != "ic" or family(words(part), tuple(pin.name for pin in part.part.pins)) not in _WITHIN_RAILS:
+        return None
+    said = {pin: joint for pin in part.part.pins if pin in scene.says(joint := scene.joints[pin.net], *_RAILS)}
+    upper = {joint for pin, joint in said.items() if pin in scene.says(joint, say.SUPPLY)}
+    lower = set(said.values()) - upper
+    return (lower.pop(), upper.pop()) if len(lower) == len(upper) == 1 else None
 
 
 def _between_chips(scene: Scene, joint: str) -> Verdict | None:

@@ -23,6 +23,8 @@ class Verdict:
     given: bool = False
     """Whether the voltage is the project's."""
     sure: bool = True
+    within: tuple[str, str] | None = None
+    """Joints of the lower and the upper rail between which an output stays."""
     through_diode: bool = False
     """Whether the voltage was passed on by a diode: the highest source wins."""
 

@@ -21,6 +21,8 @@ class Held:
     """True when the voltage comes from the project file; else it was read from names or pins (an assumption)."""
     evidence: tuple[str, ...]
     sure: bool
+    within: tuple[str, str] | None = None
+    """Joints of the lower and the upper rail of the part whose output drives the net: it stays between them."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

@@ -74,6 +74,7 @@ def _held(net: str, joint: str, verdict: Verdict) -> Held:
         given=verdict.given,
         evidence=tuple(dict.fromkeys((*own, *through, *verdict.evidence))),
         sure=verdict.sure,
+        within=verdict.within,
     )
 
 

@@ -72,10 +72,17 @@ def _nodes(nodes: list[Json], texts: Mapping[str, str], *, verbose: bool) -> lis
 
 
 def _cells(node: Json, texts: Mapping[str, str]) -> list[Span]:
-    """Net, parts, what feeds it and what it feeds, its time constant."""
+    """Net, parts, what feeds it and what it feeds, its time constant and corner frequency."""
     way = " -> ".join(filter(None, (", ".join(node["fed_from"]), ", ".join(node["feeds"]))))
     unsure = "unsure" if node["certainty"] == "unsure" else ""
-    return [node["net"], parts_text(node["parts"], texts), way, _time_constant(node), unsure]
+    return [node["net"], parts_text(node["parts"], texts), way, _time_constant(node), _corner(node), unsure]
+
+
+def _corner(node: Json) -> str:
+    found = node["quantities"].get("corner_frequency")
+    if found is None or found["nominal"] is None:
+        return ""
+    return f"corner {bounds(found['low'], found['nominal'], found['high'], found['unit'])}"
 
 
 def _time_constant(node: Json) -> str:
