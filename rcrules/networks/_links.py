@@ -2,6 +2,7 @@
 
 import re
 from collections.abc import Iterator, Mapping
+from dataclasses import replace
 from itertools import pairwise
 from typing import Final
 
@@ -22,6 +23,7 @@ _ANODE: Final = re.compile(r"A\d?|ANODE|\+?A\+?|AN", re.IGNORECASE)
 _CATHODE: Final = re.compile(r"K\d?|C\d?|CATH?ODE|KATHODE|CAT", re.IGNORECASE)
 _SHARED: Final = re.compile(r"COM|CA|AK|KA|A-?K|K-?A|COMMON", re.IGNORECASE)
 _JOINING: Final = frozenset(("ferrite", "inductor", "fuse"))
+_PHOTO: Final = re.compile(r"\bLDR|PHOTO.?(CELL|RESIST)|LIGHT.DEPENDENT|FOTO.?RESIST|ФОТОРЕЗИСТ", re.IGNORECASE)
 _THERMISTOR: Final = re.compile(r"THERMIST|\b[NP]TC\b", re.IGNORECASE)
 
 
@@ -91,6 +93,13 @@ def is_thermistor(part: RatedPart) -> bool:
     """Whether the part may measure temperature: called so, without a word of a fuse or a current."""
     called = part.kind == "thermistor" or (part.kind == "fuse" and bool(_THERMISTOR.search(words(part))))
     return called and not _RESETTABLE.search(words(part))
+
+
+def as_sensor(part: RatedPart) -> RatedPart:
+    """A part of two pins that light turns into another resistance counts as a sensor like a thermistor."""
+    if part.kind != "other" or len(part.part.pins) != 2 or not _PHOTO.search(f"{part.ref} {words(part)}"):
+        return part
+    return replace(part, kind="thermistor")
 
 
 def _is_link(part: RatedPart) -> bool:

@@ -10,6 +10,7 @@ from rcrules.networks._find import networks
 from rcrules.networks._held import held_joints
 from rcrules.networks._held_names import hint
 from rcrules.networks._held_verdict import Verdict
+from rcrules.networks._links import as_sensor
 from rcrules.networks._model import Board, Branch, Held, Network, Node
 from rcrules.networks._named import Facts
 from rcrules.networks._roles import bridged_nodes, nodes_of, solved_with
@@ -39,6 +40,7 @@ def recognise(design: Design, parts: Mapping[str, RatedPart], project: Project) 
 
 def draft_of(design: Design, parts: Mapping[str, RatedPart], project: Project) -> Draft:
     """The board with its joints, held nets and networks, before roles."""
+    parts = {ref: as_sensor(part) for ref, part in parts.items()}
     seen = scene(design, parts, Facts(project=project))
     verdicts, local = held_joints(seen)
     draft = Draft(

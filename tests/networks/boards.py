@@ -15,7 +15,7 @@ from rcrules.project import Project
 
 PLACE = Place(file="board.xml", line=1)
 KINDS = {
-    "R": "resistor", "TH": "thermistor", "RV": "potentiometer", "C": "capacitor",
+    "R": "resistor", "LDR": "other", "TH": "thermistor", "RV": "potentiometer", "C": "capacitor",
     "RN": "resistor-array", "L": "inductor",
     "FB": "ferrite", "F": "fuse", "JP": "jumper", "NT": "net-tie", "Y": "crystal", "U": "ic", "Q": "transistor",
     "J": "connector", "SW": "contact", "D": "diode", "BT": "battery", "TP": "test-point", "H": "mechanical",

@@ -129,3 +129,9 @@ def test_a_part_that_makes_no_node_says_what_it_is_at(part: str, why: str) -> No
     text = f"{RAIL}\nC9 1u +3V3 GND\nU1 Y:output=OUT A:input=OUT\n{part}"
     load = "" if "open" in why else "\nU2 IO:bidirectional=N3 GND:power-in=GND"
     assert board(f"{text}{load}").reasons[part[:2]] == why
+
+
+def test_a_light_sensor_is_an_arm_of_its_divider() -> None:
+    text = "LDR1 [LDR 5528] =+3V3 =N\nR1 10k N GND\nC1 100n N GND\nU1 [MCU] AIN0:input=N VDD:power-in=+3V3 VSS=GND"
+    (node,) = (node for network in board(text).networks for node in network.nodes)
+    assert (node.role, set(node.parts)) == ("divider-low-pass", {"LDR1", "R1", "C1"})
