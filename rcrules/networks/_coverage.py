@@ -6,6 +6,8 @@ from typing import Final
 
 from rcrules.design import natural
 from rcrules.networks._draft import Draft
+from rcrules.networks._fed import whole
+from rcrules.networks._fed_words import BOOT
 from rcrules.networks._links import branches, joined
 from rcrules.networks._model import Branch, Network
 from rcrules.parts import RatedPart, Unknown
@@ -73,6 +75,9 @@ def _between(draft: Draft, item: Branch) -> Class:
 def _lonely(draft: Draft, item: Branch, kinds: list[str]) -> str:
     """Why a branch at a free joint makes no node: nothing of the other kind acts with it."""
     free = [joint for joint in (item.a, item.b) if draft.held_joint(joint) is None]
+    boot = [pin.key for joint in free for pin in draft.pins_at(joint) if whole(pin) in BOOT]
+    if item.kind == "capacitor" and boot:
+        return f"bootstrap capacitor at {boot[0]}"
     others = {pin.ref: draft.kind_of(pin.ref) for joint in free for pin in draft.pins_at(joint) if pin.ref != item.ref}
     for kind, why in (
         ("crystal", "at a crystal"),

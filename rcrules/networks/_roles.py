@@ -185,5 +185,6 @@ def _names(draft: Draft, node: Node) -> tuple[str, ...]:
 
 
 def _with_role(node: Node, role: str, origin: str) -> Node:
-    active = node.active if role == node.role else None
-    return replace(node, role=role, certainty=SURE, evidence=(origin, *node.evidence), active=active)
+    active, amplifier = (node.active, node.amplifier) if role == node.role else (None, None)
+    evidence = (origin, *node.evidence)
+    return replace(node, role=role, certainty=SURE, evidence=evidence, active=active, amplifier=amplifier)

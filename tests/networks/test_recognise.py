@@ -135,3 +135,10 @@ def test_a_light_sensor_is_an_arm_of_its_divider() -> None:
     text = "LDR1 [LDR 5528] =+3V3 =N\nR1 10k N GND\nC1 100n N GND\nU1 [MCU] AIN0:input=N VDD:power-in=+3V3 VSS=GND"
     (node,) = (node for network in board(text).networks for node in network.nodes)
     assert (node.role, set(node.parts)) == ("divider-low-pass", {"LDR1", "R1", "C1"})
+
+
+def test_a_bootstrap_capacitor_without_a_resistor_is_no_node_but_is_called_one() -> None:
+    text = "U1 [buck regulator] VIN:power-in=+12V SW=X BST=B GND=GND FB=+5V\nC1 100n B X\nL1 X +5V\nC2 22u +5V GND"
+    found = board(text)
+    assert not any(network.nodes for network in found.networks)
+    assert found.reasons["C1"] == "bootstrap capacitor at U1.BST"
