@@ -8,7 +8,7 @@ import numpy as np
 from rcrules.engine._box import Best, Box, vertices
 from rcrules.engine._climb import climb
 from rcrules.engine._shape import Array
-from rcrules.engine._turn import scan, turn
+from rcrules.engine._turn import corners, scan, turn
 
 Search = Generator[Array, Array, "Bounds"]
 
@@ -81,6 +81,9 @@ def search(low: Array, nominal: Array, high: Array, signs: Sequence[int | None],
         for part in (turn, scan, climb)[everywhere:]:
             if not best.undefined():
                 yield from part(best)
+            if part is turn and best.value(-1) == best.value(1):
+                yield from best.ask(corners(box, unknown, PROVABLE))
+                yield from turn(best)
     return _result(best, proved)
 
 

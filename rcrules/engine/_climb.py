@@ -8,6 +8,7 @@ import numpy as np
 
 from rcrules.engine._box import Best, Box
 from rcrules.engine._shape import Array
+from rcrules.engine._turn import MANY
 
 Step = Generator[Array, Array, None]
 
@@ -15,6 +16,8 @@ FIRST_STEP = 1 / 16
 SHORTER = 1 / 4
 LAST_STEP = 1e-4
 """Steps of the climb, as shares of the range; the parabolas make the last one good to its square."""
+FEW_ROUNDS = 2
+"""The same where there are many columns."""
 ROUNDS = 40
 """Most rounds of a climb."""
 GAIN = 1e-10
@@ -39,7 +42,7 @@ def climb(best: Best) -> Step:
     """Ascend from the best case of each side, where that is not a vertex that the scan found to be a peak."""
     box = best.box
     climbers = [Climber(side=side) for side in (-1, 1) if _inside(best, side)]
-    for _ in range(ROUNDS):
+    for _ in range(FEW_ROUNDS if len(box.unknown()) > MANY else ROUNDS):
         climbers = [one for one in climbers if one.step >= LAST_STEP and np.isfinite(best.value(one.side))]
         if not climbers or best.undefined():
             return

@@ -4,7 +4,7 @@ from collections.abc import Generator
 
 import numpy as np
 
-from rcrules.engine._box import Best, Box
+from rcrules.engine._box import Best, Box, vertices
 from rcrules.engine._shape import Array
 
 Step = Generator[Array, Array, None]
@@ -12,6 +12,9 @@ Step = Generator[Array, Array, None]
 SIDES = (-1, 1)
 TURNS = 12
 """Most rounds of vertex iteration."""
+MANY = 24
+"""Columns of unknown sign beyond which every case is dear: one start, few rounds, one place on each line."""
+FEW_TURNS = 2
 SHARES = (1 / 64, 1 / 8, 1 / 4, 1 / 2, 3 / 4, 7 / 8, 63 / 64)
 """Where a line across the box is scanned; the outermost tell whether a vertex is a peak."""
 
@@ -19,9 +22,11 @@ SHARES = (1 / 64, 1 / 8, 1 / 4, 1 / 2, 3 / 4, 7 / 8, 63 / 64)
 def turn(best: Best) -> Step:
     """Vertex iteration: flip the numbers whose flip alone is a gain, from several starts, until none is."""
     box, columns = best.box, best.box.unknown()
-    trails = [(side, start) for side in SIDES for start in _starts(box, side)]
+    many = len(columns) > MANY
+    starts = [(side, start) for side in SIDES for start in _starts(box, side)]
+    trails = [(side, box.base(side)) for side in SIDES] if many else starts
     seen: set[tuple[int, bytes]] = set()
-    for _ in range(TURNS):
+    for _ in range(FEW_TURNS if many else TURNS):
         trails = [(side, case) for side, case in trails if (side, case.tobytes()) not in seen]
         if not trails:
             return
@@ -33,7 +38,9 @@ def turn(best: Best) -> Step:
         trails = [
             following
             for (side, _), block, value in zip(trails, blocks, values.reshape(len(blocks), -1), strict=True)
-            for following in _following(side, block, value, columns)
+            for following in (
+                _opposed(box, side, block, value, columns) if many else _following(side, block, value, columns)
+            )
         ]
 
 
@@ -54,6 +61,20 @@ def _flipped(box: Box, case: Array, columns: tuple[int, ...]) -> Array:
     return cases
 
 
+def _opposed(box: Box, side: int, block: Array, values: Array, columns: tuple[int, ...]) -> list[tuple[int, Array]]:
+    """All gaining flips at once; of a number inside its range a flip that loses says that its other end gains.
+
+    block, values: as for ``_following``
+    """
+    together = block[0].copy()
+    for row, index in enumerate(columns):
+        if side * values[row + 1] > side * values[0]:
+            together[index] = block[row + 1, index]
+        elif box.low[index] < together[index] < box.high[index]:
+            together[index] = box.low[index]
+    return [] if (together == block[0]).all() else [(side, together)]
+
+
 def _following(side: int, block: Array, values: Array, columns: tuple[int, ...]) -> list[tuple[int, Array]]:
     """All gaining flips at once, and the best of them alone.
 
@@ -70,14 +91,29 @@ def _following(side: int, block: Array, values: Array, columns: tuple[int, ...])
     return [(side, together), (side, block[1 + int(np.argmax(side * values[1:]))])]
 
 
+def corners(box: Box, columns: tuple[int, ...], most: int) -> Array:
+    """Vertices for a function that no single flip changes, such as a level passed at once: all, or 2^most spread ones.
+
+    Returns (case, p)
+    """
+    if len(columns) <= most:
+        return np.concatenate([vertices(box, side, columns) for side in SIDES])
+    spread = np.random.default_rng(len(columns)).random((2**most // 4, len(columns))) < 0.5
+    cases = np.tile(box.nominal, (len(spread), 1))
+    cases[:, list(columns)] = np.where(spread, box.high[list(columns)], box.low[list(columns)])
+    return cases
+
+
 def scan(best: Best) -> Step:
     """Scan across the box in each number of unknown sign, through the best case of each side and through nominal."""
     box, columns = best.box, best.box.unknown()
     cases = []
+    many = len(columns) > MANY
+    shares = (1 / 2,) if many else SHARES
     for side in SIDES:
-        for centre in (best.side(side), box.base(side)):
+        for centre in (best.side(side), *(() if many else (box.base(side),))):
             for index in columns:
-                line = np.tile(centre, (len(SHARES), 1))
-                line[:, index] = [box.point(index, share) for share in SHARES]
+                line = np.tile(centre, (len(shares), 1))
+                line[:, index] = [box.point(index, share) for share in shares]
                 cases.append(line)
     yield from best.ask(np.unique(np.concatenate(cases), axis=0))
