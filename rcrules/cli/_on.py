@@ -3,8 +3,7 @@
 from collections.abc import Iterator
 from typing import TYPE_CHECKING, Final
 
-from rcrules.quantities import show
-from rcrules.reports import Line, Span, aligned, limit_text, measured_text
+from rcrules.reports import Line, Span, aligned, in_percent, limit_text, measured_text, number
 from rcrules.rulebook import plural, sentence
 
 if TYPE_CHECKING:
@@ -69,5 +68,6 @@ def numbers(finding: "Finding") -> str:
     words = ""
     if turns is not None:
         way = "up to" if finding.detail.get("side") == "at_least" else "from"
-        words = f"holds for a limit {way} {show(turns, finding.measured.unit)}"
+        told = number(turns, finding.measured.unit, percent=in_percent(finding))
+        words = f"holds for a limit {way} {told}"
     return "   ".join(filter(None, (measured_text(finding), limit_text(finding), words)))

@@ -7,7 +7,7 @@ from rcrules.reports._lines import Line, Span, safe
 from rcrules.reports._report import Render, Report
 from rcrules.reports._text_boards import boards_lines
 from rcrules.reports._text_derivation import derivation_lines
-from rcrules.reports._words import limit_text, measured_text
+from rcrules.reports._words import in_percent, limit_text, measured_text, number
 from rcrules.reports._wrap import laid_out
 
 __all__ = [
@@ -18,9 +18,11 @@ __all__ = [
     "aligned",
     "boards_lines",
     "derivation_lines",
+    "in_percent",
     "laid_out",
     "limit_text",
     "measured_text",
+    "number",
     "reports",
     "safe",
 ]

@@ -1,5 +1,6 @@
 """Rules tried: on their own examples, and on a board."""
 
+import re
 from pathlib import Path
 
 import pytest
@@ -77,6 +78,14 @@ def test_a_rule_on_a_board_shows_what_it_meets_with_its_numbers(tmp_path, capsys
     assert "reset-has-a-millisecond   meets 1 of 1 nodes" in out
     assert "holds   NRST" in out
     assert "holds for a limit up to" in out
+
+
+@pytest.mark.usefixtures("board")
+def test_a_limit_in_per_cent_turns_in_per_cent(tmp_path, capsys):
+    text = RULE.replace('role = "power-on-delay"\nmeasure = "time_constant"\nat-least = "0.5 ms"', "").rstrip()
+    rule = f'{text}\nmeasure = "voltage_ratio"\nat-most = "80 %"\n'
+    _, out = told(tmp_path, capsys, rule, "--on", "board.xml")
+    assert re.search(r"holds for a limit from [0-9.]+ %", out)
 
 
 @pytest.mark.usefixtures("board")
