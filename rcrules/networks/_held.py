@@ -206,7 +206,8 @@ def _rank(scene: Scene, joint: str) -> tuple[bool, bool, bool, int]:
     named = [named for named in scene.hints(joint) if named.kind == "supply" and named.strong]
     like = bool(named) or bool(scene.says(joint, say.SUPPLY, say.SOURCE, say.NEGATIVE))
     told = any(item.volts is not None for item in named)
-    return like, bool(scene.says(joint, say.SOURCE)), told, len(scene.pins[joint]) if like else 0
+    makes = bool(scene.says(joint, say.SOURCE) or scene.of_kind(joint, "battery"))
+    return like, makes, told, len(scene.pins[joint]) if like else 0
 
 
 def _supply(scene: Scene, joint: str, evidence: tuple[str, ...], *, sure: bool) -> Verdict:

@@ -1,5 +1,6 @@
 """Driven joints: switching nodes, outputs, and nets that come from a connector."""
 
+import re
 from collections.abc import Sequence
 from typing import Final
 
@@ -16,6 +17,8 @@ _BUS_LINES: Final = frozenset(("SDA", "SCL", "SMBDAT", "SMBCLK", "ALERT", "ONEWI
 """Shared open-drain lines: free, their rise is the pull-up's."""
 _LINE_OHMS: Final = 200.0
 """Up to here a resistor matches a line; above, it pulls."""
+_IDLE: Final = re.compile(r"E?N?A?(EN|OE|ST(BY)?|NC|VC|TRI).*")
+"""Pins of an oscillator module that are inputs or open."""
 _WITHIN_RAILS: Final = ("amplifier", "logic")
 """What keeps its outputs between its supply pins."""
 _RAILS: Final = (say.SUPPLY, say.GROUND, say.NEGATIVE)
@@ -28,7 +31,7 @@ def driven(scene: Scene, joint: str, verdicts: Verdicts) -> Verdict | None:
     if joint in scene.switching:
         return Verdict(kind="driven", evidence=("switching node", *keys(scene.says(joint, say.SWITCH))))
     if scene.of_kind(joint, "crystal"):
-        return None
+        return _clock(scene, joint, verdicts)
     return (
         _output(scene, joint)
         or _between_chips(scene, joint)
@@ -37,6 +40,17 @@ def driven(scene: Scene, joint: str, verdicts: Verdicts) -> Verdict | None:
         or _connector(scene, joint, verdicts)
         or _into_filter(scene, joint, verdicts)
     )
+
+
+def _clock(scene: Scene, joint: str, verdicts: Verdicts) -> Verdict | None:
+    """The output of an oscillator module, which has a pin on a supply; a bare crystal drives nothing."""
+    for pin in scene.of_kind(joint, "crystal"):
+        others = scene.parts[pin.ref].part.pins
+        supplied = any(_is_supply(verdicts, scene.joints[other.net]) for other in others)
+        if supplied and not _IDLE.fullmatch(pin.name.upper()):
+            why = f"oscillator module, {keys((pin,))[0]}"
+            return Verdict(kind="driven", evidence=(why,), sure=pin.type == "output")
+    return None
 
 
 def _output(scene: Scene, joint: str) -> Verdict | None:

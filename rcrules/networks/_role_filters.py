@@ -35,7 +35,10 @@ def high_pass(view: View, here: Spot) -> Judged | None:
 
 def divider(view: View, here: Spot) -> Judged | None:
     """A capacitor to a fixed net at the tap between two resistors to different levels."""
-    if not here.capacitors or not all(arm.fixed for arm in here.capacitors) or len(here.resistors) < 2:
+    ends_of = {arm.far for arm in here.resistors}
+    shunts = [arm for arm in here.capacitors if arm.fixed]
+    beside = [arm for arm in here.capacitors if not arm.fixed and arm.far in ends_of]  # compensates the tap
+    if not shunts or len(shunts) + len(beside) < len(here.capacitors) or len(here.resistors) < 2:
         return None
     low = [arm for arm in here.resistors if kinds_at(view, arm, here.joint) == {"ground"}]
     high = [arm for arm in here.resistors if kinds_at(view, arm, here.joint) - {"ground"} and arm not in low]

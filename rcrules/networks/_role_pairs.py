@@ -1,6 +1,7 @@
 """Two held nets bridged by resistors and capacitors: chassis bond, bleeder, sense shunt."""
 
 from collections.abc import Iterator
+from typing import Final
 
 from rcrules.names import tokens
 from rcrules.networks._draft import Draft
@@ -10,6 +11,10 @@ from rcrules.networks._role import SURE, UNSURE
 from rcrules.networks._role_lines import SHUNT
 from rcrules.networks._role_words import arm_text
 from rcrules.networks._spot import Arm, View, chain, least
+
+BLEEDS: Final = 10e3
+"""From this resistance on a resistor between two lines from outside discharges the capacitor beside it. [Ω]"""
+_INLET: Final = ("connector", "inductor", "transformer", "other")
 
 
 def bridged(draft: Draft) -> tuple[Node, ...]:
@@ -60,6 +65,8 @@ def _in_order(view: View, one: str, other: str) -> tuple[str, str]:
 
 def _role(view: View, high: str, low: str, resistors: list[Arm]) -> tuple[str, str, tuple[str, ...], str | None] | None:
     kinds = {_kind(view, high), _kind(view, low)}
+    if kinds == {"driven"} and least(resistors) >= BLEEDS and _from_outside(view, high, low):
+        return "bleeder", UNSURE, (f"discharges {high} when its source is gone",), None
     if "driven" in kinds or high in view.draft.local:
         return None
     if least(resistors) <= SHUNT:
@@ -69,6 +76,12 @@ def _role(view: View, high: str, low: str, resistors: list[Arm]) -> tuple[str, s
         why = f"{high} is the chassis" if chassis else "between two grounds"
         return "chassis-bond", SURE if chassis else UNSURE, (why,), None
     return "bleeder", SURE if "ground" in kinds else UNSURE, (f"discharges {high} when its source is gone",), None
+
+
+def _from_outside(view: View, *joints: str) -> bool:
+    """Whether nothing but connectors, filters and protection holds the joints, such as a mains inlet."""
+    pins = [pin for joint in joints for pin in view.at(joint).pins]
+    return any(view.kind(pin) == "connector" for pin in pins) and all(view.kind(pin) in _INLET for pin in pins)
 
 
 def _kind(view: View, joint: str) -> str:

@@ -15,6 +15,7 @@ from tests.networks import (
     test_designs_amplifiers,
     test_designs_inputs,
     test_designs_lines,
+    test_designs_sources,
     test_designs_switching,
     test_designs_timers,
 )
@@ -26,6 +27,7 @@ CIRCUITS = [
         test_designs_amplifiers,
         test_designs_inputs,
         test_designs_lines,
+        test_designs_sources,
         test_designs_switching,
         test_designs_timers,
     )
