@@ -11,7 +11,7 @@ from rcrules.checks._levels import level_text
 from rcrules.checks._resolve import Case
 from rcrules.checks._subjects import Subject
 from rcrules.checks._verdict import Deciding, Verdict
-from rcrules.checks._worst import worst_case
+from rcrules.checks._worst import made_of, worst_case
 from rcrules.findings import Finding, Json, Quantity
 from rcrules.inventory import as_quantity, case_json, place_json
 from rcrules.levels import Level
@@ -67,20 +67,21 @@ def finding(
         assumptions=assumptions,
         cause=_cause(judged, measured, board),
         detail=_detail(judged, board, project),
-        derivation=_derivation(judged) if asked.derived else None,
+        derivation=_derivation(judged, board) if asked.derived else None,
         response=_response(judged) if asked.derived else None,
         statistics=_statistics(judged, board, project, asked) if asked.samples else None,
     )
 
 
-def _derivation(judged: Judged) -> Json | None:
+def _derivation(judged: Judged, board: Board) -> Json | None:
     """How the number comes about, where there is one."""
     from rcrules.derivation import derive
 
     solution, problem = judged.verdict.solution, judged.problem
     if solution is None or problem is None:
         return None
-    return derive(problem, judged.case.rule.measure, solution.bounds)
+    measure, said = judged.case.rule.measure, lambda item, value: made_of(item, value, board)
+    return derive(problem, measure, solution.bounds, said)
 
 
 def _response(judged: Judged) -> Json | None:

@@ -10,6 +10,7 @@ from rcrules.checks._check import check
 from rcrules.checks._nowhere import why_nothing
 from rcrules.checks._place import stands_at
 from rcrules.checks._subjects import Subject, Subjects
+from rcrules.checks._worst import made_of
 from rcrules.derivation import derive
 from rcrules.events import Unmeasurable, pose
 from rcrules.findings import Derived, Finding
@@ -131,5 +132,6 @@ def _with(
     if isinstance(solved, Failure):
         return replace(nothing, reason=solved.reason)
     measured = as_quantity(solved, problem, measure.unit)
-    return replace(nothing, measured=measured, derivation=derive(problem, measure, solved))
+    derivation = derive(problem, measure, solved, lambda item, value: made_of(item, value, board))
+    return replace(nothing, measured=measured, derivation=derivation)
 

@@ -54,10 +54,21 @@ def _row(item: Parameter, value: float, board: Board) -> Json:
     }
 
 
+def made_of(item: Parameter, value: float, board: Board) -> str:
+    """Every share of a part's value at an end of its spread, to be multiplied by hand; '' where there is none."""
+    part = board.parts.get(item.name)
+    if part is None or not item.nominal or not math.isfinite(item.nominal):
+        return ""
+    return _told(part, value / item.nominal - 1, 4)
+
+
 def _shares(part: RatedPart, relative: float) -> str:
     """``tolerance -20 %, temperature -15 %``; '' where one share says it all, or the case lies between the ends."""
-    told = [f"{_name(share)} {100 * move:+.2g} %" for share, move in apart(part, relative)]
-    return ", ".join(told) if len(told) > 1 else ""
+    return _told(part, relative, 2) if len(apart(part, relative)) > 1 else ""
+
+
+def _told(part: RatedPart, relative: float, digits: int) -> str:
+    return ", ".join(f"{_name(share)} {100 * move:+.{digits}g} %" for share, move in apart(part, relative))
 
 
 def _name(share: Share) -> str:

@@ -1,7 +1,7 @@
 """Everything about how one number comes about, as the document holds it."""
 
 import math
-from collections.abc import Iterator, Sequence
+from collections.abc import Callable, Iterator, Sequence
 from typing import Final
 
 import numpy as np
@@ -13,7 +13,7 @@ from rcrules.derivation._work import work_out
 from rcrules.engine import FloatingNode
 from rcrules.findings import Json
 from rcrules.measures import Measure
-from rcrules.problems import Array, Bounds, Form, Names, Problem, Solved, Unsettled, evaluate, solved
+from rcrules.problems import Array, Bounds, Form, Names, Parameter, Problem, Solved, Unsettled, evaluate, solved
 from rcrules.quantities import show
 
 _SOURCELESS: Final = ("network", "noise", "string", "transfer", "value")
@@ -22,8 +22,12 @@ LEAST_SHARE: Final = 1e-6
 """A mode whose part in what is observed is smaller is not told."""
 
 
-def derive(problem: Problem, measure: Measure, bounds: Bounds) -> Json | None:
+def derive(
+    problem: Problem, measure: Measure, bounds: Bounds, made_of: Callable[[Parameter, float], str] | None = None
+) -> Json | None:
     """How nominal, lowest and highest value of a measure come about; None where the problem has no names.
+
+    made_of: what makes up the value of a parameter that is off nominal, in words; '' = nothing to say.
 
     Keys: ``summary`` of the measure; ``picture`` of the network; ``sources`` at their ends; ``voltages`` before, just
     after and in the end; ``modes`` with their shares; ``cases`` worked out step by step; ``parameters`` by influence.
@@ -40,7 +44,7 @@ def derive(problem: Problem, measure: Measure, bounds: Bounds) -> Json | None:
         "sources": list(_sources(problem, names)) if measure.poses not in _SOURCELESS else [],
         "voltages": _voltages(problem, names) if event else [],
         "modes": _modes(problem) if event else [],
-        "cases": list(_cases(problem, names, measure, bounds)),
+        "cases": list(_cases(problem, names, measure, bounds, made_of or _unsaid)),
         "parameters": list(_parameters(problem, measure, bounds)),
     }
 
@@ -104,7 +108,9 @@ def _modes(problem: Problem) -> list[Json]:
     return sorted((row for row in rows if row["share"] > LEAST_SHARE), key=lambda row: -row["tau"])
 
 
-def _cases(problem: Problem, names: Names, measure: Measure, bounds: Bounds) -> Iterator[Json]:
+def _cases(
+    problem: Problem, names: Names, measure: Measure, bounds: Bounds, made_of: Callable[[Parameter, float], str]
+) -> Iterator[Json]:
     """Nominal, lowest, highest, equal ones as one; what does not matter to an end stays nominal in it."""
     nominal = tuple(problem.box()[1])
     rows = (("nominal", nominal), ("lowest", tuple(bounds.low_at)), ("highest", tuple(bounds.high_at)))
@@ -118,16 +124,24 @@ def _cases(problem: Problem, names: Names, measure: Measure, bounds: Bounds) -> 
             "case": ", ".join(called),
             "value": worked.value,
             "by_hand": worked.by_hand,
-            "off": list(_off(problem, case)),
+            "off": list(_off(problem, case, made_of)),
             "steps": [_step(step) for step in worked.steps],
         }
 
 
-def _off(problem: Problem, case: Sequence[float]) -> Iterator[str]:
-    """``C7 6.19 µF``: what is off nominal."""
+def _unsaid(item: Parameter, value: float) -> str:  # noqa: ARG001
+    return ""
+
+
+def _off(
+    problem: Problem, case: Sequence[float], made_of: Callable[[Parameter, float], str]
+) -> Iterator[str]:
+    """``C7 6.19 µF (10 µF, tolerance -20 %, temperature -15 %)``: what is off nominal."""
     for item, value in zip(problem.parameters, case, strict=True):
         if _differs(value, item.nominal):
-            yield f"{item.name} {show(value, item.unit, 4)}"
+            why = made_of(item, value)
+            told = f" ({show(item.nominal, item.unit)}, {why})" if why else ""
+            yield f"{item.name} {show(value, item.unit, 4)}{told}"
 
 
 def _plainest(problem: Problem, measure: Measure, case: Sequence[float]) -> Array:

@@ -46,7 +46,7 @@ def seen(work: Working, at: int) -> Seen:
 def respond(work: Working, until: float) -> list[Piece]:
     """The pieces up to the one in which an instant lies; the last one for an instant that never comes."""
     structure = work.problem.structure
-    if pole(structure) == work.at and structure.against is None:
+    if pole(structure) == work.at and structure.against is None and not structure.charged:
         mark = len(work.sheet.steps)
         try:
             return _by_hand(work, work.piece_of(until))

@@ -5,6 +5,9 @@ from collections.abc import Callable
 
 import numpy as np
 
+from rcrules.derivation._amounts import total
+from rcrules.derivation._poles import corner as two_poles
+from rcrules.derivation._poles import slowest
 from rcrules.derivation._reduce import parallel, source
 from rcrules.derivation._respond import pole, seen
 from rcrules.derivation._sheet import Number
@@ -17,18 +20,36 @@ Choose = Callable[[Array], np.intp]
 
 
 def time_constant(work: Working) -> Number | None:
-    """tau = R C where all capacitors lie at one node."""
+    """tau = R C where all capacitors lie at one node; the slower of two where they lie at two."""
     at = pole(work.problem.structure)
-    return None if at is None else seen(work, at).tau
+    return slowest(work) if at is None else seen(work, at).tau
 
 
 def corner(work: Working) -> Number | None:
-    """1 / (2 pi tau) where all capacitors lie at one node."""
-    tau = time_constant(work)
-    if tau is None:
-        return None
-    pi = work.sheet.number("pi", math.pi, "1")
+    """1 / (2 pi tau) where all capacitors lie at one node; of two poles where they lie at two."""
+    at = pole(work.problem.structure)
+    if at is None:
+        return two_poles(work)
+    tau, pi = seen(work, at).tau, work.sheet.number("pi", math.pi, "1")
     return work.sheet.work("f", "Hz", "1 / (2 · {} · {})", lambda p, t: 1 / (2 * p * t), pi, tau)
+
+
+def gain(work: Working) -> Number | None:
+    """(R/R1) / (1 + (2 pi f tau)²)^0.5 where all capacitors lie at the node and R1 alone leads to the source."""
+    structure, sheet = work.problem.structure, work.sheet
+    if pole(structure) != work.at:
+        return None
+    found, end = seen(work, work.at), int(structure.option("source"))
+    direct = [link.ohms for link in found.links if link.other(work.at) == end]
+    if len(direct) != 1 or any(far == end for far, _ in work.capacitors(work.at)):
+        return None
+    pi, f = sheet.number("pi", math.pi, "1"), sheet.number("f", float(structure.option("frequency")), "Hz")
+    formula = "{} / {} / (1 + (2 · {} · {} · {})^2)^0.5"
+    return sheet.work("gain", "1", formula, _low_pass, found.ohms, direct[0], pi, f, found.tau)
+
+
+def _low_pass(whole: float, ohms: float, pi: float, f: float, tau: float) -> float:
+    return whole / ohms / math.sqrt(1.0 + (2.0 * pi * f * tau) ** 2)
 
 
 def across(work: Working) -> Number | None:
@@ -70,17 +91,26 @@ def ratio(work: Working) -> Number | None:
 def charge(work: Working) -> Number | None:
     """Q = C v."""
     volts = _most(work)
-    if work.problem.structure.curves:
+    if volts is None or work.problem.structure.curves:
         return volts and _along(work, "Q", "C", "∫ C dv")
-    return volts and work.sheet.work("Q", "C", "{} · {}", lambda c, v: c * v, _farads(work), volts)
+    return work.sheet.work("Q", "C", "{} · {}", lambda c, v: c * v, _farads(work), volts)
 
 
 def energy(work: Working) -> Number | None:
-    """W = C v² / 2."""
+    """W = C v² / 2; of a supply with all its capacitors."""
     volts = _most(work)
-    if work.problem.structure.curves:
+    if volts is None or work.problem.structure.curves:
         return volts and _along(work, "W", "J", "∫ v C dv")
-    return volts and work.sheet.work("W", "J", "{} · {}^2 / 2", lambda c, v: c * v * v / 2, _farads(work), volts)
+    return work.sheet.work("W", "J", "{} · {}^2 / 2", lambda c, v: c * v * v / 2, _farads(work), volts)
+
+
+def power_ratio(work: Working) -> Number | None:
+    """P / rated."""
+    watts, rating = power(work), work.problem.structure.rating
+    if watts is None or rating is None:
+        return None
+    rated = work.form(rating, "rated", "W")
+    return work.sheet.work("ratio", "1", "{} / {}", lambda p, r: p / r, watts, rated)
 
 
 def power(work: Working) -> Number | None:
@@ -99,12 +129,16 @@ def _element(work: Working, names: tuple[str, ...]) -> str:
 
 
 def _farads(work: Working) -> Number:
+    if work.problem.structure.element is None:
+        return total(work)
     farads = float(work.solved.farads[0, _index(work)])
     return work.sheet.number(_element(work, work.names.capacitors), farads, "F")
 
 
-def _along(work: Working, symbol: str, unit: str, integral: str) -> Number:
-    """An integral along the bias curve, whose points are told."""
+def _along(work: Working, symbol: str, unit: str, integral: str) -> Number | None:
+    """An integral along the bias curve, whose points are told; None of several capacitors."""
+    if work.problem.structure.element is None:
+        return None
     farads = _farads(work)
     _, curve = work.problem.structure.curves[0]
     points = ", ".join(f"{show(share, '%')} at {show(volts, 'V')}" for volts, share in curve)

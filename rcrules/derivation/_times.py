@@ -15,22 +15,22 @@ from rcrules.problems import LevelForm, constant
 
 def delay(work: Working) -> Number | None:
     """t - t0."""
-    when = _when(work, work.problem.structure.level("to"), "t")
+    when = instant(work, work.problem.structure.level("to"), "t")
     if when is None or work.problem.structure.reference is None or math.isinf(when.value):
         return when
-    return work.sheet.work("delay", "s", "{} - {}", lambda t, r: t - r, when, _reference(work))
+    return work.sheet.work("delay", "s", "{} - {}", lambda t, r: t - r, when, valid_at(work))
 
 
 def to_63(work: Working) -> Number | None:
     """The time to 1 - 1/e of the step."""
-    return _when(work, LevelForm(kind="step", fraction=constant(1.0 - math.exp(-1.0))), "t")
+    return instant(work, LevelForm(kind="step", fraction=constant(1.0 - math.exp(-1.0))), "t")
 
 
 def discharge(work: Working) -> Number | None:
     """The time down to a level."""
     structure = work.problem.structure
     if ("endless", 1.0) not in structure.options:
-        return _when(work, structure.level("to"), "t")
+        return instant(work, structure.level("to"), "t")
     level = work.form(structure.level("to").offset, "level", "V")
     start = work.sheet.given("v", abs(float(work.solved.start[0])), "V", "across it; nothing discharges it")
     never = math.inf if start.value > level.value else 0.0
@@ -40,7 +40,7 @@ def discharge(work: Working) -> Number | None:
 def edge(work: Working) -> Number | None:
     """From the lower level to the higher one."""
     structure = work.problem.structure
-    low, high = (_when(work, structure.level(name), f"t {name}") for name in ("low", "high"))
+    low, high = (instant(work, structure.level(name), f"t {name}") for name in ("low", "high"))
     if low is None or high is None:
         return None
     turned = not structure.rising and structure.level("low").kind != "step"
@@ -122,16 +122,20 @@ def _reached(work: Working, time: float) -> tuple[Piece, Number, float]:
     return pieces[-1], work.sheet.number("x", time - begins, "s"), begins
 
 
-def _when(work: Working, level: LevelForm, symbol: str) -> Number | None:
+def instant(work: Working, level: LevelForm, symbol: str) -> Number | None:
     """The instant at which v passes a level; None where that is not defined."""
     time = float(passed(work.solved, level)[0])
     if math.isnan(time):
         return None
     if math.isinf(time):
         return _never(work, level, symbol)
+    return arrival(work, level, time, symbol)
+
+
+def arrival(work: Working, level: LevelForm, time: float, symbol: str) -> Number:
+    """A known instant at which v is at a level, by the piece in which it lies."""
     piece, x, begins = _reached(work, time)
-    index = work.piece_of(time)
-    found = height(work, level, index)
+    found = height(work, level, work.piece_of(time))
     if x.value <= 0.0:
         return work.sheet.given(symbol, time, "s", f"v is at {piece.start.text}, beyond the level")
     if found.slope == 0.0:
@@ -176,7 +180,7 @@ def _since_event(work: Working, found: Number, begins: float, symbol: str) -> Nu
     return work.sheet.work(symbol, "s", "{} + {}", lambda b, x: b + x, start, found, note="since the event")
 
 
-def _reference(work: Working) -> Number:
+def valid_at(work: Working) -> Number:
     """When the supply counts as up: on its ramp from (ta, va) to (tb, vb), t0 = ta + (tb - ta) (L - va)/(vb - va)."""
     structure, sheet = work.problem.structure, work.sheet
     time = float(work.solved.reference[0])

@@ -5,7 +5,9 @@ from collections.abc import Callable, Mapping
 from dataclasses import dataclass
 from typing import Final
 
-from rcrules.derivation import _states, _times
+import numpy as np
+
+from rcrules.derivation import _amounts, _spans, _states, _times
 from rcrules.derivation._reduce import TooLarge
 from rcrules.derivation._respond import respond
 from rcrules.derivation._sheet import Number, Step
@@ -22,20 +24,36 @@ _BY_HAND: Final[Mapping[str, Callable[[Working], Number | None]]] = {
     "applied_voltage": _states.across,
     "corner_frequency": _states.corner,
     "delay": _times.delay,
-    "discharge_time": _times.discharge,
+    "dip_rearm": _spans.rearmed,
+    "discharge_time": _spans.discharged,
+    "discharged_energy": _amounts.spent,
+    "edge_slowness": _spans.slowness,
+    "effective_capacitance": _amounts.own,
     "final_voltage": _times.last,
+    "gain": _states.gain,
+    "hold_up_time": _amounts.hold_up,
     "initial_voltage": _times.first,
     "input_voltage_high": _states.highest,
     "input_voltage_low": _states.lowest,
+    "inrush_current": _amounts.inrush,
+    "peak_current": _amounts.first_current,
+    "peak_pin_current": _amounts.first_current,
+    "peak_voltage": _spans.most,
     "pin_voltage": _states.at_pin,
     "power": _states.power,
+    "power_ratio": _states.power_ratio,
+    "pulse_energy": _amounts.spent,
     "residual": _times.left,
+    "pulse_width": _spans.width,
     "rise_time": _times.edge,
+    "sample_error": _spans.missed,
     "settling_time": _times.settled,
     "stored_charge": _states.charge,
     "stored_energy": _states.energy,
+    "thermal_noise": _amounts.noise,
     "time_constant": _states.time_constant,
     "time_to_63": _times.to_63,
+    "total_capacitance": _amounts.total,
     "voltage_at": _times.voltage_later,
     "voltage_ratio": _states.ratio,
 }
@@ -54,13 +72,13 @@ class Worked:
 
 def work_out(problem: Problem, names: Names, measure: Measure, case: tuple[float, ...]) -> Worked:
     """Lines that arrive at the value of a measure in a case."""
+    value = float(measure.compute(problem.structure, np.array([case], dtype=float))[0])
     for digits in DIGITS:
         work = working(problem, names, measure, case, digits)
-        value = float(measure.compute(problem.structure, work.cases)[0])
         found = _tried(work)
         if found is not None and _agrees(found.value, value) and all(_same(*pair) for pair in work.checks):
             return Worked(value=value, steps=_closed(work, found), by_hand=True)
-    return _told(problem, names, measure, case)
+    return _told(problem, names, measure, case, value)
 
 
 def _tried(work: Working) -> Number | None:
@@ -79,10 +97,9 @@ def _closed(work: Working, found: Number) -> tuple[Step, ...]:
     return tuple(work.sheet.steps)
 
 
-def _told(problem: Problem, names: Names, measure: Measure, case: tuple[float, ...]) -> Worked:
+def _told(problem: Problem, names: Names, measure: Measure, case: tuple[float, ...], value: float) -> Worked:
     """The response where there is one, and the number that the tool reads from it."""
     work = working(problem, names, measure, case, DIGITS[0])
-    value = float(measure.compute(problem.structure, work.cases)[0])
     if measure.poses == "event" and not problem.structure.amplifiers:
         respond(work, math.inf)
     note = f"by the tool: {measure.summary[0].lower()}{measure.summary[1:].rstrip('.')}"

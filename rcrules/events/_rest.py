@@ -27,7 +27,7 @@ ROOM = 25.0
 
 def at_rest(bench: Bench, node: Node, measure: Measure, options: Mapping[str, OptionValue]) -> Problem:
     """The network with its contacts as they usually are. Raises Unmeasurable."""
-    if measure.poses == "event":
+    if measure.poses in ("event", "dip", "sample"):
         raise Unmeasurable(f"both ends of {node.net} are held: nothing moves there")
     table = Table()
     network = with_output(_freed(bench.network(node), node), node, measure)

@@ -88,3 +88,13 @@ def test_thresholds_are_asked_for():
     with pytest.raises(Unmeasurable) as caught:
         reset(pin="").pose("NRST", "dip_rearm", length=0.2)
     assert caught.value.ask == '[pin."U1.NRST"] low = "…"  high = "…"'
+
+
+def test_what_is_held_at_both_ends_has_no_reset():
+    nets = """
+        +3V3: U2.1/VO/power_out R1.1 C1.1 U1.3/VDD/power_in
+        GND: U2.2/GND/power_in U1.2/GND/power_in R1.2 C1.2
+    """
+    board = bench("R1 100k, C1 1u, U1 QX7301, U2 QX3300", nets, '[supply."+3V3"]\nvoltage = "3.3 V"\n' + EXACT)
+    with pytest.raises(Unmeasurable, match="nothing moves there"):
+        board.pose("+3V3 <-> GND", "dip_rearm", length=0.1)

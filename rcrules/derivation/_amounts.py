@@ -1,0 +1,103 @@
+"""Capacitances, currents and energies by hand: of a supply with its capacitors, of a pin or part in an event."""
+
+import math
+
+from rcrules.derivation._pieces import One, Sum
+from rcrules.derivation._respond import pole, respond
+from rcrules.derivation._sheet import Number
+from rcrules.derivation._working import Working
+from rcrules.problems import evaluate
+
+BOLTZMANN = 1.380649e-23
+"""[J/K], exact"""
+
+
+def total(work: Working) -> Number:
+    """C = the sum of all capacitors."""
+    named = zip(work.names.capacitors, work.solved.farads[0], strict=True)
+    farads = [work.sheet.number(name, float(value), "F") for name, value in named]
+    return work.sheet.work("C", "F", " + ".join("{}" for _ in farads), lambda *all_: sum(all_), *farads)
+
+
+def own(work: Working) -> Number | None:
+    """The capacitance of the part in this case."""
+    index = work.problem.structure.element or 0
+    item = next((item for item in work.problem.parameters if item.name == work.names.capacitors[index]), None)
+    return work.sheet.given("C", float(work.solved.farads[0, index]), "F", item.origin if item else "")
+
+
+def inrush(work: Working) -> Number | None:
+    """I = C V / t along the ramp."""
+    rise, volts = (float(evaluate(form, work.cases)[0]) for form in work.problem.structure.waveforms[0].points[-1])
+    if rise <= 0.0:
+        return work.sheet.given("I", math.inf, "A", "it rises at once")
+    farads = total(work)
+    name = work.name(work.free)
+    numbers = work.sheet.number(name, abs(volts), "V"), work.sheet.number(f"{name} rise", rise, "s")
+    return work.sheet.work("I", "A", "{} · {} / {}", lambda c, v, t: c * v / t, farads, *numbers)
+
+
+def hold_up(work: Working) -> Number | None:
+    """t = C (V - v)/I, or C (V² - v²)/(2 P); None where resistors draw along."""
+    structure, sheet = work.problem.structure, work.sheet
+    load = work.form(structure.load, "load", "W" if structure.option("draws") == "power" else "A")
+    start = sheet.number(work.name(work.free), abs(float(evaluate(structure.states[0][0], work.cases)[0])), "V")
+    end = sheet.number("to", abs(float(evaluate(structure.level("to").offset, work.cases)[0])), "V")
+    farads = None if structure.ohms or load.value <= 0.0 or start.value <= end.value else total(work)
+    if farads is None:
+        return None
+    if load.unit == "A":
+        return sheet.work("t", "s", "{} · ({} - {}) / {}", lambda c, v, u, i: c * (v - u) / i, farads, start, end, load)
+    formula = "{} · ({}^2 - {}^2) / (2 · {})"
+    return sheet.work("t", "s", formula, lambda c, v, u, p: c * (v**2 - u**2) / (2 * p), farads, start, end, load)
+
+
+def spent(work: Working) -> Number | None:
+    """W = A² tau / (2 R), where the voltage dies out as one exponential from its first instant on."""
+    found = _dying(work)
+    if found is None:
+        return None
+    amplitude, tau = found
+    formula = "{}^2 · {} / (2 · {})"
+    return work.sheet.work("W", "J", formula, lambda a, t, r: a * a * t / (2 * r), amplitude, tau, _ohms(work))
+
+
+def first_current(work: Working) -> Number | None:
+    """I = |v| / R at the first instant or in the end, whichever is more; of a resistor or a pin that is one."""
+    if ("kind", "capacitor") in work.problem.structure.options:
+        return None
+    ends = [float(work.solved.signal.initial()[0]), float(work.solved.final[0])]
+    if not all(map(math.isfinite, ends)):
+        return None
+    early = abs(ends[0]) >= abs(ends[1])
+    piece = respond(work, 0.0 if early else math.inf)[-1]
+    volts = piece.start if early else piece.rest
+    return work.sheet.work("I", "A", "abs({}) / {}", lambda v, r: abs(v) / r, volts, _ohms(work))
+
+
+def noise(work: Working) -> Number | None:
+    """(k T / C)^0.5 where one node has all capacitors."""
+    if pole(work.problem.structure) != work.at:
+        return None
+    farads = [number for _, number in work.capacitors(work.at)]
+    whole = work.sheet.work("C", "F", " + ".join("{}" for _ in farads), lambda *all_: sum(all_), *farads)
+    kelvin = float(work.cases[0, int(work.problem.structure.option("kelvin"))])
+    numbers = work.sheet.number("k", BOLTZMANN, "1"), work.sheet.number("T", kelvin, "1"), whole
+    return work.sheet.work("noise", "V", "({} · {} / {})^0.5", lambda k, t, c: math.sqrt(k * t / c), *numbers)
+
+
+def _ohms(work: Working) -> Number:
+    index = work.problem.structure.element or 0
+    return work.sheet.number(work.names.resistors[index], float(work.solved.ohms[0, index]), "Ω")
+
+
+def _dying(work: Working) -> tuple[Number, Number] | None:
+    """Amplitude and time constant of the only mode; None where there are more, or sources move later."""
+    if len(work.starts) > 1:
+        return None
+    piece = respond(work, 0.0)[-1]
+    if isinstance(piece, One) and piece.slope is None:
+        return work.sheet.work("A", "V", "{} - {}", lambda v, e: v - e, piece.start, piece.rest), piece.tau
+    if isinstance(piece, Sum) and piece.slope is None and len(piece.modes) == 1:
+        return piece.modes[0]
+    return None
