@@ -7,6 +7,7 @@ from heapq import heappop, heappush
 from typing import Final
 
 from rcrules.networks._role import Judged
+from rcrules.networks._role_legs import cr_leg, rc_leg
 from rcrules.networks._spot import SMALL, Arm, Spot, View, greatest, least
 
 FAR: Final = 64
@@ -137,24 +138,6 @@ def way(view: View, arm: Arm, but: str) -> float:
 def least_way(view: View, arms: Iterable[Arm], but: str) -> float:
     """The least resistance through any of the arms to a held joint, infinite where there is none. [Ω]"""
     return min((way(view, arm, but) for arm in arms), default=float("inf"))
-
-
-def rc_leg(view: View, arm: Arm, but: str) -> tuple[Arm, ...]:
-    """Capacitors to held joints behind a resistor whose far joint holds nothing else; () where it is no such leg."""
-    far = view.at(arm.far)
-    if arm.held is not None or far.pins or far.contacts or far.diodes:
-        return ()
-    if any(other.far != but for other in far.resistors):
-        return ()
-    return tuple(other for other in far.capacitors if other.held is not None)
-
-
-def cr_leg(view: View, arm: Arm, but: str) -> tuple[Arm, ...]:
-    """Resistors to held joints behind a capacitor whose far joint holds nothing else; () where it is no such leg."""
-    far = view.at(arm.far)
-    if not far.bare or any(other.far != but for other in far.capacitors):
-        return ()
-    return far.resistors if all(other.held is not None for other in far.resistors) else ()
 
 
 def _kind(view: View, joint: str) -> str:
