@@ -7,7 +7,7 @@ import numpy as np
 
 from rcrules.expressions import FUNCTIONS, Binary, Call, Expression, Unary, Values, calls, names, value_of
 from rcrules.measures import Measure, Theory
-from rcrules.problems import Array, Structure
+from rcrules.problems import Array, Names, Structure
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -19,6 +19,8 @@ class Posed:
     measure: Measure
     columns: tuple[int, ...]
     """Its columns among those of the value."""
+    names: Names | None = None
+    """Of what it is measured in, for people."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -32,6 +34,8 @@ class Composite:
     """Names that are columns."""
     counts: tuple[tuple[Call, float, tuple[int, ...]], ...]
     """Calls that are a number, or a sum of columns."""
+    units: tuple[tuple[str, str], ...] = ()
+    """Unit of every name, for people."""
 
     def compute(self, structure: Structure, cases: Array) -> Array:  # noqa: ARG002 - it has those of its measures
         """Values (case,); cases (case, column)."""

@@ -10,6 +10,7 @@ from rcrules.checks._identity import fingerprint
 from rcrules.checks._levels import level_text
 from rcrules.checks._resolve import Case
 from rcrules.checks._subjects import Subject
+from rcrules.checks._value import value_told
 from rcrules.checks._verdict import Deciding, Verdict
 from rcrules.checks._worst import made_of, worst_case
 from rcrules.findings import Finding, Json, Quantity
@@ -75,13 +76,15 @@ def finding(
 
 def _derivation(judged: Judged, board: Board) -> Json | None:
     """How the number comes about, where there is one."""
-    from rcrules.derivation import derive
+    from rcrules.derivation import derive, derive_value
 
-    solution, problem = judged.verdict.solution, judged.problem
+    solution, problem, case = judged.verdict.solution, judged.problem, judged.case
     if solution is None or problem is None:
         return None
-    measure, said = judged.case.rule.measure, lambda item, value: made_of(item, value, board)
-    return derive(problem, measure, solution.bounds, said)
+    measure, said = case.rule.measure, lambda item, value: made_of(item, value, board)
+    if case.value is None:
+        return derive(problem, measure, solution.bounds, said)
+    return derive_value(problem, measure, solution.bounds, value_told(case.value, problem), said)
 
 
 def _response(judged: Judged) -> Json | None:

@@ -7,6 +7,7 @@ from typing import Final
 
 import numpy as np
 
+from rcrules.checks._composite import Composite
 from rcrules.checks._conditions import condition
 from rcrules.checks._lookup import Missing, look_up
 from rcrules.checks._named import named_number
@@ -48,6 +49,8 @@ class Case:
     missing: tuple[Missing, ...]
     sure: bool = True
     """False: whether the rule meets the subject is not known."""
+    value: Composite | None = None
+    """Of a rule about more than one measure, once it is posed."""
 
 
 def resolve(rule: Rule, subject: Subject, board: Board, project: Project, *, sure: bool = True) -> Case:

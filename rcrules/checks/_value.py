@@ -2,7 +2,7 @@
 
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, field, replace
-from typing import Final
+from typing import TYPE_CHECKING, Final
 
 from rcrules.checks._composite import Composite, Posed
 from rcrules.checks._count import count, least_path
@@ -19,6 +19,9 @@ from rcrules.problems import Parameter, Problem, Structure
 from rcrules.project import Project
 from rcrules.quantities import Spread
 from rcrules.rulebook import Limit, Rule, Term, dict_of
+
+if TYPE_CHECKING:
+    from rcrules.derivation import Value
 
 _EMPTY: Final = Structure(
     shape=Shape(free=0, held=0, resistors=(), capacitors=()), ohms=(), farads=(), waveforms=()
@@ -62,12 +65,12 @@ def pose_value(case: Case, subjects: Subjects, board: Board, project: Project) -
     expression = _with_limit(rule, joint)
     terms = (*rule.terms, *(term for limit in joint for term in limit.terms))
     posed = tuple(_posed(term, rule, case.subject, subjects, board, project, columns) for term in terms)
-    constants, own = _named(expression, rule, case.subject, board, project, columns)
+    constants, own, units = _named(expression, rule, case.subject, board, project, columns)
     counts = tuple(_counted(call, case.subject, board, columns) for call in calls(expression) if is_count(call))
-    whole = Composite(expression=expression, posed=posed, constants=constants, columns=own, counts=counts)
+    whole = Composite(expression=expression, posed=posed, constants=constants, columns=own, counts=counts, units=units)
     measure = replace(rule.measure, compute=whole.compute, theory=whole.theory, options={})
     bounds = tuple(_shifted(bound, joint) for bound in case.bounds)
-    posed_case = replace(case, rule=replace(rule, measure=measure, options={}), bounds=bounds, options={})
+    posed_case = replace(case, rule=replace(rule, measure=measure, options={}), bounds=bounds, options={}, value=whole)
     structure = posed[0].structure if len(posed) == 1 and expression == posed[0].call else _EMPTY
     return posed_case, Problem(structure=structure, parameters=tuple(columns.parameters))
 
@@ -98,7 +101,9 @@ def _posed(
     options = {name: _option(value, rule, subject, board, project) for name, value in term.options.items()}
     problem = pose(board, project, place.target, term.measure, options)
     own = tuple(columns.add(item) for item in problem.parameters)
-    return Posed(call=term.call, structure=problem.structure, measure=term.measure, columns=own)
+    return Posed(
+        call=term.call, structure=problem.structure, measure=term.measure, columns=own, names=problem.names
+    )
 
 
 def _place(term: Term, subjects: Subjects) -> Subject:
@@ -123,19 +128,21 @@ def _option(value: OptionValue, rule: Rule, subject: Subject, board: Board, proj
 
 def _named(
     of: Expression, rule: Rule, subject: Subject, board: Board, project: Project, columns: _Columns
-) -> tuple[tuple[tuple[str, float], ...], tuple[tuple[str, int], ...]]:
-    """Names that are one number, and names that are columns. Raises Unmeasurable where one is not known."""
+) -> tuple[tuple[tuple[str, float], ...], tuple[tuple[str, int], ...], tuple[tuple[str, str], ...]]:
+    """Names that are one number, names that are columns, units. Raises Unmeasurable where a name is not known."""
     constants: list[tuple[str, float]] = []
     own: list[tuple[str, int]] = []
+    units: list[tuple[str, str]] = []
     for name in dict.fromkeys(item.name for item in names(of)):
         found = named_number(name, rule, subject, board, project)
         if isinstance(found, Missing):
             raise Unmeasurable(found.reason, found.ask[0] if found.ask else "")
+        units.append((name, found.unit))
         if found.low == found.high:
             constants.append((name, found.nominal))
         else:
             own.append((name, columns.add(found)))
-    return tuple(constants), tuple(own)
+    return tuple(constants), tuple(own), tuple(units)
 
 
 def _counted(
@@ -151,3 +158,24 @@ def _counted(
     return call, 0.0, tuple(columns.add(part_parameter(board.parts[ref])) for ref in path)
 
 
+def value_told(whole: Composite, problem: Problem) -> "Value":
+    """The value as its derivation takes it."""
+    from rcrules.derivation import Term, Value
+
+    terms = tuple(
+        Term(
+            call=item.call,
+            problem=Problem(
+                structure=item.structure,
+                parameters=tuple(problem.parameters[index] for index in item.columns),
+                names=item.names,
+            ),
+            measure=item.measure,
+            columns=item.columns,
+        )
+        for item in whole.posed
+    )
+    units = dict(whole.units)
+    constants = [(name, units[name], number, None) for name, number in whole.constants]
+    own = [(name, units[name], 0.0, column) for name, column in whole.columns]
+    return Value(expression=whole.expression, terms=terms, names=(*constants, *own), counts=whole.counts)

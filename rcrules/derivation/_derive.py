@@ -1,20 +1,19 @@
 """Everything about how one number comes about, as the document holds it."""
 
-import math
-from collections.abc import Callable, Iterator, Sequence
+from collections.abc import Iterator
+from functools import partial
 from typing import Final
 
 import numpy as np
 
+from rcrules.derivation._cases import MadeOf, worked_cases
 from rcrules.derivation._picture import picture
 from rcrules.derivation._sensitivity import sensitivity
-from rcrules.derivation._sheet import Step
 from rcrules.derivation._work import work_out
 from rcrules.engine import FloatingNode
 from rcrules.findings import Json
 from rcrules.measures import Measure
-from rcrules.problems import Array, Bounds, Form, Names, Parameter, Problem, Solved, Unsettled, evaluate, solved
-from rcrules.quantities import show
+from rcrules.problems import Array, Bounds, Form, Names, Problem, Solved, Unsettled, evaluate, solved
 
 _SOURCELESS: Final = ("network", "noise", "string", "transfer", "value")
 """What is posed whatever the sources are at."""
@@ -22,9 +21,7 @@ LEAST_SHARE: Final = 1e-6
 """A mode whose part in what is observed is smaller is not told."""
 
 
-def derive(
-    problem: Problem, measure: Measure, bounds: Bounds, made_of: Callable[[Parameter, float], str] | None = None
-) -> Json | None:
+def derive(problem: Problem, measure: Measure, bounds: Bounds, made_of: MadeOf | None = None) -> Json | None:
     """How nominal, lowest and highest value of a measure come about; None where the problem has no names.
 
     made_of: what makes up the value of a parameter that is off nominal, in words; '' = nothing to say.
@@ -35,17 +32,24 @@ def derive(
     names = problem.names
     if names is None:
         return None
-    plain = problem.structure.shape.free > 0 and not problem.structure.amplifiers
-    event = measure.poses == "event" and plain
     return {
         "measure": measure.name,
         "summary": measure.summary,
+        **circumstances(problem, names, measure),
+        "cases": list(worked_cases(problem, measure, bounds, partial(work_out, problem, names, measure), made_of)),
+        "parameters": parameters(problem, measure, bounds),
+    }
+
+
+def circumstances(problem: Problem, names: Names, measure: Measure) -> Json:
+    """``picture``, ``sources``, ``voltages`` and ``modes``."""
+    plain = problem.structure.shape.free > 0 and not problem.structure.amplifiers
+    event = measure.poses == "event" and plain
+    return {
         "picture": picture(problem, names),
         "sources": list(_sources(problem, names)) if measure.poses not in _SOURCELESS else [],
         "voltages": _voltages(problem, names) if event else [],
         "modes": _modes(problem) if event else [],
-        "cases": list(_cases(problem, names, measure, bounds, made_of or _unsaid)),
-        "parameters": list(_parameters(problem, measure, bounds)),
     }
 
 
@@ -108,77 +112,12 @@ def _modes(problem: Problem) -> list[Json]:
     return sorted((row for row in rows if row["share"] > LEAST_SHARE), key=lambda row: -row["tau"])
 
 
-def _cases(
-    problem: Problem, names: Names, measure: Measure, bounds: Bounds, made_of: Callable[[Parameter, float], str]
-) -> Iterator[Json]:
-    """Nominal, lowest, highest, equal ones as one; what does not matter to an end stays nominal in it."""
-    nominal = tuple(problem.box()[1])
-    rows = (("nominal", nominal), ("lowest", tuple(bounds.low_at)), ("highest", tuple(bounds.high_at)))
-    told: dict[tuple[float, ...], list[str]] = {}
-    for name, found in rows:
-        if not any(math.isnan(value) for value in found):
-            told.setdefault(tuple(float(value) for value in _plainest(problem, measure, found)), []).append(name)
-    for case, called in told.items():
-        worked = work_out(problem, names, measure, case)
-        yield {
-            "case": ", ".join(called),
-            "value": worked.value,
-            "by_hand": worked.by_hand,
-            "off": list(_off(problem, case, made_of)),
-            "steps": [_step(step) for step in worked.steps],
-        }
-
-
-def _unsaid(item: Parameter, value: float) -> str:  # noqa: ARG001
-    return ""
-
-
-def _off(
-    problem: Problem, case: Sequence[float], made_of: Callable[[Parameter, float], str]
-) -> Iterator[str]:
-    """``C7 6.19 µF (10 µF, tolerance -20 %, temperature -15 %)``: what is off nominal."""
-    for item, value in zip(problem.parameters, case, strict=True):
-        if _differs(value, item.nominal):
-            why = made_of(item, value)
-            told = f" ({show(item.nominal, item.unit)}, {why})" if why else ""
-            yield f"{item.name} {show(value, item.unit, 4)}{told}"
-
-
-def _plainest(problem: Problem, measure: Measure, case: Sequence[float]) -> Array:
-    """The case with everything at nominal that leaves the value as it is."""
-    nominal, found = problem.box()[1], np.asarray(case, dtype=float)
-    off = [index for index, value in enumerate(case) if _differs(value, nominal[index])]
-    cases = np.tile(found, (len(off) + 1, 1))
-    for row, index in enumerate(off):
-        cases[row, index] = nominal[index]
-    values = measure.compute(problem.structure, cases)
-    plainer = found.copy()
-    for index, value in zip(off, values, strict=False):
-        plainer[index] = nominal[index] if _same(value, values[-1]) else found[index]
-    return plainer if _same(float(measure.compute(problem.structure, plainer[None, :])[0]), values[-1]) else found
-
-
-def _differs(value: float, plain: float) -> bool:
-    return value != plain if math.isinf(plain) else abs(value - plain) > 1e-12 * abs(plain)
-
-
-def _same(one: float, other: float) -> bool:
-    return bool(one == other or abs(one - other) <= 1e-9 * abs(other))
-
-
-def _step(step: Step) -> Json:
-    number = step.number
-    return {
-        "symbol": number.symbol,
-        "formula": step.formula,
-        "put_in": step.put_in,
-        "text": number.text,
-        "note": step.note,
-    }
-
-
-def _parameters(problem: Problem, measure: Measure, bounds: Bounds) -> Iterator[Json]:
+def parameters(problem: Problem, measure: Measure, bounds: Bounds) -> list[Json]:
     """By influence on the spread."""
+    return list(_influences(problem, measure, bounds))
+
+
+def _influences(problem: Problem, measure: Measure, bounds: Bounds) -> Iterator[Json]:
     for influence in sensitivity(problem, measure, bounds):
         item = problem.parameters[influence.column]
         yield {

@@ -71,6 +71,12 @@ class Sheet:
         self.steps.append(Step(number=result, formula=symbols, put_in=put_in, note=note))
         return result
 
+    def line(self, symbol: str, value: float, unit: str, formula: str, put_in: str) -> Number:
+        """A line whose formula is written elsewhere."""
+        number = self.number(self._unused(symbol), value, unit)
+        self.steps.append(Step(number=number, formula=formula, put_in=put_in, note=""))
+        return number
+
     def _unused(self, symbol: str) -> str:
         taken = {step.number.symbol for step in self.steps}
         while symbol in taken:

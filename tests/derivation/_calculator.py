@@ -17,7 +17,7 @@ _OPERATORS = {
     ast.Div: operator.truediv,
     ast.Pow: operator.pow,
 }
-_FUNCTIONS = {"exp": math.exp, "ln": math.log, "abs": abs}
+_FUNCTIONS = {"exp": math.exp, "ln": math.log, "log": math.log, "sqrt": math.sqrt, "abs": abs, "min": min, "max": max}
 
 
 def _scale(unit: str) -> float:
@@ -42,5 +42,5 @@ def _value(node: ast.AST) -> float:
     if isinstance(node, ast.UnaryOp) and isinstance(node.op, ast.USub):
         return -_value(node.operand)
     if isinstance(node, ast.Call) and isinstance(node.func, ast.Name):
-        return float(_FUNCTIONS[node.func.id](_value(node.args[0])))
+        return float(_FUNCTIONS[node.func.id](*(_value(item) for item in node.args)))  # type: ignore[operator]
     raise ValueError(ast.dump(node))
