@@ -9,7 +9,7 @@ from itertools import pairwise
 from pathlib import Path
 from typing import Final
 
-from rcrules.project._facts import dielectric, relative
+from rcrules.project._amounts import dielectric, relative
 from rcrules.project._model import NumberField, NumberPattern
 from rcrules.quantities import Spread
 from rcrules.tomlfile import Table, cut, guess, listed, root
