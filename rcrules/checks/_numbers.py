@@ -1,5 +1,6 @@
 """Numbers at one place of the board, whatever the rules ask, and how they come about."""
 
+import math
 from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import replace
 from difflib import get_close_matches
@@ -106,7 +107,8 @@ def _plain(
 ) -> Derived:
     """A measure with the first of some options that fit, or why it cannot be told with them."""
     found = [_with(board, project, subject, measure, at, options) for options in tried]
-    return next((item for item in found if item.measured is not None), found[0])
+    defined = (item for item in found if item.measured is not None and not math.isnan(item.measured.nominal))
+    return next(defined, found[0])
 
 
 def _with(

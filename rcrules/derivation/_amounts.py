@@ -3,7 +3,7 @@
 import math
 
 from rcrules.derivation._pieces import One, Sum
-from rcrules.derivation._respond import pole, respond
+from rcrules.derivation._respond import pole, respond, seen
 from rcrules.derivation._sheet import Number
 from rcrules.derivation._working import Working
 from rcrules.problems import evaluate
@@ -43,7 +43,9 @@ def hold_up(work: Working) -> Number | None:
     load = work.form(structure.load, "load", "W" if structure.option("draws") == "power" else "A")
     start = sheet.number(work.name(work.free), abs(float(evaluate(structure.states[0][0], work.cases)[0])), "V")
     end = sheet.number("to", abs(float(evaluate(structure.level("to").offset, work.cases)[0])), "V")
-    farads = None if structure.ohms or load.value <= 0.0 or start.value <= end.value else total(work)
+    if start.value <= end.value:
+        return sheet.given("t", 0.0, "s", f"it starts at {start.text}, not above {end.text}")
+    farads = None if structure.ohms or load.value <= 0.0 else total(work)
     if farads is None:
         return None
     if load.unit == "A":
@@ -65,7 +67,9 @@ def spent(work: Working) -> Number | None:
 def first_current(work: Working) -> Number | None:
     """I = |v| / R at the first instant or in the end, whichever is more; of a resistor or a pin that is one."""
     if ("kind", "capacitor") in work.problem.structure.options:
-        return None
+        return _charging(work)
+    if math.isinf(float(work.measure.compute(work.problem.structure, work.cases)[0])):
+        return work.sheet.given("I", math.inf, "A", "nothing limits it")
     ends = [float(work.solved.signal.initial()[0]), float(work.solved.final[0])]
     if not all(map(math.isfinite, ends)):
         return None
@@ -73,6 +77,31 @@ def first_current(work: Working) -> Number | None:
     piece = respond(work, 0.0 if early else math.inf)[-1]
     volts = piece.start if early else piece.rest
     return work.sheet.work("I", "A", "abs({}) / {}", lambda v, r: abs(v) / r, volts, _ohms(work))
+
+
+def _charging(work: Working) -> Number | None:
+    """C dv/dt between two sources; else |V - v0| / R where the capacitor is alone at a node and no source ramps."""
+    index, sheet = work.problem.structure.element or 0, work.sheet
+    if min(work.problem.structure.shape.capacitors[index]) >= work.free:
+        return _between_sources(work, index)
+    if pole(work.problem.structure) != work.at or len(work.starts) > 1:
+        return None
+    found = seen(work, work.at)
+    piece = respond(work, 0.0)[-1]
+    formula = "abs({} - {}) / {}"
+    return sheet.work("I", "A", formula, lambda e, v, r: abs(e - v) / r, piece.rest, piece.start, found.ohms)
+
+
+def _between_sources(work: Working, index: int) -> Number | None:
+    ends = work.problem.structure.shape.capacitors[index]
+    value = float(work.measure.compute(work.problem.structure, work.cases)[0])
+    if math.isinf(value):
+        return work.sheet.given("I", value, "A", "a source jumps across it, and nothing limits the current")
+    slopes = [work.slopes(piece) for piece in range(len(work.starts))]
+    steepest = max((abs(one.get(ends[0], 0.0) - one.get(ends[1], 0.0)) for one in slopes), default=0.0)
+    rate = work.sheet.given("slope", steepest, "V/s", "the steepest of what lies across it")
+    farads = work.sheet.number(work.names.capacitors[index], float(work.solved.farads[0, index]), "F")
+    return work.sheet.work("I", "A", "{} · {}", lambda c, s: c * s, farads, rate)
 
 
 def noise(work: Working) -> Number | None:

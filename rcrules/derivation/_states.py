@@ -6,6 +6,7 @@ from collections.abc import Callable
 import numpy as np
 
 from rcrules.derivation._amounts import total
+from rcrules.derivation._bias import along
 from rcrules.derivation._poles import corner as two_poles
 from rcrules.derivation._poles import slowest
 from rcrules.derivation._reduce import parallel, source
@@ -13,7 +14,6 @@ from rcrules.derivation._respond import pole, seen
 from rcrules.derivation._sheet import Number
 from rcrules.derivation._working import Working
 from rcrules.problems import Array, evaluate, steady_states
-from rcrules.quantities import show
 
 Choose = Callable[[Array], np.intp]
 """Voltages of all states -> the number of the one that counts."""
@@ -89,18 +89,18 @@ def ratio(work: Working) -> Number | None:
 
 
 def charge(work: Working) -> Number | None:
-    """Q = C v."""
+    """Q = C v; along a bias curve ∫ C dv."""
     volts = _most(work)
     if volts is None or work.problem.structure.curves:
-        return volts and _along(work, "Q", "C", "∫ C dv")
+        return volts and along(work, volts, _farads(work), "Q")
     return work.sheet.work("Q", "C", "{} · {}", lambda c, v: c * v, _farads(work), volts)
 
 
 def energy(work: Working) -> Number | None:
-    """W = C v² / 2; of a supply with all its capacitors."""
+    """W = C v² / 2, of a supply with all its capacitors; along a bias curve ∫ v C dv."""
     volts = _most(work)
     if volts is None or work.problem.structure.curves:
-        return volts and _along(work, "W", "J", "∫ v C dv")
+        return volts and along(work, volts, _farads(work), "W")
     return work.sheet.work("W", "J", "{} · {}^2 / 2", lambda c, v: c * v * v / 2, _farads(work), volts)
 
 
@@ -133,17 +133,6 @@ def _farads(work: Working) -> Number:
         return total(work)
     farads = float(work.solved.farads[0, _index(work)])
     return work.sheet.number(_element(work, work.names.capacitors), farads, "F")
-
-
-def _along(work: Working, symbol: str, unit: str, integral: str) -> Number | None:
-    """An integral along the bias curve, whose points are told; None of several capacitors."""
-    if work.problem.structure.element is None:
-        return None
-    farads = _farads(work)
-    _, curve = work.problem.structure.curves[0]
-    points = ", ".join(f"{show(share, '%')} at {show(volts, 'V')}" for volts, share in curve)
-    value = float(work.measure.compute(work.problem.structure, work.cases)[0])
-    return work.sheet.given(symbol, value, unit, f"{integral} from 0 V, C = {farads.text} times {points}")
 
 
 def _size(work: Working, volts: Number) -> Number:

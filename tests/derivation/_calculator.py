@@ -6,9 +6,9 @@ import operator
 import re
 
 _PREFIX = {"": 1.0, "f": 1e-15, "p": 1e-12, "n": 1e-9, "µ": 1e-6, "m": 1e-3, "k": 1e3, "M": 1e6, "G": 1e9, "T": 1e12}
-_SPECIAL = {"V/ms": 1e3, "V/µs": 1e6, "V/ns": 1e9, "s²": 1.0, "min": 60.0, "h": 3600.0, "%": 0.01}
+_SPECIAL = {"V/ms": 1e3, "V/µs": 1e6, "V/ns": 1e9, "s²": 1.0, "V²": 1.0, "min": 60.0, "h": 3600.0, "%": 0.01}
 _WHOLE = ("Hz", "V/s", "s/V")
-_UNIT = r"[fpnµmkMGT]?(?:V/m?s|V/µs|V/ns|s/V|s²|Hz|[ΩFVAsJCW])|min|h|%"
+_UNIT = r"[fpnµmkMGT]?(?:V/m?s|V/µs|V/ns|s/V|s²|V²|Hz|[ΩFVAsJCW])|min|h|%"
 _NUMBER = re.compile(rf"(?<![\w.])(\d[\d.]*(?:e[+-]?\d+)?)(?: ?({_UNIT})(?![\w/]))?")
 _OPERATORS = {
     ast.Add: operator.add,

@@ -1,6 +1,7 @@
 """A reviewer with a pocket calculator gets the printed result, line by line."""
 
 import json
+import re
 from pathlib import Path
 from typing import Any
 
@@ -146,6 +147,31 @@ def test_the_report_draws_the_network_and_tells_the_way(
     assert "time constants   100 ms (100 %)" in out
     assert "tau             = R · C = 10 kΩ · 10 µF = 100 ms" in out
     assert "C7                5.84 µF .. 10 µF .. 14.9 µF" in out
+
+
+STEP = re.compile(r"^ {8}(\S.*?) +(= .*)$")
+
+
+@pytest.mark.parametrize("at", ["NRST", "C7", "LEVEL_ADC", "C1", "R13"])
+def test_from_the_printed_lines_alone_a_pocket_calculator_gets_the_printed_results(
+    at: str, monkeypatch: pytest.MonkeyPatch, capsys: pytest.CaptureFixture[str]
+) -> None:
+    """Every ``= formula = numbers = result   note`` of the text report; the last result of a case is what heads it."""
+    monkeypatch.chdir(DEMO)
+    assert main(["derive", "--at", at]) == 0
+    lines = capsys.readouterr().out.splitlines()
+    cases: list[tuple[str, str]] = []
+    for line in lines:
+        if heading := re.match(r"^ {4}(?:nominal|lowest|highest)[^=]*?   (\S+(?: \S+)?)", line):
+            cases.append((heading[1], ""))
+        elif found := STEP.match(line):
+            *others, result = re.split(r" = ", re.split(r" {3,}", found[2])[0].removeprefix("= "))
+            if len(others) > 1:
+                assert work_out(others[-1]) == pytest.approx(work_out(result), rel=2e-5, abs=1e-15), line
+            cases[-1] = (cases[-1][0], result)
+    assert len(cases) > 3
+    for told, last in cases:
+        assert work_out(told) == pytest.approx(work_out(last), rel=5e-3), (told, last)
 
 
 @pytest.mark.parametrize("at", ["NRST", "C7", "R12", "U3.NRST", "+3V3", "C1", "R1", "GND", "C40"])
