@@ -52,7 +52,30 @@ BOARD = b"""<IPC-2581 revision="B"><Content><StepRef name="t"/></Content>
  <Avl><AvlItem OEMDesignNumber="X"><AvlVmpn><AvlMpn name="Q"/></AvlVmpn></AvlItem></Avl></IPC-2581>
 """
 LISTED = b"""<bom><part ref="R1"><value>4k7</value><f name="Tol">1%</f></part><part ref="C1" value="1u"/></bom>"""
+STARS = b"""*T*
+*PART*
+R1 RES-4K7-1%@R0402
+C1 CAP-100N
+*NET*
+*SIGNAL* N ;A
+R1.2 C1.1
+*SIGNAL* GND
+C1.A4/B9
+*END
+"""
+DOLLARS = b"""(NETLIST)
+$PACKAGES
+R0402 ! 'RES' ! 4K7 ! 1% ; R1
+C0402 ! CAP ; C1
+$A_PROPERTIES
+VOLT '16 V' ; C1
+$NETS
+'A NET' ; R1.2 ,
+  C1.1
+$END
+"""
 NETLISTS = {"xml": XML, "sexpr": SEXPR, "edif": EDIF, "ipc-d-356": TESTED, "ipc-2581": BOARD, "bom-xml": LISTED}
+NETLISTS |= {"star-list": STARS, "dollar-list": DOLLARS}
 TABLES = {"pins": PINS, "bom": BOM, "utf-16": BOM.decode().encode("utf-16")}
 TEXTS = {**NETLISTS, **TABLES}
 PIECES = (
