@@ -16,7 +16,7 @@ from rcrules.findings import Json
 from rcrules.networks import Board
 from rcrules.problems import Array, Bounds, Problem, Unsettled
 from rcrules.project import Project
-from rcrules.statistics import root_sum_square, samples, wilson
+from rcrules.statistics import root_sum_square, samples, values, wilson
 
 _QUANTILES: Final = (0.00135, 0.5, 0.99865)
 """Those of plus and minus three standard deviations, and the middle."""
@@ -33,12 +33,12 @@ def statistics(
     distributions = _distributions(problem, board, project)
     drawn = samples(problem.parameters, distributions, asked.samples, (asked.seed, crc32(name.encode())))
     try:
-        values = case.rule.measure.compute(problem.structure, drawn)
+        told = values(problem, case.rule.measure, drawn)
     except (FloatingNode, Unsettled):
         return None  # the bounds beside it have their own word on that
-    broken = int(_fails(values, case).sum())
+    broken = int(_fails(told, case).sum())
     found = wilson(broken, asked.samples)
-    low, middle, high = (float(value) for value in np.quantile(values, _QUANTILES, method="inverted_cdf"))
+    low, middle, high = (float(value) for value in np.quantile(told, _QUANTILES, method="inverted_cdf"))
     below, above = _root_sum_square(problem, case, bounds)
     return {
         "samples": asked.samples,
@@ -57,7 +57,7 @@ def failing(
     """How many of so many random cases break a limit; None where one of them has no solution."""
     drawn = samples(problem.parameters, _distributions(problem, board, project), count, seed)
     try:
-        return int(_fails(case.rule.measure.compute(problem.structure, drawn), case).sum())
+        return int(_fails(values(problem, case.rule.measure, drawn), case).sum())
     except (FloatingNode, Unsettled):
         return None
 
@@ -74,18 +74,18 @@ def _distribution(name: str, board: Board, project: Project) -> str:
     return said or project.distribution or "uniform"
 
 
-def _fails(values: Array, case: Case) -> Array:
+def _fails(told: Array, case: Case) -> Array:
     """Which samples break a limit (case,); what is not defined fails."""
-    found = np.isnan(values)
+    found = np.isnan(told)
     for bound in case.bounds:
-        found = found | _breaks(values, bound, case)
+        found = found | _breaks(told, bound, case)
     return np.asarray(found)
 
 
-def _breaks(values: Array, bound: Bound, case: Case) -> Array:
-    broken = values < bound.strict if bound.kind == "at-least" else values > bound.strict
+def _breaks(told: Array, bound: Bound, case: Case) -> Array:
+    broken = told < bound.strict if bound.kind == "at-least" else told > bound.strict
     if endless(case.rule.measure):
-        never = np.isposinf(values)
+        never = np.isposinf(told)
         broken = broken & ~never if case.rule.never == "holds" else broken | never
     return np.asarray(broken)
 

@@ -8,8 +8,10 @@ from typing import Final
 
 import numpy as np
 
-from rcrules.problems import Array, Parameter
+from rcrules.problems import Array, Parameter, Problem, Quantity
 
+_PORTION: Final = 20_000
+"""Cases that are solved at a time: more need memory and are no faster."""
 DISTRIBUTIONS: Final = ("uniform", "normal")
 _DEVIATIONS: Final = 6.0
 """Standard deviations between the limits of a normal parameter, which is cut off at them."""
@@ -30,6 +32,12 @@ def samples(parameters: Sequence[Parameter], distributions: Sequence[str], count
         else:
             drawn[:, column] = _drawn(generator, distribution, item.low, item.high, count)
     return drawn
+
+
+def values(problem: Problem, measure: Quantity, cases: Array) -> Array:
+    """A measure in each case (case,), portion by portion; cases (case, column). Raises what the measure raises."""
+    portions = np.array_split(cases, max(1, -(-len(cases) // _PORTION)))
+    return np.concatenate([measure.compute(problem.structure, portion) for portion in portions])
 
 
 def _drawn(generator: np.random.Generator, distribution: str, low: float, high: float, count: int) -> Array:

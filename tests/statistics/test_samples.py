@@ -4,8 +4,14 @@ import numpy as np
 import pytest
 from scipy import stats
 
-from rcrules.problems import Parameter
-from rcrules.statistics import samples
+from rcrules.engine import Shape
+from rcrules.measures import Theory
+from rcrules.problems import Array, Parameter, Problem, Structure
+from rcrules.statistics import samples, values
+
+EMPTY = Structure(
+    shape=Shape(free=0, held=0, resistors=(), capacitors=()), ohms=(), farads=(), waveforms=()
+)
 
 COUNT = 40_000
 
@@ -53,3 +59,27 @@ def test_parameters_are_independent() -> None:
 @pytest.mark.parametrize("distribution", ["uniform", "normal"])
 def test_a_number_without_spread_stays(distribution: str) -> None:
     assert (samples([parameter(5.0, 5.0, 5.0)], [distribution], 10, (1,)) == 5.0).all()
+
+
+class Count:
+    """A measure that notes how many cases it is asked at a time."""
+
+    def __init__(self) -> None:
+        self.portions: list[int] = []
+
+    def compute(self, structure: Structure, cases: Array) -> Array:  # noqa: ARG002
+        self.portions.append(len(cases))
+        return cases[:, 0] * 2.0
+
+    def theory(self, structure: Structure, low: Array, high: Array) -> Theory:  # noqa: ARG002
+        return Theory(signs=(1,))
+
+
+@pytest.mark.parametrize("count", [1, 20_000, 100_001])
+def test_values_come_in_order_from_portions_that_fit_into_memory(count: int) -> None:
+    """Whatever the number of samples, memory holds the intermediate results of a portion alone."""
+    measure = Count()
+    cases = np.arange(float(count))[:, None]
+    problem = Problem(structure=EMPTY, parameters=(parameter(0.0, 1.0, 2.0),))
+    assert (values(problem, measure, cases) == cases[:, 0] * 2.0).all()
+    assert max(measure.portions) <= 20_000
