@@ -4,7 +4,7 @@ import re
 from typing import Final
 
 from rcrules.errors import UserMistake
-from rcrules.readers import dollar_list, star_list
+from rcrules.readers import bracket_list, dollar_list, star_list
 from rcrules.readers._export import Source
 from rcrules.readers._mistakes import refusal, shorten
 from rcrules.readers._text import head
@@ -31,12 +31,16 @@ _TEXTS: Final = tuple(
         (r"\A\s*(?:#[^\n]*\n\s*)*\(\s*(?:\{[^\n]*\n\s*)?\(\s*/?[0-9a-f]{6,}\s", "an older parenthesised list of parts"),
         (r"\A\s*\(\s*\w+_(?:sch|pcb)\b", "a schematic or board file, not a netlist"),
         (r"^\.(?:subckt|ends?|model|param|include|lib|tran|ac|dc|op|control|title)\b", "a SPICE deck"),
-        (r"^[\[(][ \t\r]*$", "a netlist in bracket lists"),
         (r"\A\s*\(", "a parenthesised text, but no netlist known here"),
         (r"\A\s*[{\[]\s*[\"{\[\]}]", "a JSON text"),
     )
 )
-_OURS: Final = re.compile(r"\A\s*\(\s*(?:\"?export[\s()\"]|edif\s)", re.IGNORECASE)
+_OURS: Final = (
+    re.compile(r"\A\s*\(\s*(?:\"?export[\s()\"]|edif\s)", re.IGNORECASE),
+    star_list.CLAIM,
+    dollar_list.CLAIM,
+    bracket_list.CLAIM,
+)
 _ELEMENT_LINE: Final = re.compile(r"^[RCLVIDQMX]\w*(?: +[^\s,;|]+){3,}[ \r]*$", re.IGNORECASE | re.MULTILINE)
 _ROOTS: Final = {"html": "an HTML page", "svg": "a picture"}
 
@@ -70,7 +74,7 @@ def unknown(source: Source) -> UserMistake:
 
 
 def _text_format(text: str) -> str | None:
-    if _OURS.match(text) or star_list.CLAIM.search(text) or dollar_list.CLAIM.search(text):
+    if any(claim.search(text) for claim in _OURS):
         return None
     for pattern, name in _TEXTS:
         if pattern.search(text):

@@ -74,9 +74,21 @@ $NETS
   C1.1
 $END
 """
+BRACKETS = b"""[
+R1
+R0402
+
+4K7
+]
+(
+A
+R1-1
+J1,2
+)
+"""
 NETLISTS = {"xml": XML, "sexpr": SEXPR, "edif": EDIF, "ipc-d-356": TESTED, "ipc-2581": BOARD, "bom-xml": LISTED}
 NETLISTS |= {"star-list": STARS, "dollar-list": DOLLARS}
-TABLES = {"pins": PINS, "bom": BOM, "utf-16": BOM.decode().encode("utf-16")}
+TABLES = {"pins": PINS, "bracket-list": BRACKETS, "bom": BOM, "utf-16": BOM.decode().encode("utf-16")}
 TEXTS = {**NETLISTS, **TABLES}
 PIECES = (
     b"\0",

@@ -36,7 +36,6 @@ FOREIGN = {
     "a parenthesised text, but no netlist known here": b"(netlist (R1))",
     "XML with the root <schematic>": b"<schematic><component/></schematic>",
     "a SPICE deck": b"* a filter\nR1 in out 10k\nC1 out 0 100n\n.tran 1u 1m\n.end\n",
-    "a netlist in bracket lists": b"[\nR1\nR0603\n10k\n]\n(\nGND\nR1-1\n)\n",
     "a JSON text": b'{"parts": ["R1"],\n "nets": []}\n',
 }
 
