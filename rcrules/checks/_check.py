@@ -75,9 +75,7 @@ def _cases(
     return [resolve(rule, item, board, project, sure=met is True) for item, met in chosen if met is not False]
 
 
-def _judge(
-    cases: Iterable[Case], subjects: Subjects, board: Board, project: Project, asked: Asked
-) -> list[Judged]:
+def _judge(cases: Iterable[Case], subjects: Subjects, board: Board, project: Project, asked: Asked) -> list[Judged]:
     """Pose what can be posed, decide all of it in one go."""
     judged: list[Judged] = []
     posed: list[tuple[Case, Problem]] = []

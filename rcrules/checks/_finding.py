@@ -36,9 +36,7 @@ class Judged:
     verdict: Verdict
 
 
-def finding(
-    judged: Judged, board: Board, project: Project, assumptions: list[int], *, asked: Asked
-) -> Finding:
+def finding(judged: Judged, board: Board, project: Project, assumptions: list[int], *, asked: Asked) -> Finding:
     """The finding, with what is asked of it besides its verdict."""
     case, verdict = judged.case, judged.verdict
     rule, subject, margin = case.rule, case.subject, verdict.solution and verdict.solution.margin

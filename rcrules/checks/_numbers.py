@@ -40,7 +40,12 @@ PLAIN: Final[Mapping[str, Mapping[str, tuple[_Options, ...]]]] = {
 
 
 def numbers_at(
-    board: Board, project: Project, rules: Sequence[Rule], at: str, *, asked: Asked = Asked(derived=True)  # noqa: B008
+    board: Board,
+    project: Project,
+    rules: Sequence[Rule],
+    at: str,
+    *,
+    asked: Asked = Asked(derived=True),  # noqa: B008
 ) -> list[Derived]:
     """What the rules ask of the net, part or pin, then plain numbers that none of them asked for; else why none.
 
@@ -111,9 +116,7 @@ def _plain(
     return next(defined, found[0])
 
 
-def _with(
-    board: Board, project: Project, subject: Subject, measure: Measure, at: str, options: _Options
-) -> Derived:
+def _with(board: Board, project: Project, subject: Subject, measure: Measure, at: str, options: _Options) -> Derived:
     nothing = Derived(
         at=at,
         of=subject.net or ", ".join(subject.refs),
@@ -136,4 +139,3 @@ def _with(
     measured = as_quantity(solved, problem, measure.unit)
     derivation = derive(problem, measure, solved, lambda item, value: made_of(item, value, board))
     return replace(nothing, measured=measured, derivation=derivation)
-

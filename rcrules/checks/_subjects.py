@@ -177,9 +177,7 @@ class Subjects:
 
     @cached_property
     def _node_at(self) -> Mapping[str, Node]:
-        return {
-            node.joint: node for network in self._board.networks for node in network.nodes if node.across is None
-        }
+        return {node.joint: node for network in self._board.networks for node in network.nodes if node.across is None}
 
     def _whole_board(self) -> tuple[Subject, ...]:
         nets = tuple(self._board.design.nets)

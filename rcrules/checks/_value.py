@@ -23,9 +23,7 @@ from rcrules.rulebook import Limit, Rule, Term, dict_of
 if TYPE_CHECKING:
     from rcrules.derivation import Value
 
-_EMPTY: Final = Structure(
-    shape=Shape(free=0, held=0, resistors=(), capacitors=()), ohms=(), farads=(), waveforms=()
-)
+_EMPTY: Final = Structure(shape=Shape(free=0, held=0, resistors=(), capacitors=()), ohms=(), farads=(), waveforms=())
 """Where nothing is posed."""
 
 
@@ -101,9 +99,7 @@ def _posed(
     options = {name: _option(value, rule, subject, board, project) for name, value in term.options.items()}
     problem = pose(board, project, place.target, term.measure, options)
     own = tuple(columns.add(item) for item in problem.parameters)
-    return Posed(
-        call=term.call, structure=problem.structure, measure=term.measure, columns=own, names=problem.names
-    )
+    return Posed(call=term.call, structure=problem.structure, measure=term.measure, columns=own, names=problem.names)
 
 
 def _place(term: Term, subjects: Subjects) -> Subject:
@@ -145,9 +141,7 @@ def _named(
     return tuple(constants), tuple(own), tuple(units)
 
 
-def _counted(
-    call: Call, subject: Subject, board: Board, columns: _Columns
-) -> tuple[Call, float, tuple[int, ...]]:
+def _counted(call: Call, subject: Subject, board: Board, columns: _Columns) -> tuple[Call, float, tuple[int, ...]]:
     """A count, or the resistors of a path as columns. Raises Unmeasurable where there is no path."""
     options: Mapping[str, str] = dict_of(call)
     if call.name == "count":

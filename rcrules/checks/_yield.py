@@ -43,9 +43,7 @@ def by_yield(
     ]
 
 
-def _judged(
-    case: Case, problem: Problem, verdict: Verdict, board: Board, project: Project, asked: Asked
-) -> Verdict:
+def _judged(case: Case, problem: Problem, verdict: Verdict, board: Board, project: Project, asked: Asked) -> Verdict:
     passing = case.rule.passing
     if verdict.solution is None or verdict.outcome == "holds" or passing is None:
         return verdict

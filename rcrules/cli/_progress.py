@@ -14,9 +14,7 @@ PATIENCE_S: Final = 1.0
 
 
 @contextmanager
-def progress(
-    what: str, *, quiet: bool, total: int = 1, after_s: float = PATIENCE_S
-) -> Iterator[Callable[[], None]]:
+def progress(what: str, *, quiet: bool, total: int = 1, after_s: float = PATIENCE_S) -> Iterator[Callable[[], None]]:
     """Show ``what`` with a bar while the block runs longer than ``after_s``; gone when it ends.
 
     what: our own words; names of strangers do not belong here, for they could hold markup.

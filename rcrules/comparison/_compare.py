@@ -126,9 +126,7 @@ def _verdict(item: Finding | None) -> Json | None:
 _QUANTITY: Final = ("low", "nominal", "high", "unit", "low_case", "high_case", "method")
 
 
-def _causes(
-    was: Finding | None, now: Finding | None, old: Document, new: Document, about: list[Json]
-) -> Iterator[str]:
+def _causes(was: Finding | None, now: Finding | None, old: Document, new: Document, about: list[Json]) -> Iterator[str]:
     """``C7 10 µF → 4.7 µF``: what changed of the rule, of the network's parts and sources, of the conditions."""
     if was is not None and now is not None:
         yield from _rule(was, now)

@@ -43,9 +43,7 @@ def _weighed(end: float, begin: float, c1: float, a: float, b: float, c2: float,
     return (end - begin) * (c1 * (2 * a + b) + c2 * (a2 + 2 * b2)) / 6
 
 
-def _stretches(
-    curve: tuple[tuple[float, float], ...], volts: float
-) -> Iterator[tuple[float, float, float, float]]:
+def _stretches(curve: tuple[tuple[float, float], ...], volts: float) -> Iterator[tuple[float, float, float, float]]:
     """Begin [V], share there, end [V], share there, from 0 V to a voltage; the curve stays as it is beyond its ends."""
     points = [(0.0, curve[0][1]), *(point for point in curve if point[0] > 0.0), (float("inf"), curve[-1][1])]
     for (begin, here), (end, there) in pairwise(points):

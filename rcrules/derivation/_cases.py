@@ -48,9 +48,7 @@ def _unsaid(item: Parameter, value: float) -> str:  # noqa: ARG001
     return ""
 
 
-def _off(
-    problem: Problem, case: Sequence[float], made_of: MadeOf
-) -> Iterator[str]:
+def _off(problem: Problem, case: Sequence[float], made_of: MadeOf) -> Iterator[str]:
     """``C7 6.19 µF (10 µF, tolerance -20 %, temperature -15 %)``: what is off nominal."""
     for item, value in zip(problem.parameters, case, strict=True):
         if _differs(value, item.nominal):

@@ -142,7 +142,12 @@ def parallel(sheet: Sheet, symbol: str, ohms: Sequence[Number], note: str = "in 
 
 
 def source(
-    sheet: Sheet, symbol: str, ohms: Number, links: Sequence[Link], keep: int, volts: Mapping[int, Number],
+    sheet: Sheet,
+    symbol: str,
+    ohms: Number,
+    links: Sequence[Link],
+    keep: int,
+    volts: Mapping[int, Number],
     draws: Sequence[Number],
 ) -> Number:
     """Open-circuit voltage at ``keep``: R (V1/R1 + V2/R2 - I); held terminals at 0 V add nothing."""

@@ -104,9 +104,7 @@ def _rested(work: Working, found: Seen) -> Number:
     return source(sheet, "v0", ohms, links, work.at, work.before(), mesh.draws.get(work.at, []))
 
 
-def _jumped(
-    work: Working, found: Seen, start: Number, old: Mapping[int, Number], new: Mapping[int, Number]
-) -> Number:
+def _jumped(work: Working, found: Seen, start: Number, old: Mapping[int, Number], new: Mapping[int, Number]) -> Number:
     """v after held terminals have jumped: C (v' - v) = sum of C_k (V_k' - V_k)."""
     numbers: list[Number] = [start]
     for terminal, farads in work.capacitors(work.at):

@@ -160,9 +160,7 @@ def _arrive(work: Working, piece: Piece, x: Number, begins: float, level: Number
     return _since_event(work, found, begins, symbol)
 
 
-def _meet(
-    work: Working, piece: Piece, x: Number, begins: float, level: Number, slope: float, symbol: str
-) -> Number:
+def _meet(work: Working, piece: Piece, x: Number, begins: float, level: Number, slope: float, symbol: str) -> Number:
     """The instant at which v meets a level that moves."""
     sheet = work.sheet
     found = sheet.given(symbol if begins == 0.0 else "x", x.value, "s", "found between brackets; put in:")

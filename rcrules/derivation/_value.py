@@ -109,9 +109,7 @@ def _headed(steps: Sequence[Step], name: str) -> list[Step]:
     return [replace(first, note=note), *others]
 
 
-def _put_together(
-    sheet: Sheet, value: Value, case: tuple[float, ...], unit: str, found: Sequence[float]
-) -> Number:
+def _put_together(sheet: Sheet, value: Value, case: tuple[float, ...], unit: str, found: Sequence[float]) -> Number:
     """A line for each measure as the expression calls it, and one for the expression."""
     numbers: dict[Expression | str, Number] = {}
     for term, result in zip(value.terms, found, strict=True):

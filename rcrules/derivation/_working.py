@@ -123,9 +123,7 @@ def working(problem: Problem, names: Names, measure: Measure, case: tuple[float,
     """A new sheet for a case."""
     cases = np.array([case], dtype=float)
     found = solved(problem.structure, cases)
-    return Working(
-        problem=problem, names=names, measure=measure, cases=cases, sheet=Sheet(digits=digits), solved=found
-    )
+    return Working(problem=problem, names=names, measure=measure, cases=cases, sheet=Sheet(digits=digits), solved=found)
 
 
 def height(work: Working, level: LevelForm, piece: int, final: Number | None = None) -> Height:

@@ -94,9 +94,7 @@ def _binary(of: Binary, known: Known, wanted: Dimension | None) -> Dimension:
     return left
 
 
-def _other(
-    left: Expression, right: Expression, sign: str, known: Known, wanted: Dimension | None
-) -> Dimension | None:
+def _other(left: Expression, right: Expression, sign: str, known: Known, wanted: Dimension | None) -> Dimension | None:
     """What the left of a product must be where only the right is known."""
     is_free = isinstance(left, Name) and left.name in known.free and left.name not in known.learned
     if wanted is None or not is_free:
@@ -113,7 +111,7 @@ def _call(of: Call, known: Known, wanted: Dimension | None) -> Dimension:
         expected = f"a measure (rcrules rules --measures lists them), or {', '.join(FUNCTIONS)}"
         raise QuantityError(problem, at=of.at, length=of.length, expected=expected)
     if of.arguments:
-        expected = "options only, such as delay(to = \"1.2 V\")"
+        expected = 'options only, such as delay(to = "1.2 V")'
         raise QuantityError(f"'{of.name}' takes no plain arguments", at=of.at, length=of.length, expected=expected)
     if known.check_call is not None:
         known.check_call(of)

@@ -39,9 +39,7 @@ def value_change(part: RatedPart, was: float, now: float, source: str, distance:
     """Another value of a resistor or capacitor."""
     unit = UNITS[part.kind]
     texts = (show(was, unit, 4), show(now, unit, 4))
-    return Change(
-        ref=part.ref, what="value", was=texts[0], now=texts[1], number=now, source=source, distance=distance
-    )
+    return Change(ref=part.ref, what="value", was=texts[0], now=texts[1], number=now, source=source, distance=distance)
 
 
 def changed(project: Project, changes: Iterable[Change]) -> Project:

@@ -126,4 +126,3 @@ def _cautions(document: Document, *, verbose: bool) -> list[Line]:
     told = [pack for pack in document.packs if pack["name"] in shown and pack["caution"]]
     lines: list[Line] = [((f"caution {pack['name']}", "name"), "   ", pack["caution"]) for pack in told]
     return [(), *lines] if lines else []
-

@@ -70,9 +70,7 @@ def _is_expression(text: str) -> bool:
     return False
 
 
-def _limit(
-    table: Table, kind: Kind, measure: Measure, names: Names, measures: Mapping[str, Measure]
-) -> Limit | None:
+def _limit(table: Table, kind: Kind, measure: Measure, names: Names, measures: Mapping[str, Measure]) -> Limit | None:
     value = table.data[kind]
     if isinstance(value, Mapping):
         return _by_word(table, kind, measure, names)

@@ -80,9 +80,7 @@ def _read(name: str, folder: Path | None, asked_by: str) -> Table | UserMistake:
         return error
 
 
-def _compiled(
-    tops: Sequence[Table | UserMistake], measures: Mapping[str, Measure], problems: Problems
-) -> list[Rule]:
+def _compiled(tops: Sequence[Table | UserMistake], measures: Mapping[str, Measure], problems: Problems) -> list[Rule]:
     """The rules of several files, without those in whose place another stands; mistakes in the order of the files."""
     bases = Bases([top for top in tops if isinstance(top, Table)], _shipped_tops)
     found: list[Rules] = []

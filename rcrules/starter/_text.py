@@ -79,7 +79,7 @@ def _supplies(document: Document, tables: Tables) -> None:
     rows = [row for row in document.held if row["kind"] == "supply" and row["joined"] is None]
     for row in sorted(rows, key=lambda row: natural(row["net"])):
         why = comment("; ".join(row["evidence"][:2]))
-        line = f"# voltage = \"…\"   # not known: {why}"
+        line = f'# voltage = "…"   # not known: {why}'
         if row["nominal"] is not None and row["sure"]:
             line = f"voltage = {text(show(row['nominal'], 'V', 6))}   # from {why}; add its tolerance: +/- 5 %"
         elif row["nominal"] is not None:

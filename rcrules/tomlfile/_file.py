@@ -27,7 +27,7 @@ _GUARD: Final = re.compile(
 """Strings (also unterminated ones, so that each character is looked at once), comments, and the marks that nest."""
 _ADVICE: Final = {
     "invalid value": 'put texts in quotes: key = "text"',
-    "illegal character '\\n'": "close the quote on the same line, or write \'\'\' around texts of several lines",
+    "illegal character '\\n'": "close the quote on the same line, or write ''' around texts of several lines",
     "cannot overwrite a value": "say each key once",
     "cannot declare": "give each table its heading once; a list of tables has double brackets: [[rule]]",
 }
