@@ -1,10 +1,10 @@
 """A network as a chain of nodes, each with its branches: the order in which it is drawn."""
 
 from collections import deque
-from collections.abc import Sequence
+from collections.abc import Iterator, Sequence
 
 from rcrules.findings import Json
-from rcrules.problems import Names, Problem, evaluate
+from rcrules.problems import Array, Names, Problem, evaluate
 
 
 def picture(problem: Problem, names: Names) -> list[Json]:
@@ -35,14 +35,18 @@ def _row(problem: Problem, names: Names, name: str, here: Sequence[Json], down: 
     return {
         "node": name,
         "seen": name in {names.terminals[end] for end in ends},
-        "branches": [{**_told(arm), "to": arm["b"] if arm["a"] == name else arm["a"]} for arm in here],
-        "down": [_told(arm) for arm in down],
+        "branches": [{**_told(arm, name), "to": arm["b"] if arm["a"] == name else arm["a"]} for arm in here],
+        "down": [_told(arm, name) for arm in down],
         "drawn": _drawn(problem, names, name),
     }
 
 
-def _told(arm: Json) -> Json:
-    return {"ref": arm["ref"], "kind": arm["kind"], "value": arm["value"], "unit": arm["unit"]}
+def _told(arm: Json, here: str) -> Json:
+    """An arm as it is met from a node; of a diode the word says which way it conducts."""
+    told = {key: arm[key] for key in ("ref", "kind", "value", "unit")}
+    if arm["kind"] == "diode":
+        told["kind"] = "diode from here" if arm["a"] == here else "diode to here"
+    return told
 
 
 def _drawn(problem: Problem, names: Names, name: str) -> list[str]:
@@ -67,7 +71,16 @@ def _arms(problem: Problem, names: Names) -> list[Json]:
             value = float(evaluate(form, nominal)[0])
             ends = {"a": names.terminals[a], "b": names.terminals[b]}
             found.append({"ref": ref, "kind": kind, "value": value, "unit": unit, **ends})
-    return found
+    return [*found, *_diodes(problem, names, nominal)]
+
+
+def _diodes(problem: Problem, names: Names, nominal: Array) -> Iterator[Json]:
+    """Every diode with its forward drop, its anode first; not the rails of what pins leak, which drop nothing."""
+    for item, ref in zip(problem.structure.diodes, names.diodes, strict=False):
+        drop = float(evaluate(item.drop, nominal)[0])
+        if drop > 0.0:
+            ends = {"a": names.terminals[item.anode], "b": names.terminals[item.cathode]}
+            yield {"ref": ref, "kind": "diode", "value": drop, "unit": "V", **ends}
 
 
 def _chain(problem: Problem, names: Names, arms: Sequence[Json]) -> list[str]:

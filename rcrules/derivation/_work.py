@@ -100,7 +100,7 @@ def _closed(work: Working, found: Number) -> tuple[Step, ...]:
 def _told(problem: Problem, names: Names, measure: Measure, case: tuple[float, ...], value: float) -> Worked:
     """The response where there is one, and the number that the tool reads from it."""
     work = working(problem, names, measure, case, DIGITS[0])
-    if measure.poses == "event" and not problem.structure.amplifiers:
+    if measure.poses == "event" and not (problem.structure.amplifiers or problem.structure.diodes):
         respond(work, math.inf)
     note = f"by the tool: {measure.summary[0].lower()}{measure.summary[1:].rstrip('.')}"
     work.sheet.given(measure.name.replace("_", " "), value, measure.unit, note)

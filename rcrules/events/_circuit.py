@@ -151,6 +151,7 @@ class Circuit:
             resistors=(*own, *(arm.ref for arm in after)),
             capacitors=tuple(arm.ref for arm in self.of("capacitor")),
             earlier=(*own, *(arm.ref for arm in before)),
+            diodes=tuple(item.ref for item in self.valves),
         )
 
     def floating(self, further: Iterable[Arm] = ()) -> list[str]:

@@ -10,6 +10,8 @@ from rcrules.measures._theory import Slopes, unproved
 from rcrules.measures._topology import columns
 from rcrules.problems import Array, LevelForm, Structure, Swing, Waveform, evaluate, solved, steady_states
 
+_ROUNDING = 1e-14
+"""Part of the greatest voltage around a part below which nothing lies across it: differences of equal numbers."""
 ACROSS = LevelForm(kind="voltage")
 """Nothing but the observed voltage."""
 
@@ -35,7 +37,8 @@ def _steady(structure: Structure, cases: Array, level: LevelForm) -> Array:
         volts = volts - states[:, :, structure.against]
     for terminal, fraction in level.follows:
         volts = volts - states[:, :, terminal] * evaluate(fraction, cases)[:, None]
-    return np.asarray(volts)
+    rounding = _ROUNDING * np.abs(states).max(axis=2, initial=0.0)
+    return np.where(np.abs(volts) <= rounding, 0.0, volts)
 
 
 def _transients(structure: Structure, cases: Array, level: LevelForm, volts: Array) -> Iterator[tuple[Array, Array]]:

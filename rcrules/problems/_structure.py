@@ -192,6 +192,8 @@ class Names:
     """References; parallel ones that are one branch joined by `` + ``."""
     earlier: tuple[str, ...] = ()
     """Resistors of the shape before the event, where the structure has one."""
+    diodes: tuple[str, ...] = ()
+    """References; of what a pin leaks the rails in words."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

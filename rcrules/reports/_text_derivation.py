@@ -69,8 +69,12 @@ def _picture(rows: list[Json]) -> Iterator[Line]:
             yield (_INDENT, "  |")
 
 
+_WAYS: Final = {"diode from here": " forward, conducts from here", "diode to here": " forward, conducts to here"}
+
+
 def _part(arm: Json) -> str:
-    return f"{arm['ref']} {number(arm['value'], arm['unit'])}"
+    way = _WAYS.get(arm["kind"], "")
+    return f"{arm['ref']} {number(arm['value'], arm['unit'])}{way}"
 
 
 def _circumstances(derivation: Json) -> Iterator[Line]:
