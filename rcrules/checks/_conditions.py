@@ -6,6 +6,7 @@ from typing import Final
 from rcrules.checks._facts import facts, unknown
 from rcrules.checks._lookup import Missing
 from rcrules.checks._subjects import Subject
+from rcrules.checks._views import View
 from rcrules.networks import Board
 from rcrules.parts import RatedPart, Unknown
 from rcrules.rulebook import Rule, Selection, facts_of
@@ -37,8 +38,16 @@ def _lines(name: str, subject: Subject, board: Board) -> Iterator[str]:
     if name == "rated_voltage":
         yield from (_rating(board.parts[ref]) for ref in subject.refs)
         return
+    if name == "voltage" and subject.kind == "capacitor" and any(_loose(view, board) for view in subject.views):
+        yield f'[part."{subject.refs[0]}"] voltage-across = "…"'
+        return
     for held in (held for view in subject.views for held in unknown(view, board)):
         yield f'[supply."{held.net}"] voltage = "…"' if held.kind == "supply" else f'[net."{held.net}"] swing = "…"'
+
+
+def _loose(view: View, board: Board) -> bool:
+    """Whether an end of the subject is at a net that nothing holds, so that no voltage of another net would help."""
+    return any(net not in board.held for net in view.around)
 
 
 def _rating(part: RatedPart) -> str:

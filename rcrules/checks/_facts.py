@@ -34,6 +34,8 @@ def _hull(held: list[Held]) -> Spread | None:
 
 def _across(view: View, board: Board) -> Spread | None:
     """Voltage between two held nets; at free nodes from nothing to the widest that resistors alone could pass on."""
+    if len(view.parts) == 1 and view.parts[0].across is not None:
+        return view.parts[0].across
     held = _held(view.around, board)
     if any(net not in board.held for net in view.around):
         return None  # an end that nothing holds may be anywhere

@@ -94,7 +94,7 @@ def pose_states(bench: Bench, part: RatedPart, measure: Measure, options: Mappin
         at=circuit.terminal(ends[0]),
         against=circuit.terminal(ends[1]),
         element=_element(circuit, part),
-        rating=_rating(part, measure),
+        rating=rating_of(part, measure),
         curves=curves,
         states=states,
         swings=swings_of(circuit, sources) if transient_matters else (),
@@ -143,7 +143,7 @@ def _element(circuit: Circuit, part: RatedPart) -> int:
     return next(index for index, item in enumerate(circuit.of(part.kind)) if item.ref == part.ref)
 
 
-def _rating(part: RatedPart, measure: Measure) -> Form | None:
+def rating_of(part: RatedPart, measure: Measure) -> Form | None:
     """The rating that a ratio counts in. Raises Unmeasurable where it is not known."""
     if measure.rating is None:
         return None

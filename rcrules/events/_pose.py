@@ -3,12 +3,13 @@
 from collections.abc import Mapping
 
 from rcrules.design import Pin
-from rcrules.events._bench import bench
+from rcrules.events._bench import Bench, bench
 from rcrules.events._discharge import pose_part_discharge
 from rcrules.events._node import pose_network, pose_node
 from rcrules.events._options import OptionValue, chosen
 from rcrules.events._part import pose_part_event, pose_states
 from rcrules.events._pin import pose_pin
+from rcrules.events._stated import pose_stated, to_be_stated
 from rcrules.events._string import pose_string, pose_value
 from rcrules.events._supply import pose_supply
 from rcrules.events._unmeasurable import Unmeasurable
@@ -45,13 +46,24 @@ def pose(
         return pose_supply(at, subject, measure, values)
     if isinstance(subject, Network):
         return pose_network(at, subject, measure, values)
+    if measure.poses == "states":
+        return _pose_states(at, subject, measure, values)
     by_kind = {
-        "states": pose_states,
         "discharge": pose_part_discharge,
         "value": pose_value,
         "string": pose_string,
     }
     return by_kind.get(measure.poses, pose_part_event)(at, subject, measure, values)
+
+
+def _pose_states(bench: Bench, part: RatedPart, measure: Measure, options: Mapping[str, OptionValue]) -> Problem:
+    """What lies across a part, as the project file says it or as its circuit gives it. Raises Unmeasurable."""
+    if part.across is not None and part.kind == "capacitor":
+        return pose_stated(part, part.across, measure, options)
+    try:
+        return pose_states(bench, part, measure, options)
+    except Unmeasurable as error:
+        raise Unmeasurable(error.reason, to_be_stated(bench, part, error.ask)) from error
 
 
 def _kind(subject: Subject) -> str:

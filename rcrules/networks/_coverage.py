@@ -17,6 +17,8 @@ _KINDS: Final = ("resistor", "capacitor")
 _HELD: Final = {"ground": "ground", "supply": "a supply", "driven": "a driven net"}
 OPEN_END: Final = "one end is open"
 """The reason of a part that carries no current, because nothing else is at one of its ends."""
+BOOTSTRAP: Final = "bootstrap capacitor"
+"""How the reason of a capacitor between a switch node and a boot pin begins."""
 
 Class = tuple[str, str]
 """Coverage class and the reason, empty where the class says it all."""
@@ -77,7 +79,7 @@ def _lonely(draft: Draft, item: Branch, kinds: list[str]) -> str:
     free = [joint for joint in (item.a, item.b) if draft.held_joint(joint) is None]
     boot = [pin.key for joint in free for pin in draft.pins_at(joint) if whole(pin) in BOOT]
     if item.kind == "capacitor" and boot:
-        return f"bootstrap capacitor at {boot[0]}"
+        return f"{BOOTSTRAP} at {boot[0]}"
     others = {pin.ref: draft.kind_of(pin.ref) for joint in free for pin in draft.pins_at(joint) if pin.ref != item.ref}
     for kind, why in (
         ("crystal", "at a crystal"),

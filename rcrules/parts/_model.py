@@ -5,6 +5,7 @@ from dataclasses import dataclass
 
 from rcrules.design import Part
 from rcrules.errors import Place
+from rcrules.quantities import Spread
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -84,6 +85,8 @@ class RatedPart:
     value: Known | Unknown
     """Resistance [Ω] or capacitance [F]; Unknown('not a resistor or capacitor') for other kinds."""
     shares: tuple[Share, ...] = ()
+    across: Spread | None = None
+    """All that ever lies across it, first pin or + to the other [V], where the project file says it."""
     rated_voltage: Known | Unknown = Unknown(why="not given")
     """[V]"""
     rated_power: Known | Unknown = Unknown(why="not given")

@@ -112,6 +112,7 @@ def _valued(part: Part, told: _Told, reads: ValueKind, facts: Facts, around: Con
         text=_text(facts),
         value=value,
         shares=spread(depends, around),
+        across=next((t.voltage_across for _, t in facts.project if t.voltage_across is not None), None),
         rated_voltage=_known(named["rated_voltage"]) or _NOT_GIVEN,
         rated_power=_known(named["rated_power"]) or _NOT_GIVEN,
         dielectric=depends.dielectric,

@@ -82,6 +82,7 @@ PART: Final[Mapping[str, Reader]] = {
     **DEFAULTS,
     "kind": word_of(*PART_KINDS),
     "value": Amount(None, 0),
+    "voltage-across": Amount("V"),
     "fitted": flag,
     "elements": elements,
     "contact": word_of("normally open", "normally closed"),

@@ -73,6 +73,8 @@ class PartFacts:
     place: Place
     kind: str | None = None
     value: Spread | None = None
+    voltage_across: Spread | None = None
+    """All that ever lies across it, from its first pin, or its +, to the other [V]."""
     tolerance: tuple[float, float] | None = None
     """Relative low (negative) and high."""
     rated_voltage: Spread | None = None

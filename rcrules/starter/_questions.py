@@ -21,6 +21,7 @@ _ABOUT: Final = {
     ("pin", "low"): "the low level of an input (V_IL of the data sheet)",
     ("pin", "high"): "the high level of an input (V_IH of the data sheet)",
     ("pin", "leakage"): "the leakage of a pin",
+    ("part", "voltage-across"): "what lies across a capacitor whose surroundings cannot be solved",
     ("part", "rated-voltage"): "the rated voltage of parts",
     ("part", "dielectric"): "the dielectric of capacitors",
     ("part", "tolerance"): "the tolerance of parts",

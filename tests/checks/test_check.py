@@ -117,6 +117,15 @@ def test_rules_that_miss_the_same_fact_say_so_in_one_remark(folder: Path) -> Non
     assert all(item["place"] == {} for item in remarks)
 
 
+BOOSTED = (
+    NETLIST.replace('<node ref="R1" pin="2"/>', "")
+    .replace("NRST", "BST")
+    .replace('<node ref="C1" pin="2"/>', "")
+    .replace("</nets>", '<net name="SW"><node ref="C1" pin="2"/><node ref="U1" pin="4" pinfunction="SW"/></net></nets>')
+)
+"""C1 between a boot pin and a switch pin."""
+
+
 @pytest.mark.parametrize(
     ("when", "netlist", "reason", "line"),
     [
@@ -132,6 +141,12 @@ def test_rules_that_miss_the_same_fact_say_so_in_one_remark(folder: Path) -> Non
             "the voltage there is not known, and the rule is for voltage_high > 60 V",
             '[supply."VCC"] voltage = "…"',
         ),
+        (
+            "voltage_high > 60 V",
+            BOOSTED,
+            "the voltage there is not known, and the rule is for voltage_high > 60 V",
+            '[part."C1"] voltage-across = "…"',
+        ),
     ],
 )
 def test_a_condition_on_a_fact_that_is_missing_asks_for_that_fact(
@@ -140,6 +155,12 @@ def test_a_condition_on_a_fact_that_is_missing_asks_for_that_fact(
     body = f'kind = ["capacitor"]\npart = ["C1"]\nwhen = "{when}"\nmeasure = "stored_charge"\nat-most = "1 C"'
     found = only(judged(folder, body, netlist=netlist))
     assert (found.outcome, found.reason, found.ask[0]) == ("undecided", reason, line)
+
+
+def test_what_the_project_says_lies_across_a_capacitor_meets_conditions(folder: Path) -> None:
+    body = 'kind = ["capacitor"]\nwhen = "voltage_high > 60 V"\nmeasure = "applied_voltage"\nat-most = "100 V"'
+    found = only(judged(folder, body, project='[part."C2"]\nvoltage-across = "70 V .. 110 V"\n'))
+    assert (found.parts, found.outcome) == (["C2"], "fails")
 
 
 def test_one_cause_on_many_parts_is_one_group(folder: Path) -> None:

@@ -97,7 +97,7 @@ def test_a_capacitor_at_a_crystal_is_part_of_an_active_network():
         found.pose("C1", "applied_voltage")
     assert (told.value.reason, told.value.ask) == (
         "active network: crystal Y1 oscillates with the part that drives it",
-        "",
+        '[part."C1"] voltage-across = "…"',
     )
 
 
