@@ -5,7 +5,7 @@ from typing import Final
 
 import numpy as np
 
-from rcrules.expressions import FUNCTIONS, Binary, Call, Expression, Unary, Values, calls, names, value_of
+from rcrules.expressions import FUNCTIONS, Binary, Call, Expression, Power, Unary, Values, calls, names, value_of
 from rcrules.measures import Measure, Theory
 from rcrules.problems import Array, Names, Structure
 
@@ -65,6 +65,8 @@ def _signs(of: Expression, composite: Composite, low: Array, high: Array) -> lis
         return _scaled(of, composite, low, high)
     if isinstance(of, Unary):
         return _turned(_signs(of.of, composite, low, high))
+    if isinstance(of, Power) and of.exponent > 0 and of.exponent % 2 == 1:
+        return _signs(of.of, composite, low, high)
     if isinstance(of, Call) and of.name in _RISING:
         return _risen(of, composite, low, high)
     if isinstance(of, Call):

@@ -12,7 +12,7 @@ from rcrules.derivation._cases import MadeOf, worked_cases
 from rcrules.derivation._derive import circumstances, parameters
 from rcrules.derivation._sheet import Number, Sheet, Step
 from rcrules.derivation._work import DIGITS, EXACT, Worked, work_out
-from rcrules.expressions import Binary, Call, Expression, Name, Unary, Values, text_of, value_of
+from rcrules.expressions import Binary, Call, Expression, Name, Power, Unary, Values, text_of, value_of
 from rcrules.expressions import Number as Quantity
 from rcrules.findings import Json
 from rcrules.measures import Measure
@@ -144,6 +144,9 @@ def _told(of: Expression, words: Mapping[Expression | str, str], sheet: Sheet, l
         return _bracketed(words[of]) if of in words else f"{of.name}({told})"
     if isinstance(of, Unary):
         return f"-{_told(of.of, words, sheet, 2)}"
+    if isinstance(of, Power):
+        base = _told(of.of, words, sheet, 2)
+        return f"{base if isinstance(of.of, Name | Call) and base.isidentifier() else f'({base})'}^{of.text}"
     if not isinstance(of, Binary):
         raise TypeError(f"{type(of).__name__} has no value")
     own = 0 if of.sign in "+-" else 1

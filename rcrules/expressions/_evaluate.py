@@ -6,7 +6,7 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
-from rcrules.expressions._tree import Binary, Call, Expression, Name, Number, Unary
+from rcrules.expressions._tree import Binary, Call, Expression, Name, Number, Power, Unary
 
 Array = NDArray[np.float64]
 
@@ -32,6 +32,8 @@ def _value(of: Expression, values: Values) -> Array | float:
         return values.names[of.name]
     if isinstance(of, Unary):
         return -np.asarray(_value(of.of, values))
+    if isinstance(of, Power):
+        return np.power(np.asarray(_value(of.of, values), dtype=float), of.exponent)
     if isinstance(of, Binary):
         return _joined(of.sign, np.asarray(_value(of.left, values)), np.asarray(_value(of.right, values)))
     if isinstance(of, Call):

@@ -1,55 +1,58 @@
-"""The grammar, read once from left to right; depth and length are bounded.
+"""The grammar, read once from left to right; depth, length and the number of signs are bounded.
 
 sum      = product { ("+" | "-") product }      product = factor { ("*" | "/") factor }
-factor   = "-" factor | "(" sum ")" | quantity | call | name
+factor   = "-" factor | atom [ "^" exponent ]   atom    = "(" sum ")" | quantity | call | name
+exponent = [ "-" ] number | "(" [ "-" ] number [ "/" number ] ")"
 call     = name "(" [ item { "," item } ] ")"   item    = name "=" (text | quantity | name) | sum
 quantity = a number with its unit, at most one blank between: ``0.8 V/us`` is one quantity, ``5 * 3 V`` a product
+
+After a mistake the reading goes on behind it, so that all mistakes of a text are told at once.
 """
 
 import re
-from typing import Final, Literal
+from typing import Final
 
-from rcrules.expressions._tree import Binary, Call, Expression, Name, Number, Text, Unary
+from rcrules.expressions._cursor import STRING, Cursor, Hopeless
+from rcrules.expressions._tree import Binary, Broken, Call, Expression, Name, Number, Power, Text, Unary
 from rcrules.quantities import QuantityError, parse_quantity
 
 LONGEST: Final = 1000
 DEEPEST: Final = 12
-_BLANK: Final = re.compile(r"\s*")
-_NAME: Final = re.compile(r"[A-Za-z_][A-Za-z0-9_]*")
+HIGHEST: Final = 10.0
+"""Largest exponent, of either sign."""
 _QUANTITY: Final = re.compile(
     r"(?:\d+(?:\.\d*)?|\.\d+)(?:[eE][+-]?\d+(?![A-Za-z]))?(?: ?(?:%|[A-Za-zµμΩΩ°]+(?:/[A-Za-zµμΩΩ°]+)?))?"
 )
-_STRING: Final = re.compile(r'"[^"\n]*"|\'[^\'\n]*\'')
+_EXPONENT: Final = re.compile(r"-?\d+(?:\.\d+)?|\(\s*(-?\d+(?:\.\d+)?)\s*(?:/\s*(\d+(?:\.\d+)?)\s*)?\)")
+_ATOM: Final = re.compile(r"[A-Za-z_0-9.(]")
+_OPTION: Final = 'a text in quotes, a quantity or a name, such as to = "1.2 V"'
 
 
-def parse_expression(text: str) -> Expression:
-    """Read an expression. Raises QuantityError with the offset of the first character not understood."""
+def parse_expression(text: str, mistakes: list[QuantityError]) -> Expression:
+    """Read an expression. Adds mistakes, each with its offset; what is wrong is ``Broken``."""
     if len(text) > LONGEST:
-        raise QuantityError("too long for an expression", at=LONGEST, expected=f"at most {LONGEST} characters")
-    reader = _Reader(text)
-    found = reader.sum(0)
-    if not reader.ended:
-        raise reader.error("an operator such as + or the end")
-    return found
+        mistakes.append(QuantityError("too long for an expression", at=LONGEST, expected=f"at most {LONGEST} letters"))
+        return Broken(parts=(), at=0)
+    reader = _Reader(text, mistakes)
+    try:
+        return reader.whole(0)
+    except Hopeless:
+        return Broken(parts=(), at=0)
 
 
-class _Reader:
-    def __init__(self, text: str) -> None:
-        self._text, self._at = text, 0
-        self._skip()
+class _Reader(Cursor):
+    def whole(self, depth: int, closing: str = "") -> Expression:
+        """A sum up to the end or a closing bracket; what stands before that is looked at too."""
+        found = [self._sum(depth)]
+        while not self._ended and not self._is_at(closing):
+            self._wrong("an operator such as +, or ')'" if closing else "an operator such as + or the end")
+            if not _ATOM.match(self._text, self._at):
+                self._pass()
+            if not self._ended and not self._is_at(closing):
+                found.append(self._sum(depth))
+        return found[0] if len(found) == 1 else Broken(parts=tuple(found), at=0)
 
-    @property
-    def ended(self) -> bool:
-        return self._at >= len(self._text)
-
-    def error(self, expected: str) -> QuantityError:
-        """What stands here is not understood."""
-        word = _NAME.match(self._text, self._at)
-        found = word[0] if word else self._text[self._at : self._at + 1]
-        problem = f"'{found}' not understood" if found else "the expression ends too early"
-        return QuantityError(problem, at=self._at, length=max(len(found), 1), expected=expected)
-
-    def sum(self, depth: int) -> Expression:
+    def _sum(self, depth: int) -> Expression:
         """Products joined by + and -."""
         found = self._product(depth)
         while (sign := self._sign("+", "-")) is not None:
@@ -68,99 +71,127 @@ class _Reader:
 
     def _factor(self, depth: int) -> Expression:
         if depth > DEEPEST:
-            raise QuantityError("nested too deeply", at=self._at, expected=f"at most {DEEPEST} levels")
+            self._stop("nested too deeply", self._at, f"at most {DEEPEST} levels")
         at = self._at
         if self._take("-"):
             return Unary(of=self._factor(depth + 1), at=at)
+        found = self._atom(depth)
+        return self._power(found, depth) if self._is_at("^") else found
+
+    def _atom(self, depth: int) -> Expression:
+        at = self._at
         if self._take("("):
-            found = self.sum(depth + 1)
-            self._close(at)
+            found = self.whole(depth + 1, ")")
+            if not self._take(")"):
+                self._unclosed(at)
             return found
         if _QUANTITY.match(self._text, at):
             return self._quantity()
-        if (name := self._name()) is None:
-            raise self.error("a quantity, a name or a bracket")
-        return self._call(name, at, depth) if self._take("(") else Name(name=name, at=at)
+        if (name := self._name()) is not None:
+            return self._call(name, at, depth) if self._take("(") else Name(name=name, at=at)
+        self._wrong("a quantity, a name or a bracket")
+        if self._is_at("+-*/^),"):
+            return Broken(parts=(), at=at)
+        self._pass()
+        rest = (self._atom(depth),) if _ATOM.match(self._text, self._at) else ()
+        return Broken(parts=rest, at=at)
 
-    def _quantity(self) -> Number:
+    def _power(self, of: Expression, depth: int) -> Expression:
+        """After what the power is taken of."""
+        at = self._at
+        if isinstance(of, Number) and of.unit != "1" and self._text[of.at - 1 : of.at] != "(":
+            problem = f"a power of '{of.text}' can be read in two ways"
+            self._note(QuantityError(problem, at=of.at, length=len(of.text), expected=f"({of.text})^2"))
+        self._count()
+        self._take("^")
+        match = _EXPONENT.match(self._text, self._at)
+        if match is None:
+            self._wrong("a number as exponent, such as 2, -1 or (1/2)")
+            return Broken(parts=(of,), at=at)
+        exponent = _quotient(match[1], match[2]) if match[1] else float(match[0])
+        if abs(exponent) > HIGHEST or exponent == 0:
+            expected = f"an exponent from -{HIGHEST:.0f} to {HIGHEST:.0f}, not 0"
+            problem = f"'{match[0]}' is no exponent here"
+            self._note(QuantityError(problem, at=self._at, length=len(match[0]), expected=expected))
+        self._at = match.end()
+        self._skip()
+        if self._is_at("^"):
+            self._wrong("brackets around a power of a power")
+            self._pass()
+            return Broken(parts=(of, self._atom(depth)), at=at)
+        return Power(of=of, exponent=exponent, text=match[0], at=at)
+
+    def _quantity(self) -> Expression:
         at = self._at
         match = _QUANTITY.match(self._text, at)
-        if match is None:
-            raise self.error("a quantity such as 10 ms")
+        assert match is not None  # tested by the caller
+        self._at = match.end()
+        self._skip()
         try:
             spread = parse_quantity(match[0])
         except QuantityError as error:
-            raise error.moved(at) from None
-        self._at = match.end()
-        self._skip()
+            self._note(error.moved(at))
+            return Broken(parts=(), at=at)
         return Number(value=spread.nominal, unit=spread.unit, text=match[0], at=at)
 
-    def _call(self, name: str, at: int, depth: int) -> Call:
+    def _call(self, name: str, at: int, depth: int) -> Expression:
         """After the opening bracket."""
         opening = self._at - 1
         arguments: list[Expression] = []
         options: list[tuple[str, Text | Number | Name, int]] = []
+        before = len(self._mistakes)
+        self._count()
         while not self._take(")"):
-            if (arguments or options) and not self._take(","):
-                raise self._unclosed(opening)
-            if (option := self._option()) is not None:
-                options.append(option)
-            elif options:
-                raise self.error("name = value: numbers stand before options")
-            else:
-                arguments.append(self.sum(depth + 1))
+            if self._ended:
+                self._unclosed(opening)
+                break
+            self._item(arguments, options, depth)
+            if not self._take(",") and not self._is_at(")") and not self._ended:
+                self._wrong("',' or ')'")
+                self._pass_to_item()
+        if len(self._mistakes) > before:
+            return Broken(parts=tuple(arguments), at=at)
         return Call(name=name, arguments=tuple(arguments), options=tuple(options), at=at)
 
-    def _option(self) -> tuple[str, Text | Number | Name, int] | None:
-        """``to = "1.2 V"``; None where something else stands here."""
+    def _item(self, arguments: list[Expression], options: list[tuple[str, Text | Number | Name, int]], depth: int) -> None:
+        """An argument or an option of a call."""
         at = self._at
         name = self._name()
-        if name is None or not self._take("="):
-            self._at = at
-            return None
+        if name is not None and self._take("="):
+            value = self._option()
+            options += [(name, value, at)] if value is not None else []
+            return
+        self._at = at
+        if options:
+            self._wrong("name = value: numbers stand before options")
+        arguments.append(self._sum(depth + 1))
+
+    def _option(self) -> Text | Number | Name | None:
+        """After the ``=`` of ``to = "1.2 V"``; None where it is wrong."""
         start = self._at
-        if (string := _STRING.match(self._text, start)) is not None:
+        if (string := STRING.match(self._text, start)) is not None:
             self._at = string.end()
             self._skip()
-            return name, Text(value=string[0][1:-1], at=start + 1), at
+            return Text(value=string[0][1:-1], at=start + 1)
         if _QUANTITY.match(self._text, start):
-            return name, self._quantity(), at
-        if (word := self._name()) is None:
-            raise self.error('a text in quotes, a quantity or a name, such as to = "1.2 V"')
-        return name, Name(name=word, at=start), at
-
-    def _name(self) -> str | None:
-        match = _NAME.match(self._text, self._at)
-        if match is None:
-            return None
-        self._at = match.end()
-        self._skip()
-        return match[0]
-
-    def _sign(self, *signs: Literal["+", "-", "*", "/"]) -> Literal["+", "-", "*", "/"] | None:
-        """One of the signs, taken without the blanks behind it."""
-        for sign in signs:
-            if self._text.startswith(sign, self._at):
-                self._at += 1
-                return sign
+            found = self._quantity()
+            return found if isinstance(found, Number) else None
+        if (word := self._name()) is not None:
+            return Name(name=word, at=start)
+        self._wrong(_OPTION)
+        self._pass_to_item()
         return None
 
-    def _take(self, letter: str) -> bool:
-        if not self._text.startswith(letter, self._at):
-            return False
-        self._at += 1
-        self._skip()
-        return True
+    def _pass_to_item(self) -> None:
+        """Go on with the next item of a call, or its end."""
+        while not self._ended and not self._is_at("),"):
+            self._pass()
+        self._take(",")
 
-    def _close(self, opening: int) -> None:
-        if not self._take(")"):
-            raise self._unclosed(opening)
+    def _unclosed(self, opening: int) -> None:
+        self._note(QuantityError("a bracket that does not close", at=opening, expected="')'"))
 
-    def _unclosed(self, opening: int) -> QuantityError:
-        if self.ended:
-            return QuantityError("a bracket that does not close", at=opening, expected="')'")
-        return self.error("',' or ')'")
-
-    def _skip(self) -> None:
-        blank = _BLANK.match(self._text, self._at)
-        self._at = blank.end() if blank else self._at
+def _quotient(above: str, below: str | None) -> float:
+    """``1/2``; a quotient by 0 is no exponent."""
+    divisor = float(below or 1)
+    return float(above) / divisor if divisor else float("inf")

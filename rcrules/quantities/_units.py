@@ -126,6 +126,8 @@ _MISTAKEN: Final = {
 }
 """Lower-case spelling -> the unit that was probably meant; only for the hint in a message."""
 
+_DECIBELS: Final = ("dB", "db", "DB", "dBV", "dBm")
+
 
 def _spellings() -> dict[str, tuple[str, float]]:
     table = {spelling: (unit, 1.0) for spelling, unit in _PREFIXED.items()} | dict(_PLAIN)
@@ -164,6 +166,8 @@ def _simple(text: str, at: int) -> tuple[str, float]:
 
 def meant(text: str, wanted: str | None = None) -> str:
     """What to write instead of a unit that is not known; with the SI unit ``wanted``, only units of that quantity."""
+    if text in _DECIBELS:
+        return "a ratio: -3 dB is 70.8 % of a voltage, -20 dB is 10 %"
     fitting = [spelling for spelling, (unit, _) in SPELLINGS.items() if wanted is None or unit == wanted]
     known = _MISTAKEN.get(text.lower())
     same = [spelling for spelling in fitting if text and spelling.lower() == text.lower()]

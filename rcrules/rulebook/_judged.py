@@ -97,9 +97,7 @@ def _valued(table: Table, measures: Mapping[str, Measure], own: Names) -> Judged
 
 
 def _of(found: Compiled, subject: str) -> Judged:
-    warm = any(item.name.startswith("temperature_") for item in names(found.expression))
-    unit = unit_of(found.dimension)
-    measure = composite(text_of(found.expression), subject, "degC" if unit == "K" and warm else unit)
+    measure = composite(text_of(found.expression), subject, unit_of(found.dimension))
     return Judged(measure=measure, options={}, subject=subject, value=found.expression, terms=found.terms)
 
 

@@ -3,12 +3,11 @@
 ``value = "delay(event = 'power-up', to = 'may switch') - delay(…, at = 'FLASH_RST')"``; limits may be expressions too.
 """
 
-from collections.abc import Mapping
-from dataclasses import dataclass
+from collections.abc import Iterator, Mapping
+from dataclasses import dataclass, replace
 from typing import Final
 
 from rcrules.expressions import (
-    Binary,
     Call,
     Dimension,
     Expression,
@@ -17,6 +16,7 @@ from rcrules.expressions import (
     Number,
     Text,
     calls,
+    changed,
     dimension_of,
     named,
     names,
@@ -72,7 +72,10 @@ class Compiled:
 def compiled(
     table: Table, key: str, measures: Mapping[str, Measure], own: Names, wanted: Dimension | None = None
 ) -> Compiled | None:
-    """The expression under a key; None with the mistake noted."""
+    """The expression under a key; None with all its mistakes noted."""
+    text = table.text(key, "an expression in quotes, such as 'final_voltage() - 0.3 V'")
+    if text is None:
+        return None
     terms: dict[Call, Term] = {}
 
     def check(call: Call) -> None:
@@ -81,38 +84,41 @@ def compiled(
         else:
             terms[call] = _term(call, measures[call.name], own)
 
-    def parse(text: str) -> Compiled:
-        expression = _called(parse_expression(text), measures)
-        known = _known(measures, own, check)
-        dimension = units_of(expression, known, wanted)
-        if wanted is not None and dimension != wanted:
-            raise QuantityError(f"is {named(dimension)}, and {named(wanted)} goes there", length=len(text))
-        if unit_of(dimension) not in QUANTITY_NAMES:
-            problem = f"is {named(dimension)}, in which no limit can be told"
-            raise QuantityError(problem, length=len(text), expected=_PLAIN)
-        _note(table, key, expression, known, own)
-        called = tuple(terms[call] for call in calls(expression) if call in terms)
-        return Compiled(expression=expression, terms=called, dimension=dimension)
-
-    text = table.text(key, "an expression in quotes, such as 'final_voltage() - 0.3 V'")
-    try:
-        return parse(text) if text is not None else None
-    except QuantityError as error:
-        joint = "" if error.problem.startswith("is ") else ":"
-        problem, expected = f"'{key}'{joint} {error.problem}", error.expected or None
-        table.wrong(key, problem, at=error.at, length=error.length, expected=expected)
+    mistakes: list[QuantityError] = []
+    expression = changed(parse_expression(text, mistakes), lambda of: _called(of, measures))
+    known = replace(_known(measures, own, check), mistakes=mistakes)
+    dimension = units_of(expression, known, wanted)
+    if dimension is not None and not mistakes:
+        mistakes += _unfit(text, dimension, wanted)
+    if mistakes or dimension is None:
+        own.tried |= {item.name for item in names(expression)} & own.own
+        for error in sorted(mistakes, key=lambda error: error.at):
+            _tell(table, key, error)
         return None
+    _note(table, key, expression, known, own)
+    called = tuple(terms[call] for call in calls(expression) if call in terms)
+    return Compiled(expression=expression, terms=called, dimension=dimension)
+
+
+def _unfit(text: str, dimension: Dimension, wanted: Dimension | None) -> Iterator[QuantityError]:
+    """A whole that is not what goes there, or is no quantity that has a name."""
+    if wanted is not None and dimension != wanted:
+        yield QuantityError(f"is {named(dimension)}, and {named(wanted)} goes there", length=len(text))
+    elif unit_of(dimension) not in QUANTITY_NAMES:
+        problem = f"is {named(dimension)}, in which no limit can be told"
+        yield QuantityError(problem, length=len(text), expected=_PLAIN)
+
+
+def _tell(table: Table, key: str, error: QuantityError) -> None:
+    joint = "" if error.problem.startswith("is ") else ":"
+    problem, expected = f"'{key}'{joint} {error.problem}", error.expected or None
+    table.wrong(key, problem, at=error.at, length=error.length, expected=expected)
 
 
 def _called(of: Expression, measures: Mapping[str, Measure]) -> Expression:
     """A measure named without brackets is called with its own options."""
     if isinstance(of, Name) and of.name in measures:
         return Call(name=of.name, arguments=(), options=(), at=of.at)
-    if isinstance(of, Binary):
-        return Binary(sign=of.sign, left=_called(of.left, measures), right=_called(of.right, measures), at=of.at)
-    if isinstance(of, Call):
-        arguments = tuple(_called(item, measures) for item in of.arguments)
-        return Call(name=of.name, arguments=arguments, options=of.options, at=of.at)
     return of
 
 

@@ -10,6 +10,7 @@ from rcrules.engine import Shape
 from rcrules.expressions import Call, calls, parse_expression
 from rcrules.measures import Measure, Theory
 from rcrules.problems import Structure
+from rcrules.quantities import QuantityError
 
 EMPTY = Structure(shape=Shape(0, 0, (), ()), ohms=(), farads=(), waveforms=())
 LOW, HIGH = np.array([1.0, 3.0]), np.array([2.0, 5.0])
@@ -34,7 +35,9 @@ def measure(name: str) -> Measure:
 
 
 def composite(text: str) -> Composite:
-    tree = parse_expression(text)
+    mistakes: list[QuantityError] = []
+    tree = parse_expression(text, mistakes)
+    assert not mistakes
     own: list[Call] = [item for item in calls(tree) if item.name in MEASURES]
     posed = tuple(Posed(call=item, structure=EMPTY, measure=measure(item.name), columns=(0, 1)) for item in own)
     return Composite(expression=tree, posed=posed, constants=(("k", -2.0),), columns=(), counts=())
@@ -55,6 +58,8 @@ def composite(text: str) -> Composite:
         ("sqrt(falling())", (-1, 0)),
         ("both() + other()", (None, 1)),
         ("rising() * other()", (None, None)),
+        ("falling()^3", (-1, 0)),
+        ("falling()^2", (None, None)),
     ],
 )
 def test_signs_follow_from_those_of_the_measures(text, signs):
@@ -67,6 +72,7 @@ TEXTS = st.recursive(
         st.tuples(inner, st.sampled_from("+-*/"), inner).map(lambda item: f"({item[0]} {item[1]} {item[2]})"),
         st.tuples(st.sampled_from(["min", "max"]), inner, inner).map(lambda item: f"{item[0]}({item[1]}, {item[2]})"),
         inner.map(lambda item: f"-({item})"),
+        st.tuples(inner, st.sampled_from(["2", "3", "-1", "(1/2)"])).map(lambda item: f"({item[0]})^{item[1]}"),
     ),
     max_leaves=6,
 )

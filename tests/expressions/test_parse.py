@@ -7,8 +7,26 @@ import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
-from rcrules.expressions import Known, Values, calls, dimension_of, parse_expression, text_of, units_of, value_of
+from rcrules import expressions
+from rcrules.expressions import Dimension, Expression, Known, Values, calls, dimension_of, text_of, value_of
 from rcrules.quantities import QuantityError
+
+
+def parse_expression(text: str) -> Expression:
+    """The expression; raises its first mistake."""
+    mistakes: list[QuantityError] = []
+    found = expressions.parse_expression(text, mistakes)
+    if mistakes:
+        raise mistakes[0]
+    return found
+
+
+def units_of(of: Expression, known: Known, wanted: Dimension | None = None) -> Dimension | None:
+    """The dimension; raises the first mistake."""
+    found = expressions.units_of(of, known, wanted)
+    if known.mistakes:
+        raise known.mistakes[0]
+    return found
 
 
 def known() -> Known:
@@ -47,6 +65,15 @@ def value(text: str, **names: float) -> float:
         ("interpolate(20, 70, 1, 110, 2)", 1.0),
         ("interpolate(200, 110, 2, 70, 1)", 2.0),
         ("a - b / 2", 4.0),
+        ("2 ^ 3", 8.0),
+        ("-2^2", -4.0),
+        ("2^-1", 0.5),
+        ("(2^2)^3", 64.0),
+        ("2 * 3^2", 18.0),
+        ("4^(1/2)", 2.0),
+        ("4^(-1/2)", 0.5),
+        ("9^0.5", 3.0),
+        ("(3 V)^2", 9.0),
     ],
 )
 def test_what_an_expression_is_worth(text: str, wanted: float) -> None:
@@ -86,6 +113,13 @@ def test_options_of_calls_are_kept_with_their_places() -> None:
         ("a.b", 1, "'.' not understood"),
         ("(" * 40 + "1" + ")" * 40, 13, "nested too deeply"),
         ("-" * 200 + "1", 13, "nested too deeply"),
+        ("2^3^2", 3, "'^' not understood"),
+        ("2^a", 2, "'a' not understood"),
+        ("2^0", 2, "'0' is no exponent"),
+        ("2^(1/0)", 2, "no exponent"),
+        ("2^9999999999", 2, "'9999999999' is no exponent"),
+        ("3 V^2", 0, "a power of '3 V' can be read in two ways"),
+        ("1" + "+1" * 400, 201, "too many signs"),
     ],
 )
 def test_mistakes_are_told_at_the_character(text: str, at: int, problem: str) -> None:
@@ -100,15 +134,37 @@ def test_long_texts_are_refused() -> None:
 
 
 @settings(max_examples=200)
-@given(st.text(alphabet="ab1.(+-*/),= \"'%VmsΩ\n\\", max_size=40))
+@given(st.text(alphabet="ab1.(+-*/^),= \"'%VmsΩ\n\\", max_size=40))
 def test_no_text_does_more_than_be_refused(text: str) -> None:
     try:
-        parse_expression(text)
+        text_of(parse_expression(text))
     except QuantityError as error:
         place = error.at
     else:
         place = 0
     assert 0 <= place <= max(len(text), 1)
+
+
+@pytest.mark.parametrize(
+    ("text", "places"),
+    [
+        ("1 2 + & 3 * (4 V", [2, 6, 12]),
+        ("(1 2) + max(, 3 4, to = ) ^ ", [3, 12, 16, 24, 28]),
+        ("3 Vx + min(1, 2 qq) * ?", [2, 16, 22]),
+        ("delay(to = ) + delay(event = )", [11, 29]),
+    ],
+)
+def test_all_mistakes_of_a_text_are_told_at_once(text: str, places: list[int]) -> None:
+    mistakes: list[QuantityError] = []
+    expressions.parse_expression(text, mistakes)
+    assert [error.at for error in sorted(mistakes, key=lambda error: error.at)] == places
+
+
+def test_what_only_follows_from_another_mistake_is_not_told() -> None:
+    own, mistakes = known(), []
+    text = "dealy() + margin * 2 + rated_voltag - min(1 s, 1 V)"
+    expressions.units_of(expressions.parse_expression(text, mistakes), own)
+    assert [error.at for error in own.mistakes] == [0, 23, 38]
 
 
 def sums(signs: str) -> st.SearchStrategy[str]:
@@ -147,6 +203,16 @@ def test_written_out_it_is_worth_the_same(text: str) -> None:
         ("count() - 1", "1"),
         ("interpolate(temperature_high, 70 degC, 1 V, 110 degC, 2 V)", "V"),
         ("sqrt(power() * 50 ohm)", "V"),
+        ("power() * rated_voltage^-1", "A"),
+        ("rated_voltage^2 / power()", "Ω"),
+        ("(rated_voltage^2)^(1/2)", "V"),
+        ("(delay() / limit)^1.6", "1"),
+        ("temperature_high - 25 degC", "K"),
+        ("temperature_high - 5 K", "degC"),
+        ("10 K + temperature_high", "degC"),
+        ("temperature_high + margin", "degC"),
+        ("max(temperature_high, 70 degC)", "degC"),
+        ("10 ppm/K * (temperature_high - 25 degC)", "1"),
     ],
 )
 def test_dimensions_are_worked_out(text: str, unit: str) -> None:
@@ -165,7 +231,14 @@ def test_dimensions_are_worked_out(text: str, unit: str) -> None:
         ("dealy()", "did you mean 'delay'"),
         ("rated_voltag + 1 V", "did you mean 'rated_voltage'"),
         ("min()", "'min' takes 1 or more arguments"),
-        ("abs(1, 2)", "'abs' takes 1 arguments"),
+        ("abs(1, 2)", "'abs' takes 1 argument"),
+        ("delay()^0.5", "'delay' is a time, whose power 0.5 is no quantity"),
+        ("temperature_high + 10 degC", "are two temperatures, which cannot be added"),
+        ("2 * temperature_high", "a temperature on its scale, which has no multiples"),
+        ("-temperature_high", "which has no multiples"),
+        ("temperature_high^2", "which has no multiples"),
+        ("10 K - temperature_high", "is a temperature, which cannot be taken from '10 K'"),
+        ("1 dB * delay()", "unit 'dB' is not known"),
         ("interpolate(1, 2, 3, 4)", "takes 5 or more"),
         ("interpolate(1, 2, 3, 4, 5, 6)", "a point of 'interpolate' is half"),
         ("delay(3)", "takes no plain arguments"),
