@@ -3,7 +3,20 @@
 from rcrules.expressions._dimensions import Dimension, dimension_of, named, unit_of
 from rcrules.expressions._evaluate import Values, value_of
 from rcrules.expressions._parse import parse_expression
-from rcrules.expressions._tree import Binary, Call, Expression, Name, Number, Power, Text, Unary, calls, changed, names, text_of
+from rcrules.expressions._tree import (
+    Binary,
+    Call,
+    Expression,
+    Name,
+    Number,
+    Power,
+    Text,
+    Unary,
+    calls,
+    changed,
+    names,
+    text_of,
+)
 from rcrules.expressions._units import FUNCTIONS, Known, units_of
 
 __all__ = [

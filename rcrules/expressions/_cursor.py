@@ -15,7 +15,7 @@ _WRONG: Final = re.compile(rf"{STRING.pattern}|[A-Za-z_0-9.]+|[^\s]")
 """What is passed over where nothing is understood."""
 
 
-class Hopeless(Exception):
+class HopelessError(Exception):
     """What follows cannot be read, or need not be; why is noted."""
 
 
@@ -47,11 +47,11 @@ class Cursor:
         if all(other.at != error.at for other in self._mistakes):
             self._mistakes.append(error)
         if len(self._mistakes) >= _MOST_MISTAKES:
-            raise Hopeless
+            raise HopelessError
 
     def _stop(self, problem: str, at: int, expected: str) -> NoReturn:
         self._note(QuantityError(problem, at=at, expected=expected))
-        raise Hopeless
+        raise HopelessError
 
     def _pass(self) -> None:
         """Go past what is not understood."""

@@ -5,7 +5,7 @@ from typing import Final
 from rcrules.quantities import QUANTITY_NAMES, show
 
 Dimension = tuple[int, int, int, int, int, int]
-"""The last is 1 for a temperature in degC: a point of a scale, which a difference in K is added to and nothing scales."""
+"""The last is 1 for a temperature in degC: a point of a scale, it takes differences in K and no factor."""
 NONE: Final[Dimension] = (0, 0, 0, 0, 0, 0)
 STEP: Final[Dimension] = (0, 0, 0, 1, 0, 0)
 """A temperature difference, in K."""

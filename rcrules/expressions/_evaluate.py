@@ -33,7 +33,7 @@ def _value(of: Expression, values: Values) -> Array | float:
     if isinstance(of, Unary):
         return -np.asarray(_value(of.of, values))
     if isinstance(of, Power):
-        return np.power(np.asarray(_value(of.of, values), dtype=float), of.exponent)
+        return np.asarray(np.asarray(_value(of.of, values), dtype=float) ** of.exponent)
     if isinstance(of, Binary):
         return _joined(of.sign, np.asarray(_value(of.left, values)), np.asarray(_value(of.right, values)))
     if isinstance(of, Call):

@@ -12,7 +12,7 @@ After a mistake the reading goes on behind it, so that all mistakes of a text ar
 import re
 from typing import Final
 
-from rcrules.expressions._cursor import STRING, Cursor, Hopeless
+from rcrules.expressions._cursor import STRING, Cursor, HopelessError
 from rcrules.expressions._tree import Binary, Broken, Call, Expression, Name, Number, Power, Text, Unary
 from rcrules.quantities import QuantityError, parse_quantity
 
@@ -36,7 +36,7 @@ def parse_expression(text: str, mistakes: list[QuantityError]) -> Expression:
     reader = _Reader(text, mistakes)
     try:
         return reader.whole(0)
-    except Hopeless:
+    except HopelessError:
         return Broken(parts=(), at=0)
 
 
@@ -153,7 +153,9 @@ class _Reader(Cursor):
             return Broken(parts=tuple(arguments), at=at)
         return Call(name=name, arguments=tuple(arguments), options=tuple(options), at=at)
 
-    def _item(self, arguments: list[Expression], options: list[tuple[str, Text | Number | Name, int]], depth: int) -> None:
+    def _item(
+        self, arguments: list[Expression], options: list[tuple[str, Text | Number | Name, int]], depth: int
+    ) -> None:
         """An argument or an option of a call."""
         at = self._at
         name = self._name()
@@ -190,6 +192,7 @@ class _Reader(Cursor):
 
     def _unclosed(self, opening: int) -> None:
         self._note(QuantityError("a bracket that does not close", at=opening, expected="')'"))
+
 
 def _quotient(above: str, below: str | None) -> float:
     """``1/2``; a quotient by 0 is no exponent."""

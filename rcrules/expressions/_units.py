@@ -6,7 +6,7 @@ from difflib import get_close_matches
 from typing import Final
 
 from rcrules.expressions._dimensions import NONE, POINT, STEP, Dimension, dimension_of, named, raised, times
-from rcrules.expressions._tree import Binary, Broken, Call, Expression, Name, Number, Power, Text, Unary, below, text_of
+from rcrules.expressions._tree import Binary, Broken, Call, Expression, Name, Number, Power, Text, below, text_of
 from rcrules.quantities import QuantityError
 
 FUNCTIONS: Final[Mapping[str, tuple[int, int | None]]] = {
@@ -126,7 +126,9 @@ def _sum(of: Binary, known: Known, wanted: Dimension | None) -> Dimension | None
 def _unlike(of: Binary, left: Dimension, right: Dimension) -> QuantityError:
     if left == right:
         problem = f"'{text_of(of.left)}' and '{text_of(of.right)}' are two temperatures, which cannot be added"
-        return QuantityError(problem, at=of.at, expected="a difference in K on one side, such as temperature_high + 10 K")
+        return QuantityError(
+            problem, at=of.at, expected="a difference in K on one side, such as temperature_high + 10 K"
+        )
     word = "added to" if of.sign == "+" else "taken from"
     first, second = (of.left, left), (of.right, right)
     (one, unit), (other, beside) = (second, first) if of.sign == "-" else (first, second)
@@ -187,7 +189,9 @@ def _call(of: Call, known: Known, wanted: Dimension | None) -> Dimension | None:
         return None
     if of.arguments:
         expected = 'options only, such as delay(to = "1.2 V")'
-        known.note(QuantityError(f"'{of.name}' takes no plain arguments", at=of.at, length=of.length, expected=expected))
+        known.note(
+            QuantityError(f"'{of.name}' takes no plain arguments", at=of.at, length=of.length, expected=expected)
+        )
     elif known.check_call is not None:
         try:
             known.check_call(of)

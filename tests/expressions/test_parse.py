@@ -91,7 +91,7 @@ def test_division_by_zero_is_infinite_and_what_is_not_defined_is_not_a_number() 
 
 
 def test_options_of_calls_are_kept_with_their_places() -> None:
-    (call,) = calls(parse_expression('delay(event = "power-up", to = \'1.5 V\', band = 1 %, time = settle)'))
+    (call,) = calls(parse_expression("delay(event = \"power-up\", to = '1.5 V', band = 1 %, time = settle)"))
     assert [(name, at) for name, _, at in call.options] == [("event", 6), ("to", 26), ("band", 40), ("time", 52)]
 
 
