@@ -148,6 +148,20 @@ def test_a_hostile_name_runs_nothing(browser: Browser, tmp_path: Path) -> None:
     page.close()
 
 
+def test_what_is_packed_comes_when_it_is_opened_or_seen(browser: Browser, tmp_path: Path) -> None:
+    page, told = opened(browser, large(300), tmp_path)
+    last = page.locator(f"{ROWS} th a").last
+    target = page.locator(str(last.get_attribute("href")))
+    assert target.locator(".plot").count() == 0
+    last.click()
+    target.locator(".plot").wait_for()
+    network = page.locator(".network", has=target)
+    network.locator("svg.circuit").wait_for()
+    assert page.locator(".network > .packed").count() > 200
+    assert told == []
+    page.close()
+
+
 def lands(page: Page, link: Locator) -> bool:
     """Whether a link leads to its block, however much of the page was not laid out before."""
     link.click()

@@ -1,5 +1,6 @@
 """Where the symbols of a network stand."""
 
+import re
 from collections.abc import Sequence
 
 import pytest
@@ -7,7 +8,7 @@ from hypothesis import given
 from hypothesis import strategies as st
 
 from rcrules.reports._page._chain import chain
-from rcrules.reports._page._drawing import drawing
+from rcrules.reports._page._drawing import drawings
 from rcrules.reports._page._layout import Branch, Plan, plan
 
 HELD = {"GND": "ground", "+3V3": "supply", "IN": "driven"}
@@ -95,16 +96,37 @@ def test_every_part_is_drawn_once_and_no_two_stand_on_one_another(pairs: list[tu
     assert {item.text.split()[0] for item in found.labels} >= {item.ref for item in members}
 
 
-def test_a_large_network_is_told_in_words_alone() -> None:
-    rows = [{"part": f"R{index}", "nets": ["A", "GND"]} for index in range(61)]
-    assert drawing({"branches": rows, "nodes": []}, [], {}) == ""
-    assert "<svg" in drawing({"branches": rows[:60], "nodes": []}, [], {})
+def test_a_network_of_any_size_is_drawn_on_sheets_that_can_be_read() -> None:
+    rows = [{"part": f"R{index}", "nets": [f"N{index}", f"N{index + 1}"]} for index in range(150)]
+    rows += [{"part": f"C{index}", "nets": [f"N{index}", "GND"]} for index in range(150)]
+    texts = {row["part"]: f"{row['part']} {index} Ω" for index, row in enumerate(rows)}
+    found = drawings({"branches": rows, "nodes": []}, [{"net": "GND", "kind": "ground"}], texts)
+    assert len(found) == 14
+    assert all(text.count("between") <= 25 for text in found)
+    assert {row["part"] for row in rows} == {part for text in found for part in re.findall(r">([RC]\d+)\b", text)}
+
+
+def test_parts_of_one_value_between_the_same_nets_are_one_symbol_of_a_large_network() -> None:
+    rows = [{"part": f"C{index}", "nets": ["A", "GND"][:: 1 - 2 * (index % 2)]} for index in range(1, 61)]
+    network = {"branches": [*rows, {"part": "R1", "nets": ["IN", "A"]}], "nodes": []}
+    held = [{"net": "GND", "kind": "ground"}, {"net": "IN", "kind": "driven"}]
+    (text,) = drawings(network, held, {row["part"]: f"{row['part']} 100 nF" for row in rows})
+    assert "C1 … C60 60 × 100 nF between A and GND" in text or "C1 … C60 60 × 100 nF between GND and A" in text
+    (text,) = drawings({**network, "branches": rows[:3]}, held, {})
+    assert "C1  between" in text
+
+
+def test_many_parts_between_held_nets_alone_are_drawn_too() -> None:
+    rows = [{"part": f"R{index}", "nets": ["+5V", "GND"]} for index in range(70)]
+    held = [{"net": "GND", "kind": "ground"}, {"net": "+5V", "kind": "supply"}]
+    found = drawings({"branches": rows, "nodes": []}, held, {f"R{index}": f"R{index} {index} Ω" for index in range(70)})
+    assert [text.count("between") for text in found] == [24, 24, 22]
 
 
 @pytest.mark.parametrize("ref", ["R1", "C1"])
 def test_a_drawing_says_in_words_what_it_shows(ref: str) -> None:
     network = {"branches": [{"part": ref, "nets": ["A", "GND"]}], "nodes": []}
-    text = drawing(network, [{"net": "GND", "kind": "ground"}], {ref: f"{ref} 10 kΩ"})
+    (text,) = drawings(network, [{"net": "GND", "kind": "ground"}], {ref: f"{ref} 10 kΩ"})
     assert f'aria-label="Circuit: {ref} 10 kΩ between A and GND"' in text
     assert "<text" in text
     assert "style=" not in text

@@ -12,11 +12,10 @@ from markupsafe import Markup, escape
 from rcrules.findings import Json
 from rcrules.reports._lines import safe
 from rcrules.reports._page._layout import Branch, Label, Plan, Symbol, plan
+from rcrules.reports._page._sheets import Sheet, sheets
 
 schemdraw.use("svg")
 
-_MOST: Final = 60
-"""Parts in one drawing; a larger network is told by its table alone."""
 _MARKS: Final = {"ground": elm.Ground, "supply": elm.Vdd}
 _PARTS: Final = {"resistor": elm.ResistorIEC, "capacitor": elm.Capacitor, "wire": elm.Line}
 _TAG: Final = re.compile(r"<(path|circle|polygon|polyline|line)\b([^>]*)/>")
@@ -25,15 +24,17 @@ _UNIT: Final = 36.0
 """Steps of the view box in one unit of the library."""
 
 
-def drawing(network: Json, held: Sequence[Json], texts: Mapping[str, str]) -> Markup:
-    """The network as SVG with an alternative text; '' where it is too large to be drawn."""
-    if len(network["branches"]) > _MOST:
-        return Markup("")
+def drawings(network: Json, held: Sequence[Json], texts: Mapping[str, str]) -> list[Markup]:
+    """The network as SVG with alternative texts: one drawing, or several where one would be too large to read."""
     nodes = {str(node["net"]): node["feeds"] for node in network["nodes"]}
     kinds = {row["net"]: row["kind"] for row in held if row["net"] not in nodes}
     branches = [_branch(row, texts) for row in network["branches"]]
-    found = plan(branches, kinds, nodes)
-    told = "; ".join(f"{item.ref} {item.value} between {' and '.join(item.nets)}" for item in branches)
+    return [_drawing(sheet, nodes) for sheet in sheets(branches, kinds)]
+
+
+def _drawing(sheet: Sheet, nodes: Mapping[str, Sequence[str]]) -> Markup:
+    found = plan(sheet.branches, sheet.held, nodes)
+    told = "; ".join(f"{item.ref} {item.value} between {' and '.join(item.nets)}" for item in sheet.branches)
     return Markup(
         f'<svg class="circuit" {_box(found)} role="img" aria-label="Circuit: {escape(safe(told))}">'
         f"{_symbols(tuple(found.symbols))}{_labels(found)}</svg>"

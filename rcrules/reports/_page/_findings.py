@@ -27,7 +27,9 @@ from rcrules.reports._words import (
 from rcrules.vocabulary import OUTCOMES, SEVERITIES
 
 _MOST_WHOLE: Final = 600
-"""Findings of a board from which those that hold are told without plot and workings."""
+"""Findings that the page holds in the open, all of them."""
+_GRAVEST: Final = 100
+"""Of more, those that it does; the others, and those that hold, are kept packed until they are opened."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -59,6 +61,8 @@ class Shown:
     places: list[str]
     plot: Markup | None
     working: Working | None
+    packed: bool
+    """Whether all but its headline is kept packed."""
 
 
 def shown(document: Document) -> list[Shown]:
@@ -66,11 +70,6 @@ def shown(document: Document) -> list[Shown]:
     texts = part_texts(document)
     ordered = sorted(document.findings, key=_order)
     return [_shown(document, item, texts, index) for index, item in enumerate(ordered)]
-
-
-def shortened(document: Document) -> bool:
-    """Whether there are too many findings to tell all in full."""
-    return len(document.findings) > _MOST_WHOLE
 
 
 def _order(finding: Finding) -> tuple[Any, ...]:
@@ -86,7 +85,6 @@ def _shown(document: Document, finding: Finding, texts: Mapping[str, str], index
         percent = in_percent(finding)
         spread = bounds(measured.low, measured.nominal, measured.high, measured.unit, percent=percent)
     worst = finding.detail.get("worst")
-    whole = finding.outcome != "holds" or not shortened(document)
     return Shown(
         id=f"f{index}",
         finding=finding,
@@ -105,8 +103,9 @@ def _shown(document: Document, finding: Finding, texts: Mapping[str, str], index
         waiver=waiver_text(document, finding) if finding.outcome == "waived" else "",
         assumptions=[document.assumptions[number] for number in finding.assumptions],
         places=[_place(row) for row in finding.places],
-        plot=plot(finding) if whole else None,
-        working=working(finding) if whole else None,
+        plot=plot(finding),
+        working=working(finding),
+        packed=len(document.findings) > _MOST_WHOLE and (finding.outcome == "holds" or index >= _GRAVEST),
     )
 
 

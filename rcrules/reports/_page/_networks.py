@@ -6,7 +6,7 @@ from dataclasses import dataclass
 from markupsafe import Markup
 
 from rcrules.findings import Document, Json
-from rcrules.reports._page._drawing import drawing
+from rcrules.reports._page._drawing import drawings
 from rcrules.reports._page._findings import Shown
 from rcrules.reports._words import bounds, part_texts, parts_text
 
@@ -32,11 +32,16 @@ class Article:
 
     id: str
     name: str
-    drawing: Markup
+    drawings: list[Markup]
     branches: list[tuple[str, str, str]]
     """Part in words and the two nets it joins."""
     nodes: list[Node]
     findings: list[Shown]
+
+    @property
+    def packed(self) -> bool:
+        """Whether all but its name and the headlines of its findings is kept packed: where each of these is."""
+        return bool(self.findings) and all(item.packed for item in self.findings)
 
 
 def articles(document: Document, found: list[Shown]) -> list[Article]:
@@ -78,7 +83,7 @@ def _article(document: Document, index: int, texts: Mapping[str, str], findings:
     return Article(
         id=f"n{index}",
         name=str(network["id"]),
-        drawing=drawing(network, document.held, texts),
+        drawings=drawings(network, document.held, texts),
         branches=[(texts.get(row["part"], row["part"]), *row["nets"]) for row in network["branches"]],
         nodes=[_node(row, texts) for row in network["nodes"]],
         findings=findings,

@@ -2,26 +2,31 @@
 
 import base64
 import hashlib
+import re
 from functools import cache
 from importlib.resources import files
-from typing import Any
+from typing import Any, Final
 
 from jinja2 import Environment, FunctionLoader, StrictUndefined
 from markupsafe import Markup
 
 from rcrules.findings import Document
 from rcrules.reports._lines import safe
-from rcrules.reports._page._findings import Shown, shortened, shown
+from rcrules.reports._page._findings import Shown, shown
 from rcrules.reports._page._lists import assumptions, comparison, coverage, held, inputs, parts, remarks, rules, waivers
-from rcrules.reports._page._networks import articles, elsewhere
+from rcrules.reports._page._networks import Article, articles, elsewhere
+from rcrules.reports._page._store import store
 from rcrules.reports._page._summary import facts, tiles
 from rcrules.reports._page._undecided import missing_facts
 from rcrules.reports._text_whereabouts import CLASSES
 
+_BETWEEN: Final = re.compile(r">\n+<")
+"""Line ends between tags: a browser makes a node of each, which counts on a page of a thousand networks."""
+
 
 def page(document: Document) -> str:
     """The page, ending in a newline."""
-    script, found = _file("script.js"), shown(document)
+    script, sections = _file("script.js"), _sections(document)
     digest = base64.b64encode(hashlib.sha256(script.encode()).digest()).decode()
     text = (
         _environment()
@@ -32,20 +37,22 @@ def page(document: Document) -> str:
             style=Markup(_file("style.css")),
             script=Markup(script),
             digest=Markup(digest),
-            **_sections(document, found),
+            **sections,
         )
     )
-    return text.rstrip() + "\n"
+    return (_BETWEEN.sub("><", text) if sections["store"] else text).rstrip() + "\n"
 
 
-def _sections(document: Document, found: list[Shown]) -> dict[str, Any]:
+def _sections(document: Document) -> dict[str, Any]:
+    found = shown(document)
+    networks = articles(document, found)
     return {
         "tiles": tiles(document),
         "facts": facts(document),
         "cautions": [pack for pack in document.packs if pack["caution"]],
         "findings": found,
-        "shortened": shortened(document),
-        "networks": articles(document, found),
+        "store": _packed(found, networks),
+        "networks": networks,
         "elsewhere": elsewhere(document, found),
         "undecided": missing_facts(document, found),
         "parts": parts(document),
@@ -59,6 +66,16 @@ def _sections(document: Document, found: list[Shown]) -> dict[str, Any]:
         "inputs": inputs(document),
         "remarks": remarks(document),
     }
+
+
+def _packed(found: list[Shown], networks: list[Article]) -> Markup:
+    """What stands below the headlines of packed findings and below the names of packed networks."""
+    bodies = {item.id: _macro("finding.html", "body", item) for item in found if item.packed}
+    return store(bodies | {item.id: _macro("network.html", "head", item) for item in networks if item.packed})
+
+
+def _macro(template: str, name: str, item: object) -> str:
+    return str(getattr(_environment().get_template(template).module, name)(item))
 
 
 @cache

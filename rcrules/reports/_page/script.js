@@ -48,6 +48,32 @@
     if (form.elements.text.value || form.elements.outcome?.value || form.elements.level?.value) filter();
   }
 
+  const store = document.getElementById("store");
+  let bodies = null;
+  const unpack = async () => {
+    const bytes = Uint8Array.from(atob(store.textContent), (letter) => letter.charCodeAt(0));
+    const plain = new Blob([bytes]).stream().pipeThrough(new DecompressionStream("gzip"));
+    return JSON.parse(await new Response(plain).text());
+  };
+  const fill = async (block) => {
+    const place = block.querySelector(":scope > .packed");
+    if (!place) return;
+    bodies ??= unpack();
+    const body = (await bodies)[block.id];
+    if (place.isConnected) place.outerHTML = body;
+  };
+  if (store) {
+    document.addEventListener("toggle", (event) => event.target.open && fill(event.target), true);
+    const near = new IntersectionObserver((seen) => {
+      for (const { isIntersecting, target } of seen) {
+        if (!isIntersecting) continue;
+        near.unobserve(target);
+        fill(target);
+      }
+    }, { rootMargin: "600px" });
+    for (const place of document.querySelectorAll(".network > .packed")) near.observe(place.parentElement);
+  }
+
   const open = () => {
     const target = document.getElementById(location.hash.slice(1));
     for (let at = target; at; at = at.parentElement) if (at.tagName === "DETAILS") at.open = true;
@@ -63,7 +89,7 @@
 
   let closed = [];
   addEventListener("beforeprint", () => {
-    closed = [...document.querySelectorAll("details:not([open])")];
+    closed = [...document.querySelectorAll("details:not([open]):not(:has(> .packed))")];
     for (const item of closed) item.open = true;
   });
   addEventListener("afterprint", () => {
