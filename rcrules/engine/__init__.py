@@ -19,6 +19,7 @@ Contract (arrays are float64, first axis = case):
     .last_exit(low, high) last time outside [low, high], 0 if never outside, inf if it ends outside;
     .extremes() -> (lowest, highest) over t >= 0, the supremum included; .width() total time f >= 0;
     .slope_initial(); .energy() integral of f² over t >= 0; made of one ``ExponentialSum`` for each piece.
+``roughly()``  context in which networks of MANY nodes and more are solved faster, good enough to search.
 ``transfer(shape, ohms, farads, source, omega) -> complex (case, free)``, ``source`` the number of a held terminal.
 ``corner(shape, ohms, farads, source, at, passes) -> (case,)``  angular frequency [rad/s] 3 dB below the pass band.
 ``Amplified(shape, amplifiers, ohms, farads)``  the same with ideal amplifiers (plus, minus, output): ``.taus`` complex,
@@ -33,10 +34,12 @@ from rcrules.engine._frequency import corner, transfer
 from rcrules.engine._modes import Modes, solve
 from rcrules.engine._oscillation import Oscillation
 from rcrules.engine._response import Drive, Response
+from rcrules.engine._rough import MANY, roughly
 from rcrules.engine._shape import Array, FloatingNode, Shape
 from rcrules.engine._signal import Signal
 
 __all__ = [
+    "MANY",
     "Amplified",
     "Array",
     "Bounds",
@@ -50,6 +53,7 @@ __all__ = [
     "Signal",
     "bounds",
     "corner",
+    "roughly",
     "search",
     "solve",
     "transfer",

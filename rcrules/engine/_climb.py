@@ -48,9 +48,9 @@ def climb(best: Best) -> Step:
             return
         starts = [(best.value(one.side), best.side(one.side)) for one in climbers]
         around = [_around(box, case, one.step) for one, (_, case) in zip(climbers, starts, strict=True)]
-        values = yield from best.ask(np.concatenate(around))
+        values = yield from best.ask_once(np.concatenate(around))
         parts = zip(climbers, starts, around, np.split(values, len(climbers)), strict=True)
-        yield from best.ask(np.concatenate([_candidates(box, *part) for part in parts]))
+        yield from best.ask_once(np.concatenate([_candidates(box, *part) for part in parts]))
         for one, (value, _) in zip(climbers, starts, strict=True):
             if one.side * best.value(one.side) <= one.side * value + GAIN * abs(value):
                 one.step, one.way = one.step * SHORTER, None
@@ -81,9 +81,12 @@ def _candidates(box: Box, climber: Climber, start: tuple[float, Array], around: 
     ends = np.array([[box.share(i, around[2 * k + j, i]) for j in (0, 1)] for k, i in enumerate(columns)])
     heights = climber.side * (values.reshape(-1, 2) - value)
     tops = np.array([_top(*row) for row in zip(shares, ends, heights, strict=True)])
-    points = [np.where(np.arange(len(columns)) == k, tops, shares) for k in range(len(columns))]
+    alone = np.tile(case, (len(columns), 1))
+    for row, index in enumerate(columns):
+        alone[row, index] = box.point(index, float(tops[row]))
     way = _way(climber, shares, ends, heights)
-    return np.array([_at(box, case, point) for point in [*points, tops, *(shares + way * k for k in ALONG)]])
+    together = [_at(box, case, point) for point in (tops, *(shares + way * k for k in ALONG))]
+    return np.concatenate([alone, np.array(together)])
 
 
 def _at(box: Box, case: Array, shares: Array) -> Array:

@@ -7,6 +7,7 @@ Markov chains: the same arithmetic; from memory).
 
 import numpy as np
 
+from rcrules.engine._rough import MANY, is_rough
 from rcrules.engine._shape import Array, Flags, FloatingNode, Indices
 
 
@@ -24,7 +25,8 @@ def factor(between: Array, slack: Array, weight: Array) -> Array:
         return _scaled(np.ones((nodes, nodes, cases)), slack, np.zeros((nodes, 1), dtype=np.intp))
     if nodes == 2:
         return _two(between[0, 1], slack, weight[0] > weight[1])
-    order = np.argsort(weight, axis=0, kind="stable")
+    rough = nodes >= MANY and is_rough()
+    order = np.argsort(weight[:, :1] if rough else weight, axis=0, kind="stable")
     if (order == order[:, :1]).all():
         return _in_one_order(between, slack, order[:, 0])
     return _in_own_orders(between, slack, order)

@@ -8,12 +8,11 @@ from functools import lru_cache
 
 import numpy as np
 
+from rcrules.engine._rough import MANY, is_rough
 from rcrules.engine._shape import Array, Flags
 
 BLOCK = 2**16
 """Numbers worked on at a time, so that they stay in the cache."""
-MANY = 8
-"""Rows from which a dense eigensolver goes first."""
 SIMILAR = 1e-10
 """Least ratio of squared row lengths for that."""
 SWEEPS = 60
@@ -45,7 +44,11 @@ def orthogonalise(rows: Array, width: int) -> Array:
 
 def _swept(rows: Array, width: int) -> Array:
     """Sweeps over all pairs of rows, until no case is left that is not orthogonal."""
-    rows, cases = _prepared(rows, width) if len(rows) >= MANY else rows, rows.shape[2]
+    cases = rows.shape[2]
+    if len(rows) >= MANY and (turned := _prepared(rows, width)) is not None:
+        rows = turned
+        if is_rough():
+            return rows
     for _ in range(SWEEPS):
         active = np.zeros(cases, dtype=bool)
         for first, second in _schedule(len(rows)):
@@ -58,16 +61,16 @@ def _swept(rows: Array, width: int) -> Array:
     return rows
 
 
-def _prepared(rows: Array, width: int) -> Array:
+def _prepared(rows: Array, width: int) -> Array | None:
     """Many rows of similar length turned by a dense eigensolver first, which leaves a sweep or two.
 
-    Its rounding is that of the longest row, so rows of very different lengths are left as they are.
+    Its rounding is that of the longest row; None for rows of very different lengths.
     """
     stored = np.ascontiguousarray(rows[:, :width].transpose(2, 0, 1))
     products = stored @ stored.transpose(0, 2, 1)
     lengths = np.diagonal(products, axis1=1, axis2=2)
     if not (lengths.min(axis=1) > SIMILAR * lengths.max(axis=1)).all():
-        return rows
+        return None
     turns = np.linalg.eigh(products)[1][:, :, ::-1]
     turned: Array = turns.transpose(0, 2, 1) @ rows.transpose(2, 0, 1)
     return np.ascontiguousarray(turned.transpose(1, 2, 0))

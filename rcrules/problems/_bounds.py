@@ -2,12 +2,13 @@
 
 from collections import defaultdict
 from collections.abc import Callable, Generator, Sequence
-from dataclasses import dataclass
+from contextlib import nullcontext
+from dataclasses import dataclass, replace
 from typing import NamedTuple, Protocol
 
 import numpy as np
 
-from rcrules.engine import Bounds, FloatingNode, search
+from rcrules.engine import MANY, Bounds, FloatingNode, roughly, search
 from rcrules.problems._junctions import Unsettled
 from rcrules.problems._structure import Array, Problem, Structure
 
@@ -62,15 +63,29 @@ class _Running:
     structure: int
     compute: Compute
     search: Search
+    nominal: Array
+    """(column,)"""
+    rough: bool
+    """True: the search is on its way through a network of many nodes, which needs no exact values yet."""
     cases: Array | None = None
     result: Bounds | Failure | None = None
 
     def advance(self, values: Array | None) -> None:
         """Hand the search its values; it asks for more cases or ends."""
+        if isinstance(self.result, Bounds) and values is not None:
+            low, nominal, high = values
+            self.cases, self.result = None, replace(self.result, low=low, nominal=nominal, high=high)
+            return
         try:
             self.cases = next(self.search) if values is None else self.search.send(values)
         except StopIteration as stop:
-            self.cases, self.result = None, stop.value
+            self._end(stop.value)
+
+    def _end(self, found: Bounds) -> None:
+        """Ask for the exact values of what a rough search found."""
+        self.result, self.cases = found, None
+        if self.rough:
+            self.rough, self.cases = False, np.array([found.low_at, self.nominal, found.high_at])
 
     def fail(self, reason: str) -> None:
         """End without bounds."""
@@ -87,11 +102,12 @@ def solve_bounds(
     asked = [_ask(Request(*item), numbers, started) for item in requests]
     running, structures = list(started.values()), list(numbers)
     while waiting := [item for item in running if item.cases is not None]:
-        groups: dict[tuple[int, Compute], list[_Running]] = defaultdict(list)
+        groups: dict[tuple[int, Compute, bool], list[_Running]] = defaultdict(list)
         for item in waiting:
-            groups[item.structure, item.compute].append(item)
-        for (number, compute), members in groups.items():
-            _advance(structures[number], compute, members)
+            groups[item.structure, item.compute, item.rough].append(item)
+        for (number, compute, rough), members in groups.items():
+            with roughly() if rough else nullcontext():
+                _advance(structures[number], compute, members)
     return [item.result for item in asked if item.result is not None]
 
 
@@ -103,7 +119,8 @@ def _ask(request: Request, numbers: dict[Structure, int], started: dict[tuple[ob
     key = (number, quantity.compute, low.tobytes(), nominal.tobytes(), high.tobytes())
     if key not in started:
         signs, vertices = _proved(problem.structure, quantity, low, high)
-        started[key] = _Running(number, quantity.compute, search(low, nominal, high, signs, vertices))
+        rough = problem.structure.shape.free >= MANY
+        started[key] = _Running(number, quantity.compute, search(low, nominal, high, signs, vertices), nominal, rough)
         started[key].advance(None)
     return started[key]
 

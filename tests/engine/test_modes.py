@@ -4,7 +4,7 @@ import mpmath as mp
 import numpy as np
 import pytest
 
-from rcrules.engine import FloatingNode, Shape, solve
+from rcrules.engine import FloatingNode, Shape, roughly, solve
 from tests.engine.networks import at_node, random_shape, random_values, step
 from tests.engine.oracle import exact
 
@@ -183,3 +183,15 @@ def test_the_oracle_knows_the_golden_ratio():
     with mp.workdps(60):
         taus = exact(ladder(2), [1.0, 1.0], [1.0, 1.0]).taus
         assert mp.almosteq(taus[0], (3 + mp.sqrt(5)) / 2, rel_eps=mp.mpf(10) ** -40)
+
+
+def test_a_rough_answer_of_many_nodes_is_good_enough_to_search_by():
+    shape = ladder(20)
+    rng = np.random.default_rng(7)
+    ohms, farads = 10.0 ** rng.uniform(2, 5, (50, 20)), 10.0 ** rng.uniform(-9, -6, (50, 20))
+    precise = solve(shape, ohms, farads)
+    with roughly():
+        rough = solve(shape, ohms, farads)
+    assert not np.array_equal(rough.taus, precise.taus)
+    assert np.allclose(rough.taus[:, 0], precise.taus[:, 0], rtol=1e-10)
+    assert np.allclose(rough.steady(np.ones((50, 2)), np.zeros((50, 20))), 1.0, rtol=1e-12)

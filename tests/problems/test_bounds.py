@@ -5,7 +5,8 @@ from dataclasses import dataclass, field, replace
 import numpy as np
 import pytest
 
-from rcrules.engine import FloatingNode, Shape
+from rcrules.engine import FloatingNode, Shape, corner
+from rcrules.engine._rough import is_rough
 from rcrules.problems import Bounds, Failure, Parameter, Problem, Structure, column, solve_bounds
 
 
@@ -82,3 +83,44 @@ def test_one_floating_node_fails_only_its_own_request():
     assert isinstance(found[1], Failure)
     assert "no resistive path" in found[1].reason
     assert isinstance(found[2], Bounds)
+
+
+@dataclass(frozen=True)
+class Corner:
+    """Corner frequency of a ladder of ten equal sections; columns: first resistor, middle resistor, middle capacitor.
+
+    It remembers what it answered, and whether it was asked roughly.
+    """
+
+    answers: dict[tuple[float, ...], tuple[bool, float]] = field(default_factory=dict, hash=False)
+
+    def compute(self, structure: Structure, cases: np.ndarray) -> np.ndarray:
+        ohms, farads = np.full((len(cases), 10), 1e3), np.full((len(cases), 10), 1e-7)
+        ohms[:, 0], ohms[:, 5], farads[:, 5] = cases.T
+        found = corner(structure.shape, ohms, farads, 10, 5)
+        for case, value in zip(cases, found, strict=True):
+            self.answers[tuple(case)] = is_rough(), float(value)
+        return found
+
+    def theory(self, structure: Structure, low: np.ndarray, high: np.ndarray) -> Known:
+        assert structure is not None
+        assert (low <= high).all()
+        return Known(signs=(None, None, None))
+
+
+def test_a_network_of_many_nodes_is_searched_roughly_and_reported_exactly():
+    series = tuple((10 if node == 0 else node - 1, node) for node in range(10))
+    shape = Shape(10, 2, series, tuple((node, 11) for node in range(10)))
+    numbers = (("a", 1e3, 2e3), ("b", 1e3, 4e3), ("c", 1e-7, 3e-7))
+    parameters = tuple(
+        Parameter(name=name, unit="", low=low, nominal=low, high=high, given_low=low, given_high=high, origin="test")
+        for name, low, high in numbers
+    )
+    structure = Structure(shape=shape, ohms=(), farads=(), waveforms=())
+    asked = Corner()
+    (found,) = solve_bounds([(Problem(structure=structure, parameters=parameters), asked)])
+    assert isinstance(found, Bounds)
+    assert (False, found.low) == asked.answers[found.low_at]
+    assert (False, found.high) == asked.answers[found.high_at]
+    assert sum(rough for rough, _ in asked.answers.values()) > 5
+    assert not is_rough()
