@@ -4,7 +4,7 @@ from rcrules.checks._asked import Asked
 from rcrules.checks._check import Checked, check
 from rcrules.checks._numbers import known, near, numbers_at
 from rcrules.checks._packs import astray, packs, unclear, unmet
-from rcrules.checks._subjects import Subject
+from rcrules.checks._subject import Subject
 from rcrules.checks._trial import Trial, trials, turning
 
 __all__ = [

@@ -9,7 +9,8 @@ from rcrules.checks._ends import at_nominal
 from rcrules.checks._finding import Judged, finding
 from rcrules.checks._resolve import Case, is_joint, resolve
 from rcrules.checks._select import selected
-from rcrules.checks._subjects import Subject, Subjects
+from rcrules.checks._subject import Subject
+from rcrules.checks._subjects import Subjects
 from rcrules.checks._value import pose_value
 from rcrules.checks._verdict import Verdict, decide
 from rcrules.checks._words import worded

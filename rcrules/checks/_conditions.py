@@ -5,7 +5,7 @@ from typing import Final
 
 from rcrules.checks._facts import facts, unknown
 from rcrules.checks._lookup import Missing
-from rcrules.checks._subjects import Subject
+from rcrules.checks._subject import Subject
 from rcrules.checks._views import View
 from rcrules.networks import Board
 from rcrules.parts import RatedPart, Unknown

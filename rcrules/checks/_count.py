@@ -5,7 +5,7 @@ from itertools import pairwise
 
 import networkx as nx
 
-from rcrules.checks._subjects import Subject
+from rcrules.checks._subject import Subject
 from rcrules.networks import Board, Network
 from rcrules.parts import Known, RatedPart
 

@@ -9,7 +9,7 @@ from rcrules.checks._asked import Asked
 from rcrules.checks._identity import fingerprint
 from rcrules.checks._levels import level_text
 from rcrules.checks._resolve import Case
-from rcrules.checks._subjects import Subject
+from rcrules.checks._subject import Subject
 from rcrules.checks._value import value_told
 from rcrules.checks._verdict import Deciding, Verdict
 from rcrules.checks._worst import made_of, worst_case

@@ -3,7 +3,7 @@
 from collections.abc import Iterable
 from hashlib import sha256
 
-from rcrules.checks._subjects import Subject
+from rcrules.checks._subject import Subject
 from rcrules.names import automatic
 from rcrules.networks import Board, Branch, Node
 

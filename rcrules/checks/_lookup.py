@@ -3,7 +3,7 @@
 from collections.abc import Iterable, Mapping
 from dataclasses import dataclass
 
-from rcrules.checks._subjects import Subject
+from rcrules.checks._subject import Subject
 from rcrules.networks import Board
 from rcrules.project import Project, line_for, ranked
 from rcrules.quantities import Spread

@@ -2,7 +2,7 @@
 
 from rcrules.checks._facts import facts
 from rcrules.checks._lookup import Missing, look_up
-from rcrules.checks._subjects import Subject
+from rcrules.checks._subject import Subject
 from rcrules.events import Unmeasurable, part_parameter
 from rcrules.networks import Board
 from rcrules.parts import Known, RatedPart

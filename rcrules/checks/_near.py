@@ -4,7 +4,7 @@ from collections.abc import Iterator
 from dataclasses import dataclass
 
 from rcrules.checks._select import TESTS, matches, valued
-from rcrules.checks._subjects import Subject
+from rcrules.checks._subject import Subject
 from rcrules.checks._views import View
 from rcrules.networks import Board
 from rcrules.parts import Known

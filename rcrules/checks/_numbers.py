@@ -10,7 +10,8 @@ from rcrules.checks._asked import Asked
 from rcrules.checks._check import check
 from rcrules.checks._nowhere import why_nothing
 from rcrules.checks._place import stands_at
-from rcrules.checks._subjects import Subject, Subjects
+from rcrules.checks._subject import Subject
+from rcrules.checks._subjects import Subjects
 from rcrules.checks._worst import made_of
 from rcrules.derivation import derive
 from rcrules.events import Unmeasurable, pose

@@ -1,6 +1,6 @@
 """Whether a subject is the one of a name."""
 
-from rcrules.checks._subjects import Subject
+from rcrules.checks._subject import Subject
 
 
 def stands_at(subject: Subject, at: str) -> bool:

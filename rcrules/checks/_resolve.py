@@ -11,7 +11,7 @@ from rcrules.checks._composite import Composite
 from rcrules.checks._conditions import condition
 from rcrules.checks._lookup import Missing, look_up
 from rcrules.checks._named import named_number
-from rcrules.checks._subjects import Subject
+from rcrules.checks._subject import Subject
 from rcrules.expressions import Call, Values, calls, names, value_of
 from rcrules.levels import Level
 from rcrules.networks import Board

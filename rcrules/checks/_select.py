@@ -5,7 +5,7 @@ from fnmatch import fnmatchcase
 from typing import Final
 
 from rcrules.checks._facts import facts
-from rcrules.checks._subjects import Subject
+from rcrules.checks._subject import Subject
 from rcrules.checks._views import View
 from rcrules.names import has_token
 from rcrules.networks import Board

@@ -7,7 +7,8 @@ from dataclasses import dataclass
 from rcrules.checks._check import check
 from rcrules.checks._near import Excluded, excluded
 from rcrules.checks._select import selected
-from rcrules.checks._subjects import Subject, Subjects
+from rcrules.checks._subject import Subject
+from rcrules.checks._subjects import Subjects
 from rcrules.findings import Finding
 from rcrules.networks import Board
 from rcrules.project import Project

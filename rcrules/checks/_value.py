@@ -10,7 +10,8 @@ from rcrules.checks._lookup import Missing, look_up
 from rcrules.checks._named import named_number
 from rcrules.checks._place import stands_at
 from rcrules.checks._resolve import Bound, Case, is_count, is_joint
-from rcrules.checks._subjects import Subject, Subjects
+from rcrules.checks._subject import Subject
+from rcrules.checks._subjects import Subjects
 from rcrules.engine import Shape
 from rcrules.events import OptionValue, Unmeasurable, part_parameter, pose
 from rcrules.expressions import Binary, Call, Expression, calls, names

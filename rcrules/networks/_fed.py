@@ -9,6 +9,8 @@ from rcrules.names import has_token, tokens
 from rcrules.networks._family import family, inverting
 from rcrules.networks._fed_words import CHANNEL, CONVERTER, FEEDBACK, OUTPUT, RESET, SUPPLY, TIMING
 from rcrules.networks._spot import Spot, View
+from rcrules.parts import RatedPart
+from rcrules.project import Project
 
 
 def whole(pin: Pin) -> str:
@@ -35,18 +37,29 @@ def family_of(view: View, ref: str) -> str:
 
 def kind_fed(view: View, pin: Pin) -> str:
     """One of vocabulary.FED_KINDS for an input-like pin."""
-    if view.kind(pin) == "connector":
+    kind = view.kind(pin)
+    return _of_part(kind, family_of(view, pin.ref) if kind == "ic" else "", view.draft.project, pin)
+
+
+def pin_kinds(part: RatedPart, project: Project) -> dict[str, str]:
+    """Number of each pin of a part -> what the pin is, as ``kind_fed`` says it, whether a network feeds it or not."""
+    own = part.part
+    texts = (*(fact.text for fact in own.values), own.symbol, own.description)
+    group = family(" ".join(texts), tuple(pin.name for pin in own.pins))
+    return {pin.number: _of_part(part.kind, group, project, pin) for pin in own.pins}
+
+
+def _of_part(kind: str, group: str, project: Project, pin: Pin) -> str:
+    if kind == "connector":
         return "connector"
-    if _given(view, pin) == "supply":
+    if _given(project, pin) == "supply":
         return "supply"
-    if view.kind(pin) != "ic":
-        return "other"
-    return _kind_of_ic_pin(family_of(view, pin.ref), pin, _hint(pin))
+    return _kind_of_ic_pin(group, pin, _hint(pin)) if kind == "ic" else "other"
 
 
 def reads(view: View, pin: Pin) -> bool:
     """Whether the pin takes a voltage in: an IC's input, a transistor's control pin; what the project says wins."""
-    given = _given(view, pin)
+    given = _given(view.draft.project, pin)
     if given is not None:
         return given == "input"
     kind = view.kind(pin)
@@ -86,9 +99,9 @@ def kinds(view: View, pins: Iterable[Pin]) -> tuple[str, ...]:
     return tuple(sorted({kind_fed(view, pin) for pin in pins}))
 
 
-def _given(view: View, pin: Pin) -> str | None:
+def _given(project: Project, pin: Pin) -> str | None:
     """What the project file calls the pin."""
-    for key, facts in view.draft.project.pins.items():
+    for key, facts in project.pins.items():
         if facts.kind is not None and any(fnmatchcase(f"{pin.ref}.{end}", key) for end in (pin.name, pin.number)):
             return facts.kind
     return None

@@ -19,7 +19,9 @@ from rcrules.tomlfile import Table, cut, guess, listed
 from rcrules.vocabulary import HELD_KINDS, PART_KINDS, ROLES
 
 _KNOWN: Final = (*RULE_KEYS, *KEYS)
-SUBJECTS: Final = ("node", "capacitor", "resistor", "pin", "supply", "network", "supply pin", "open-drain net", "board")
+PINS: Final = ("supply pin", "reset pin", "contact pin", "open-drain net")
+"""Subjects that are pins of a kind: measures of pins can be taken at them."""
+SUBJECTS: Final = ("node", "capacitor", "resistor", "pin", "supply", "network", *PINS, "board")
 HAS: Final[Mapping[str, tuple[str, ...]]] = {
     "kind": PART_KINDS,
     "role": ROLES,
@@ -73,8 +75,14 @@ def _measured(table: Table, measures: Mapping[str, Measure], own: Names) -> Judg
         table.wrong("measure", problem, at=0, length=len(name), expected=listed(measures))
         return None
     measure = measures[name]
-    subject = table.word("subject", (measure.subject, *measure.also)) or ""
+    subject = table.word("subject", subjects_of(measure)) or ""
     return Judged(measure=measure, options=options(table, measure, own), subject=subject)
+
+
+def subjects_of(measure: Measure) -> tuple[str, ...]:
+    """What a measure can be taken of."""
+    own = (measure.subject, *measure.also)
+    return (*own, *PINS) if "pin" in own else own
 
 
 def _valued(table: Table, measures: Mapping[str, Measure], own: Names) -> Judged | None:
@@ -136,7 +144,7 @@ def _subject(found: Compiled) -> str | None:
 def _foreign(found: Compiled, subject: str) -> str | None:
     """A measure that is none of the subject."""
     for term in found.terms:
-        fits = (term.measure.subject, *term.measure.also)
+        fits = subjects_of(term.measure)
         if term.at is None and subject not in fits:
             return f"'{term.measure.name}' is measured at a {listed(fits)}, and the rule is about a {subject}"
     return None

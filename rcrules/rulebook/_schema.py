@@ -4,7 +4,7 @@ from collections.abc import Mapping
 from typing import Any
 
 from rcrules.measures import Measure, Option
-from rcrules.rulebook._judged import HAS, SUBJECTS
+from rcrules.rulebook._judged import HAS, SUBJECTS, subjects_of
 from rcrules.rulebook._keys import EXAMPLE, NESTED, NUMBER, PACK, RULE, SELECTION, TEXT, Shape, one_of
 from rcrules.tomlfile import quantity_name
 from rcrules.vocabulary import EVENTS
@@ -83,7 +83,7 @@ def _whole() -> dict[str, Any]:
 
 
 def _subjects(measures: Mapping[str, Measure]) -> tuple[str, ...]:
-    own = (subject for measure in measures.values() for subject in (measure.subject, *measure.also))
+    own = (subject for measure in measures.values() for subject in subjects_of(measure))
     return tuple(dict.fromkeys((*SUBJECTS, *own)))
 
 
@@ -114,7 +114,7 @@ def _options(measure: Measure) -> dict[str, Any]:
     then: dict[str, Any] = {
         "properties": {
             "with": {"description": f"Options of {measure.name}. {measure.summary}", **inner},
-            "subject": {"enum": [measure.subject, *measure.also]},
+            "subject": {"enum": list(subjects_of(measure))},
         }
     }
     told = {"properties": {"measure": {"const": measure.name}}, "required": ["measure"]}

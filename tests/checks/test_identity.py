@@ -1,7 +1,8 @@
 from dataclasses import replace
 
 from rcrules.checks._identity import fingerprint
-from rcrules.checks._subjects import Subject, Subjects
+from rcrules.checks._subject import Subject
+from rcrules.checks._subjects import Subjects
 from rcrules.networks import Board, Branch
 from tests.checks._objects import board
 

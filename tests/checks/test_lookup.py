@@ -5,7 +5,8 @@ import pytest
 
 from rcrules.checks._lookup import Found, Missing, look_up
 from rcrules.checks._resolve import resolve
-from rcrules.checks._subjects import Subject, Subjects
+from rcrules.checks._subject import Subject
+from rcrules.checks._subjects import Subjects
 from rcrules.networks import Contact
 from rcrules.project import NetFacts, PartFacts, PinFacts, Project
 from rcrules.quantities import Spread

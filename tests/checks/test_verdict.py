@@ -5,7 +5,7 @@ import numpy as np
 import pytest
 
 from rcrules.checks._resolve import Bound, Case
-from rcrules.checks._subjects import Subject
+from rcrules.checks._subject import Subject
 from rcrules.checks._verdict import Verdict, decide
 from rcrules.engine import Shape
 from rcrules.measures import Measure, Theory
