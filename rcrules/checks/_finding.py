@@ -8,6 +8,7 @@ from typing import Final
 from rcrules.checks._asked import Asked
 from rcrules.checks._identity import fingerprint
 from rcrules.checks._levels import level_text
+from rcrules.checks._margin import nearest
 from rcrules.checks._resolve import Case
 from rcrules.checks._subject import Subject
 from rcrules.checks._value import value_told
@@ -54,7 +55,7 @@ def finding(judged: Judged, board: Board, project: Project, assumptions: list[in
         measure=rule.measure.name,
         options=_options(case),
         measured=measured,
-        limit=_limit(case),
+        limit=_limit(judged),
         margin=margin.value if margin and rule.passing is None and not math.isnan(margin.value) else None,
         margin_case=case_json(margin.case, judged.problem) if margin and judged.problem else {},
         reason=_reason(judged),
@@ -92,7 +93,7 @@ def _response(judged: Judged) -> Json | None:
     solution, problem = judged.verdict.solution, judged.problem
     if solution is None or problem is None:
         return None
-    return response(problem, judged.case.rule.measure, solution.bounds, _limit(judged.case))
+    return response(problem, judged.case.rule.measure, solution.bounds, _limit(judged))
 
 
 def _statistics(judged: Judged, board: Board, project: Project, asked: Asked) -> Json | None:
@@ -130,14 +131,15 @@ def _option(value: str | float | Level, measure: Measure, name: str) -> str:
     return f"{100 * value:.4g} %" if unit == "1" and 0 < value < 1 else show(value, unit)
 
 
-def _limit(case: Case) -> Json | None:
-    """Strictest number per kind; None where a limit is still asked for."""
-    if not case.bounds:
+def _limit(judged: Judged) -> Json | None:
+    """Strictest number per kind, both the same where it must be one number; None where a limit is still asked for."""
+    bounds, solution = judged.case.bounds, judged.verdict.solution
+    if not bounds:
         return None
-    found: Json = {}
-    for bound in case.bounds:
-        found[bound.kind.replace("-", "_")] = bound.strict
-    first = case.bounds[0]
+    first = bounds[0]
+    found: Json = {bound.kind.replace("-", "_"): bound.strict for bound in bounds if not bound.choices}
+    if first.choices:
+        found["at_least"] = found["at_most"] = nearest(solution.bounds, first) if solution else first.strict
     return {**found, "unit": first.unit, "text": first.text, "from": first.origin}
 
 

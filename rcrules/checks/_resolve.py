@@ -29,13 +29,15 @@ class Bound:
     """A limit in numbers."""
 
     kind: str
-    """``at-least`` or ``at-most``."""
+    """``at-least``, ``at-most`` or ``one-of``."""
     strict: float
-    """The end of the limit's own spread that is hardest to keep."""
+    """The end of the limit's own spread that is hardest to keep; of several choices the first."""
     unit: str
     text: str
     """As the rule or the project writes it; '' where only the number is known."""
     origin: str
+    choices: tuple[float, ...] = ()
+    """The numbers, one of which it must be."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -84,6 +86,11 @@ def _option(value: OptionValue, rule: Rule, subject: Subject, board: Board, proj
 
 def _bound(limit: Limit, rule: Rule, subject: Subject, board: Board, project: Project) -> Bound | Missing:
     """A limit in numbers: written, looked up, or chosen by a word that is looked up."""
+    if limit.choices:
+        origin, choices = f"rule {rule.id}", limit.choices
+        return Bound(
+            kind=limit.kind, strict=choices[0], unit=limit.unit, text=limit.text, origin=origin, choices=choices
+        )
     if limit.value is not None:
         return _strict(limit.kind, limit.value, limit.text, f"rule {rule.id}")
     if limit.expression is not None:

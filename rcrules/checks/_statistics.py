@@ -8,6 +8,7 @@ from zlib import crc32
 import numpy as np
 
 from rcrules.checks._asked import Asked
+from rcrules.checks._margin import EQUAL
 from rcrules.checks._resolve import Bound, Case
 from rcrules.checks._solve import endless
 from rcrules.derivation import sensitivity
@@ -83,6 +84,8 @@ def _fails(told: Array, case: Case) -> Array:
 
 
 def _breaks(told: Array, bound: Bound, case: Case) -> Array:
+    if bound.choices:
+        return np.asarray(~np.isclose(told[:, None], bound.choices, rtol=EQUAL, atol=0.0).any(axis=1))
     broken = told < bound.strict if bound.kind == "at-least" else told > bound.strict
     if endless(case.rule.measure):
         never = np.isposinf(told)

@@ -70,4 +70,6 @@ def turning(finding: Finding) -> float | None:
     limit = (finding.limit or {}).get(side)
     if finding.margin is None or limit is None or not math.isfinite(finding.margin):
         return None
+    if (finding.limit or {}).get("at_least") == (finding.limit or {}).get("at_most"):
+        return None  # it must be one number
     return float(limit + finding.margin if side == "at_least" else limit - finding.margin)

@@ -14,11 +14,12 @@ from rcrules.checks._subject import Subject
 from rcrules.checks._subjects import Subjects
 from rcrules.engine import Shape
 from rcrules.events import OptionValue, Unmeasurable, part_parameter, pose
-from rcrules.expressions import Binary, Call, Expression, calls, names
+from rcrules.expressions import Binary, Call, Expression, Number, calls, names, text_of
+from rcrules.measures import Measure
 from rcrules.networks import Board
 from rcrules.problems import Parameter, Problem, Structure
 from rcrules.project import Project
-from rcrules.quantities import Spread
+from rcrules.quantities import Spread, show
 from rcrules.rulebook import Limit, Rule, Term, dict_of
 
 if TYPE_CHECKING:
@@ -61,36 +62,58 @@ def pose_value(case: Case, subjects: Subjects, board: Board, project: Project) -
     rule = case.rule
     columns = _Columns()
     joint = [limit for limit in rule.limits if is_joint(limit)]
-    expression = _with_limit(rule, joint)
+    expression = _with_limits(case, joint)
     terms = (*rule.terms, *(term for limit in joint for term in limit.terms))
     posed = tuple(_posed(term, rule, case.subject, subjects, board, project, columns) for term in terms)
     constants, own, units = _named(expression, rule, case.subject, board, project, columns)
     counts = tuple(_counted(call, case.subject, board, columns) for call in calls(expression) if is_count(call))
     whole = Composite(expression=expression, posed=posed, constants=constants, columns=own, counts=counts, units=units)
     measure = replace(rule.measure, compute=whole.compute, theory=whole.theory, options={})
-    bounds = tuple(_shifted(bound, joint) for bound in case.bounds)
+    bounds = case.bounds
+    if joint:
+        measure, bounds = _named_after(measure, expression), _shifted(case)
     posed_case = replace(case, rule=replace(rule, measure=measure, options={}), bounds=bounds, options={}, value=whole)
     structure = posed[0].structure if len(posed) == 1 and expression == posed[0].call else _EMPTY
     return posed_case, Problem(structure=structure, parameters=tuple(columns.parameters))
 
 
-def _with_limit(rule: Rule, joint: Sequence[Limit]) -> Expression:
-    """The value, less a limit that depends on the same numbers. Raises Unmeasurable where there are two such limits."""
+def _with_limits(case: Case, joint: Sequence[Limit]) -> Expression:
+    """The value; less its limit where that depends on the same numbers; beside others the smallest of all margins."""
+    rule = case.rule
     value = rule.value
     if value is None:
         raise ValueError("a rule with a plain measure has no value to pose")
     if not joint:
         return value
-    if len(rule.limits) > 1:
-        raise Unmeasurable("two limits, one of which depends on measures", "")
-    limit = joint[0].expression
-    assert limit is not None  # those of joint have one
-    return Binary(sign="-", left=value, right=limit, at=0)
+    limits = [_told(limit, bound) for limit, bound in zip(rule.limits, case.bounds, strict=True)]
+    if len(limits) == 1:
+        return Binary(sign="-", left=value, right=limits[0], at=0)
+    ends = [
+        (limit, value) if item.kind == "at-most" else (value, limit)
+        for item, limit in zip(rule.limits, limits, strict=True)
+    ]
+    margins = tuple(Binary(sign="-", left=left, right=right, at=0) for left, right in ends)
+    return Call(name="min", arguments=margins, options=(), at=0)
 
 
-def _shifted(bound: Bound, joint: Sequence[Limit]) -> Bound:
-    """A limit that went into the value is a limit of 0."""
-    return replace(bound, strict=0.0) if joint else bound
+def _told(limit: Limit, bound: Bound) -> Expression:
+    """The limit's own expression, or the number that it is at this subject."""
+    if is_joint(limit) and limit.expression is not None:
+        return limit.expression
+    return Number(value=bound.strict, unit=bound.unit, text=show(bound.strict, bound.unit), at=0)
+
+
+def _named_after(measure: Measure, expression: Expression) -> Measure:
+    """What is measured is the distance to the limit, and is called so."""
+    unit = "K" if measure.unit == "degC" else measure.unit
+    return replace(measure, name=text_of(expression), unit=unit)
+
+
+def _shifted(case: Case) -> tuple[Bound, ...]:
+    """Limits that went into the value leave a limit of 0."""
+    first = case.bounds[0]
+    kind = "at-least" if len(case.bounds) > 1 else first.kind
+    return (replace(first, kind=kind, strict=0.0, unit="K" if first.unit == "degC" else first.unit),)
 
 
 def _posed(

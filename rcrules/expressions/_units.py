@@ -19,6 +19,14 @@ FUNCTIONS: Final[Mapping[str, tuple[int, int | None]]] = {
 }
 """Plain functions: fewest and most arguments. ``log`` is the natural logarithm; ``interpolate(x, x1, y1, x2, y2, …)``
 is linear between the points and constant outside them."""
+_SHOWN: Final = {
+    "min": "min(a, b)",
+    "max": "max(a, b)",
+    "abs": "abs(a)",
+    "sqrt": "sqrt(a)",
+    "log": "log(a / b)",
+    "interpolate": "interpolate(x, x1, y1, x2, y2)",
+}
 _DIFFERENCE: Final = "a difference in K, such as temperature_high - 25 degC"
 
 
@@ -54,7 +62,9 @@ def units_of(of: Expression, known: Known, wanted: Dimension | None = None) -> D
         case Number():
             return dimension_of(of.unit)
         case Text():
-            known.note(QuantityError("a text is no number", at=of.at - 1, length=len(of.value) + 2))
+            known.note(
+                QuantityError("a text is no number", at=of.at - 1, length=len(of.value) + 2, expected="a number")
+            )
             return None
         case Name():
             return _name(of, known, wanted)
@@ -205,7 +215,8 @@ def _function(of: Call, known: Known, wanted: Dimension | None) -> Dimension | N
     if of.options or len(of.arguments) < least or (most is not None and len(of.arguments) > most):
         count = f"{least}" if least == most else f"{least} or more"
         plural = "" if count == "1" else "s"
-        known.note(QuantityError(f"'{of.name}' takes {count} argument{plural}", at=of.at, length=of.length))
+        problem = f"'{of.name}' takes {count} argument{plural}"
+        known.note(QuantityError(problem, at=of.at, length=of.length, expected=_SHOWN[of.name]))
         return None
     if of.name == "interpolate":
         return _interpolated(of, known, wanted)
@@ -228,7 +239,7 @@ def _same(of: Call, found: Iterable[Dimension | None], known: Known) -> Dimensio
     for other in told[1:]:
         if other != told[0]:
             problem = f"'{of.name}' of {named(told[0])} and {named(other)}"
-            known.note(QuantityError(problem, at=of.at, length=of.length))
+            known.note(QuantityError(problem, at=of.at, length=of.length, expected="quantities of one kind"))
             return None
     return told[0] if told else None
 
@@ -236,14 +247,15 @@ def _same(of: Call, found: Iterable[Dimension | None], known: Known) -> Dimensio
 def _root(of: Call, found: Dimension | None, known: Known) -> Dimension | None:
     root = None if found is None else raised(found, 0.5)
     if found is not None and root is None:
-        known.note(QuantityError(f"'sqrt' of {named(found)} is no quantity", at=of.at, length=of.length))
+        problem, expected = f"'sqrt' of {named(found)} is no quantity", "a square, such as V * V"
+        known.note(QuantityError(problem, at=of.at, length=of.length, expected=expected))
     return root
 
 
 def _interpolated(of: Call, known: Known, wanted: Dimension | None) -> Dimension | None:
     if len(of.arguments) % 2 == 0:
-        expected = "interpolate(x, x1, y1, x2, y2)"
-        known.note(QuantityError("a point of 'interpolate' is half", at=of.at, length=of.length, expected=expected))
+        problem = "a point of 'interpolate' is half"
+        known.note(QuantityError(problem, at=of.at, length=of.length, expected=_SHOWN[of.name]))
         return None
     first = units_of(of.arguments[1], known)
     _same(of, _each((of.arguments[0], *of.arguments[1::2]), known, first), known)

@@ -69,6 +69,8 @@ def in_percent(finding: Finding) -> bool:
 def limit_text(finding: Finding) -> str:
     """``must be at least 30 ms``."""
     limit = finding.limit or {}
+    if "at_least" in limit and limit["at_least"] == limit.get("at_most"):
+        return f"must be {limit.get('text') or number(limit['at_least'], limit['unit'], percent=in_percent(finding))}"
     words = {"at_least": "at least", "at_most": "at most"}
     found = [
         f"{words[key]} {number(limit[key], limit['unit'], percent=in_percent(finding))}"

@@ -14,7 +14,7 @@ from rcrules.rulebook._keys import LINES
 from rcrules.rulebook._keys import PACK as PACK_KEYS
 from rcrules.rulebook._keys import RULE as RULE_KEYS
 from rcrules.rulebook._limits import limits
-from rcrules.rulebook._model import Example, Pack, Rule, Term
+from rcrules.rulebook._model import Example, Limit, Pack, Rule, Term
 from rcrules.rulebook._numbers import Names, declared, given
 from rcrules.rulebook._selection import KEYS, selection
 from rcrules.tomlfile import Table, cut
@@ -116,10 +116,8 @@ def _body(
     table: Table, pack: Pack | None, what: Judged, names: Names, measures: Mapping[str, Measure], own_id: str
 ) -> Rule:
     bounds = limits(table, what.measure, names, measures) if not what.fact else ()
-    if len(bounds) > 1 and any(limit.terms for limit in bounds):
-        key = next(limit.kind for limit in bounds if limit.terms)
-        problem = f"'{key}' depends on measures, and stands beside another limit"
-        table.wrong(key, problem, do="write one rule for each limit")
+    if len(bounds) > 1 and any(limit.terms for limit in bounds) and table.data.get("never") == "holds":
+        table.wrong("never", "'never' beside two limits, one of which depends on measures", do="write two rules")
     what = _with_call(what) if any(limit.terms for limit in bounds) else what
     never = table.word("never", tuple(_NEVER))
     return Rule(
@@ -142,11 +140,17 @@ def _body(
         terms=what.terms,
         fact=what.fact,
         one_of=what.one_of,
-        nominal=table.word("bounds", BOUNDS) == "nominal",
+        nominal=_is_nominal(table, bounds),
         passing=_passing(table),
         must_meet=table.count("must-meet") or 0,
         examples=tuple(_example(item) for item in table.tables("example")),
     )
+
+
+def _is_nominal(table: Table, bounds: tuple[Limit, ...]) -> bool:
+    """What must be one number is so as marked, unless the rule says otherwise: no tolerance meets a number."""
+    said = table.word("bounds", BOUNDS)
+    return said == "nominal" or (said is None and any(limit.choices for limit in bounds))
 
 
 def _passing(table: Table) -> float | None:

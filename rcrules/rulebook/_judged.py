@@ -9,12 +9,13 @@ import numpy as np
 from rcrules.expressions import Call, Expression, Text, calls, names, text_of, unit_of
 from rcrules.measures import Measure, Theory
 from rcrules.problems import Array, Structure
+from rcrules.quantities import QuantityError, parse_quantity
 from rcrules.rulebook._keys import LINES
 from rcrules.rulebook._keys import RULE as RULE_KEYS
 from rcrules.rulebook._model import OptionValue, Term
 from rcrules.rulebook._numbers import Names, options
 from rcrules.rulebook._selection import KEYS
-from rcrules.rulebook._value import COUNTS, WORD_FACTS, Compiled, compiled
+from rcrules.rulebook._value import COUNTS, NUMBER_FACTS, WORD_FACTS, Compiled, compiled
 from rcrules.tomlfile import Table, cut, guess, listed
 from rcrules.vocabulary import HELD_KINDS, PART_KINDS, ROLES
 
@@ -22,6 +23,7 @@ _KNOWN: Final = (*RULE_KEYS, *KEYS)
 PINS: Final = ("supply pin", "reset pin", "contact pin", "open-drain net")
 """Subjects that are pins of a kind: measures of pins can be taken at them."""
 SUBJECTS: Final = ("node", "capacitor", "resistor", "pin", "supply", "network", *PINS, "board")
+EVERY: Final = ("subject", "has", "has-no")
 HAS: Final[Mapping[str, tuple[str, ...]]] = {
     "kind": PART_KINDS,
     "role": ROLES,
@@ -88,7 +90,7 @@ def subjects_of(measure: Measure) -> tuple[str, ...]:
 def _valued(table: Table, measures: Mapping[str, Measure], own: Names) -> Judged | None:
     """``value``: a word that must be one of some, else an expression."""
     subject = table.word("subject", SUBJECTS)
-    if "one-of" in table.data:
+    if "one-of" in table.data and _is_word(table):
         return _worded(table, subject)
     found = compiled(table, "value", measures, own)
     if found is None:
@@ -150,6 +152,22 @@ def _foreign(found: Compiled, subject: str) -> str | None:
     return None
 
 
+def _is_word(table: Table) -> bool:
+    """Whether a rule with ``one-of`` is about a word, not a number."""
+    value, choices = table.data["value"], table.data["one-of"]
+    if value in WORD_FACTS or value in NUMBER_FACTS:
+        return value in WORD_FACTS
+    return not any(_is_quantity(item) for item in (choices if isinstance(choices, list) else [choices]))
+
+
+def _is_quantity(item: object) -> bool:
+    try:
+        parse_quantity(str(item)[:200])
+    except QuantityError:
+        return False
+    return True
+
+
 def _worded(table: Table, subject: str | None) -> Judged | None:
     fact = table.word("value", WORD_FACTS)
     words = table.texts("one-of")
@@ -166,19 +184,31 @@ def _worded(table: Table, subject: str | None) -> Judged | None:
 
 
 def _every(table: Table) -> Judged | None:
-    """``every = { subject = "supply pin", has = { kind = "capacitor" } }``: at least 1, if no limit is there."""
+    """``every = { subject = "supply pin", has = { kind = "capacitor" } }``: at least 1, or with ``has-no`` none."""
     inner = table.table("every")
     if inner is None:
         return None
-    inner.only(("subject", "has"))
-    inner.needs("subject", "has", known=("subject", "has"), do=LINES)
-    subject, has = inner.word("subject", SUBJECTS), inner.table("has")
+    inner.only(EVERY)
+    key = "has-no" if "has-no" in inner.data else "has"
+    inner.needs("subject", key, known=EVERY, do=LINES)
+    subject, has = inner.word("subject", SUBJECTS), inner.table(key)
+    if key == "has-no":
+        _alone(table, inner)
     if has is None or subject is None:
         return None
     has.only(tuple(HAS))
     words = {key: has.word(key, choices) for key, choices in HAS.items() if key in has.data}
     if not any(key in words for key in ("kind", "role")):
-        has.wrong((), "'has' says neither kind nor role", expected='{ kind = "capacitor" } or { role = "bleeder" }')
+        has.wrong((), f"'{key}' says neither kind nor role", expected='{ kind = "capacitor" } or { role = "bleeder" }')
     told = tuple((key, Text(value=word, at=0), 0) for key, word in words.items() if word is not None)
     call = Call(name="count", arguments=(), options=told, at=0)
     return Judged(measure=composite(text_of(call), subject, "1"), options={}, subject=subject, value=call)
+
+
+def _alone(table: Table, inner: Table) -> None:
+    """``has-no`` says how many there are: none."""
+    if "has" in inner.data:
+        inner.wrong("has", "'has' beside 'has-no'", on="key", do="write two rules")
+    for key in ("at-least", "at-most", "equals", "one-of"):
+        if key in table.data:
+            table.wrong(key, f"'{key}' beside 'has-no'", on="key", do="leave it out: there must be none")

@@ -69,11 +69,15 @@ LINES: Final[Mapping[str, str]] = {
     "level": 'level = "warning"',
     "name": 'name = "our-rules"',
     "subject": 'subject = "supply pin"',
+    "has-no": 'has-no = { kind = "capacitor", within = "the net" }',
     "has": 'has = { kind = "capacitor", within = "the net" }',
     "circuit": 'circuit = "R1 10k 1% : +3V3, NRST"',
     "outcome": 'outcome = "holds"',
 }
 """What a key that is missing could be."""
+CHOICES: Final[Shape] = {
+    "anyOf": [NUMBER, {"type": "array", "items": NUMBER, "minItems": 1, "maxItems": 200}],
+}
 LIMIT: Final[Shape] = {
     "anyOf": [
         NUMBER,
@@ -90,11 +94,12 @@ RULE: Final[Mapping[str, tuple[str, Shape]]] = {
     "measure": ("What is measured.", TEXT),
     "with": ("Options of the measure.", {"type": "object"}),
     "subject": ("What the rule is held against, where the measure leaves a choice.", TEXT),
-    "every": ("What must have something: { subject = …, has = { … } }.", {"type": "object"}),
+    "every": ("What must have something, or not: { subject = …, has = { … } } or { subject = …, has-no = { … } }.",
+              {"type": "object"}),
     "at-least": ("Lower limit: a quantity, a name that is looked up, an expression, or a table by a word.", LIMIT),
     "at-most": ("Upper limit: a quantity, a name that is looked up, an expression, or a table by a word.", LIMIT),
-    "equals": ("The number that it must be.", NUMBER),
-    "one-of": ("Words, one of which it must be.", TEXTS),
+    "equals": ("The number that it must be, at nominal values.", NUMBER),
+    "one-of": ("Words or numbers, one of which it must be; numbers are judged at nominal values.", CHOICES),
     "bounds": ("worst (default): over all cases; nominal: as marked; yield: on a share of the boards.", one_of(BOUNDS)),
     "passing": ("With bounds = yield: the share of boards that must pass, such as '99.9 %'.", NUMBER),
     "given": ("Numbers that the rule brings, or asks the project for: { hold_time = \"ask\" }.",

@@ -11,27 +11,25 @@ from rcrules.quantities import SAMPLES, QuantityError, Spread, parse_quantity
 from rcrules.rulebook._keys import RULE as RULE_KEYS
 from rcrules.rulebook._model import Limit
 from rcrules.rulebook._numbers import NAME, WORD, Names, looked_up
-from rcrules.rulebook._selection import KEYS
+from rcrules.rulebook._selection import KEYS, MAX_LIST
 from rcrules.rulebook._value import NUMBER_FACTS, compiled
-from rcrules.tomlfile import Table
+from rcrules.tomlfile import Path, Table
 
 Kind = Literal["at-least", "at-most"]
 _LIKE_EXPRESSION: Final = re.compile(r"[()*]|\s[+-]\s|[A-Za-z_]\w*\s*/|/\s*[a-z_]\w*_")
-_EQUAL: Final = 1e-9
-"""Part by which a number may differ from the one that it must equal."""
 
 
 def limits(table: Table, measure: Measure, names: Names, measures: Mapping[str, Measure]) -> tuple[Limit, ...]:
-    """``at-least``, ``at-most`` and ``equals``; one of them must be there."""
+    """``at-least``, ``at-most``, ``equals`` and numbers under ``one-of``; one of them must be there."""
     kinds: tuple[Kind, ...] = ("at-least", "at-most")
     there = [kind for kind in kinds if kind in table.data]
-    if "equals" in table.data:
-        if there:
-            table.wrong(there[0], f"'{there[0]}' beside 'equals'", on="key", do="give one of the two")
-        return _equal(table, measure)
+    single = [key for key in SINGLE if key in table.data]
+    if single:
+        for key in (*there, *single[1:]):
+            table.wrong(key, f"'{key}' beside '{single[0]}'", on="key", do="give one of the two")
+        return _chosen(table, single[0], measure)
     if not there and "every" in table.data:
-        one = Spread(low=1.0, nominal=1.0, high=1.0, unit="1")
-        return (Limit(kind="at-least", text="1", value=one),)
+        return (_existing(table),)
     if not there and not table.misspelt(LIMITS, _KNOWN):
         where, sample = "measure" if "measure" in table.data else "value", SAMPLES.get(measure.unit, "5")
         table.wrong(where, "the rule has no limit", expected=_EXPECTED, do=f'at-most = "{sample}"')
@@ -45,20 +43,33 @@ def limits(table: Table, measure: Measure, names: Names, measures: Mapping[str, 
 
 
 _BY: Final = 'at-most = { by = "mode", standard = "…", fast = "…" } looks the word up on the board'
-LIMITS: Final = ("at-least", "at-most", "equals", "one-of")
+SINGLE: Final = ("equals", "one-of")
+LIMITS: Final = ("at-least", "at-most", *SINGLE)
 _KNOWN: Final = (*RULE_KEYS, *KEYS)
 _EXPECTED: Final = "at-least, at-most or equals"
 
 
-def _equal(table: Table, measure: Measure) -> tuple[Limit, ...]:
-    """Both limits, so close that only rounding lies between."""
-    spread = _amount(table, "equals", measure, "equals")
-    if spread is None:
+def _existing(table: Table) -> Limit:
+    """Of ``every``: at least one, or with ``has-no`` none."""
+    inner = table.data["every"]
+    none = isinstance(inner, Mapping) and "has-no" in inner
+    number = 0.0 if none else 1.0
+    spread = Spread(low=number, nominal=number, high=number, unit="1")
+    return Limit(kind="at-most" if none else "at-least", text=f"{number:.0f}", value=spread)
+
+
+def _chosen(table: Table, key: str, measure: Measure) -> tuple[Limit, ...]:
+    """The numbers, one of which it must be."""
+    value = table.data[key]
+    listed = key == "one-of" and isinstance(value, list)
+    items, paths = (value, [(key, number) for number in range(len(value))]) if listed else ([value], [(key,)])
+    found = [spread for path in paths[:MAX_LIST] if (spread := _amount(table, path, measure, key)) is not None]
+    if not items or len(items) > MAX_LIST:
+        table.wrong(key, f"'{key}' must be 1 to {MAX_LIST} numbers", found=f"{len(items)}")
+    if len(found) < len(items) or not items:
         return ()
-    slack = _EQUAL * abs(spread.nominal)
-    text = str(table.data["equals"])
-    least, most = (replace(spread, low=end, nominal=end, high=end) for end in (spread.low - slack, spread.low + slack))
-    return Limit(kind="at-least", text=text, value=least), Limit(kind="at-most", text=text, value=most)
+    text = " or ".join(map(str, items))
+    return (Limit(kind="one-of", text=text, choices=tuple(item.nominal for item in found), unit=measure.unit),)
 
 
 def _is_expression(text: str) -> bool:
@@ -84,7 +95,7 @@ def _limit(table: Table, kind: Kind, measure: Measure, names: Names, measures: M
     return Limit(kind=kind, text=str(value), value=spread) if spread else None
 
 
-def _amount(table: Table, key: str, measure: Measure, kind: str) -> Spread | None:
+def _amount(table: Table, key: str | Path, measure: Measure, kind: str) -> Spread | None:
     """A quantity of the measure's dimension."""
     earlier = len(table.problems.mistakes)
     spread = table.quantity(key, measure.unit)
@@ -96,10 +107,11 @@ def _amount(table: Table, key: str, measure: Measure, kind: str) -> Spread | Non
     return spread
 
 
-def _name_measure(table: Table, key: str, measure: Measure) -> None:
+def _name_measure(table: Table, key: str | Path, measure: Measure) -> None:
     """Tell a wrong dimension by the measure: ``'delay' is a time, '3 V' is a voltage``."""
     mistake = table.problems.mistakes.pop()
-    problem = mistake.problem.replace(f"'{key}' is a", f"'{measure.name}' is a", 1)
+    name = key if isinstance(key, str) else key[0]
+    problem = mistake.problem.replace(f"'{name}' is a", f"'{measure.name}' is a", 1)
     mistake = replace(mistake, problem=problem)
     table.problems.mistakes.append(mistake)
 

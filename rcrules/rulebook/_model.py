@@ -77,10 +77,14 @@ class Term:
 class Limit:
     """A bound of a rule: a number, a name that is looked up at pin, net, part, settings, given, or an expression."""
 
-    kind: Literal["at-least", "at-most"]
+    kind: Literal["at-least", "at-most", "one-of"]
     text: str
     value: Spread | None = None
     name: str | None = None
+    choices: tuple[float, ...] = ()
+    """Of ``one-of`` and ``equals``: the numbers, SI, one of which it must be."""
+    unit: str = ""
+    """Of the choices."""
     table: tuple[str, Mapping[str, Spread]] | None = None
     """``{ by = "mode", standard = …, fast = … }``: the word looked up, and the limit by word."""
     expression: Expression | None = None

@@ -88,20 +88,21 @@ def _subjects(measures: Mapping[str, Measure]) -> tuple[str, ...]:
 
 
 def _every() -> dict[str, Any]:
-    has = {key: one_of(choices) for key, choices in HAS.items()}
+    what = {
+        "type": "object",
+        "properties": {key: one_of(choices) for key, choices in HAS.items()},
+        "additionalProperties": False,
+        "anyOf": [{"required": ["kind"]}, {"required": ["role"]}],
+    }
     return {
         "type": "object",
         "properties": {
             "subject": {"description": "What must have it.", **one_of(SUBJECTS)},
-            "has": {
-                "description": "What must be there, at least once.",
-                "type": "object",
-                "properties": has,
-                "additionalProperties": False,
-                "anyOf": [{"required": ["kind"]}, {"required": ["role"]}],
-            },
+            "has": {"description": "What must be there, at least once, or as often as the limits say.", **what},
+            "has-no": {"description": "What must not be there.", **what},
         },
-        "required": ["subject", "has"],
+        "required": ["subject"],
+        "oneOf": [{"required": ["has"]}, {"required": ["has-no"]}],
         "additionalProperties": False,
     }
 

@@ -43,10 +43,7 @@ def sentence(rule: Rule) -> str:
 
 
 def _bounds(rule: Rule) -> str:
-    """``at least 10 ms and at most 1 s``; two limits of one text are an equality."""
-    texts = {limit.text for limit in rule.limits}
-    if len(rule.limits) == 2 and len(texts) == 1:
-        return texts.pop()
+    """``at least 10 ms and at most 1 s``."""
     return " and ".join(_limit(rule, limit) for limit in rule.limits)
 
 
@@ -94,6 +91,8 @@ def _shown(rule: Rule, key: str, value: OptionValue) -> str:
 
 
 def _limit(rule: Rule, limit: Limit) -> str:
+    if limit.choices:
+        return limit.text
     words = limit.kind.replace("-", " ")
     if limit.expression is not None:
         return f"{words} {text_of(limit.expression)}"

@@ -167,9 +167,7 @@ class Table:
     def parsed(self, key: str | Path, parse: Callable[[str], Read], expected: str) -> Read | None:
         """What ``parse`` makes of a text; its QuantityError becomes a mistake at the character."""
         below = key if isinstance(key, tuple) else (key,)
-        value: Any = self.data
-        for step in below:
-            value = value.get(step) if isinstance(value, Mapping) else value[step]
+        value = self._below(below)
         if value is None or not self._is_text(below, value, f"{expected} in quotes"):
             return None
         try:
@@ -185,7 +183,7 @@ class Table:
     ) -> Spread | None:
         """A quantity of a unit (None = any), within bounds; a plain number where the unit is 1."""
         below = key if isinstance(key, tuple) else (key,)
-        value = self.data.get(str(below[0])) if len(below) == 1 else None
+        value = self._below(below)
         if isinstance(value, int | float) and not isinstance(value, bool) and unit in ("1", None):
             spread = self._number(below, value)
         else:
@@ -199,6 +197,13 @@ class Table:
             self.wrong(below, f"'{below[0]}' must not be above {show(most, spread.unit, 5)}", found=self.found(below))
             return None
         return spread
+
+    def _below(self, path: Path) -> Any:
+        """What stands at a path; None where a key of it is missing."""
+        value: Any = self.data
+        for step in path:
+            value = value.get(step) if isinstance(value, Mapping) else value[step]
+        return value
 
     def _number(self, below: Path, value: float) -> Spread | None:
         if abs(value) < 1e300 and isfinite(value):

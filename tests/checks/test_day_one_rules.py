@@ -225,9 +225,76 @@ def test_every_supply_above_60_v_has_a_bleeder() -> None:
     assert outcomes(BLEEDER, bus + "R1 100k : HV, GND", project) == {"HV": "holds"}
 
 
+CERTAIN = """
+id = "pull-ups-are-of-our-stock"
+level = "note"
+role = ["bus-pull-up"]
+value = "resistance"
+one-of = ["2.2 kohm", "4.7 kohm", "10 kohm"]
+"""
+
+
+@pytest.mark.parametrize(("ohms", "outcome"), [("4k7", "holds"), ("5k1", "fails"), ("10k", "holds")])
+def test_a_number_must_be_one_of_some(ohms: str, outcome: str) -> None:
+    """As marked: the tolerance of a part does not count."""
+    circuit = f"R1 {ohms} 5% : +3V3, SDA\nU1 x : SDA open-collector SDA, VDD power-in +3V3, GND power-in GND\n"
+    circuit += "U2 y : SDA bidirectional SDA, VDD power-in +3V3, GND power-in GND"
+    project = FED + '[net."SDA"]\nwiring-capacitance = "100 pF"\n'
+    assert outcomes(CERTAIN, circuit, project) == {"R1": outcome}
+
+
+WINDOW = """
+id = "cpu-reset-lifts-soon-after-the-flash"
+level = "error"
+net = "CPU_RST"
+measure = "delay"
+with = { event = "power-up", to = "1.5 V" }
+at-least = "delay(event = 'power-up', to = '1.5 V', at = 'FLASH_RST') + 1 ms"
+at-most = "longest"
+given = { longest = "11 ms" }
+"""
+
+
+@pytest.mark.parametrize(("cpu", "outcome"), [("11k", "fails"), ("15k", "holds"), ("22k", "fails")])
+def test_a_limit_over_joint_parameters_stands_beside_another(cpu: str, outcome: str) -> None:
+    """1 µF and 10 kΩ reach 1.5 V of 3.3 V after 6.06 ms: 15 kΩ after 9.1 ms, in the window; 22 kΩ after 13.3 ms."""
+    assert outcomes(WINDOW, RESETS.format(cpu=cpu), FED) == {"CPU_RST": outcome}
+
+
+POWER = """
+id = "shunts-stay-cool"
+level = "error"
+subject = "resistor"
+value = "(1 A)^2 * resistance"
+at-most = "100 mW"
+"""
+
+
+def test_powers_are_of_the_dimension_that_they_say() -> None:
+    """1 A through 90 mΩ ± 1 % makes at most 90.9 mW."""
+    circuit = "R1 {ohms} 1% : +3V3, A\nR2 10k 1% : A, GND\nU1 x : VDD power-in +3V3, GND power-in GND"
+    assert outcomes(POWER, circuit.format(ohms="0R09"), FED)["R1"] == "holds"
+    assert outcomes(POWER, circuit.format(ohms="0R12"), FED)["R1"] == "fails"
+
+
 @pytest.mark.parametrize(
     "text",
-    [DIVIDER, POLARISED, LATER, BUS, BLEED, TIMING, TANTALUM, CONTACT, SUPPLIED, ONE_PULL_UP, BLEEDER],
+    [
+        DIVIDER,
+        POLARISED,
+        LATER,
+        BUS,
+        BLEED,
+        TIMING,
+        TANTALUM,
+        CONTACT,
+        SUPPLIED,
+        ONE_PULL_UP,
+        BLEEDER,
+        CERTAIN,
+        WINDOW,
+        POWER,
+    ],
 )
 def test_each_is_at_most_ten_lines(text: str) -> None:
     assert len(text.strip().splitlines()) <= 10

@@ -46,3 +46,54 @@ def test_an_open_drain_pin_may_be_told_by_the_project() -> None:
     circuit = "U1 q : VDD power-in +3V3, ALERT bidirectional ALERT\nU2 q : IN input ALERT\nR1 10k : +3V3, ALERT"
     assert outcomes(rule, circuit, FED) == {}
     assert outcomes(rule, circuit, f'{FED}[pin."U1.ALERT"]\nkind = "open-drain"\n') == {"ALERT": "holds"}
+
+
+RESET = HEAD + 'every = { subject = "reset pin", has = { kind = "capacitor", within = "the net" } }'
+
+
+def test_every_reset_pin_is_met_whether_a_network_is_there_or_not() -> None:
+    circuit = """
+    U1 q : VDD power-in +3V3, GND power-in GND, NRST input NRST
+    U2 q : VDD power-in +3V3, GND power-in GND, RESET# input BARE
+    U3 q : VDD power-in +3V3, GND power-in GND, RST input HELD, IN input BARE
+    U4 supervisor : VCC power-in +3V3, GND power-in GND, RESET output HELD
+    R1 10k : +3V3, NRST
+    C1 100nF : NRST, GND
+    """
+    assert outcomes(RESET, circuit, FED) == {"NRST": "holds", "BARE": "fails", "HELD": "fails"}
+
+
+def test_a_measure_of_pins_can_be_taken_at_reset_pins() -> None:
+    rule = HEAD + 'subject = "reset pin"\nmeasure = "pin_voltage"\nat-most = "{limit}"'
+    circuit = "U1 q : VDD power-in +3V3, GND power-in GND, NRST input NRST, IN input IN\n"
+    circuit += "R1 10k : +3V3, NRST\nC1 100nF : NRST, GND\nR2 10k : +3V3, IN\nC2 100nF : IN, GND"
+    assert outcomes(rule.format(limit="3.4 V"), circuit, FED) == {"NRST": "holds"}
+    assert outcomes(rule.format(limit="3 V"), circuit, FED) == {"NRST": "fails"}
+
+
+CONTACT = HEAD + 'every = { subject = "contact pin", has-no = { kind = "capacitor", within = "the net" } }'
+
+
+def test_no_contact_pin_has_a_capacitor_on_its_net() -> None:
+    circuit = """
+    U1 q : VDD power-in +3V3, GND power-in GND, A input A, B input B, C input C
+    SW1 button : A, GND
+    SW2 button : KEY, GND
+    SW3 button : C, GND
+    R1 10k : +3V3, A
+    C1 100nF : A, GND
+    R2 10k : +3V3, B
+    C2 100nF : B, GND
+    R3 1k : B, KEY
+    """
+    assert outcomes(CONTACT, circuit, FED) == {"A": "fails", "KEY": "holds", "C": "holds"}
+
+
+def test_kind_fed_tells_pins_that_no_network_feeds() -> None:
+    rule = HEAD + 'every = { subject = "pin", has = { kind = "capacitor", within = "the net" } }\nkind-fed = "adc"'
+    circuit = """
+    U1 q : VDD power-in +3V3, GND power-in GND, AIN0 input S0, AIN1 input S1, DIN input D
+    R1 1k : X, S0
+    C1 100nF : S0, GND
+    """
+    assert outcomes(rule, circuit, FED) == {"S0": "holds", "S1": "fails"}
