@@ -16,10 +16,16 @@ def count(number: int, word: str, plural: str = "") -> str:
     return f"{number} {word if number == 1 else plural or word + 's'}"
 
 
+AT_ONCE: Final = 1e-12
+"""Times shorter than this are at once; the document keeps their numbers. [s]"""
+
+
 def number(value: float | None, unit: str, *, percent: bool = False) -> str:
     """A number with its unit; a ratio in per cent where the rule speaks so."""
     if value is None or value != value:
         return "not defined"
+    if unit == "s" and 0.0 < value < AT_ONCE:
+        return f"under {show(AT_ONCE, unit)}"
     return show(100 * value, "1") + " %" if percent else show(value, unit)
 
 

@@ -162,6 +162,17 @@ def test_what_is_packed_comes_when_it_is_opened_or_seen(browser: Browser, tmp_pa
     page.close()
 
 
+def test_on_paper_what_holds_stays_closed_and_the_rest_opens(browser: Browser, tmp_path: Path) -> None:
+    page, told = opened(browser, DOCUMENT, tmp_path)
+    page.emulate_media(media="print")
+    page.pdf()
+    holding, failing = page.locator("details.finding.holds"), page.locator("details.finding.undecided")
+    assert failing.first.locator("dl").first.is_visible()
+    assert not holding.first.locator("dl").first.is_visible()
+    assert told == []
+    page.close()
+
+
 def lands(page: Page, link: Locator) -> bool:
     """Whether a link leads to its block, however much of the page was not laid out before."""
     link.click()

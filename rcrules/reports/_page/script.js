@@ -89,7 +89,7 @@
 
   let closed = [];
   addEventListener("beforeprint", () => {
-    closed = [...document.querySelectorAll("details:not([open]):not(:has(> .packed))")];
+    closed = [...document.querySelectorAll("details:not([open], .holds, .holds *):not(:has(> .packed))")];
     for (const item of closed) item.open = true;
   });
   addEventListener("afterprint", () => {
