@@ -87,10 +87,22 @@ DIELECTRICS: Final = (
     "ceramic",
 )
 """Technologies of capacitors that have no letter code."""
+TECHNOLOGIES: Final = ("ceramic", "film", "mica", "aluminium", "tantalum", "niobium", "polymer")
+"""Families of the dielectrics."""
 DIELECTRIC_CODE: Final = re.compile(
     r"[XYZ][2456789][A-FLPRSTUV]|[CBLAMPRSTVU][0-3678][GHJKLMN]|2[BCDEFRX][12346]|NP[0O]|C[0O]G|CG[0O]|C[GHJ]|UJ|SL"
 )
 """Letter codes of ceramics: EIA-198 (classes 2 and 1), IEC 60384, and their common spellings, in capitals."""
+
+
+def technology(dielectric: str) -> str:
+    """``ceramic`` of ``X7R``, ``film`` of ``PP film``; '' where it is not known."""
+    last = dielectric.rpartition(" ")[2]
+    if last in TECHNOLOGIES:
+        return last
+    return "ceramic" if DIELECTRIC_CODE.fullmatch(dielectric.upper()) else ""
+
+
 LIMITS: Final = ("file-size", "parts", "connections", "nets")
 """What of one input is limited: its size in MiB, and what it lists."""
 NUMBER_CODES: Final[Mapping[str, tuple[str, ...]]] = {

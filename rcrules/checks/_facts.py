@@ -1,17 +1,56 @@
-"""Facts that the key ``when`` compares: supplies that feed a subject, the voltage held across it, its rating."""
+"""Facts that the key ``when`` compares: supplies that feed a subject, the voltage across it, what its parts are."""
 
 from collections.abc import Iterable
 
 from rcrules.checks._views import View
 from rcrules.networks import Board, Held
-from rcrules.parts import Known
+from rcrules.parts import Known, RatedPart
 from rcrules.quantities import Spread
+from rcrules.vocabulary import technology
 
 
 def facts(view: View, board: Board) -> dict[str, float]:
-    """``supply_low`` … ``rated_voltage_high`` in volts; a fact that is not known is left out."""
+    """``supply_low`` … ``tolerance``, SI; a fact that is not known is left out."""
     supplies = [held for held in _held(view.fed_from, board) if held.kind == "supply"]
-    return {**_ends("supply", _hull(supplies)), **_ends("voltage", _across(view, board)), **_rating(view)}
+    held = {**_ends("supply", _hull(supplies)), **_ends("voltage", _across(view, board))}
+    return {**held, **_rating(view), **_of_parts(view)}
+
+
+def words(view: View) -> dict[str, frozenset[str]]:
+    """Facts that are words, each with all that the subject has; '' among them = one that is not known."""
+    capacitors = [part.dielectric or "" for part in view.parts if part.kind == "capacitor"]
+    return {
+        "dielectric": frozenset(capacitors),
+        "technology": frozenset(map(technology, capacitors)),
+        "size": frozenset(part.size for part in view.parts),
+        "sheet": frozenset(part.part.sheet for part in view.parts),
+        "kind": frozenset(part.kind for part in view.parts),
+        "role": frozenset(view.roles),
+        "kind_fed": frozenset(view.kinds_fed),
+        "certainty": frozenset((view.certainty,)),
+        "polarised": frozenset("yes" if part.polarised else "no" for part in view.parts if part.kind == "capacitor"),
+    }
+
+
+def _of_parts(view: View) -> dict[str, float]:
+    """Of the parts that have a value: the largest value of a kind, the widest tolerance, the weakest power rating."""
+    valued = [(part, part.value.si) for part in view.parts if isinstance(part.value, Known)]
+    found: dict[str, list[float]] = {
+        "resistance": [si for part, si in valued if part.kind == "resistor"],
+        "capacitance": [si for part, si in valued if part.kind == "capacitor"],
+    }
+    largest = {name: max(values) for name, values in found.items() if values}
+    tolerances = [tolerance(part) for part, _ in valued]
+    if tolerances and None not in tolerances:
+        largest["tolerance"] = max(item for item in tolerances if item is not None)
+    powers = [part.rated_power.si for part, _ in valued if isinstance(part.rated_power, Known)]
+    return largest | ({"rated_power": min(powers)} if powers else {})
+
+
+def tolerance(part: RatedPart) -> float | None:
+    """The wider side of a tolerance that an input gives."""
+    shares = [share for share in part.shares if share.name == "tolerance" and share.given]
+    return max((max(-share.low, share.high) for share in shares), default=None)
 
 
 def unknown(view: View, board: Board) -> list[Held]:
@@ -64,7 +103,8 @@ def _between(lower: Spread | None, upper: Spread | None) -> Spread | None:
 def _rating(view: View) -> dict[str, float]:
     """The weakest rating of the subject's capacitors."""
     ratings = [part.rated_voltage.si for part in view.parts if isinstance(part.rated_voltage, Known)]
-    return {f"rated_voltage_{end}": min(ratings) for end in ("low", "nominal", "high")} if ratings else {}
+    names = ("rated_voltage", *(f"rated_voltage_{end}" for end in ("low", "nominal", "high")))
+    return dict.fromkeys(names, min(ratings)) if ratings else {}
 
 
 def _ends(name: str, spread: Spread | None) -> dict[str, float]:

@@ -4,7 +4,7 @@ from collections.abc import Collection, Mapping, Sequence
 from pathlib import PurePath
 from typing import Final
 
-from rcrules.checks._conditions import FACT_WORDS, compared
+from rcrules.checks._conditions import compared, missing
 from rcrules.findings import Json
 from rcrules.inventory import place_json
 from rcrules.project import Project
@@ -50,16 +50,15 @@ def unclear(rules: Sequence[Rule], counts: Mapping[str, int]) -> list[Json]:
             key = (rule.pack.name, rule.measure.subject, counts[rule.id], compared(rule.selection))
             together.setdefault(key, []).append(rule)
     return [
-        {"place": {}, "text": _left_out(members, subject, number, missing)}
-        for (_, subject, number, missing), members in together.items()
+        {"place": {}, "text": _left_out(members, subject, number, facts)}
+        for (_, subject, number, facts), members in together.items()
     ]
 
 
-def _left_out(rules: Sequence[Rule], subject: str, number: int, missing: tuple[str, ...]) -> str:
+def _left_out(rules: Sequence[Rule], subject: str, number: int, facts: tuple[str, ...]) -> str:
     """``voltage-within-rating leaves out 34 capacitors: their rated voltage is not known (…)``."""
     names, verb = " and ".join(rule.id for rule in rules), "leaves out" if len(rules) == 1 else "each leave out"
-    known = " or ".join(FACT_WORDS[name][0] for name in missing)
-    sources = " or ".join(FACT_WORDS[name][1] for name in missing)
+    known, sources = missing(facts)
     subjects = subject if number == 1 else f"{subject}s"
     return f"{names} {verb} {number} {subjects}: {known} not known ({sources} can tell)"
 

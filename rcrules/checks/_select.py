@@ -4,7 +4,7 @@ from collections.abc import Callable, Iterable, Mapping
 from fnmatch import fnmatchcase
 from typing import Final
 
-from rcrules.checks._facts import facts
+from rcrules.checks._facts import facts, words
 from rcrules.checks._subject import Subject
 from rcrules.checks._views import View
 from rcrules.names import has_token
@@ -29,7 +29,7 @@ def matches(selection: Selection, view: View, board: Board) -> bool | None:
         return False
     any_of = [matches(item, view, board) for item in selection.any_of] or [True]
     excluded = [matches(item, view, board) for item in selection.exclude]
-    when = True if selection.when is None else holds(selection.when, facts(view, board))
+    when = True if selection.when is None else holds(selection.when, facts(view, board), words(view))
     one = True if True in any_of else None if None in any_of else False
     none = False if True in excluded else None if None in excluded else True
     together = (one, none, when)

@@ -1,6 +1,7 @@
 """Step 8: rule packs in TOML in, compiled rules out."""
 
-from rcrules.rulebook._condition import FACTS, facts_of, holds
+from rcrules.rulebook._condition import facts_of, holds
+from rcrules.rulebook._facts import FACTS, WORDS
 from rcrules.rulebook._model import (
     Comparison,
     Condition,
@@ -12,6 +13,7 @@ from rcrules.rulebook._model import (
     Rule,
     Selection,
     Term,
+    Worded,
 )
 from rcrules.rulebook._packs import compile_pack, load, packs, packs_folder, shipped
 from rcrules.rulebook._schema import schema
@@ -23,6 +25,7 @@ __all__ = [
     "COUNTS",
     "FACTS",
     "NUMBER_FACTS",
+    "WORDS",
     "WORD_FACTS",
     "Comparison",
     "Condition",
@@ -34,6 +37,7 @@ __all__ = [
     "Rule",
     "Selection",
     "Term",
+    "Worded",
     "check_settings",
     "compile_pack",
     "dict_of",

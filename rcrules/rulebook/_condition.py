@@ -1,27 +1,27 @@
-"""The key ``when``: comparisons of facts with quantities, joined by ``and`` and ``or``, turned by ``not``.
+"""The key ``when``: comparisons of facts with quantities and words, joined by ``and`` and ``or``, turned by ``not``.
 
 condition  = both { "or" both }          both = term { "and" term }
-term       = "not" term | "(" condition ")" | operand sign operand
+term       = "not" term | "(" condition ")" | operand sign operand | name of a fact ("=" | "!=") text in quotes
 sign       = ">=" | "<=" | ">" | "<"     operand = name of a fact | quantity
 """
 
 import re
 from collections.abc import Iterator, Mapping
 from dataclasses import replace
+from fnmatch import fnmatchcase
+from types import MappingProxyType
 from typing import Final, Literal
 
 from rcrules.quantities import QuantityError, parse_quantity
-from rcrules.rulebook._model import Comparison, Condition, Junction
+from rcrules.rulebook._facts import FACTS, WORDS
+from rcrules.rulebook._model import Comparison, Condition, Junction, Worded
 from rcrules.tomlfile import cut, guess, listed, quantity_name
 
-FACTS: Final[Mapping[str, str]] = {
-    f"{fact}_{end}": "V" for fact in ("supply", "voltage", "rated_voltage") for end in ("low", "nominal", "high")
-}
-"""Facts by name, with their units: supplies that feed the subject, voltage across or at it, rated voltage."""
-
+_ALL: Final = (*FACTS, *WORDS)
 _LONGEST: Final = 400
 _DEEPEST: Final = 8
-_MARK: Final = re.compile(r"(\band\b|\bor\b|\bnot\b|>=|<=|>|<|\(|\))")
+_MARK: Final = re.compile(r"\"[^\"\n]*\"|'[^'\n]*'|\band\b|\bor\b|\bnot\b|>=|<=|!=|=|>|<|\(|\)")
+_TEXT: Final = re.compile(r"\"([^\"\n]*)\"|'([^'\n]*)'")
 _NAME: Final = re.compile(r"[A-Za-z_][A-Za-z0-9_]*")
 
 
@@ -38,11 +38,18 @@ def parse_condition(text: str) -> Condition:
     return found
 
 
-def holds(condition: Condition, facts: Mapping[str, float]) -> bool | None:
-    """Whether a condition holds; None when that hangs on a fact that is not known."""
+def holds(
+    condition: Condition, facts: Mapping[str, float], words: Mapping[str, frozenset[str]] = MappingProxyType({})
+) -> bool | None:
+    """Whether a condition holds; None when that hangs on a fact that is not known.
+
+    words: of each fact that is a word those that the subject has; '' among them = one that is not known.
+    """
     if isinstance(condition, Comparison):
         return _compare(condition, facts)
-    found = [holds(term, facts) for term in condition.terms]
+    if isinstance(condition, Worded):
+        return _is_word(condition, words.get(condition.fact, frozenset({""})))
+    found = [holds(term, facts, words) for term in condition.terms]
     decisive = condition.word == "or"
     if decisive in found:
         return decisive
@@ -53,6 +60,8 @@ def facts_of(condition: Condition) -> Iterator[str]:
     """Names of the facts that a condition compares."""
     if isinstance(condition, Comparison):
         yield from (side for side in (condition.left, condition.right) if isinstance(side, str))
+    elif isinstance(condition, Worded):
+        yield condition.fact
     else:
         for term in condition.terms:
             yield from facts_of(term)
@@ -73,6 +82,16 @@ def _compare(condition: Comparison, facts: Mapping[str, float]) -> bool | None:
     return left < right
 
 
+def _is_word(condition: Worded, words: frozenset[str]) -> bool | None:
+    """``PP film`` is a ``film``."""
+    is_one = any(
+        word == condition.word or word.endswith(f" {condition.word}") or fnmatchcase(word, condition.word)
+        for word in words
+        if word
+    )
+    return None if not is_one and "" in words else is_one is condition.equal
+
+
 _OPPOSITES: Final[Mapping[str, Literal["<", "<=", ">", ">="]]] = {">=": "<", "<": ">=", "<=": ">", ">": "<="}
 
 
@@ -80,6 +99,8 @@ def _turned(condition: Condition) -> Condition:
     """What holds where the condition does not; a fact that is not known leaves both open."""
     if isinstance(condition, Comparison):
         return replace(condition, sign=_OPPOSITES[condition.sign])
+    if isinstance(condition, Worded):
+        return replace(condition, equal=not condition.equal)
     word: Literal["and", "or"] = "or" if condition.word == "and" else "and"
     return Junction(word=word, terms=tuple(map(_turned, condition.terms)))
 
@@ -96,6 +117,8 @@ class _Reader:
         """Offset of a mark, the words before it, the mark (None = the end)."""
         begin = 0
         for match in _MARK.finditer(text):
+            if match[0][0] in "\"'":
+                continue
             yield match.start(), text[begin : match.start()], match[0]
             begin = match.end()
         yield len(text), text[begin:], None
@@ -136,9 +159,12 @@ class _Reader:
             return found
         return self._comparison()
 
-    def _comparison(self) -> Comparison:
-        left, left_unit = self._operand()
+    def _comparison(self) -> Comparison | Worded:
         sign, start = self.mark, self.at - len(self._words)
+        name = self._words.strip()
+        if name in WORDS or sign in ("=", "!="):
+            return self._word(name)
+        left, left_unit = self._operand()
         if sign not in (">=", "<=", ">", "<"):
             raise QuantityError("no comparison", at=self.at, expected="'>=', '<=', '>' or '<'")
         self._next()
@@ -150,6 +176,33 @@ class _Reader:
             raise QuantityError(problem, at=start, length=self.at - start)
         return Comparison(left=left, right=right, sign=sign)  # type: ignore[arg-type]  # tested above
 
+    def _word(self, name: str) -> Worded:
+        """A fact that is a word, its sign, and a text in quotes."""
+        start, sign = self.at - len(self._words.lstrip()), self.mark
+        if name not in WORDS:
+            told = (
+                f"'{cut(name)}' is a number"
+                if name in FACTS
+                else f"no fact is called '{cut(name)}'{guess(name, WORDS)}"
+            )
+            expected = "'>=', '<=', '>' or '<'" if name in FACTS else listed(WORDS)
+            raise QuantityError(told, at=start, length=max(len(name), 1), expected=expected)
+        if sign not in ("=", "!="):
+            problem, expected = f"'{name}' is a word", f"{name} = '…' or {name} != '…'"
+            raise QuantityError(problem, at=start, length=len(name), expected=expected)
+        self._next()
+        words = self._words.strip()
+        begin = self.at - len(self._words.lstrip())
+        text, choices = _TEXT.fullmatch(words), WORDS[name]
+        if text is None:
+            problem = f"'{cut(words)}' is no text in quotes" if words else "a text is missing"
+            raise QuantityError(problem, at=begin, length=max(len(words), 1), expected=f"{name} {sign} '…'")
+        word = text[1] or text[2] or ""
+        if not word or (choices and word not in choices):
+            problem = f"'{cut(word)}' is not known as '{name}'{guess(word, choices)}"
+            raise QuantityError(problem, at=begin + 1, length=max(len(word), 1), expected=listed(choices) or "a word")
+        return Worded(fact=name, word=word, equal=sign == "=")
+
     def _operand(self) -> tuple[str | float, str]:
         """A fact or number, with its unit."""
         words = self._words.strip()
@@ -157,8 +210,8 @@ class _Reader:
         if words in FACTS:
             return words, FACTS[words]
         if not words or _NAME.fullmatch(words):
-            problem = f"no fact is called '{cut(words)}'{guess(words, FACTS)}" if words else "a fact is missing"
-            raise QuantityError(problem, at=start, length=max(len(words), 1), expected=listed(FACTS))
+            problem = f"no fact is called '{cut(words)}'{guess(words, _ALL)}" if words else "a fact is missing"
+            raise QuantityError(problem, at=start, length=max(len(words), 1), expected=listed(_ALL))
         try:
             spread = parse_quantity(words)
         except QuantityError as error:

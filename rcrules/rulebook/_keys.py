@@ -44,7 +44,7 @@ SELECTION: Final[Mapping[str, tuple[str, Shape]]] = {
     "dielectric": ("Dielectrics of capacitors, such as X7R, C0G, tantalum.", TEXTS),
     "certainty": ("Whether the role was recognised for sure.", some_of(CERTAINTIES)),
     "polarised": ("Whether the capacitor is polarised.", FLAG),
-    "when": ("A condition over facts, such as 'supply_high >= 1.8 V'.", TEXT),
+    "when": ("A condition over facts, such as \"supply_high >= 1.8 V and technology = 'ceramic'\".", TEXT),
 }  # fmt: skip
 """Key -> meaning and shape; all keys that are given must match."""
 NESTED: Final[Mapping[str, str]] = {

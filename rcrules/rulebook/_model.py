@@ -23,6 +23,16 @@ class Comparison:
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
+class Worded:
+    """``dielectric = 'X7R'``: a fact that is a word is one, or with ``!=`` is none."""
+
+    fact: str
+    word: str
+    """A glob where it holds a star."""
+    equal: bool = True
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
 class Junction:
     """Conditions joined by ``and`` or ``or``."""
 
@@ -30,7 +40,7 @@ class Junction:
     terms: "tuple[Condition, ...]"
 
 
-Condition = Comparison | Junction
+Condition = Comparison | Worded | Junction
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

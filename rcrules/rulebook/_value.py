@@ -28,7 +28,7 @@ from rcrules.levels import Level, parse_level
 from rcrules.measures import Measure, Option
 from rcrules.project import NUMBERS
 from rcrules.quantities import QUANTITY_NAMES, QuantityError
-from rcrules.rulebook._condition import FACTS
+from rcrules.rulebook._facts import FACTS
 from rcrules.rulebook._model import OptionValue, Term
 from rcrules.rulebook._numbers import Names
 from rcrules.tomlfile import Table, cut, guess, listed
@@ -36,12 +36,8 @@ from rcrules.vocabulary import EVENTS, HELD_KINDS, PART_KINDS, ROLES
 
 NUMBER_FACTS: Final[Mapping[str, str]] = {
     **FACTS,
-    "rated_voltage": "V",
-    "rated_power": "W",
     "temperature_low": "degC",
     "temperature_high": "degC",
-    "resistance": "Ω",
-    "capacitance": "F",
 }
 """Facts that a value may name, with their units; ``resistance`` and ``capacitance`` are those of the part itself."""
 WORD_FACTS: Final = ("dielectric", "kind", "role", "certainty", "size")

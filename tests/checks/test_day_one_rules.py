@@ -299,3 +299,25 @@ def test_powers_are_of_the_dimension_that_they_say() -> None:
 def test_each_is_at_most_ten_lines(text: str) -> None:
     assert len(text.strip().splitlines()) <= 10
     assert compiled(text).id
+
+
+SMALL = """
+id = "large-ceramics-keep-away-from-their-rating"
+level = "warning"
+when = "technology = 'ceramic' and dielectric != 'C0G' and capacitance >= 1 uF and tolerance <= 20 %"
+measure = "voltage_ratio"
+at-most = "50 %"
+"""
+
+
+def test_a_condition_chooses_by_what_the_parts_are() -> None:
+    circuit = """
+    C1 10uF 10% 6.3V X7R 0402 : +5V, GND
+    C2 100nF 10% 6.3V X7R 0402 : +5V, GND
+    C3 10uF 10% 6.3V tantalum : +5V, GND
+    C4 1uF 10% 6.3V : +5V, GND
+    C5 10uF 10% 16V X7R : +5V, GND
+    U1 x : VDD power-in +5V, GND power-in GND
+    """
+    found = outcomes(SMALL, circuit, '[supply."+5V"]\nvoltage = "5 V"\n')
+    assert found == {"C1": "fails", "C4": "undecided", "C5": "holds"}

@@ -70,3 +70,57 @@ def test_mistakes_have_an_offset(text, at, problem):
     with pytest.raises(QuantityError) as caught:
         parse_condition(text)
     assert (caught.value.problem[: len(problem)], caught.value.at) == (problem, at)
+
+
+WORDS = {
+    "dielectric": frozenset({"X7R", "PP film"}),
+    "technology": frozenset({"ceramic", "film"}),
+    "size": frozenset({"0402", ""}),
+    "sheet": frozenset({"/power/input/"}),
+    "polarised": frozenset({"no"}),
+}
+
+
+@pytest.mark.parametrize(
+    ("text", "outcome"),
+    [
+        ("dielectric = 'X7R'", True),
+        ("dielectric = 'film'", True),
+        ("dielectric != 'C0G'", True),
+        ("dielectric != 'X7R'", False),
+        ("not dielectric = 'X7R'", False),
+        ("technology = 'tantalum'", False),
+        ("size = '0402'", True),
+        ("size = '0603'", None),
+        ("size != '0603'", None),
+        ("size = '0603' and polarised = 'yes'", False),
+        ("sheet = '/power/*'", True),
+        ('sheet = "power and (ground)"', False),
+        ("certainty = 'sure'", None),
+        ("tolerance <= 1 % and technology = 'ceramic'", True),
+        ("tolerance > 1 % or capacitance >= 1 uF", None),
+    ],
+)
+def test_facts_that_are_words_are_compared_with_texts(text, outcome):
+    assert holds(parse_condition(text), {"tolerance": 0.01}, WORDS) is outcome
+
+
+@pytest.mark.parametrize(
+    ("text", "at", "problem"),
+    [
+        ("dielectric >= 'X7R'", 0, "'dielectric' is a word"),
+        ("dielectric = X7R", 13, "'X7R' is no text in quotes"),
+        ("dielectric =", 12, "a text is missing"),
+        ("technology = 'ceramics'", 14, "'ceramics' is not known as 'technology'; did you mean 'ceramic'?"),
+        ("dielectic = 'X7R'", 0, "no fact is called 'dielectic'; did you mean 'dielectric'?"),
+        ("tolerance = '1 %'", 0, "'tolerance' is a number"),
+        ("'X7R' = dielectric", 0, "no fact is called ''X7R''"),
+        ("dielectric = 'X7R", 13, "''X7R' is no text in quotes"),
+        ("tolerance < 1 V", 0, "a plain number or ratio is compared with a voltage"),
+        ("not", 3, "a fact is missing"),
+    ],
+)
+def test_mistakes_in_words_have_an_offset(text, at, problem):
+    with pytest.raises(QuantityError) as caught:
+        parse_condition(text)
+    assert (caught.value.problem[: len(problem)], caught.value.at) == (problem, at)
