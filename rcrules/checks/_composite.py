@@ -65,7 +65,7 @@ def _signs(of: Expression, composite: Composite, low: Array, high: Array) -> lis
         return _scaled(of, composite, low, high)
     if isinstance(of, Unary):
         return _turned(_signs(of.of, composite, low, high))
-    if isinstance(of, Power) and of.exponent > 0 and of.exponent % 2 == 1:
+    if isinstance(of, Power) and of.exponent is not None and of.exponent > 0 and of.exponent % 2 == 1:
         return _signs(of.of, composite, low, high)
     if isinstance(of, Call) and of.name in _RISING:
         return _risen(of, composite, low, high)

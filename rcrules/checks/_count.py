@@ -6,6 +6,7 @@ from itertools import pairwise
 import networkx as nx
 
 from rcrules.checks._subject import Subject
+from rcrules.events import Unmeasurable
 from rcrules.networks import Board, Network
 from rcrules.parts import Known, RatedPart
 
@@ -57,16 +58,28 @@ def _fits(part: RatedPart, options: Mapping[str, str], nets: set[str], board: Bo
 
 
 def least_path(options: Mapping[str, str], subject: Subject, board: Board) -> tuple[str, ...] | None:
-    """References of the resistors on the path of least resistance; None where there is no path."""
+    """References of the resistors on the path of least resistance; None where nothing leads there.
+
+    Raises Unmeasurable where the network has no such ends.
+    """
     network = subject.network
     if network is None:
-        return None
+        raise Unmeasurable("it is in no RC network", "")
     starts, ends = (set(_ends(options[key], network, board)) for key in ("from", "to"))
+    for key, found in (("from", starts), ("to", ends)):
+        if not found:
+            raise Unmeasurable(f"the network has no {options[key]}", "")
     if starts & ends:
         return ()
     graph = _graph(network, board)
-    found = [path for start in starts for end in ends if (path := _path(graph, start, end)) is not None]
-    return min(found, key=lambda path: path[0])[1] if found else None
+    paths = (_path(_without(graph, network, {start, end}), start, end) for start in starts for end in ends)
+    found_paths = [path for path in paths if path is not None]
+    return min(found_paths, key=lambda path: path[0])[1] if found_paths else None
+
+
+def _without(graph: "nx.Graph[str]", network: Network, kept: set[str]) -> "nx.Graph[str]":
+    """The graph without held nets that a path would only pass: what holds them takes the current."""
+    return graph.subgraph(set(graph) - (set(network.held) - kept))
 
 
 def _graph(network: Network, board: Board) -> "nx.Graph[str]":
@@ -91,6 +104,8 @@ def _path(graph: "nx.Graph[str]", start: str, end: str) -> tuple[float, tuple[st
 def _ends(what: str, network: Network, board: Board) -> Iterable[str]:
     """Joints of the network at which something of the kind stands; held ones only where they are meant."""
     inside = {*network.free}
+    if what == "connector":
+        inside |= {net for net in network.held if net in board.held and board.held[net].kind == "driven"}
     if what == "contact":
         return (end for item in network.contacts for end in (item.a, item.b) if end in inside)
     if what == "capacitor":

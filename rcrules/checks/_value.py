@@ -1,5 +1,6 @@
 """A value that is more than one measure, for one subject: every measure posed, one column wherever a number acts."""
 
+import math
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, field, replace
 from typing import TYPE_CHECKING, Final
@@ -166,13 +167,13 @@ def _named(
 
 
 def _counted(call: Call, subject: Subject, board: Board, columns: _Columns) -> tuple[Call, float, tuple[int, ...]]:
-    """A count, or the resistors of a path as columns. Raises Unmeasurable where there is no path."""
+    """A count, or the resistors of a path as columns; without a path infinite. Raises Unmeasurable without its ends."""
     options: Mapping[str, str] = dict_of(call)
     if call.name == "count":
         return call, float(count(options, subject, board)), ()
     path = least_path(options, subject, board)
     if path is None:
-        raise Unmeasurable(f"no resistors lead from {options['from']} to {options['to']}", "")
+        return call, math.inf, ()
     return call, 0.0, tuple(columns.add(part_parameter(board.parts[ref])) for ref in path)
 
 

@@ -146,7 +146,8 @@ def _told(of: Expression, words: Mapping[Expression | str, str], sheet: Sheet, l
         return f"-{_told(of.of, words, sheet, 2)}"
     if isinstance(of, Power):
         base = _told(of.of, words, sheet, 2)
-        return f"{base if isinstance(of.of, Name | Call) and base.isidentifier() else f'({base})'}^{of.text}"
+        power = of.text if of.by is None else _told(of.by, words, sheet, 2)
+        return f"{base if isinstance(of.of, Name | Call) and base.isidentifier() else f'({base})'}^{power}"
     if not isinstance(of, Binary):
         raise TypeError(f"{type(of).__name__} has no value")
     own = 0 if of.sign in "+-" else 1

@@ -2,6 +2,7 @@
 
 from rcrules.expressions._dimensions import Dimension, dimension_of, named, unit_of
 from rcrules.expressions._evaluate import Values, value_of
+from rcrules.expressions._known import FUNCTIONS, Known
 from rcrules.expressions._parse import parse_expression
 from rcrules.expressions._tree import (
     Binary,
@@ -17,7 +18,7 @@ from rcrules.expressions._tree import (
     names,
     text_of,
 )
-from rcrules.expressions._units import FUNCTIONS, Known, units_of
+from rcrules.expressions._units import units_of
 
 __all__ = [
     "FUNCTIONS",

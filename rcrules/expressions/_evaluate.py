@@ -33,7 +33,8 @@ def _value(of: Expression, values: Values) -> Array | float:
     if isinstance(of, Unary):
         return -np.asarray(_value(of.of, values))
     if isinstance(of, Power):
-        return np.asarray(np.asarray(_value(of.of, values), dtype=float) ** of.exponent)
+        base = np.asarray(_value(of.of, values), dtype=float)
+        return np.asarray(base ** (of.exponent if of.by is None else np.asarray(_value(of.by, values), dtype=float)))
     if isinstance(of, Binary):
         return _joined(of.sign, np.asarray(_value(of.left, values)), np.asarray(_value(of.right, values)))
     if isinstance(of, Call):

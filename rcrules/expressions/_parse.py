@@ -2,7 +2,7 @@
 
 sum      = product { ("+" | "-") product }      product = factor { ("*" | "/") factor }
 factor   = "-" factor | atom [ "^" exponent ]   atom    = "(" sum ")" | quantity | call | name
-exponent = [ "-" ] number | "(" [ "-" ] number [ "/" number ] ")"
+exponent = [ "-" ] number | "(" [ "-" ] number [ "/" number ] ")" | name
 call     = name "(" [ item { "," item } ] ")"   item    = name "=" (text | quantity | name) | sum
 quantity = a number with its unit, at most one blank between: ``0.8 V/us`` is one quantity, ``5 * 3 V`` a product
 
@@ -106,8 +106,7 @@ class _Reader(Cursor):
         self._take("^")
         match = _EXPONENT.match(self._text, self._at)
         if match is None:
-            self._wrong("a number as exponent, such as 2, -1 or (1/2)")
-            return Broken(parts=(of,), at=at)
+            return self._raised(of, at)
         exponent = _quotient(match[1], match[2]) if match[1] else float(match[0])
         if abs(exponent) > HIGHEST or exponent == 0:
             expected = f"an exponent from -{HIGHEST:.0f} to {HIGHEST:.0f}, not 0"
@@ -119,7 +118,17 @@ class _Reader(Cursor):
             self._wrong("brackets around a power of a power")
             self._pass()
             return Broken(parts=(of, self._atom(depth)), at=at)
-        return Power(of=of, exponent=exponent, text=match[0], at=at)
+        return Power(of=of, exponent=exponent, by=None, text=match[0], at=at)
+
+    def _raised(self, of: Expression, at: int) -> Expression:
+        """A power whose exponent is a name."""
+        start = self._at
+        name = self._name()
+        if name is None or self._is_at("(^"):
+            self._at = start
+            self._wrong("a number or a name as exponent, such as 2, -1, (1/2) or bits")
+            return Broken(parts=(of,), at=at)
+        return Power(of=of, exponent=None, by=Name(name=name, at=start), text=name, at=at)
 
     def _quantity(self) -> Expression:
         at = self._at

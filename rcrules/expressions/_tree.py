@@ -54,10 +54,12 @@ class Binary:
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Power:
-    """``x ^ 2``; the exponent is a number that stands there."""
+    """``x ^ 2``, ``2 ^ bits``."""
 
     of: "Expression"
-    exponent: float
+    exponent: float | None
+    """The number that stands there; None where a name does."""
+    by: "Name | Call | None"
     text: str
     """The exponent as it is written."""
     at: int
@@ -94,8 +96,10 @@ Expression = Number | Name | Text | Unary | Binary | Power | Broken | Call
 
 def below(of: Expression) -> tuple[Expression, ...]:
     """What a node is made of, in the order of the text."""
-    if isinstance(of, Unary | Power):
+    if isinstance(of, Unary):
         return (of.of,)
+    if isinstance(of, Power):
+        return (of.of,) if of.by is None else (of.of, of.by)
     if isinstance(of, Binary):
         return of.left, of.right
     if isinstance(of, Call):
@@ -112,8 +116,11 @@ def parts(of: Expression) -> Iterator[Expression]:
 
 def changed(of: Expression, change: Callable[[Expression], Expression]) -> Expression:
     """The expression with every node, from the leaves up, put through a change."""
-    if isinstance(of, Unary | Power):
+    if isinstance(of, Unary):
         of = replace(of, of=changed(of.of, change))
+    elif isinstance(of, Power):
+        by = None if of.by is None else changed(of.by, change)
+        of = replace(of, of=changed(of.of, change), by=by if isinstance(by, Name | Call) else None)
     elif isinstance(of, Binary):
         of = replace(of, left=changed(of.left, change), right=changed(of.right, change))
     elif isinstance(of, Call):
@@ -165,7 +172,7 @@ def _joined_text(of: Unary | Binary | Power) -> tuple[int, str]:
     if isinstance(of, Unary):
         return 2, f"-{text_of(of.of, 2)}"
     if isinstance(of, Power):
-        return 2, f"{text_of(of.of, _OPERAND)}^{of.text}"
+        return 2, f"{text_of(of.of, _OPERAND)}^{of.text if of.by is None else text_of(of.by, _OPERAND)}"
     own = 0 if of.sign in "+-" else 1
     right = own + 1 if of.sign in "-/" else own
     return own, f"{text_of(of.left, own)} {of.sign} {text_of(of.right, right)}"

@@ -1,56 +1,15 @@
 """Whether an expression makes sense: every name known, every function called rightly, dimensions that fit."""
 
-from collections.abc import Callable, Iterable, Mapping
-from dataclasses import dataclass, field
+from collections.abc import Iterable
 from difflib import get_close_matches
 from typing import Final
 
 from rcrules.expressions._dimensions import NONE, POINT, STEP, Dimension, dimension_of, named, raised, times
+from rcrules.expressions._known import FUNCTIONS, SHOWN, Known
 from rcrules.expressions._tree import Binary, Broken, Call, Expression, Name, Number, Power, Text, below, text_of
 from rcrules.quantities import QuantityError
 
-FUNCTIONS: Final[Mapping[str, tuple[int, int | None]]] = {
-    "min": (1, None),
-    "max": (1, None),
-    "abs": (1, 1),
-    "sqrt": (1, 1),
-    "log": (1, 1),
-    "interpolate": (5, None),
-}
-"""Plain functions: fewest and most arguments. ``log`` is the natural logarithm; ``interpolate(x, x1, y1, x2, y2, …)``
-is linear between the points and constant outside them."""
-_SHOWN: Final = {
-    "min": "min(a, b)",
-    "max": "max(a, b)",
-    "abs": "abs(a)",
-    "sqrt": "sqrt(a)",
-    "log": "log(a / b)",
-    "interpolate": "interpolate(x, x1, y1, x2, y2)",
-}
 _DIFFERENCE: Final = "a difference in K, such as temperature_high - 25 degC"
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class Known:
-    """What an expression may name."""
-
-    names: Mapping[str, str]
-    """Facts and given numbers -> SI unit."""
-    calls: Mapping[str, str]
-    """Measures and counts that are called -> SI unit."""
-    free: frozenset[str] = frozenset()
-    """Given numbers whose unit is not known yet: it follows from what stands beside them."""
-    learned: dict[str, Dimension] = field(default_factory=dict)
-    """Of those, the dimensions found."""
-    check_call: Callable[[Call], None] | None = None
-    """Looks at the options of a call; raises QuantityError."""
-    mistakes: list[QuantityError] = field(default_factory=list)
-    """Found so far, also those of the grammar; what only follows from others is not added."""
-
-    def note(self, error: QuantityError) -> None:
-        """A mistake, once at a place."""
-        if all(other.at != error.at for other in self.mistakes):
-            self.mistakes.append(error)
 
 
 def units_of(of: Expression, known: Known, wanted: Dimension | None = None) -> Dimension | None:
@@ -181,11 +140,26 @@ def _length(of: Expression) -> int:
 
 def _power(of: Power, known: Known) -> Dimension | None:
     found = _scaled(of.of, units_of(of.of, known), known)
+    if of.by is not None:
+        return _plainly(of, of.by, found, known)
+    if of.exponent is None:
+        return None
     power = None if found is None else raised(found, of.exponent)
     if found is not None and power is None:
         problem = f"'{text_of(of.of)}' is {named(found)}, whose power {of.text} is no quantity"
         known.note(QuantityError(problem, at=of.at, expected="a whole number, or a plain number to be raised"))
     return power
+
+
+def _plainly(of: Power, by: Expression, found: Dimension | None, known: Known) -> Dimension | None:
+    """With a name as exponent both are plain numbers: what comes out must have a dimension whatever the number is."""
+    exponent = units_of(by, known, NONE)
+    for item, dimension in ((of.of, found), (by, exponent)):
+        if dimension is not None and dimension != NONE:
+            problem = f"'{text_of(item)}' is {named(dimension)} in a power whose exponent is a name"
+            known.note(QuantityError(problem, at=_begin(item), length=max(_length(item), 1), expected="a plain number"))
+            return None
+    return NONE
 
 
 def _call(of: Call, known: Known, wanted: Dimension | None) -> Dimension | None:
@@ -216,7 +190,7 @@ def _function(of: Call, known: Known, wanted: Dimension | None) -> Dimension | N
         count = f"{least}" if least == most else f"{least} or more"
         plural = "" if count == "1" else "s"
         problem = f"'{of.name}' takes {count} argument{plural}"
-        known.note(QuantityError(problem, at=of.at, length=of.length, expected=_SHOWN[of.name]))
+        known.note(QuantityError(problem, at=of.at, length=of.length, expected=SHOWN[of.name]))
         return None
     if of.name == "interpolate":
         return _interpolated(of, known, wanted)
@@ -255,7 +229,7 @@ def _root(of: Call, found: Dimension | None, known: Known) -> Dimension | None:
 def _interpolated(of: Call, known: Known, wanted: Dimension | None) -> Dimension | None:
     if len(of.arguments) % 2 == 0:
         problem = "a point of 'interpolate' is half"
-        known.note(QuantityError(problem, at=of.at, length=of.length, expected=_SHOWN[of.name]))
+        known.note(QuantityError(problem, at=of.at, length=of.length, expected=SHOWN[of.name]))
         return None
     first = units_of(of.arguments[1], known)
     _same(of, _each((of.arguments[0], *of.arguments[1::2]), known, first), known)

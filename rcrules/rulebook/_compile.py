@@ -14,10 +14,10 @@ from rcrules.rulebook._keys import LINES
 from rcrules.rulebook._keys import PACK as PACK_KEYS
 from rcrules.rulebook._keys import RULE as RULE_KEYS
 from rcrules.rulebook._limits import limits
-from rcrules.rulebook._model import Example, Limit, Pack, Rule, Term
+from rcrules.rulebook._model import Example, Limit, Pack, Rule, Selection, Term
 from rcrules.rulebook._numbers import Names, declared, given
 from rcrules.rulebook._selection import KEYS, selection
-from rcrules.tomlfile import Table, cut
+from rcrules.tomlfile import Table, cut, listed
 from rcrules.vocabulary import BOUNDS, OUTCOMES, SEVERITIES
 
 MOST_PASSING: Final = 0.99999
@@ -120,13 +120,15 @@ def _body(
         table.wrong("never", "'never' beside two limits, one of which depends on measures", do="write two rules")
     what = _with_call(what) if any(limit.terms for limit in bounds) else what
     never = table.word("never", tuple(_NEVER))
+    chosen = selection(table)
+    _dead(table, chosen, what.subject or what.measure.subject)
     return Rule(
         id=own_id,
         pack=pack or Pack(name="", title="", needs_facts=True, caution="", file=table.file.name),
         place=table.place,
         title=table.text("title") or own_id.replace("-", " "),
         level=table.word("level", SEVERITIES) or "",
-        selection=selection(table),
+        selection=chosen,
         measure=what.measure,
         options=what.options,
         limits=bounds,
@@ -145,6 +147,22 @@ def _body(
         must_meet=table.count("must-meet") or 0,
         examples=tuple(_example(item) for item in table.tables("example")),
     )
+
+
+def _dead(table: Table, chosen: Selection, subject: str) -> None:
+    """A selection that nothing of the subject can meet."""
+    if subject not in ("capacitor", "resistor"):
+        return
+    other = "resistor" if subject == "capacitor" else "capacitor"
+    if "kind" in table.data and chosen.kind and subject not in chosen.kind:
+        problem = f"the rule is about {subject}s, none of which is of kind {listed(chosen.kind)}"
+        do = f'subject = "{other}"' if other in chosen.kind else "leave 'kind' out, or say another 'subject'"
+        table.wrong("kind", problem, do=do)
+    for key in ("dielectric", "polarised"):
+        if subject == "resistor" and key in table.data:
+            table.wrong(
+                key, f"the rule is about resistors, which have no '{key}'", on="key", do='subject = "capacitor"'
+            )
 
 
 def _is_nominal(table: Table, bounds: tuple[Limit, ...]) -> bool:

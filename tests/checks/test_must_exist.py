@@ -97,3 +97,41 @@ def test_kind_fed_tells_pins_that_no_network_feeds() -> None:
     C1 100nF : S0, GND
     """
     assert outcomes(rule, circuit, FED) == {"S0": "holds", "S1": "fails"}
+
+
+PATH = HEAD + "role = \"low-pass\"\nvalue = \"path_resistance(from = 'connector', to = 'pin')\"\nat-least = \"470 ohm\""
+
+
+def test_a_path_starts_at_a_connector_whose_net_is_driven_from_outside() -> None:
+    circuit = """
+    J1 header : IN, GND
+    R1 {ohms} 1% : IN, AIN
+    C1 100nF : AIN, GND
+    U1 q : AIN0 input AIN, VDD power-in +3V3, GND power-in GND
+    """
+    assert outcomes(PATH, circuit.format(ohms="1k"), FED) == {"AIN": "holds"}
+    assert outcomes(PATH, circuit.format(ohms="100"), FED) == {"AIN": "fails"}
+
+
+def test_a_path_through_a_held_net_is_none() -> None:
+    """R1 and R2 both end at ground: what the connector brings does not get past it."""
+    circuit = """
+    J1 header : KEY, GND
+    R1 100 1% : KEY, GND
+    R2 100 1% : AIN, GND
+    R3 1k 1% : +3V3, AIN
+    C1 100nF : AIN, KEY
+    U1 q : AIN0 input AIN, VDD power-in +3V3, GND power-in GND
+    """
+    rule = PATH.replace('role = "low-pass"\n', 'net = "AIN"\n')
+    assert outcomes(rule, circuit, FED) == {"AIN": "holds"}
+
+
+def test_a_path_from_what_is_not_there_is_undecided() -> None:
+    circuit = """
+    R1 1k 1% : X, AIN
+    C1 100nF : AIN, GND
+    U1 q : AIN0 input AIN, VDD power-in +3V3, GND power-in GND
+    U2 q : OUT output X
+    """
+    assert outcomes(PATH, circuit, FED) == {"AIN": "undecided"}

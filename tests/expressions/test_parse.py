@@ -34,7 +34,7 @@ def known() -> Known:
     return Known(
         names={"limit": "s", "rated_voltage": "V", "temperature_high": "degC"},
         calls={"delay": "s", "final_voltage": "V", "power": "W", "count": "1"},
-        free=frozenset({"margin", "ratio"}),
+        free=frozenset({"margin", "ratio", "bits"}),
     )
 
 
@@ -74,6 +74,7 @@ def value(text: str, **names: float) -> float:
         ("4^(-1/2)", 0.5),
         ("9^0.5", 3.0),
         ("(3 V)^2", 9.0),
+        ("2^b * 3", 12.0),
     ],
 )
 def test_what_an_expression_is_worth(text: str, wanted: float) -> None:
@@ -114,7 +115,9 @@ def test_options_of_calls_are_kept_with_their_places() -> None:
         ("(" * 40 + "1" + ")" * 40, 13, "nested too deeply"),
         ("-" * 200 + "1", 13, "nested too deeply"),
         ("2^3^2", 3, "'^' not understood"),
-        ("2^a", 2, "'a' not understood"),
+        ("2^(a)", 2, "'(' not understood"),
+        ("2^a^2", 2, "'a' not understood"),
+        ("2^a(1)", 2, "'a' not understood"),
         ("2^0", 2, "'0' is no exponent"),
         ("2^(1/0)", 2, "no exponent"),
         ("2^9999999999", 2, "'9999999999' is no exponent"),
@@ -212,6 +215,8 @@ def test_written_out_it_is_worth_the_same(text: str) -> None:
         ("10 K + temperature_high", "degC"),
         ("temperature_high + margin", "degC"),
         ("max(temperature_high, 70 degC)", "degC"),
+        ("rated_voltage / 2^bits", "V"),
+        ("2^ratio * delay()", "s"),
         ("10 ppm/K * (temperature_high - 25 degC)", "1"),
     ],
 )
@@ -233,6 +238,8 @@ def test_dimensions_are_worked_out(text: str, unit: str) -> None:
         ("min()", "'min' takes 1 or more arguments"),
         ("abs(1, 2)", "'abs' takes 1 argument"),
         ("delay()^0.5", "'delay' is a time, whose power 0.5 is no quantity"),
+        ("rated_voltage^ratio", "'rated voltage' is a voltage in a power whose exponent is a name"),
+        ("2^limit", "'limit' is a time in a power whose exponent is a name"),
         ("temperature_high + 10 degC", "are two temperatures, which cannot be added"),
         ("2 * temperature_high", "a temperature on its scale, which has no multiples"),
         ("-temperature_high", "which has no multiples"),
