@@ -1,6 +1,9 @@
 """The schema and the compiler say the same."""
 
+import json
 import re
+import subprocess
+import sys
 import tomllib
 from pathlib import Path
 
@@ -130,3 +133,22 @@ def _toml(path: Path) -> bool:
     except tomllib.TOMLDecodeError:
         return False
     return bool(re.match(r"#: ", path.read_text(encoding="utf-8")))
+
+
+@pytest.mark.parametrize(
+    ("tool", "options"), [("tombi", ["lint", "--offline", "--quiet"]), ("taplo", ["lint"])], ids=["tombi", "taplo"]
+)
+def test_language_servers_of_editors_take_the_packs_and_refuse_what_the_schema_does(tool, options, tmp_path):
+    """Source: the checks that two open language servers for TOML make by a schema named in the first line."""
+    (tmp_path / "rcrules.schema.json").write_text(json.dumps(SCHEMA), encoding="utf-8")
+    texts = {name: (packs_folder() / f"{name}.toml").read_text(encoding="utf-8") for name in shipped()}
+    texts["broken"] = BASE.replace('level = "error"', 'level = "fatal"')
+    for name, text in texts.items():
+        (tmp_path / f"{name}.toml").write_text(f"#:schema ./rcrules.schema.json\n{text}", encoding="utf-8")
+
+    def accepts(*names: str) -> bool:
+        command = [str(Path(sys.executable).parent / tool), *options, *(f"{name}.toml" for name in names)]
+        return subprocess.run(command, cwd=tmp_path, capture_output=True, timeout=60).returncode == 0
+
+    assert accepts(*shipped())
+    assert not accepts("broken")
