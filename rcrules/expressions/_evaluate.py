@@ -20,7 +20,7 @@ class Values:
 
 
 def value_of(of: Expression, values: Values) -> Array | float:
-    """SI. Division by zero is infinite, what is not defined is nan; nothing raises."""
+    """SI. Division by zero is infinite, what is not defined or too large for a number is nan; nothing raises."""
     with np.errstate(all="ignore"):
         return _value(of, values)
 
@@ -34,7 +34,8 @@ def _value(of: Expression, values: Values) -> Array | float:
         return -np.asarray(_value(of.of, values))
     if isinstance(of, Power):
         base = np.asarray(_value(of.of, values), dtype=float)
-        return np.asarray(base ** (of.exponent if of.by is None else np.asarray(_value(of.by, values), dtype=float)))
+        power = np.asarray(of.exponent if of.by is None else _value(of.by, values), dtype=float)
+        return _told(base**power, base, power, (base == 0) & (power < 0))
     if isinstance(of, Binary):
         return _joined(of.sign, np.asarray(_value(of.left, values)), np.asarray(_value(of.right, values)))
     if isinstance(of, Call):
@@ -43,11 +44,16 @@ def _value(of: Expression, values: Values) -> Array | float:
 
 
 def _joined(sign: str, left: Array, right: Array) -> Array:
-    if sign == "+":
-        return np.asarray(left + right)
-    if sign == "-":
-        return np.asarray(left - right)
-    return np.asarray(left * right) if sign == "*" else np.asarray(np.divide(left, right))
+    if sign == "/":
+        return _told(np.divide(left, right), left, right, right == 0)
+    found = left + right if sign == "+" else left - right if sign == "-" else left * right
+    return _told(found, left, right)
+
+
+def _told(found: Array, left: Array, right: Array, beyond: Array | bool = False) -> Array:
+    """A result too large for a number is not defined; infinite only if an operand is, or where ``beyond``."""
+    overflow = np.isinf(found) & np.isfinite(left) & np.isfinite(right) & ~np.asarray(beyond)
+    return np.where(overflow, np.nan, found)
 
 
 def _function(of: Call, values: Values) -> Array:

@@ -14,22 +14,36 @@ from rcrules.vocabulary import CERTAINTIES, FED_KINDS, PART_KINDS, ROLES
 MAX_LIST: Final = 200
 """Words or globs of one key."""
 MAX_GLOB: Final = 200
+MAX_TABLES: Final = 200
+"""Selections inside the selection of one rule, on all levels."""
 _DEEPEST: Final = 3
+_FIELDS: Final = {"any-of": "any_of", "not": "exclude", "except": "exclude"}
+"""Keys of selections inside a selection, and their fields."""
 _BOUND: Final = re.compile(r"\s*(>=|<=)\s*")
 
 
 def selection(table: Table, depth: int = 0) -> Selection:
     """The selection keys of a rule, or of a table in its ``any-of`` or ``not``."""
     found: dict[str, Any] = {}
+    if depth == 0 and (number := _nested_in(table.data)) > MAX_TABLES:
+        key = next(key for key in _FIELDS if key in table.data)
+        table.wrong(key, f"{number} selections in one rule are too many", expected=f"at most {MAX_TABLES}")
+        return Selection()
     judged = depth == 0 and "measure" not in table.data and "every" not in table.data
     for key, read in _KEYS.items():
         if key in table.data and not (judged and key == "value"):  # there it is what the rule judges
             found.update(read(table, key))
-    nested = {"any-of": "any_of", "not": "exclude", "except": "exclude"}
-    for key, name in nested.items():
+    for key, name in _FIELDS.items():
         if key in table.data:
             found[name] = (*found.get(name, ()), *_nested(table, key, depth))
     return Selection(**found)
+
+
+def _nested_in(data: Any) -> int:
+    """How many tables of selections there are inside one."""
+    inner = [data[key] for key in _FIELDS if key in data] if isinstance(data, Mapping) else []
+    tables = [item for value in inner for item in (value if isinstance(value, list) else [value])]
+    return len(tables) + sum(map(_nested_in, tables))
 
 
 def _nested(table: Table, key: str, depth: int) -> tuple[Selection, ...]:

@@ -99,7 +99,7 @@ def test_kind_fed_tells_pins_that_no_network_feeds() -> None:
     assert outcomes(rule, circuit, FED) == {"S0": "holds", "S1": "fails"}
 
 
-PATH = HEAD + "role = \"low-pass\"\nvalue = \"path_resistance(from = 'connector', to = 'pin')\"\nat-least = \"470 ohm\""
+PATH = HEAD + 'role = "low-pass"\nvalue = "path_resistance(from = \'connector\', to = \'pin\')"\nat-least = "470 ohm"'
 
 
 def test_a_path_starts_at_a_connector_whose_net_is_driven_from_outside() -> None:

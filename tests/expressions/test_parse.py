@@ -88,7 +88,19 @@ def test_it_is_worked_out_for_many_cases_at_once() -> None:
 
 def test_division_by_zero_is_infinite_and_what_is_not_defined_is_not_a_number() -> None:
     assert value("1 / a", a=0.0) == np.inf
+    assert value("a ^ -1", a=0.0) == np.inf
     assert np.isnan(value("sqrt(a)", a=-1.0))
+    assert np.isnan(value("a ^ 0.5", a=-1.0))
+
+
+@pytest.mark.parametrize("text", ["a^10", "a * a", "a / 1e-200", "a^2 - a^3", "-a^9 + a"])
+def test_what_is_too_large_for_a_number_is_not_defined(text: str) -> None:
+    assert np.isnan(value(text, a=1e200))
+
+
+def test_what_never_happens_stays_so_in_a_sum() -> None:
+    assert value("2 * a + 1", a=np.inf) == np.inf
+    assert value("(1 - a)^3", a=np.inf) == -np.inf
 
 
 def test_options_of_calls_are_kept_with_their_places() -> None:

@@ -3,6 +3,7 @@
 from contextlib import suppress
 from pathlib import Path
 
+import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
@@ -67,3 +68,34 @@ def test_globs_that_could_blow_up_do_not():
 
     assert not globbed(("*a" * 99 + "b",), ["a" * 4000])
     assert globbed(("*a" * 99 + "*",), ["a" * 4000])
+
+
+def test_selections_that_multiply_are_refused():
+    """A few hundred letters could stand for millions of tables; their number is counted before any is read."""
+    one = '{ net = "a*" }'
+    for _ in range(2):
+        one = f"{{ any-of = [{', '.join([one] * 30)}] }}"
+    text = f'[pack]\nname = "h"\n[[rule]]\nid = "h"\nlevel = "note"\nmeasure = "gain"\nany-of = [{one}]'
+    with pytest.raises(UserMistake, match="931 selections in one rule are too many"):
+        rulebook.compile_pack(tomlfile.load("p", text), registry())
+
+
+@pytest.mark.parametrize(
+    "value", ["(" * 900, "-" * 900, "2^" * 400, "max(" + "," * 900, "1" + "+1" * 450, "9" * 990, "[" * 900, "''" * 400]
+)
+def test_sums_of_signs_end_in_mistakes(value):
+    text = f'[pack]\nname = "h"\n[[rule]]\nid = "h"\nlevel = "note"\nsubject = "board"\nvalue = "{value}"\nequals = 1'
+    with pytest.raises(UserMistake) as caught:
+        rulebook.compile_pack(tomlfile.load("p", text), registry())
+    assert len(caught.value.mistakes) <= 11
+
+
+@settings(max_examples=300, deadline=None)
+@given(
+    st.lists(
+        st.sampled_from(["gain", "(", ")", "^", "2", "-", "*", ",", "x", " ", "'", "3 V", "min(", "="]), max_size=30
+    )
+)
+def test_sums_of_pieces_end_in_mistakes_or_rules(pieces):
+    body = f'subject = "node"\nvalue = "{"".join(pieces)}"\nequals = 1'
+    read_both(f'[pack]\nname = "h"\n[[rule]]\nid = "h"\nlevel = "note"\n{body}')
