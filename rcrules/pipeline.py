@@ -134,12 +134,19 @@ def _document(job: Job, project: "Project", board: "Board", rules: "list[Rule]")
         assumptions=inventory.listed_assumptions(inventory.assumptions_of(parameters))[0],
         coverage={},
         waivers=[],
-        problems=inventory.problems(board, project),
+        problems=inventory.problems(board, project, _judged_inputs(board, rules) if job.with_rules else ()),
     )
     if job.with_rules:
         found = _judged(job, found, project, board, rules, parameters)
     classes = inventory.coverage(board, found.findings)
     return settled(replace(found, parts=inventory.parts(board, classes), coverage=inventory.counts(classes)))
+
+
+def _judged_inputs(board: "Board", rules: "list[Rule]") -> frozenset[str]:
+    """Parts of which rules judge whether the inputs agree."""
+    from rcrules.checks import agreeing
+
+    return agreeing(rules, board)
 
 
 def _judged(

@@ -70,6 +70,10 @@ PIN_TYPES: Final = (
     "",
 )
 """Pin types as the readers normalise them; '' = the export names none."""
+AGREEMENTS: Final = ("value", "ratings", "listing", "fitting")
+"""On what the inputs of one board may agree or not about a part."""
+AGREEMENT: Final = "agreement on "
+"""How the facts of rules about that begin."""
 PIN_KINDS: Final = ("input", "output", "open-drain", "supply", "passive")
 """What a project file may call a pin."""
 DIELECTRICS: Final = (

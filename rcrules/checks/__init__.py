@@ -1,5 +1,6 @@
 """Step 9: rules and board in, findings with three-valued verdicts out."""
 
+from rcrules.checks._agreement import agreeing
 from rcrules.checks._asked import Asked
 from rcrules.checks._check import Checked, check
 from rcrules.checks._numbers import known, near, numbers_at
@@ -12,6 +13,7 @@ __all__ = [
     "Checked",
     "Subject",
     "Trial",
+    "agreeing",
     "astray",
     "check",
     "known",

@@ -4,6 +4,7 @@ from collections import defaultdict
 from collections.abc import Mapping
 from functools import cached_property
 
+from rcrules.checks._agreement import differing
 from rcrules.checks._pins import Pins
 from rcrules.checks._places import Places
 from rcrules.checks._subject import Subject
@@ -36,6 +37,7 @@ class Subjects:
                 "open-drain net": self._pins.open_drains,
                 "supply": self._supply_subjects,
                 "network": self._network_subjects,
+                "listed part": self._listed_parts,
                 "board": self._whole_board,
             }
             self._found[kind] = further[kind]() if kind in further else self._part_subjects(kind)
@@ -52,6 +54,12 @@ class Subjects:
             for part in self._board.parts.values()
             if part.kind == kind and part.fitted and part.part.pins and isinstance(part.value, Known)
         )
+
+    def _listed_parts(self) -> tuple[Subject, ...]:
+        """Parts about which the inputs do not agree; the board where they agree on all; none of one input alone."""
+        if len(self._board.design.exports) < 2:
+            return ()
+        return tuple(self._part_subject(part) for part in differing(self._board)) or self._whole_board()
 
     def _node_subject(self, node: Node, network: Network) -> Subject:
         parts = tuple(self._board.parts[ref] for ref in node.parts)

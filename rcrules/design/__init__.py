@@ -1,7 +1,8 @@
 """Step 2: exports in, one design out."""
 
 from rcrules.design._build import build
-from rcrules.design._model import Design, Fact, Net, Part, Pin
+from rcrules.design._disagree import told
+from rcrules.design._model import Design, Difference, Fact, Net, Part, Pin
 from rcrules.design._order import natural
 
-__all__ = ["Design", "Fact", "Net", "Part", "Pin", "build", "natural"]
+__all__ = ["Design", "Difference", "Fact", "Net", "Part", "Pin", "build", "natural", "told"]

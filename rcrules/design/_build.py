@@ -2,10 +2,11 @@
 
 from collections import defaultdict
 from collections.abc import Iterable, Mapping, Sequence
+from dataclasses import replace
 
-from rcrules.design._disagree import disagreements, refuse_other_board
+from rcrules.design._disagree import differences, refuse_other_board
 from rcrules.design._merge import Said, merge, word
-from rcrules.design._model import Design, Net, Part, Pin
+from rcrules.design._model import Design, Difference, Net, Part, Pin
 from rcrules.design._order import natural
 from rcrules.errors import Place
 from rcrules.readers import Export, ExportPart, ExportPin, Remark
@@ -24,12 +25,15 @@ def build(exports: Iterable[Export]) -> Design:
     said = _said(ordered, {**alone, **pins})
     order = sorted(said, key=natural)
     parts = {ref: merge(said[ref], tuple(pins.get(ref, ())), tuple(alone.get(ref, ()))) for ref in order}
+    apart: dict[str, tuple[Difference, ...]] = defaultdict(tuple)
+    for item in differences(parts, said, ordered):
+        apart[item.ref] += (item,)
     own = [remark for export in given for remark in export.remarks]
     return Design(
-        parts=parts,
+        parts={ref: replace(part, differences=apart[ref]) if ref in apart else part for ref, part in parts.items()},
         nets=_nets(ordered, parts),
         exports=given,
-        remarks=(*own, *remarks, *disagreements(parts, said, ordered)),
+        remarks=(*own, *remarks),
     )
 
 

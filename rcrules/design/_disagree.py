@@ -2,11 +2,11 @@
 
 import re
 from collections import defaultdict
-from collections.abc import Iterator, Mapping, Sequence
+from collections.abc import Container, Iterator, Mapping, Sequence
 from typing import Final
 
-from rcrules.design._merge import Said
-from rcrules.design._model import Fact, Part, Pin
+from rcrules.design._merge import Said, word
+from rcrules.design._model import Design, Difference, Part, Pin
 from rcrules.design._order import natural
 from rcrules.errors import Mistake, Place, UserMistake
 from rcrules.readers import Export, Remark
@@ -25,57 +25,110 @@ _LETTER_AS_POINT: Final = re.compile(r"^(\d+)([a-z])(\d+)$")
 _NUMBER: Final = re.compile(r"^(\d*\.?\d+)([a-z]?)(?:hms?|hm|f|r|h)?$")
 
 
-def disagreements(
+def differences(
     parts: Mapping[str, Part], said: Mapping[str, Sequence[Said]], exports: Sequence[Export]
-) -> list[Remark]:
-    """A remark, with both places, for each kind of contradiction; the same one on many parts is told once."""
-    return [*_values(parts, said), *_references(said, exports)]
-
-
-def _values(parts: Mapping[str, Part], said: Mapping[str, Sequence[Said]]) -> Iterator[Remark]:
-    groups: dict[tuple[str, str], list[tuple[str, Fact, Fact]]] = defaultdict(list)
+) -> Iterator[Difference]:
+    """Value texts that contradict each other, parts that one kind of export lacks, parts fitted by one alone."""
+    apart = _unlisted(said, exports)
     for ref, part in parts.items():
-        if len(said[ref]) < 2 or not part.values:
-            continue
+        if ref in apart:
+            yield Difference(ref=ref, about="listing", text=apart[ref], places=(part.place,))
+        if len(said[ref]) > 1:
+            yield from _value(part)
+            yield from _fitting(part, said[ref])
+
+
+def _value(part: Part) -> Iterator[Difference]:
+    for other in part.values[1:]:
         first = part.values[0]
-        for other in part.values[1:]:
-            if _contradict(first.text, other.text):
-                groups[first.text, other.text].append((ref, first, other))
-                break
+        if _contradict(first.text, other.text):
+            text = f"{first.origin} {first.text!r} ({first.place}), {other.origin} {other.text!r} ({other.place})"
+            places = (first.place, other.place)
+            yield Difference(ref=part.ref, about="value", text=text, places=places, said=(first, other))
+            return
+
+
+def _fitting(part: Part, said: Sequence[Said]) -> Iterator[Difference]:
+    """Where one kind of export says that a part is left out, and the other lists it without a word of that."""
+    out = next(((kind, item) for kind, item in said if item.fitted is False), None)
+    kept = next(((kind, item) for kind, item in said if out and kind != out[0] and item.fitted is not False), None)
+    if out is None or kept is None:
+        return
+    (without, left), (listing, listed_there) = out, kept
+    why = f": {left.fitted_why}" if left.fitted_why else ""
+    text = f"not fitted by the {without} ({left.place}{why}), but listed by the {listing} ({listed_there.place})"
+    texts = [fact for fact in part.values if listed_there.value and fact.place == listed_there.value.place]
+    places = (left.place, listed_there.place)
+    yield Difference(ref=part.ref, about="fitting", text=text, places=places, said=tuple(texts))
+
+
+def _unlisted(said: Mapping[str, Sequence[Said]], exports: Sequence[Export]) -> dict[str, str]:
+    """References that stand in the BOMs alone or in the netlists alone, where others stand in both."""
+    files = {kind: next((e.source for e in exports if word(e) == kind), None) for kind in ("BOM", "netlist")}
+    kinds = {ref: {kind for kind, _ in entries} for ref, entries in said.items()}
+    if None in files.values() or not any(len(found) == 2 for found in kinds.values()):
+        return {}
+    other = {"BOM": "netlist", "netlist": "BOM"}
+    alone = {ref: next(iter(found)) for ref, found in kinds.items() if len(found) == 1}
+    return {ref: f"in the {kind}, not in the {other[kind]} ({files[other[kind]]})" for ref, kind in alone.items()}
+
+
+def told(design: Design, without: Container[str] = ()) -> list[Remark]:
+    """A remark, with both places, for each kind of difference; the same one on many parts is told once.
+
+    without: references whose values are judged by rules.
+    """
+    values = [item for item in design.differences if item.about == "value" and item.ref not in without]
+    return [*_values(values), *_references(design)]
+
+
+def _values(values: Sequence[Difference]) -> Iterator[Remark]:
+    groups: dict[tuple[str, str], list[Difference]] = defaultdict(list)
+    for item in values:
+        groups[item.said[0].text, item.said[1].text].append(item)
     if len(groups) > _TOLD_APART:
         yield _many([member for members in groups.values() for member in members])
         return
     for (winner, loser), members in groups.items():
-        refs = listed([ref for ref, _, _ in members])
-        _, first, other = members[0]
+        refs = listed([item.ref for item in members])
+        first, other = members[0].said
         text = f"{refs}: {first.origin} {winner!r}, {other.origin} {loser!r} ({other.place}); the first is taken"
         yield Remark(place=first.place, text=text)
 
 
-def _many(members: Sequence[tuple[str, Fact, Fact]]) -> Remark:
+def _many(members: Sequence[Difference]) -> Remark:
     """One remark for many contradictions, by reference."""
-    ordered = sorted(members, key=lambda member: natural(member[0]))
-    told = [f"{ref} {first.text!r} not {other.text!r}" for ref, first, other in ordered]
-    _, first, other = ordered[0]
-    text = f"{len(told)} parts: the {first.origin} is taken, not the {other.origin}: {', '.join(told)}"
+    ordered = sorted(members, key=lambda member: natural(member.ref))
+    texts = [f"{item.ref} {item.said[0].text!r} not {item.said[1].text!r}" for item in ordered]
+    first, other = ordered[0].said
+    text = f"{len(texts)} parts: the {first.origin} is taken, not the {other.origin}: {', '.join(texts)}"
     return Remark(place=first.place, text=text)
 
 
-def _references(said: Mapping[str, Sequence[Said]], exports: Sequence[Export]) -> Iterator[Remark]:
-    boms = [export for export in exports if export.kind == "bom"]
-    netlists = [export for export in exports if export.kind == "netlist"]
-    if not boms or not netlists:
+def _references(design: Design) -> Iterator[Remark]:
+    files = {kind: next((e.source for e in design.exports if word(e) == kind), None) for kind in ("BOM", "netlist")}
+    bom, netlist = files["BOM"], files["netlist"]
+    if bom is None or netlist is None:
         return
-    kinds = {ref: {kind for kind, _ in entries} for ref, entries in said.items()}
-    only = {kind: [ref for ref, found in kinds.items() if found == {kind}] for kind in ("BOM", "netlist")}
-    bom, netlist = Place(file=boms[0].source), Place(file=netlists[0].source)
-    if kinds and len(only["BOM"]) + len(only["netlist"]) == len(kinds):
-        yield Remark(place=bom, text=f"no reference stands in both this BOM and {netlist}: are they of one board?")
-        return
-    if only["BOM"]:
-        yield Remark(place=bom, text=f"in the BOM, not in the netlist ({netlist}): {listed(only['BOM'])}")
-    if only["netlist"]:
-        yield Remark(place=netlist, text=f"in the netlist, not in the BOM ({bom}): {listed(only['netlist'])}")
+    lone = [item for item in design.differences if item.about == "listing"]
+    if not lone and _strangers(design):
+        text = f"no reference stands in both this BOM and {netlist}: are they of one board?"
+        yield Remark(place=Place(file=bom), text=text)
+    for kind, here, there in (("BOM", bom, netlist), ("netlist", netlist, bom)):
+        refs = [item.ref for item in lone if item.text.startswith(f"in the {kind}, ")]
+        if refs:
+            other = "netlist" if kind == "BOM" else "BOM"
+            text = f"in the {kind}, not in the {other} ({there}): {listed(refs)}"
+            yield Remark(place=Place(file=here), text=text)
+
+
+def _strangers(design: Design) -> bool:
+    """Whether BOMs and netlists have no reference in common, and each has some."""
+    refs: dict[str, set[str]] = {"BOM": set(), "netlist": set()}
+    for export in design.exports:
+        refs[word(export)].update(part.ref for part in export.parts)
+        refs[word(export)].update(pin.ref for pin in export.pins)
+    return bool(refs["BOM"] or refs["netlist"]) and not refs["BOM"] & refs["netlist"]
 
 
 def refuse_other_board(export: Export, known: Mapping[tuple[str, str], Pin]) -> None:

@@ -37,6 +37,20 @@ class Pin:
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
+class Difference:
+    """What two exports of one board say differently about a part."""
+
+    ref: str
+    about: str
+    """One of vocabulary.AGREEMENTS."""
+    text: str
+    """``BOM value '12k' (bom.csv:7:2), netlist value '10k' (board.xml:12)``."""
+    places: tuple[Place, ...]
+    said: tuple[Fact, ...] = ()
+    """Value texts that contradict each other, the one that wins first; of a part fitted by one alone what it says."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
 class Part:
     """A part of the schematic or the BOM."""
 
@@ -55,6 +69,8 @@ class Part:
     pins: tuple[Pin, ...]
     open_pins: tuple[Pin, ...] = ()
     """Pins that an export lists as on no net."""
+    differences: tuple[Difference, ...] = ()
+    """Where the exports contradict each other about it."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -74,4 +90,9 @@ class Design:
     nets: Mapping[str, Net]
     exports: tuple[Export, ...]
     remarks: tuple[Remark, ...]
-    """Of all exports, and disagreements between them."""
+    """Of all exports, and of pins that two netlists put on different nets."""
+
+    @property
+    def differences(self) -> tuple[Difference, ...]:
+        """What exports say differently about parts, by reference."""
+        return tuple(item for part in self.parts.values() for item in part.differences)

@@ -63,7 +63,8 @@ def _pose_states(bench: Bench, part: RatedPart, measure: Measure, options: Mappi
     try:
         return pose_states(bench, part, measure, options)
     except Unmeasurable as error:
-        raise Unmeasurable(error.reason, to_be_stated(bench, part, error.ask)) from error
+        reason, ask = error.reason, error.ask
+    raise Unmeasurable(reason, to_be_stated(bench, part, ask))  # with no error behind it, whose frames hold the board
 
 
 def _kind(subject: Subject) -> str:

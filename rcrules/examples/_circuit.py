@@ -6,6 +6,7 @@ from 1. Lines that are empty or start with # say nothing.
 """
 
 from collections.abc import Iterator
+from dataclasses import replace
 from hashlib import sha256
 from typing import Final
 
@@ -15,6 +16,7 @@ from rcrules.tomlfile import cut
 from rcrules.vocabulary import PIN_TYPES
 
 MAX_LINES: Final = 200
+_LEFT_OUT: Final = "DNP"
 
 
 def circuit_export(text: str, place: Place) -> Export:
@@ -38,6 +40,27 @@ def circuit_export(text: str, place: Place) -> Export:
         pins=pins,
         nets=tuple((net, place) for net in dict.fromkeys(pin.net for pin in pins)),
     )
+
+
+def bom_export(text: str, place: Place) -> Export:
+    """A BOM as if it had been read: ``R1 12k 1% | description`` a line, ``DNP`` after the value of what is left out."""
+    rows = [line.split(maxsplit=1) for line in text.splitlines() if line.strip()]
+    return Export(
+        reader="example",
+        source=f"{place.file}: bom",
+        sha256=sha256(text.encode("utf-8", "replace")).hexdigest(),
+        kind="bom",
+        parts=tuple(_listed(row[0], row[1].strip() if len(row) > 1 else "", place) for row in rows),
+        pins=(),
+        nets=(),
+    )
+
+
+def _listed(ref: str, text: str, place: Place) -> ExportPart:
+    value, _, description = (word.strip() for word in text.partition("|"))
+    out = value.endswith(_LEFT_OUT)
+    part = replace(_part(ref, value.removesuffix(_LEFT_OUT).strip(), place), description=description)
+    return replace(part, fitted=False, fitted_why=_LEFT_OUT) if out else part
 
 
 def _row(line: str, place: Place) -> tuple[str, str, str]:

@@ -5,7 +5,7 @@ from dataclasses import dataclass
 
 from rcrules.checks import check
 from rcrules.design import build
-from rcrules.examples._circuit import circuit_export
+from rcrules.examples._circuit import bom_export, circuit_export
 from rcrules.findings import Finding
 from rcrules.networks import Board, recognise
 from rcrules.parts import rate
@@ -40,5 +40,6 @@ def _tried(rule: Rule, example: Example) -> Tried:
 def board_of(example: Example) -> tuple[Board, Project]:
     """The board of an example, with what its project text says."""
     project = load(f"{example.place}: project", example.project) if example.project else Project()
-    design = build([circuit_export(example.circuit, example.place)])
+    listed = [bom_export(example.bom, example.place)] if example.bom else []
+    design = build([circuit_export(example.circuit, example.place), *listed])
     return recognise(design, rate(design, project), project), project

@@ -1,11 +1,11 @@
 """Counts of the board, its inputs and the remarks about them."""
 
 import re
-from collections.abc import Iterable, Iterator, Sequence
+from collections.abc import Container, Iterable, Iterator, Sequence
 from pathlib import PurePath
 from typing import Final
 
-from rcrules.design import natural
+from rcrules.design import natural, told
 from rcrules.findings import Json
 from rcrules.inventory._parts import listed
 from rcrules.inventory._place import place_json, shown
@@ -64,11 +64,15 @@ def _ordered(exports: tuple[Export, ...]) -> list[Export]:
     return sorted(exports, key=lambda export: export.kind == "bom")
 
 
-def problems(board: Board, project: Project) -> list[Json]:
-    """Remarks about the inputs and the project file, and facts on which inputs disagree; by place."""
-    said: tuple[Remark | Notice, ...] = (*board.design.remarks, *project.notices, *_unmatched(board, project))
+def problems(board: Board, project: Project, judged: Container[str] = ()) -> list[Json]:
+    """Remarks about the inputs and the project file, and facts on which inputs disagree; by place.
+
+    judged: parts of which rules judge whether the inputs agree.
+    """
+    inputs = (*board.design.remarks, *told(board.design, judged))
+    said: tuple[Remark | Notice, ...] = (*inputs, *project.notices, *_unmatched(board, project))
     remarks: list[Json] = [{"place": place_json(item.place), "text": item.text} for item in said]
-    remarks += _contradicted(listed(board))
+    remarks += _contradicted(part for part in listed(board) if part.ref not in judged)
     return sorted(remarks, key=lambda item: (item["place"]["file"], item["place"].get("line", 0), item["text"]))
 
 

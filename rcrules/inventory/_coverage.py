@@ -6,6 +6,7 @@ from typing import Final
 from rcrules.findings import Finding
 from rcrules.inventory._parts import listed
 from rcrules.networks import Board
+from rcrules.vocabulary import AGREEMENT
 
 CLASSES: Final = ("not_fitted", "unreadable", "judged", "undecided", "unruled", "decoupling", "elsewhere")
 """In the order in which they apply."""
@@ -15,7 +16,7 @@ def coverage(board: Board, findings: Iterable[Finding]) -> Mapping[str, str]:
     """Reference of each listed part -> the first class that applies."""
     judged: set[str] = set()
     undecided: set[str] = set()
-    for item in findings:
+    for item in (item for item in findings if not item.measure.startswith(AGREEMENT)):
         (undecided if item.outcome == "undecided" else judged).update(item.parts)
     before = {part.ref: board.coverage.get(part.ref, "elsewhere") for part in listed(board)}
     return {ref: _class(ref, name, judged, undecided) for ref, name in before.items()}

@@ -199,5 +199,5 @@ def _example(table: Table) -> Example:
     table.only(tuple(EXAMPLE_KEYS))
     table.needs("circuit", "outcome", known=tuple(EXAMPLE_KEYS), do=LINES)
     outcome = table.word("outcome", OUTCOMES)
-    circuit, project = table.text("circuit") or "", table.text("project") or ""
-    return Example(place=table.place, circuit=circuit, project=project, outcome=outcome or "")
+    circuit, project, bom = (table.text(key) or "" for key in ("circuit", "project", "bom"))
+    return Example(place=table.place, circuit=circuit, project=project, outcome=outcome or "", bom=bom)

@@ -22,7 +22,7 @@ from rcrules.vocabulary import HELD_KINDS, PART_KINDS, ROLES
 _KNOWN: Final = (*RULE_KEYS, *KEYS)
 PINS: Final = ("supply pin", "reset pin", "contact pin", "open-drain net")
 """Subjects that are pins of a kind: measures of pins can be taken at them."""
-SUBJECTS: Final = ("node", "capacitor", "resistor", "pin", "supply", "network", *PINS, "board")
+SUBJECTS: Final = ("node", "capacitor", "resistor", "pin", "supply", "network", *PINS, "listed part", "board")
 EVERY: Final = ("subject", "has", "has-no")
 HAS: Final[Mapping[str, tuple[str, ...]]] = {
     "kind": PART_KINDS,

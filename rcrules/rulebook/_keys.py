@@ -62,6 +62,7 @@ PACK: Final[Mapping[str, tuple[str, Shape]]] = {
 EXAMPLE: Final[Mapping[str, tuple[str, Shape]]] = {
     "circuit": ("A tiny circuit, one part a line: R1 10k 1% : +3V3, NRST", TEXT),
     "project": ("What a project file would say about it.", TEXT),
+    "bom": ("What a BOM beside it lists, one part a line: R1 12k | RES 12K 1%", TEXT),
     "outcome": ("What the rule must find there.", one_of(OUTCOMES)),
 }
 LINES: Final[Mapping[str, str]] = {

@@ -124,6 +124,8 @@ class Example:
     """Text of a project file for it; '' = none."""
     outcome: str
     """One of vocabulary.OUTCOMES."""
+    bom: str = ""
+    """What a BOM beside it lists, one part a line; '' = there is none."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

@@ -32,7 +32,7 @@ from rcrules.rulebook._facts import FACTS
 from rcrules.rulebook._model import OptionValue, Term
 from rcrules.rulebook._numbers import Names
 from rcrules.tomlfile import Table, cut, guess, listed
-from rcrules.vocabulary import EVENTS, HELD_KINDS, PART_KINDS, ROLES
+from rcrules.vocabulary import AGREEMENT, AGREEMENTS, EVENTS, HELD_KINDS, PART_KINDS, ROLES
 
 NUMBER_FACTS: Final[Mapping[str, str]] = {
     **FACTS,
@@ -40,7 +40,14 @@ NUMBER_FACTS: Final[Mapping[str, str]] = {
     "temperature_high": "degC",
 }
 """Facts that a value may name, with their units; ``resistance`` and ``capacitance`` are those of the part itself."""
-WORD_FACTS: Final = ("dielectric", "kind", "role", "certainty", "size")
+WORD_FACTS: Final = (
+    "dielectric",
+    "kind",
+    "role",
+    "certainty",
+    "size",
+    *(AGREEMENT + about for about in AGREEMENTS),
+)
 """Facts that are words, for ``one-of``."""
 COUNTS: Final[Mapping[str, str]] = {"count": "1", "path_resistance": "Ω"}
 """What is read off the network itself, with its unit."""

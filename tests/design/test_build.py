@@ -5,7 +5,7 @@ import pytest
 from rcrules import design, readers
 from rcrules.design import Design
 from rcrules.errors import UserMistake
-from rcrules.readers import Export, Source
+from rcrules.readers import Export, Remark, Source
 
 NETLIST = """<export version="E"><components>
 <comp ref="R10"><value>4k7</value><fields><field name="Tol">1%</field></fields>
@@ -57,16 +57,20 @@ def test_a_part_that_any_export_says_is_not_fitted_is_not_fitted() -> None:
     assert made.parts["R10"].fitted
 
 
+def remarks(made: Design) -> tuple[Remark, ...]:
+    return (*made.remarks, *design.told(made))
+
+
 def test_parts_of_one_export_alone_are_kept_and_told() -> None:
     made = built()
     assert made.parts["C7"].pins == ()
-    texts = [remark.text for remark in made.remarks]
+    texts = [remark.text for remark in remarks(made)]
     assert "in the BOM, not in the netlist (gauge.xml): C7" in texts
     assert "in the netlist, not in the BOM (bom.csv): TP1" in texts
 
 
 def test_values_that_contradict_are_told_with_both_places() -> None:
-    remark = built().remarks[0]
+    remark = remarks(built())[0]
     assert remark.text == "R2: BOM value '12k', netlist value '10k' (gauge.xml:4); the first is taken"
     assert str(remark.place) == "bom.csv:3:4"
 
@@ -83,34 +87,34 @@ def test_values_that_say_the_same_in_other_words_do_not_contradict() -> None:
     for one, other in same:
         netlist = f"<export><components><comp ref='R1'><value>{one}</value></comp></components></export>"
         made = built(f'Ref,Value\nR1,"{other}"\n', netlist)
-        assert made.remarks == (), (one, other)
+        assert remarks(made) == (), (one, other)
 
 
 def test_the_same_contradiction_on_many_parts_is_told_once() -> None:
     refs = [f"R{number}" for number in range(1, 21)]
     components = "".join(f"<comp ref='{ref}'><value>1k</value></comp>" for ref in refs)
     made = built(f'Ref,Value\n"{",".join(refs)}",2k\n', f"<export><components>{components}</components></export>")
-    (remark,) = made.remarks
+    (remark,) = remarks(made)
     assert remark.text.startswith("R1, R2, R3, R4, R5, R6, R7, R8, R9, R10, R11, R12 and 8 more: BOM value '2k'")
 
 
 def test_many_contradictions_share_a_remark() -> None:
     components = "".join(f"<comp ref='R{number}'><value>{number}k</value></comp>" for number in range(1, 6))
     rows = "".join(f"R{number},{number}1k\n" for number in range(1, 6))
-    (remark,) = built(f"Ref,Value\n{rows}", f"<export><components>{components}</components></export>").remarks
+    (remark,) = remarks(built(f"Ref,Value\n{rows}", f"<export><components>{components}</components></export>"))
     assert remark.text.startswith("5 parts: the BOM value is taken, not the netlist value: R1 '11k' not '1k', R2 '21k'")
 
 
 def test_files_of_different_boards_are_told() -> None:
     made = built("Ref,Value\nQ1,QX1\nQ2,QX2\n")
-    assert [remark.text for remark in made.remarks] == [
+    assert [remark.text for remark in remarks(made)] == [
         "no reference stands in both this BOM and gauge.xml: are they of one board?"
     ]
 
 
 def test_a_bom_alone_is_a_design_without_nets() -> None:
     made = built(netlist=None)
-    assert (list(made.parts), dict(made.nets), made.remarks) == (["C7", "R2", "R10"], {}, ())
+    assert (list(made.parts), dict(made.nets), remarks(made)) == (["C7", "R2", "R10"], {}, ())
 
 
 def test_a_part_that_only_stands_in_the_nets_is_a_part() -> None:
@@ -122,7 +126,7 @@ def test_a_part_that_only_stands_in_the_nets_is_a_part() -> None:
 
 def test_remarks_of_the_readers_come_along() -> None:
     made = built("Ref,Value\nR2,10k\nR2,11k\n")
-    assert any("R2 is listed again" in remark.text for remark in made.remarks)
+    assert any("R2 is listed again" in remark.text for remark in remarks(made))
 
 
 def test_a_second_netlist_adds_pins_but_does_not_move_them() -> None:
@@ -130,7 +134,7 @@ def test_a_second_netlist_adds_pins_but_does_not_move_them() -> None:
     second = readers.read(Source(name="b.csv", data=b"net,part,pin\nB,R1,1\nB,R1,2\n"))
     made = design.build([first, second])
     assert [(pin.number, pin.net) for pin in made.parts["R1"].pins] == [("1", "A"), ("2", "B")]
-    assert made.remarks[0].text == "pin 1 of R1 is on 'B'; 'A' of a.csv:2:1 stands"
+    assert remarks(made)[0].text == "pin 1 of R1 is on 'B'; 'A' of a.csv:2:1 stands"
 
 
 def test_the_order_of_the_inputs_changes_nothing_that_is_decided() -> None:
