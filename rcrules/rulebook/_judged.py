@@ -202,7 +202,14 @@ def _every(table: Table) -> Judged | None:
         has.wrong((), f"'{key}' says neither kind nor role", expected='{ kind = "capacitor" } or { role = "bleeder" }')
     told = tuple((key, Text(value=word, at=0), 0) for key, word in words.items() if word is not None)
     call = Call(name="count", arguments=(), options=told, at=0)
-    return Judged(measure=composite(text_of(call), subject, "1"), options={}, subject=subject, value=call)
+    return Judged(measure=composite(_number_of(words), subject, "1"), options={}, subject=subject, value=call)
+
+
+def _number_of(words: Mapping[str, str | None]) -> str:
+    """``number of resistors to supply on its nets``."""
+    what = f"{words['kind']}s" if words.get("kind") else f"{words.get('role')} nodes"
+    to = f" to {words['to']}" if words.get("to") else ""
+    return f"number of {what}{to} {'in its network' if words.get('within') == 'the network' else 'on its nets'}"
 
 
 def _alone(table: Table, inner: Table) -> None:

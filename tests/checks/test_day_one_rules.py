@@ -47,6 +47,29 @@ def test_a_divider_never_exceeds_its_pin_even_when_the_pins_supply_is_off() -> N
     assert outcomes(DIVIDER, SPARED.format(low="20k"), HELD) == {"SENSE": "fails"}
 
 
+OFF = """
+id = "divider-spares-the-pin-that-is-off"
+level = "error"
+role = ["divider-low-pass"]
+measure = "pin_voltage"
+with = { above = "limit" }
+at-most = "0 V"
+"""
+
+
+@pytest.mark.parametrize(
+    ("low", "limit", "outcome"),
+    [("12k", "3.6 V", "holds"), ("12k", "+3V3 + 0.3 V", "fails"), ("1k", "+3V3 + 0.3 V", "holds")],
+)
+def test_a_divider_never_exceeds_the_limit_of_its_pin_that_follows_its_supply(
+    low: str, limit: str, outcome: str
+) -> None:
+    """With its supply off the pin takes 0.3 V: 24 V over 100 kΩ and 12 kΩ leave 2.57 V there, 1 kΩ leaves 0.24 V."""
+    circuit = SPARED.format(low=low) + "U2 y : VDD power-in +3V3\n"
+    project = f'{HELD}[supply."+3V3"]\nvoltage = "3.3 V"\n[pin."U1.IN"]\nmax-voltage = "{limit}"\n'
+    assert outcomes(OFF, circuit, project) == {"SENSE": outcome}
+
+
 POLARISED = """
 id = "polarised-parts-see-no-reverse-voltage"
 level = "error"
@@ -281,6 +304,7 @@ def test_powers_are_of_the_dimension_that_they_say() -> None:
     "text",
     [
         DIVIDER,
+        OFF,
         POLARISED,
         LATER,
         BUS,
