@@ -30,9 +30,13 @@ def some_of(words: tuple[str, ...]) -> Shape:
 TEXTS: Final[Shape] = {
     "anyOf": [TEXT, {"type": "array", "items": TEXT, "minItems": 1, "maxItems": 200}],
 }
+_PLAIN_TEXT: Final[Shape] = {"type": "string", "pattern": "^[^*]*$"}
+PLAIN: Final[Shape] = {
+    "anyOf": [_PLAIN_TEXT, {"type": "array", "items": _PLAIN_TEXT, "minItems": 1, "maxItems": 200}],
+}
 SELECTION: Final[Mapping[str, tuple[str, Shape]]] = {
     "role": ("What resistors and capacitors do at the node.", some_of(ROLES)),
-    "name": ("Whole words in the name of the net or a fed pin, such as RST; marks of active low are ignored.", TEXTS),
+    "name": ("Whole words in the name of the net or a fed pin, such as RST; marks of active low are ignored.", PLAIN),
     "net": ("Globs over net names, such as AIN*.", TEXTS),
     "pin": ("Globs over fed pins, such as U3.NRST.", TEXTS),
     "part": ("Globs over references, such as C1*.", TEXTS),

@@ -1,7 +1,7 @@
 """The JSON schema of rule files, for editors: made from the same tables that the compiler reads by."""
 
 from collections.abc import Mapping
-from typing import Any
+from typing import Any, Final
 
 from rcrules.measures import Measure, Option
 from rcrules.rulebook._judged import HAS, SUBJECTS, subjects_of
@@ -28,6 +28,10 @@ def schema(measures: Mapping[str, Measure]) -> dict[str, Any]:
         "additionalProperties": False,
         "definitions": {"selection": _selection()},
     }
+
+
+_LIMITS: Final = ("at-least", "at-most", "equals")
+"""Of a quantity with a unit they are texts."""
 
 
 def _table(keys: Mapping[str, tuple[str, Shape]], required: tuple[str, ...]) -> dict[str, Any]:
@@ -71,8 +75,22 @@ def _rule(measures: Mapping[str, Measure]) -> dict[str, Any]:
         "properties": properties,
         "additionalProperties": False,
         "anyOf": [{"required": ["extends"]}, _whole()],
-        "allOf": [_options(measure) for measure in measures.values()],
+        "allOf": [*_together(), *(_options(measure) for measure in measures.values())],
     }
+
+
+_NOT_BOTH: Final = (
+    *((one, other) for one in ("equals", "one-of") for other in ("at-least", "at-most")),
+    ("equals", "one-of"),
+    ("measure", "every"),
+)
+
+
+def _together() -> list[dict[str, Any]]:
+    """Keys that cannot stand beside each other, or not alone."""
+    apart = [{"not": {"required": list(pair)}} for pair in _NOT_BOTH]
+    measured = {"anyOf": [{"required": ["measure"]}, {"required": ["extends"]}]}
+    return [*apart, {"if": {"required": ["with"]}, "then": measured}]
 
 
 def _whole() -> dict[str, Any]:
@@ -116,6 +134,7 @@ def _options(measure: Measure) -> dict[str, Any]:
         "properties": {
             "with": {"description": f"Options of {measure.name}. {measure.summary}", **inner},
             "subject": {"enum": list(subjects_of(measure))},
+            **{key: {"type": ["string", "object"]} for key in _LIMITS if measure.unit != "1"},
         }
     }
     told = {"properties": {"measure": {"const": measure.name}}, "required": ["measure"]}
