@@ -9,6 +9,7 @@ from rcrules.checks._subject import Subject
 from rcrules.events import Unmeasurable
 from rcrules.networks import Board, Network
 from rcrules.parts import Known, RatedPart
+from rcrules.vocabulary import HELD_KINDS
 
 
 def count(options: Mapping[str, str], subject: Subject, board: Board) -> int:
@@ -112,7 +113,7 @@ def _ends(what: str, network: Network, board: Board) -> Iterable[str]:
         return (
             end for item in network.branches if item.kind == "capacitor" for end in (item.a, item.b) if end in inside
         )
-    if what in ("supply", "ground"):
+    if what in HELD_KINDS:
         return (net for net in network.held if net in board.held and board.held[net].kind == what)
     return _pinned(what, inside, board)
 

@@ -52,7 +52,7 @@ WORD_FACTS: Final = (
 COUNTS: Final[Mapping[str, str]] = {"count": "1", "path_resistance": "Ω"}
 """What is read off the network itself, with its unit."""
 _PLAIN: Final = "what comes out as a time, a voltage, a plain number …"
-ENDS: Final = ("contact", "capacitor", "pin", "supply", "ground", "connector")
+ENDS: Final = ("contact", "capacitor", "pin", "connector", *HELD_KINDS)
 """Between what ``path_resistance`` counts."""
 _COUNTED: Final[Mapping[str, tuple[str, ...]]] = {
     "kind": PART_KINDS,
