@@ -24,8 +24,13 @@ def agreement(fact: str, part: RatedPart) -> str:
 
 
 def _says_so_too(item: Difference, part: RatedPart) -> bool:
-    """Whether the export that lists a part without a mark says in its value text that it is not fitted."""
-    return item.about == "fitting" and any(not read_value(fact.text, part.kind).fitted for fact in item.said)
+    """Whether texts that differ mean the same: one value, or a part that is listed without a mark and is not fitted."""
+    if item.about not in ("fitting", "value"):
+        return False
+    read = [read_value(fact.text, part.kind) for fact in item.said]
+    if item.about == "fitting":
+        return any(not found.fitted for found in read)
+    return None not in (values := {found.value for found in read}) and len(values) == 1
 
 
 def differing(board: Board) -> list[RatedPart]:

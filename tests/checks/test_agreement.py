@@ -38,6 +38,11 @@ def test_another_value_is_a_finding_with_both_places() -> None:
     assert failing(judged(BOM.replace("R1,10k", "R1,12k"))) == [("values-agree", ["R1"], reason)]
 
 
+@pytest.mark.parametrize("text", ["0.01M 1%", "10kÂ\u03a9", "10000", "10K 0.1W"])
+def test_one_value_in_other_letters_agrees(text: str) -> None:
+    assert [rule for rule, _, _ in failing(judged(BOM.replace("R1,10k 1%", f"R1,{text}")))] in ([], ["ratings-agree"])
+
+
 def test_a_part_of_one_input_alone_is_a_finding() -> None:
     found = failing(judged(BOM.replace("C2,", "C9,")))
     assert found == [
