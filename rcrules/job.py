@@ -33,6 +33,8 @@ class Job:
     samples: int = 0
     """Random cases of each finding; 0 = no statistics."""
     seed: int = 0
+    variant: str = ""
+    """Of the board; '' = that of the project file, else the base."""
     limits: tuple[tuple[str, int], ...] = ()
     """What is read of one input, by names of vocabulary.LIMITS; before those of the project file."""
 
@@ -58,6 +60,8 @@ def read_job(job: Job) -> "tuple[Project, list[Export], list[Rule], list[Waiver]
         with problems.collecting():
             exports.append(_export(name, project, job))
     problems.mistakes += _twice(exports)
+    with problems.collecting():
+        exports, project = _varied(exports, project, job)
     if job.with_rules:
         with problems.collecting():
             rules = _rules(job, project)
@@ -105,6 +109,16 @@ def _twice(exports: "Sequence[Export]") -> list[Mistake]:
             )
         first.setdefault(export.sha256, export.source)
     return found
+
+
+def _varied(exports: "list[Export]", project: "Project", job: Job) -> "tuple[list[Export], Project]":
+    """The exports for the variant asked for, and the project with its name in that of the board."""
+    from rcrules.design import vary
+
+    name = job.variant or project.variant or ""
+    written = None if job.variant else project.variant_at
+    found = vary(exports, name, written or Place(file="--variant"))
+    return found, replace(project, variant=name) if name else project
 
 
 def _folder(project: "Project") -> Path:

@@ -123,7 +123,7 @@ def _document(job: Job, project: "Project", board: "Board", rules: "list[Rule]")
     quantities, parameters = inventory.node_quantities(board, project)
     found = Document(
         tool=__version__,
-        board=inventory.board_counts(board, project.name),
+        board=inventory.board_counts(board, project.name, project.variant),
         inputs=inventory.inputs(board.design.exports),
         conditions=inventory.conditions(project),
         parts=[],

@@ -144,6 +144,7 @@ def jobs_of(chosen: argparse.Namespace, *, with_rules: bool, derived: bool = Fal
             derived=derived,
             samples=getattr(chosen, "samples", 0),
             seed=getattr(chosen, "seed", 0),
+            variant=chosen.variant,
             limits=tuple(chosen.limit),
         )
         for project in projects

@@ -18,12 +18,15 @@ _SHOWN: Final = 12
 """References in one remark."""
 
 
-def board_counts(board: Board, name: str | None) -> Json:
-    """Name (of the project, a title, or the first input) and counts; pins are connections, and pins on no net."""
+def board_counts(board: Board, name: str | None, variant: str | None) -> Json:
+    """Name (of the project, a title, or the first input) and counts; pins are connections, and pins on no net.
+
+    variant: stands behind the name, so that two variants of a board are two boards everywhere.
+    """
     rows = listed(board)
     capacitors = sum(is_capacitor(part) for part in rows)
     return {
-        "name": name or _title(_ordered(board.design.exports)),
+        "name": (name or _title(_ordered(board.design.exports))) + (f" ({variant})" if variant else ""),
         "parts": len(board.design.parts),
         "nets": len(board.design.nets),
         "pins": sum(len(part.pins) + len(part.open_pins) for part in board.design.parts.values()),

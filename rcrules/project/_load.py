@@ -27,7 +27,7 @@ _TABLES: Final = (
     "board", "conditions", "supply", "ground", "net", "pin", "part", "defaults", "columns", "settings", "limits",
     "part-number", "codes",
 )  # fmt: skip
-_BOARD: Final = ("name", "netlist", "bom", "rules", "waivers", "part-numbers")
+_BOARD: Final = ("name", "netlist", "bom", "variant", "rules", "waivers", "part-numbers")
 
 
 def find(start_folder: Path) -> Path | None:
@@ -97,6 +97,8 @@ def _board(board: Table) -> dict[str, Any]:
         "name": board.text("name"),
         "netlists": _paths(board, "netlist"),
         "boms": _paths(board, "bom"),
+        "variant": board.text("variant"),
+        "variant_at": board.place_of("variant") if "variant" in board.data else None,
         "rules": _paths(board, "rules"),
         "waivers": waivers[0] if waivers else None,
     }

@@ -160,6 +160,10 @@ class Project:
     boms: tuple[str, ...] = ()
     rules: tuple[str, ...] = ()
     """Names of shipped packs, and paths relative to the folder of the file."""
+    variant: str | None = None
+    """Of the board; None = the base."""
+    variant_at: Place | None = None
+    """Where it is named."""
     waivers: str | None = None
     temperature: Spread | None = None
     """[degC]"""

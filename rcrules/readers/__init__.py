@@ -1,7 +1,8 @@
 """Step 1: files in, exports out."""
 
 from rcrules.readers._bounds import Limits
-from rcrules.readers._export import Cell, Export, ExportPart, ExportPin, Reader, Remark, Source
+from rcrules.readers._export import Cell, Export, ExportPart, ExportPin, Reader, Remark, Source, Variant
+from rcrules.readers._fitting import fitted_in, tells_fitting
 from rcrules.readers._load import load
 from rcrules.readers._read import read
 
@@ -14,6 +15,9 @@ __all__ = [
     "Reader",
     "Remark",
     "Source",
+    "Variant",
+    "fitted_in",
     "load",
     "read",
+    "tells_fitting",
 ]

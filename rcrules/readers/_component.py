@@ -12,6 +12,16 @@ Node = tuple[str, str, str, str, int]
 
 
 @dataclass(slots=True, kw_only=True)
+class Departure:
+    """What a variant of the board has otherwise at a component."""
+
+    name: str
+    line: int
+    properties: list[Entry] = field(default_factory=list)
+    fields: list[Entry] = field(default_factory=list)
+
+
+@dataclass(slots=True, kw_only=True)
 class Component:
     """A component as written."""
 
@@ -28,7 +38,7 @@ class Component:
     fields: list[Entry] = field(default_factory=list)
     properties: list[Entry] = field(default_factory=list)
     """The same fields once more in some versions, then fields of the sheet, then flags."""
-    variants: list[str] = field(default_factory=list)
+    variants: list[Departure] = field(default_factory=list)
     omitted: str = ""
     """Why the part is not fitted, where the format has its own way to say so."""
 
@@ -47,6 +57,10 @@ def refuse_long(file: str, component: Component) -> None:
     entries = (*component.fields, *component.properties)
     _bounds.bound(file, component.line, "fields of one part", len(entries), _bounds.MAX_FIELDS)
     texts = [component.value, component.footprint, component.description, component.symbol, component.sheet]
-    for name, said, _ in entries:
+    departures = [entry for variant in component.variants for entry in (*variant.properties, *variant.fields)]
+    _bounds.bound(file, component.line, "variants of one part", len(component.variants), _bounds.MAX_FIELDS)
+    _bounds.bound(file, component.line, "fields of the variants of one part", len(departures), _bounds.MAX_FIELDS)
+    texts += (variant.name for variant in component.variants)
+    for name, said, _ in (*entries, *departures):
         texts += name, said or ""
     _bounds.named(file, component.line, "a text", max(texts, key=len), _bounds.MAX_TEXT)

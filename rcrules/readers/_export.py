@@ -27,6 +27,19 @@ class Cell:
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
+class Variant:
+    """How one variant of the board departs from the base at a part."""
+
+    place: Place
+    fitted: bool | None = None
+    """None = as in the base."""
+    value: Cell | None = None
+    """None = that of the base."""
+    fields: Mapping[str, Cell] = field(default_factory=dict)
+    """Fields that stand in the place of those of the base."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
 class ExportPart:
     """One reference of the export."""
 
@@ -44,6 +57,8 @@ class ExportPart:
     fitted: bool | None = None
     """False where the export says by flag, column or text that the part is not fitted; None = not said."""
     fitted_why: str = ""
+    variants: Mapping[str, Variant] = field(default_factory=dict)
+    """By the name of the variant."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

@@ -54,6 +54,20 @@ def fitting(value: str, fields: Iterable[tuple[str, str]]) -> tuple[bool | None,
     return answer, why
 
 
+def fitted_in(text: str) -> bool | None:
+    """What a cell in a column of its own for a variant says: fitted, not fitted, or (None) something else."""
+    word = text.strip().lower()
+    if word in _NO or said_not_fitted(text):
+        return False
+    return True if word in _YES or word in _FIT_NAMES else None
+
+
+def tells_fitting(column: str) -> bool:
+    """Whether a column is known to say what is fitted, or how many, for the board as a whole."""
+    plain = _plain_name(column)
+    return plain in _OMIT_NAMES | _FIT_NAMES | _NOTE_NAMES | {"qty", "quantity", "count", "amount", "item", "no", "nr"}
+
+
 def _field_says(name: str, text: str) -> bool | None:
     word = text.lower()
     if not word:

@@ -7,8 +7,8 @@ from typing import Final, Literal
 from rcrules.errors import Place
 from rcrules.readers import _bounds
 from rcrules.readers._columns import DESCRIPTION, plain
-from rcrules.readers._component import Component, LibraryPart, Node, refuse_long
-from rcrules.readers._export import Cell, Export, ExportPart, ExportPin, Remark, Source
+from rcrules.readers._component import Component, Departure, LibraryPart, Node, refuse_long
+from rcrules.readers._export import Cell, Export, ExportPart, ExportPin, Remark, Source, Variant
 from rcrules.readers._fitting import fitting
 from rcrules.readers._pin_types import pin_type
 from rcrules.readers._remarks import Remarks
@@ -123,9 +123,6 @@ class Netlist:
         fields, flagged = self._fields(component)
         flagged = component.omitted or flagged
         fitted, why = (False, flagged) if flagged else fitting(component.value, _texts(fields))
-        if component.variants:
-            named = ", ".join(component.variants)
-            self.remark(component.line, f"{component.ref} differs in the variants {named}; the base is taken")
         return ExportPart(
             ref=component.ref,
             place=self.place(component.line),
@@ -137,7 +134,17 @@ class Netlist:
             fields=fields,
             fitted=fitted,
             fitted_why=why,
+            variants={item.name: self._variant(component, item) for item in component.variants if item.name},
         )
+
+    def _variant(self, component: Component, departure: Departure) -> Variant:
+        fields: dict[str, Cell] = {}
+        for name, text, line in departure.fields:
+            self._keep(fields, component, name, text or "", line)
+        value = next((fields.pop(name) for name in tuple(fields) if name.lower() == "value"), None)
+        flags = (text for name, text, _ in departure.properties if name.strip().lower() == "dnp")
+        fitted = next((text is not None and text.strip().lower() in _NO for text in flags), None)
+        return Variant(place=self.place(departure.line), fitted=fitted, value=value, fields=fields)
 
     def _description(self, component: Component, fields: Mapping[str, Cell]) -> str:
         """The part's own description; else what the library says of its symbol."""

@@ -4,7 +4,7 @@ import re
 from collections.abc import Mapping
 from typing import Final
 
-from rcrules.readers._component import Component, Entry, LibraryPart
+from rcrules.readers._component import Component, Departure, Entry, LibraryPart
 from rcrules.readers._export import Export, Reader, Source
 from rcrules.readers._netlist import Netlist
 from rcrules.readers._sexpr import Form, parse
@@ -74,15 +74,29 @@ def _fill(component: Component, child: Form) -> None:
         case "fields":
             component.fields.extend(_entry(item, _first(item)) for item in child.forms)
         case "property":
-            value = child.find("value")
-            component.properties.append(_entry(child, None if value is None else _first(value)))
+            component.properties.append(_property(child))
         case "libsource":
             component.library, component.symbol = _resolved(child.text("lib")), _resolved(child.text("part"))
             component.description = component.description or _resolved(child.text("description"))
         case "sheetpath":
             component.sheet = _resolved(child.text("names"))
         case "variants":
-            component.variants.extend(_resolved(item.text("name")) for item in child.forms)
+            component.variants.extend(_departure(item) for item in child.forms)
+
+
+def _property(form: Form) -> Entry:
+    value = form.find("value")
+    return _entry(form, None if value is None else _first(value))
+
+
+def _departure(form: Form) -> Departure:
+    found = Departure(name=_resolved(form.text("name")).strip(), line=form.line)
+    for child in form.forms:
+        if child.head == "property":
+            found.properties.append(_property(child))
+        elif child.head == "fields":
+            found.fields.extend(_entry(item, _first(item)) for item in child.forms)
+    return found
 
 
 def _entry(item: Form, text: str | None) -> Entry:

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Callable, Mapping
 from typing import TYPE_CHECKING, Final
 
-from rcrules.readers._component import Component, Entry, LibraryPart
+from rcrules.readers._component import Component, Departure, Entry, LibraryPart
 from rcrules.readers._export import Export, Reader, Source
 from rcrules.readers._netlist import Netlist
 from rcrules.readers._xml import root_name
@@ -65,7 +65,17 @@ def _fill(component: Component, child: _Element, tag: str, line: Line) -> None:
         case "sheetpath":
             component.sheet = child.get("names", "")
         case "variants":
-            component.variants.extend(item.get("name", "") for item in child)
+            component.variants.extend(_departure(item, line) for item in child)
+
+
+def _departure(element: _Element, line: Line) -> Departure:
+    found = Departure(name=element.get("name", "").strip(), line=line(element))
+    for child in element:
+        if local(child) == "property":
+            found.properties.append(_entry(child, child.get("value"), line))
+        elif local(child) == "fields":
+            found.fields.extend(_entry(item, item.text, line) for item in child)
+    return found
 
 
 def _entry(item: _Element, text: str | None, line: Line) -> Entry:

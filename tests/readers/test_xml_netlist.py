@@ -157,10 +157,18 @@ def test_fields_say_that_a_part_is_not_fitted() -> None:
         assert (part.fitted, part.fitted_why) == (False, f"{name} = {text!r}")
 
 
-def test_variants_of_a_component_are_said_and_the_base_is_taken() -> None:
-    variants = '<variants><variant name="lite"/></variants>'
-    export = read(f'<export><components><comp ref="R1">{variants}</comp></components></export>')
-    assert export.remarks[0].text == "R1 differs in the variants lite; the base is taken"
+def test_what_variants_have_otherwise_at_a_component_is_kept() -> None:
+    variants = (
+        '<variants><variant name="lite"><property name="dnp" value="1"/></variant>'
+        '<variant name="full"><property name="dnp" value="0"/><fields><field name="Value">22k</field>'
+        '<field name="Tol">1%</field></fields></variant></variants>'
+    )
+    (part,) = read(f'<export><components><comp ref="R1">{variants}</comp></components></export>').parts
+    assert {name: item.fitted for name, item in part.variants.items()} == {"lite": False, "full": True}
+    full = part.variants["full"]
+    assert full.value is not None
+    assert (full.value.text, full.fields["Tol"].text) == ("22k", "1%")
+
 
 
 def test_blank_lines_before_the_declaration_do_not_shift_line_numbers() -> None:
