@@ -103,8 +103,7 @@ def _statistics(judged: Judged, board: Board, project: Project, asked: Asked) ->
     solution, problem, case = judged.verdict.solution, judged.problem, judged.case
     if solution is None or problem is None:
         return None
-    name = fingerprint(case.rule.id, case.subject, board)
-    return statistics(asked, case, problem, solution.bounds, board, project, name)
+    return statistics(asked, case, problem, solution.bounds, board, project)
 
 
 def _measured(judged: Judged) -> Quantity | None:

@@ -3,7 +3,6 @@
 import math
 from collections.abc import Sequence
 from typing import Final
-from zlib import crc32
 
 import numpy as np
 
@@ -24,15 +23,14 @@ _QUANTILES: Final = (0.00135, 0.5, 0.99865)
 
 
 def statistics(
-    asked: Asked, case: Case, problem: Problem, bounds: Bounds, board: Board, project: Project, name: str
+    asked: Asked, case: Case, problem: Problem, bounds: Bounds, board: Board, project: Project
 ) -> Json | None:
     """Fraction of random cases that fail with its confidence interval, their spread, and the root-sum-square range.
 
-    None where one of the cases has no solution. name: of the finding; each draws cases of its own from the seed,
-    whatever else is judged.
+    None where one of the cases has no solution.
     """
     distributions = _distributions(problem, board, project)
-    drawn = samples(problem.parameters, distributions, asked.samples, (asked.seed, crc32(name.encode())))
+    drawn = samples(problem.parameters, distributions, asked.samples, asked.seed)
     try:
         told = values(problem, case.rule.measure, drawn)
     except (FloatingNode, Unsettled):
@@ -52,9 +50,7 @@ def statistics(
     }
 
 
-def failing(
-    case: Case, problem: Problem, board: Board, project: Project, count: int, seed: Sequence[int]
-) -> int | None:
+def failing(case: Case, problem: Problem, board: Board, project: Project, count: int, seed: int) -> int | None:
     """How many of so many random cases break a limit; None where one of them has no solution."""
     drawn = samples(problem.parameters, _distributions(problem, board, project), count, seed)
     try:

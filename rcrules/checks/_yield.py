@@ -8,7 +8,6 @@ import math
 from collections.abc import Sequence
 from dataclasses import replace
 from typing import Final
-from zlib import crc32
 
 from rcrules.checks._asked import Asked
 from rcrules.checks._ends import End, with_ends
@@ -48,9 +47,8 @@ def _judged(case: Case, problem: Problem, verdict: Verdict, board: Board, projec
     if verdict.solution is None or verdict.outcome == "holds" or passing is None:
         return verdict
     count = counted(passing, asked)
-    seed = (asked.seed, crc32(f"{case.rule.id} {case.subject.net} {case.subject.refs}".encode()))
     found = [
-        _outcome(failing(case, with_ends(problem, {}, end), board, project, count, seed), count, passing)
+        _outcome(failing(case, with_ends(problem, {}, end), board, project, count, asked.seed), count, passing)
         for end in _ENDS
     ]
     outcomes = {outcome for outcome, _ in found}
