@@ -134,7 +134,10 @@ def _export(path: str, project: "Project", job: Job) -> "Export":
     said = {**project.limits, **dict(job.limits)}
     limits = Limits(**{name.replace("-", "_"): most for name, most in said.items()})
     source = load(path, limits, named_in=None if job.inputs else f"[board] of {project.file}")
-    return read(replace(source, name=shown(source.name)), project.columns)
+    own = source.folder
+    within = project.file and own and own.resolve().is_relative_to(_folder(project).resolve())
+    folder = _folder(project) if within else own
+    return read(replace(source, name=shown(source.name), folder=folder), project.columns)
 
 
 def _rules(job: Job, project: "Project") -> "list[Rule]":

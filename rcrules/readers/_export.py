@@ -2,6 +2,7 @@
 
 from collections.abc import Callable, Mapping
 from dataclasses import dataclass, field
+from pathlib import Path
 from typing import Literal
 
 from rcrules.errors import Place
@@ -16,6 +17,10 @@ class Source:
     """Path as given (relative), or '<stdin>'."""
     data: bytes
     limits: Limits = USUAL
+    path: Path | None = None
+    """Where the file lies; None for standard input."""
+    folder: Path | None = None
+    """Folder of the project: files that this one names are read where they lie in it; None = none are."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

@@ -30,7 +30,6 @@ _TEXTS: Final = tuple(
     for pattern, name in (
         (r"\A\s*(?:#[^\n]*\n\s*)*\(\s*(?:\{[^\n]*\n\s*)?\(\s*/?[0-9a-f]{6,}\s", "an older parenthesised list of parts"),
         (r"\A\s*\(\s*\w+_(?:sch|pcb)\b", "a schematic or board file, not a netlist"),
-        (r"^\.(?:subckt|ends?|model|param|include|lib|tran|ac|dc|op|control|title)\b", "a SPICE deck"),
         (r"\A\s*\(", "a parenthesised text, but no netlist known here"),
         (r"\A\s*[{\[]\s*[\"{\[\]}]", "a JSON text"),
     )
@@ -41,7 +40,6 @@ _OURS: Final = (
     dollar_list.CLAIM,
     bracket_list.CLAIM,
 )
-_ELEMENT_LINE: Final = re.compile(r"^[RCLVIDQMX]\w*(?: +[^\s,;|]+){3,}[ \r]*$", re.IGNORECASE | re.MULTILINE)
 _ROOTS: Final = {"html": "an HTML page", "svg": "a picture"}
 
 
@@ -76,10 +74,7 @@ def unknown(source: Source) -> UserMistake:
 def _text_format(text: str) -> str | None:
     if any(claim.search(text) for claim in _OURS):
         return None
-    for pattern, name in _TEXTS:
-        if pattern.search(text):
-            return name
-    return "a SPICE deck" if len(_ELEMENT_LINE.findall(text)) > 1 else None
+    return next((name for pattern, name in _TEXTS if pattern.search(text)), None)
 
 
 def _foreign(source: Source, found: str, instead: str) -> UserMistake:

@@ -1,6 +1,7 @@
 """Files and standard input to sources."""
 
 import sys
+from dataclasses import replace
 from pathlib import Path
 
 from rcrules.readers._bounds import USUAL, Limits
@@ -18,7 +19,8 @@ def load(path: str, limits: Limits = USUAL, named_in: str | None = None) -> Sour
         raise refusal("command line", "an input without a name", expected="a file, or -", do="check the quotes")
     try:
         with Path(path).open("rb") as file:
-            return _whole(path, file.read(most + 1), limits)
+            whole = _whole(path, file.read(most + 1), limits)
+        return replace(whole, path=Path(path), folder=Path(path).parent)
     except FileNotFoundError as error:
         raise refusal(path, "no such file", expected=None, do=do) from error
     except (OSError, ValueError) as error:

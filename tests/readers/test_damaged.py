@@ -86,9 +86,22 @@ R1-1
 J1,2
 )
 """
+DECK = b"""a title
+.param r={2*k1} k1=1k
+.subckt F a b params: c=1u
+R1 a b {r+1} tc1=10u
+C1 b 0 {c}
+.ends F
+X1 in out F c='2*3n' ; an instance
+D1 out
++ in DX
+V1 in gnd dc 3.3
+.include x.inc
+.end
+"""
 NETLISTS = {"xml": XML, "sexpr": SEXPR, "edif": EDIF, "ipc-d-356": TESTED, "ipc-2581": BOARD, "bom-xml": LISTED}
 NETLISTS |= {"star-list": STARS, "dollar-list": DOLLARS}
-TABLES = {"pins": PINS, "bracket-list": BRACKETS, "bom": BOM, "utf-16": BOM.decode().encode("utf-16")}
+TABLES = {"spice": DECK, "pins": PINS, "bracket-list": BRACKETS, "bom": BOM, "utf-16": BOM.decode().encode("utf-16")}
 TEXTS = {**NETLISTS, **TABLES}
 PIECES = (
     b"\0",

@@ -8,10 +8,10 @@ from hypothesis import strategies as st
 
 from rcrules.design import build
 from rcrules.readers import Export
-from tests.readers.test_damaged import BOARD, BRACKETS, DOLLARS, EDIF, LISTED, PINS, SEXPR, STARS, TESTED, outcome
+from tests.readers.test_damaged import BOARD, BRACKETS, DECK, DOLLARS, EDIF, LISTED, PINS, SEXPR, STARS, TESTED, outcome
 
 SEEDS = {"edif": EDIF, "ipc-d-356": TESTED, "ipc-2581": BOARD, "bom-xml": LISTED, "sexpr": SEXPR, "pins": PINS}
-SEEDS |= {"star-list": STARS, "dollar-list": DOLLARS, "bracket-list": BRACKETS}
+SEEDS |= {"star-list": STARS, "dollar-list": DOLLARS, "bracket-list": BRACKETS, "spice": DECK}
 WORD = re.compile(rb"\s+|[()<>/=,\"]|[^\s()<>/=,\"]+")
 ODD = (
     b"",

@@ -35,7 +35,6 @@ FOREIGN = {
     "an older parenthesised list of parts": b"# an export of old\n(\n ( /513B6FE5 $noname  R27 10k {Lib=R}\n",
     "a parenthesised text, but no netlist known here": b"(netlist (R1))",
     "XML with the root <schematic>": b"<schematic><component/></schematic>",
-    "a SPICE deck": b"* a filter\nR1 in out 10k\nC1 out 0 100n\n.tran 1u 1m\n.end\n",
     "a JSON text": b'{"parts": ["R1"],\n "nets": []}\n',
 }
 
