@@ -138,6 +138,7 @@ def _depends(part: Part, reads: ValueKind, value: Known | Unknown, named: _Named
         value=value.si if isinstance(value, Known) else 0.0,
         tolerance=_pair(named["tolerance"]),
         coefficient=_coefficient(facts, tables_only=reads == "capacitor"),
+        load_life=next(((t.load_life.high, origin) for origin, t in facts.tables if t.load_life is not None), None),
         dielectric=dielectric,
         polarised=reads == "capacitor" and (dielectric in ELECTROLYTIC or _polar(part)),
         curve=curve,

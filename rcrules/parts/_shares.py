@@ -1,5 +1,6 @@
 """What spreads a part's value: tolerance, temperature, bias, ageing; given or assumed, each with its origin."""
 
+import math
 from dataclasses import dataclass
 from typing import Final
 
@@ -19,6 +20,8 @@ _OUTSIDE: Final = (-0.80, 0.30)
 """Change of a ceramic outside the temperatures of its letter code, where nothing is promised."""
 _BIAS: Final = ((1e-6, -0.60), (1e-7, -0.30), (0.0, -0.10))
 """From which capacitance [F], the loss that DC voltage up to the rating may cause in a class 2 ceramic."""
+_LOAD_LIFE: Final = ((1000.0, 0.01), (math.inf, 0.02))
+"""Hours, and the drift of a resistor up to there."""
 _CONDITIONS: Final = "[conditions] temperature = "
 
 
@@ -80,6 +83,25 @@ def resistor_drift(ohms: float, coefficient: float | None, origin: str, around: 
         return drift(-coefficient, coefficient, words, around, given=True, ask="")
     usual = 400e-6 if ohms < 10 else 100e-6 if ohms <= 1e6 else 200e-6
     return drift(-usual, usual, show(usual, "1/K"), around, given=False, ask=f'{ask} tcr = "…"')
+
+
+def load_life(said: tuple[float, str] | None, around: Conditions, ask: str) -> tuple[Share, ...]:
+    """Drift of a resistor over its life: what is said; else, where a life is given, that of thick-film chips.
+
+    1 % over 1000 h and 2 % over 8000 h at rated power and 70 °C are the limits of a thick-film data sheet.
+    """
+    if said is not None:
+        share, origin = said
+        return (_both_ways(share, f"load life {show(share, '%')} from {origin}", given=True, ask=""),)
+    if not around.life_given:
+        return ()
+    share = next(share for hours, share in _LOAD_LIFE if around.life <= hours * 3600.0)
+    words = f"assumed: load life of a thick-film chip, {show(share, '%')}"
+    return (_both_ways(share, words, given=False, ask=f'{ask} load-life = "…"'),)
+
+
+def _both_ways(share: float, origin: str, *, given: bool, ask: str) -> Share:
+    return Share(name="ageing", low=-share, high=share, given=given, origin=origin, ask=ask)
 
 
 def capacitor_drift(dielectric: str | None, around: Conditions, ask: str, *, electrolytic: bool) -> Share:

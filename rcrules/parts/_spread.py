@@ -13,6 +13,7 @@ from rcrules.parts._shares import (
     capacitor_drift,
     curve_share,
     drift,
+    load_life,
     resistor_drift,
     tolerance,
 )
@@ -30,6 +31,8 @@ class Written:
     """Relative low and high, origin."""
     coefficient: tuple[float, str] | None
     """[1/K] both ways, origin."""
+    load_life: tuple[float, str] | None
+    """Drift of a resistor over its life, both ways [1], origin."""
     dielectric: str | None
     polarised: bool
     curve: tuple[tuple[float, float], ...]
@@ -41,14 +44,15 @@ class Written:
 
 @lru_cache(maxsize=16384)
 def spread(part: Written, around: Conditions) -> tuple[Share, ...]:
-    """Tolerance, temperature, and for capacitors bias and ageing where they have them."""
+    """Tolerance, temperature, load life of resistors; of capacitors bias and ageing where they have them."""
     if part.value == 0:
         return ()
     given = part.tolerance
     first = tolerance(part.kind, given[:2] if given else None, given[2] if given else "", part.ask)
     if part.kind == "resistor":
         coefficient, origin = part.coefficient or (None, "")
-        return first, resistor_drift(part.value, coefficient, origin, around, part.ask)
+        drifted = load_life(part.load_life, around, part.ask)
+        return first, resistor_drift(part.value, coefficient, origin, around, part.ask), *drifted
     return (first, *_of_capacitor(part, around))
 
 

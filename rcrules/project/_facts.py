@@ -67,6 +67,7 @@ DEFAULTS: Final[Mapping[str, Reader]] = {
     "rated-power": Amount("W", 0),
     "dielectric": dielectric,
     "tcr": Amount("1/K"),
+    "load-life": Amount("1", 0),
     "bias-curve": bias_curve,
     "distribution": word_of("uniform", "normal"),
     "absorption": Amount("1", 0),

@@ -81,6 +81,8 @@ class PartFacts:
     rated_power: Spread | None = None
     dielectric: str | None = None
     tcr: Spread | None = None
+    load_life: Spread | None = None
+    """How far a resistor may drift over its life, either way [1]."""
     bias_curve: tuple[tuple[float, float], ...] = ()
     """Points of [V] and remaining fraction."""
     distribution: str | None = None

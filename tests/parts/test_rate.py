@@ -202,6 +202,20 @@ def test_a_letter_code_gives_temperature_and_ageing_when_conditions_are_given():
     }
 
 
+@pytest.mark.parametrize(("life", "share"), [("1000 h", 0.01), ("8000 h", 0.02), ("10 year", 0.02)])
+def test_a_resistor_drifts_over_a_given_life(life: str, share: float):
+    """Thick-film chips at rated power and 70 °C: 1 % over 1000 h, 2 % over 8000 h (a maker's data sheet)."""
+    found = rated(part("R1", "10k 1%"), Project(life=parse_quantity(life)))
+    assert shares(found)["ageing"] == (-share, share, False)
+    assert [item.ask for item in found.shares if item.name == "ageing"] == ['[part."R1"] load-life = "…"']
+
+
+def test_what_is_said_of_its_drift_replaces_that_and_holds_without_a_life():
+    said = {"resistor": facts(load_life=parse_quantity("0.5 %"))}
+    assert shares(rated(part("R1", "10k 1%"), Project(defaults=said)))["ageing"] == (-0.005, 0.005, True)
+    assert "ageing" not in shares(rated(part("R1", "10k 1%"), Project()))
+
+
 def test_outside_the_temperatures_of_the_letter_nothing_is_promised():
     found = rated(part("C1", "10u X5R"), Project(temperature=parse_quantity("-40 degC .. 105 degC")))
     share = next(share for share in found.shares if share.name == "temperature")
