@@ -25,16 +25,17 @@ _TEXT: Final = re.compile(r"\"([^\"\n]*)\"|'([^'\n]*)'")
 _NAME: Final = re.compile(r"[A-Za-z_][A-Za-z0-9_]*")
 
 
-def parse_condition(text: str) -> Condition:
-    """Read a condition. Raises QuantityError with the offset of the first character not understood."""
+def parse_condition(text: str, mistakes: list[QuantityError]) -> Condition:
+    """Read a condition. Adds every mistake with its offset; after one the reading goes on with the next term."""
     if len(text) > _LONGEST:
-        raise QuantityError("too long for a condition", at=_LONGEST, expected=f"at most {_LONGEST} characters")
-    reader = _Reader(text)
+        expected = f"at most {_LONGEST} characters"
+        mistakes.append(QuantityError("too long for a condition", at=_LONGEST, expected=expected))
+        return _WRONG
+    reader = _Reader(text, mistakes)
     found = reader.condition(0)
     if reader.mark is not None:
-        raise QuantityError(
-            f"'{reader.mark}' not understood", at=reader.at, length=len(reader.mark), expected="the end"
-        )
+        length = len(reader.mark)
+        reader.note(QuantityError(f"'{reader.mark}' not understood", at=reader.at, length=length, expected="the end"))
     return found
 
 
@@ -105,11 +106,15 @@ def _turned(condition: Condition) -> Condition:
     return Junction(word=word, terms=tuple(map(_turned, condition.terms)))
 
 
+_WRONG: Final = Worded(fact="", word="")
+"""Stands for what is not understood."""
+
+
 class _Reader:
     """Splits the text at its marks and reads them one by one."""
 
-    def __init__(self, text: str) -> None:
-        self._pieces = self._split(text)
+    def __init__(self, text: str, mistakes: list[QuantityError]) -> None:
+        self._pieces, self._mistakes = self._split(text), mistakes
         self.at, self.mark, self._words = 0, None, ""  # type: tuple[int, str | None, str]
         self._next()
 
@@ -140,27 +145,41 @@ class _Reader:
     def _inner(self, word: str, depth: int) -> Condition:
         return self._joined("and", depth) if word == "or" else self._term(depth)
 
+    def note(self, error: QuantityError) -> None:
+        """A mistake, once at a place."""
+        if all(other.at != error.at for other in self._mistakes):
+            self._mistakes.append(error)
+
     def _term(self, depth: int) -> Condition:
-        if self.mark == "not" and not self._words.strip():
-            if depth >= _DEEPEST:
-                raise QuantityError("too many 'not'", at=self.at, expected=f"at most {_DEEPEST}")
+        try:
+            if self.mark in ("not", "(") and not self._words.strip():
+                return self._inside(self.mark, depth)
+            return self._comparison()
+        except QuantityError as error:
+            self.note(error)
+        while self.mark not in ("and", "or", ")", None):
             self._next()
+        return _WRONG
+
+    def _inside(self, mark: str, depth: int) -> Condition:
+        """After ``not`` or an opening bracket."""
+        if depth >= _DEEPEST:
+            what = "'not'" if mark == "not" else "brackets"
+            raise QuantityError(f"too many {what}", at=self.at, expected=f"at most {_DEEPEST}")
+        self._next()
+        if mark == "not":
             return _turned(self._term(depth + 1))
-        if self.mark == "(" and not self._words.strip():
-            if depth >= _DEEPEST:
-                raise QuantityError("too many brackets", at=self.at, expected=f"at most {_DEEPEST}")
-            self._next()
-            found = self.condition(depth + 1)
-            if self.mark != ")":
-                raise QuantityError("a bracket that does not close", at=self.at, expected="')'")
-            self._next()
-            if self._words.strip():
-                raise QuantityError(f"'{cut(self._words.strip())}' not understood", at=self.at - len(self._words))
-            return found
-        return self._comparison()
+        found = self.condition(depth + 1)
+        if self.mark != ")":
+            raise QuantityError("a bracket that does not close", at=self.at, expected="')'")
+        self._next()
+        if self._words.strip():
+            start = self.at - len(self._words)
+            raise QuantityError(f"'{cut(self._words.strip())}' not understood", at=start, expected="'and' or 'or'")
+        return found
 
     def _comparison(self) -> Comparison | Worded:
-        sign, start = self.mark, self.at - len(self._words)
+        sign, start = self.mark, self.at - len(self._words.lstrip())
         name = self._words.strip()
         if name in WORDS or sign in ("=", "!="):
             return self._word(name)
@@ -169,22 +188,20 @@ class _Reader:
             raise QuantityError("no comparison", at=self.at, expected="'>=', '<=', '>' or '<'")
         self._next()
         right, right_unit = self._operand()
+        end = self.at - len(self._words) + len(self._words.rstrip())
         if isinstance(left, float) and isinstance(right, float):
-            raise QuantityError("no fact to compare", at=start, length=self.at - start, expected=listed(FACTS))
+            raise QuantityError("no fact to compare", at=start, length=end - start, expected=listed(FACTS))
         if left_unit != right_unit:
             problem = f"{quantity_name(left_unit)} is compared with {quantity_name(right_unit)}"
-            raise QuantityError(problem, at=start, length=self.at - start)
+            raise QuantityError(problem, at=start, length=end - start)
         return Comparison(left=left, right=right, sign=sign)  # type: ignore[arg-type]  # tested above
 
     def _word(self, name: str) -> Worded:
         """A fact that is a word, its sign, and a text in quotes."""
         start, sign = self.at - len(self._words.lstrip()), self.mark
         if name not in WORDS:
-            told = (
-                f"'{cut(name)}' is a number"
-                if name in FACTS
-                else f"no fact is called '{cut(name)}'{guess(name, WORDS)}"
-            )
+            unknown = f"no fact is called '{cut(name)}'{guess(name, WORDS)}"
+            told = f"'{cut(name)}' is a number" if name in FACTS else unknown
             expected = "'>=', '<=', '>' or '<'" if name in FACTS else listed(WORDS)
             raise QuantityError(told, at=start, length=max(len(name), 1), expected=expected)
         if sign not in ("=", "!="):

@@ -19,6 +19,7 @@ MAX_TABLES: Final = 200
 _DEEPEST: Final = 3
 _FIELDS: Final = {"any-of": "any_of", "not": "exclude", "except": "exclude"}
 """Keys of selections inside a selection, and their fields."""
+_COMPARISON: Final = "a comparison such as 'supply_high >= 1.8 V'"
 _BOUND: Final = re.compile(r"\s*(>=|<=)\s*")
 
 
@@ -123,8 +124,13 @@ def _flag(table: Table, key: str) -> dict[str, Any]:
 
 
 def _when(table: Table, key: str) -> dict[str, Any]:
-    found = table.parsed(key, parse_condition, "a comparison such as 'supply_high >= 1.8 V'")
-    return {"when": found, "when_text": str(table.data[key])} if found else {}
+    text = table.text(key, f"{_COMPARISON} in quotes")
+    mistakes: list[QuantityError] = []
+    found = parse_condition(text, mistakes) if text is not None else None
+    for error in sorted(mistakes, key=lambda error: error.at):
+        problem, expected = f"'{key}': {error.problem}", error.expected or _COMPARISON
+        table.wrong(key, problem, at=error.at, length=error.length, expected=expected)
+    return {"when": found, "when_text": text} if found is not None and not mistakes else {}
 
 
 Reader = Callable[[Table, str], dict[str, Any]]

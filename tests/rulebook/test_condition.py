@@ -3,8 +3,16 @@
 import pytest
 
 from rcrules.quantities import QuantityError
-from rcrules.rulebook import Comparison, Junction, holds
-from rcrules.rulebook._condition import parse_condition
+from rcrules.rulebook import Comparison, Condition, Junction, _condition, holds
+
+
+def parse_condition(text: str) -> Condition:
+    """The condition; raises its first mistake."""
+    mistakes: list[QuantityError] = []
+    found = _condition.parse_condition(text, mistakes)
+    if mistakes:
+        raise mistakes[0]
+    return found
 
 
 def test_and_binds_closer_than_or():
@@ -124,3 +132,18 @@ def test_mistakes_in_words_have_an_offset(text, at, problem):
     with pytest.raises(QuantityError) as caught:
         parse_condition(text)
     assert (caught.value.problem[: len(problem)], caught.value.at) == (problem, at)
+
+
+@pytest.mark.parametrize(
+    ("text", "places"),
+    [
+        ("suply_high > 1 V and voltage_low > 2 s or technology = 'tin'", [0, 21, 56]),
+        ("(supply_low > 1 mz and not size >= '0402') or dielectric", [16, 27, 46]),
+        ("(supply_lo > 1 V or (voltage_low > 1 V", [1, 38]),
+        ("> > > and = =", [0, 10]),
+    ],
+)
+def test_all_mistakes_of_a_condition_are_told_at_once(text, places):
+    mistakes: list[QuantityError] = []
+    _condition.parse_condition(text, mistakes)
+    assert sorted(error.at for error in mistakes) == places
