@@ -128,7 +128,8 @@ OF_MEANING = {
     "temperature-difference-limit", "temperature-scaled", "temperatures-added", "value-code", "value-decibels",
     "value-deep", "value-dimensions", "value-limit-dimension", "value-many-mistakes", "value-many-signs-wrong",
     "value-no-quantity", "value-option-missing", "value-syntax", "value-too-many-signs", "value-unknown-measure",
-    "value-unknown-name", "when-dimension", "when-many-mistakes", "when-unknown-fact", "when-word-compared", "when-word-unknown",
+    "value-unknown-name", "when-dimension", "when-many-mistakes",
+    "when-unknown-fact", "when-word-compared", "when-word-unknown",
     "when-word-without-quotes", "word-unknown-fact",
 }  # fmt: skip
 """Broken files whose mistake is one of meaning, which no schema can tell."""
