@@ -11,16 +11,45 @@ from rcrules.readers._spice_sums import Scope, SumError
 
 UNITS: Final = {"R": "Ω", "C": "F", "L": "H"}
 _NODES: Final = {
-    "R": 2, "C": 2, "L": 2, "V": 2, "I": 2, "B": 2, "F": 2, "H": 2, "D": 2, "J": 3, "Z": 3, "M": 4, "Q": 3,
-    "E": 4, "G": 4, "S": 4, "W": 2, "T": 4, "O": 4, "K": 0,
+    "R": 2,
+    "C": 2,
+    "L": 2,
+    "V": 2,
+    "I": 2,
+    "B": 2,
+    "F": 2,
+    "H": 2,
+    "D": 2,
+    "J": 3,
+    "Z": 3,
+    "M": 4,
+    "Q": 3,
+    "E": 4,
+    "G": 4,
+    "S": 4,
+    "W": 2,
+    "T": 4,
+    "O": 4,
+    "K": 0,
 }
 _PIN_NAMES: Final = {
-    "D": ("A", "K"), "Q": ("C", "B", "E", "S"), "M": ("D", "G", "S", "B"), "J": ("D", "G", "S"),
-    "V": ("+", "-"), "I": ("+", "-"),
+    "D": ("A", "K"),
+    "Q": ("C", "B", "E", "S"),
+    "M": ("D", "G", "S", "B"),
+    "J": ("D", "G", "S"),
+    "V": ("+", "-"),
+    "I": ("+", "-"),
 }
 _SYMBOLS: Final = {
-    "V": "voltage source", "I": "current source", "J": "JFET", "Z": "MESFET", "E": "controlled source",
-    "G": "controlled source", "F": "controlled source", "H": "controlled source", "B": "controlled source",
+    "V": "voltage source",
+    "I": "current source",
+    "J": "JFET",
+    "Z": "MESFET",
+    "E": "controlled source",
+    "G": "controlled source",
+    "F": "controlled source",
+    "H": "controlled source",
+    "B": "controlled source",
 }
 _INSTEAD_OF_NODES: Final = frozenset({"poly", "value", "table", "laplace", "freq", "vol", "cur"})
 _WAVES: Final = frozenset({"sin", "pulse", "exp", "pwl", "sffm", "am"})
@@ -141,7 +170,7 @@ def _source(letter: str, rest: tuple[str, ...], scope: Scope, found: Element) ->
         level = 0.0
     found.value = " ".join(rest)[:200]
     if letter == "V" and level and not wave:
-        found.value, found.symbol = show(level, "V", _MOST_DIGITS), "battery"
+        found.value, found.symbol = show(level, "V", _MOST_DIGITS).replace(" ", ""), "battery"
         found.pin_types = ("power-out", "passive")
     elif letter == "V":
         found.pin_types = ("output", "passive")

@@ -17,7 +17,7 @@ _SUFFIXES: Final = tuple(
 )
 """In the order in which they are looked for: ``MEG`` and ``MIL`` before ``M``."""
 _DOUBTED: Final = {
-    "Ω": (re.compile(r"[\d.]+M(?!EG|IL)", re.ASCII), "milliohms", "MEG for megohms"),
+    "Ω": (re.compile(r"[\d.]+M(?![Ee][Gg]|[Ii][Ll])", re.ASCII), "milliohms", "MEG for megohms"),
     "F": (re.compile(r"[\d.]+F", re.ASCII), "femtofarads", "the number without F for farads"),
 }
 

@@ -57,7 +57,7 @@ def deck(*lines: str) -> Export:
 def test_the_deck_is_read_flat_with_its_values_worked_out() -> None:
     export = read(DECK)
     assert (export.reader, export.kind, export.remarks) == ("spice", "netlist", ())
-    assert values(export) == {"X1/R1": "4.747 kΩ", "X1/C1": "100 nF", "R2": "10 MΩ", "R3": "1 TΩ", "V1": "3.3 V"}
+    assert values(export) == {"X1/R1": "4.747 kΩ", "X1/C1": "100 nF", "R2": "10 MΩ", "R3": "1 TΩ", "V1": "3.3V"}
     ends = [(pin.ref, pin.number, pin.net, pin.place.line) for pin in export.pins]
     assert ends == [
         ("X1/R1", "1", "vin", 5),
@@ -104,7 +104,7 @@ def test_what_simulators_do_not_agree_on_has_no_value_and_is_told(word: str) -> 
 
 
 def test_dialect_traps_are_told() -> None:
-    told = said(deck("R1 a 0 10M", "C1 a 0 1F", "R2 a 0 10k 5%"))
+    told = said(deck("R1 a 0 10M", "R3 a 0 3Meg", "R4 a 0 5mil", "C1 a 0 1F", "R2 a 0 10k 5%"))
     assert told == [
         "R1: '10M' is in milliohms here; write MEG for megohms",
         "C1: '1F' is in femtofarads here; write the number without F for farads",
