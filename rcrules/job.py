@@ -50,6 +50,7 @@ def project_of(job: Job) -> "Project":
 def read_job(job: Job) -> "tuple[Project, list[Export], list[Rule], list[Waiver]]":
     """Project, exports, rules and waivers; what is wrong with any of them is told at once."""
     from rcrules.project import Project, read
+    from rcrules.readers import join
 
     path, problems = _project_path(job), Problems()
     project = read(path, str(path), problems) if path else Project()
@@ -60,6 +61,7 @@ def read_job(job: Job) -> "tuple[Project, list[Export], list[Rule], list[Waiver]
         with problems.collecting():
             exports.append(_export(name, project, job))
     problems.mistakes += _twice(exports)
+    exports = [*join(exports)]
     with problems.collecting():
         exports, project = _varied(exports, project, job)
     if job.with_rules:

@@ -3,6 +3,7 @@
 from rcrules.readers._bounds import Limits
 from rcrules.readers._export import Cell, Export, ExportPart, ExportPin, Reader, Remark, Source, Variant
 from rcrules.readers._fitting import fitted_in, tells_fitting
+from rcrules.readers._join import join
 from rcrules.readers._load import load
 from rcrules.readers._read import read
 
@@ -17,6 +18,7 @@ __all__ = [
     "Source",
     "Variant",
     "fitted_in",
+    "join",
     "load",
     "read",
     "tells_fitting",

@@ -89,6 +89,18 @@ class Remark:
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
+class Primitive:
+    """What a library says of every part that is made from one of its entries."""
+
+    value: Cell | None = None
+    symbol: str = ""
+    footprint: str = ""
+    fields: Mapping[str, Cell] = field(default_factory=dict)
+    pins: Mapping[str, tuple[str, str]] = field(default_factory=dict)
+    """Pin number -> name and type of the pin."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
 class Export:
     """Everything read from one file."""
 
@@ -104,6 +116,10 @@ class Export:
     """Every net of the file, also those with one pin or none, in file order, by key."""
     remarks: tuple[Remark, ...] = ()
     title: str = ""
+    by_primitive: bool = False
+    """Whether ``symbol`` of its parts names entries of a library that may be another export's."""
+    library: Mapping[str, Primitive] = field(default_factory=dict)
+    """Entries by name."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

@@ -4,7 +4,7 @@ import re
 from typing import Final
 
 from rcrules.errors import UserMistake
-from rcrules.readers import bracket_list, dollar_list, star_list
+from rcrules.readers import bracket_list, dollar_list, parenthesised_list, star_list
 from rcrules.readers._export import Source
 from rcrules.readers._mistakes import refusal, shorten
 from rcrules.readers._text import head
@@ -28,7 +28,6 @@ _SIGNATURES: Final = (
 _TEXTS: Final = tuple(
     (re.compile(pattern, re.IGNORECASE | re.MULTILINE), name)
     for pattern, name in (
-        (r"\A\s*(?:#[^\n]*\n\s*)*\(\s*(?:\{[^\n]*\n\s*)?\(\s*/?[0-9a-f]{6,}\s", "an older parenthesised list of parts"),
         (r"\A\s*\(\s*\w+_(?:sch|pcb)\b", "a schematic or board file, not a netlist"),
         (r"\A\s*\(", "a parenthesised text, but no netlist known here"),
         (r"\A\s*[{\[]\s*[\"{\[\]}]", "a JSON text"),
@@ -39,6 +38,7 @@ _OURS: Final = (
     star_list.CLAIM,
     dollar_list.CLAIM,
     bracket_list.CLAIM,
+    parenthesised_list.CLAIM,
 )
 _ROOTS: Final = {"html": "an HTML page", "svg": "a picture"}
 

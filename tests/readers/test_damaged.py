@@ -99,8 +99,36 @@ V1 in gnd dc 3.3
 .include x.inc
 .end
 """
+STAMPED = b"""# of old
+(
+ ( /513B6FE5 $noname  R27 10k {Lib=R}
+  (    1 N-000008 )
+  (    2 ? )
+ )
+)
+"""
+NODES = b"""NET_NAME
+'A'
+NODE_NAME R1 2
+ 'B':;
+NODE_NAME C1 1
+END.
+"""
+MADE = b"""primitive 'X';
+ pin
+  'A':
+   PIN_NUMBER='(1)';
+   PINUSE='IN';
+ end_pin;
+ body
+  VALUE='1u';
+ end_body;
+end_primitive;
+END.
+"""
 NETLISTS = {"xml": XML, "sexpr": SEXPR, "edif": EDIF, "ipc-d-356": TESTED, "ipc-2581": BOARD, "bom-xml": LISTED}
 NETLISTS |= {"star-list": STARS, "dollar-list": DOLLARS}
+NETLISTS |= {"parenthesised-list": STAMPED, "nodes": NODES, "primitives": MADE}
 TABLES = {"spice": DECK, "pins": PINS, "bracket-list": BRACKETS, "bom": BOM, "utf-16": BOM.decode().encode("utf-16")}
 TEXTS = {**NETLISTS, **TABLES}
 PIECES = (

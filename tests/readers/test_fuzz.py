@@ -8,10 +8,26 @@ from hypothesis import strategies as st
 
 from rcrules.design import build
 from rcrules.readers import Export
-from tests.readers.test_damaged import BOARD, BRACKETS, DECK, DOLLARS, EDIF, LISTED, PINS, SEXPR, STARS, TESTED, outcome
+from tests.readers.test_damaged import (
+    BOARD,
+    BRACKETS,
+    DECK,
+    DOLLARS,
+    EDIF,
+    LISTED,
+    MADE,
+    NODES,
+    PINS,
+    SEXPR,
+    STAMPED,
+    STARS,
+    TESTED,
+    outcome,
+)
 
 SEEDS = {"edif": EDIF, "ipc-d-356": TESTED, "ipc-2581": BOARD, "bom-xml": LISTED, "sexpr": SEXPR, "pins": PINS}
 SEEDS |= {"star-list": STARS, "dollar-list": DOLLARS, "bracket-list": BRACKETS, "spice": DECK}
+SEEDS |= {"parenthesised-list": STAMPED, "nodes": NODES, "primitives": MADE}
 WORD = re.compile(rb"\s+|[()<>/=,\"]|[^\s()<>/=,\"]+")
 ODD = (
     b"",

@@ -32,7 +32,6 @@ FOREIGN = {
     "an old workbook (OLE2), or a workbook with a password": b"\xd0\xcf\x11\xe0\xa1\xb1\x1a\xe1",
     "a gzip archive": b"\x1f\x8b\x08\x00",
     "binary data": b"\x00\x01\x02\x03" * 300,
-    "an older parenthesised list of parts": b"# an export of old\n(\n ( /513B6FE5 $noname  R27 10k {Lib=R}\n",
     "a parenthesised text, but no netlist known here": b"(netlist (R1))",
     "XML with the root <schematic>": b"<schematic><component/></schematic>",
     "a JSON text": b'{"parts": ["R1"],\n "nets": []}\n',
