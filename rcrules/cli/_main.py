@@ -16,6 +16,7 @@ INTERRUPTED: Final = 130
 def main(arguments: Sequence[str] | None = None) -> int:
     """Run one command; everything but reports goes to standard error."""
     _open_streams()
+    os.environ.setdefault("OPENBLAS_NUM_THREADS", "1")  # over small matrices more only wait
     chosen = parser().parse_args(arguments)
     from rcrules.errors import UserMistake  # help is shown without it
 

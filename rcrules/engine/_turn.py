@@ -14,7 +14,7 @@ TURNS = 12
 """Most rounds of vertex iteration."""
 MANY = 24
 """Columns of unknown sign beyond which every case is dear: one start, few rounds, one place on each line."""
-FEW_TURNS = 2
+FEW_TURNS = 8
 SHARES = (1 / 64, 1 / 8, 1 / 4, 1 / 2, 3 / 4, 7 / 8, 63 / 64)
 """Where a line across the box is scanned; the outermost tell whether a vertex is a peak."""
 
