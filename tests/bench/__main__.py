@@ -1,12 +1,14 @@
-"""All benches: ``python -m tests.bench [engine|start-up|growth ...]``. Ratios within one run; nothing is asserted."""
+"""All benches: ``python -m tests.bench [engine|wide|start-up|growth ...]``. Nothing is asserted."""
 
 import importlib
+import os
 import sys
 
-NAMES = {"engine": "bench_engine", "start-up": "bench_start_up", "growth": "bench_growth"}
+NAMES = {"engine": "bench_engine", "wide": "bench_wide", "start-up": "bench_start_up", "growth": "bench_growth"}
 
 
 def main() -> None:
+    os.environ.setdefault("OPENBLAS_NUM_THREADS", "1")  # as the command does
     for name in sys.argv[1:] or NAMES:
         importlib.import_module(f"tests.bench.{NAMES[name]}").main()
         print()
