@@ -1,9 +1,10 @@
 """Roles of a resistor to a supply and a capacitor to the other rail: power-on delay and supply filter."""
 
 from rcrules.design import Pin
+from rcrules.names import has_token
 from rcrules.networks._family import inverting
 from rcrules.networks._fed import family_of, feeding, kind_fed, kinds, words_of
-from rcrules.networks._fed_words import BUTTON
+from rcrules.networks._fed_words import BUTTON, RESET
 from rcrules.networks._held_names import hint
 from rcrules.networks._named import Facts
 from rcrules.networks._role import Judged
@@ -61,6 +62,17 @@ def power_on_delay(view: View, here: Spot) -> Judged | None:
     if driver is not None and "reset" not in fed:
         return Judged(role="low-pass", sure=False, why=(f"{driver} pulls the net, the resistor is its pull-up",))
     return Judged(role="power-on-delay", sure=driver is None and fed != ["other"], why=_waits(fed, driver))
+
+
+def called_reset(view: View, here: Spot) -> Judged | None:
+    """A net called a reset with a resistor to a supply and a capacitor to ground, where no part is known to take it."""
+    rails = {arm.to for arm in here.resistors} | pulled(view, here)
+    if rails != {"supply"} or {arm.to for arm in here.capacitors} != {"ground"} or kinds(view, feeding(view, here)):
+        return None
+    names = (here.joint, *view.draft.members.get(here.joint, ()))
+    if not any(has_token(name, word) for name in names for word in RESET):
+        return None
+    return Judged(role="power-on-delay", sure=False, why=("its name is a reset's, and no input of it is known",))
 
 
 def pulled(view: View, here: Spot) -> set[str]:

@@ -16,7 +16,7 @@ from rcrules.networks._role_filters import divider, high_pass, low_pass
 from rcrules.networks._role_lines import bias, bus_pull_up, sense_shunt, termination
 from rcrules.networks._role_pairs import bridged
 from rcrules.networks._role_parts import FAR, Ways, ways
-from rcrules.networks._role_resets import power_on_delay, pulled, supply_filter
+from rcrules.networks._role_resets import called_reset, power_on_delay, pulled, supply_filter
 from rcrules.networks._role_switching import debounce, snubber
 from rcrules.networks._role_words import arms_text, fed_text
 from rcrules.networks._spot import Spot, View
@@ -29,6 +29,7 @@ ORDER: Final[tuple[Callable[[View, Spot], Judged | None], ...]] = (
     timing,
     debounce,
     gate_drive,
+    called_reset,
     termination,
     snubber,
     sense_shunt,

@@ -43,6 +43,14 @@ def test_pin_without_a_name_takes_its_net_name_as_last_evidence():
     assert (node.role, node.kinds_fed) == ("power-on-delay", ("reset",))
 
 
+def test_net_named_reset_without_any_part_that_takes_it_is_one_unsurely():
+    for text in ("R1 10k +3V3 NRST\nC1 100n NRST GND", "R1 10k +3V3 NRST\nC1 100n NRST GND\nJ1 1=NRST 2=GND"):
+        node = nodes(text)["NRST"]
+        assert (node.role, node.certainty, node.parts) == ("power-on-delay", "unsure", ("R1", "C1"))
+    assert nodes("R1 10k +3V3 BURST\nC1 100n BURST GND")["BURST"].role != "power-on-delay"
+    assert nodes("R1 10k +3V3 NRST\nC1 100n NRST GND\nR2 10k NRST GND")["NRST"].role != "power-on-delay"
+
+
 def test_net_named_reset_that_no_pull_feeds_is_no_power_on_delay():
     node = nodes("R1 1k D NRST\nC1 1n NRST GND\nU1 IN:input=NRST", hold={"D": "driven"})["NRST"]
     assert node.role == "low-pass"
