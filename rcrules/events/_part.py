@@ -12,6 +12,7 @@ from rcrules.events._contacts import arm
 from rcrules.events._diodes import add_all, widened, with_clamps, with_diodes
 from rcrules.events._opened import opened
 from rcrules.events._options import OptionValue, plain_of
+from rcrules.events._rating import rating_of
 from rcrules.events._series import alone_between, between
 from rcrules.events._sources import Sources, moved
 from rcrules.events._structure import check_paths, structure_of
@@ -20,7 +21,7 @@ from rcrules.events._transients import Scene
 from rcrules.events._unmeasurable import Unmeasurable
 from rcrules.measures import Measure
 from rcrules.networks import OPEN_END, Branch, Network
-from rcrules.parts import Known, RatedPart
+from rcrules.parts import RatedPart
 from rcrules.problems import Form, Problem, Structure, Swing, Waveform, constant
 
 MOST_SOURCES = 8
@@ -94,7 +95,7 @@ def pose_states(bench: Bench, part: RatedPart, measure: Measure, options: Mappin
         at=circuit.terminal(ends[0]),
         against=circuit.terminal(ends[1]),
         element=_element(circuit, part),
-        rating=rating_of(part, measure),
+        rating=rating_of(bench, table, part, measure),
         curves=curves,
         states=states,
         swings=swings_of(circuit, sources) if transient_matters else (),
@@ -141,17 +142,6 @@ def _circuit(bench: Bench, place: Place, table: Table) -> tuple[Circuit, Sources
 
 def _element(circuit: Circuit, part: RatedPart) -> int:
     return next(index for index, item in enumerate(circuit.of(part.kind)) if item.ref == part.ref)
-
-
-def rating_of(part: RatedPart, measure: Measure) -> Form | None:
-    """The rating that a ratio counts in. Raises Unmeasurable where it is not known."""
-    if measure.rating is None:
-        return None
-    rating = part.rated_voltage if measure.rating == "voltage" else part.rated_power
-    if not isinstance(rating, Known):
-        ask = rating.ask or f'[part."{part.ref}"] rated-{measure.rating} = "…"'
-        raise Unmeasurable(f"rated {measure.rating} of {part.ref}: {rating.why}", ask)
-    return constant(rating.si)
 
 
 def ends_of(circuit: Circuit, sources: Sources, name: str) -> tuple[Form, Form]:

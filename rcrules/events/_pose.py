@@ -59,7 +59,7 @@ def pose(
 def _pose_states(bench: Bench, part: RatedPart, measure: Measure, options: Mapping[str, OptionValue]) -> Problem:
     """What lies across a part, as the project file says it or as its circuit gives it. Raises Unmeasurable."""
     if part.across is not None and part.kind == "capacitor":
-        return pose_stated(part, part.across, measure, options)
+        return pose_stated(bench, part, part.across, measure, options)
     try:
         return pose_states(bench, part, measure, options)
     except Unmeasurable as error:

@@ -5,7 +5,7 @@ from collections.abc import Mapping
 from rcrules.events._bench import Bench
 from rcrules.events._circuit import ZERO, Arm, Circuit
 from rcrules.events._options import OptionValue, plain_of
-from rcrules.events._part import rating_of
+from rcrules.events._rating import rating_of
 from rcrules.events._sources import moved
 from rcrules.events._table import Table
 from rcrules.measures import Measure
@@ -15,7 +15,9 @@ from rcrules.problems import Problem, Structure, constant
 from rcrules.quantities import Spread
 
 
-def pose_stated(part: RatedPart, volts: Spread, measure: Measure, options: Mapping[str, OptionValue]) -> Problem:
+def pose_stated(
+    bench: Bench, part: RatedPart, volts: Spread, measure: Measure, options: Mapping[str, OptionValue]
+) -> Problem:
     """The capacitor between one held terminal and 0 V, over the ends of what is said. Raises Unmeasurable."""
     circuit, table = Circuit(free=[]), Table()
     circuit.hold(ZERO)
@@ -32,7 +34,7 @@ def pose_stated(part: RatedPart, volts: Spread, measure: Measure, options: Mappi
         at=circuit.terminal(end),
         against=circuit.terminal(ZERO),
         element=0,
-        rating=rating_of(part, measure),
+        rating=rating_of(bench, table, part, measure),
         states=tuple(tuple(level if name == end else () for name in circuit.held) for level in levels),
         options=(
             *plain_of(measure, options),

@@ -1,6 +1,7 @@
 """Step 3: design in, parts with kind, value, spread and ratings out."""
 
 from rcrules.parts._apart import apart
+from rcrules.parts._chip_power import chip_power
 from rcrules.parts._diodes import DiodeModel, diode_model
 from rcrules.parts._kinds import kind_of
 from rcrules.parts._model import Insulation, Known, RatedPart, Share, Unknown
@@ -21,6 +22,7 @@ __all__ = [
     "ValueText",
     "apart",
     "at_bias",
+    "chip_power",
     "diode_model",
     "kind_of",
     "rate",

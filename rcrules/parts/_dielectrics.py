@@ -79,6 +79,10 @@ TYPICAL_TEMPERATURE: Final = {
     "aluminium": 0.20,
 }
 """Technology -> change over the usual temperature range, both ways; typical, so an assumption."""
+COLD: Final = -25.0
+"""[°C] below which an aluminium electrolytic loses more."""
+COLD_LOSS: Final = 0.40
+"""What it may lose then: 20 % to 40 % at -40 °C is common practice."""
 ELECTROLYTIC: Final = ("aluminium", "tantalum", "polymer", "niobium")
 _REFEREE: Final = 1000.0
 """Hours after the last heating at which the marked value holds."""

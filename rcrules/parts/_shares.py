@@ -4,7 +4,7 @@ import math
 from dataclasses import dataclass
 from typing import Final
 
-from rcrules.parts._dielectrics import TYPICAL_TEMPERATURE, ageing, ageing_rate, class_one, class_two
+from rcrules.parts._dielectrics import COLD, COLD_LOSS, TYPICAL_TEMPERATURE, ageing, ageing_rate, class_one, class_two
 from rcrules.parts._model import Share
 from rcrules.project import Project
 from rcrules.quantities import show
@@ -116,7 +116,10 @@ def capacitor_drift(dielectric: str | None, around: Conditions, ask: str, *, ele
     if technology is not None:
         share = TYPICAL_TEMPERATURE[technology]
         words = f"assumed: typical of {technology}"
-        return Share(name="temperature", low=-share, high=share, given=False, origin=words, ask=f'{ask} tcr = "…"')
+        loss = share
+        if technology == "aluminium" and around.coldest < COLD:
+            loss, words = COLD_LOSS, f"{words} below {show(COLD, 'degC')}"
+        return Share(name="temperature", low=-loss, high=share, given=False, origin=words, ask=f'{ask} tcr = "…"')
     words = "assumed: no dielectric given, ±15 % as of a class 2 ceramic"
     return Share(name="temperature", low=-0.15, high=0.15, given=False, origin=words, ask=f'{ask} dielectric = "…"')
 

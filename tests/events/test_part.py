@@ -1,5 +1,7 @@
 """Questions about capacitors and resistors, posed on small boards."""
 
+from dataclasses import replace
+
 import pytest
 
 from rcrules.events import Unmeasurable
@@ -162,3 +164,16 @@ def test_a_capacitor_with_an_open_end_says_so():
     with pytest.raises(Unmeasurable) as told:
         found.pose("C1", "applied_voltage")
     assert (told.value.reason, told.value.ask) == ("one end of C1 is open", "")
+
+
+def test_the_rated_power_of_a_chip_of_known_size_is_assumed():
+    found = board(SUPPLIES + EXACT + '[conditions]\ntemperature = "0 degC .. 112.5 degC"\n')
+    part = replace(found.board.parts["R1"], size="0805")
+    sized = replace(found, board=replace(found.board, parts={**found.board.parts, "R1": part}))
+    posed = sized.pose("R1", "power_ratio")
+    (rating,) = (item for item in posed.parameters if item.name == "R1 rated power")
+    assert (rating.low, rating.nominal, rating.ask) == pytest.approx((0.05, 0.0625, '[part."R1"] rated-power = "…"'))
+    assert (rating.given_low, rating.given_high) == pytest.approx((0.0625, 0.0625))
+    assert rating.assumed == ("assumed: rated power of a 0805 chip, 50 mW to 62.5 mW at 112.5 °C",)
+    ratio, watts = sized.measure("R1", "power_ratio"), sized.measure("R1", "power")
+    assert ratio.high == pytest.approx(watts.high / 0.05)

@@ -216,6 +216,18 @@ def test_what_is_said_of_its_drift_replaces_that_and_holds_without_a_life():
     assert "ageing" not in shares(rated(part("R1", "10k 1%"), Project()))
 
 
+@pytest.mark.parametrize(("coldest", "loss"), [("-25 degC", -0.2), ("-40 degC", -0.4)])
+def test_an_aluminium_electrolytic_loses_more_in_the_cold(coldest: str, loss: float):
+    """20 % to 40 % at -40 °C: common practice."""
+    found = rated(
+        part("C1", "100u 20%"),
+        Project(
+            defaults={"capacitor": facts(dielectric="aluminium")}, temperature=parse_quantity(f"{coldest} .. 60 degC")
+        ),
+    )
+    assert shares(found)["temperature"] == (loss, 0.2, False)
+
+
 def test_outside_the_temperatures_of_the_letter_nothing_is_promised():
     found = rated(part("C1", "10u X5R"), Project(temperature=parse_quantity("-40 degC .. 105 degC")))
     share = next(share for share in found.shares if share.name == "temperature")
