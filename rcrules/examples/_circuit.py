@@ -15,7 +15,7 @@ from rcrules.readers import Cell, Export, ExportPart, ExportPin
 from rcrules.tomlfile import cut
 from rcrules.vocabulary import PIN_TYPES
 
-MAX_LINES: Final = 200
+MAX_LINES: Final = 30
 _LEFT_OUT: Final = "DNP"
 
 

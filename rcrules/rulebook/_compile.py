@@ -23,6 +23,8 @@ from rcrules.vocabulary import BOUNDS, OUTCOMES, SEVERITIES
 MOST_PASSING: Final = 0.99999
 """More would take more random cases than are drawn."""
 MAX_RULES: Final = 500
+MAX_EXAMPLES: Final = 20
+"""Circuits that one rule brings."""
 _ID: Final = re.compile(r"[a-z][a-z0-9]*(?:-[a-z0-9]+)*")
 _RULE: Final = (*RULE_KEYS, *KEYS, "example")
 _NEVER: Final[Mapping[str, Literal["fails", "holds"]]] = {"fails": "fails", "holds": "holds"}
@@ -118,6 +120,9 @@ def _body(
     bounds = limits(table, what.measure, names, measures) if not what.fact else ()
     if len(bounds) > 1 and any(limit.terms for limit in bounds) and table.data.get("never") == "holds":
         table.wrong("never", "'never' beside two limits, one of which depends on measures", do="write two rules")
+    examples = table.tables("example")
+    if len(examples) > MAX_EXAMPLES:
+        table.wrong("example", f"{len(examples)} examples of one rule are too many", expected=f"at most {MAX_EXAMPLES}")
     what = _with_call(what) if any(limit.terms for limit in bounds) else what
     never = table.word("never", tuple(_NEVER))
     chosen = selection(table)
@@ -145,7 +150,7 @@ def _body(
         nominal=_is_nominal(table, bounds),
         passing=_passing(table),
         must_meet=table.count("must-meet") or 0,
-        examples=tuple(_example(item) for item in table.tables("example")),
+        examples=tuple(_example(item) for item in examples),
     )
 
 

@@ -69,7 +69,12 @@ def _rule(measures: Mapping[str, Measure]) -> dict[str, Any]:
     properties["with"] = {**properties["with"], "properties": told, "additionalProperties": False}
     properties["every"] = {**properties["every"], **_every()}
     examples = _table(EXAMPLE, ("circuit", "outcome"))
-    properties["example"] = {"type": "array", "items": examples, "description": "Circuits to try the rule on."}
+    properties["example"] = {
+        "type": "array",
+        "items": examples,
+        "maxItems": 20,
+        "description": "Circuits to try the rule on.",
+    }
     return {
         "type": "object",
         "properties": properties,

@@ -3,7 +3,7 @@
 from collections.abc import Iterator
 from typing import Final
 
-from rcrules.expressions import text_of
+from rcrules.expressions import calls, text_of
 from rcrules.levels import Level
 from rcrules.quantities import show
 from rcrules.rulebook._model import Limit, OptionValue, Rule, Selection
@@ -34,12 +34,25 @@ def sentence(rule: Rule) -> str:
     selection = "".join(f" {phrase}," for phrase in [_selected(rule.selection, rule.held_against)] if phrase)
     subject = f"for every {rule.held_against}{selection or ','}"
     name = rule.measure.name if rule.value is not None else rule.measure.name.replace("_", " ")
-    what = " ".join([f"the {name}", *_options(rule)])
+    what = " ".join([f"the {_end(rule)}{name}", *_options(rule)])
     bounds = _bounds(rule) or listed(rule.one_of)
-    judged = " at nominal values" if rule.nominal else ""
+    judged = " at nominal values" if rule.nominal and _spreads(rule) else ""
     never = "; never reaching the level is fine" if rule.never == "holds" else ""
     share = "" if rule.passing is None else f" on {100 * rule.passing:.6g} % of the boards"
     return f"{subject} {what}{judged} must be {bounds}{share}{never}"
+
+
+def _end(rule: Rule) -> str:
+    """``lowest ``, of times ``shortest `` and so on: the end of the bounds that one limit is about; else ''."""
+    if rule.nominal or rule.passing is not None or rule.fact or len(rule.limits) != 1 or not _spreads(rule):
+        return ""
+    ends = ("shortest ", "longest ") if rule.measure.unit == "s" else ("lowest ", "highest ")
+    return ends[rule.limits[0].kind == "at-most"]
+
+
+def _spreads(rule: Rule) -> bool:
+    """Whether what is judged is more than a count."""
+    return rule.value is None or bool(rule.terms) or not calls(rule.value)
 
 
 def _bounds(rule: Rule) -> str:

@@ -99,3 +99,10 @@ def test_sums_of_signs_end_in_mistakes(value):
 def test_sums_of_pieces_end_in_mistakes_or_rules(pieces):
     body = f'subject = "node"\nvalue = "{"".join(pieces)}"\nequals = 1'
     read_both(f'[pack]\nname = "h"\n[[rule]]\nid = "h"\nlevel = "note"\n{body}')
+
+
+def test_examples_of_one_rule_are_a_few():
+    example = '[[rule.example]]\noutcome = "holds"\ncircuit = "R1 1k : A, B"\n'
+    head = '[pack]\nname = "h"\n[[rule]]\nid = "h"\nlevel = "note"\nmeasure = "time_constant"\nat-most = "1 s"\n'
+    with pytest.raises(UserMistake, match="21 examples of one rule are too many"):
+        rulebook.compile_pack(tomlfile.load("p", head + 21 * example), registry())

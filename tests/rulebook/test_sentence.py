@@ -12,17 +12,18 @@ from rcrules.measures import registry
         (
             'role = ["power-on-delay", "debounce"]\nname = "RST"\nmeasure = "delay"\nat-least = "hold_time"\n'
             'with = { event = "power-up", from = "supply valid", to = "may switch" }\ngiven = { hold_time = "ask" }',
-            "for every node with role power-on-delay or debounce named RST, the delay after power-up from supply valid "
-            "to 'may switch' must be at least hold_time (asked)",
+            "for every node with role power-on-delay or debounce named RST, the shortest delay after power-up from supply "
+            "valid to 'may switch' must be at least hold_time (asked)",
         ),
         (
             'kind = "capacitor"\ndielectric = "X7R"\nwhen = "voltage_high > 60 V"\n'
             'measure = "voltage_ratio"\nat-most = "80 %"',
-            "for every capacitor of dielectric X7R where voltage_high > 60 V, the voltage ratio must be at most 80 %",
+            "for every capacitor of dielectric X7R where voltage_high > 60 V, "
+            "the highest voltage ratio must be at most 80 %",
         ),
         (
             'measure = "settling_time"\nwith = { event = "step-up", band = "1 %" }\nat-most = "acquisition_time"',
-            "for every node, the settling time after step-up band 1 % "
+            "for every node, the longest settling time after step-up band 1 % "
             "must be at most acquisition_time (of the project file)",
         ),
         (
@@ -34,8 +35,21 @@ from rcrules.measures import registry
         ),
         (
             'measure = "time_constant"\nat-most = "longest"\ngiven = { longest = "20 ms" }\nvalue = "<= 1 kohm"',
-            "for every node of at most 1 kΩ, the time constant must be at most longest "
+            "for every node of at most 1 kΩ, the longest time constant must be at most longest "
             "(20 ms unless the project says otherwise)",
+        ),
+        (
+            'every = { subject = "contact pin", has-no = { kind = "capacitor", to = "ground" } }',
+            "for every contact pin, the number of capacitors to ground on its nets must be at most 0",
+        ),
+        (
+            'value = "resistance"\none-of = ["4.7 kohm", "10 kohm"]\nrole = "bus-pull-up"',
+            "for every resistor with role bus-pull-up, the resistance at nominal values must be 4.7 kohm or 10 kohm",
+        ),
+        (
+            'subject = "resistor"\nvalue = "(power / 1 W)^2 * 2^bits"\nat-most = "5"\ngiven = { bits = "3" }\n'
+            "when = \"size = '0402'\"",
+            "for every resistor where size = '0402', the highest (power / 1 W)^2 * 2^bits must be at most 5",
         ),
     ],
 )
