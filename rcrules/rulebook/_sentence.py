@@ -43,7 +43,7 @@ def sentence(rule: Rule) -> str:
 
 
 def _end(rule: Rule) -> str:
-    """``lowest ``, of times ``shortest `` and so on: the end of the bounds that one limit is about; else ''."""
+    """``lowest ``, of times ``shortest `` and so on: the end of the bounds that a limit is about."""
     if rule.nominal or rule.passing is not None or rule.fact or len(rule.limits) != 1 or not _spreads(rule):
         return ""
     ends = ("shortest ", "longest ") if rule.measure.unit == "s" else ("lowest ", "highest ")

@@ -12,8 +12,8 @@ from rcrules.measures import registry
         (
             'role = ["power-on-delay", "debounce"]\nname = "RST"\nmeasure = "delay"\nat-least = "hold_time"\n'
             'with = { event = "power-up", from = "supply valid", to = "may switch" }\ngiven = { hold_time = "ask" }',
-            "for every node with role power-on-delay or debounce named RST, the shortest delay after power-up from supply "
-            "valid to 'may switch' must be at least hold_time (asked)",
+            "for every node with role power-on-delay or debounce named RST, the shortest delay after power-up "
+            "from supply valid to 'may switch' must be at least hold_time (asked)",
         ),
         (
             'kind = "capacitor"\ndielectric = "X7R"\nwhen = "voltage_high > 60 V"\n'
