@@ -6,7 +6,9 @@ from rcrules.engine._exponential import ExponentialSum
 from rcrules.engine._shape import Array
 
 PANELS = 52
-"""Halvings towards the start of a piece with ramps; each panel is then smooth for every mode that still lives in it."""
+"""Most halvings towards the start of a piece with ramps."""
+SMOOTH = 4.0
+"""Time constants of the fastest mode in the first panel: each panel is smooth for every mode that still lives in it."""
 POINTS, WEIGHTS = np.polynomial.legendre.leggauss(16)
 
 
@@ -18,8 +20,11 @@ def squared(found: ExponentialSum, length: Array) -> Array:
     """
     if found.ramps is None and not found.ramping:
         return _closed(found, length)
-    finite = np.isfinite(length)
-    return np.where(finite, _by_panels(found, np.where(finite, length, 0.0)), np.inf)
+    total = np.where(np.isfinite(length), 0.0, np.inf)
+    some = np.flatnonzero(np.isfinite(length) & (length > 0.0))
+    if len(some):
+        total[some] = _by_panels(found.take(some), length[some])
+    return total
 
 
 def _closed(found: ExponentialSum, length: Array) -> Array:
@@ -38,11 +43,18 @@ def _closed(found: ExponentialSum, length: Array) -> Array:
 
 def _by_panels(found: ExponentialSum, length: Array) -> Array:
     """With ramps: Gauss-Legendre on panels that halve towards the start, where fast modes die."""
-    total = np.zeros_like(length)
-    for panel in range(PANELS + 1):
+    total, halvings = np.zeros_like(length), _halvings(found, length)
+    for panel in range(halvings + 1):
         right = length * 2.0**-panel
-        left = 0.5 * right if panel < PANELS else 0.0 * right
+        left = 0.5 * right if panel < halvings else 0.0 * right
         for point, weight in zip(POINTS, WEIGHTS, strict=True):
             value = found.at(left + (right - left) * (0.5 + 0.5 * float(point)))
             total += 0.5 * float(weight) * (right - left) * value * value
     return total
+
+
+def _halvings(found: ExponentialSum, length: Array) -> int:
+    """How often the length is halved until no mode that is there changes much within the first panel."""
+    there = found.amps != 0.0 if found.ramps is None else (found.amps != 0.0) | (found.ramps != 0.0)
+    spans = np.where(there, found.rates * length, 0.0).max(initial=SMOOTH)
+    return int(min(np.ceil(np.log2(spans / SMOOTH)), PANELS))
