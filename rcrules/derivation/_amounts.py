@@ -2,7 +2,6 @@
 
 import math
 
-from rcrules.derivation._pieces import One, Sum
 from rcrules.derivation._respond import pole, respond, seen
 from rcrules.derivation._sheet import Number
 from rcrules.derivation._working import Working
@@ -54,16 +53,6 @@ def hold_up(work: Working) -> Number | None:
     return sheet.work("t", "s", formula, lambda c, v, u, p: c * (v**2 - u**2) / (2 * p), farads, start, end, load)
 
 
-def spent(work: Working) -> Number | None:
-    """W = A² tau / (2 R), where the voltage dies out as one exponential from its first instant on."""
-    found = _dying(work)
-    if found is None:
-        return None
-    amplitude, tau = found
-    formula = "{}^2 · {} / (2 · {})"
-    return work.sheet.work("W", "J", formula, lambda a, t, r: a * a * t / (2 * r), amplitude, tau, _ohms(work))
-
-
 def first_current(work: Working) -> Number | None:
     """I = |v| / R at the first instant or in the end, whichever is more; of a resistor or a pin that is one."""
     if ("kind", "capacitor") in work.problem.structure.options:
@@ -76,7 +65,7 @@ def first_current(work: Working) -> Number | None:
     early = abs(ends[0]) >= abs(ends[1])
     piece = respond(work, 0.0 if early else math.inf)[-1]
     volts = piece.start if early else piece.rest
-    return work.sheet.work("I", "A", "abs({}) / {}", lambda v, r: abs(v) / r, volts, _ohms(work))
+    return work.sheet.work("I", "A", "abs({}) / {}", lambda v, r: abs(v) / r, volts, ohms_of(work))
 
 
 def _charging(work: Working) -> Number | None:
@@ -105,8 +94,8 @@ def _between_sources(work: Working, index: int) -> Number | None:
 
 
 def noise(work: Working) -> Number | None:
-    """(k T / C)^0.5 where one node has all capacitors."""
-    if pole(work.problem.structure) != work.at:
+    """(k T / C)^0.5 where all capacitors of the node lead to held ones: it shares its noise with no other node."""
+    if not work.capacitors(work.at) or any(far < work.free for far, _ in work.capacitors(work.at)):
         return None
     farads = [number for _, number in work.capacitors(work.at)]
     whole = work.sheet.work("C", "F", " + ".join("{}" for _ in farads), lambda *all_: sum(all_), *farads)
@@ -115,18 +104,6 @@ def noise(work: Working) -> Number | None:
     return work.sheet.work("noise", "V", "({} · {} / {})^0.5", lambda k, t, c: math.sqrt(k * t / c), *numbers)
 
 
-def _ohms(work: Working) -> Number:
+def ohms_of(work: Working) -> Number:
     index = work.problem.structure.element or 0
     return work.sheet.number(work.names.resistors[index], float(work.solved.ohms[0, index]), "Ω")
-
-
-def _dying(work: Working) -> tuple[Number, Number] | None:
-    """Amplitude and time constant of the only mode; None where there are more, or sources move later."""
-    if len(work.starts) > 1:
-        return None
-    piece = respond(work, 0.0)[-1]
-    if isinstance(piece, One) and piece.slope is None:
-        return work.sheet.work("A", "V", "{} - {}", lambda v, e: v - e, piece.start, piece.rest), piece.tau
-    if isinstance(piece, Sum) and piece.slope is None and len(piece.modes) == 1:
-        return piece.modes[0]
-    return None

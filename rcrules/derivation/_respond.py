@@ -2,13 +2,17 @@
 
 from collections.abc import Mapping
 from dataclasses import dataclass
+from math import isfinite
 
 from rcrules.derivation._pieces import One, Piece, Sum
 from rcrules.derivation._reduce import Link, TooLarge, parallel, source
 from rcrules.derivation._sheet import Number
 from rcrules.derivation._working import Working
+from rcrules.engine import Response, Signal
 from rcrules.problems import Structure
 
+_ROUNDING = 1e-12
+"""Part of the largest number in a sum below which only rounding is left."""
 LEAST_MODE = 1e-9
 """Amplitude below which a mode is not seen, in parts of the largest number in the sum."""
 
@@ -46,13 +50,13 @@ def seen(work: Working, at: int) -> Seen:
 def respond(work: Working, until: float) -> list[Piece]:
     """The pieces up to the one in which an instant lies; the last one for an instant that never comes."""
     structure = work.problem.structure
-    if pole(structure) == work.at and structure.against is None and not structure.charged:
+    if not work.modal and pole(structure) == work.at and structure.against is None and not structure.charged:
         mark = len(work.sheet.steps)
         try:
             return _by_hand(work, work.piece_of(until))
         except TooLarge:
             del work.sheet.steps[mark:]
-    return _by_engine(work, work.piece_of(until))
+    return _by_engine(work, until)
 
 
 def _by_hand(work: Working, last: int) -> list[Piece]:
@@ -157,15 +161,23 @@ def _slope(work: Working, found: Seen, ramps: Mapping[int, Number]) -> Number | 
     return work.sheet.work("S", "V/s", formula, compute, found.ohms, *numbers)
 
 
-def _by_engine(work: Working, last: int) -> list[Piece]:
+def _by_engine(work: Working, until: float) -> list[Piece]:
     """The piece in which the instant lies, its numbers from the modes of the whole network."""
-    sheet, sums = work.sheet, work.solved.signal.sums
-    found = sums[last].merged()
+    place, _ = work.piece_at(until)
+    return [piece_from_modes(work, place)]
+
+
+def piece_from_modes(work: Working, place: int) -> Sum:
+    """A piece of the signal, its numbers from the modes of the whole network."""
+    sheet, signal = work.sheet, work.solved.signal
+    found, begin = signal.sums[place].merged(), float(signal.starts[place, 0])
     amps, rates = found.amps[:, 0], found.rates[:, 0]
     rest = float(found.start[0] - amps.sum())
     size = max(abs(rest), *(abs(float(amp)) for amp in amps), 0.0) if len(amps) else abs(rest)
-    note = "from the modes of the whole network"
+    note = "from the modes of the whole network" + _conducting(work, begin)
+    rest = rest if abs(rest) > _ROUNDING * max(size, abs(float(found.start[0]))) else 0.0
     slope = float(found.slope[0])
+    slope = slope if abs(slope) * _span(signal, place) > _ROUNDING * size else 0.0
     end = sheet.given("E", rest, "V", note)
     ramp = sheet.given("S", slope, "V/s", note) if slope else None
     modes = []
@@ -173,5 +185,21 @@ def _by_engine(work: Working, last: int) -> list[Piece]:
         if abs(float(amp)) > LEAST_MODE * size:
             tau = sheet.given(f"tau{index}", 1.0 / float(rate), "s", "")
             modes.append((sheet.given(f"A{index}", float(amp), "V", note), tau))
-    begins, start = sheet.number("t", work.starts[last], "s"), sheet.number("v0", float(found.start[0]), "V")
-    return [Sum(begins=begins, start=start, rest=end, slope=ramp, modes=tuple(modes))]
+    begins, start = sheet.number("t", begin, "s"), sheet.number("v0", float(found.start[0]), "V")
+    return Sum(begins=begins, start=start, rest=end, slope=ramp, modes=tuple(modes))
+
+
+def _span(signal: Signal, place: int) -> float:
+    """How long a piece lasts [s]; 1 where it has no end."""
+    length = float(signal.lengths[place][0])
+    return length if isfinite(length) else 1.0
+
+
+def _conducting(work: Working, begin: float) -> str:
+    """Which diodes conduct from an instant on, in words."""
+    response = work.solved.response
+    if isinstance(response, Response):
+        return ""
+    item = max((item for item in response.intervals if item.begin[0] <= begin), key=lambda item: float(item.begin[0]))
+    names = [name for name, on in zip(work.names.diodes, item.on[0], strict=True) if on]
+    return f" while {' and '.join(names)} conduct{'s' * (len(names) == 1)}" if names else ""

@@ -6,13 +6,16 @@ from typing import TypeVar
 
 import numpy as np
 
+from rcrules.derivation._respond import respond
 from rcrules.derivation._sheet import Number
-from rcrules.derivation._times import arrival, discharge, first, instant, last, valid_at, voltage_later
+from rcrules.derivation._times import arrival, discharge, first, instant, last, reached, valid_at, voltage_later
 from rcrules.derivation._working import Working
 from rcrules.problems import Problem, solved
 
 _T = TypeVar("_T")
 
+_PEAK = 1e-9
+"""What a peak is above the ends, and above where it is first near, in its own parts."""
 OPEN = ("fault", "any one resistor open")
 
 
@@ -39,9 +42,35 @@ def missed(work: Working) -> Number | None:
 
 
 def most(work: Working) -> Number | None:
-    """The first or the last voltage, whichever is higher."""
-    early = float(work.solved.signal.initial()[0]) >= float(work.solved.final[0])
-    return first(work) if early else last(work)
+    """The first or the last voltage, whichever is higher, or one between them."""
+    start, end = float(work.solved.signal.initial()[0]), float(work.solved.final[0])
+    high = float(work.solved.signal.extremes()[1][0])
+    if high - max(start, end) > _PEAK * abs(high):
+        return _between(work, high)
+    return first(work) if start >= end else last(work)
+
+
+def share(work: Working) -> Number | None:
+    """The part at the first instant, by capacitance, or in the end, by conductance, whichever is more."""
+    if ("loose", 1.0) in work.problem.structure.options:
+        return work.sheet.given("share", 1.0, "1", "no resistor holds its ends: what leaks alone decides, up to all")
+    ends = [abs(float(work.solved.signal.initial()[0])), abs(float(work.solved.final[0]))]
+    low, high = (float(side[0]) for side in work.solved.signal.extremes())
+    if max(high, -low) - max(ends) > _PEAK:
+        volts: Number | None = _between(work, high if high >= -low else low)
+    else:
+        volts = first(work) if ends[0] >= ends[1] else respond(work, math.inf)[-1].rest
+    source = work.sheet.number("source", 1.0, "V")
+    return volts and work.sheet.work("share", "1", "abs({}) / {}", lambda v, s: abs(v) / s, volts, source)
+
+
+def _between(work: Working, value: float) -> Number:
+    """v at its peak, on the way."""
+    side = 1.0 if value > float(work.solved.final[0]) else -1.0
+    near = np.array([value - side * _PEAK * abs(value)])
+    time = float(work.solved.watch(work.solved.weights(), near).first_crossing(side)[0])
+    piece, x, _ = reached(work, time)
+    return piece.at(work.sheet, "v", x, note=f"at its peak, {work.sheet.number('', time, 's').text} after the event")
 
 
 def width(work: Working) -> Number | None:

@@ -5,6 +5,7 @@ from collections.abc import Callable
 
 import numpy as np
 
+from rcrules.derivation import _balance, _transfers
 from rcrules.derivation._amounts import total
 from rcrules.derivation._bias import along
 from rcrules.derivation._poles import corner as two_poles
@@ -20,29 +21,29 @@ Choose = Callable[[Array], np.intp]
 
 
 def time_constant(work: Working) -> Number | None:
-    """tau = R C where all capacitors lie at one node; the slower of two where they lie at two."""
+    """tau = R C where all capacitors lie at one node; the slower of two where they lie at two; else put in."""
     at = pole(work.problem.structure)
-    return slowest(work) if at is None else seen(work, at).tau
+    return (slowest(work) or _balance.slowest(work)) if at is None else seen(work, at).tau
 
 
 def corner(work: Working) -> Number | None:
-    """1 / (2 pi tau) where all capacitors lie at one node; of two poles where they lie at two."""
+    """1 / (2 pi tau) where all capacitors lie at one node; of two poles where they lie at two; else put in."""
     at = pole(work.problem.structure)
-    if at is None:
-        return two_poles(work)
+    if at is None or work.modal:
+        return _transfers.corner(work) if work.modal else two_poles(work)
     tau, pi = seen(work, at).tau, work.sheet.number("pi", math.pi, "1")
     return work.sheet.work("f", "Hz", "1 / (2 · {} · {})", lambda p, t: 1 / (2 * p * t), pi, tau)
 
 
 def gain(work: Working) -> Number | None:
-    """(R/R1) / (1 + (2 pi f tau)²)^0.5 where all capacitors lie at the node and R1 alone leads to the source."""
+    """(R/R1) / (1 + (2 pi f tau)²)^0.5 where all capacitors lie at the node, only R1 at the source; else put in."""
     structure, sheet = work.problem.structure, work.sheet
-    if pole(structure) != work.at:
-        return None
+    if pole(structure) != work.at or work.modal:
+        return _transfers.gain(work)
     found, end = seen(work, work.at), int(structure.option("source"))
     direct = [link.ohms for link in found.links if link.other(work.at) == end]
     if len(direct) != 1 or any(far == end for far, _ in work.capacitors(work.at)):
-        return None
+        return _transfers.gain(work)
     pi, f = sheet.number("pi", math.pi, "1"), sheet.number("f", float(structure.option("frequency")), "Hz")
     formula = "{} / {} / (1 + (2 · {} · {} · {})^2)^0.5"
     return sheet.work("gain", "1", formula, _low_pass, found.ohms, direct[0], pi, f, found.tau)

@@ -4,8 +4,8 @@ import math
 
 import numpy as np
 
-from rcrules.derivation._pieces import Piece
-from rcrules.derivation._reduce import parallel, source
+from rcrules.derivation._pieces import Piece, Sum
+from rcrules.derivation._reduce import TooLarge, parallel, source
 from rcrules.derivation._respond import respond
 from rcrules.derivation._sheet import Number
 from rcrules.derivation._working import Working, height
@@ -58,7 +58,7 @@ def settled(work: Working) -> Number | None:
         return None
     share = sheet.number("band", band, "1")
     edge_ = sheet.work("b", "V", "{} · {}", lambda f, s: f * s, share, size, note="half width of the band")
-    piece, x, begins = _reached(work, value)
+    piece, x, begins = reached(work, value)
     side = 1.0 if float(solved.signal.at(np.array([value]))[0]) >= float(solved.final[0]) else -1.0
     sign = "+" if side > 0 else "-"
     end = sheet.given("v(end)", float(solved.final[0]), "V", "where v ends")
@@ -69,7 +69,7 @@ def settled(work: Working) -> Number | None:
 def voltage_later(work: Working) -> Number | None:
     """v at an instant."""
     time = float(work.problem.structure.option("time"))
-    piece, x, _ = _reached(work, time)
+    piece, x, _ = reached(work, time)
     return piece.at(work.sheet, "v", x, note=f"at {work.sheet.number('', time, 's').text}")
 
 
@@ -88,7 +88,8 @@ def left(work: Working) -> Number | None:
 
 def first(work: Working) -> Number | None:
     """v just after the event."""
-    return respond(work, 0.0)[0].start
+    piece = respond(work, 0.0)[0]
+    return piece.at(work.sheet, "v0", work.sheet.number("x", 0.0, "s")) if isinstance(piece, Sum) else piece.start
 
 
 def last(work: Working) -> Number | None:
@@ -115,10 +116,10 @@ def _step(work: Working) -> Number | None:
     return work.sheet.given("step", size, "V", "from the voltage before to where v ends") if size > 0.0 else None
 
 
-def _reached(work: Working, time: float) -> tuple[Piece, Number, float]:
+def reached(work: Working, time: float) -> tuple[Piece, Number, float]:
     """The piece of an instant, how far in it that is, and when the piece starts."""
     pieces = respond(work, time)
-    begins = work.starts[work.piece_of(time)]
+    begins = work.piece_at(time)[1] if isinstance(pieces[-1], Sum) else work.starts[work.piece_of(time)]
     return pieces[-1], work.sheet.number("x", time - begins, "s"), begins
 
 
@@ -134,10 +135,12 @@ def instant(work: Working, level: LevelForm, symbol: str) -> Number | None:
 
 def arrival(work: Working, level: LevelForm, time: float, symbol: str) -> Number:
     """A known instant at which v is at a level, by the piece in which it lies."""
-    piece, x, begins = _reached(work, time)
+    piece, x, begins = reached(work, time)
     found = height(work, level, work.piece_of(time))
     if x.value <= 0.0:
         return work.sheet.given(symbol, time, "s", f"v is at {piece.start.text}, beyond the level")
+    if found.slope != 0.0 and begins != work.starts[work.piece_of(time)]:
+        raise TooLarge  # a diode has switched while the level moves
     if found.slope == 0.0:
         return _arrive(work, piece, x, begins, found.number, symbol)
     return _meet(work, piece, x, begins, found.number, found.slope, symbol)

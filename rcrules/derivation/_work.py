@@ -3,11 +3,12 @@
 import math
 from collections.abc import Callable, Mapping
 from dataclasses import dataclass
+from itertools import product
 from typing import Final
 
 import numpy as np
 
-from rcrules.derivation import _amounts, _spans, _states, _times
+from rcrules.derivation import _amounts, _heat, _spans, _states, _times
 from rcrules.derivation._reduce import TooLarge
 from rcrules.derivation._respond import respond
 from rcrules.derivation._sheet import Number, Step
@@ -26,7 +27,7 @@ _BY_HAND: Final[Mapping[str, Callable[[Working], Number | None]]] = {
     "delay": _times.delay,
     "dip_rearm": _spans.rearmed,
     "discharge_time": _spans.discharged,
-    "discharged_energy": _amounts.spent,
+    "discharged_energy": _heat.spent,
     "edge_slowness": _spans.slowness,
     "effective_capacitance": _amounts.own,
     "final_voltage": _times.last,
@@ -42,11 +43,12 @@ _BY_HAND: Final[Mapping[str, Callable[[Working], Number | None]]] = {
     "pin_voltage": _states.at_pin,
     "power": _states.power,
     "power_ratio": _states.power_ratio,
-    "pulse_energy": _amounts.spent,
+    "pulse_energy": _heat.spent,
     "residual": _times.left,
     "pulse_width": _spans.width,
     "rise_time": _times.edge,
     "sample_error": _spans.missed,
+    "series_share": _spans.share,
     "settling_time": _times.settled,
     "stored_charge": _states.charge,
     "stored_energy": _states.energy,
@@ -73,8 +75,8 @@ class Worked:
 def work_out(problem: Problem, names: Names, measure: Measure, case: tuple[float, ...]) -> Worked:
     """Lines that arrive at the value of a measure in a case."""
     value = float(measure.compute(problem.structure, np.array([case], dtype=float))[0])
-    for digits in DIGITS:
-        work = working(problem, names, measure, case, digits)
+    for modal, digits in product((False, True), DIGITS):
+        work = working(problem, names, measure, case, digits, modal=modal)
         found = _tried(work)
         if found is not None and _agrees(found.value, value) and all(_same(*pair) for pair in work.checks):
             return Worked(value=value, steps=_closed(work, found), by_hand=True)
@@ -99,8 +101,8 @@ def _closed(work: Working, found: Number) -> tuple[Step, ...]:
 
 def _told(problem: Problem, names: Names, measure: Measure, case: tuple[float, ...], value: float) -> Worked:
     """The response where there is one, and the number that the tool reads from it."""
-    work = working(problem, names, measure, case, DIGITS[0])
-    if measure.poses == "event" and not (problem.structure.amplifiers or problem.structure.diodes):
+    work = working(problem, names, measure, case, DIGITS[0], modal=True)
+    if measure.poses == "event" and not problem.structure.amplifiers:
         respond(work, math.inf)
     note = f"by the tool: {measure.summary[0].lower()}{measure.summary[1:].rstrip('.')}"
     work.sheet.given(measure.name.replace("_", " "), value, measure.unit, note)

@@ -22,6 +22,8 @@ class Working:
     """(1, column)"""
     sheet: Sheet
     solved: Solved
+    modal: bool = False
+    """True: what happens over time is taken from the modes of the whole network, diodes as they conduct."""
     checks: list[tuple[Number, Number]] = field(default_factory=list)
     """Numbers on the sheet that must be equal."""
 
@@ -95,6 +97,14 @@ class Working:
         """A form as a number, called by its column where it is one."""
         return self.sheet.number(self._symbol(form) or symbol, self._of(form), unit)
 
+    def piece_at(self, time: float) -> tuple[int, float]:
+        """The piece of the signal in which an instant lies, and when it starts [s]: sources bend or diodes switch."""
+        signal = self.solved.signal
+        there = [index for index, length in enumerate(signal.lengths) if length[0] > 0.0]
+        found = [index for index in there if signal.starts[index, 0] < time] or there[:1]
+        index = max(found, key=lambda item: float(signal.starts[item, 0]))
+        return index, float(signal.starts[index, 0])
+
     def piece_of(self, time: float) -> int:
         """The piece in which an instant lies: the last one that starts before it."""
         found = [index for index, start in enumerate(self.starts) if start < time]
@@ -119,11 +129,19 @@ class Height:
     """[V/s]"""
 
 
-def working(problem: Problem, names: Names, measure: Measure, case: tuple[float, ...], digits: int) -> Working:
+def working(
+    problem: Problem, names: Names, measure: Measure, case: tuple[float, ...], digits: int, *, modal: bool = False
+) -> Working:
     """A new sheet for a case."""
-    cases = np.array([case], dtype=float)
-    found = solved(problem.structure, cases)
-    return Working(problem=problem, names=names, measure=measure, cases=cases, sheet=Sheet(digits=digits), solved=found)
+    return Working(
+        problem=problem,
+        names=names,
+        measure=measure,
+        cases=(cases := np.array([case], dtype=float)),
+        sheet=Sheet(digits=digits),
+        solved=solved(problem.structure, cases),
+        modal=modal,
+    )
 
 
 def height(work: Working, level: LevelForm, piece: int, final: Number | None = None) -> Height:
