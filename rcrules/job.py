@@ -139,7 +139,7 @@ def _export(path: str, project: "Project", job: Job) -> "Export":
     own = source.folder
     within = project.file and own and own.resolve().is_relative_to(_folder(project).resolve())
     folder = _folder(project) if within else own
-    return read(replace(source, name=shown(source.name), folder=folder), project.columns)
+    return read(replace(source, name=shown(source.name), folder=folder), project.columns, project.formats)
 
 
 def _rules(job: Job, project: "Project") -> "list[Rule]":

@@ -9,6 +9,7 @@ from typing import Any, Final, TypeVar
 from rcrules.errors import Mistake, Place, Problems
 from rcrules.project._contradictions import check_pin, check_supply
 from rcrules.project._facts import DEFAULTS, free_words, net_facts, part_facts, pin_facts, supply_facts
+from rcrules.project._formats import formats
 from rcrules.project._model import Notice, Project, SupplyFacts
 from rcrules.project._outside import refuse_outside
 from rcrules.project._part_numbers import patterns
@@ -25,7 +26,7 @@ MAX_GLOB: Final = 200
 """Characters of a name or glob."""
 _TABLES: Final = (
     "board", "conditions", "supply", "ground", "net", "pin", "part", "defaults", "columns", "settings", "limits",
-    "part-number", "codes",
+    "part-number", "codes", "format",
 )  # fmt: skip
 _BOARD: Final = ("name", "netlist", "bom", "variant", "rules", "waivers", "part-numbers")
 
@@ -80,6 +81,7 @@ def _project(top: Table, folder: Path) -> Project:
         parts=_facts(top, "part", part_facts),
         defaults=_defaults(top),
         columns=_columns(top),
+        formats=formats(top),
         limits=_limits(top),
         part_numbers=patterns(top, board, folder),
         places=_places(top),

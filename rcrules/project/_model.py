@@ -152,6 +152,64 @@ class Notice:
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
+class PathStep:
+    """One step of a path in XML."""
+
+    name: str
+    """Local name of an element, ``*``, ``.``, ``..`` or ``@attribute``."""
+    key: str
+    """``@attribute`` or child that a condition asks for, '' without a condition."""
+    value: str
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class XmlPath:
+    """A path in XML."""
+
+    steps: tuple[PathStep, ...]
+    selects: bool
+    """Whether it starts at the root or anywhere, else at an element."""
+    anywhere: bool
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Records:
+    """Where the parts, or the pins, of a described file stand, and what stands where in each."""
+
+    cells: Mapping[str, str] = field(default_factory=dict)
+    """Cell (``reference``, ``net`` …) -> header of its column."""
+    each: XmlPath | None = None
+    paths: Mapping[str, XmlPath] = field(default_factory=dict)
+    """Cell -> path from the element."""
+    after: str = ""
+    """What the line before the lines starts with."""
+    title: str = ""
+    """Cell that the rest of that line gives to all lines below it."""
+    words: tuple[str, ...] = ()
+    """Cells in the order of the words of a line; the last takes the rest."""
+    separator: str = ""
+    """Between words; '' = blanks."""
+    between: str = "."
+    """Between reference and pin in ``ends``."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class FileFormat:
+    """A team's own export, as ``[[format]]`` describes it."""
+
+    name: str
+    kind: str
+    """``delimited``, ``xml`` or ``lines``."""
+    has: str
+    """A text near its start by which a file is known."""
+    parts: Records | None
+    pins: Records | None
+    end: str
+    """What the last line of ``lines`` starts with, '' = nothing marks the end."""
+    place: Place
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
 class Project:
     """A project file; ``Project()`` is the empty one. Names of tables may be globs."""
 
@@ -181,6 +239,8 @@ class Project:
     parts: Mapping[str, PartFacts] = field(default_factory=dict)
     defaults: Mapping[str, PartFacts] = field(default_factory=dict)
     columns: Mapping[str, str] = field(default_factory=dict)
+    formats: tuple[FileFormat, ...] = ()
+    """The first whose text a file has reads it, before any other reader."""
     limits: Mapping[str, int] = field(default_factory=dict)
     """What is read of one input, by names of vocabulary.LIMITS."""
     part_numbers: tuple[NumberPattern, ...] = ()

@@ -5,18 +5,23 @@ from functools import cache
 from types import MappingProxyType
 
 from rcrules import discovery
+from rcrules.project import FileFormat
+from rcrules.readers._described import described
 from rcrules.readers._export import Export, Reader, Source
 from rcrules.readers._foreign import refuse_foreign, unknown
 
 _NO_COLUMNS: Mapping[str, str] = MappingProxyType({})
 
 
-def read(source: Source, columns: Mapping[str, str] = _NO_COLUMNS) -> Export:
-    """Read one source with the first reader that claims it.
+def read(source: Source, columns: Mapping[str, str] = _NO_COLUMNS, formats: tuple[FileFormat, ...] = ()) -> Export:
+    """Read one source as the project describes it, else with the first reader that claims it.
 
     columns: what the project file's [columns] says: canonical name (``reference``, ``value``) to header text.
-    Raises UserMistake where the content is foreign, broken or hostile.
+    formats: what its [[format]] tables say. Raises UserMistake where the content is foreign, broken or hostile.
     """
+    own = described(source, formats) if formats else None
+    if own is not None:
+        return own
     refuse_foreign(source)
     for reader in readers():
         if reader.claims(source, columns):
