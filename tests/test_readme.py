@@ -9,6 +9,7 @@ import pytest
 
 from rcrules.cli import main
 from rcrules.cli._arguments import parser
+from rcrules.project import load
 
 ROOT = Path(__file__).parent.parent
 README = (ROOT / "README.md").read_text(encoding="utf-8")
@@ -30,7 +31,7 @@ def reader_folder(tmp_path: Path, monkeypatch: pytest.MonkeyPatch) -> Path:
     """What a reader has who follows the README: a board, a BOM, and the two files that it shows."""
     (tmp_path / "board.xml").write_bytes((DEMO / "tide-gauge.xml").read_bytes())
     (tmp_path / "bom.csv").write_bytes((DEMO / "tide-gauge-bom.csv").read_bytes())
-    project, _, rules = blocks("toml")
+    project, _, _, rules = blocks("toml")
     (tmp_path / "rcrules.toml").write_text(project, encoding="utf-8")
     (tmp_path / "our-rules.toml").write_text(rules, encoding="utf-8")
     monkeypatch.chdir(tmp_path)
@@ -79,7 +80,7 @@ def test_each_command_runs(command: str, reader_folder: Path, capfd: pytest.Capt
 
 @pytest.mark.usefixtures("reader_folder")
 def test_the_part_number_shown_is_read_by_the_pattern_shown(tmp_path: Path, capsys: pytest.CaptureFixture[str]) -> None:
-    (tmp_path / "patterns.toml").write_text(blocks("toml")[1], encoding="utf-8")
+    (tmp_path / "patterns.toml").write_text(blocks("toml")[2], encoding="utf-8")
     (tmp_path / "parts.csv").write_text("Reference,Value,MPN\nC1,100n,QXC0603B104K5AT\n", encoding="utf-8")
     assert main(["networks", "--project", "patterns.toml", "parts.csv", "--report", "parts"]) == 0
     out = capsys.readouterr().out
@@ -115,3 +116,8 @@ def test_the_rule_that_is_tried_on_a_board_reads_as_shown(capfd: pytest.CaptureF
     assert main(["rules", str(folder / "gauge-rules.toml"), "--on", *exports]) == 0
     _, tried = blocks("text")
     assert tried.strip() in capfd.readouterr().out
+
+
+def test_the_formats_shown_are_understood() -> None:
+    formats = load("rcrules.toml", blocks("toml")[1]).formats
+    assert [item.kind for item in formats] == ["xml", "delimited", "lines"]
