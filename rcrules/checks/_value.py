@@ -1,7 +1,7 @@
 """A value that is more than one measure, for one subject: every measure posed, one column wherever a number acts."""
 
 import math
-from collections.abc import Mapping, Sequence
+from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass, field, replace
 from typing import TYPE_CHECKING, Final
 
@@ -22,6 +22,7 @@ from rcrules.problems import Parameter, Problem, Structure
 from rcrules.project import Project
 from rcrules.quantities import Spread, show
 from rcrules.rulebook import Limit, Rule, Term, dict_of
+from rcrules.tomlfile import guess
 
 if TYPE_CHECKING:
     from rcrules.derivation import Value
@@ -133,8 +134,14 @@ def _place(term: Term, subjects: Subjects) -> Subject:
     found = [item for item in subjects.of(term.measure.subject) if stands_at(item, at)]
     if len(found) != 1:
         many = "no" if not found else "more than one"
-        raise Unmeasurable(f"{many} {term.measure.subject} at {at}, for {term.measure.name}", "")
+        near = "" if found else guess(at, _names(subjects.of(term.measure.subject)))
+        raise Unmeasurable(f"{many} {term.measure.subject} at {at}, for {term.measure.name}{near}", "")
     return found[0]
+
+
+def _names(subjects: Iterable[Subject]) -> list[str]:
+    """What a place may be called: nets, fed pins, parts."""
+    return [name for item in subjects for name in (*item.nets, *item.feeds, *item.refs)]
 
 
 def _option(value: OptionValue, rule: Rule, subject: Subject, board: Board, project: Project) -> OptionValue:

@@ -3,7 +3,7 @@
 from collections.abc import Iterator
 from typing import Final
 
-from rcrules.expressions import calls, text_of
+from rcrules.expressions import Call, calls, text_of
 from rcrules.levels import Level
 from rcrules.quantities import show
 from rcrules.rulebook._model import Limit, OptionValue, Rule, Selection
@@ -46,8 +46,9 @@ def _end(rule: Rule) -> str:
     """``lowest ``, of times ``shortest `` and so on: the end of the bounds that a limit is about."""
     if rule.nominal or rule.passing is not None or rule.fact or len(rule.limits) != 1 or not _spreads(rule):
         return ""
-    ends = ("shortest ", "longest ") if rule.measure.unit == "s" else ("lowest ", "highest ")
-    return ends[rule.limits[0].kind == "at-most"]
+    is_sum = rule.value is not None and not isinstance(rule.value, Call)
+    ends = ("shortest ", "longest ") if rule.measure.unit == "s" and not is_sum else ("lowest ", "highest ")
+    return ends[rule.limits[0].kind == "at-most"] + ("value of " if is_sum else "")
 
 
 def _spreads(rule: Rule) -> bool:

@@ -111,6 +111,14 @@ def test_one_reset_lifts_after_another() -> None:
     assert outcomes(LATER, RESETS.format(cpu="11k"), FED) == {"CPU_RST": "fails"}
 
 
+def test_a_place_that_is_misspelt_is_told_with_a_guess() -> None:
+    rule = compiled(LATER.replace("'FLASH_RST'", "'FLASH_RTS'"))
+    circuit = RESETS.format(cpu="15k")
+    example = Example(place=Place(file="day-one.toml"), circuit=circuit, project=FED, outcome="undecided")
+    (found,) = tried(replace(rule, examples=(example,)))
+    assert [item.reason for item in found.findings] == ["no node at FLASH_RTS, for delay; did you mean 'FLASH_RST'?"]
+
+
 BUS = """
 id = "bus-edges-fast-enough"
 level = "warning"

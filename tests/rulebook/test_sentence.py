@@ -49,7 +49,7 @@ from rcrules.measures import registry
         (
             'subject = "resistor"\nvalue = "(power / 1 W)^2 * 2^bits"\nat-most = "5"\ngiven = { bits = "3" }\n'
             "when = \"size = '0402'\"",
-            "for every resistor where size = '0402', the highest (power / 1 W)^2 * 2^bits must be at most 5",
+            "for every resistor where size = '0402', the highest value of (power / 1 W)^2 * 2^bits must be at most 5",
         ),
     ],
 )
