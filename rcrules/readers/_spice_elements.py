@@ -160,15 +160,16 @@ def _of_model(letter: str, model: Model, named: Mapping[str, str]) -> str:
 
 
 def _source(letter: str, rest: tuple[str, ...], scope: Scope, found: Element) -> None:
-    """A source: a steady voltage is a supply, anything else drives its node."""
+    """A source: a steady voltage is a supply; one that an analysis moves drives its node."""
     words = [word.lower() for word in rest]
-    wave = any(word in _WAVES for word in words)
+    wave = any(word in _WAVES or word == "ac" for word in words)
     steady = words[words.index("dc") + 1 :] if "dc" in words else words
     try:
         level = amount(steady[0], scope) if steady else 0.0
     except SumError:
         level = 0.0
-    found.value = " ".join(rest)[:200]
+    if rest:
+        found.fields["Waveform"] = " ".join(rest)[:200]
     if letter == "V" and level and not wave:
         found.value, found.symbol = show(level, "V", _MOST_DIGITS).replace(" ", ""), "battery"
         found.pin_types = ("power-out", "passive")

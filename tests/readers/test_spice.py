@@ -270,3 +270,17 @@ def test_sums_end_in_bounded_work(sums: str) -> None:
 def test_a_table_of_parts_is_no_deck() -> None:
     with pytest.raises(UserMistake):
         read("parts\nR1 10k 0603 1%\nC1 100n 0402 10%\n")
+
+
+@pytest.mark.parametrize(
+    "source", ["in 0 DC 0V AC SIN(0V 10V 1kHz)", "in 0 DC 1.5 AC .1", "in 0 PULSE(0 5 0 1n 1n 1m 2m)"]
+)
+def test_a_source_that_an_analysis_moves_drives_its_node(source: str) -> None:
+    """What it does in time is a field, no value: 1kHz would read as the frequency of a crystal."""
+    export = read(f"* deck\nVsig {source}\nR1 in out 1k\n.end\n")
+    part = next(part for part in export.parts if part.ref == "VSIG")
+    assert part.value is None
+    assert (
+        part.fields["Waveform"].text.split() == source.removeprefix("in 0 ").replace("(", " ").replace(")", " ").split()
+    )
+    assert [pin.type for pin in export.pins if pin.ref == "VSIG"] == ["output", "passive"]
