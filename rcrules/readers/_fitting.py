@@ -29,6 +29,7 @@ _NO: Final = frozenset({"0", "no", "n", "false", "f", "none", "not", "-", "off",
 _YES: Final = frozenset({"1", "yes", "y", "true", "t", "x", "on", "ja", "si", "sí", "oui", "✓", "✔", "*"})
 
 
+@lru_cache(maxsize=4096)
 def said_not_fitted(text: str) -> bool:
     """True where a value text itself says that the part is not fitted: ``DNP``, ``10k DNP``, ``100 - No Soldar``."""
     plain = text.strip().lower().strip("<>()[]?!")
@@ -46,7 +47,7 @@ def fitting(value: str, fields: Iterable[tuple[str, str]]) -> tuple[bool | None,
     answer: bool | None = None
     why = ""
     for name, text in fields:
-        said = _field_says(_plain_name(name), text.strip())
+        said = _field_says(name, text)
         if said is False:
             return False, f"{name.strip()} = {text.strip()!r}"
         if said is True and answer is None:
@@ -68,7 +69,9 @@ def tells_fitting(column: str) -> bool:
     return plain in _OMIT_NAMES | _FIT_NAMES | _NOTE_NAMES | {"qty", "quantity", "count", "amount", "item", "no", "nr"}
 
 
-def _field_says(name: str, text: str) -> bool | None:
+@lru_cache(maxsize=4096)
+def _field_says(written: str, told: str) -> bool | None:
+    name, text = _plain_name(written), told.strip()
     word = text.lower()
     if not word:
         return None

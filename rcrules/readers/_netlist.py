@@ -2,6 +2,7 @@
 
 import hashlib
 from collections.abc import Mapping
+from itertools import chain
 from typing import Final, Literal
 
 from rcrules.errors import Place
@@ -16,6 +17,8 @@ from rcrules.readers._remarks import Remarks
 _SHEET_PROPERTIES: Final = frozenset({"sheetname", "sheetfile"})
 _NO: Final = frozenset({"0", "no", "false", "n"})
 _PLACEHOLDER: Final = "~"
+_UNTOLD: Final = ("", "")
+"""Name and type of a pin that no library part has."""
 
 
 class Netlist:
@@ -24,6 +27,7 @@ class Netlist:
     def __init__(self, source: Source, reader: str, assumed: tuple[Remark, ...] = ()) -> None:
         self.source, self.reader = source, reader
         self._assumed = assumed
+        self._most = source.limits.connections
         self.title = ""
         self._remarks = Remarks()
         self._components: dict[str, Component] = {}
@@ -69,24 +73,26 @@ class Netlist:
 
     def add_node(self, node: Node) -> None:
         """Keep a connection for the net that is added next; one that names no part or no pin is told."""
-        if not node[0] or not node[1]:
-            self.remark(node[4], "a connection that names no part or no pin is left out")
+        ref, number, name, _, line = node
+        if not ref or not number:
+            self.remark(line, "a connection that names no part or no pin is left out")
             return
         self._pending.append(node)
-        self._bounded(node)
+        self._ended += 1
+        if self._ended > self._most or len(ref) + len(number) + len(name) > _bounds.MAX_NAME:
+            self._bounded(node)
 
     def add_open(self, node: Node) -> None:
         """Keep a pin that is said to be on no net."""
         self._open.append(node)
+        self._ended += 1
         self._bounded(node)
 
     def _bounded(self, node: Node) -> None:
         ref, number, name, _, line = node
-        if len(ref) + len(number) + len(name) > _bounds.MAX_NAME:
-            for what, text in (("a reference", ref), ("a pin number", number), ("a pin name", name)):
-                _bounds.named(self.source.name, line, what, text)
-        self._ended += 1
-        _bounds.bound(self.source.name, line, "connections", self._ended, self.source.limits.connections)
+        for what, text in (("a reference", ref), ("a pin number", number), ("a pin name", name)):
+            _bounds.named(self.source.name, line, what, text)
+        _bounds.bound(self.source.name, line, "connections", self._ended, self._most)
 
     def add_net(self, name: str, code: str, line: int) -> None:
         """Keep a net with the connections added before it; nets without a name are told apart by their code."""
@@ -98,8 +104,9 @@ class Netlist:
                 self.remark(line, f"net {name!r} is listed again; its pins are added to those of {self._nets[key]}")
             else:
                 key = f"{key}@{line}"
-        self._nets.setdefault(key, self.place(line))
-        self._nodes.extend((key, node) for node in self._pending)
+        if key not in self._nets:
+            self._nets[key] = Place(file=self.source.name, line=line)
+        self._nodes += [(key, node) for node in self._pending]
         self._pending.clear()
 
     def export(self, kind: Literal["netlist", "bom"] = "netlist") -> Export:
@@ -161,25 +168,26 @@ class Netlist:
         fields: dict[str, Cell] = {}
         flagged = ""
         for name, text, line in component.fields:
-            self._keep(fields, component, name, text or "", line)
+            self._keep(fields, component, name.strip(), text or "", line)
         for name, text, line in component.properties:
             plain = name.strip()
-            if plain.lower() in _SHEET_PROPERTIES:
-                continue
-            if plain.lower() == "dnp":
+            held, folded = plain in fields, plain.lower()
+            if folded == "dnp":
                 said_no = (text or "").strip().lower() in _NO and text is not None and text.strip() != ""
                 flagged = flagged if said_no else "flag 'dnp'"
-            if plain not in fields:
+            if not held and folded not in _SHEET_PROPERTIES:
                 self._keep(fields, component, plain, "yes" if text is None else text, line)
         return fields, flagged
 
     def _keep(self, fields: dict[str, Cell], component: Component, name: str, text: str, line: int) -> None:
-        plain, said = name.strip(), _said(text)
+        said = _said(text)
         if not said:
             return
-        held = fields.setdefault(plain, Cell(text=said, place=self.place(line)))
-        if held.text != said:
-            self.remark(line, f"{component.ref} has the field {plain!r} twice: {held.text!r} stands, not {said!r}")
+        held = fields.get(name)
+        if held is None:
+            fields[name] = Cell(text=said, place=Place(file=self.source.name, line=line))
+        elif held.text != said:
+            self.remark(line, f"{component.ref} has the field {name!r} twice: {held.text!r} stands, not {said!r}")
 
     def _library_part(self, component: Component) -> LibraryPart | None:
         found = self._library.get((component.library, component.symbol))
@@ -191,11 +199,12 @@ class Netlist:
         suffixed = self._names_end_with_number()
         unknown: dict[str, int] = {}
         seen: dict[tuple[str, str], str] = {}
+        file = self.source.name
 
         def pin(key: str, node: Node) -> ExportPin:
             ref, number, name, kind, line = node
             library = libraries.get(ref)
-            library_name, library_kind = library.pins.get(number, ("", "")) if library else ("", "")
+            library_name, library_kind = library.pins.get(number, _UNTOLD) if library else _UNTOLD
             normal = pin_type(kind or library_kind)
             if normal is None:
                 unknown.setdefault(kind or library_kind, line)
@@ -205,7 +214,7 @@ class Netlist:
                 name=_pin_name(name, _said(library_name), number, suffixed) if name or library_name else "",
                 type="unspecified" if normal is None else normal,
                 net=key,
-                place=self.place(line),
+                place=Place(file=file, line=line),
             )
 
         for key, (ref, number, _, _, line) in self._nodes:
@@ -221,12 +230,17 @@ class Netlist:
 
     def _names_end_with_number(self) -> bool:
         """True where the export writes every pin name as ``NAME_number``."""
-        named = [(name, number) for _, (_, number, name, _, _) in self._nodes if _said(name)]
-        return len(named) > 1 and all(name.endswith(f"_{number}") for name, number in named)
+        named = 0
+        for _, (_, number, name, _, _) in self._nodes:
+            if name and _said(name):
+                if not name.endswith(f"_{number}"):
+                    return False
+                named += 1
+        return named > 1
 
     def _remark_strangers(self) -> None:
         told = set(self._components)
-        for ref, _, _, _, line in (*(node for _, node in self._nodes), *self._open):
+        for ref, _, _, _, line in chain((node for _, node in self._nodes), self._open):
             if ref not in told:
                 told.add(ref)
                 _bounds.bound(self.source.name, line, "parts", len(told), self.source.limits.parts)

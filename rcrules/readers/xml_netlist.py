@@ -42,8 +42,13 @@ def _take_title(netlist: Netlist, element: _Element, line: Line) -> None:
 
 def _take_component(netlist: Netlist, element: _Element, line: Line) -> None:
     component = Component(ref=element.get("ref", "").strip(), line=line(element))
+    add = component.properties.append
     for child in element:
-        _fill(component, child, local(child), line)
+        tag = local(child)
+        if tag == "property":  # the most frequent by far
+            add((child.get("name", ""), child.get("value"), line(child)))
+        else:
+            _fill(component, child, tag, line)
     netlist.add_component(component)
 
 
@@ -56,9 +61,7 @@ def _fill(component: Component, child: _Element, tag: str, line: Line) -> None:
         case "description":
             component.description = child.text or ""
         case "fields":
-            component.fields.extend(_entry(item, item.text, line) for item in child)
-        case "property":
-            component.properties.append(_entry(child, child.get("value"), line))
+            component.fields += [(item.get("name", ""), item.text, line(item)) for item in child]
         case "libsource":
             component.library, component.symbol = child.get("lib", ""), child.get("part", "")
             component.description = component.description or child.get("description", "")
@@ -78,10 +81,6 @@ def _departure(element: _Element, line: Line) -> Departure:
     return found
 
 
-def _entry(item: _Element, text: str | None, line: Line) -> Entry:
-    return item.get("name", ""), text, line(item)
-
-
 def _take_library_part(netlist: Netlist, element: _Element, line: Line) -> None:
     del line
     names, pins = [element.get("part", "")], {}
@@ -96,11 +95,12 @@ def _take_library_part(netlist: Netlist, element: _Element, line: Line) -> None:
 
 
 def _take_net(netlist: Netlist, element: _Element, line: Line) -> None:
+    add = netlist.add_node
     for child in element:
         if local(child) == "node":
             get = child.get
             names = get("pinfunction", ""), get("pintype", "")
-            netlist.add_node((get("ref", "").strip(), get("pin", "").strip(), *names, line(child)))
+            add((get("ref", "").strip(), get("pin", "").strip(), *names, line(child)))
     netlist.add_net(element.get("name", ""), element.get("code", ""), line(element))
 
 
