@@ -2,6 +2,7 @@
 
 import math
 
+from rcrules.derivation._known import value_in
 from rcrules.derivation._respond import pole, respond, seen
 from rcrules.derivation._sheet import Number
 from rcrules.derivation._working import Working
@@ -57,7 +58,7 @@ def first_current(work: Working) -> Number | None:
     """I = |v| / R at the first instant or in the end, whichever is more; of a resistor or a pin that is one."""
     if ("kind", "capacitor") in work.problem.structure.options:
         return _charging(work)
-    if math.isinf(float(work.measure.compute(work.problem.structure, work.cases)[0])):
+    if math.isinf(value_in(work.measure, work.problem.structure, work.cases)):
         return work.sheet.given("I", math.inf, "A", "nothing limits it")
     ends = [float(work.solved.signal.initial()[0]), float(work.solved.final[0])]
     if not all(map(math.isfinite, ends)):
@@ -83,7 +84,7 @@ def _charging(work: Working) -> Number | None:
 
 def _between_sources(work: Working, index: int) -> Number | None:
     ends = work.problem.structure.shape.capacitors[index]
-    value = float(work.measure.compute(work.problem.structure, work.cases)[0])
+    value = value_in(work.measure, work.problem.structure, work.cases)
     if math.isinf(value):
         return work.sheet.given("I", value, "A", "a source jumps across it, and nothing limits the current")
     slopes = [work.slopes(piece) for piece in range(len(work.starts))]

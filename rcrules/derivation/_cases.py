@@ -5,6 +5,7 @@ from collections.abc import Callable, Iterator, Sequence
 
 import numpy as np
 
+from rcrules.derivation._known import value_in, values_in
 from rcrules.derivation._sheet import Step
 from rcrules.derivation._work import Worked
 from rcrules.findings import Json
@@ -64,11 +65,11 @@ def _plainest(problem: Problem, measure: Measure, case: Sequence[float]) -> Arra
     cases = np.tile(found, (len(off) + 1, 1))
     for row, index in enumerate(off):
         cases[row, index] = nominal[index]
-    values = measure.compute(problem.structure, cases)
+    values = values_in(measure, problem.structure, cases)
     plainer = found.copy()
     for index, value in zip(off, values, strict=False):
         plainer[index] = nominal[index] if _same(value, values[-1]) else found[index]
-    return plainer if _same(float(measure.compute(problem.structure, plainer[None, :])[0]), values[-1]) else found
+    return plainer if _same(value_in(measure, problem.structure, plainer), values[-1]) else found
 
 
 def _differs(value: float, plain: float) -> bool:

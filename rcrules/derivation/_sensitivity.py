@@ -6,6 +6,7 @@ from typing import Final
 
 import numpy as np
 
+from rcrules.derivation._known import values_in
 from rcrules.problems import Array, Bounds, Problem, Quantity
 
 _LEAST: Final = 1e-6
@@ -52,7 +53,7 @@ def _moves(problem: Problem, measure: Quantity, bounds: Bounds) -> Array:
     for index in range(len(nominal)):
         cases[2 * index, index] = bounds.low_at[index]
         cases[2 * index + 1, index] = bounds.high_at[index]
-    values = measure.compute(problem.structure, cases)
+    values = values_in(measure, problem.structure, cases)
     moved = np.full(2 * len(nominal), math.nan)
     with np.errstate(invalid="ignore"):
         np.subtract(values[:-1], values[-1], out=moved)

@@ -6,6 +6,7 @@ from typing import TypeVar
 
 import numpy as np
 
+from rcrules.derivation._known import value_in
 from rcrules.derivation._respond import respond
 from rcrules.derivation._sheet import Number
 from rcrules.derivation._times import arrival, discharge, first, instant, last, reached, valid_at, voltage_later
@@ -91,7 +92,7 @@ def width(work: Working) -> Number | None:
 def rearmed(work: Working) -> Number | None:
     """From the return of the supply, or its valid level, to the end of the reset; 0 where the dip starts none."""
     structure, sheet = work.problem.structure, work.sheet
-    value = float(work.measure.compute(structure, work.cases)[0])
+    value = value_in(work.measure, structure, work.cases)
     length = float(structure.option("length"))
     if value == 0.0:
         volts = float(work.solved.signal.at(np.array([length]))[0])

@@ -8,13 +8,14 @@ import numpy as np
 from rcrules.derivation import _balance, _transfers
 from rcrules.derivation._amounts import total
 from rcrules.derivation._bias import along
+from rcrules.derivation._known import states, value_in
 from rcrules.derivation._poles import corner as two_poles
 from rcrules.derivation._poles import slowest
 from rcrules.derivation._reduce import parallel, source
 from rcrules.derivation._respond import pole, seen
 from rcrules.derivation._sheet import Number
 from rcrules.derivation._working import Working
-from rcrules.problems import Array, evaluate, steady_states
+from rcrules.problems import Array, evaluate
 
 Choose = Callable[[Array], np.intp]
 """Voltages of all states -> the number of the one that counts."""
@@ -58,7 +59,7 @@ def across(work: Working) -> Number | None:
     shown = _volts(work, _counting(work))
     if shown is None:
         return None
-    value = float(work.measure.compute(work.problem.structure, work.cases)[0])
+    value = value_in(work.measure, work.problem.structure, work.cases)
     signed = ("signed", 1.0) in work.problem.structure.options
     return shown if signed or shown.value * value >= 0.0 else _size(work, shown)
 
@@ -148,9 +149,9 @@ def _most(work: Working) -> Number | None:
 def _volts(work: Working, choose: Choose) -> Number | None:
     """v across the part in the DC state that counts."""
     structure = work.problem.structure
-    states = steady_states(structure, work.cases)[0]
+    found = states(structure, work.cases)
     ends = (structure.at, structure.against)
-    volts = states[:, structure.at] - (0.0 if structure.against is None else states[:, structure.against])
+    volts = found[:, structure.at] - (0.0 if structure.against is None else found[:, structure.against])
     index = int(choose(volts))
     sources = len(structure.states)
     held = work.held([float(evaluate(form, work.cases)[0]) for form in structure.states[index % sources]])

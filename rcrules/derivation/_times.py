@@ -4,6 +4,7 @@ import math
 
 import numpy as np
 
+from rcrules.derivation._known import value_in
 from rcrules.derivation._pieces import Piece, Sum
 from rcrules.derivation._reduce import TooLarge, parallel, source
 from rcrules.derivation._respond import respond
@@ -53,7 +54,7 @@ def settled(work: Working) -> Number | None:
     solved, sheet = work.solved, work.sheet
     size = _step(work)
     band = float(work.problem.structure.option("band"))
-    value = float(work.measure.compute(work.problem.structure, work.cases)[0])
+    value = value_in(work.measure, work.problem.structure, work.cases)
     if size is None or not 0.0 < value < math.inf:
         return None
     share = sheet.number("band", band, "1")

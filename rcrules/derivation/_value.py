@@ -10,6 +10,7 @@ import numpy as np
 
 from rcrules.derivation._cases import MadeOf, worked_cases
 from rcrules.derivation._derive import circumstances, parameters
+from rcrules.derivation._known import value_in
 from rcrules.derivation._sheet import Number, Sheet, Step
 from rcrules.derivation._work import DIGITS, EXACT, Worked, work_out
 from rcrules.expressions import Binary, Call, Expression, Name, Power, Unary, Values, text_of, value_of
@@ -92,7 +93,7 @@ def _worked(problem: Problem, measure: Measure, value: Value, case: tuple[float,
 def _of_term(term: Term, case: tuple[float, ...]) -> Worked:
     """Its lines, the first of which says whose they are."""
     if term.problem.names is None:
-        value = float(term.measure.compute(term.problem.structure, np.array([case], dtype=float))[0])
+        value = value_in(term.measure, term.problem.structure, np.array(case, dtype=float))
         return Worked(value=value, steps=(), by_hand=False)
     found = work_out(term.problem, term.problem.names, term.measure, case)
     return replace(found, steps=tuple(_headed(found.steps, text_of(term.call))))

@@ -9,6 +9,7 @@ from typing import Final
 import numpy as np
 
 from rcrules.derivation import _amounts, _heat, _spans, _states, _times
+from rcrules.derivation._known import value_in
 from rcrules.derivation._reduce import TooLarge
 from rcrules.derivation._respond import respond
 from rcrules.derivation._sheet import Number, Step
@@ -74,7 +75,7 @@ class Worked:
 
 def work_out(problem: Problem, names: Names, measure: Measure, case: tuple[float, ...]) -> Worked:
     """Lines that arrive at the value of a measure in a case."""
-    value = float(measure.compute(problem.structure, np.array([case], dtype=float))[0])
+    value = value_in(measure, problem.structure, np.array(case, dtype=float))
     for modal, digits in product((False, True), DIGITS):
         work = working(problem, names, measure, case, digits, modal=modal)
         found = _tried(work)

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 from io import BytesIO
-from typing import TYPE_CHECKING, Final
+from typing import TYPE_CHECKING, Final, cast
 
 from rcrules.readers import _bounds
 from rcrules.readers._mistakes import refusal, shorten
@@ -46,7 +46,7 @@ class Elements:
 
     def line(self, element: _Element) -> int:
         """Line of an element in the file."""
-        return self._skipped + (element.sourceline or 1)  # type: ignore[no-any-return]
+        return self._skipped + (cast("int | None", element.sourceline) or 1)
 
     def __iter__(self) -> Iterator[tuple[str, _Element]]:
         from lxml import etree
