@@ -1,6 +1,6 @@
 """Facts that the key ``when`` compares: supplies that feed a subject, the voltage across it, what its parts are."""
 
-from collections.abc import Iterable
+from collections.abc import Iterable, Mapping
 
 from rcrules.checks._views import View
 from rcrules.networks import Board, Held
@@ -9,8 +9,14 @@ from rcrules.quantities import Spread
 from rcrules.vocabulary import technology
 
 
-def facts(view: View, board: Board) -> dict[str, float]:
-    """``supply_low`` … ``tolerance``, SI; a fact that is not known is left out."""
+def facts(view: View, board: Board) -> Mapping[str, float]:
+    """``supply_low`` … ``tolerance``, SI; a fact that is not known is left out. Worked out once a view."""
+    if not view.told:
+        view.told.update(_facts(view, board))
+    return view.told
+
+
+def _facts(view: View, board: Board) -> dict[str, float]:
     supplies = [held for held in _held(view.fed_from, board) if held.kind == "supply"]
     held = {**_ends("supply", _hull(supplies)), **_ends("voltage", _across(view, board))}
     return {**held, **_rating(view), **_of_parts(view)}

@@ -1,7 +1,7 @@
 """The facts of a subject as selections ask for them."""
 
 from collections.abc import Iterable
-from dataclasses import dataclass
+from dataclasses import dataclass, field
 
 from rcrules.networks import Network, Node
 from rcrules.parts import RatedPart
@@ -20,6 +20,8 @@ class View:
     feeds: tuple[str, ...]
     kinds_fed: tuple[str, ...]
     parts: tuple[RatedPart, ...]
+    told: dict[str, float] = field(default_factory=dict, compare=False, repr=False)
+    """Facts that are numbers, once they have been worked out."""
 
 
 def view_at(node: Node, network: Network, nets: Iterable[str], parts: tuple[RatedPart, ...]) -> View:

@@ -90,6 +90,8 @@ def _settled(value: Any) -> Any:
         return {str(key): item if type(item) in _AS_IS else _settled(item) for key, item in value.items()}
     if kind is list or kind is tuple:
         return [item if type(item) in _AS_IS else _settled(item) for item in value]
+    if kind is float:
+        return _rounded(value)
     if kind in _MEMBERS:
         return kind(**{name: _settled(getattr(value, name)) for name in _MEMBERS[kind]})
     return _rounded(value) if isinstance(value, float) else value

@@ -96,7 +96,6 @@ def _inputs(scene: Scene, verdicts: Verdicts) -> Iterator[tuple[str, Verdict]]:
     for joint in scene.members:
         if joint in verdicts or joint in scene.switching:
             continue
-        volts, _ = volts_here(scene, joint)
         into = [
             diode
             for diode in scene.diodes.get(joint, ())
@@ -106,13 +105,14 @@ def _inputs(scene: Scene, verdicts: Verdicts) -> Iterator[tuple[str, Verdict]]:
             why = f"connector, and diode {into[0].ref} into {into[0].cathode}"
             yield joint, replace(verdicts[into[0].cathode], evidence=(why,), sure=False, given=False)
         elif _is_power_entry(scene, joint):
+            volts, _ = volts_here(scene, joint)
             yield joint, Verdict(kind="supply", spread=volts, evidence=("power connector",), sure=False)
         elif scene.coils.get(joint) and not _is_filtered(scene, joint, verdicts) and _has_bulk(scene, joint, verdicts):
-            yield (
-                joint,
-                Verdict(kind="supply", spread=volts, evidence=(f"switched inductor from {scene.coils[joint][0]}",)),
-            )
+            volts, _ = volts_here(scene, joint)
+            why = f"switched inductor from {scene.coils[joint][0]}"
+            yield joint, Verdict(kind="supply", spread=volts, evidence=(why,))
         elif _is_rectified(scene, joint, verdicts):
+            volts, _ = volts_here(scene, joint)
             yield joint, Verdict(kind="supply", spread=volts, evidence=("diode from a switching node",))
 
 

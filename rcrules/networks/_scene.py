@@ -2,7 +2,7 @@
 
 from collections import defaultdict
 from collections.abc import Mapping
-from dataclasses import dataclass, replace
+from dataclasses import dataclass, field, replace
 from itertools import chain
 from typing import Final, TypeVar
 
@@ -22,6 +22,7 @@ from rcrules.networks._switching import switching_nets
 from rcrules.parts import Known, RatedPart
 
 Ends = TypeVar("Ends", Branch, Contact)
+_NONE: Final[frozenset[str]] = frozenset()
 _MAKERS: Final = frozenset(("ic", "other"))
 
 
@@ -58,6 +59,10 @@ class Scene:
     """Joint -> joints at the far end of inductors that are no DC joint, because one end is a switching node."""
     switching: frozenset[str]
     """Joints that a power switch drives: the input or output of an inductor that is switched."""
+    _capacitors: dict[str, tuple[tuple[Branch, str], ...]] = field(default_factory=dict, repr=False)
+    """What has been asked for, so that each joint is looked at once."""
+    _resistors: dict[str, tuple[Resistance, ...]] = field(default_factory=dict, repr=False)
+    _hints: dict[str, tuple[NameHint, ...]] = field(default_factory=dict, repr=False)
 
     def says(self, joint: str, *claims: str) -> tuple[Pin, ...]:
         """The pins at the joint that say any of the claims."""
@@ -67,9 +72,10 @@ class Scene:
 
     def of_kind(self, joint: str, *kinds: str) -> tuple[Pin, ...]:
         """The pins at the joint of parts of these kinds."""
-        if self.kinds.get(joint, frozenset()).isdisjoint(kinds):
+        if self.kinds.get(joint, _NONE).isdisjoint(kinds):
             return ()
-        return tuple(pin for pin in self.pins[joint] if self.kind(pin.ref) in kinds)
+        parts = self.parts
+        return tuple([pin for pin in self.pins[joint] if _kind(parts, pin.ref) in kinds])
 
     def kind(self, ref: str) -> str:
         """Kind of the part, ``other`` where it is not known."""
@@ -77,17 +83,24 @@ class Scene:
 
     def hints(self, joint: str) -> tuple[NameHint, ...]:
         """What the names of the joint's nets say, strong ones first."""
-        found = [named for net in self.members[joint] if (named := hint(net))]
-        return tuple(sorted(found, key=lambda named: (not named.strong, named.volts is None)))
+        if joint not in self._hints:
+            found = [named for net in self.members[joint] if (named := hint(net))]
+            self._hints[joint] = tuple(sorted(found, key=lambda named: (not named.strong, named.volts is None)))
+        return self._hints[joint]
 
     def capacitors(self, joint: str) -> tuple[tuple[Branch, str], ...]:
         """Capacitors at the joint, each with its other end."""
-        items = self.branches.get(joint, ())
-        return tuple((item, other_end(item, joint)) for item in items if item.kind == "capacitor")
+        if joint not in self._capacitors:
+            items = [item for item in self.branches.get(joint, ()) if item.kind == "capacitor"]
+            self._capacitors[joint] = tuple([(item, other_end(item, joint)) for item in items])
+        return self._capacitors[joint]
 
     def resistors(self, joint: str) -> tuple[Resistance, ...]:
         """Resistors at the joint; those in series with nothing between them are one."""
-        return tuple(self._resistance(item, joint) for item in self.branches.get(joint, ()) if item.kind == "resistor")
+        if joint not in self._resistors:
+            items = [item for item in self.branches.get(joint, ()) if item.kind == "resistor"]
+            self._resistors[joint] = tuple([self._resistance(item, joint) for item in items])
+        return self._resistors[joint]
 
     def _resistance(self, branch: Branch, joint: str) -> Resistance:
         items, far = follow(branch, joint, lambda at: self.branches.get(at, ()), self._is_plain)
