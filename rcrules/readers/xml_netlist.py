@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Callable, Mapping
 from typing import TYPE_CHECKING, Final
 
-from rcrules.readers._component import Component, Departure, Entry, LibraryPart
+from rcrules.readers._component import Component, Departure, LibraryPart
 from rcrules.readers._export import Export, Reader, Source
 from rcrules.readers._netlist import Netlist
 from rcrules.readers._xml import root_name
