@@ -18,22 +18,25 @@ def values_in(measure: Quantity, structure: Structure, cases: Array) -> Array:
     """The measure in each case (case,), not to be written to. Raises what the measure raises."""
     if _LOCAL in getattr(measure.compute, "__qualname__", _LOCAL):  # made for one rule: it would be kept with the board
         return measure.compute(structure, cases)
-    return _known(measure.compute, structure, cases.tobytes(), cases.shape[1])
+    return _known(measure.compute, structure, cases.tobytes(), cases.shape)
 
 
 def value_in(measure: Quantity, structure: Structure, case: Array) -> float:
     """The measure in one case (column,) or (1, column)."""
-    return float(values_in(measure, structure, case.reshape(1, -1))[0])
+    return float(values_in(measure, structure, case.reshape(1, case.size))[0])
 
 
 def states(structure: Structure, case: Array) -> Array:
     """DC voltages of all terminals in each state [V] (state, terminal), not to be written to. Raises FloatingNode."""
-    found: Array = _known(steady_states, structure, case.tobytes(), case.size)[0]
+    found: Array = _known(steady_states, structure, case.tobytes(), (1, case.size))[0]
     return found
 
 
 @lru_cache(maxsize=_MOST)
-def _known(work_out: Callable[[Structure, Array], Array], structure: Structure, data: bytes, columns: int) -> Array:
-    found = work_out(structure, np.frombuffer(data).reshape(-1, columns).copy())
+def _known(
+    work_out: Callable[[Structure, Array], Array], structure: Structure, data: bytes, size: tuple[int, ...]
+) -> Array:
+    """data: cases (case, column) as bytes; size: how many of each."""
+    found = work_out(structure, np.frombuffer(data).reshape(size).copy())
     found.flags.writeable = False
     return found

@@ -6,7 +6,7 @@ from typing import Final
 
 from rcrules.errors import UserMistake
 from rcrules.readers._mistakes import refusal, shorten
-from rcrules.readers._text import Lines
+from rcrules.readers._text import spot
 
 MAX_DEPTH: Final = 256
 MAX_KEPT: Final = 200_000
@@ -139,12 +139,12 @@ def _misplaced(file: str, text: str, match: re.Match[str], stack: list[Form], ke
         problem, expected = "too much inside one component, or outside of any", f"at most {MAX_KEPT} brackets and texts"
     else:
         problem, expected = "text after the end of the netlist", "the end of the file: the first bracket is closed"
-    lines = Lines(text)
+    line, column = spot(text, match.start())
     return refusal(
         file,
         problem,
-        line=lines.line(match.start()),
-        column=lines.column(match.start()),
+        line=line,
+        column=column,
         found=shorten(match[0]),
         expected=expected,
         do="export the netlist again",

@@ -2,7 +2,6 @@
 
 import codecs
 import re
-from bisect import bisect_right
 from collections.abc import Iterator
 from typing import Final
 
@@ -67,20 +66,10 @@ def numbered(text: str) -> Iterator[tuple[int, str]]:
     yield line, text[start:]
 
 
-class Lines:
-    """Line numbers and columns of offsets in a text; CR LF, LF and a lone CR end lines."""
-
-    def __init__(self, text: str) -> None:
-        self._ends = [match.end() for match in _LINE_END.finditer(text)]
-
-    def line(self, offset: int) -> int:
-        """Line of an offset, from 1."""
-        return bisect_right(self._ends, offset) + 1
-
-    def column(self, offset: int) -> int:
-        """Column of an offset, from 1."""
-        index = bisect_right(self._ends, offset)
-        return offset - (self._ends[index - 1] if index else 0) + 1
+def spot(text: str, offset: int) -> tuple[int, int]:
+    """Line and column of an offset, both from 1; CR LF, LF and a lone CR end lines."""
+    ends = text.count("\n", 0, offset) + text.count("\r", 0, offset) - text.count("\r\n", 0, offset)
+    return ends + 1, offset - max(text.rfind("\n", 0, offset), text.rfind("\r", 0, offset))
 
 
 def _line_text(line: bytes) -> str:
@@ -106,11 +95,11 @@ def _declared(data: bytes) -> tuple[str | None, int]:
 def _refuse_nul(source: Source, text: str) -> None:
     at = text.find("\0")
     if at >= 0:
-        lines = Lines(text[:at])
+        line, column = spot(text, at)
         raise refusal(
             source.name,
             "the file holds a NUL character, so it is no text",
-            line=lines.line(at),
-            column=lines.column(at),
+            line=line,
+            column=column,
             do="export the file again; check that it was not cut or padded on its way",
         )

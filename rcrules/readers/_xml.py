@@ -5,7 +5,7 @@ from typing import IO, Final
 
 from rcrules.readers._export import Source
 from rcrules.readers._mistakes import refusal
-from rcrules.readers._text import Lines, head
+from rcrules.readers._text import head, spot
 
 MAX_MARKS: Final = 1_500_000
 _PROLOG: Final = 65_536
@@ -60,7 +60,7 @@ def refuse_doctype(source: Source) -> None:
     start = _SKIPPED.match(text)
     at = start.end() if start else 0
     if _DOCTYPE.match(text, at):
-        raise doctype_refusal(source, Lines(text[: at + 1]).line(at))
+        raise doctype_refusal(source, spot(text, at)[0])
 
 
 def doctype_refusal(source: Source, line: int | None) -> Exception:

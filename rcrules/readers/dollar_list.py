@@ -16,6 +16,7 @@ NAME: Final = "dollar-list"
 MAX_LINES: Final = 1_000_000
 CLAIM: Final = re.compile(r"\A\s*\(NETLIST\)|^\$PACKAGES\b", re.IGNORECASE | re.MULTILINE)
 _WORD: Final = re.compile(r"'([^']*)'|([^\s,']+)")
+_BEFORE: Final = re.compile(r"([^;']*+(?:'[^']*+'[^;']*+)*+);")
 _FIELDS: Final = ("footprint", "device", "value", "tolerance")
 
 
@@ -30,7 +31,7 @@ def read(source: Source, columns: Mapping[str, str]) -> Export:
     text, assumed = decode(source)
     sections = _Sections(source, assumed)
     for line, said in _joined(source, text):
-        if said.upper().split()[0] == "$END":
+        if said[:5].upper().split()[0] == "$END":
             return sections.export()
         sections.take(line, said)
     raise refusal(
@@ -44,22 +45,22 @@ def read(source: Source, columns: Mapping[str, str]) -> Export:
 
 def _joined(source: Source, text: str) -> Iterator[tuple[int, str]]:
     """Lines with those that continue them, by the number of the first; comments in parentheses are left out."""
-    start, held = 0, ""
+    start, held = 0, list[str]()
     for line, said in numbered(text):
         _bounds.bound(source.name, line, "lines", line, MAX_LINES)
         plain = said.strip()
         if not plain or (not held and plain.startswith("(")):
             continue
-        start = start if held else line
         if plain.startswith("$") and held:
-            yield start, held
-            start, held = line, ""
-        held = f"{held} {plain}" if held else plain
+            yield start, " ".join(held)
+            held = []
+        start = start if held else line
+        held.append(plain)
         if not plain.endswith(","):
-            yield start, held
-            held = ""
+            yield start, " ".join(held)
+            held = []
     if held:
-        yield start, held
+        yield start, " ".join(held)
 
 
 class _Sections:
@@ -74,7 +75,7 @@ class _Sections:
     def take(self, line: int, said: str) -> None:
         """Take in one line, or one with its continuations."""
         if said.startswith("$"):
-            self._section = said[1:].split()[0].upper() if said[1:].split() else ""
+            self._section = "".join(said[1:].split(None, 1)[:1]).upper()
             self._about = self._section if self._section in {"PACKAGES", "NETS"} else self._about
             return
         before, mark, after = _at_semicolon(said)
@@ -124,12 +125,8 @@ class _Sections:
 
 def _at_semicolon(said: str) -> tuple[str, str, str]:
     """The line split at its first semicolon that is not within quotes."""
-    quoted = False
-    for at, character in enumerate(said):
-        quoted ^= character == "'"
-        if character == ";" and not quoted:
-            return said[:at], ";", said[at + 1 :]
-    return said, "", ""
+    found = _BEFORE.match(said)
+    return (found[1], ";", said[found.end() :]) if found else (said, "", "")
 
 
 def _words(text: str) -> list[str]:
