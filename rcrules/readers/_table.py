@@ -18,6 +18,8 @@ MAX_CELL: Final = 131_072
 """Characters of the longest cell."""
 MAX_CELLS: Final = 1_000_000
 _LINE: Final = re.compile(r"([^\r\n]*+)(?:\r\n|\n|\r|\Z)")
+_EMPTY: Final = re.compile(r"[\r\n]++")
+"""Empty lines, from the start of the first to the end of the last."""
 _WHOLE: Final = re.compile(r"(?<![\w.,])\d{1,3}$")
 _FRACTION: Final = re.compile(r"\d+ ?[^\W\d_]")
 _SAMPLE: Final = 400
@@ -91,10 +93,15 @@ def _split(source: Source, text: str, delimiter: str, limit: int | None) -> tupl
 
 
 def _cut(source: Source, text: str, delimiter: str) -> Iterator[Row]:
-    """Every row, also the blank ones. Raises UserMistake."""
+    """Every row, also blank ones, but none for an empty line. Raises UserMistake."""
     cell = _cell_pattern(delimiter)
     at, line, count = 0, 1, 0
     while at < len(text):
+        if text[at] in "\r\n":
+            empty = _EMPTY.match(text, at)
+            assert empty is not None  # it starts with a line end
+            at, line = empty.end(), line + _line_ends(empty[0])
+            continue
         plain = _LINE.match(text, at)
         assert plain is not None  # it also takes an empty line
         if '"' in plain[1] or len(plain[1]) > MAX_CELL:
@@ -110,6 +117,8 @@ def _cut(source: Source, text: str, delimiter: str) -> Iterator[Row]:
 
 def _plain_row(text: str, line: int, delimiter: str) -> Row:
     """A row without quotes."""
+    if delimiter not in text:
+        return Row(line=line, cells=(text.strip(),), columns=(1,), delimiter=delimiter)
     pieces = text.split(delimiter)
     starts = accumulate(map(len, pieces[:-1]), lambda start, length: start + length + 1, initial=1)
     return Row(line=line, cells=tuple(map(str.strip, pieces)), columns=tuple(starts), delimiter=delimiter)
@@ -151,7 +160,7 @@ def _cell_text(quoted: str | None, rest: str) -> str:
 
 
 def _line_ends(text: str) -> int:
-    return len(re.findall(r"\r\n|\n|\r", text))
+    return text.count("\n") + text.count("\r") - text.count("\r\n")
 
 
 def _too_long(source: Source, line: int, column: int) -> UserMistake:

@@ -104,12 +104,15 @@ def test_what_means_nothing_is_not_kept_without_end() -> None:
 def test_a_table_of_more_cells_than_any_is_refused(monkeypatch: pytest.MonkeyPatch) -> None:
     monkeypatch.setattr(_table, "MAX_CELLS", 8)
     mistake = refused('Ref,Value\nR1,1k\nR2,"1k"\n,\n\nR3,1k\n')
-    assert (mistake.problem, mistake.place.line) == ("the table is too large", 5)
+    assert (mistake.problem, mistake.place.line) == ("the table is too large", 6)
 
 
 def test_blank_lines_and_blanks_without_end_are_passed_over() -> None:
     lines = "(export (components\n" + "\r\n" * 2_000_000 + " " * 2_000_000 + "(comp (ref R1) (value 1k))))"
     part = read(Source(name="a", data=lines.encode())).parts[0]
+    assert (part.ref, part.place.line) == ("R1", 2_000_002)
+    rows = "net,part,pin\n" + "\r\n" * 2_000_000 + "A,R1,1\n"
+    part = read(Source(name="a", data=rows.encode())).parts[0]
     assert (part.ref, part.place.line) == ("R1", 2_000_002)
 
 

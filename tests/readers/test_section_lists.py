@@ -136,3 +136,15 @@ def test_a_line_of_dollar_sections_without_semicolon_is_refused() -> None:
 @pytest.mark.parametrize("text", [STARS, DOLLARS])
 def test_a_list_without_its_end_is_refused(text: str) -> None:
     assert refused(text.replace("*END*\n", "").replace("$END\n", "")).problem == "the list has no end"
+
+
+def test_a_semicolon_counts_outside_of_closed_quotes_only() -> None:
+    text = DOLLARS.replace("VIN ; J1.1 R1.1", "'V;IN' ; J1.1 R1.1")
+    assert "V;IN" in dict(read(text).nets)
+    assert refused("(NETLIST)\n$NETS\n'A ; R1.1\n$END\n").problem == "a line without ';'"
+
+
+def test_a_net_continued_over_very_many_lines_is_read_whole() -> None:
+    ends = ",\n".join(f"R{number}.1" for number in range(1, 6_001))
+    pins = read(f"(NETLIST)\n$PACKAGES\n$NETS\nA ; {ends}\n$END\n").pins
+    assert (len(pins), pins[-1].ref, {pin.place.line for pin in pins}) == (6_000, "R6000", {4})
