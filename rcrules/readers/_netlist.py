@@ -147,7 +147,7 @@ class Netlist:
     def _variant(self, component: Component, departure: Departure) -> Variant:
         fields: dict[str, Cell] = {}
         for name, text, line in departure.fields:
-            self._keep(fields, component, name, text or "", line)
+            self._keep(fields, component, name.strip(), text or "", line)
         value = next((fields.pop(name) for name in tuple(fields) if name.lower() == "value"), None)
         flags = (text for name, text, _ in departure.properties if name.strip().lower() == "dnp")
         fitted = next((text is not None and text.strip().lower() in _NO for text in flags), None)

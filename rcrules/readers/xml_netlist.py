@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Callable, Mapping
 from typing import TYPE_CHECKING, Final
 
-from rcrules.readers._component import Component, Departure, LibraryPart
+from rcrules.readers._component import Component, Departure, Entry, LibraryPart
 from rcrules.readers._export import Export, Reader, Source
 from rcrules.readers._netlist import Netlist
 from rcrules.readers._xml import root_name
@@ -79,6 +79,10 @@ def _departure(element: _Element, line: Line) -> Departure:
         elif local(child) == "fields":
             found.fields.extend(_entry(item, item.text, line) for item in child)
     return found
+
+
+def _entry(item: _Element, text: str | None, line: Line) -> Entry:
+    return item.get("name", ""), text, line(item)
 
 
 def _take_library_part(netlist: Netlist, element: _Element, line: Line) -> None:
