@@ -50,7 +50,7 @@ def hold_rails(bench: Bench, circuit: Circuit, sources: Sources) -> bool:
         for pin in bench.pins(joint):
             if bench.pin_fact(pin, lambda facts: facts.leakage) is None:
                 continue
-            own = _supplies(bench, sources, pin)
+            own = supplies_of(bench, sources, pin)
             railed = railed and bool(own)
             for _, rail in own:
                 terminal_of(bench, circuit, rail)
@@ -63,13 +63,13 @@ def _rails(bench: Bench, circuit: Circuit, sources: Sources) -> Iterator[tuple[s
     for joint in dict.fromkeys(joint for joint, _ in circuit.draws if joint not in floating):
         for pin in bench.pins(joint):
             if bench.pin_fact(pin, lambda facts: facts.leakage) is not None:
-                own = [*_supplies(bench, sources, pin)] or _known(sources, circuit.joints.values())
+                own = [*supplies_of(bench, sources, pin)] or _known(sources, circuit.joints.values())
                 if own:
                     volts, rail = max(own)
                     yield joint, rail, volts
 
 
-def _supplies(bench: Bench, sources: Sources, pin: Pin) -> list[tuple[float, str]]:
+def supplies_of(bench: Bench, sources: Sources, pin: Pin) -> list[tuple[float, str]]:
     """Positive supplies of a pin's part: voltage [V] and joint."""
     part = bench.board.design.parts.get(pin.ref)
     return _known(sources, (bench.joint(item.net) for item in part.pins if item.net) if part else ())

@@ -12,9 +12,10 @@ from rcrules.events._diodes import widened, with_clamps, with_diodes
 from rcrules.events._levels import Leveller
 from rcrules.events._opened import opened
 from rcrules.events._options import OptionValue, levels_of, plain_of
+from rcrules.events._reference import hold_powering, reference_of
 from rcrules.events._rest import at_rest
 from rcrules.events._sample import pose_sample
-from rcrules.events._sources import PROJECT, Sources
+from rcrules.events._sources import Sources
 from rcrules.events._structure import structure_of
 from rcrules.events._table import Table
 from rcrules.events._transients import Scene, Transient
@@ -23,7 +24,7 @@ from rcrules.levels import Level
 from rcrules.measures import Measure
 from rcrules.networks import Network, Node
 from rcrules.parts import RatedPart
-from rcrules.problems import LevelForm, Problem, Structure, Unsettled, solved
+from rcrules.problems import Problem, Structure, Unsettled, solved
 from rcrules.quantities import Spread, show
 
 STEPS = ("step-up", "step-down")
@@ -42,6 +43,8 @@ def pose_node(bench: Bench, node: Node, measure: Measure, options: Mapping[str, 
     leveller = Leveller(bench=bench, circuit=circuit, table=table, node=node)
     _hold_followed(bench, circuit, leveller, levels)
     event = _event(measure, options)
+    if options.get("from") == "supply valid":
+        hold_powering(scene, node)
     found = with_clamps(scene, event, with_diodes(scene, event), slight=measure.unit == "s")
     structure = replace(
         structure_of(circuit, found), at=circuit.terminal(scene.joint), options=plain_of(measure, options)
@@ -55,7 +58,7 @@ def pose_node(bench: Bench, node: Node, measure: Measure, options: Mapping[str, 
         (name, leveller.form(name, level, rising=structure.rising != (name == "armed")))
         for name, level in levels.items()
     )
-    reference = _reference(scene, found, str(options.get("from", "event")))
+    reference = reference_of(scene, node, found, str(options.get("from", "event")))
     doubt, ask = _doubt(absorbing, options)
     return Problem(
         structure=replace(structure, levels=forms, reference=reference),
@@ -172,25 +175,3 @@ def _nominal(structure: Structure, table: Table) -> _Start:
         return _Start(before=float(case.start[0]), initial=float(case.signal.initial()[0]), final=float(case.final[0]))
     except Unsettled as error:
         raise Unmeasurable(str(error)) from None
-
-
-def _reference(scene: Scene, event: Transient, origin: str) -> tuple[int, LevelForm] | None:
-    """Where time counts from. Raises Unmeasurable where it is a supply of which rise or valid level are not known."""
-    if origin == "event":
-        return None
-    if not (event.empty or scene.length > 0.0) or not event.movers:
-        raise Unmeasurable(f"no supply becomes valid at {scene.joint} in this event")
-    name = min(event.movers, key=lambda mover: (mover not in _fed(scene), mover))
-    joint = scene.circuit.joints[name]
-    valid = scene.bench.supply_fact(joint, lambda facts: facts.valid)
-    missing = [word for word, known in (("valid", valid), ("rise", scene.sources.rise(joint))) if known is None]
-    if valid is None or missing:
-        lines = "  ".join(f'{word} = "…"' for word in missing)
-        raise Unmeasurable(f"{' and '.join(missing)} of {joint} not given", f'[supply."{joint}"] {lines}')
-    offset = scene.sources.table.given(f"{joint} valid", valid, PROJECT)
-    return scene.circuit.terminal(name), LevelForm(kind="voltage", offset=offset)
-
-
-def _fed(scene: Scene) -> set[str]:
-    """Held terminals that feed the joint through resistors."""
-    return {name for name in scene.circuit.held if scene.joint in scene.circuit.driven([name])}
