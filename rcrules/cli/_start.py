@@ -22,6 +22,7 @@ def start(chosen: argparse.Namespace) -> int:
         raise _mistake("command line", "standard input cannot be named in a project file", "name the files")
     target = Path(chosen.to) if chosen.to else Path(chosen.inputs[0]).parent / "rcrules.toml"
     _free(target)
+    _describe(chosen.inputs)
     document = run(Job(inputs=tuple(chosen.inputs), project=os.devnull, rules=FIRST_PACKS))
     folder = target.parent
     inputs = [(row["kind"], _relative(row["file"], folder)) for row in document.inputs]
@@ -30,6 +31,25 @@ def start(chosen: argparse.Namespace) -> int:
     _write(target, text)
     print(_told(document, target, len(questions(document.findings))), file=sys.stderr)
     return 0
+
+
+def _describe(names: "list[str]") -> None:
+    """Print a description of the first input that no reader knows, where there is one to make. Raises UserMistake."""
+    from rcrules.errors import UserMistake
+    from rcrules.readers import known, load, proposal
+
+    for name in names:
+        source = load(name)
+        if known(source):
+            continue
+        try:
+            described = proposal(source)
+        except UserMistake:
+            described = None  # what is wrong with the file is told when it is read
+        if described is not None:
+            print(described)
+            do = "put the description above into rcrules.toml, name what has a '?', and run: rcrules networks"
+            raise _mistake(name, "no format that is known here, but it can be described", do)
 
 
 def _relative(name: str, folder: "Path") -> str:

@@ -5,7 +5,8 @@ from rcrules.readers._export import Cell, Export, ExportPart, ExportPin, Reader,
 from rcrules.readers._fitting import fitted_in, tells_fitting
 from rcrules.readers._join import join
 from rcrules.readers._load import load
-from rcrules.readers._read import read
+from rcrules.readers._proposal import proposal
+from rcrules.readers._read import known, read
 
 __all__ = [
     "Cell",
@@ -19,7 +20,9 @@ __all__ = [
     "Variant",
     "fitted_in",
     "join",
+    "known",
     "load",
+    "proposal",
     "read",
     "tells_fitting",
 ]

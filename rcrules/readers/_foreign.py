@@ -11,6 +11,7 @@ from rcrules.readers._text import head
 from rcrules.readers._workbooks import is_workbook
 from rcrules.readers._xml import root_name
 
+FOREIGN: Final = "the content is of no kind that can be read"
 _INSTEAD: Final = "export the netlist from the schematic editor as XML, or the BOM as CSV"
 _AS_CSV: Final = "save the sheet that holds the BOM as CSV, UTF-8"
 _SIGNATURES: Final = (
@@ -78,4 +79,4 @@ def _text_format(text: str) -> str | None:
 
 
 def _foreign(source: Source, found: str, instead: str) -> UserMistake:
-    return refusal(source.name, "the content is of no kind that can be read", line=1, found=found, do=instead)
+    return refusal(source.name, FOREIGN, line=1, found=found, do=instead)

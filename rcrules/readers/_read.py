@@ -5,10 +5,11 @@ from functools import cache
 from types import MappingProxyType
 
 from rcrules import discovery
+from rcrules.errors import UserMistake
 from rcrules.project import FileFormat
 from rcrules.readers._described import described
 from rcrules.readers._export import Export, Reader, Source
-from rcrules.readers._foreign import refuse_foreign, unknown
+from rcrules.readers._foreign import FOREIGN, refuse_foreign, unknown
 
 _NO_COLUMNS: Mapping[str, str] = MappingProxyType({})
 
@@ -27,6 +28,15 @@ def read(source: Source, columns: Mapping[str, str] = _NO_COLUMNS, formats: tupl
         if reader.claims(source, columns):
             return reader.read(source, columns)
     raise unknown(source)
+
+
+def known(source: Source) -> bool:
+    """Whether any reader can make something of a source; what is damaged is known as well."""
+    try:
+        read(source)
+    except UserMistake as error:
+        return error.mistakes[0].problem != FOREIGN
+    return True
 
 
 @cache
