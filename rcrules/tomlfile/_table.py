@@ -1,47 +1,22 @@
 """A table of a file, read key by key; every mistake is collected with its place, and the reading goes on."""
 
-from collections.abc import Callable, Iterable, Mapping, Sequence
+from collections.abc import Callable, Mapping, Sequence
 from dataclasses import dataclass
 from difflib import get_close_matches
 from math import isfinite
 from typing import Any, Final, TypeVar
 
 from rcrules.errors import Place, Problems
-from rcrules.quantities import QUANTITY_NAMES, QuantityError, Spread, parse_quantity, show
+from rcrules.quantities import QuantityError, Spread, parse_quantity, show
 from rcrules.tomlfile._file import TomlFile
 from rcrules.tomlfile._scanner import Path
+from rcrules.tomlfile._told import cut, guess, listed, quantity_name
 
 Read = TypeVar("Read")
 
 MAX_TEXT: Final = 4000
 """Characters of one text."""
 _SAMPLES: Final = {"V": "3.3 V", "s": "1.2 ms", "Ω": "10 kohm", "F": "100 nF", "A": "1 uA", "Hz": "1 kHz", "1": "5 %"}
-
-
-def guess(word: str, known: Iterable[str]) -> str:
-    """``; did you mean 'measure'?`` or nothing."""
-    near = get_close_matches(word.lower()[:80], {name.lower(): name for name in known}, n=1, cutoff=0.6)
-    spelled = {name.lower(): name for name in known}
-    return f"; did you mean '{spelled[near[0]]}'?" if near else ""
-
-
-def listed(words: Iterable[str]) -> str:
-    """``a, b or c``, cut after two dozen."""
-    items = list(words)
-    if len(items) > 24:
-        return ", ".join(items[:24]) + " …"
-    return " or ".join((", ".join(items[:-1]), items[-1])) if len(items) > 1 else "".join(items)
-
-
-def cut(text: str) -> str:
-    """A text from a file, short enough for a message."""
-    return text if len(text) <= 60 else text[:59] + "…"
-
-
-def quantity_name(unit: str) -> str:
-    """``a time``, ``an energy``."""
-    name = QUANTITY_NAMES.get(unit, f"quantity in {unit}")
-    return f"{'an' if name[0] in 'aeiou' else 'a'} {name}"
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
