@@ -33,7 +33,7 @@ def parse_condition(text: str, mistakes: list[QuantityError]) -> Condition:
         return _WRONG
     reader = _Reader(text, mistakes)
     found = reader.condition(0)
-    if reader.mark is not None:
+    if reader.mark is not None and not mistakes:
         length = len(reader.mark)
         reader.note(QuantityError(f"'{reader.mark}' not understood", at=reader.at, length=length, expected="the end"))
     return found
