@@ -2,8 +2,11 @@
 
 import math
 
+import numpy as np
+
 from rcrules.derivation._known import value_in
-from rcrules.derivation._respond import pole, respond, seen
+from rcrules.derivation._pieces import Sum
+from rcrules.derivation._respond import piece_from_modes, pole, respond, seen
 from rcrules.derivation._sheet import Number
 from rcrules.derivation._working import Working
 from rcrules.problems import evaluate
@@ -74,12 +77,46 @@ def _charging(work: Working) -> Number | None:
     index, sheet = work.problem.structure.element or 0, work.sheet
     if min(work.problem.structure.shape.capacitors[index]) >= work.free:
         return _between_sources(work, index)
+    if work.modal:
+        return _by_slope(work, index)
     if pole(work.problem.structure) != work.at or len(work.starts) > 1:
         return None
     found = seen(work, work.at)
     piece = respond(work, 0.0)[-1]
     formula = "abs({} - {}) / {}"
     return sheet.work("I", "A", formula, lambda e, v, r: abs(e - v) / r, piece.rest, piece.start, found.ohms)
+
+
+def _by_slope(work: Working, index: int) -> Number | None:
+    """C dv/dt at an end of a piece, v(x) = E + S x + sum of A e^(-x/tau); None where it is greatest within one."""
+    signal, sheet = work.solved.signal, work.sheet
+    value = float(work.measure.compute(work.problem.structure, work.cases)[0])
+    farads = float(work.solved.farads[0, index])
+    for place, (start, found, length) in enumerate(zip(signal.starts, signal.sums, signal.lengths, strict=True)):
+        slope = found.derivative()
+        for x in (0.0, float(length[0])) if length[0] > 0.0 else ():
+            amps = farads * abs(float(slope.at(np.array([x]))[0])) if math.isfinite(x) else 0.0
+            if math.isclose(amps, value, rel_tol=1e-6):
+                piece = piece_from_modes(work, place)
+                note = f"dv/dt {sheet.number('', float(start[0]) + x, 's').text} after the event"
+                rate = _rate(work, piece, sheet.number("x", x, "s"), note)
+                number = sheet.number(work.names.capacitors[index], farads, "F")
+                return sheet.work("I", "A", "{} · abs({})", lambda c, s: c * abs(s), number, rate)
+    return None
+
+
+def _rate(work: Working, piece: Sum, x: Number, note: str) -> Number:
+    """dv/dt = S - sum of A/tau e^(-x/tau)."""
+    numbers = [item for amp, tau in piece.modes for item in (amp, tau, x, tau)]
+    formula = ("{}" if piece.slope else "0") + "".join(" - {} / {} · exp(-{} / {})" for _ in piece.modes)
+    slopes = [piece.slope] if piece.slope else []
+
+    def compute(*values: float) -> float:
+        modes = values[len(slopes) :]
+        died = (modes[k] / modes[k + 1] * math.exp(-modes[k + 2] / modes[k + 1]) for k in range(0, len(modes), 4))
+        return sum(values[: len(slopes)]) - sum(died)
+
+    return work.sheet.work("s", "V/s", formula, compute, *slopes, *numbers, note=note)
 
 
 def _between_sources(work: Working, index: int) -> Number | None:
@@ -95,14 +132,39 @@ def _between_sources(work: Working, index: int) -> Number | None:
 
 
 def noise(work: Working) -> Number | None:
-    """(k T / C)^0.5 where all capacitors of the node lead to held ones: it shares its noise with no other node."""
-    if not work.capacitors(work.at) or any(far < work.free for far, _ in work.capacitors(work.at)):
+    """(k T / C)^0.5, C what is seen at the node with nothing but capacitors; None where those form a larger mesh."""
+    farads = _seen_farads(work)
+    if not farads:
         return None
-    farads = [number for _, number in work.capacitors(work.at)]
     whole = work.sheet.work("C", "F", " + ".join("{}" for _ in farads), lambda *all_: sum(all_), *farads)
     kelvin = float(work.cases[0, int(work.problem.structure.option("kelvin"))])
     numbers = work.sheet.number("k", BOLTZMANN, "1"), work.sheet.number("T", kelvin, "1"), whole
     return work.sheet.work("noise", "V", "({} · {} / {})^0.5", lambda k, t, c: math.sqrt(k * t / c), *numbers)
+
+
+def _seen_farads(work: Working) -> list[Number]:
+    """Capacitors to held terminals, and those in series through one other node; none where there is more to it."""
+    here = work.capacitors(work.at)
+    found = [farads for far, farads in here if far >= work.free]
+    for node in dict.fromkeys(far for far, _ in here if far < work.free):
+        beyond = [(far, farads) for far, farads in work.capacitors(node) if far != work.at]
+        if any(far < work.free for far, _ in beyond):
+            return []
+        if beyond:
+            near = _added(work, f"C to {work.name(node)}", [farads for far, farads in here if far == node])
+            behind = _added(work, f"C beyond {work.name(node)}", [farads for _, farads in beyond])
+            formula, numbers = "{} · {} / ({} + {})", (near, behind, near, behind)
+            name = f"C by {work.name(node)}"
+            found.append(work.sheet.work(name, "F", formula, _in_series, *numbers, note="in series"))
+    return found
+
+
+def _added(work: Working, symbol: str, farads: list[Number]) -> Number:
+    return work.sheet.work(symbol, "F", " + ".join("{}" for _ in farads), lambda *all_: sum(all_), *farads)
+
+
+def _in_series(one: float, two: float, *_: float) -> float:
+    return one * two / (one + two)
 
 
 def ohms_of(work: Working) -> Number:

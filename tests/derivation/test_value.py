@@ -29,7 +29,7 @@ VALUES = [
     ("time_constant() * 3 + extra", 'at-most = "1 h"'),
     ("max(time_constant(), extra) / 2", 'at-most = "1 h"'),
     ('delay(event = "power-up", to = "2 V") - delay(event = "power-up", to = "1 V")', 'at-least = "1 us"'),
-    ("time_to_63(event = \"power-up\")", 'at-most = "factor * time_constant()"'),
+    ('time_to_63(event = "power-up")', 'at-most = "factor * time_constant()"'),
     ("time_constant() * (1 + factor) - extra", 'at-most = "1 h"'),
     ("1 / (2 * time_constant())", 'at-most = "1 GHz"'),
 ]
