@@ -4,7 +4,8 @@ from collections import defaultdict
 from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import replace
 
-from rcrules.design._disagree import differences, refuse_other_board
+from rcrules.design._connections import join
+from rcrules.design._disagree import differences
 from rcrules.design._merge import Said, merge, word
 from rcrules.design._model import Design, Difference, Net, Part, Pin
 from rcrules.design._order import natural
@@ -19,8 +20,8 @@ def build(exports: Iterable[Export]) -> Design:
     without a netlist gives a design without nets.
     """
     given = tuple(exports)
-    ordered = sorted(given, key=lambda export: export.kind != "bom")
-    pins, remarks = _pins(ordered)
+    ordered = sorted(given, key=lambda export: (export.kind != "bom", _is_bare(export)))
+    pins, names, remarks = _pins(ordered)
     alone = _open_pins(ordered, pins)
     said = _said(ordered, {**alone, **pins})
     order = sorted(said, key=natural)
@@ -31,10 +32,15 @@ def build(exports: Iterable[Export]) -> Design:
     own = [remark for export in given for remark in export.remarks]
     return Design(
         parts={ref: replace(part, differences=apart[ref]) if ref in apart else part for ref, part in parts.items()},
-        nets=_nets(ordered, parts),
+        nets=_nets(ordered, parts, names),
         exports=given,
         remarks=(*own, *remarks),
     )
+
+
+def _is_bare(export: Export) -> bool:
+    """A netlist without values, such as one for tests of the bare board, whose names are cut off: others come first."""
+    return all(part.value is None for part in export.parts)
 
 
 def _said(exports: Sequence[Export], pins: Mapping[str, Sequence[Pin]]) -> dict[str, list[Said]]:
@@ -49,26 +55,24 @@ def _said(exports: Sequence[Export], pins: Mapping[str, Sequence[Pin]]) -> dict[
     return dict(said)
 
 
-def _pins(exports: Sequence[Export]) -> tuple[dict[str, list[Pin]], list[Remark]]:
-    """Pins by reference in natural order; of two netlists the first one to connect a pin decides.
+def _pins(exports: Sequence[Export]) -> tuple[dict[str, list[Pin]], list[Mapping[str, str]], list[Remark]]:
+    """Pins by reference in natural order, and what the nets of each export are called.
 
-    Two pads of one number, listed twice in a netlist, are two connections. Raises UserMistake where two netlists agree
-    on hardly any pin.
+    Of two netlists the first one to connect a pin decides. Two pads of one number, listed twice in a netlist, are two
+    connections. Raises UserMistake where two netlists agree on hardly any pin.
     """
     found: dict[str, list[Pin]] = defaultdict(list)
+    names: list[Mapping[str, str]] = []
     remarks: list[Remark] = []
     for export in exports:
         known = {(pin.ref, pin.number): pin for own in found.values() for pin in own}
-        refuse_other_board(export, known)
+        joined = join(export, known)
         for pin in export.pins:
-            elsewhere = known.get((pin.ref, pin.number))
-            if elsewhere is None:
-                found[pin.ref].append(_pin(pin))
-            elif elsewhere.net != pin.net:
-                stands = f"{elsewhere.net!r} of {elsewhere.place} stands"
-                text = f"pin {pin.number} of {pin.ref} is on {pin.net!r}; {stands}"
-                remarks.append(Remark(place=pin.place, text=text))
-    return {ref: sorted(own, key=_pin_order) for ref, own in found.items()}, remarks
+            if (pin.ref, pin.number) not in known:
+                found[pin.ref].append(_pin(pin, joined.net(pin)))
+        names.append(joined.names)
+        remarks += joined.remarks
+    return {ref: sorted(own, key=_pin_order) for ref, own in found.items()}, names, remarks
 
 
 def _open_pins(exports: Sequence[Export], connected: Mapping[str, Sequence[Pin]]) -> dict[str, list[Pin]]:
@@ -78,24 +82,24 @@ def _open_pins(exports: Sequence[Export], connected: Mapping[str, Sequence[Pin]]
     for pin in (pin for export in exports for pin in export.open_pins):
         if (pin.ref, pin.number) not in known:
             known.add((pin.ref, pin.number))
-            found[pin.ref].append(_pin(pin))
+            found[pin.ref].append(_pin(pin, ""))
     return {ref: sorted(own, key=_pin_order) for ref, own in found.items()}
 
 
-def _pin(pin: ExportPin) -> Pin:
-    return Pin(ref=pin.ref, number=pin.number, name=pin.name, type=pin.type, net=pin.net, place=pin.place)
+def _pin(pin: ExportPin, net: str) -> Pin:
+    return Pin(ref=pin.ref, number=pin.number, name=pin.name, type=pin.type, net=net, place=pin.place)
 
 
 def _pin_order(pin: Pin) -> tuple[object, ...]:
     return natural(pin.number), natural(pin.net)
 
 
-def _nets(exports: Sequence[Export], parts: Mapping[str, Part]) -> dict[str, Net]:
+def _nets(exports: Sequence[Export], parts: Mapping[str, Part], names: Sequence[Mapping[str, str]]) -> dict[str, Net]:
     """Every net with its pins in the order of the parts, also nets of one pin or none."""
     places: dict[str, Place] = {}
-    for export in exports:
+    for export, called in zip(exports, names, strict=True):
         for name, place in export.nets:
-            places.setdefault(name, place)
+            places.setdefault(called.get(name, name), place)
     pins: dict[str, list[Pin]] = {name: [] for name in places}
     for part in parts.values():
         for pin in part.pins:

@@ -6,14 +6,12 @@ from collections.abc import Container, Iterator, Mapping, Sequence
 from typing import Final
 
 from rcrules.design._merge import Said, word
-from rcrules.design._model import Design, Difference, Part, Pin
+from rcrules.design._model import Design, Difference, Part
 from rcrules.design._order import natural
-from rcrules.errors import Mistake, Place, UserMistake
+from rcrules.errors import Place
 from rcrules.readers import Export, Remark
 
 _SHOWN: Final = 12
-_MOVED: Final = 4
-"""Pins on different nets from which on two netlists may be of different boards."""
 _TOLD_APART: Final = 3
 """More contradictions between values share one remark."""
 _FOLDED: Final = str.maketrans({"\u00b5": "u", "\u03bc": "u", "\u2126": "r", "\u03c9": "r", "\u043a": "k", ",": "."})
@@ -129,25 +127,6 @@ def _strangers(design: Design) -> bool:
         refs[word(export)].update(part.ref for part in export.parts)
         refs[word(export)].update(pin.ref for pin in export.pins)
     return bool(refs["BOM"] or refs["netlist"]) and not refs["BOM"] & refs["netlist"]
-
-
-def refuse_other_board(export: Export, known: Mapping[tuple[str, str], Pin]) -> None:
-    """Raise UserMistake where most pins that an earlier netlist connects too are on other nets here."""
-    common = [(pin, known[pin.ref, pin.number]) for pin in export.pins if (pin.ref, pin.number) in known]
-    moved = [(pin, other) for pin, other in common if pin.net != other.net]
-    if len(moved) < _MOVED or 2 * len(moved) < len(common):
-        return
-    pin, other = moved[0]
-    raise UserMistake(
-        Mistake(
-            place=pin.place,
-            problem=f"this netlist and {other.place.file} are not of one board",
-            found=f"{len(moved)} of {len(common)} common pins on other nets: {pin.ref}.{pin.number} "
-            f"on {pin.net!r} and on {other.net!r}",
-            expected="netlists that connect different parts, or the same pins alike",
-            do="name the netlist of one board; several boards need a --project each",
-        )
-    )
 
 
 def listed(refs: Sequence[str]) -> str:

@@ -129,12 +129,46 @@ def test_remarks_of_the_readers_come_along() -> None:
     assert any("R2 is listed again" in remark.text for remark in remarks(made))
 
 
+def netlists(*texts: str) -> Design:
+    """A design of pin lists a.csv, b.csv … given by their rows."""
+    given = zip("abcd", texts, strict=False)
+    rows = {name: "\n".join(["net,part,pin,value", *text.split()]) for name, text in given}
+    return design.build([readers.read(Source(name=f"{name}.csv", data=text.encode())) for name, text in rows.items()])
+
+
+FIRST = "+3V3,R1,1,10k SENSE_FILTERED,R1,2 SENSE_FILTERED,C1,1,1u GND,C1,2 SDA,U1,1,X SDA,R2,1,1k SCL,U1,2 SCL,R3,1,1k"
+
+
 def test_a_second_netlist_adds_pins_but_does_not_move_them() -> None:
-    first = readers.read(Source(name="a.csv", data=b"net,part,pin\nA,R1,1\n"))
-    second = readers.read(Source(name="b.csv", data=b"net,part,pin\nB,R1,1\nB,R1,2\n"))
-    made = design.build([first, second])
-    assert [(pin.number, pin.net) for pin in made.parts["R1"].pins] == [("1", "A"), ("2", "B")]
-    assert remarks(made)[0].text == "pin 1 of R1 is on 'B'; 'A' of a.csv:2:1 stands"
+    made = netlists("A,R1,1 A,C1,1 A,C2,1", "B,R1,1 B,C1,1 B,R1,2 C,C2,1")
+    assert [(pin.number, pin.net) for pin in made.parts["R1"].pins] == [("1", "A"), ("2", "A")]
+    assert [str(remark.text) for remark in remarks(made)] == [
+        "pin 1 of C2 is on 'C'; 'A' of a.csv:4:1 stands",
+        "nets with the same pins have other names in a.csv: 'B' is 'A'; the latter stand",
+    ]
+
+
+def test_netlists_that_connect_alike_agree_though_names_are_cut_off_or_made_up() -> None:
+    other = FIRST.replace("SENSE_FILTERED", "sense_filt").replace("SDA", "#17").replace("SCL", "Net-(U1-Pad2)")
+    made = netlists(FIRST, other.replace(",10k", "").replace(",1u", "").replace(",1k", "").replace(",X", ""))
+    assert not remarks(made)
+    assert [*made.nets] == ["+3V3", "GND", "SCL", "SDA", "SENSE_FILTERED"]
+
+
+def test_nets_that_are_joined_or_swapped_are_told_with_both_places() -> None:
+    joined = netlists(FIRST, FIRST.replace("GND", "SENSE_FILTERED"))
+    assert [f"{remark.place}: {remark.text}" for remark in remarks(joined)] == [
+        "b.csv:5:1: pin 2 of C1 is on 'SENSE_FILTERED'; 'GND' of a.csv:5:1 stands"
+    ]
+    swapped = netlists(FIRST, FIRST.replace("SDA", "x").replace("SCL", "SDA").replace("x", "SCL"))
+    assert [remark.text for remark in remarks(swapped)] == [
+        "nets with the same pins have other names in a.csv: 'SCL' is 'SDA', 'SDA' is 'SCL'; the latter stand"
+    ]
+
+
+def test_a_netlist_without_values_gives_no_names_whatever_the_order() -> None:
+    bare = "SENSE_FI,R1,2 SENSE_FI,C1,1"
+    assert [*netlists(bare, FIRST).nets] == [*netlists(FIRST, bare).nets] == [*netlists(FIRST).nets]
 
 
 def test_the_order_of_the_inputs_changes_nothing_that_is_decided() -> None:
@@ -155,11 +189,8 @@ def test_two_pads_of_one_number_are_two_connections():
 
 
 def test_netlists_of_two_boards_are_refused() -> None:
-    rows = [f"R{number},1" for number in range(1, 7)]
-    first = readers.read(Source(name="a.csv", data="\n".join(["net,part,pin", *(f"A,{row}" for row in rows)]).encode()))
-    second = readers.read(
-        Source(name="b.csv", data="\n".join(["net,part,pin", *(f"B,{row}" for row in rows)]).encode())
-    )
+    first = " ".join(f"A{number // 3},R{number},1" for number in range(9))
+    second = " ".join(f"B{number % 3},R{number},1" for number in range(9))
     with pytest.raises(UserMistake, match=r"this netlist and a\.csv are not of one board") as caught:
-        design.build([first, second])
-    assert caught.value.mistakes[0].found == "6 of 6 common pins on other nets: R1.1 on 'B' and on 'A'"
+        netlists(first, second)
+    assert caught.value.mistakes[0].found == "6 of 9 common pins on other nets: R1.1 on 'B1' and on 'A0'"
