@@ -70,7 +70,7 @@ PIN_TYPES: Final = (
     "",
 )
 """Pin types as the readers normalise them; '' = the export names none."""
-AGREEMENTS: Final = ("value", "ratings", "listing", "fitting")
+AGREEMENTS: Final = ("value", "ratings", "listing", "fitting", "connections")
 """On what the inputs of one board may agree or not about a part."""
 AGREEMENT: Final = "agreement on "
 """How the facts of rules about that begin."""

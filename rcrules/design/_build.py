@@ -4,13 +4,13 @@ from collections import defaultdict
 from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import replace
 
-from rcrules.design._connections import join
+from rcrules.design._connections import Joined, join
 from rcrules.design._disagree import differences
 from rcrules.design._merge import Said, merge, word
 from rcrules.design._model import Design, Difference, Net, Part, Pin
 from rcrules.design._order import natural
 from rcrules.errors import Place
-from rcrules.readers import Export, ExportPart, ExportPin, Remark
+from rcrules.readers import Export, ExportPart, ExportPin
 
 
 def build(exports: Iterable[Export]) -> Design:
@@ -21,20 +21,20 @@ def build(exports: Iterable[Export]) -> Design:
     """
     given = tuple(exports)
     ordered = sorted(given, key=lambda export: (export.kind != "bom", _is_bare(export)))
-    pins, names, remarks = _pins(ordered)
+    pins, joined = _pins(ordered)
     alone = _open_pins(ordered, pins)
     said = _said(ordered, {**alone, **pins})
     order = sorted(said, key=natural)
     parts = {ref: merge(said[ref], tuple(pins.get(ref, ())), tuple(alone.get(ref, ()))) for ref in order}
     apart: dict[str, tuple[Difference, ...]] = defaultdict(tuple)
-    for item in differences(parts, said, ordered):
+    for item in (*differences(parts, said, ordered), *(item for each in joined for item in each.differences())):
         apart[item.ref] += (item,)
     own = [remark for export in given for remark in export.remarks]
     return Design(
         parts={ref: replace(part, differences=apart[ref]) if ref in apart else part for ref, part in parts.items()},
-        nets=_nets(ordered, parts, names),
+        nets=_nets(ordered, parts, joined),
         exports=given,
-        remarks=(*own, *remarks),
+        remarks=(*own, *(remark for each in joined for remark in each.remarks)),
     )
 
 
@@ -55,24 +55,22 @@ def _said(exports: Sequence[Export], pins: Mapping[str, Sequence[Pin]]) -> dict[
     return dict(said)
 
 
-def _pins(exports: Sequence[Export]) -> tuple[dict[str, list[Pin]], list[Mapping[str, str]], list[Remark]]:
-    """Pins by reference in natural order, and what the nets of each export are called.
+def _pins(exports: Sequence[Export]) -> tuple[dict[str, list[Pin]], list[Joined]]:
+    """Pins by reference in natural order, and each export held against those before it.
 
     Of two netlists the first one to connect a pin decides. Two pads of one number, listed twice in a netlist, are two
     connections. Raises UserMistake where two netlists agree on hardly any pin.
     """
     found: dict[str, list[Pin]] = defaultdict(list)
-    names: list[Mapping[str, str]] = []
-    remarks: list[Remark] = []
+    held: list[Joined] = []
     for export in exports:
         known = {(pin.ref, pin.number): pin for own in found.values() for pin in own}
         joined = join(export, known)
         for pin in export.pins:
             if (pin.ref, pin.number) not in known:
                 found[pin.ref].append(_pin(pin, joined.net(pin)))
-        names.append(joined.names)
-        remarks += joined.remarks
-    return {ref: sorted(own, key=_pin_order) for ref, own in found.items()}, names, remarks
+        held.append(joined)
+    return {ref: sorted(own, key=_pin_order) for ref, own in found.items()}, held
 
 
 def _open_pins(exports: Sequence[Export], connected: Mapping[str, Sequence[Pin]]) -> dict[str, list[Pin]]:
@@ -94,12 +92,12 @@ def _pin_order(pin: Pin) -> tuple[object, ...]:
     return natural(pin.number), natural(pin.net)
 
 
-def _nets(exports: Sequence[Export], parts: Mapping[str, Part], names: Sequence[Mapping[str, str]]) -> dict[str, Net]:
+def _nets(exports: Sequence[Export], parts: Mapping[str, Part], joined: Sequence[Joined]) -> dict[str, Net]:
     """Every net with its pins in the order of the parts, also nets of one pin or none."""
     places: dict[str, Place] = {}
-    for export, called in zip(exports, names, strict=True):
+    for export, held in zip(exports, joined, strict=True):
         for name, place in export.nets:
-            places.setdefault(called.get(name, name), place)
+            places.setdefault(held.names.get(name, name), place)
     pins: dict[str, list[Pin]] = {name: [] for name in places}
     for part in parts.values():
         for pin in part.pins:

@@ -5,7 +5,7 @@ from collections.abc import Iterable, Iterator, Mapping
 from dataclasses import dataclass
 from typing import Final
 
-from rcrules.design._model import Pin
+from rcrules.design._model import Difference, Pin
 from rcrules.errors import Mistake, UserMistake
 from rcrules.names import automatic
 from rcrules.readers import Export, ExportPin, Remark
@@ -26,6 +26,12 @@ class Joined:
     moved: tuple[tuple[ExportPin, Pin], ...]
     """Pins that it puts on another net, each with what stands."""
     remarks: tuple[Remark, ...]
+
+    def differences(self) -> Iterator[Difference]:
+        """Where the netlists contradict each other about a part."""
+        for pin, other in self.moved:
+            text = f"pin {pin.number} on {other.net!r} ({other.place}), on {pin.net!r} ({pin.place})"
+            yield Difference(ref=pin.ref, about="connections", text=text, places=(other.place, pin.place))
 
     def net(self, pin: ExportPin) -> str:
         """The net of a pin, as the earlier netlists call it."""

@@ -1,5 +1,6 @@
 """What several inputs of one board say differently about a part: findings of the pack inputs-agree."""
 
+import re
 from pathlib import Path
 
 import pytest
@@ -81,3 +82,28 @@ def test_they_do_not_make_a_part_judged() -> None:
 
 def test_one_input_alone_has_nothing_to_agree_with() -> None:
     assert judged(None).findings == []
+
+
+CONNECTED = """
+[pack]
+name = "own"
+title = "Own"
+[[rule]]
+id = "connections-agree"
+title = "The netlists connect a part alike"
+level = "error"
+subject = "listed part"
+value = "agreement on connections"
+one-of = ["yes"]
+why = "What is made is not what was drawn."
+source = "common practice"
+"""
+
+
+def test_another_connection_in_a_second_netlist_is_a_finding_of_the_teams_rule() -> None:
+    Path("own.toml").write_text(CONNECTED, encoding="utf-8")
+    Path("board.xml").write_text(NETLIST, encoding="utf-8")
+    Path("tested.csv").write_text("net,part,pin\n3V3,R1,1\nNRS,R1,2\nNRS,C1,1\n3V3,C1,2\n", encoding="utf-8")
+    (found,) = failing(run(Job(inputs=("board.xml", "tested.csv"), rules=("own.toml",))))
+    assert found[:2] == ("connections-agree", ["C1"])
+    assert re.fullmatch(r"pin 2 on 'GND' \(board\.xml:\d+\), on '3V3' \(tested\.csv:5:1\)", found[2] or "")
