@@ -1,10 +1,16 @@
-"""All benches: ``python -m tests.bench [engine|wide|start-up|growth ...]``. Nothing is asserted."""
+"""All benches: ``python -m tests.bench [engine|readers|wide|start-up|growth ...]``. Nothing is asserted."""
 
 import importlib
 import os
 import sys
 
-NAMES = {"engine": "bench_engine", "wide": "bench_wide", "start-up": "bench_start_up", "growth": "bench_growth"}
+NAMES = {
+    "engine": "bench_engine",
+    "readers": "bench_readers",
+    "wide": "bench_wide",
+    "start-up": "bench_start_up",
+    "growth": "bench_growth",
+}
 
 
 def main() -> None:
