@@ -3,7 +3,7 @@
 import pytest
 
 from rcrules.errors import Mistake
-from rcrules.readers import Limits, Source, _table, read
+from rcrules.readers import Limits, Source, _table, _xml, read
 from tests.readers.test_hostile import refused
 
 XML = "<export><components>{parts}</components><nets>{nets}</nets></export>"
@@ -96,9 +96,10 @@ def idle(filling: str) -> Mistake:
     return refused(f"<export>\n<components/>{filling}<nets/></export>")
 
 
-def test_what_means_nothing_is_not_kept_without_end() -> None:
-    assert "outside of any" in idle("<a/>\n" * 1_600_000).problem
-    assert "inside one component" in idle("<comp ref='R1'>" + "<a b='c'/>" * 800_000 + "</comp>").problem
+def test_what_means_nothing_is_not_kept_without_end(monkeypatch: pytest.MonkeyPatch) -> None:
+    monkeypatch.setattr(_xml, "MAX_MARKS", 150_000)
+    assert "outside of any" in idle("<a/>\n" * 160_000).problem
+    assert "inside one component" in idle("<comp ref='R1'>" + "<a b='c'/>" * 80_000 + "</comp>").problem
 
 
 def test_a_table_of_more_cells_than_any_is_refused(monkeypatch: pytest.MonkeyPatch) -> None:

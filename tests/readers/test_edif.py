@@ -4,7 +4,7 @@ import pytest
 
 from rcrules import readers
 from rcrules.errors import Mistake, UserMistake
-from rcrules.readers import Export, ExportPart, Source
+from rcrules.readers import Export, ExportPart, Limits, Source
 
 PARTS = """(library PARTS (edifLevel 0)
  (technology (numberDefinition (scale 1 (E 1 -12) (unit CAPACITANCE))))
@@ -268,7 +268,9 @@ def test_blocks_that_multiply_without_end_are_refused() -> None:
         + ")))"
         for level in range(40)
     )
-    assert refused(edif(placed("X", "B39", library=""), cells=cells)).problem == "the file holds too many parts"
+    text = edif(placed("X", "B39", library=""), cells=cells)
+    with pytest.raises(UserMistake, match="the file holds too many parts"):
+        readers.read(Source(name="a", data=text.encode(), limits=Limits(parts=10_000)))
 
 
 def test_other_versions_and_files_without_a_board_are_refused() -> None:

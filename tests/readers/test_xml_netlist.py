@@ -170,7 +170,6 @@ def test_what_variants_have_otherwise_at_a_component_is_kept() -> None:
     assert (full.value.text, full.fields["Tol"].text) == ("22k", "1%")
 
 
-
 def test_blank_lines_before_the_declaration_do_not_shift_line_numbers() -> None:
     assert read("\n\n" + VERSION_E).parts[0].place.line == 7
 
