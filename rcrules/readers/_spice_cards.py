@@ -13,7 +13,7 @@ from rcrules.readers._mistakes import refusal, shorten
 from rcrules.readers._remarks import Remarks
 from rcrules.readers._text import decode, numbered
 
-MAX_LINES: Final = 1_000_000
+MAX_LINES: Final = 300_000
 MAX_CARD: Final = 200_000
 """Characters of a card with its continuations."""
 MAX_INCLUDES: Final = 200
